@@ -1,0 +1,1 @@
+"""Light as numbers: rays, faces, materials, polarization, envelopes and their cuts."""
