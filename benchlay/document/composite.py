@@ -1,0 +1,315 @@
+"""Forms made of other forms: lists, tables of names, alternatives."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from collections.abc import Mapping as AbstractMapping
+from typing import Any, Generic, TypeVar
+
+from benchlay.document.form import Failed, Form, Reader, show_plainly
+from benchlay.document.nodes import Mapping, Node, Scalar, Sequence
+from benchlay.document.problems import Problems
+from benchlay.document.span import Span
+from benchlay.document.texts import Name
+from benchlay.document.words import quote
+
+T = TypeVar("T")
+_MANY = 1_000
+
+
+class Listed(Form[tuple[T, ...]]):
+    """What all lists share: every item is read, and every problem reported."""
+
+    form: Form[T]
+
+    def items(self, node: Sequence, reader: Reader) -> tuple[T, ...] | None:
+        """Read the items; None if one of them failed."""
+        values: list[T] = []
+        for k, item in enumerate(node.items, start=1):
+            value = reader.attempt(self.form, item, f"[{k}]")
+            if not isinstance(value, Failed):
+                values.append(value)
+        return tuple(values) if len(values) == len(node.items) else None
+
+    def takes(self, node: Node) -> bool:
+        """Take lists."""
+        return isinstance(node, Sequence)
+
+    def show(self, value: object) -> str:
+        """Write the items in brackets."""
+        if isinstance(value, tuple):
+            return f"[{', '.join(self.form.show(item) for item in value)}]"
+        return show_plainly(value)
+
+
+class Fixed(Listed[T]):
+    """A list of exactly `n` items."""
+
+    def __init__(self, form: Form[T], n: int) -> None:
+        self.form = form
+        self.n = n
+
+    def read(self, node: Node, reader: Reader) -> tuple[T, ...] | None:
+        """Read a list of the right length."""
+        if not isinstance(node, Sequence) or len(node) != self.n:
+            reader.refuse(node, self)
+            return None
+        return self.items(node, reader)
+
+    def text(self) -> str:
+        """Say how many of what."""
+        return f"a list of {self.n}, each {self.form.text()}"
+
+    def example(self) -> str:
+        """Repeat the item's example."""
+        return f"[{', '.join([self.form.example()] * self.n)}]".replace("'", "")
+
+    def schema(self) -> dict[str, Any]:
+        """Fix the number of items."""
+        return {
+            "type": "array",
+            "items": self.form.schema(),
+            "minItems": self.n,
+            "maxItems": self.n,
+        }
+
+
+class Pair(Form[tuple[T, T]]):
+    """A list of two."""
+
+    def __init__(self, form: Form[T]) -> None:
+        self._fixed = Fixed(form, 2)
+
+    def read(self, node: Node, reader: Reader) -> tuple[T, T] | None:
+        """Read both."""
+        values = self._fixed.read(node, reader)
+        return None if values is None else (values[0], values[1])
+
+    def text(self) -> str:
+        """Say two of what."""
+        return self._fixed.text()
+
+    def example(self) -> str:
+        """Give two."""
+        return self._fixed.example()
+
+    def takes(self, node: Node) -> bool:
+        """Take lists."""
+        return self._fixed.takes(node)
+
+    def schema(self) -> dict[str, Any]:
+        """Fix two items."""
+        return self._fixed.schema()
+
+    def show(self, value: object) -> str:
+        """Write both in brackets."""
+        return self._fixed.show(value)
+
+
+class ListOf(Listed[T]):
+    """A list of `min` to `max` items."""
+
+    def __init__(self, form: Form[T], min: int = 0, max: int = _MANY) -> None:
+        self.form = form
+        self.min, self.max = min, max
+
+    def read(self, node: Node, reader: Reader) -> tuple[T, ...] | None:
+        """Read a list of a length allowed."""
+        if not isinstance(node, Sequence) or not self.min <= len(node) <= self.max:
+            reader.refuse(node, self)
+            return None
+        return self.items(node, reader)
+
+    def text(self) -> str:
+        """Say how many of what."""
+        many = ""
+        if self.max != _MANY:
+            many = f" of {self.min} to {self.max}"
+        elif self.min:
+            many = f" of at least {self.min}"
+        return f"a list{many}, each item {self.form.text()}"
+
+    def example(self) -> str:
+        """Repeat the item's example as often as needed."""
+        times = max(self.min, 1)
+        return f"[{', '.join([self.form.example()] * times)}]".replace("'", "")
+
+    def schema(self) -> dict[str, Any]:
+        """Bound the number of items."""
+        return {
+            "type": "array",
+            "items": self.form.schema(),
+            "minItems": self.min,
+            "maxItems": self.max,
+        }
+
+
+class Entries(AbstractMapping[str, T], Generic[T]):
+    """Values by name, in the order of the file; cannot be changed.
+
+    Attributes
+    ----------
+    spans : dict of str to Span
+        Where each name is written.
+    """
+
+    __slots__ = ("_values", "spans")
+
+    def __init__(
+        self,
+        values: AbstractMapping[str, T] | None = None,
+        spans: AbstractMapping[str, Span] | None = None,
+    ) -> None:
+        self._values = dict(values or {})
+        self.spans = dict(spans or {})
+
+    def __getitem__(self, name: str) -> T:
+        return self._values[name]
+
+    def __iter__(self) -> Iterator[str]:
+        return iter(self._values)
+
+    def __len__(self) -> int:
+        return len(self._values)
+
+    def __hash__(self) -> int:
+        return hash(tuple(self._values.items()))
+
+    def __repr__(self) -> str:
+        return f"Entries({self._values!r})"
+
+
+class Table(Form[Entries[T]]):
+    """Values by names the user gives, unique without regard to case."""
+
+    def __init__(self, form: Form[T], name: Form[str] | None = None) -> None:
+        self.form = form
+        self.name: Form[str] = Name() if name is None else name
+
+    def read(self, node: Node, reader: Reader) -> Entries[T] | None:
+        """Read all names and all values."""
+        if not isinstance(node, Mapping):
+            reader.refuse(node, self)
+            return None
+        values: dict[str, T] = {}
+        spans: dict[str, Span] = {}
+        folded: dict[str, Scalar] = {}
+        for key, item in node.pairs:
+            name = self.name.read(key, reader)
+            value = reader.attempt(self.form, item, key.text)
+            if name is None or not self._unique(key, folded, reader):
+                continue
+            if not isinstance(value, Failed):
+                values[name] = value
+                spans[name] = key.span
+        return Entries(values, spans) if len(values) == len(node) else None
+
+    @staticmethod
+    def _unique(key: Scalar, folded: dict[str, Scalar], reader: Reader) -> bool:
+        first = folded.setdefault(key.text.casefold(), key)
+        if first is key:
+            return True
+        line, column = first.span.line, first.span.column
+        reader.complain(
+            key,
+            f"{quote(key.text)} differs from {quote(first.text)} only in capitals; "
+            f"that one stands in line {line}, column {column}",
+            expected="names that differ in more than capitals",
+            remedy=f"give one of the two another name, such as '{key.text}-2'",
+        )
+        return False
+
+    def text(self) -> str:
+        """Say that names are given, and to what."""
+        return f"a table of names, each with {self.form.text()}"
+
+    def example(self) -> str:
+        """Give one entry."""
+        return "{NAME: " + self.form.example().replace("'", "") + "}"
+
+    def takes(self, node: Node) -> bool:
+        """Take tables."""
+        return isinstance(node, Mapping)
+
+    def schema(self) -> dict[str, Any]:
+        """Bound names by their pattern."""
+        return {
+            "type": "object",
+            "propertyNames": self.name.schema(),
+            "additionalProperties": self.form.schema(),
+        }
+
+
+class OneOf(Form[Any]):
+    """One of several forms: chosen by the node's shape, then by which of them succeeds."""
+
+    def __init__(self, *forms: Form[Any]) -> None:
+        self.forms = forms
+
+    def read(self, node: Node, reader: Reader) -> Any:  # noqa: ANN401 - the union of the forms' values
+        """Read with the form that fits; one message where none does."""
+        fitting = [form for form in self.forms if form.takes(node)]
+        if len(fitting) == 1 and not isinstance(node, Scalar):
+            return fitting[0].read(node, reader)
+        trials: list[Problems] = []
+        kept, noted = reader.problems, len(reader.not_yet)
+        for form in fitting:
+            reader.problems = Problems()
+            value = form.read(node, reader)
+            trial, reader.problems = reader.problems, kept
+            if value is not None or not trial:
+                return value
+            del reader.not_yet[noted:]
+            trials.append(trial)
+        self._refuse(node, reader, trials)
+        return None
+
+    def _refuse(self, node: Node, reader: Reader, trials: list[Problems]) -> None:
+        """Report for tables and lists what the best trial found, otherwise all choices."""
+        if not trials or (isinstance(node, Scalar) and not node.text.strip()):
+            reader.refuse(node, self)
+            return
+        found = min(trials, key=len).sorted()
+        if isinstance(node, Scalar):
+            # A number is best judged by the form that reads numbers; its choices are all.
+            number = node.text.strip()[:1] in set("+-.0123456789")
+            if not number or len(found) != 1:
+                reader.refuse(node, self)
+                return
+            numeric = [t.sorted()[0] for t in trials]
+            best = next(
+                (p for p in numeric if "not known here" not in p.message), found[0]
+            )
+            reader.problems.add(
+                best.span, best.message, expected=self.text(), remedy=best.remedy
+            )
+            return
+        for problem in found:
+            reader.problems.add(
+                problem.span,
+                problem.message,
+                expected=problem.expected,
+                remedy=problem.remedy,
+            )
+
+    def text(self) -> str:
+        """List what may be written."""
+        return "; or ".join(form.text() for form in self.forms)
+
+    def example(self) -> str:
+        """Give the first form's example."""
+        return self.forms[0].example()
+
+    def takes(self, node: Node) -> bool:
+        """Take what any of the forms takes."""
+        return any(form.takes(node) for form in self.forms)
+
+    def schema(self) -> dict[str, Any]:
+        """Allow any of the forms."""
+        return {"anyOf": [form.schema() for form in self.forms]}
+
+    def show(self, value: object) -> str:
+        """Write the value as the first form that has words for it does."""
+        plain = show_plainly(value)
+        shown = (form.show(value) for form in self.forms)
+        return next((text for text in shown if text != plain), plain)
