@@ -88,7 +88,7 @@ def linear(angle_rad: ArrayLike, power: ArrayLike) -> Floats:
     return _rows(watts * c * c, watts * s * s, watts * c * s, 0.0)
 
 
-def circular(right: bool, power: ArrayLike) -> Floats:  # noqa: FBT001 (a hand, not a mode)
+def circular(right: bool, power: ArrayLike) -> Floats:
     """Circularly polarized light of `power` W, shape (...,) giving (4, ...).
 
     `right` turns clockwise to a viewer whom the beam approaches.
@@ -104,7 +104,7 @@ def unpolarized(power: ArrayLike) -> Floats:
 
 
 def rotate(j: Floats, cos: ArrayLike, sin: ArrayLike) -> Floats:
-    """The same light in a basis turned from e1 towards e2.
+    """Express the same light in a basis turned from e1 towards e2.
 
     Parameters
     ----------
@@ -158,9 +158,7 @@ def _squared(value: NDArray[np.complex128]) -> Floats:
     return squared
 
 
-def jones(
-    j: Floats, m11: ArrayLike, m12: ArrayLike, m21: ArrayLike, m22: ArrayLike
-) -> Floats:
+def jones(j: Floats, m11: ArrayLike, m12: ArrayLike, m21: ArrayLike, m22: ArrayLike) -> Floats:
     """Coherency after any field matrix: M J M^+ .
 
     Parameters

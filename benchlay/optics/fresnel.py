@@ -31,7 +31,7 @@ Floats: TypeAlias = NDArray[np.float64]
 Complexes: TypeAlias = NDArray[np.complex128]
 
 # Stands for a cosine of 0, where the quotients are 0/0 between equal media. Its square
-# is still a normal number, and the limits come out exactly: r = -1, or t = 1 if n1 = n2.
+# is still a normal number, and the limits come out: r = -1, or t = 1 if n1 = n2.
 _GRAZING = 1e-150
 
 
@@ -52,7 +52,7 @@ class Amplitudes(NamedTuple):
 
 
 class Powers(NamedTuple):
-    """Shares of the arriving power that a face reflects and lets in, for s and for p."""
+    """Shares of the arriving power that a face reflects and lets in, for s and p."""
 
     rs: Floats
     rp: Floats
@@ -81,8 +81,9 @@ def _face(n_in: ArrayLike, n_out: ArrayLike, cos_in: ArrayLike) -> _Face:
     contrast = (n2 - n1) * (n2 + n1)
     # Adding +0i makes an imaginary part of -0.0 positive: on the cut of the root it
     # alone decides between a field that dies away (Im q >= 0) and one that grows.
-    q = np.sqrt(contrast + n1c1 * n1c1 + 0j)
-    return _Face(n1c1, n1, n2, c1, q, contrast, n1c1 + q, n2 * n2 * c1 + n1 * q)
+    q: Complexes = np.sqrt(contrast + n1c1 * n1c1 + 0j)
+    below_s: Complexes = q + n1c1
+    return _Face(n1c1, n1, n2, c1, q, contrast, below_s, n2 * n2 * c1 + n1 * q)
 
 
 def _reflected(f: _Face) -> tuple[Complexes, Complexes]:
@@ -124,9 +125,7 @@ def amplitudes(n_in: ArrayLike, n_out: ArrayLike, cos_in: ArrayLike) -> Amplitud
     f = _face(n_in, n_out, cos_in)
     rs, rp = _reflected(f)
     twice = 2.0 * f.n1c1
-    return Amplitudes(
-        rs, rp, twice / f.below_s, twice * f.n2 / f.below_p, f.q.real / f.n1c1
-    )
+    return Amplitudes(rs, rp, twice / f.below_s, twice * f.n2 / f.below_p, f.q.real / f.n1c1)
 
 
 def powers(n_in: ArrayLike, n_out: ArrayLike, cos_in: ArrayLike) -> Powers:

@@ -103,7 +103,8 @@ def refract(
 ) -> tuple[Floats, Flags]:
     r"""Directions after faces between two media, by Snell's law for vectors.
 
-    .. math:: k_2 = m k + (\sqrt{1 - m^2 (1 - c^2)} - m c) N,\; m = n_1/n_2,\; c = k \cdot N
+    .. math:: k_2 = m k + (\sqrt{1 - m^2 (1 - c^2)} - m c) N, \quad
+              m = n_1/n_2, \quad c = k \cdot N
 
     Parameters
     ----------
@@ -183,8 +184,8 @@ def distance_to_plane(
 
     Examples
     --------
-    >>> x_axis = [[1.0, 0.0, 0.0], [0.0, 1.0, 0.0]]
-    >>> distance_to_plane([0.0, 0.0, 0.0], x_axis, [5.0, 1.0, 0.0], [1.0, 0.0, 0.0]).tolist()
+    >>> k = [[1.0, 0.0, 0.0], [0.0, 1.0, 0.0]]
+    >>> distance_to_plane([0.0, 0.0, 0.0], k, [5.0, 1.0, 0.0], [1.0, 0.0, 0.0]).tolist()
     [5.0, inf]
     """
     r = _vectors("position", position)
@@ -198,7 +199,7 @@ def distance_to_plane(
 
 
 def direction_from_angles(heading_rad: ArrayLike, pitch_rad: ArrayLike) -> Floats:
-    """Unit vectors with a heading in plan and a pitch above the horizontal.
+    """Make unit vectors with a heading in plan and a pitch above the horizontal.
 
     Parameters
     ----------
@@ -293,8 +294,8 @@ def bench_basis(direction: ArrayLike) -> tuple[Floats, Floats]:
     Examples
     --------
     >>> e1, e2 = bench_basis([[1.0, 0.0, 0.0], [0.0, 0.0, 1.0]])
-    >>> e1.tolist(), e2.tolist()
-    ([[-0.0, 1.0, 0.0], [0.0, 1.0, 0.0]], [[-0.0, 0.0, 1.0], [-1.0, 0.0, 0.0]])
+    >>> bool((e1 == [0.0, 1.0, 0.0]).all()), e2[1].tolist()
+    (True, [-1.0, 0.0, 0.0])
     """
     k = _vectors("direction", direction)
     level = np.hypot(k[..., 0], k[..., 1])
