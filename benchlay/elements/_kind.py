@@ -1,0 +1,166 @@
+"""What a kind of element is: keys, faces, bodies, branches and outline, in its own frame.
+
+The element frame has its origin at the reference point, x along the front normal, y to the
+left of it and z up; lengths are in mm, angles in rad.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from enum import IntEnum
+from typing import ClassVar, NamedTuple, TypeAlias
+
+from benchlay.document.record import Record
+from benchlay.document.span import Span
+from benchlay.elements._coating import UNCOATED, Coating
+from benchlay.geometry.outline import Outline
+from benchlay.geometry.solid import Solid, Vector
+
+Step: TypeAlias = tuple[str, str]
+"""A face and what happens there: ``("front", "reflected")``."""
+
+Branches: TypeAlias = Mapping[str, tuple[tuple[Step, ...], ...]]
+"""By branch name, the ways through: one for each face at which light may enter."""
+
+
+class Acts(IntEnum):
+    """What a face does with light inside its clear outline."""
+
+    INTERFACE = 0
+    """Divides it between reflection and refraction."""
+    OPAQUE = 1
+    """Ends it, save for a specular share."""
+    PASSES = 2
+    """Lets it through: an opening in a plate."""
+    LENS = 3
+    """An interface of an ideal thin lens: bends by position, not by slope."""
+
+
+class Inside(IntEnum):
+    """On which side of a face the element's own medium lies."""
+
+    NOWHERE = 0
+    BEHIND = 1
+    BOTH = 2
+
+
+class Face(NamedTuple):
+    """A plane optical face.
+
+    `normal` points out of the element. `sink` is where light lands that an opaque face
+    ends, and `beside` where light lands that meets the outline outside the clear region.
+    """
+
+    name: str
+    origin: Vector
+    normal: Vector
+    outline: Outline
+    clear: Outline
+    acts: Acts = Acts.INTERFACE
+    coating: Coating = UNCOATED
+    inside: Inside = Inside.BEHIND
+    sink: str = "body"
+    beside: str = "rim"
+    specular: float = 0.0
+    material: str | None = None
+    focal_mm: float = 0.0
+
+
+class Bulk(NamedTuple):
+    """What the inside of an element does on every passage from face to face.
+
+    `kind` is ``clear``, ``absorber``, ``polarizer`` or ``retarder``. For an absorber,
+    `bands` are (from nm, to nm, share passed at normal incidence over `thickness_mm`) and
+    light outside every band does not pass; without bands `passes` holds everywhere. For a
+    polarizer `passes` and `refused` are the shares along the axis and across it. For a
+    retarder `waves` is the retardance at `design_nm` (None: the wavelength of the route).
+    """
+
+    kind: str = "clear"
+    axis_rad: float = 0.0
+    passes: float = 1.0
+    refused: float = 1.0
+    waves: float = 0.0
+    design_nm: float | None = None
+    thickness_mm: float = 0.0
+    bands: tuple[tuple[float, float, float], ...] = ()
+
+
+CLEAR = Bulk()
+
+
+class Glass(NamedTuple):
+    """A medium: a material of the catalogue, or a plain index relative to the bench's medium."""
+
+    name: str | None
+    ratio: float | None
+    span: Span | None = None
+
+
+class Stroke(NamedTuple):
+    """A line of the drawing of an element, in its own (x, y), mm.
+
+    `role` is ``outline`` (visible edge), ``coated`` (the coated side of an edge),
+    ``opening`` (what lets light through) or ``hidden``.
+    """
+
+    points: tuple[tuple[float, float], ...]
+    closed: bool
+    role: str
+
+
+class Geometry(NamedTuple):
+    """Everything of an element that light and ink may meet, in its own frame.
+
+    `extent` is the box round the optic as (x back, x front, half width, half height), from
+    which a mount is made; `post_at` is where the post of a bare body stands.
+    """
+
+    faces: tuple[Face, ...]
+    solids: tuple[Solid, ...]
+    strokes: tuple[Stroke, ...]
+    extent: tuple[float, float, float, float]
+    glass: Glass | None = None
+    bulk: Bulk = CLEAR
+    material: str | None = None
+    post_at: tuple[float, float] | None = None
+
+
+class ElementKind(Record):
+    """A kind of element: one class a kind, one file a class, one line in the registry."""
+
+    KIND: ClassVar[str]
+    BRANCHES: ClassVar[Branches] = {}
+    DEFAULT_BRANCH: ClassVar[str | None] = None
+    PENDING: ClassVar[str | None] = None
+    """For a kind that is read but not traced yet: what to tell the user."""
+    TURNS_FRONT: ClassVar[bool] = False
+    """Whether `turn` and `aim` make sense: the front reflects what is meant to go on."""
+    SQUARE: ClassVar[bool] = False
+    """Whether it faces the ray squarely by default, pitch included (targets and dumps)."""
+    MOUNTED: ClassVar[bool] = True
+    """Whether a mount box may be put round it; other kinds have bodies of their own."""
+    DARK_MATTERS: ClassVar[bool] = True
+    """Whether an element of this kind that no beam reaches is worth a finding."""
+    BLOCKS: ClassVar[bool] = False
+    """Whether a stray is properly ended here."""
+
+    def branches(self) -> Branches:
+        """Return the ways through this very element (a cube's depend on how it is turned)."""
+        return self.BRANCHES
+
+    def geometry(self) -> Geometry:
+        """Return faces, bodies and outline in the element's own frame."""
+        raise NotImplementedError
+
+    def is_round(self) -> bool:
+        """Whether the default mount for round optics fits."""
+        return False
+
+    def glass_of(self) -> Glass | None:
+        """Return the medium between the faces, where there is one (for Brewster's angle)."""
+        return None
+
+    def interrupts(self) -> bool:
+        """Whether it is drawn so that it stops its route on purpose (a closed shutter)."""
+        return False

@@ -1,0 +1,120 @@
+"""A beam-splitter cube: a dividing diagonal between two prisms.
+
+.. code-block:: yaml
+
+   PBS: {kind: cube, after: laser, distance: 100, reflectance: {s: 99.5 %, p: 2 %}, sends: left}
+
+Its reference point is its centre. `sends` is where light that enters the front is reflected
+to, as that light sees it; faces are named in the element's own frame, where left is
+anticlockwise of the front normal seen from above.
+"""
+
+from __future__ import annotations
+
+from math import sqrt
+from typing import ClassVar
+
+from benchlay.document.forms import Choice
+from benchlay.document.record import key
+from benchlay.elements._coating import COATING, SHARE, UNCOATED, Coating
+from benchlay.elements._kind import (
+    Branches,
+    ElementKind,
+    Face,
+    Geometry,
+    Glass,
+    Inside,
+    Stroke,
+)
+from benchlay.elements._sized import GLASS, LENGTH
+from benchlay.geometry.outline import rectangle
+from benchlay.geometry.solid import box
+
+_ACROSS = {"front": "back", "back": "front", "left": "right", "right": "left"}
+_TURNED = {
+    # Light into the front travels along -x; its left is the element's right.
+    "left": {"front": "right", "right": "front", "back": "left", "left": "back"},
+    "right": {"front": "left", "left": "front", "back": "right", "right": "back"},
+}
+
+
+def _ways(exits: dict[str, str], event: str) -> tuple[tuple[tuple[str, str], ...], ...]:
+    return tuple(
+        ((entry, "transmitted"), ("diagonal", event), (leave, "transmitted"))
+        for entry, leave in exits.items()
+    )
+
+
+class Cube(ElementKind):
+    """A beam-splitter cube."""
+
+    KIND = "cube"
+    BRANCHES: ClassVar[Branches] = {
+        "transmitted": _ways(_ACROSS, "transmitted"),
+        "reflected": (),
+    }
+
+    side_mm: float = key(LENGTH, default=25.4, name="side", meaning="length of its edges")
+    reflectance: Coating = key(
+        COATING, meaning="reflected share of the diagonal, `{s: 99 %, p: 1 %}`"
+    )
+    sends: str = key(
+        Choice("left", "right"),
+        default="left",
+        meaning="where light into the front is reflected to",
+    )
+    faces: Coating = key(COATING, default=UNCOATED, meaning="coating of the outer faces")
+    glass: Glass = key(GLASS, default=Glass("BK7", None), meaning="the two prisms")
+    clear: float = key(SHARE, default=0.9, meaning="usable share of the outer faces")
+
+    def branches(self) -> Branches:
+        """Return the ways through this cube, which hang on where it sends the light."""
+        return {**self.BRANCHES, "reflected": _ways(_TURNED[self.sends], "reflected")}
+
+    def geometry(self) -> Geometry:
+        """Return four outer faces, the diagonal and the block."""
+        half = self.side_mm / 2
+        outline = rectangle(self.side_mm, self.side_mm)
+        clear = outline.scaled(self.clear)
+        outer = tuple(
+            Face(
+                name,
+                (half * x, half * y, 0.0),
+                (x, y, 0.0),
+                outline,
+                clear,
+                coating=self.faces,
+            )
+            for name, x, y in (
+                ("front", 1.0, 0.0),
+                ("back", -1.0, 0.0),
+                ("left", 0.0, 1.0),
+                ("right", 0.0, -1.0),
+            )
+        )
+        slant = -1.0 if self.sends == "left" else 1.0
+        long = rectangle(self.side_mm * sqrt(2), self.side_mm)
+        diagonal = Face(
+            "diagonal",
+            (0.0, 0.0, 0.0),
+            (1 / sqrt(2), slant / sqrt(2), 0.0),
+            long,
+            long,
+            coating=self.reflectance,
+            inside=Inside.BOTH,
+        )
+        block = box("edge", (-half, half), (-half, half), (-half, half))
+        square = ((half, -half), (half, half), (-half, half), (-half, -half))
+        cut = ((-half, -half), (half, half)) if slant < 0 else ((-half, half), (half, -half))
+        strokes = (Stroke(square, True, "outline"), Stroke(cut, False, "coated"))
+        return Geometry(
+            (*outer, diagonal),
+            (block,),
+            strokes,
+            (-half, half, half, half),
+            glass=self.glass,
+        )
+
+    def glass_of(self) -> Glass:
+        """Return the glass of the prisms."""
+        return self.glass

@@ -1,0 +1,117 @@
+"""An ideal thin lens, with the face reflections of an equi-convex or equi-concave one.
+
+.. code-block:: yaml
+
+   L1: {kind: lens, after: laser, distance: 100, diameter: 25.4, focal: 200}
+
+It has no path of its own; its two faces stand in one place, and their reflections are those
+of a lens of `glass` whose two radii are equal (an assumption that the notes repeat).
+"""
+
+from __future__ import annotations
+
+from math import copysign, sqrt
+from typing import ClassVar
+
+from benchlay.document.form import Reader
+from benchlay.document.forms import Choice, Pair, Quantity
+from benchlay.document.quantity import Dimension
+from benchlay.document.record import key
+from benchlay.elements._coating import COATING, UNCOATED, Coating
+from benchlay.elements._kind import Acts, Branches, ElementKind, Geometry, Glass, Stroke
+from benchlay.elements._radius import RADIUS
+from benchlay.elements._sized import GLASS, LENGTH, PlateShape, Sized
+from benchlay.elements._through import TRANSMITTED
+
+_FOCAL = Quantity(Dimension.LENGTH)
+_DRAWN_INDEX = 1.5  # for the picture only: radii of the drawn lens are 2 (n - 1) f
+_ARC_STEPS = 12
+
+
+class Lens(Sized, ElementKind):
+    """A thin lens."""
+
+    KIND = "lens"
+    BRANCHES: ClassVar[Branches] = {"transmitted": TRANSMITTED}
+    DEFAULT_BRANCH = "transmitted"
+
+    focal_mm: float | None = key(
+        _FOCAL, default=None, name="focal", meaning="focal length; negative diverges"
+    )
+    radii_mm: tuple[float, float] | None = key(
+        Pair(RADIUS),
+        default=None,
+        name="radii",
+        meaning="radii of front and back",
+        not_yet="lenses given by radii",
+    )
+    thickness_mm: float = key(
+        LENGTH, default=4.0, name="thickness", meaning="thickness at the middle"
+    )
+    glass: Glass = key(GLASS, default=Glass("BK7", None), meaning="the glass")
+    front: Coating = key(COATING, default=UNCOATED, meaning="coating of the front face")
+    back: Coating = key(COATING, default=UNCOATED, meaning="coating of the back face")
+    acts: str = key(
+        Choice("both", "across", "up"),
+        default="both",
+        meaning="in which directions it bends (cylindrical lenses)",
+    )
+
+    def after_read(self, reader: Reader) -> None:
+        """Ask for a focal length that is not nought, and say what is not traced yet."""
+        super().after_read(reader)
+        if self.focal_mm is None and self.radii_mm is None:
+            reader.complain(
+                self.span,
+                "a lens needs its focal length",
+                expected="`focal: 200`",
+                remedy="add `focal`",
+            )
+        if self.focal_mm == 0.0:
+            reader.complain(
+                self.spans["focal"],
+                "a focal length of 0 mm",
+                expected="a length other than 0; negative for a diverging lens",
+                remedy="give the focal length",
+            )
+        if self.acts != "both":
+            reader.complain(
+                self.spans["acts"],
+                "not yet: cylindrical lenses are read but cannot be traced by this version",
+                expected="`acts: both`",
+                remedy="leave `acts` out",
+            )
+
+    def geometry(self) -> Geometry:
+        """Return two bending faces in one place."""
+        outline = self.outline()
+        shape = PlateShape(outline, outline.scaled(self.clear), 0.0)
+        focal = self.focal_mm or float("inf")
+        faces = tuple(
+            face._replace(acts=Acts.LENS, focal_mm=focal)
+            for face in shape.faces(self.front, self.back)
+        )
+        half_width, half_height = outline.radii
+        extent = (
+            -self.thickness_mm / 2,
+            self.thickness_mm / 2,
+            half_width,
+            half_height,
+        )
+        return Geometry(faces, (), (self._picture(half_width),), extent, glass=self.glass)
+
+    def _picture(self, half: float) -> Stroke:
+        radius = max(2 * (_DRAWN_INDEX - 1) * abs(self.focal_mm or 1.0), 1.05 * half)
+        sign = copysign(1.0, self.focal_mm or 1.0)
+        steps = [half * (2 * i / _ARC_STEPS - 1) for i in range(_ARC_STEPS + 1)]
+        sags = [radius - sqrt(radius * radius - y * y) for y in steps]
+        middle = self.thickness_mm / 2 if sign > 0 else self.thickness_mm / 4
+        edge = max(middle - sags[0], 0.4) if sign > 0 else 0.0
+        top = edge + sags[0] if sign > 0 else middle
+        front = [(top - sign * sag, y) for y, sag in zip(steps, sags, strict=True)]
+        back = [(-x, y) for x, y in reversed(front)]
+        return Stroke((*front, *back), closed=True, role="outline")
+
+    def glass_of(self) -> Glass:
+        """Return the glass."""
+        return self.glass

@@ -1,0 +1,179 @@
+"""Mounts: an opaque box round an optic, from its front plane backwards, on a post."""
+
+from __future__ import annotations
+
+from typing import Any, NamedTuple
+
+from benchlay.document.form import Form, Reader
+from benchlay.document.forms import Choice, Fixed, ListOf, Quantity
+from benchlay.document.nodes import Node, Scalar
+from benchlay.document.quantity import Dimension
+from benchlay.document.record import Record, RecordForm, key
+from benchlay.elements._kind import ElementKind, Geometry
+from benchlay.geometry.solid import Solid, box, post
+
+_LENGTH = Quantity(Dimension.LENGTH, above=0.0)
+_COORDINATE = Quantity(Dimension.LENGTH)
+
+# Common practice: what a plain mount of an optic up to 50 mm looks like.
+ROUND_UP_TO_MM = 50.0
+_RIM_MM = 14.0
+_BEHIND_MM = 12.0
+FOOT_MM = (50.0, 75.0)
+FOOT_THICKNESS_MM = 10.0
+POST_DIAMETER_MM = 12.7
+
+
+class Mount(Record):
+    """What holds an optic. Keys left out follow from the optic's size."""
+
+    width_mm: float | None = key(_LENGTH, default=None, name="width", meaning="of the box")
+    depth_mm: float | None = key(
+        _LENGTH, default=None, name="depth", meaning="of the box, front to back"
+    )
+    height_mm: float | None = key(_LENGTH, default=None, name="height", meaning="of the box")
+    post_mm: tuple[float, float] | None = key(
+        Fixed(_COORDINATE, 2),
+        default=None,
+        name="post",
+        meaning="[along, left] of the post from the reference point",
+    )
+    post_diameter_mm: float = key(
+        _LENGTH, default=POST_DIAMETER_MM, name="post_diameter", meaning="of the post"
+    )
+    foot_mm: tuple[float, float] | None = key(
+        Fixed(_LENGTH, 2),
+        default=FOOT_MM,
+        name="foot",
+        meaning="[width, depth] of the foot on the bench",
+    )
+    slots: Any = key(
+        ListOf(Fixed(_COORDINATE, 2), min=0),
+        default=None,
+        meaning="where bolts go through the foot, [along, left]",
+        not_yet="bolt slots come with the drilling sheet",
+        not_yet_is_note=True,
+    )
+    optic_height_mm: float | None = key(
+        _LENGTH,
+        default=None,
+        name="optic_height",
+        meaning="of the optical centre above the lower side of the box",
+    )
+    adjusters: str = key(
+        Choice("back", "left", "right", "top"),
+        default="back",
+        meaning="where its knobs or driver holes are",
+    )
+    range_rad: float = key(
+        Quantity(Dimension.ANGLE, at_least=0.0),
+        default=0.06981317007977318,
+        name="range",
+        meaning="tilt, both ways",
+    )
+
+
+class MountForm(Form[Any]):
+    """Reads a mount: `none`, or a table of its sizes. The value is NO_MOUNT or a Mount."""
+
+    _record = RecordForm(Mount)
+
+    def text(self) -> str:
+        """Say what is expected."""
+        return "`none`, or " + self._record.text()
+
+    def example(self) -> str:
+        """Give one that may be written."""
+        return "{width: 40, depth: 20, height: 40}"
+
+    def schema(self) -> dict[str, Any]:
+        """Return the JSON Schema of a mount."""
+        return {"anyOf": [{"const": "none"}, self._record.schema()]}
+
+    def read(self, node: Node, reader: Reader) -> Any:  # noqa: ANN401 (NO_MOUNT or a Mount)
+        """Read a mount, adding what is wrong to the reader's problems."""
+        if isinstance(node, Scalar) and node.text == "none":
+            return NO_MOUNT
+        return self._record.read(node, reader)
+
+
+class NoMount:
+    """The class of `NO_MOUNT`: no box, post or foot."""
+
+
+NO_MOUNT = NoMount()
+MOUNT = MountForm()
+DEFAULT_MOUNT = Mount()
+
+
+class Holder(NamedTuple):
+    """The solids that hold an element: the box in its own frame, post and foot upright."""
+
+    box: Solid | None
+    upright: tuple[Solid, ...]
+    post_mm: tuple[float, float] | None
+
+
+NOTHING = Holder(None, (), None)
+
+
+def holder(
+    record: ElementKind,
+    geometry: Geometry,
+    mount: Mount | NoMount | None,
+    height_mm: float,
+) -> Holder:
+    """Return what holds an element whose reference point is `height_mm` above the bench.
+
+    `mount` is what the layout says (None where it says nothing).
+    """
+    if isinstance(mount, NoMount):
+        return NOTHING
+    if not record.MOUNTED:
+        return _bare(geometry, mount or DEFAULT_MOUNT, height_mm)
+    if mount is None and not _default_fits(record, geometry):
+        return NOTHING
+    return _boxed(geometry, mount or DEFAULT_MOUNT, height_mm)
+
+
+def _default_fits(record: ElementKind, geometry: Geometry) -> bool:
+    return record.is_round() and 2 * geometry.extent[2] <= ROUND_UP_TO_MM
+
+
+def _boxed(geometry: Geometry, mount: Mount, height_mm: float) -> Holder:
+    back, front, half_width, half_height = geometry.extent
+    width = mount.width_mm or 2 * half_width + _RIM_MM
+    height = mount.height_mm or 2 * half_height + _RIM_MM
+    depth = mount.depth_mm or (front - back) + _BEHIND_MM
+    lower = -(mount.optic_height_mm or height / 2)
+    at = mount.post_mm or (front - depth / 2, 0.0)
+    shell = box(
+        "mount",
+        (front - depth, front),
+        (-width / 2, width / 2),
+        (lower, lower + height),
+    )
+    return Holder(shell, _stand(at, mount, height_mm + lower), at)
+
+
+def _bare(geometry: Geometry, mount: Mount, height_mm: float) -> Holder:
+    at = mount.post_mm or geometry.post_at
+    if at is None:
+        return NOTHING
+    top = height_mm - geometry.extent[3]
+    without_foot = mount.replace(foot_mm=None) if not mount.written("foot") else mount
+    return Holder(None, _stand(at, without_foot, top), at)
+
+
+def _stand(at: tuple[float, float], mount: Mount, top_mm: float) -> tuple[Solid, ...]:
+    """Return post and foot from the bench (height 0) up to the lower side of the box."""
+    if top_mm <= 0.0:
+        return ()
+    thickness = min(FOOT_THICKNESS_MM, top_mm)
+    solids = [post(mount.post_diameter_mm / 2, at, (0.0, top_mm))]
+    if mount.foot_mm is not None:
+        x, y = at
+        width, depth = mount.foot_mm
+        across = (x - depth / 2, x + depth / 2), (y - width / 2, y + width / 2)
+        solids.append(box("foot", *across, (0.0, thickness), upright=True))
+    return tuple(solids)

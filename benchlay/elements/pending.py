@@ -1,0 +1,221 @@
+"""Kinds that the language knows and this version does not trace yet.
+
+Their keys are read and checked like all others; a layout that uses one is told "not yet".
+"""
+
+from __future__ import annotations
+
+from typing import Any, ClassVar
+
+from benchlay.document.forms import (
+    Choice,
+    Deferred,
+    Dimension,
+    Fixed,
+    ListOf,
+    OneOf,
+    Pair,
+    Quantity,
+    RecordForm,
+    Text,
+    YesNo,
+)
+from benchlay.document.record import Record, key
+from benchlay.elements import _through
+from benchlay.elements._coating import COATING, SHARE, UNCOATED, Coating
+from benchlay.elements._kind import Branches, ElementKind, Glass
+from benchlay.elements._sized import GLASS, LENGTH, LENGTH_OR_ZERO, Sized
+
+_ANGLE = Quantity(Dimension.ANGLE)
+_COORDINATE = Quantity(Dimension.LENGTH)
+_WAVELENGTH = Quantity(Dimension.WAVELENGTH, above=0.0)
+_POINT = Fixed(_COORDINATE, 2)
+_WHY = "this kind is read but cannot be traced by this version"
+
+
+class Rotator(Sized, ElementKind):
+    """A Faraday rotator: turns polarization by the same sense in space both ways."""
+
+    KIND = "rotator"
+    BRANCHES: ClassVar[Branches] = {"transmitted": _through.TRANSMITTED}
+    DEFAULT_BRANCH = "transmitted"
+    PENDING = _WHY
+
+    angle_rad: float = key(
+        _ANGLE, default=0.7853981633974483, name="angle", meaning="by which it turns"
+    )
+    thickness_mm: float = key(
+        LENGTH_OR_ZERO,
+        default=0.0,
+        name="thickness",
+        meaning="thickness; 0 for a thin one",
+    )
+    glass: Glass = key(GLASS, default=Glass("BK7", None), meaning="what it is made of")
+    front: Coating = key(COATING, default=UNCOATED, meaning="coating of the front face")
+    back: Coating = key(COATING, default=UNCOATED, meaning="coating of the back face")
+
+
+class Grating(Sized, ElementKind):
+    """A plane grating, rulings upright."""
+
+    KIND = "grating"
+    PENDING = _WHY
+
+    lines_per_mm: float = key(
+        Quantity(Dimension.RATIO, above=0.0), name="lines", meaning="rulings per mm"
+    )
+    orders: Any = key(Deferred("share by order, `{-1: 70 %, 0: 15 %}`"), meaning="share by order")
+    transmissive: bool = key(YesNo(), default=False, meaning="whether light goes through")
+
+
+class Prism(ElementKind):
+    """A prism over a convex outline."""
+
+    KIND = "prism"
+    BRANCHES: ClassVar[Branches] = {"transmitted": (), "reflected": ()}
+    DEFAULT_BRANCH = "transmitted"
+    PENDING = _WHY
+
+    outline_mm: tuple[tuple[float, float], ...] = key(
+        ListOf(_POINT, min=3), name="outline", meaning="corners seen from above"
+    )
+    glass: Glass = key(GLASS, default=Glass("BK7", None), meaning="the glass")
+    depth_mm: float = key(
+        LENGTH, default=25.0, name="depth", meaning="height, about the reference point"
+    )
+    faces: Any = key(
+        Deferred("coatings by the number of the face"),
+        default=None,
+        meaning="coatings by face",
+    )
+
+
+class Parabola(ElementKind):
+    """An off-axis parabolic mirror."""
+
+    KIND = "parabola"
+    BRANCHES: ClassVar[Branches] = {"reflected": ((("front", "reflected"),),)}
+    DEFAULT_BRANCH = "reflected"
+    PENDING = _WHY
+
+    focal_mm: float = key(LENGTH, name="focal", meaning="focal length of the parent")
+    off_axis_rad: float = key(_ANGLE, name="off_axis", meaning="angle by which it turns the beam")
+    diameter_mm: float | None = key(LENGTH, default=None, name="diameter", meaning="of a round one")
+    size_mm: tuple[float, float] | None = key(
+        Pair(LENGTH), default=None, name="size", meaning="width and height"
+    )
+    reflectance: Coating | None = key(COATING, default=None, meaning="reflected share")
+    metal: str | None = key(Text(), default=None, meaning="metal film")
+    clear: float = key(SHARE, default=0.9, meaning="usable share of the diameter or sizes")
+
+
+class Retroreflector(ElementKind):
+    """A corner cube: sends light back the way it came."""
+
+    KIND = "retroreflector"
+    BRANCHES: ClassVar[Branches] = {"reflected": ()}
+    DEFAULT_BRANCH = "reflected"
+    PENDING = _WHY
+
+    diameter_mm: float = key(LENGTH, name="diameter", meaning="of its opening")
+    glass: Glass | None = key(GLASS, default=None, meaning="the glass; hollow without")
+    reflectance: Coating | None = key(COATING, default=None, meaning="of its faces")
+    clear: float = key(SHARE, default=0.9, meaning="usable share of the diameter")
+
+
+class CellWindows(Record):
+    """The two windows of a cell."""
+
+    incidence: Any = key(
+        OneOf(Choice("brewster"), _ANGLE),
+        default=0.0,
+        meaning="angle, or `brewster`; tilted in plan",
+    )
+    glass: Glass = key(GLASS, default=Glass("fused-silica", None), meaning="their glass")
+    thickness_mm: float = key(LENGTH, default=3.0, name="thickness", meaning="of each")
+    diameter_mm: float | None = key(
+        LENGTH, default=None, name="diameter", meaning="of each; covers the bore"
+    )
+    front: Coating = key(COATING, default=UNCOATED, meaning="coating of the outer faces")
+    back: Coating = key(COATING, default=UNCOATED, meaning="coating of the inner faces")
+    set: str = key(
+        Choice("mirrored", "parallel"),
+        default="mirrored",
+        meaning="how the two are tilted",
+    )
+
+
+class Cell(ElementKind):
+    """A tube with two windows."""
+
+    KIND = "cell"
+    BRANCHES: ClassVar[Branches] = {"transmitted": ()}
+    DEFAULT_BRANCH = "transmitted"
+    PENDING = _WHY
+
+    length_mm: float = key(LENGTH, name="length", meaning="between the outer faces")
+    bore_mm: float = key(LENGTH, name="bore", meaning="inner diameter")
+    windows: CellWindows = key(
+        RecordForm(CellWindows), default=CellWindows(), meaning="the two windows"
+    )
+    fill: Glass | None = key(
+        GLASS,
+        default=None,
+        meaning="what it is filled with; the bench's medium without",
+    )
+    clear: float = key(SHARE, default=0.9, meaning="usable share of the windows")
+
+
+class Product(Record):
+    """Light that a converter makes."""
+
+    wavelength_nm: float = key(_WAVELENGTH, name="wavelength", meaning="of the light made")
+    share: float = key(SHARE, meaning="of the power that becomes this light")
+    polarization: Any = key(Deferred("a polarization"), default=None, meaning="of the light made")
+
+
+class Converter(Sized, ElementKind):
+    """A crystal that turns light of one wavelength into another."""
+
+    KIND = "converter"
+    BRANCHES: ClassVar[Branches] = {"transmitted": _through.TRANSMITTED}
+    DEFAULT_BRANCH = "transmitted"
+    PENDING = _WHY
+
+    produces: tuple[Product, ...] = key(ListOf(RecordForm(Product)), meaning="what it makes")
+    length_mm: float = key(LENGTH, name="length", meaning="of the crystal")
+    glass: Glass = key(GLASS, default=Glass(None, 1.6), meaning="its index")
+    front: Coating = key(COATING, default=UNCOATED, meaning="coating of the entry")
+    back: Coating = key(COATING, default=UNCOATED, meaning="coating of the exit")
+
+
+class Tube(ElementKind):
+    """An opaque beam tube between two points."""
+
+    KIND = "tube"
+    BRANCHES: ClassVar[Branches] = {"transmitted": ((("front", "transmitted"),),)}
+    DEFAULT_BRANCH = "transmitted"
+    PENDING = _WHY
+    MOUNTED = False
+    DARK_MATTERS = False
+
+    bore_mm: float = key(LENGTH, name="bore", meaning="inner diameter")
+    to: Any = key(
+        OneOf(_POINT, Text()),
+        meaning="where it ends: a point, or the name of an element",
+    )
+    material: str | None = key(
+        Text(), default=None, meaning="what it is made of (a name under `materials`)"
+    )
+
+
+PENDING_KINDS: tuple[type[ElementKind], ...] = (
+    Rotator,
+    Grating,
+    Prism,
+    Parabola,
+    Retroreflector,
+    Cell,
+    Converter,
+    Tube,
+)

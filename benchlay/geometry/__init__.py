@@ -1,0 +1,1 @@
+"""Outlines and solids as plain data: what bodies and faces are made of."""
