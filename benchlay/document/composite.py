@@ -8,7 +8,8 @@ from typing import Any, Generic, TypeVar
 
 from benchlay.document.form import Failed, Form, Reader, show_plainly
 from benchlay.document.nodes import Mapping, Node, Scalar, Sequence
-from benchlay.document.problems import Problems
+from benchlay.document.problems import Problem, Problems
+from benchlay.document.scalars import Quantity, Whole
 from benchlay.document.span import Span
 from benchlay.document.texts import Name
 from benchlay.document.words import quote
@@ -269,20 +270,14 @@ class OneOf(Form[Any]):
         if not trials or (isinstance(node, Scalar) and not node.text.strip()):
             reader.refuse(node, self)
             return
-        found = min(trials, key=len).sorted()
         if isinstance(node, Scalar):
-            # A number is best judged by the form that reads numbers; its choices are all.
-            number = node.text.strip()[:1] in set("+-.0123456789")
-            if not number or len(found) != 1:
-                reader.refuse(node, self)
-                return
-            numeric = [t.sorted()[0] for t in trials]
-            best = next(
-                (p for p in numeric if "not known here" not in p.message), found[0]
-            )
-            reader.problems.add(
-                best.span, best.message, expected=self.text(), remedy=best.remedy
-            )
+            self._refuse_text(node, reader, [trial.sorted()[0] for trial in trials])
+            return
+        # The form that came furthest speaks: one that found nothing wrong with the node
+        # itself, only with what is inside it.
+        found = min((t.sorted() for t in trials), key=lambda p: (p[0].span == node.span, len(p)))
+        if found[0].span == node.span and len(trials) > 1:
+            reader.refuse(node, self)
             return
         for problem in found:
             reader.problems.add(
@@ -291,6 +286,20 @@ class OneOf(Form[Any]):
                 expected=problem.expected,
                 remedy=problem.remedy,
             )
+
+    def _refuse_text(self, node: Scalar, reader: Reader, found: list[Problem]) -> None:
+        """Let the form that reads numbers judge a number; its choices are those of all."""
+        numeric = node.text.strip()[:1] in set("+-.0123456789")
+        judges = [p for form, p in zip(self._single(node), found, strict=True) if form]
+        if not numeric or len(judges) != 1:
+            reader.refuse(node, self)
+            return
+        best = judges[0]
+        reader.problems.add(best.span, best.message, expected=self.text(), remedy=best.remedy)
+
+    def _single(self, node: Scalar) -> list[bool]:
+        """Tell of each form that takes text whether it reads numbers."""
+        return [isinstance(f, (Quantity, Whole)) for f in self.forms if f.takes(node)]
 
     def text(self) -> str:
         """List what may be written."""

@@ -50,9 +50,7 @@ class Reader:
         """Count what went wrong so far, also what had been reported before."""
         return len(self.problems) + self._silent
 
-    def complain(
-        self, where: Node | Span, what: str, *, expected: str, remedy: str
-    ) -> None:
+    def complain(self, where: Node | Span, what: str, *, expected: str, remedy: str) -> None:
         """Add a problem, named by the path of keys; `where` is a node or a place."""
         span = where if isinstance(where, Span) else where.span
         self.problems.add(span, self.named(what), expected=expected, remedy=remedy)
@@ -79,7 +77,7 @@ class Reader:
             node,
             what,
             expected=form.text(),
-            remedy=f"write {form.text()}, such as {form.example()}",
+            remedy=f"write it in that form, such as {form.example()}",
         )
 
     def attempt(self, form: Form[T], node: Node, name: str) -> T | Failed:

@@ -61,7 +61,7 @@ class Problems:
         return self._added > 0
 
     def sorted(self) -> list[Problem]:
-        """Return the problems by file, line and column; beyond the limit a last one says how many."""
+        """Return the problems by place; beyond the limit a last one says how many."""
         ordered = sorted(self._kept)
         if self._dropped:
             ordered.append(

@@ -81,11 +81,9 @@ def parse(text: str, dimension: Dimension) -> float:
     if unit.parts_of_degree:
         value = math.radians(value / unit.parts_of_degree)
     if not math.isfinite(value):
-        raise QuantityError(
-            f"{quote(text)} is too large a number",
-            describe_dimension(dimension),
-            "check the exponent and the unit",
-        )
+        message = f"{quote(text)} is too large a number"
+        remedy = "check the exponent and the unit"
+        raise QuantityError(message, describe_dimension(dimension), remedy)
     return value
 
 
@@ -103,15 +101,15 @@ def show(value: float, dimension: Dimension) -> str:
 def describe_dimension(dimension: Dimension, bounds: str = "") -> str:
     """Say what may be written, bounds and units included."""
     what = f"{dimension.noun}{bounds}"
-    units = [f"'{name}'" for name in dimension.units]
     if dimension is Dimension.DENSITY:
         return f"{what}, as '2' or 'OD 2'"
     if dimension is Dimension.RATIO:
         return f"{what}, as '0.5', '50 %', '5 ppm' or 'OD 0.3'"
-    listed = " ".join(units).replace("'", "")
+    listed = " ".join(dimension.units)
+    comma = "," if bounds else ""
     if dimension.bare is None:
-        return f"{what} with its unit ({listed})"
-    return f"{what} in {dimension.bare}, or with its unit ({listed})"
+        return f"{what}{comma} with its unit ({listed})"
+    return f"{what}{comma} in {dimension.bare} or with its unit ({listed})"
 
 
 def _optical_density(text: str, dimension: Dimension) -> float:
@@ -133,8 +131,7 @@ def _unit(text: str, written: str | None, dimension: Dimension) -> Unit:
             raise QuantityError(
                 f"{quote(text)} has no unit",
                 describe_dimension(dimension),
-                f"write '{text.strip()} {next(iter(dimension.units))}', "
-                "or whichever unit is meant",
+                f"write '{text.strip()} {next(iter(dimension.units))}', or whichever unit is meant",
             )
         return dimension.units.get(dimension.bare, Unit())
     name = re.sub(r"\s*/\s*", "/", written.strip().translate(_SIGNS))
@@ -144,9 +141,7 @@ def _unit(text: str, written: str | None, dimension: Dimension) -> Unit:
     return unit
 
 
-def _unknown_unit(
-    text: str, written: str, name: str, dimension: Dimension
-) -> QuantityError:
+def _unknown_unit(text: str, written: str, name: str, dimension: Dimension) -> QuantityError:
     number = text.strip().removesuffix(written).strip()
     if _odd_number(written):
         return _not_a_number(text, dimension)
@@ -177,9 +172,7 @@ def _other_dimension(text: str, found: Dimension, wanted: Dimension) -> Quantity
 
 def _odd_number(written: str) -> bool:
     """Tell whether what follows the digits is part of a number in another notation."""
-    return written[0] in ",_:" or (
-        written[0] in "xXobOB" and any(c.isdigit() for c in written)
-    )
+    return written[0] in ",_:" or (written[0] in "xXobOB" and any(c.isdigit() for c in written))
 
 
 def _not_a_number(text: str, dimension: Dimension) -> QuantityError:
@@ -190,12 +183,8 @@ def _not_a_number(text: str, dimension: Dimension) -> QuantityError:
         point = f"{whole}.{part}{rest}".strip()
         remedy = f"write '{point}'"
         if len(part) == 3:  # noqa: PLR2004 - digits in a group of thousands
-            remedy += (
-                f", or '{whole}{part}{rest.rstrip()}' if the comma groups thousands"
-            )
-        return QuantityError(
-            f"{quote(text)} has a comma in its number", expected, remedy
-        )
+            remedy += f", or '{whole}{part}{rest.rstrip()}' if the comma groups thousands"
+        return QuantityError(f"{quote(text)} has a comma in its number", expected, remedy)
     if _GROUPED.fullmatch(text):
         return QuantityError(
             f"{quote(text)} has a '_' in its number",

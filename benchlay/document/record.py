@@ -42,6 +42,7 @@ class Key:
     def __init__(
         self,
         form: Form[Any],
+        *,
         default: object,
         name: str | None,
         meaning: str,
@@ -91,7 +92,14 @@ def key(
         Why the key is not acted on yet; writing anything but the default is then an error,
         or with `not_yet_is_note` a note in the reader.
     """
-    return Key(form, default, name, meaning, not_yet, not_yet_is_note)
+    return Key(
+        form,
+        default=default,
+        name=name,
+        meaning=meaning,
+        not_yet=not_yet,
+        not_yet_is_note=not_yet_is_note,
+    )
 
 
 @dataclass_transform(kw_only_default=True, frozen_default=True, field_specifiers=(key,))
@@ -319,5 +327,4 @@ class RecordForm(Form[R]):
         """Give the schema of the record."""
         from benchlay.document.describe import schema_of
 
-        return schema_of(self.cls)
-
+        return schema_of(self.cls, extra=self.extra)

@@ -59,9 +59,7 @@ class Quantity(Single[float]):
             number = parse(node.text, self.dimension)
         except QuantityError as error:
             expected = self.text()
-            reader.complain(
-                node, error.message, expected=expected, remedy=self._remedy(error)
-            )
+            reader.complain(node, error.message, expected=expected, remedy=self._remedy(error))
             return None
         wrong = self._beyond(number)
         if wrong:
@@ -157,9 +155,7 @@ class Whole(Single[int]):
         text = node.text.strip()
         if self._PATTERN.fullmatch(text) and self.low <= int(text) <= self.high:
             return int(text)
-        wrong = (
-            "out of range" if self._PATTERN.fullmatch(text) else "not a whole number"
-        )
+        wrong = "out of range" if self._PATTERN.fullmatch(text) else "not a whole number"
         reader.complain(
             node,
             f"{quote(node.text)} is {wrong}",

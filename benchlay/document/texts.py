@@ -91,9 +91,7 @@ class Name(Single[str]):
             remedy = self._mend(text)
         else:
             return text
-        reader.complain(
-            node, f"{quote(text)} {problem}", expected=self.text(), remedy=remedy
-        )
+        reader.complain(node, f"{quote(text)} {problem}", expected=self.text(), remedy=remedy)
         return None
 
     @staticmethod
@@ -106,10 +104,7 @@ class Name(Single[str]):
 
     def text(self) -> str:
         """Say the rule."""
-        return (
-            f"{self.what} of letters, digits, '-' and '_', "
-            f"a letter first, at most {NAME_LENGTH}"
-        )
+        return f"{self.what} of letters, digits, '-' and '_', a letter first, at most {NAME_LENGTH}"
 
     def example(self) -> str:
         """Return a name."""

@@ -12,9 +12,7 @@ _LONGEST_WORD = 64
 def quote(text: str) -> str:
     """Return `text` between quotes, shortened, with nothing that could garble a terminal."""
     short = text if len(text) <= _SHOWN else text[: _SHOWN - 1] + "…"
-    clean = "".join(
-        c if c.isprintable() else c.encode("unicode_escape").decode() for c in short
-    )
+    clean = "".join(c if c.isprintable() else c.encode("unicode_escape").decode() for c in short)
     return f"'{clean}'"
 
 

@@ -8,10 +8,12 @@ from __future__ import annotations
 
 from typing import Any
 
+import yaml
+
 from benchlay.document.problems import Problems
 from benchlay.document.span import Span
 
-# Words in the parser's own text -> what is wrong, what was expected, how to mend it.
+# Words in the parsers' own texts -> what is wrong, what was expected, how to mend it.
 _KNOWN: tuple[tuple[str, str, str, str], ...] = (
     (
         "mapping values are not allowed",
@@ -73,21 +75,58 @@ _KNOWN: tuple[tuple[str, str, str, str], ...] = (
         "text in double quotes without backslashes",
         "use single quotes",
     ),
+    (
+        "did not find expected node content",
+        "a value is missing here, or a bracket closes what is not open",
+        "a value",
+        "remove the comma or bracket that is too many, or put the text in quotes",
+    ),
+    (
+        "expected the node content",
+        "a value is missing here, or a bracket closes what is not open",
+        "a value",
+        "remove the comma or bracket that is too many, or put the text in quotes",
+    ),
+    (
+        "expected alphabetic or numeric",
+        "a value cannot begin with '*' or '&'",
+        "a value, or text in quotes",
+        "put the value in quotes",
+    ),
 )
 
 
-def explain(error: Any, file: str, problems: Problems) -> None:
+def too_deep(most: int) -> tuple[str, str, str]:
+    """Return message, expectation and mend for too many brackets in one another."""
+    return (
+        f"values are nested more than {most} deep",
+        f"at most {most} lists and tables inside one another",
+        "check the brackets before this place",
+    )
+
+
+def explain(error: yaml.YAMLError, file: str, problems: Problems, most_deep: int) -> None:
     """Add the problem that an error of the parser stands for."""
     mark = getattr(error, "problem_mark", None) or getattr(error, "context_mark", None)
-    span = Span(file, mark.line + 1, mark.column + 1) if mark else Span(file, 1, 1)
+    span = _span(mark, file)
     raw = str(getattr(error, "problem", None) or error).splitlines()[0]
+    if "maximum nesting depth" in raw:
+        message, expected, remedy = too_deep(most_deep)
+    else:
+        message, expected, remedy = _explained(raw)
+    opening = getattr(error, "context_mark", None)
+    if "closed" in message and opening is not None:
+        opened = _span(opening, file)
+        message += f"; it begins in line {opened.line}, column {opened.column}"
+    problems.add(span, message, expected=expected, remedy=remedy)
+
+
+def _span(mark: Any, file: str) -> Span:  # noqa: ANN401 - either parser's own class
+    return Span(file, mark.line + 1, mark.column + 1) if mark else Span(file, 1, 1)
+
+
+def _explained(raw: str) -> tuple[str, str, str]:
     for words, message, expected, remedy in _KNOWN:
         if words in raw:
-            problems.add(span, message, expected=expected, remedy=remedy)
-            return
-    problems.add(
-        span,
-        f"this is not YAML: {raw}",
-        expected="YAML",
-        remedy="correct the line, or put the text in quotes",
-    )
+            return message, expected, remedy
+    return f"this is not YAML: {raw}", "YAML", "correct the line, or put the text in quotes"

@@ -6,7 +6,6 @@ and depth and number of nodes are bounded while reading, before anything can blo
 
 from __future__ import annotations
 
-import re
 from collections.abc import Iterator
 from typing import Any
 
@@ -15,22 +14,15 @@ import yaml
 from benchlay.document.problems import Problems
 from benchlay.document.span import Span
 from benchlay.document.tree import Broken, Mapping, Node, Scalar, Sequence
+from benchlay.document.unseen import UNSEEN, has_tabs, place, without_unseen
 from benchlay.document.words import quote
-from benchlay.document.yaml_errors import explain
+from benchlay.document.yaml_errors import explain, too_deep
 
 MAX_DEPTH = 50
 MAX_NODES = 200_000
 MAX_SCALAR = 10_000
 MAX_FILE = 4_000_000
 """Characters; far above any layout, far below what hurts."""
-
-# What no layout needs and what can make a text look other than it is: control characters,
-# marks that turn the direction of reading, odd line ends, surrogates, tags.
-_UNSEEN = re.compile(
-    "[\x00-\x08\x0b\x0c\x0e-\x1f\x7f-\x9f\u061c\u200e\u200f\u2028-\u202e\u2066-\u2069"
-    "\ud800-\udfff\ufeff\ufff9-\ufffb\ufffe\uffff\U000e0000-\U000e007f]"
-)
-_TAB_INDENT = re.compile(r"^ *\t[ \t]*(?=[^\s#])", re.MULTILINE)
 
 # The C parser is a dozen times faster; where PyYAML was built without it, the other will do.
 _LOADER: Any = getattr(yaml, "CSafeLoader", yaml.SafeLoader)
@@ -43,7 +35,7 @@ def parse_bytes(data: bytes, file: str, problems: Problems) -> Node | None:
     except UnicodeDecodeError as error:
         before = data[: error.start].decode("utf-8", errors="replace")
         problems.add(
-            _place(before, len(before), file),
+            place(before, len(before), file),
             f"byte 0x{data[error.start]:02x} is not part of any UTF-8 character",
             expected="a text file in UTF-8",
             remedy="save the file as UTF-8 in your editor",
@@ -79,14 +71,14 @@ def parse(text: str, file: str, problems: Problems) -> Node | None:
             remedy="check that this is a layout; move shared parts to files of their own",
         )
         return None
-    text = _without_unseen(text, file, problems)
-    if _tabs(text, file, problems):
+    text = without_unseen(text, file, problems)
+    if has_tabs(text, file, problems):
         return None
     builder = _Builder(file, problems)
     try:
         builder.run(yaml.parse(text, Loader=_LOADER))
     except yaml.YAMLError as error:
-        explain(error, file, problems)
+        explain(error, file, problems, MAX_DEPTH)
         return None
     if builder.stopped:
         return None
@@ -100,44 +92,10 @@ def parse(text: str, file: str, problems: Problems) -> Node | None:
     return builder.root
 
 
-def _place(text: str, position: int, file: str) -> Span:
-    """Return line and column of a position; a line may end in any of the three ways."""
-    head = text[:position]
-    line = head.count("\n") + head.count("\r") - head.count("\r\n")
-    return Span(file, line + 1, position - max(head.rfind("\n"), head.rfind("\r")))
-
-
-def _without_unseen(text: str, file: str, problems: Problems) -> str:
-    """Report unseen characters, and put a visible one in their place so that reading goes on."""
-    if not _UNSEEN.search(text):
-        return text
-    for found in _UNSEEN.finditer(text):
-        if problems.full:
-            break
-        problems.add(
-            _place(text, found.start(), file),
-            f"the character U+{ord(found[0]):04X} cannot be seen",
-            expected="characters that can be seen, spaces and line ends",
-            remedy="delete it",
-        )
-    return _UNSEEN.sub("\ufffd", text)
-
-
-def _tabs(text: str, file: str, problems: Problems) -> bool:
-    if "\t" not in text:
-        return False
-    found = False
-    for tab in _TAB_INDENT.finditer(text):
-        found = True
-        if problems.full:
-            break
-        problems.add(
-            _place(text, text.index("\t", tab.start()), file),
-            "this line is indented with a tab",
-            expected="indentation by spaces",
-            remedy="replace each tab at the start of the line by spaces",
-        )
-    return found
+def _short(tag: str) -> str:
+    """Return a tag as it is usually written."""
+    standard = "tag:yaml.org,2002:"
+    return f"!!{tag.removeprefix(standard)}" if tag.startswith(standard) else tag
 
 
 class _Frame:
@@ -170,31 +128,31 @@ class _Builder:
         self._count = 0
         self._documents = 0
 
-    def run(self, events: Iterator[Any]) -> None:
+    def run(self, events: Iterator[object]) -> None:
+        """Build until the events end or a bound is met."""
         for event in events:
-            kind = type(event)
-            if kind is yaml.ScalarEvent:
+            if isinstance(event, yaml.ScalarEvent):
                 self._scalar(event)
-            elif kind is yaml.MappingStartEvent or kind is yaml.SequenceStartEvent:
-                self._open(event, is_table=kind is yaml.MappingStartEvent)
-            elif kind is yaml.MappingEndEvent or kind is yaml.SequenceEndEvent:
+            elif isinstance(event, yaml.CollectionStartEvent):
+                self._open(event)
+            elif isinstance(event, yaml.CollectionEndEvent):
                 self._put(self._stack.pop().finish())
-            elif kind is yaml.AliasEvent:
+            elif isinstance(event, yaml.AliasEvent):
                 self._alias(event)
-            elif kind is yaml.DocumentStartEvent:
+            elif isinstance(event, yaml.DocumentStartEvent):
                 self._document(event)
             if self.stopped:
                 return
 
-    def _span(self, event: Any) -> Span:
-        mark = event.start_mark
+    def _span(self, event: yaml.Event) -> Span:
+        mark: Any = event.start_mark  # there in every event of a parser
         return Span(self.file, mark.line + 1, mark.column + 1)
 
     def _stop(self, span: Span, message: str, expected: str, remedy: str) -> None:
         self.problems.add(span, message, expected=expected, remedy=remedy)
         self.stopped = True
 
-    def _document(self, event: Any) -> None:
+    def _document(self, event: yaml.Event) -> None:
         self._documents += 1
         if self._documents > 1:
             self._stop(
@@ -204,7 +162,7 @@ class _Builder:
                 "remove the line '---', or move what follows to a file of its own",
             )
 
-    def _counted(self, event: Any) -> Span:
+    def _counted(self, event: yaml.ScalarEvent | yaml.CollectionStartEvent) -> Span:
         """Return the event's place, having counted it and refused its anchor and tag."""
         span = self._span(event)
         self._count += 1
@@ -218,7 +176,7 @@ class _Builder:
         if event.tag is not None:
             self.problems.add(
                 span,
-                f"the tag {quote(event.tag)} stands before this value",
+                f"the tag {quote(_short(event.tag))} stands before this value",
                 expected="values without tags: the key decides how a value is read",
                 remedy="remove the tag",
             )
@@ -231,7 +189,7 @@ class _Builder:
             )
         return span
 
-    def _scalar(self, event: Any) -> None:
+    def _scalar(self, event: yaml.ScalarEvent) -> None:
         span = self._counted(event)
         text: str = event.value
         if len(text) > MAX_SCALAR:
@@ -244,7 +202,7 @@ class _Builder:
             self._put(Broken(span))
             return
         # Only double quotes can bring in by escapes what the text itself may not hold.
-        if event.style == '"' and (unseen := _UNSEEN.search(text)):
+        if event.style == '"' and (unseen := UNSEEN.search(text)):
             self.problems.add(
                 span,
                 f"this text holds the character U+{ord(unseen[0]):04X}, which cannot be seen",
@@ -255,26 +213,22 @@ class _Builder:
             return
         self._put(Scalar(text, span, quoted=bool(event.style)))
 
-    def _open(self, event: Any, *, is_table: bool) -> None:
+    def _open(self, event: yaml.CollectionStartEvent) -> None:
         span = self._counted(event)
         if len(self._stack) >= MAX_DEPTH:
-            self._stop(
-                span,
-                f"values are nested more than {MAX_DEPTH} deep",
-                f"at most {MAX_DEPTH} lists and tables inside one another",
-                "check the brackets before this place",
-            )
+            self._stop(span, *too_deep(MAX_DEPTH))
             return
         frame = self._stack[-1] if self._stack else None
         if frame is not None and frame.is_table and frame.key is None:
             self._bad_key(span)
+        is_table = isinstance(event, yaml.MappingStartEvent)
         self._stack.append(_Frame(span, is_table=is_table))
 
-    def _alias(self, event: Any) -> None:
+    def _alias(self, event: yaml.AliasEvent) -> None:
         span = self._span(event)
         self.problems.add(
             span,
-            f"the alias {quote('*' + event.anchor)} stands for something written elsewhere",
+            f"the alias {quote(f'*{event.anchor}')} stands for something written elsewhere",
             expected="values written where they belong",
             remedy="write the value out here; share keys between elements with 'parts'",
         )
