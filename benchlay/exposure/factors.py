@@ -1,6 +1,6 @@
 """Correction factors and time breakpoints of IEC 60825-1:2014.
 
-Every interval is [low, high): a value at a boundary belongs to the row above it.
+Every interval is [low, high): a value at a boundary belongs to the row that begins there.
 Wavelengths are vacuum wavelengths in nm, durations in s, angles in mrad.
 Factors marked "from memory" were recalled from table 9 and clause 4.3 of the 2014
 edition; the others stand in public texts as well.
@@ -30,6 +30,7 @@ RETINA_NM = (400.0, 1400.0)
 VISIBLE_NM = (400.0, 700.0)
 ALPHA_MIN_MRAD = 1.5
 _ALPHA_LARGEST_MRAD = 100.0
+_SLACK = 1e-12
 # Wavelength below which a row holds, nm, and Ti, s.
 _TI_ROWS = (
     (1050.0, 5e-6),
@@ -40,6 +41,13 @@ _TI_ROWS = (
 )
 
 
+def _within(value: float, low: float, high: float) -> float | None:
+    # 100 fs or 1 mm, converted by a product, may miss the end by its last bit.
+    if not low * (1.0 - _SLACK) <= value <= high * (1.0 + _SLACK):
+        return None
+    return min(max(float(value), low), high)
+
+
 def check_wavelength(wavelength_nm: float) -> float:
     """Return the wavelength if limits exist for it, 180 nm to 1 mm inclusive.
 
@@ -48,12 +56,13 @@ def check_wavelength(wavelength_nm: float) -> float:
     OutOfRange
         If it lies outside, or is not a number.
     """
-    if not SHORTEST_NM <= wavelength_nm <= LONGEST_NM:
+    kept = _within(wavelength_nm, SHORTEST_NM, LONGEST_NM)
+    if kept is None:
         msg = (
             f"no exposure limit exists at {wavelength_nm:g} nm: the standard covers 180 nm to 1 mm"
         )
         raise OutOfRange(msg)
-    return float(wavelength_nm)
+    return kept
 
 
 def check_duration(duration_s: float) -> float:
@@ -64,13 +73,14 @@ def check_duration(duration_s: float) -> float:
     OutOfRange
         If it lies outside, or is not a number.
     """
-    if not SHORTEST_S <= duration_s <= LONGEST_S:
+    kept = _within(duration_s, SHORTEST_S, LONGEST_S)
+    if kept is None:
         msg = (
             f"no exposure limit is given for a duration of {duration_s:g} s: "
             "the limits cover 1e-13 s to 30000 s"
         )
         raise OutOfRange(msg)
-    return float(duration_s)
+    return kept
 
 
 def check_alpha(alpha_mrad: float) -> float:
