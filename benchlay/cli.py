@@ -1,0 +1,199 @@
+"""The command line: reads arguments, prints results, chooses the exit status.
+
+Results go to standard output, everything else to standard error. Exit status 0: nothing at
+or above ``--fail-on``; 1: findings at or above it; 2: the layout or the command line is
+wrong; 3: the program itself failed.
+"""
+
+from __future__ import annotations
+
+import argparse
+import os
+import sys
+from collections.abc import Sequence
+from datetime import date
+from pathlib import Path
+from typing import NoReturn, TextIO
+
+_DEBUG = "BENCHLAY_DEBUG"
+_INTERRUPTED = 130  # as shells write "ended by the interrupt signal"
+_FAILED = 3
+_WRONG = 2
+
+_LATER = {
+    "faults": "every credible single fault, and random misalignment",
+    "exposure": "exposure limits of one beam, without a layout",
+    "compare": "what changed between two revisions",
+    "watch": "a local page that follows a layout while it is edited",
+    "new": "a first layout to start from",
+    "explain": "what a check or a kind of element means",
+    "schema": "JSON Schema of the layout language, for editors",
+}
+
+
+def main() -> NoReturn:
+    """Be the console command."""
+    # Matrices here are 2 by 2: threads of a linear algebra library only cost their start.
+    # They are read when numpy is loaded, so they are set before anything imports it.
+    for library in ("OPENBLAS", "OMP", "MKL"):
+        os.environ.setdefault(f"{library}_NUM_THREADS", "1")
+    sys.exit(run(sys.argv[1:]))
+
+
+def run(arguments: Sequence[str]) -> int:
+    """Carry out one command line and return its exit status."""
+    try:
+        return _run(arguments)
+    except KeyboardInterrupt:
+        return _INTERRUPTED
+    except Exception as error:  # the last stop: a person gets a line, never a traceback
+        if os.environ.get(_DEBUG):
+            raise
+        return _apologise(error)
+
+
+def _run(arguments: Sequence[str]) -> int:
+    options = _parser().parse_args(arguments)
+    if options.command in _LATER:
+        _say(f"benchlay: {options.command}: not yet ({_LATER[options.command]})\n", sys.stderr)
+        return _WRONG
+    if getattr(options, "sarif", None):
+        _say("benchlay: check --sarif: not yet; use --json\n", sys.stderr)
+        return _WRONG
+    from benchlay import commands
+    from benchlay.report.words import Ink
+
+    work = {
+        "review": commands.run_review,
+        "check": commands.run_check,
+        "trace": commands.run_trace,
+        "draw": commands.run_draw,
+    }[options.command]
+    if getattr(options, "on", date.min) is None:
+        options.on = date.today()  # the one clock of the program
+    outcome = work(options, Ink(coloured=_takes_colour(sys.stdout)))
+    _say(outcome.out, sys.stdout)
+    _say(outcome.err, sys.stderr)
+    return int(outcome.status)
+
+
+def _say(text: str, stream: TextIO) -> None:
+    if not text:
+        return
+    # A name in letters that the stream's encoding lacks is written as an escape.
+    encoding = stream.encoding or "utf-8"
+    try:
+        print(text.encode(encoding, "backslashreplace").decode(encoding), end="", file=stream)
+        stream.flush()
+    except BrokenPipeError:
+        # The reader has gone, as `head` does. What was found still decides the exit status,
+        # and Python must not fail again when it flushes the stream at its end.
+        os.dup2(os.open(os.devnull, os.O_WRONLY), stream.fileno())
+
+
+def _apologise(error: Exception) -> int:
+    what = " ".join(f"{type(error).__name__}: {error}".split())
+    if isinstance(error, OSError):
+        _say(f"benchlay: the system refused: {what}\n", sys.stderr)
+    else:
+        _say(
+            f"benchlay: this is a mistake of the program, not of the layout ({what}); please "
+            f"report it to those who maintain it, with the layout and what {_DEBUG}=1 shows\n",
+            sys.stderr,
+        )
+    return _FAILED
+
+
+def _takes_colour(stream: TextIO) -> bool:
+    if os.environ.get("NO_COLOR") or os.environ.get("TERM") == "dumb":
+        return False
+    return stream.isatty()
+
+
+def _parser() -> argparse.ArgumentParser:
+    parser = argparse.ArgumentParser(
+        prog="benchlay",
+        description="Reviews laser benches written as YAML: places, traces, checks and draws.",
+        epilog="Exit status: 0 nothing at or above --fail-on, 1 findings at or above it, "
+        "2 the layout or the command line is wrong, 3 the program itself failed.",
+    )
+    parser.add_argument("--version", action="version", version=_version())
+    commands = parser.add_subparsers(dest="command", required=True, metavar="COMMAND")
+    _add_review(commands.add_parser("review", help="the main job: everything, into a folder"))
+    _add_check(commands.add_parser("check", help="findings only; writes nothing else"))
+    _add_trace(commands.add_parser("trace", help="the beams and where their power goes"))
+    _add_draw(commands.add_parser("draw", help="drawings only"))
+    for name, what in _LATER.items():
+        later = commands.add_parser(name, help=f"not yet: {what}", prefix_chars="\0")
+        later.add_argument("rest", nargs="*")
+    return parser
+
+
+def _version() -> str:
+    from benchlay import __version__
+
+    return f"benchlay {__version__}"
+
+
+def _add_review(parser: argparse.ArgumentParser) -> None:
+    _add_layouts(parser)
+    _add_checking(parser)
+    _add_output(parser)
+    parser.add_argument(
+        "--force", action="store_true", help="write into a folder that holds other things"
+    )
+
+
+def _add_check(parser: argparse.ArgumentParser) -> None:
+    _add_layouts(parser)
+    _add_checking(parser)
+    parser.add_argument("--json", action="store_true", help="one JSON document, nothing else")
+    parser.add_argument("--sarif", type=Path, metavar="FILE", help="not yet")
+
+
+def _add_trace(parser: argparse.ArgumentParser) -> None:
+    _add_layout(parser)
+    parser.add_argument("--json", action="store_true", help="one JSON document, nothing else")
+    parser.add_argument("--state", metavar="NAME", help="the state to trace (as drawn)")
+
+
+def _add_draw(parser: argparse.ArgumentParser) -> None:
+    _add_layout(parser)
+    _add_output(parser)
+    parser.add_argument("--sheet", metavar="NAME", help="one sheet only, such as plan")
+    parser.add_argument("--format", choices=("dxf", "svg", "pdf"), help="one format only")
+
+
+def _add_layouts(parser: argparse.ArgumentParser) -> None:
+    parser.add_argument("layouts", nargs="+", metavar="LAYOUT", help="a YAML file, or -")
+
+
+def _add_layout(parser: argparse.ArgumentParser) -> None:
+    parser.add_argument("layout", metavar="LAYOUT", help="a YAML file, or -")
+
+
+def _add_output(parser: argparse.ArgumentParser) -> None:
+    parser.add_argument(
+        "-o", dest="output", type=Path, metavar="DIR", help="folder (exports/<name of layout>)"
+    )
+
+
+def _add_checking(parser: argparse.ArgumentParser) -> None:
+    parser.add_argument("--state", metavar="NAME", help="check this state only (all of them)")
+    parser.add_argument(
+        "--on", type=_day, metavar="DATE", help="day for accept entries, YYYY-MM-DD (today)"
+    )
+    parser.add_argument(
+        "--fail-on",
+        choices=("fail", "warn", "never"),
+        default="fail",
+        help="the least severity that makes the exit status 1 (fail)",
+    )
+
+
+def _day(text: str) -> date:
+    try:
+        return date.fromisoformat(text)
+    except ValueError:
+        msg = f"{text!r} is no date; expected YYYY-MM-DD, such as 2027-06-30"
+        raise argparse.ArgumentTypeError(msg) from None

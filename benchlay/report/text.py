@@ -1,0 +1,122 @@
+"""Findings for people: each with its place, the layout's own line, and how to mend it.
+
+The words of a finding are the finding's; this form adds none of its own but the summary.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Sequence
+
+from benchlay.document.problems import Problem
+from benchlay.report.cautions import CAUTIONS
+from benchlay.report.model import LayoutErrors, Reported, Review
+from benchlay.report.numbers import shown
+from benchlay.report.words import Ink, listed, quoted, tame
+
+PLAIN = Ink()
+_SEVERITIES = ("fail", "warn", "note")
+
+
+def check_text(results: Sequence[Review | LayoutErrors], *, ink: Ink = PLAIN) -> str:
+    """Write what was found in each layout, its verdict last, then the cautions once."""
+    parts = [
+        errors_text(result, ink=ink)
+        if isinstance(result, LayoutErrors)
+        else _review_text(result, ink)
+        for result in results
+    ]
+    if any(isinstance(result, Review) for result in results):
+        parts.append(_cautions())
+    return "\n".join(parts)
+
+
+def errors_text(result: LayoutErrors, *, ink: Ink = PLAIN) -> str:
+    """Write what is wrong with a layout that could not be used."""
+    lines: list[str] = []
+    for problem in result.errors:
+        lines += _problem_lines(problem, result.lines, ink)
+    count = len(result.errors)
+    lines.append(
+        f"{tame(result.layout)}: {count} {'error' if count == 1 else 'errors'}; "
+        "nothing was placed, traced or checked"
+    )
+    return "\n".join(lines) + "\n"
+
+
+def verdict_line(review: Review) -> str:
+    """Sum up a review in one line."""
+    name = tame(review.layout)
+    states = listed(review.states)
+    if not review.findings:
+        return f"{name}: no finding under these rules, in these states: {states}"
+    open_ones = [f.severity for f in review.findings if not f.accepted]
+    counts = [f"{open_ones.count(s)} {s}" for s in _SEVERITIES if s in open_ones]
+    accepted = len(review.findings) - len(open_ones)
+    if accepted:
+        counts.append(f"{accepted} accepted")
+    return f"{name}: verdict {review.verdict} ({', '.join(counts)}); states: {states}"
+
+
+def _review_text(review: Review, ink: Ink) -> str:
+    lines: list[str] = []
+    for finding in review.findings:
+        lines += _finding_lines(finding, review, ink)
+    lines += _not_evaluated(review)
+    lines += _limit_lines(review)
+    lines.append(verdict_line(review))
+    return "\n".join(lines) + "\n"
+
+
+def _finding_lines(finding: Reported, review: Review, ink: Ink) -> Iterator[str]:
+    place = f"{finding.file}:{finding.line}:{finding.column}"
+    where = tame(place if finding.line else review.layout)
+    word = "accepted" if finding.accepted else ink.paint(finding.severity)
+    yield f"{where}: {word} {finding.check}: {tame(finding.message)}"
+    yield from quoted(review.lines, finding.line, finding.column)
+    yield f"  expected: {tame(finding.expected)}"
+    yield f"  to mend: {tame(finding.remedy)}"
+    for other in finding.related:
+        yield f"  {tame(f'{other.file}:{other.line}:{other.column}: {other.message}')}"
+    yield f"  in: {listed(finding.states)}{_worst(finding)}"
+    if finding.accepted:
+        entry = finding.accepted
+        yield f"  accepted by {tame(entry.by)} until {entry.until}: {tame(entry.reason)}"
+    yield f"  id: {finding.id}"
+    yield ""
+
+
+def _worst(finding: Reported) -> str:
+    if len(finding.states) == 1:
+        return ""
+    return f" (the worst in {finding.worst_state})"
+
+
+def _problem_lines(problem: Problem, lines: Sequence[str], ink: Ink) -> Iterator[str]:
+    span = problem.span
+    yield f"{tame(str(span))}: {ink.paint('error')}: {tame(problem.message)}"
+    yield from quoted(lines, span.line, span.column)
+    yield f"  expected: {tame(problem.expected)}"
+    yield f"  to mend: {tame(problem.remedy)}"
+    yield ""
+
+
+def _not_evaluated(review: Review) -> list[str]:
+    """List the checks that did not run: they are not among those passed."""
+    return [
+        f"not evaluated: {run.check} in {run.state}: {tame(run.reason or 'no reason given')}"
+        for run in review.checks
+        if not run.ran
+    ]
+
+
+def _limit_lines(review: Review) -> list[str]:
+    return [
+        f"limit used: {shown(limit.accessible_W, 'W')} through {shown(limit.aperture_mm, 'mm')} "
+        f"at {shown(limit.wavelength_nm, 'nm')} for {shown(limit.time_base_s, 's')} "
+        f"({limit.edition}{'; set by the layout' if limit.overridden else ''})"
+        for limit in review.limits_used
+    ]
+
+
+def _cautions() -> str:
+    return "\n".join(f"caution: {caution}" for caution in CAUTIONS) + "\n"
