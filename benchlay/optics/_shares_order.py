@@ -1,0 +1,258 @@
+"""Which body owns which stretch of a ray, once for each interval of directions."""
+
+from __future__ import annotations
+
+from typing import NamedTuple
+
+import numpy as np
+
+from benchlay.optics._shares_curves import (
+    CUT_RADIUS,
+    DEPTH_TIE_MM,
+    Bools,
+    Floats,
+    Ints,
+    select,
+    spans,
+    starts,
+    transform,
+)
+from benchlay.optics._shares_prepare import Section
+
+_EMPTY = 1e-12  # a stretch thinner than this part of its radius is rounding
+_ELEMENTS = 250_000  # of the largest table at a time: it should stay in the cache
+
+
+class Intervals(NamedTuple):
+    """Intervals of directions between break angles, a row an interval."""
+
+    problem: Ints  # (I,)
+    width: Floats  # (I,) rad, below pi
+    begin: Floats  # (2, I) direction as a unit vector
+    middle: Floats  # (2, I)
+    end: Floats  # (2, I)
+    first: Ints  # (problems + 1,) first interval of each problem
+
+
+class Rays(NamedTuple):
+    """Where the middle ray of each interval enters and leaves each body.
+
+    A row is an (interval, body) pair, the bodies of an interval together, in the order
+    of their slots. Radii are cut at the cut radius; a body missed has enter > leave.
+    """
+
+    first: Ints  # (I,) row of slot 0
+    enter: Floats  # (R,)
+    leave: Floats  # (R,)
+    row: Ints  # (R,) row in `edge_radius`, or of the ellipse
+    edge_radius: Floats  # (V, Q) where the ray meets each edge of a polygon; NaN if not
+
+
+class Stretches(NamedTuple):
+    """Stretches of rays with one owner each, from the axis outwards, by interval."""
+
+    interval: Ints  # (T,)
+    body: Ints  # (T,) owner, row in Bodies; -1: free
+    bound: Ints  # (T,) inner end: -1 the axis; 2 ray row + (0 enter, 1 leave);
+    #                   from 2 len(enter) on: a line of equal depth
+
+
+def intervals(problem: Ints, angle: Floats, problems: int) -> Intervals:
+    """Intervals from each break angle to the next of the same problem."""
+    first = starts(problem, problems)
+    follow = np.arange(1, len(angle) + 1)
+    last = first[1:][problem] == follow
+    follow = np.where(last, first[problem], follow)
+    width = angle[follow] - angle + np.where(last, 2.0 * np.pi, 0.0)
+    begin, middle = _unit(angle), _unit(angle + 0.5 * width)
+    return Intervals(problem, width, begin, middle, begin[:, follow], first)
+
+
+def _unit(angle: Floats) -> Floats:
+    return np.stack((np.cos(angle), np.sin(angle)))
+
+
+def cast(section: Section, sweep: Intervals) -> Rays:
+    """Send the middle ray of each interval through all bodies of its problem."""
+    bodies = section.bodies
+    many = np.diff(bodies.first)[sweep.problem]
+    first = np.cumsum(many) - many
+    total = int(many.sum())
+    enter, leave = np.full(total, CUT_RADIUS), np.zeros(total)
+    row = np.zeros(total, dtype=np.intp)
+    which, interval = _members(section, sweep, section.polygons.body)
+    near, far, edge_radius = _through_polygons(section, which, sweep.middle[:, interval])
+    place = first[interval] + bodies.slot[section.polygons.body[which]]
+    enter[place], leave[place], row[place] = near, far, np.arange(len(place))
+    which, interval = _members(section, sweep, section.ellipses.body)
+    near, far = _through_ellipses(section, which, sweep.middle[:, interval])
+    place = first[interval] + bodies.slot[section.ellipses.body[which]]
+    enter[place], leave[place], row[place] = near, far, which
+    return Rays(
+        first, np.minimum(enter, CUT_RADIUS), np.minimum(leave, CUT_RADIUS), row, edge_radius
+    )
+
+
+def _members(section: Section, sweep: Intervals, body: Ints) -> tuple[Ints, Ints]:
+    """Pairs of a shape and an interval of its problem."""
+    problem = section.bodies.problem[body]
+    begin = sweep.first[problem]
+    return spans(begin, sweep.first[problem + 1] - begin)
+
+
+def _through_polygons(section: Section, which: Ints, ray: Floats) -> tuple[Floats, Floats, Floats]:
+    """Enter, leave and the radius at each edge (NaN: not met)."""
+    table = section.polygons
+    side = ray[0] * select(table.corner[1], which) > ray[1] * select(table.corner[0], which)
+    met = side != np.roll(side, -1, axis=0)
+    normal = select(table.normal, which)
+    toward = ray[0] * normal[0] + ray[1] * normal[1]
+    met &= toward > 0.0
+    with np.errstate(divide="ignore", invalid="ignore"):
+        radius = np.where(met, select(table.distance, which) / toward, np.nan)
+    near = np.fmin.reduce(radius, axis=0)
+    far = np.fmax.reduce(radius, axis=0)
+    count = met.sum(axis=0)
+    near[count == 1] = 0.0  # the axis is inside
+    near[count == 0], far[count == 0] = CUT_RADIUS, 0.0
+    return near, far, radius
+
+
+def _through_ellipses(section: Section, which: Ints, ray: Floats) -> tuple[Floats, Floats]:
+    table = section.ellipses
+    d, axis = transform(select(table.inverse, which), ray), table.axis[:, which]
+    length2 = d[0] * d[0] + d[1] * d[1]
+    along = d[0] * axis[0] + d[1] * axis[1]
+    room = length2 - (d[0] * axis[1] - d[1] * axis[0]) ** 2
+    root = np.sqrt(np.maximum(room, 0.0))
+    outside = axis[0] * axis[0] + axis[1] * axis[1] > 1.0
+    near = np.where(outside, (-along - root) / length2, 0.0)
+    far = (root - along) / length2
+    missed = (room <= 0.0) | (far <= 0.0)
+    near[missed], far[missed] = CUT_RADIUS, 0.0
+    return near, far
+
+
+def stretches(section: Section, sweep: Intervals, rays: Rays) -> Stretches:
+    """Divide every middle ray among the bodies it meets first."""
+    line, level, level_first = _levels(section, sweep)
+    size = np.diff(section.bodies.first)[sweep.problem]
+    sequence = np.argsort(-size, kind="stable")
+    parts, done = [], 0
+    while done < len(sequence):
+        slots = int(size[sequence[done]])
+        step = max(1, _ELEMENTS // (slots * (2 * slots + 1)))
+        chunk = np.sort(sequence[done : done + step])
+        parts.append(_divide(section, sweep, rays, chunk, (line, level, level_first)))
+        done += step
+    whole = [np.concatenate(column) for column in zip(*parts, strict=True)]
+    if len(parts) > 1:
+        order = np.argsort(whole[0], kind="stable")
+        whole = [column[order] for column in whole]
+    return Stretches(*whole)
+
+
+def _levels(section: Section, sweep: Intervals) -> tuple[Ints, Floats, Ints]:
+    """Radii at which middle rays meet lines of equal depth, sorted by interval."""
+    nobody = np.flatnonzero(section.lines.body < 0)
+    problem = section.lines.problem[nobody]
+    begin = sweep.first[problem]
+    line, interval = spans(begin, sweep.first[problem + 1] - begin)
+    line = nobody[line]
+    normal, ray = section.lines.normal[:, line], sweep.middle[:, interval]
+    toward = normal[0] * ray[0] + normal[1] * ray[1]
+    hit = section.lines.distance[line] < CUT_RADIUS * toward
+    line, interval, toward = line[hit], interval[hit], toward[hit]
+    sequence = np.argsort(interval, kind="stable")
+    line, interval, toward = line[sequence], interval[sequence], toward[sequence]
+    radius = section.lines.distance[line] / toward
+    return line, radius, starts(interval, len(sweep.problem))
+
+
+def _divide(
+    section: Section,
+    sweep: Intervals,
+    rays: Rays,
+    chunk: Ints,
+    levels: tuple[Ints, Floats, Ints],
+) -> tuple[Ints, Ints, Ints]:
+    """Owners along the middle rays of some intervals (as the columns of Stretches)."""
+    bodies = section.bodies
+    problem = sweep.problem[chunk]
+    many = np.diff(bodies.first)[problem]
+    slot = np.arange(int(many.max()))[:, None]
+    real = slot < many
+    ray = np.where(real, rays.first[chunk] + slot, 0)
+    enter = np.where(real, rays.enter[ray], CUT_RADIUS)
+    leave = np.where(real, rays.leave[ray], 0.0)
+    radius, bound = _bounds(enter, leave, ray, chunk, levels, 2 * len(rays.enter))
+    sequence = np.argsort(radius, axis=1)
+    radius = np.take_along_axis(radius, sequence, axis=1)
+    middle = np.ascontiguousarray(0.5 * (radius[:, 1:] + radius[:, :-1]).T)
+    body = np.where(real, bodies.first[problem] + slot, 0)
+    cover = (enter[:, None] < middle) & (middle < leave[:, None])
+    _pierce(cover, bodies.host[body])
+    owner = _foremost(cover, bodies.depth[body], sweep.middle[:, chunk], middle)
+    real_stretch = radius[:, 1:] - radius[:, :-1] > _EMPTY * radius[:, 1:]
+    which, place = np.nonzero(real_stretch)
+    owner = owner[place, which]
+    change = np.ones(len(which), dtype=bool)
+    opens = change.copy()
+    opens[1:] = np.diff(which) > 0
+    change[1:] = opens[1:] | (np.diff(owner) != 0)
+    inner = np.where(opens, -1, bound[which, sequence[which, place]])[change]
+    which, owner = which[change], owner[change]
+    free = owner == len(slot)
+    return chunk[which], np.where(free, -1, bodies.first[problem[which]] + owner), inner
+
+
+def _bounds(
+    enter: Floats,
+    leave: Floats,
+    ray: Ints,
+    chunk: Ints,
+    levels: tuple[Ints, Floats, Ints],
+    base: int,
+) -> tuple[Floats, Ints]:
+    """Radii (n, B) at which the owner may change, and what stands there."""
+    n = len(chunk)
+    radius = [np.zeros((n, 1)), enter.T, leave.T, np.full((n, 1), CUT_RADIUS)]
+    nothing = np.full((n, 1), -1)
+    bound = [nothing, 2 * ray.T, 2 * ray.T + 1, nothing]
+    line, level, first = levels
+    count = first[chunk + 1] - first[chunk]
+    if count.any():
+        column = np.arange(int(count.max()))
+        held = column < count[:, None]
+        place = np.where(held, first[chunk][:, None] + column, 0)
+        radius.append(np.where(held, level[place], CUT_RADIUS))
+        bound.append(base + line[place])
+    return np.concatenate(radius, axis=1), np.concatenate(bound, axis=1)
+
+
+def _pierce(cover: Bools, host: Ints) -> None:
+    """Take the holes out of their bodies and out of the running, in place."""
+    for slot in np.flatnonzero((host >= 0).any(axis=1)):
+        ray = np.flatnonzero(host[slot] >= 0)
+        cover[host[slot, ray], :, ray] &= ~cover[slot][:, ray].T
+        cover[slot][:, ray] = False
+
+
+def _foremost(cover: Bools, depth: Floats, ray: Floats, radius: Floats) -> Ints:
+    """Slot of the covering body of least depth; the number of slots where there is none.
+
+    Parameters
+    ----------
+    cover : (K, B, n) ndarray of bool
+    depth : (K, n, 3) ndarray of float64
+    ray : (2, n) ndarray of float64
+    radius : (B, n) ndarray of float64
+    """
+    slope = depth[..., 1] * ray[0] + depth[..., 2] * ray[1]
+    at = np.where(cover, depth[:, None, :, 0] + slope[:, None] * radius, np.inf)
+    least = at.min(axis=0)
+    least[np.isinf(least)] = np.nan
+    slots = len(cover)
+    slot = np.arange(slots, dtype=np.int16)[:, None, None]
+    owner = np.where(at <= least + DEPTH_TIE_MM, slot, np.int16(slots)).min(axis=0)
+    return owner.astype(np.intp)
