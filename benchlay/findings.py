@@ -123,7 +123,7 @@ def _stable(part: KeyPart) -> str:
     """Write a part of a key; numbers to six figures, well above the last bits."""
     if part is None:
         return "-"
-    return part if isinstance(part, str) else f"{part + 0.0:.6g}"
+    return f"{part + 0.0:.6g}" if isinstance(part, float) else str(part)
 
 
 def identify(findings: Iterable[Finding]) -> list[Finding]:

@@ -15,7 +15,7 @@ __all__ = ["Dimension", "QuantityError", "describe_dimension", "parse", "show"]
 
 _LONGEST = 64
 _QUANTITY = re.compile(
-    r"\s*([+-]?)([0-9]+\.?[0-9]*|\.[0-9]+)(?:[eE]([+-]?[0-9]{1,4}))?\s*([^0-9.\s].*)?"
+    r"\s*([+-]?)([0-9]+\.?[0-9]*|\.[0-9]+)(?:[eE]([+-]?[0-9]{1,6}))?\s*([^0-9.\s].*)?"
 )
 _OPTICAL_DENSITY = re.compile(r"\s*OD\s*([0-9]+\.?[0-9]*|\.[0-9]+)\s*")
 _COMMA = re.compile(r"\s*([+-]?[0-9]+),([0-9]+)(\D*)")
@@ -128,11 +128,10 @@ def _unit(text: str, written: str | None, dimension: Dimension) -> Unit:
     """Find the unit as written, or the dimension's own where none is."""
     if written is None:
         if dimension.bare is None:
-            raise QuantityError(
-                f"{quote(text)} has no unit",
-                describe_dimension(dimension),
-                f"write '{text.strip()} {next(iter(dimension.units))}', or whichever unit is meant",
-            )
+            usual = f"{text.strip()} {next(iter(dimension.units))}"
+            message = f"{quote(text)} has no unit"
+            remedy = f"write '{usual}', or whichever unit is meant"
+            raise QuantityError(message, describe_dimension(dimension), remedy)
         return dimension.units.get(dimension.bare, Unit())
     name = re.sub(r"\s*/\s*", "/", written.strip().translate(_SIGNS))
     unit = dimension.units.get(name)
