@@ -1,0 +1,1 @@
+"""Sheets as plain data, and what goes on each kind of sheet."""

@@ -1,0 +1,1 @@
+"""One file a format; each draws a sheet's primitives and knows nothing of benches."""
