@@ -1,4 +1,4 @@
-"""Forms made of other forms: lists, tables of names, alternatives."""
+"""Forms made of other forms: lists and tables of names."""
 
 from __future__ import annotations
 
@@ -8,8 +8,6 @@ from typing import Any, Generic, TypeVar
 
 from benchlay.document.form import Failed, Form, Reader, show_plainly
 from benchlay.document.nodes import Mapping, Node, Scalar, Sequence
-from benchlay.document.problems import Problem, Problems
-from benchlay.document.scalars import Quantity, Whole
 from benchlay.document.span import Span
 from benchlay.document.texts import Name
 from benchlay.document.words import quote
@@ -239,86 +237,3 @@ class Table(Form[Entries[T]]):
             "propertyNames": self.name.schema(),
             "additionalProperties": self.form.schema(),
         }
-
-
-class OneOf(Form[Any]):
-    """One of several forms: chosen by the node's shape, then by which of them succeeds."""
-
-    def __init__(self, *forms: Form[Any]) -> None:
-        self.forms = forms
-
-    def read(self, node: Node, reader: Reader) -> Any:  # noqa: ANN401 - the union of the forms' values
-        """Read with the form that fits; one message where none does."""
-        fitting = [form for form in self.forms if form.takes(node)]
-        if len(fitting) == 1 and not isinstance(node, Scalar):
-            return fitting[0].read(node, reader)
-        trials: list[Problems] = []
-        kept, noted = reader.problems, len(reader.not_yet)
-        for form in fitting:
-            reader.problems = Problems()
-            value = form.read(node, reader)
-            trial, reader.problems = reader.problems, kept
-            if value is not None or not trial:
-                return value
-            del reader.not_yet[noted:]
-            trials.append(trial)
-        self._refuse(node, reader, trials)
-        return None
-
-    def _refuse(self, node: Node, reader: Reader, trials: list[Problems]) -> None:
-        """Report for tables and lists what the best trial found, otherwise all choices."""
-        if not trials or (isinstance(node, Scalar) and not node.text.strip()):
-            reader.refuse(node, self)
-            return
-        if isinstance(node, Scalar):
-            self._refuse_text(node, reader, [trial.sorted()[0] for trial in trials])
-            return
-        # The form that came furthest speaks: one that found nothing wrong with the node
-        # itself, only with what is inside it.
-        found = min((t.sorted() for t in trials), key=lambda p: (p[0].span == node.span, len(p)))
-        if found[0].span == node.span and len(trials) > 1:
-            reader.refuse(node, self)
-            return
-        for problem in found:
-            reader.problems.add(
-                problem.span,
-                problem.message,
-                expected=problem.expected,
-                remedy=problem.remedy,
-            )
-
-    def _refuse_text(self, node: Scalar, reader: Reader, found: list[Problem]) -> None:
-        """Let the form that reads numbers judge a number; its choices are those of all."""
-        numeric = node.text.strip()[:1] in set("+-.0123456789")
-        judges = [p for form, p in zip(self._single(node), found, strict=True) if form]
-        if not numeric or len(judges) != 1:
-            reader.refuse(node, self)
-            return
-        best = judges[0]
-        reader.problems.add(best.span, best.message, expected=self.text(), remedy=best.remedy)
-
-    def _single(self, node: Scalar) -> list[bool]:
-        """Tell of each form that takes text whether it reads numbers."""
-        return [isinstance(f, (Quantity, Whole)) for f in self.forms if f.takes(node)]
-
-    def text(self) -> str:
-        """List what may be written."""
-        return "; or ".join(form.text() for form in self.forms)
-
-    def example(self) -> str:
-        """Give the first form's example."""
-        return self.forms[0].example()
-
-    def takes(self, node: Node) -> bool:
-        """Take what any of the forms takes."""
-        return any(form.takes(node) for form in self.forms)
-
-    def schema(self) -> dict[str, Any]:
-        """Allow any of the forms."""
-        return {"anyOf": [form.schema() for form in self.forms]}
-
-    def show(self, value: object) -> str:
-        """Write the value as the first form that has words for it does."""
-        plain = show_plainly(value)
-        shown = (form.show(value) for form in self.forms)
-        return next((text for text in shown if text != plain), plain)

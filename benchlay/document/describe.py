@@ -5,15 +5,15 @@ from __future__ import annotations
 from collections.abc import Collection
 from typing import Any
 
-from benchlay.document.record import Key, Record
+from benchlay.document.keys import Key, Keyed
 
 
-def schema_of(cls: type[Record], *, extra: Collection[str] = ()) -> dict[str, Any]:
+def schema_of(cls: type[Keyed], *, extra: Collection[str] = ()) -> dict[str, Any]:
     """Return the JSON Schema (draft 2020-12) of a record's table.
 
     Parameters
     ----------
-    cls : type of Record
+    cls : type of Keyed
         Says the keys.
     extra : collection of str
         Keys read elsewhere; anything is allowed under them.
@@ -31,7 +31,7 @@ def schema_of(cls: type[Record], *, extra: Collection[str] = ()) -> dict[str, An
     return found
 
 
-def reference_text(cls: type[Record]) -> str:
+def reference_text(cls: type[Keyed]) -> str:
     """Return a Markdown table of a record's keys: name, what to write, default, meaning."""
     lines = ["| key | to write | default | meaning |", "|---|---|---|---|"]
     for spec in cls.KEYS.values():

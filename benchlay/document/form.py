@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from typing import Any, Final, Protocol, TypeVar
 
-from benchlay.document.nodes import Broken, Node, Scalar, describe
+from benchlay.document.nodes import Broken, Mapping, Node, Scalar, describe
 from benchlay.document.problems import Problems
 from benchlay.document.span import Span
 
@@ -119,6 +119,10 @@ class Form(Protocol[T_co]):
     def takes(self, node: Node) -> bool:
         """Tell whether the node has a shape this form reads; `OneOf` chooses by it."""
         return True
+
+    def kinship(self, node: Mapping) -> int:
+        """Count how many keys of a table this form knows; `OneOf` tells forms by it."""
+        return 0
 
     def show(self, value: object) -> str:
         """Write a value as a user would, for the reference's defaults."""

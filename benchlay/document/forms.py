@@ -2,7 +2,8 @@
 
 from __future__ import annotations
 
-from benchlay.document.composite import Entries, Fixed, ListOf, OneOf, Pair, Table
+from benchlay.document.alternatives import OneOf
+from benchlay.document.composite import Entries, Fixed, ListOf, Pair, Table
 from benchlay.document.form import FAILED, Failed, Form, Reader, show_plainly
 from benchlay.document.record import RecordForm
 from benchlay.document.scalars import (

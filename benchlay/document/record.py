@@ -8,98 +8,16 @@ from __future__ import annotations
 
 from collections.abc import Collection
 from collections.abc import Mapping as AbstractMapping
-from typing import Any, ClassVar, Final, NoReturn, Self, TypeVar, dataclass_transform
+from typing import Any, ClassVar, NoReturn, Self, TypeVar, dataclass_transform
 
+from benchlay.document.describe import schema_of
 from benchlay.document.form import Failed, Form, Reader
+from benchlay.document.keys import REQUIRED, Key, key
 from benchlay.document.nodes import Mapping, Node, Scalar
 from benchlay.document.span import NOWHERE, Span
 from benchlay.document.words import format_choices, nearest, quote
 
-
-class Required:
-    """The class of `REQUIRED`: there is no default, the key must be written."""
-
-    def __repr__(self) -> str:
-        return "REQUIRED"
-
-
-REQUIRED: Final = Required()
-
-
-class Key:
-    """One key of a record; made by `key`."""
-
-    __slots__ = (
-        "attribute",
-        "default",
-        "form",
-        "meaning",
-        "name",
-        "not_yet",
-        "not_yet_is_note",
-    )
-
-    def __init__(
-        self,
-        form: Form[Any],
-        *,
-        default: object,
-        name: str | None,
-        meaning: str,
-        not_yet: str | None,
-        not_yet_is_note: bool,
-    ) -> None:
-        self.form = form
-        self.default = default
-        self.name = name or ""
-        self.meaning = meaning
-        self.not_yet = not_yet
-        self.not_yet_is_note = not_yet_is_note
-        self.attribute = ""
-
-    def __set_name__(self, owner: type, attribute: str) -> None:
-        self.attribute = attribute
-        self.name = self.name or attribute
-
-    @property
-    def required(self) -> bool:
-        """Whether the key must be written."""
-        return self.default is REQUIRED
-
-
-def key(
-    form: Form[Any],
-    *,
-    default: Any = REQUIRED,  # noqa: ANN401 - as the attribute's own annotation says
-    name: str | None = None,
-    meaning: str,
-    not_yet: str | None = None,
-    not_yet_is_note: bool = False,
-) -> Any:  # noqa: ANN401 - stands for a value of the attribute's own type
-    """Declare a key of a record.
-
-    Parameters
-    ----------
-    form : Form
-        How the value is written.
-    default
-        The value where the key is not written; without one it must be.
-    name : str, optional
-        The key as written in the file; the attribute's name where not given.
-    meaning : str
-        One sentence for the reference.
-    not_yet : str, optional
-        Why the key is not acted on yet; writing anything but the default is then an error,
-        or with `not_yet_is_note` a note in the reader.
-    """
-    return Key(
-        form,
-        default=default,
-        name=name,
-        meaning=meaning,
-        not_yet=not_yet,
-        not_yet_is_note=not_yet_is_note,
-    )
+__all__ = ["REQUIRED", "Key", "Record", "RecordForm", "key", "read_record"]
 
 
 @dataclass_transform(kw_only_default=True, frozen_default=True, field_specifiers=(key,))
@@ -311,10 +229,16 @@ class RecordForm(Form[R]):
         """Take tables."""
         return isinstance(node, Mapping)
 
+    def kinship(self, node: Mapping) -> int:
+        """Count the keys that are the record's."""
+        known = {spec.name for spec in self.cls.KEYS.values()}
+        return sum(name in known for name in node.names())
+
     def text(self) -> str:
         """List the keys."""
         names = [k.name for k in self.cls.KEYS.values()]
-        return f"a table with the keys {format_choices(names, 'and')}"
+        keys = "key" if len(names) == 1 else "keys"
+        return f"a table with the {keys} {format_choices(names, 'and')}"
 
     def example(self) -> str:
         """Give what is required, or the first key."""
@@ -325,6 +249,4 @@ class RecordForm(Form[R]):
 
     def schema(self) -> dict[str, Any]:
         """Give the schema of the record."""
-        from benchlay.document.describe import schema_of
-
         return schema_of(self.cls, extra=self.extra)

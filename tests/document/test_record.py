@@ -205,6 +205,44 @@ def test_paths_name_the_way():
     assert [message for _, _, message, _, _ in found] == ["part.width: '0' is too small"]
 
 
+class Quick(Record):
+    power_W: float = key(Quantity(Dimension.POWER), name="power", meaning="Mean power.")
+
+
+class Slow(Record):
+    energy_J: float = key(Quantity(Dimension.ENERGY), name="energy", meaning="Energy.")
+    rate_Hz: float = key(Quantity(Dimension.RATE), name="rate", meaning="Rate.")
+
+
+class Emitter(Record):
+    gives: Quick | Slow = key(OneOf(RecordForm(Quick), RecordForm(Slow)), meaning="x")
+
+
+def test_of_two_records_the_one_that_knows_the_keys_speaks():
+    record, found, _ = read("gives: {energy: 1 J, rate: 2 Hz}\n", Emitter)
+    assert found == []
+    assert record.gives == Slow(energy_J=1.0, rate_Hz=2.0)
+    _, found, _ = read("gives: {power: 3}\n", Emitter)
+    assert [(column, message) for _, column, message, _, _ in found] == [
+        (16, "gives.power: '3' has no unit")
+    ]
+    _, found, _ = read("gives: {rate: 3}\n", Emitter)
+    assert [(column, message) for _, column, message, _, _ in found] == [
+        (8, "gives: 'energy' is missing"),
+        (15, "gives.rate: '3' has no unit"),
+    ]
+    _, found, _ = read("gives: {colour: red}\n", Emitter)
+    assert found == [
+        (
+            1,
+            8,
+            "gives: a table with 'colour' is not what is read here",
+            "a table with the key 'power'; or a table with the keys 'energy' and 'rate'",
+            "write it in that form, such as {power: 150 mW}",
+        )
+    ]
+
+
 def test_constructor_refuses_what_the_class_does_not_say():
     with pytest.raises(TypeError, match="Mirror needs 'kind'"):
         Mirror()
