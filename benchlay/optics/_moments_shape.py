@@ -34,7 +34,7 @@ class _Axes:
         spread = np.hypot(half, b)
         major = mean + spread
         # The product keeps the digits of a minor axis far smaller than the major one.
-        minor = np.divide(a * c - b * b, major, out=np.zeros_like(major), where=major > 0)
+        minor = np.divide(a * c - b * b, major, out=np.zeros_like(major), where=major != 0)
         along = (half > 0.0) | ((half == 0.0) & (b >= 0.0))  # the first axis is the major
         round_ = spread <= _ROUND * mean
         folded = np.where(along, b, -b) + 0.0
@@ -196,6 +196,6 @@ def waist_distance(m: Floats, index: ArrayLike) -> Floats:
     _, _, angle = radii(m)
     t = rotate(m, np.cos(angle), np.sin(angle))
     product, spread = t[[XU, YV]], t[[UU, VV]]
-    way = np.divide(-product, spread, out=np.zeros_like(product), where=spread > 0.0)
+    way = np.divide(-product, spread, out=np.zeros_like(product), where=spread != 0.0)
     ways: Floats = way * np.asarray(index, dtype=np.float64) + 0.0
     return ways

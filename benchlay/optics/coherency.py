@@ -291,7 +291,7 @@ def describe(j: Floats) -> Polarization:
     flat = np.hypot(s1, s2)
     full = np.hypot(flat, s3)
     least = _ROUNDING * s0
-    degree = np.divide(full, s0, out=np.zeros_like(full), where=s0 > 0.0)
+    degree = np.divide(full, s0, out=np.zeros_like(full), where=s0 != 0.0)
     angle = np.mod(0.5 * np.arctan2(s2, s1), np.pi)
     # An azimuth a rounding below 0 would be written as 180 degrees.
     plain = (flat <= least) | (np.pi - angle < _ROUNDING)

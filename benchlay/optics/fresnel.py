@@ -14,8 +14,8 @@ them
 so that r_p = -r_s at normal incidence (Born and Wolf, Principles of Optics, 7th ed.,
 sec. 1.5.2; for metals sec. 14.2).
 
-They are evaluated with q = n2 c2 and D = (n2 - n1)(n2 + n1) as
-r_s = -D / (n1 c1 + q)^2 and r_p = D (c1^2 (n1^2 + n2^2) - n1^2) / (n2^2 c1 + n1 q)^2,
+They are evaluated with s1 the sine, q = n2 c2 and D = (n2 - n1)(n2 + n1) as
+r_s = -D / (n1 c1 + q)^2 and r_p = D (n2^2 c1^2 - n1^2 s1^2) / (n2^2 c1 + n1 q)^2,
 the same quotients after multiplying out. These do not subtract nearly equal numbers
 between similar media, and vanish exactly between equal ones.
 """
@@ -88,7 +88,8 @@ def _face(n_in: ArrayLike, n_out: ArrayLike, cos_in: ArrayLike) -> _Face:
 
 def _reflected(f: _Face) -> tuple[Complexes, Complexes]:
     rs = -f.contrast / (f.below_s * f.below_s)
-    brewster = f.c1 * f.c1 * (f.n1 * f.n1 + f.n2 * f.n2) - f.n1 * f.n1
+    sine = (1.0 - f.c1) * (1.0 + f.c1)  # its square, sharp at normal incidence
+    brewster = f.n2 * f.n2 * (f.c1 * f.c1) - f.n1 * f.n1 * sine
     rp = f.contrast * brewster / (f.below_p * f.below_p)
     return rs, rp
 
@@ -122,10 +123,12 @@ def amplitudes(n_in: ArrayLike, n_out: ArrayLike, cos_in: ArrayLike) -> Amplitud
     >>> complex(face.rs).real.__round__(12), complex(face.rp).real.__round__(12)
     (-0.2, 0.2)
     """
-    f = _face(n_in, n_out, cos_in)
-    rs, rp = _reflected(f)
-    twice = 2.0 * f.n1c1
-    return Amplitudes(rs, rp, twice / f.below_s, twice * f.n2 / f.below_p, f.q.real / f.n1c1)
+    with np.errstate(invalid="ignore"):  # a NaN row is an answer, not an accident
+        f = _face(n_in, n_out, cos_in)
+        rs, rp = _reflected(f)
+        twice = 2.0 * f.n1c1
+        ts, tp = twice / f.below_s, twice * f.n2 / f.below_p
+    return Amplitudes(rs, rp, ts, tp, f.q.real / f.n1c1)
 
 
 def powers(n_in: ArrayLike, n_out: ArrayLike, cos_in: ArrayLike) -> Powers:
@@ -157,15 +160,13 @@ def powers(n_in: ArrayLike, n_out: ArrayLike, cos_in: ArrayLike) -> Powers:
     >>> round(float(face.rs), 12), round(float(face.ts), 12)
     (0.04, 0.96)
     """
-    f = _face(n_in, n_out, cos_in)
-    rs, rp = _reflected(f)
-    four = 4.0 * f.n1c1
-    return Powers(
-        _squared(rs),
-        _squared(rp),
-        four * f.q.real / _squared(f.below_s),
-        four * (f.n2 * f.n2 * f.q.conj()).real / _squared(f.below_p),
-    )
+    with np.errstate(invalid="ignore"):  # a NaN row is an answer, not an accident
+        f = _face(n_in, n_out, cos_in)
+        rs, rp = _reflected(f)
+        four = 4.0 * f.n1c1
+        ts = four * f.q.real / _squared(f.below_s)
+        tp = four * (f.n2 * f.n2 * f.q.conj()).real / _squared(f.below_p)
+    return Powers(_squared(rs), _squared(rp), ts, tp)
 
 
 def _squared(value: Complexes) -> Floats:

@@ -17,7 +17,7 @@ from numpy.typing import ArrayLike, NDArray
 
 Complexes: TypeAlias = NDArray[np.complex128]
 
-_UM_PER_NM = 1e-3
+_NM_PER_UM = 1e3
 
 
 @dataclass(frozen=True, slots=True)
@@ -45,14 +45,15 @@ class Metal:
 
         Examples
         --------
-        >>> complex(METALS["gold"].index(616.8))
+        >>> complex(METALS["gold"].index(616.8).round(9))
         (0.21+3.272j)
         """
         nodes = np.array(self.table).T
-        wavelength_um = np.asarray(wavelength_nm, dtype=np.float64) * _UM_PER_NM
-        n = np.interp(wavelength_um, nodes[0], nodes[1], left=np.nan, right=np.nan)
-        k = np.interp(wavelength_um, nodes[0], nodes[2], left=np.nan, right=np.nan)
-        index = np.empty(wavelength_um.shape, dtype=np.complex128)
+        wavelength = np.asarray(wavelength_nm, dtype=np.float64)
+        nodes_nm = nodes[0] * _NM_PER_UM  # rounded as in range_nm, so its ends belong
+        n = np.interp(wavelength, nodes_nm, nodes[1], left=np.nan, right=np.nan)
+        k = np.interp(wavelength, nodes_nm, nodes[2], left=np.nan, right=np.nan)
+        index = np.empty(wavelength.shape, dtype=np.complex128)
         index.real = n
         index.imag = k
         return index
@@ -242,7 +243,7 @@ _ALUMINIUM = (
 
 
 def _metal(name: str, source: str, table: tuple[tuple[float, float, float], ...]) -> Metal:
-    return Metal(name, source, (1e3 * table[0][0], 1e3 * table[-1][0]), table)
+    return Metal(name, source, (_NM_PER_UM * table[0][0], _NM_PER_UM * table[-1][0]), table)
 
 
 METALS: dict[str, Metal] = {
