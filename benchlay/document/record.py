@@ -21,7 +21,11 @@ __all__ = ["REQUIRED", "Key", "Record", "RecordForm", "key", "read_record"]
 
 
 @dataclass_transform(kw_only_default=True, frozen_default=True, field_specifiers=(key,))
-class Record:
+class _Transformed:
+    """Carries the decorator: attributes of the decorated class itself would not count."""
+
+
+class Record(_Transformed):
     """Base of all objects read from tables of keys; cannot be changed once made.
 
     Equality looks at the keys' values only: where and whether they were written makes no

@@ -347,12 +347,12 @@ def test_reference():
 TYPED = """
 from benchlay.document.forms import Quantity, Dimension
 from benchlay.document.record import Record, key
-
+from benchlay.document.span import NOWHERE
 class Part(Record):
     width_mm: float = key(Quantity(Dimension.LENGTH), name="width", meaning="x")
     depth_mm: float = key(Quantity(Dimension.LENGTH), default=1.0, meaning="y")
 
-good = Part(width_mm=1.0)
+good = Part(width_mm=1.0, span=NOWHERE, spans={})
 Part()
 Part(width_mm="wide")
 Part(width_mm=1.0, colour=2)
