@@ -31,7 +31,7 @@ _GLANCE_S = 0.25
 _AT_DISTANCE_NM = (302.5, 4000.0)
 _BINOCULARS_AT_M = 2.0
 _NAKED_EYE_AT_M = 0.1
-_ASSUMPTIONS = (
+_ASSUMPTIONS: tuple[str, ...] = (
     "one wavelength, a point source, a regular train if pulsed, no fault analysis",
     "C5 is not applied to the limit of class 3B",
 )
@@ -228,10 +228,7 @@ def _shares(wavelength_nm: float, beam: GaussianExit) -> tuple[float, float]:
     if not low <= wl < high:
         share = beam.share(aperture_mm, 0.0)
         return share, share
-    if is_retinal(wl):
-        widened_mm = 50.0
-    else:
-        widened_mm = 7.0 * aperture_mm
+    widened_mm = 50.0 if is_retinal(wl) else 7.0 * aperture_mm
     return (
         beam.share(aperture_mm, _NAKED_EYE_AT_M),
         beam.share(widened_mm, _BINOCULARS_AT_M),
@@ -243,10 +240,13 @@ def _name(naked: float, widest: float, limits: Mapping[str, float | None]) -> st
         limit = limits[level]
         return limit is not None and value <= limit
 
+    # The larger hazard first: the tables let class 1 exceed 3B above 0.1 mm.
+    if not within(widest, "3B"):
+        return "4"
     for level in ("1", "2"):
         if within(widest, level):
             return level
-        if within(naked, level) and within(widest, "3B"):
+        if within(naked, level):
             return f"{level}M"
     for level in ("3R", "3B"):
         if within(widest, level):

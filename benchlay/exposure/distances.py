@@ -45,6 +45,13 @@ def _not_negative(name: str, value: float) -> float:
     return value
 
 
+def _finite(name: str, value: float) -> float:
+    if not math.isfinite(value):
+        msg = f"{name} must be finite, got {value:g}"
+        raise OutOfRange(msg)
+    return value
+
+
 def gaussian_fraction(aperture_radius: float, w: float) -> float:
     """Share of a Gaussian beam's power through a centred circle, 1 - exp(-2 a^2/w^2).
 
@@ -157,6 +164,7 @@ def hazardous_span(
     power = _not_negative("the power", power_w)
     w0 = _positive("the waist", waist_w_mm) * 1e-3
     theta = _not_negative("the half angle", half_angle_86_rad)
+    waist_at = _finite("the place of the waist", waist_at_m)
     if power <= allowed:
         return None
     w_squared = -2.0 * (aperture_mm * 0.5e-3) ** 2 / math.log1p(-allowed / power)
@@ -164,9 +172,9 @@ def hazardous_span(
     if excess <= 0.0:
         return None
     reach = math.sqrt(excess) / theta if theta > 0.0 else math.inf
-    if waist_at_m + reach <= 0.0:
+    if waist_at + reach <= 0.0:
         return None
-    return Span(max(0.0, waist_at_m - reach), waist_at_m + reach)
+    return Span(max(0.0, waist_at - reach), waist_at + reach)
 
 
 def nohd_exact_m(
@@ -219,6 +227,6 @@ def diffuse_distance_m(
         raise OutOfRange(msg)
     power = _not_negative("the power", power_w)
     radius = _not_negative("the spot's radius", spot_radius_m)
-    towards = max(0.0, math.cos(angle_rad))
+    towards = max(0.0, math.cos(_finite("the angle", angle_rad)))
     squared = reflectance * power * towards / (math.pi * _positive("the limit", mpe_w_m2))
     return math.sqrt(max(0.0, squared - radius * radius))

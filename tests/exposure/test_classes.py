@@ -1,0 +1,156 @@
+"""Classes of whole beams."""
+
+import math
+
+import pytest
+from hypothesis import given
+from hypothesis import strategies as st
+
+from benchlay.exposure import OutOfRange, Pulse
+from benchlay.exposure.classes import (
+    GaussianExit,
+    classify_continuous,
+    classify_pulsed,
+    time_base_s,
+)
+from benchlay.exposure.emission import Level
+
+# Common knowledge of the trade: the powers at which visible classes end.
+VISIBLE = [
+    (0.39e-3, "1"),
+    (0.3901e-3, "2"),
+    (1e-3, "2"),
+    (1.001e-3, "3R"),
+    (5e-3, "3R"),
+    (5.001e-3, "3B"),
+    (0.5, "3B"),
+    (0.5001, "4"),
+]
+
+
+@pytest.mark.parametrize(("power", "name"), VISIBLE)
+def test_continuous_red(power, name):
+    found = classify_continuous(633.0, power)
+    assert found.name == name
+    assert found.unit == "W"
+
+
+@pytest.mark.parametrize(
+    ("wavelength", "power", "name"),
+    [
+        (1064.0, 1.95e-3, "1"),
+        (1064.0, 2e-3, "3R"),
+        (1064.0, 0.0101, "3B"),
+        (1550.0, 1e-2, "1"),
+        (10600.0, 0.6, "4"),
+        (266.0, 7.9e-10, "1"),
+        (266.0, 1e-3, "3B"),
+        (266.0, 1.6e-3, "4"),
+    ],
+)
+def test_continuous_invisible(wavelength, power, name):
+    assert classify_continuous(wavelength, power).name == name
+
+
+def test_no_class_2_for_invisible_light():
+    assert classify_continuous(1064.0, 1e-4).limits["2"] is None
+
+
+def test_a_wide_beam_is_1m_where_binoculars_gather_it():
+    wide = GaussianExit(waist_w_mm=10.0, half_angle_86_rad=5e-4)
+    found = classify_continuous(1064.0, 5e-3, wide)
+    assert found.name == "1M"
+    assert found.naked_eye < found.limits["1"] < found.binoculars
+    assert classify_continuous(1064.0, 5e-3).name == "3R"
+
+
+def test_a_wide_visible_beam_is_2m():
+    wide = GaussianExit(waist_w_mm=10.0, half_angle_86_rad=5e-4)
+    assert classify_continuous(633.0, 3e-3, wide).name == "2M"
+
+
+def test_no_m_class_when_binoculars_gather_more_than_3b():
+    # A beam that comes to a focus 2 m ahead: wide at the naked eye, narrow there.
+    focused = GaussianExit(waist_w_mm=0.5, half_angle_86_rad=0.106, waist_at_m=2.0)
+    found = classify_continuous(633.0, 0.6, focused)
+    assert found.naked_eye <= found.limits["1"]
+    assert found.binoculars > found.limits["3B"]
+    assert found.name == "4"
+
+
+def test_above_the_limit_of_3b_no_other_class_is_given():
+    # Beyond 0.1 mm the eye's limit through 11 mm exceeds the limit of class 3B.
+    found = classify_pulsed(1e5, Pulse(0.51, 1.0, 0.0))
+    assert found.limits["1"] > 0.51 > found.limits["3B"]
+    assert found.name == "4"
+
+
+def test_far_infrared_has_no_binoculars():
+    wide = GaussianExit(waist_w_mm=10.0, half_angle_86_rad=1e-3)
+    found = classify_continuous(10600.0, 1.0, wide)
+    assert found.binoculars == found.naked_eye
+
+
+def test_pulsed_limits_follow_the_rules_for_trains():
+    # 1064 nm, 10 ns, 1 kHz, 100 s: 7.7e-7 J x C5, N = 1e4 in T2 = 10 s, C5 = 0.5.
+    found = classify_pulsed(1064.0, Pulse(1e-3, 1e-8, 1e3))
+    assert found.unit == "J"
+    assert found.limits["1"] == pytest.approx(3.85e-7)
+    # Class 3B: no C5, and 0.5 W shared by a thousand pulses a second.
+    assert found.limits["3B"] == pytest.approx(5e-4)
+    assert found.name == "4"
+
+
+def test_a_single_pulse():
+    found = classify_pulsed(532.0, Pulse(1e-2, 1e-8, 0.0))
+    assert found.limits["1"] == pytest.approx(7.7e-8)
+    assert found.limits["3B"] == pytest.approx(0.03)
+    assert found.name == "3B"
+
+
+def test_a_pulse_longer_than_the_glance_keeps_the_power_of_class_2():
+    found = classify_pulsed(633.0, Pulse(4e-4, 0.5, 1.0))
+    assert found.limits["2"] == pytest.approx(1e-3 * 0.5)
+
+
+@pytest.mark.parametrize(
+    ("level", "wavelength", "seconds"),
+    [
+        (Level.TWO, 532.0, 0.25),
+        (Level.THREE_R, 532.0, 0.25),
+        (Level.THREE_R, 1064.0, 100.0),
+        (Level.ONE, 532.0, 100.0),
+        (Level.THREE_B, 355.0, 3e4),
+    ],
+)
+def test_classes_use_their_own_time_bases(level, wavelength, seconds):
+    assert time_base_s(level, wavelength) == seconds
+
+
+def test_the_statement_promises_no_more_than_the_model():
+    assert classify_continuous(633.0, 1e-5).statement == "within the limit of class 1 as modelled"
+    assert classify_continuous(633.0, 10.0).statement == "above the limit of class 3B as modelled"
+    assert classify_continuous(633.0, 10.0).cautions
+
+
+@pytest.mark.parametrize("power", [-1.0, math.nan, math.inf])
+def test_impossible_power_is_refused(power):
+    with pytest.raises(OutOfRange, match="emitted"):
+        classify_continuous(633.0, power)
+
+
+ORDER = ("1", "1M", "2", "2M", "3R", "3B", "4")
+
+
+@given(
+    wl=st.floats(180.0, 1e6),
+    power=st.floats(-10.0, 2.0).map(lambda x: 10.0**x),
+    more=st.floats(1.0, 1e4),
+    w=st.floats(0.05, 50.0),
+)
+def test_more_power_never_gives_a_lower_class(wl, power, more, w):
+    beam = GaussianExit(w, 1e-3)
+    for given_beam in (None, beam):
+        weak = classify_continuous(wl, power, given_beam).name
+        strong = classify_continuous(wl, power * more, given_beam).name
+        assert ORDER.index(strong) >= ORDER.index(weak)
