@@ -3,10 +3,10 @@
 from __future__ import annotations
 
 import json
-import os
-import tempfile
 from collections.abc import Mapping
 from pathlib import Path, PurePath
+
+from benchlay.writers.atomic import write
 
 RECORD = "findings.json"
 """The file by which a folder is known as an earlier review's."""
@@ -48,42 +48,15 @@ def _contents(folder: Path) -> str | None:
 def write_all(folder: Path, files: Mapping[str, bytes]) -> list[Path]:
     """Write files into a folder, made if need be, in the order of their names.
 
-    All are first written beside their places under passing names, then each is moved to its
-    place, so that a full disk or an interruption leaves no half of a file.
-
     Raises
     ------
     OSError
-        If the folder or a file cannot be written; nothing in place has changed then, unless
-        the last step, the renaming, was itself refused.
+        If the folder or a file cannot be written; each file is then either the new or the
+        old one, whole.
     """
     folder.mkdir(parents=True, exist_ok=True)
-    waiting: list[tuple[str, Path]] = []
-    try:
-        for name in sorted(files):
-            waiting.append((_written_beside(folder, files[name]), folder / name))
-        for temporary, path in waiting:
-            os.replace(temporary, path)
-    finally:
-        for temporary, _ in waiting:
-            Path(temporary).unlink(missing_ok=True)
-    return [path for _, path in waiting]
-
-
-def _written_beside(folder: Path, data: bytes) -> str:
-    handle, name = tempfile.mkstemp(prefix=".benchlay-", dir=folder)
-    try:
-        with os.fdopen(handle, "wb") as stream:
-            stream.write(data)
-        # mkstemp makes files that only their owner may read; a drawing is for everyone.
-        Path(name).chmod(0o666 & ~_umask())
-    except BaseException:
-        Path(name).unlink(missing_ok=True)
-        raise
-    return name
-
-
-def _umask() -> int:
-    mask = os.umask(0)
-    os.umask(mask)
-    return mask
+    paths = []
+    for name in sorted(files):
+        write(folder / name, files[name])
+        paths.append(folder / name)
+    return paths

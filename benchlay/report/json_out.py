@@ -7,7 +7,7 @@ from collections.abc import Mapping, Sequence
 from typing import Any, TypeAlias
 
 from benchlay.document.problems import Problem
-from benchlay.report.cautions import CAUTIONS
+from benchlay.report.cautions import ALL_CAUTIONS
 from benchlay.report.model import LayoutErrors, Ledger, Review, TraceResult
 from benchlay.report.numbers import decimals_of, rounded, settled
 
@@ -20,7 +20,7 @@ def check_document(results: Sequence[Review | LayoutErrors], *, version: str) ->
     return {
         "benchlay": version,
         "reviews": [review_object(result) for result in results],
-        "cautions": list(CAUTIONS),
+        "cautions": list(ALL_CAUTIONS),
     }
 
 
