@@ -1,0 +1,137 @@
+"""Elements: one table holds the keys of the kind and the keys that all kinds share."""
+
+from __future__ import annotations
+
+from typing import Any, NamedTuple
+
+from benchlay.document.form import Reader
+from benchlay.document.forms import Deferred, RecordForm, Text
+from benchlay.document.nodes import Broken, Mapping, Node, Scalar
+from benchlay.document.record import key, read_record
+from benchlay.document.span import Span
+from benchlay.document.words import format_choices, nearest, quote
+from benchlay.elements import KINDS, ElementKind
+from benchlay.elements.mount import MOUNT
+from benchlay.layout.materials import Withstands
+from benchlay.layout.stand import Stand
+
+
+class Shared(Stand):
+    """The keys that elements of every kind have."""
+
+    mount: Any = key(MOUNT, default=None, meaning="what holds it; `none` for no box, post or foot")
+    withstands: Withstands | None = key(RecordForm(Withstands), default=None, meaning="its rating")
+
+
+_SHARED_NAMES = frozenset(k.name for k in Shared.KEYS.values())
+_STAND_NAMES = tuple(Stand.KEYS)
+_COMMON = (*(k.name for k in Shared.KEYS.values()), "kind", "part")
+
+# Parts are read in `include`'s own stage; here they can only be refused.
+PART = Deferred("the name of a part")
+KIND = Text(40, what="a kind of element", sample="mirror")
+
+
+class Element(NamedTuple):
+    """An element, ready to be placed; `spans` give the place of every key written.
+
+    `mount` is None where the layout says nothing; then the kind's default holds.
+    """
+
+    name: str
+    kind: str
+    record: ElementKind
+    stand: Stand
+    mount: Any
+    withstands: Withstands | None
+    span: Span
+    spans: dict[str, Span]
+
+
+def read_element(name: Scalar, node: Node, reader: Reader) -> Element | None:
+    """Read one entry of `elements`; None after problems."""
+    if not isinstance(node, Mapping):
+        reader.refuse(node, RecordForm(Shared))
+        return None
+    cls = _kind(node, reader)
+    if cls is None:
+        return None
+    if cls.PENDING is not None:
+        _refuse_pending(cls, node, reader)
+        return None
+    own = frozenset(k.name for k in cls.KEYS.values())
+    record = read_record(cls, node, reader, extra=_COMMON)
+    strange = [n for n in node.names() if n not in _SHARED_NAMES]
+    shared = read_record(Shared, node, reader, ignore=own.union(strange))
+    if record is None or shared is None:
+        return None
+    if not _turns(record, shared, reader):
+        return None
+    values = {attribute: getattr(shared, attribute) for attribute in _STAND_NAMES}
+    stand = Stand(span=node.span, spans=shared.spans, **values)
+    withstands = getattr(record, "withstands", None) or shared.withstands
+    return Element(
+        name.text, cls.KIND, record, stand, shared.mount, withstands, name.span, dict(shared.spans)
+    )
+
+
+def _kind(node: Mapping, reader: Reader) -> type[ElementKind] | None:
+    """Find the class of the kind, or say what is wrong with it."""
+    if node.get("part") is not None:
+        reader.complain(
+            node.get("part") or node,
+            "not yet: parts are not put together by this version",
+            expected="a layout without 'part'",
+            remedy="write the keys of the part here",
+        )
+        return None
+    written = node.get("kind")
+    if written is None:
+        reader.complain(
+            node,
+            "'kind' is missing",
+            expected=f"'kind' with one of {format_choices(KINDS)}",
+            remedy="add 'kind: mirror', with the kind that is meant",
+        )
+        return None
+    if not isinstance(written, Scalar):
+        if not isinstance(written, Broken):
+            reader.refuse(written, KIND)
+        return None
+    if written.text in KINDS:
+        return KINDS[written.text]
+    guess = nearest(written.text, KINDS)
+    reader.complain(
+        written,
+        f"{quote(written.text)} is not a kind of element",
+        expected=f"one of {format_choices(KINDS)}",
+        remedy=f"write '{guess}'" if guess else "write the kind that comes nearest",
+    )
+    return None
+
+
+def _refuse_pending(cls: type[ElementKind], node: Mapping, reader: Reader) -> None:
+    """Say that a kind is not acted on yet, and what else is wrong with its keys."""
+    reader.complain(
+        node.get("kind") or node,
+        f"not yet: {cls.PENDING}",
+        expected="a kind that this version traces",
+        remedy="take the element out of the layout; nothing is computed as if it were not there",
+    )
+    read_record(cls, node, reader, extra=_COMMON)
+    own = {k.name for k in cls.KEYS.values()}
+    strange = {n for n in node.names() if n not in _SHARED_NAMES}
+    read_record(Shared, node, reader, ignore=own | strange)
+
+
+def _turns(record: ElementKind, shared: Shared, reader: Reader) -> bool:
+    """Refuse `turn` and `aim` where the front does not reflect what is meant to go on."""
+    wrong = [n for n in ("turn", "aim") if shared.written(n) and not record.TURNS_FRONT]
+    for name in wrong:
+        reader.complain(
+            shared.spans[name],
+            f"'{name}' is for fronts that reflect the beam on; a {record.KIND} does not",
+            expected="'incidence', 'facing', or 'sends' where the kind has it",
+            remedy=f"write 'incidence: 0' or 'facing' instead of '{name}'",
+        )
+    return not wrong
