@@ -79,9 +79,9 @@ def _face(n_in: ArrayLike, n_out: ArrayLike, cos_in: ArrayLike) -> _Face:
     c1 = np.maximum(np.abs(np.asarray(cos_in, dtype=np.float64)), _GRAZING)
     n1c1 = n1 * c1
     contrast = (n2 - n1) * (n2 + n1)
-    # Adding +0i makes an imaginary part of -0.0 positive: on the cut of the root it
-    # alone decides between a field that dies away (Im q >= 0) and one that grows.
-    q: Complexes = np.sqrt(contrast + n1c1 * n1c1 + 0j)
+    # The real second term also makes an imaginary part of -0.0 positive: on the cut of the
+    # root it alone decides between a field that dies away (Im q >= 0) and one that grows.
+    q: Complexes = np.sqrt(contrast + n1c1 * n1c1)
     below_s: Complexes = q + n1c1
     return _Face(n1c1, n1, n2, c1, q, contrast, below_s, n2 * n2 * c1 + n1 * q)
 
