@@ -18,6 +18,7 @@ from benchlay.optics._shares_curves import (
     Ints,
     Lines,
     largest_stretch,
+    pick_lines,
     select,
     spans,
     starts,
@@ -27,6 +28,7 @@ from benchlay.optics._shares_prepare import Section
 
 _SAME_ANGLE = 1e-14  # breaks are good to a few 1e-16 rad
 _END = 1e-12  # how far beyond its ends a piece is still crossed (widths of the beam)
+_AT_OUTLINE = 1e-6  # the axis is this near an outline, of a semi-axis
 _CIRCULAR = 1e-9  # below this the quartic is solved as a quadratic, then polished
 _ON_CIRCLE = 1e-2  # a double root may leave the unit circle by the root of its error
 # Three fixed directions keep every interval below pi, where arcs are unambiguous.
@@ -88,8 +90,7 @@ def _lines_with_lines(lines: Lines) -> tuple[Ints, Floats]:
     hit &= (sb >= lines.start[b] - _END) & (sb <= lines.end[b] + _END)
     pick = np.flatnonzero(hit)
     a = a[pick]
-    crossed = Lines(*(select(column, a) for column in lines))
-    return crossed.problem, _on_line(crossed, sa[pick])
+    return lines.problem[a], _on_line(pick_lines(lines, a), sa[pick])
 
 
 def _lines_with_ellipses(lines: Lines, ellipses: Ellipses, first: Ints) -> tuple[Ints, Floats]:
@@ -112,15 +113,24 @@ def _lines_with_ellipses(lines: Lines, ellipses: Ellipses, first: Ints) -> tuple
 
 
 def _tangents(ellipses: Ellipses, around: Ints) -> list[tuple[Ints, Floats]]:
-    """Points where a ray from the axis only touches an ellipse."""
+    """Points where a ray from the axis only touches an ellipse.
+
+    When the axis lies on the outline it is itself that point, and no direction can be had
+    from it: the tangent's two directions are taken there instead.
+    """
     away2 = np.sum(ellipses.axis**2, axis=0)
     pick = np.flatnonzero(away2 > 1.0)
-    axis, away2 = ellipses.axis[:, pick], away2[pick]
-    side = np.sqrt(away2 - 1.0) * np.stack((-axis[1], axis[0]))
+    axis, away2_out = ellipses.axis[:, pick], away2[pick]
+    side = np.sqrt(away2_out - 1.0) * np.stack((-axis[1], axis[0]))
     centre, axes = ellipses.centre[:, pick], select(ellipses.axes, pick)
+    on = np.flatnonzero(np.abs(away2 - 1.0) < _AT_OUTLINE)
+    along = np.stack((-ellipses.axis[1, on], ellipses.axis[0, on]))
+    along = transform(select(ellipses.axes, on), along)
     return [
-        (around[pick], centre + transform(axes, touch / away2))
-        for touch in (axis + side, axis - side)
+        (around[pick], centre + transform(axes, (axis + side) / away2_out)),
+        (around[pick], centre + transform(axes, (axis - side) / away2_out)),
+        (around[on], along),
+        (around[on], -along),
     ]
 
 
@@ -156,7 +166,8 @@ def _overlap(inverse: Floats, axes: Floats, offset: Floats) -> Bools:
     centre = transform(inverse, offset)
     distance = np.hypot(centre[0], centre[1])
     reach = largest_stretch(_product(inverse, axes))
-    return (distance - reach < 1.0) & (distance + reach > 1.0 + _END)
+    result: Bools = (distance - reach < 1.0) & (distance + reach > 1.0 + _END)
+    return result
 
 
 def _crossings(matrix: Floats, centre: Floats) -> tuple[Ints, Floats]:
@@ -197,4 +208,5 @@ def _roots(tail: Complexes) -> Complexes:
     companion = np.zeros((len(tail), degree, degree), dtype=np.complex128)
     companion[:, 0] = -tail
     companion[:, np.arange(1, degree), np.arange(degree - 1)] = 1.0
-    return np.linalg.eigvals(companion)
+    roots: Complexes = np.linalg.eigvals(companion).astype(np.complex128)
+    return roots

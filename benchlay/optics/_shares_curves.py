@@ -6,7 +6,7 @@ call with forty problems costs hardly more than a call with one.
 
 from __future__ import annotations
 
-from typing import NamedTuple
+from typing import NamedTuple, TypeVar
 
 import numpy as np
 from numpy.typing import NDArray
@@ -15,6 +15,7 @@ Floats = NDArray[np.float64]
 Ints = NDArray[np.intp]
 Bools = NDArray[np.bool_]
 Complexes = NDArray[np.complex128]
+Table = TypeVar("Table", Floats, Ints)
 
 CUT_RADIUS = 4.6  # exp(-2 r^2) is 4e-19 here: nothing farther out is looked at
 DEPTH_TIE_MM = 1e-9  # far above rounding of a metre in mm, far below any real gap
@@ -100,9 +101,38 @@ def starts(problem: Ints, problems: int) -> Ints:
     return np.searchsorted(problem, np.arange(problems + 1))
 
 
-def select(table: Floats, index: Ints) -> Floats:
+def select(table: Table, index: Ints) -> Table:
     """Columns of a table whose last axis is the row of a body, line or problem."""
     return np.take(table, index, axis=-1)
+
+
+def pick_lines(lines: Lines, index: Ints) -> Lines:
+    """Rows of a table of straight pieces."""
+    return Lines(
+        lines.problem[index],
+        lines.body[index],
+        lines.distance[index],
+        lines.normal[:, index],
+        lines.start[index],
+        lines.end[index],
+    )
+
+
+def join_lines(first: Lines, second: Lines) -> Lines:
+    """Rows of two tables of straight pieces, one after the other."""
+    return Lines(
+        np.concatenate((first.problem, second.problem)),
+        np.concatenate((first.body, second.body)),
+        np.concatenate((first.distance, second.distance)),
+        np.concatenate((first.normal, second.normal), axis=1),
+        np.concatenate((first.start, second.start)),
+        np.concatenate((first.end, second.end)),
+    )
+
+
+def pick_ellipses(ellipses: Ellipses, index: Ints) -> Ellipses:
+    """Rows of a table of ellipses."""
+    return Ellipses(ellipses.body[index], *(x[..., index] for x in ellipses[1:]))
 
 
 def measure_polygons(vertices: Floats) -> tuple[Polygons, Floats, Bools]:

@@ -26,7 +26,6 @@ from benchlay.optics._shares_curves import (
     Floats,
     Ints,
     Lines,
-    select,
     spans,
     transform,
 )
@@ -112,15 +111,14 @@ def _evaluate(
     edges = _edges(section, rays, found.bound[straight], body[straight])
     lines = section.lines
     number = found.bound[level_rows] - split
-    levels = Lines(*(select(column, number) for column in lines))
-    line = Lines(*(np.concatenate(x, axis=-1) for x in zip(edges, levels, strict=True)))
+    line = join_lines(edges, pick_lines(lines, number))
     rows = np.concatenate((straight, level_rows))
     results = []
     pieces = _line_pieces(line, sweep, interval[rows])
     results.append((rows, _integrate(pieces, _straight), pieces.near))
     which = rays.row[ray[curved]]
     table = section.ellipses
-    ellipse = Ellipses(*(select(column, which) for column in table))
+    ellipse = pick_ellipses(table, which)
     leaving = (found.bound[curved] & 1).astype(bool)
     pieces = _arc_pieces(ellipse, leaving, sweep, interval[curved])
     results.append((curved, _integrate(pieces, _curved), pieces.near))
@@ -150,7 +148,7 @@ def _polygon_of(section: Section, body: Ints) -> Ints:
 
 
 def _line_pieces(line: Lines, sweep: Intervals, interval: Ints) -> Pieces:
-    """The part of each line within its interval of directions."""
+    """Cut each line to its interval of directions."""
     n = line.normal
     ends = []
     for ray in (sweep.begin[:, interval], sweep.end[:, interval]):
@@ -166,7 +164,7 @@ def _line_pieces(line: Lines, sweep: Intervals, interval: Ints) -> Pieces:
 
 
 def _arc_pieces(ellipse: Ellipses, leaving: Bools, sweep: Intervals, interval: Ints) -> Pieces:
-    r"""The arc of each ellipse within its interval of directions.
+    r"""Cut each ellipse to its interval of directions.
 
     On the unit circle the ray from the axis a in the direction d meets phi with
     sin(phi - arg d) = d x a / |d|: two solutions, where it enters and where it leaves.
@@ -246,13 +244,13 @@ def _sum(
 
 
 def _straight(shape: tuple[Floats, ...], t: Floats) -> tuple[Floats, Floats]:
-    """A line at a distance from the axis, t from its foot."""
+    """Follow a line at a distance from the axis, t from its foot."""
     (distance,) = shape
     return distance * distance + t * t, distance
 
 
 def _curved(shape: tuple[Floats, ...], t: Floats) -> tuple[Floats, Floats]:
-    """An ellipse, t its eccentric angle."""
+    """Follow an ellipse, t its eccentric angle."""
     x0, y0, axx, axy, ayx, ayy = shape
     c, s = np.cos(t), np.sin(t)
     x, y = x0 + axx * c + axy * s, y0 + ayx * c + ayy * s

@@ -18,8 +18,11 @@ from benchlay.optics._shares_curves import (
     Lines,
     Polygons,
     Shapes,
+    join_lines,
     measure_ellipses,
     measure_polygons,
+    pick_ellipses,
+    pick_lines,
     select,
     spans,
     starts,
@@ -92,7 +95,7 @@ def _polygons(table: Polygons, body: Ints) -> Polygons:
 def _ellipses(table: Ellipses, body: Ints) -> Ellipses:
     keep = np.flatnonzero(body >= 0)
     keep = keep[np.argsort(body[keep], kind="stable")]
-    return Ellipses(body[keep], *(select(column, keep) for column in table[1:]))
+    return pick_ellipses(table._replace(body=body), keep)
 
 
 def _lines(bodies: Bodies, polygons: Polygons, ellipses: Ellipses) -> Lines:
@@ -110,9 +113,9 @@ def _lines(bodies: Bodies, polygons: Polygons, ellipses: Ellipses) -> Lines:
     meets = _depth_lines(bodies, polygons, ellipses)
     if not len(meets.problem):
         return edges
-    both = [np.concatenate(pair, axis=-1) for pair in zip(edges, meets, strict=True)]
-    sequence = np.argsort(both[0], kind="stable")
-    return Lines(*(select(column, sequence) for column in both))
+    both = join_lines(edges, meets)
+    sequence = np.argsort(both.problem, kind="stable")
+    return pick_lines(both, sequence)
 
 
 def _depth_lines(bodies: Bodies, polygons: Polygons, ellipses: Ellipses) -> Lines:
