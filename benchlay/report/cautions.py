@@ -2,8 +2,6 @@
 
 from __future__ import annotations
 
-from benchlay.exposure.cautions import CAUTIONS as EXPOSURE_CAUTIONS
-
 CAUTIONS = (
     "This is a model of the layout as written. What stands on the bench may differ: survey "
     "stray light there, at low power, before anyone works with it.",
@@ -13,7 +11,3 @@ CAUTIONS = (
     "alone, unless said otherwise. The standard, local rules and the laser safety officer "
     "decide; this program awards no class and no approval.",
 )
-"""For every form, the terminal's too."""
-
-ALL_CAUTIONS = (*CAUTIONS, *EXPOSURE_CAUTIONS)
-"""For what is kept: the JSON and the record."""

@@ -7,7 +7,8 @@ from collections.abc import Mapping, Sequence
 from typing import Any, TypeAlias
 
 from benchlay.document.problems import Problem
-from benchlay.report.cautions import ALL_CAUTIONS
+from benchlay.exposure.cautions import CAUTIONS as EXPOSURE_CAUTIONS
+from benchlay.report.cautions import CAUTIONS
 from benchlay.report.model import LayoutErrors, Ledger, Review, TraceResult
 from benchlay.report.numbers import decimals_of, rounded, settled
 
@@ -20,7 +21,7 @@ def check_document(results: Sequence[Review | LayoutErrors], *, version: str) ->
     return {
         "benchlay": version,
         "reviews": [review_object(result) for result in results],
-        "cautions": list(ALL_CAUTIONS),
+        "cautions": [*CAUTIONS, *EXPOSURE_CAUTIONS],
     }
 
 
