@@ -85,6 +85,31 @@ def test_above_the_limit_of_3b_no_other_class_is_given():
     assert found.name == "4"
 
 
+@pytest.mark.parametrize(
+    ("wavelength", "naked_mm", "binoculars_mm"),
+    [(355.0, 1.0, 7.0), (532.0, 7.0, 50.0), (1550.0, 3.5, 24.5)],
+)
+def test_apertures_of_the_two_conditions(wavelength, naked_mm, binoculars_mm):
+    # A parallel beam of 20 mm radius: shares straight from 1 - exp(-2 a^2/w^2).
+    found = classify_continuous(wavelength, 1.0, GaussianExit(20.0, 0.0))
+    for share, diameter in ((found.naked_eye, naked_mm), (found.binoculars, binoculars_mm)):
+        assert share == pytest.approx(1.0 - math.exp(-2.0 * (diameter / 40.0) ** 2))
+
+
+def test_the_two_conditions_stand_at_their_distances():
+    # 10 mrad from a point: 1 mm at 0.1 m, 20 mm at 2 m.
+    found = classify_continuous(532.0, 1.0, GaussianExit(1e-3, 0.01))
+    assert found.naked_eye == pytest.approx(1.0 - math.exp(-2.0 * 3.5**2), rel=1e-5)
+    assert found.binoculars == pytest.approx(1.0 - math.exp(-2.0 * 1.25**2), rel=1e-5)
+
+
+def test_without_binoculars_the_exit_itself_is_judged():
+    for wavelength, diameter in ((302.4, 1.0), (4000.0, 3.5)):
+        found = classify_continuous(wavelength, 1.0, GaussianExit(2.0, 0.5))
+        expected = 1.0 - math.exp(-2.0 * (diameter / 4.0) ** 2)
+        assert found.naked_eye == found.binoculars == pytest.approx(expected)
+
+
 def test_far_infrared_has_no_binoculars():
     wide = GaussianExit(waist_w_mm=10.0, half_angle_86_rad=1e-3)
     found = classify_continuous(10600.0, 1.0, wide)

@@ -93,6 +93,9 @@ def test_diffuse_light_by_angle_and_spot():
     spread = diffuse_distance_m(5.0, 25.0, spot_radius_m=0.1)
     assert spread == pytest.approx(math.sqrt(straight**2 - 0.01))
     assert diffuse_distance_m(5.0, 25.0, spot_radius_m=1.0) == 0.0
+    grey = diffuse_distance_m(5.0, 25.0, reflectance=0.25)
+    assert grey == pytest.approx(straight / 2.0)
+    assert diffuse_distance_m(5.0, 25.0, reflectance=0.0) == 0.0
 
 
 @pytest.mark.parametrize("bad", [-1.0, math.nan, math.inf])
@@ -115,6 +118,8 @@ def test_impossible_input_is_refused(bad):
         diffuse_distance_m(1.0, MPE, angle_rad=math.nan)
     with pytest.raises(OutOfRange, match="reflectance"):
         diffuse_distance_m(1.0, MPE, reflectance=1.01)
+    with pytest.raises(OutOfRange, match="reflectance"):
+        diffuse_distance_m(1.0, MPE, reflectance=-0.01)
 
 
 @given(

@@ -55,6 +55,113 @@ def test_step_is_on_its_exact_side(level, wavelength, time, low, high):
     assert at == pytest.approx(high, rel=1e-6)
 
 
+C2_310 = 10.0**3.0
+C4_800 = 10.0**0.2
+ONE, TWO, THREE_R, THREE_B = Level
+
+# One value for every row of the classes' tables: W or J as the table writes it.
+ROWS = [
+    (ONE, 250.0, 1e-10, 2.4e4, "W"),
+    (ONE, 250.0, 1.0, 2.4e-5, "J"),
+    (ONE, 310.0, 1e-10, 2.4e4, "W"),
+    (ONE, 310.0, 1e-8, 7.9e-7 * 5600 * 1e-2, "J"),
+    (ONE, 310.0, 1.0, 7.9e-7 * C2_310, "J"),
+    (ONE, 310.0, 100.0, 7.9e-7 * C2_310, "J"),
+    (ONE, 314.9, 10.0, 7.9e-7 * 10**3.98, "J"),
+    (ONE, 350.0, 1e-10, 2.4e4, "W"),
+    (ONE, 350.0, 1.0, 7.9e-7 * 5600, "J"),
+    (ONE, 350.0, 100.0, 7.9e-3, "J"),
+    (ONE, 350.0, 1e4, 7.9e-6, "W"),
+    (ONE, 440.0, 10.0, 3.9e-3, "J"),
+    (ONE, 440.0, 100.0, 3.9e-5, "W"),
+    (ONE, 500.0, 1e3, 3.9e-4, "W"),
+    (ONE, 633.0, 1.0, 7e-4, "J"),
+    (ONE, 800.0, 1e-12, 3.8e-8 * C4_800, "J"),
+    (ONE, 800.0, 1e-8, 7.7e-8 * C4_800, "J"),
+    (ONE, 800.0, 1.0, 7e-4 * C4_800, "J"),
+    (ONE, 800.0, 100.0, 3.9e-4 * C4_800, "W"),
+    (ONE, 1064.0, 1e-12, 3.8e-7, "J"),
+    (ONE, 1225.0, 1e-8, 7.7e-7 * (8 + 0.1), "J"),
+    (ONE, 1225.0, 100.0, 3.9e-4 * 5 * (8 + 0.1), "W"),
+    (ONE, 1450.0, 1e-10, 8e5, "W"),
+    (ONE, 1450.0, 1e-6, 8e-4, "J"),
+    (ONE, 1450.0, 1.0, 1e-2, "J"),
+    (ONE, 1450.0, 100.0, 1e-2, "W"),
+    (ONE, 1550.0, 1e-10, 8e6, "W"),
+    (ONE, 1550.0, 1e-3, 8e-3, "J"),
+    (ONE, 1550.0, 1.0, 1.8e-2, "J"),
+    (ONE, 2000.0, 0.0081, 4.4e-3 * 0.3, "J"),
+    (ONE, 3000.0, 1e-10, 8e4, "W"),
+    (ONE, 3000.0, 1e-8, 8e-5, "J"),
+    (ONE, 3000.0, 0.0081, 4.4e-3 * 0.3, "J"),
+    (TWO, 633.0, 1e-8, 7.7e-8, "J"),
+    (TWO, 633.0, 1.0, 1e-3, "W"),
+    (THREE_R, 310.0, 1e-10, 1.2e5, "W"),
+    (THREE_R, 310.0, 1e-8, 4e-6 * 56.0, "J"),
+    (THREE_R, 310.0, 1.0, 4e-6 * C2_310, "J"),
+    (THREE_R, 314.9, 10.0, 4e-6 * 10**3.98, "J"),
+    (THREE_R, 350.0, 1e-10, 1.2e5, "W"),
+    (THREE_R, 350.0, 1.0, 4e-6 * 5600, "J"),
+    (THREE_R, 350.0, 100.0, 4e-2, "J"),
+    (THREE_R, 350.0, 1e4, 4e-5, "W"),
+    (THREE_R, 633.0, 100.0, 5e-3, "W"),
+    (THREE_R, 800.0, 1e-12, 1.9e-7 * C4_800, "J"),
+    (THREE_R, 800.0, 1e-8, 3.8e-7 * C4_800, "J"),
+    (THREE_R, 800.0, 1.0, 3.5e-3 * C4_800, "J"),
+    (THREE_R, 800.0, 100.0, 2e-3 * C4_800, "W"),
+    (THREE_R, 1064.0, 1e-12, 1.9e-6, "J"),
+    (THREE_R, 1064.0, 1e-8, 3.8e-6, "J"),
+    (THREE_R, 1064.0, 1.0, 1.8e-2, "J"),
+    (THREE_R, 1064.0, 100.0, 1e-2, "W"),
+    (THREE_R, 1390.0, 100.0, 0.5, "W"),
+    (THREE_R, 1450.0, 1e-10, 4e6, "W"),
+    (THREE_R, 1450.0, 1.0, 5e-2, "J"),
+    (THREE_R, 1550.0, 100.0, 5e-2, "W"),
+    (THREE_R, 3000.0, 1e-8, 4e-4, "J"),
+    (THREE_B, 250.0, 1e-10, 3.8e5, "W"),
+    (THREE_B, 250.0, 1e-8, 3.8e-4, "J"),
+    (THREE_B, 250.0, 1.0, 1.5e-3, "W"),
+    (THREE_B, 310.0, 1e-10, 1.25e4 * C2_310, "W"),
+    (THREE_B, 310.0, 1e-8, 1.25e-5 * C2_310, "J"),
+    (THREE_B, 310.0, 1.0, 5e-5 * C2_310, "W"),
+    (THREE_B, 350.0, 1e-10, 1.25e8, "W"),
+    (THREE_B, 350.0, 1e-8, 0.125, "J"),
+    (THREE_B, 350.0, 1.0, 0.5, "W"),
+    (THREE_B, 800.0, 1e-10, 3e7 * C4_800, "W"),
+    (THREE_B, 800.0, 0.09, 0.03 * C4_800, "J"),
+    (THREE_B, 800.0, 0.1, 0.5, "W"),
+    (THREE_B, 1064.0, 1e-10, 1.5e8, "W"),
+    (THREE_B, 1064.0, 1e-8, 0.15, "J"),
+    (THREE_B, 1064.0, 1.0, 0.5, "W"),
+    (THREE_B, 1550.0, 1e-10, 1.25e8, "W"),
+    (THREE_B, 1550.0, 1e-8, 0.125, "J"),
+    (THREE_B, 1550.0, 1.0, 0.5, "W"),
+]
+
+
+@pytest.mark.parametrize(("level", "wavelength", "time", "value", "unit"), ROWS)
+def test_every_row(level, wavelength, time, value, unit):
+    found = emission_limit(level, wavelength, time)
+    assert found.value == pytest.approx(value, rel=1e-9)
+    assert found.unit == unit
+
+
+def test_extended_sources_are_allowed_more():
+    factor = 50.0 / 1.5
+    t2 = 10.0 * 10.0 ** (48.5 / 98.5)
+    for level, slope in ((ONE, 7e-4), (THREE_R, 3.5e-3)):
+        early = emission_limit(level, 800.0, 20.0, alpha_mrad=50.0)
+        expected = slope * C4_800 * factor * 20.0**0.75
+        assert (early.value, early.unit) == (pytest.approx(expected), "J")
+        late = emission_limit(level, 800.0, 100.0, alpha_mrad=50.0)
+        expected = slope * C4_800 * factor * t2**-0.25
+        assert (late.value, late.unit) == (pytest.approx(expected), "W")
+    assert emission_limit(TWO, 633.0, 1.0, alpha_mrad=50.0).value == pytest.approx(1e-3 * factor)
+    assert emission_limit(THREE_R, 633.0, 1.0, alpha_mrad=50.0).value == pytest.approx(
+        5e-3 * factor
+    )
+
+
 @pytest.mark.parametrize(
     ("level", "wavelength", "exists"),
     [

@@ -100,6 +100,9 @@ def test_c5_is_not_used_for_pulses_beyond_a_quarter_second():
         (1e4, 0.1, 10.0, 80.0, 0.2),
         (1e4, 0.1, 10.0, 100.0, 0.2),
         (1e4, 0.1, 10.0, 100.1, 1.0),
+        (1e6, 1e-8, 10.0, 100.0, 0.4),
+        (1e6, 1e-8, 10.0, 100.1, 1.0),
+        (700.0, 1e-8, 10.0, 1.5, 5.0 * 700.0**-0.25),
     ],
 )
 def test_c5_on_each_side(pulses, pulse_s, exposure_s, alpha, value):
