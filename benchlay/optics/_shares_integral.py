@@ -26,6 +26,9 @@ from benchlay.optics._shares_curves import (
     Floats,
     Ints,
     Lines,
+    join_lines,
+    pick_ellipses,
+    pick_lines,
     spans,
     transform,
 )
@@ -86,9 +89,14 @@ def shares(
     free = found.body < 0
     problem = sweep.problem[found.interval[free]]
     return (
-        np.bincount(found.body[~free], value[~free], len(section.bodies.problem)),
-        np.bincount(problem, value[free], section.problems),
+        _collect(found.body[~free], value[~free], len(section.bodies.problem)),
+        _collect(problem, value[free], section.problems),
     )
+
+
+def _collect(row: Ints, value: Floats, rows: int) -> Floats:
+    """Sum the values of each row."""
+    return np.bincount(row, value, rows).astype(np.float64)
 
 
 def _evaluate(
@@ -206,7 +214,16 @@ def _closest(ellipse: Ellipses, leaving: Bools, begin: Floats, length: Floats) -
     chord2 = np.maximum(dx * dx + dy * dy, _TINY)
     foot = np.clip(-(x[:-1] * dx + y[:-1] * dy) / chord2, 0.0, 1.0)
     chord = np.hypot(x[:-1] + foot * dx, y[:-1] + foot * dy).min(axis=0)
-    return np.where(leaving, chord, tangent)
+    bound: Floats = np.where(leaving, chord, tangent)
+    return bound
+
+
+class _Rule(NamedTuple):
+    """How a group of pieces is integrated."""
+
+    nodes: int
+    outline: Outline
+    near: bool  # `within`, else `beyond`
 
 
 def _integrate(pieces: Pieces, outline: Outline) -> Floats:
@@ -221,26 +238,24 @@ def _integrate(pieces: Pieces, outline: Outline) -> Floats:
         for near in (False, True):
             rows = np.flatnonzero(chosen & (pieces.near == near))
             if len(rows):
-                count = np.ones_like(rows) if nodes == 8 else many[rows]  # noqa: PLR2004
-                total[rows] = _sum(pieces, rows, count, nodes, outline, near)
+                count = np.where(short[rows], 1, many[rows])
+                total[rows] = _sum(pieces, rows, count, _Rule(nodes, outline, near))
     return total / (2.0 * np.pi)
 
 
-def _sum(
-    pieces: Pieces, rows: Ints, count: Ints, nodes: int, outline: Outline, near: bool
-) -> Floats:
+def _sum(pieces: Pieces, rows: Ints, count: Ints, rule: _Rule) -> Floats:
     """Gauss-Legendre sum over `count` equal panels of each of the pieces `rows`."""
     piece, panel = spans(np.zeros_like(rows), count)
     row = rows[piece]
     half = 0.5 * pieces.length[row] / count[piece]
     middle = pieces.begin[row] + (2.0 * panel + 1.0) * half
-    x, weight = _RULES[nodes]
+    x, weight = _RULES[rule.nodes]
     shape = tuple(column[row][:, None] for column in pieces.shape)
-    r2, cross = outline(shape, middle[:, None] + half[:, None] * x)
+    r2, cross = rule.outline(shape, middle[:, None] + half[:, None] * x)
     r2 = np.maximum(r2, _TINY)
-    power = -np.expm1(-2.0 * r2) if near else np.exp(-2.0 * r2)
+    power = -np.expm1(-2.0 * r2) if rule.near else np.exp(-2.0 * r2)
     value = ((power * cross / r2) @ weight) * half
-    return np.bincount(piece, value, len(rows))
+    return _collect(piece, value, len(rows))
 
 
 def _straight(shape: tuple[Floats, ...], t: Floats) -> tuple[Floats, Floats]:

@@ -135,7 +135,7 @@ def _through_ellipses(section: Section, which: Ints, ray: Floats) -> tuple[Float
 
 def stretches(section: Section, sweep: Intervals, rays: Rays) -> Stretches:
     """Divide every middle ray among the bodies it meets first."""
-    line, level, level_first = _levels(section, sweep)
+    levels = _levels(section, sweep, 2 * len(rays.enter))
     size = np.diff(section.bodies.first)[sweep.problem]
     sequence = np.argsort(-size, kind="stable")
     parts, done = [], 0
@@ -143,7 +143,7 @@ def stretches(section: Section, sweep: Intervals, rays: Rays) -> Stretches:
         slots = int(size[sequence[done]])
         step = max(1, _ELEMENTS // (slots * (2 * slots + 1)))
         chunk = np.sort(sequence[done : done + step])
-        parts.append(_divide(section, sweep, rays, chunk, (line, level, level_first)))
+        parts.append(_divide(section, sweep, rays, chunk, levels))
         done += step
     whole = [np.concatenate(column) for column in zip(*parts, strict=True)]
     if len(parts) > 1:
@@ -152,8 +152,8 @@ def stretches(section: Section, sweep: Intervals, rays: Rays) -> Stretches:
     return Stretches(*whole)
 
 
-def _levels(section: Section, sweep: Intervals) -> tuple[Ints, Floats, Ints]:
-    """Radii at which middle rays meet lines of equal depth, sorted by interval."""
+def _levels(section: Section, sweep: Intervals, base: int) -> tuple[Ints, Floats, Ints]:
+    """Lines of equal depth (from `base` on), the radii at which rays meet them, and starts."""
     nobody = np.flatnonzero(section.lines.body < 0)
     problem = section.lines.problem[nobody]
     begin = sweep.first[problem]
@@ -166,7 +166,7 @@ def _levels(section: Section, sweep: Intervals) -> tuple[Ints, Floats, Ints]:
     sequence = np.argsort(interval, kind="stable")
     line, interval, toward = line[sequence], interval[sequence], toward[sequence]
     radius = section.lines.distance[line] / toward
-    return line, radius, starts(interval, len(sweep.problem))
+    return line + base, radius, starts(interval, len(sweep.problem))
 
 
 def _divide(
@@ -185,7 +185,7 @@ def _divide(
     ray = np.where(real, rays.first[chunk] + slot, 0)
     enter = np.where(real, rays.enter[ray], CUT_RADIUS)
     leave = np.where(real, rays.leave[ray], 0.0)
-    radius, bound = _bounds(enter, leave, ray, chunk, levels, 2 * len(rays.enter))
+    radius, bound = _bounds(enter, leave, ray, chunk, levels)
     sequence = np.argsort(radius, axis=1)
     radius = np.take_along_axis(radius, sequence, axis=1)
     middle = np.ascontiguousarray(0.5 * (radius[:, 1:] + radius[:, :-1]).T)
@@ -212,7 +212,6 @@ def _bounds(
     ray: Ints,
     chunk: Ints,
     levels: tuple[Ints, Floats, Ints],
-    base: int,
 ) -> tuple[Floats, Ints]:
     """Radii (n, B) at which the owner may change, and what stands there."""
     n = len(chunk)
@@ -226,7 +225,7 @@ def _bounds(
         held = column < count[:, None]
         place = np.where(held, first[chunk][:, None] + column, 0)
         radius.append(np.where(held, level[place], CUT_RADIUS))
-        bound.append(base + line[place])
+        bound.append(line[place])
     return np.concatenate(radius, axis=1), np.concatenate(bound, axis=1)
 
 
@@ -255,4 +254,5 @@ def _foremost(cover: Bools, depth: Floats, ray: Floats, radius: Floats) -> Ints:
     slots = len(cover)
     slot = np.arange(slots, dtype=np.int16)[:, None, None]
     owner = np.where(at <= least + DEPTH_TIE_MM, slot, np.int16(slots)).min(axis=0)
-    return owner.astype(np.intp)
+    foremost: Ints = owner.astype(np.intp)
+    return foremost

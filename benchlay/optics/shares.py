@@ -16,6 +16,7 @@ stretch of outline (`_shares_integral`).
 
 from __future__ import annotations
 
+from itertools import pairwise
 from typing import NamedTuple
 
 import numpy as np
@@ -27,7 +28,7 @@ from benchlay.optics._shares_integral import shares
 from benchlay.optics._shares_order import cast, intervals, stretches
 from benchlay.optics._shares_prepare import prepare, unusable
 
-__all__ = ["Partition", "Shapes", "partition", "within"]
+__all__ = ["Partition", "Shapes", "inside", "partition"]
 
 _BLOCK = 2000  # shapes worked on at once: bounds the memory, not the result
 
@@ -104,12 +105,15 @@ def partition(shapes: Shapes, problems: int) -> Partition:
 
 def _checked(shapes: Shapes, problems: int) -> Shapes:
     """Arrays of the right types, or a ValueError."""
-    whole = {"problem", "corners", "order", "hole_of"}
     arrays = Shapes(
-        **{
-            name: np.asarray(value, dtype=np.intp if name in whole else np.float64)
-            for name, value in shapes._asdict().items()
-        }
+        problem=np.asarray(shapes.problem, dtype=np.intp),
+        corners=np.asarray(shapes.corners, dtype=np.intp),
+        vertices=np.asarray(shapes.vertices, dtype=np.float64),
+        centre=np.asarray(shapes.centre, dtype=np.float64),
+        axes=np.asarray(shapes.axes, dtype=np.float64),
+        depth=np.asarray(shapes.depth, dtype=np.float64),
+        order=np.asarray(shapes.order, dtype=np.intp),
+        hole_of=np.asarray(shapes.hole_of, dtype=np.intp),
     )
     problem, hole_of = arrays.problem, arrays.hole_of
     if len(problem) and (problem[0] < 0 or problem[-1] >= problems):
@@ -126,12 +130,12 @@ def _checked(shapes: Shapes, problems: int) -> Shapes:
 
 
 def _blocks(problem: Ints) -> list[slice]:
-    """Runs of whole problems of about `_BLOCK` rows."""
+    """Cut into runs of whole problems of about `_BLOCK` rows."""
     cuts = [0]
     while cuts[-1] < len(problem):
         last = problem[min(cuts[-1] + _BLOCK, len(problem)) - 1]
         cuts.append(int(np.searchsorted(problem, last, side="right")))
-    return [slice(a, b) for a, b in zip(cuts, cuts[1:], strict=False)]
+    return [slice(a, b) for a, b in pairwise(cuts)]
 
 
 def _fill(shapes: Shapes, rows: Ints, share: Floats, free: Floats) -> None:
@@ -150,7 +154,7 @@ def _fill(shapes: Shapes, rows: Ints, share: Floats, free: Floats) -> None:
     free[named[busy]] = on_none[busy]
 
 
-def within(shapes: Shapes, point: ArrayLike) -> Bools:
+def inside(shapes: Shapes, point: ArrayLike) -> Bools:
     """Tell which outlines hold a point: a plain test, for drawings and cross-checks.
 
     Parameters

@@ -117,7 +117,7 @@ def to_shapes(scenes: list[list[Figure]]) -> Shapes:
     )
 
 
-def referee(scene: list[Figure], tolerance: float = 1e-10) -> np.ndarray:
+def referee(scene: list[Figure], tolerance: float = 1e-12) -> np.ndarray:
     """Power on each body of the scene, and last the power that passes all of them."""
     edges = np.concatenate((np.linspace(-EDGE, EDGE, 601), *(f.turns() for f in scene)))
     edges = np.unique(np.clip(edges, -EDGE, EDGE))
