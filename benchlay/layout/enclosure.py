@@ -229,8 +229,8 @@ class Enclosure(Record):
             reader.path += ["panels", name]
             heights = self.heights_mm(panel)
             if heights[1] <= heights[0]:
-                where = panel.span_of("to_height" if panel.written("to_height") else "from_height")
-                _upside_down(where, heights, reader)
+                edge = "to_height" if panel.written("to_height") else "from_height"
+                _upside_down(panel.span_of(edge), heights, reader)
             else:
                 _check_openings(panel, heights, reader)
             del reader.path[-2:]

@@ -2,7 +2,8 @@
 
 from __future__ import annotations
 
-from typing import NamedTuple
+from collections.abc import Callable
+from typing import NamedTuple, TypeVar
 
 from benchlay.document.form import Form, Reader
 from benchlay.document.forms import Deferred, Entries, RecordForm, Table
@@ -27,6 +28,7 @@ from benchlay.layout.sources import Source, read_source
 from benchlay.layout.states import Item, State, read_states, replaced
 from benchlay.layout.tolerances import Tolerances
 
+T = TypeVar("T")
 _ENTRIES: Form[object] = Table(Deferred("a table of keys"))
 _ENCLOSURE = RecordForm(Enclosure)
 _LIMITS = RecordForm(Limits)
@@ -128,7 +130,7 @@ class _Document:
         header = read_record(Header, self.root, self.reader, extra=SECTIONS)
         parts = self._parts(header)
         routes = read_entries(
-            self.root.get("routes"), "routes", _ENTRIES, read_route, {}, self.reader
+            self.root.get("routes"), "routes", _ENTRIES, read_route, self.reader, taken={}
         )
         states = read_states(self.root.get("states"), self.names, self.reader)
         references = References(self.names, parts.sources, parts.elements, self.reader)
@@ -149,8 +151,8 @@ class _Document:
         taken: dict[str, Scalar] = {}
         sources, elements = self.root.get("sources"), self.root.get("elements")
         return _Parts(
-            read_entries(sources, "sources", _ENTRIES, read_source, taken, self.reader),
-            read_entries(elements, "elements", _ENTRIES, read_element, taken, self.reader),
+            read_entries(sources, "sources", _ENTRIES, read_source, self.reader, taken=taken),
+            read_entries(elements, "elements", _ENTRIES, read_element, self.reader, taken=taken),
             self._enclosure(self.root.get("enclosure")),
             None if header is None else header.limits,
         )
@@ -181,11 +183,11 @@ class _Document:
         for item in items:
             if item[0] == "sources":
                 source = self._again(item, state, read_source)
-                if isinstance(source, Source):
+                if source is not None:
                     sources[item[1]] = touched.sources[item[1]] = source
             elif item[0] == "elements":
                 element = self._again(item, state, read_element)
-                if isinstance(element, Element):
+                if element is not None:
                     elements[item[1]] = touched.elements[item[1]] = element
         if any(item[0] == "enclosure" for item in items):
             enclosure = self._enclosure(self._enclosure_in(state))
@@ -195,17 +197,19 @@ class _Document:
         self._check(touched, References(self.names, sources, elements, self.reader))
         return _Parts(sources, elements, enclosure, limits)
 
-    def _again(self, item: Item, state: State, read: object) -> object:
+    def _again(
+        self, item: Item, state: State, read: Callable[[Scalar, Node, Reader], T | None]
+    ) -> T | None:
         """Read a source or element with the state's keys in it."""
         section = self.root.get(item[0])
         if not isinstance(section, Mapping):
             return None
         name, node = next(pair for pair in section.pairs if pair[0].text == item[1])
         changed = replaced(node, item, state, self.reader)
-        if changed is None or not callable(read):
+        if changed is None:
             return None
         self.reader.path = list(item)
-        value: object = read(name, changed, self.reader)
+        value = read(name, changed, self.reader)
         self.reader.path = []
         return value
 
@@ -235,7 +239,7 @@ class _Document:
         routes: dict[str, Route],
         states: dict[str, State],
     ) -> Layout:
-        things = (*parts.sources.values(), *parts.elements.values())
+        things: list[Source | Element] = [*parts.sources.values(), *parts.elements.values()]
         return Layout(
             title=header.title,
             revision=header.revision,

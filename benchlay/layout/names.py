@@ -95,8 +95,9 @@ def read_entries(
     section: str,
     form: Form[object],
     read: Callable[[Scalar, Node, Reader], T | None],
-    taken: dict[str, Scalar],
     reader: Reader,
+    *,
+    taken: dict[str, Scalar],
 ) -> dict[str, T]:
     """Read a section entry by entry; what could be read is returned, whatever else is wrong."""
     found: dict[str, T] = {}

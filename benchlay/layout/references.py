@@ -14,9 +14,10 @@ from benchlay.layout.elements import Element
 from benchlay.layout.enclosure import Enclosure
 from benchlay.layout.header import Header
 from benchlay.layout.names import Names, unknown
+from benchlay.layout.pose_forms import PathItem
 from benchlay.layout.routes import Route, RouteItem
 from benchlay.layout.sources import Source
-from benchlay.layout.stand import PathItem, Stand
+from benchlay.layout.stand import Stand
 
 THING = "source or element"
 SCATTERED = "scattered"

@@ -5,13 +5,12 @@ from __future__ import annotations
 from typing import Any, NamedTuple
 
 from benchlay.document.form import Failed, Form, Reader
-from benchlay.document.forms import OneOf, Quantity, RecordForm, Whole
+from benchlay.document.forms import OneOf, RecordForm, Whole
 from benchlay.document.nodes import Mapping, Node, Scalar, Sequence
-from benchlay.document.quantity import Dimension
 from benchlay.document.record import Record, key
 from benchlay.document.span import Span
 from benchlay.layout._forms import ANGLE, LENGTH, NOT_NEGATIVE, POWER, SHARE, SPREAD, DottedForm
-from benchlay.layout.sources import PolarizationForm
+from benchlay.layout.light import PolarizationForm
 
 _MAX_TIMES = 1_000
 _MAX_ITEMS = 10_000

@@ -3,150 +3,22 @@
 from __future__ import annotations
 
 from math import pi
-from typing import Any, NamedTuple
+from typing import NamedTuple
 
-from benchlay.document.form import Form, Reader
+from benchlay.document.form import Reader
 from benchlay.document.forms import Choice, ListOf, OneOf, Quantity, RecordForm, Words
 from benchlay.document.nodes import Node, Scalar
 from benchlay.document.quantity import Dimension
 from benchlay.document.record import Record, key, read_record
 from benchlay.document.span import Span
-from benchlay.layout._forms import ANGLE, POSITIVE, POWER, SHARE, WAVELENGTH, Ref, RefForm
+from benchlay.layout._forms import ANGLE, POSITIVE, SHARE, WAVELENGTH, Ref, RefForm
 from benchlay.layout.beam import BeamShape
+from benchlay.layout.light import UNPOLARIZED, Emits, Line, LineKeys, Polarization, PolarizationForm
 from benchlay.layout.stand import Place, Stand, check_one_place
 
 _FULL_ANGLE = Quantity(Dimension.ANGLE, above=0.0, at_most=pi)
 _HALF_ANGLE = Quantity(Dimension.ANGLE, at_least=0.0, below=pi / 2)
-_ENERGY = Quantity(Dimension.ENERGY, above=0.0)
-_DURATION = Quantity(Dimension.DURATION, above=0.0)
-_RATE = Quantity(Dimension.RATE, above=0.0)
 _LINEWIDTH = Quantity(Dimension.FREQUENCY, above=0.0)
-
-
-class Polarization(NamedTuple):
-    """`kind` is ``none``, ``angle`` (from horizontal) or ``circular`` (with its hand)."""
-
-    kind: str
-    angle_rad: float = 0.0
-    hand: str = ""
-
-
-UNPOLARIZED = Polarization("none")
-
-
-class _Inclined(Record):
-    angle_rad: float = key(
-        ANGLE,
-        name="angle",
-        meaning="from horizontal, anticlockwise to a viewer whom the beam approaches",
-    )
-
-
-class _Circular(Record):
-    circular: str = key(Choice("left", "right"), meaning="`right` turns clockwise to that viewer")
-
-
-class PolarizationForm(Form[Polarization]):
-    """Reads `horizontal`, `vertical`, `none`, `{angle: 30}` or `{circular: left}`."""
-
-    _form = OneOf(
-        Words(
-            {
-                "horizontal": Polarization("angle", 0.0),
-                "vertical": Polarization("angle", pi / 2),
-                "none": UNPOLARIZED,
-            }
-        ),
-        RecordForm(_Inclined),
-        RecordForm(_Circular),
-    )
-
-    def read(self, node: Node, reader: Reader) -> Polarization | None:
-        """Read a state of polarization."""
-        value = self._form.read(node, reader)
-        if isinstance(value, _Inclined):
-            return Polarization("angle", value.angle_rad)
-        if isinstance(value, _Circular):
-            return Polarization("circular", hand=value.circular)
-        return value if isinstance(value, Polarization) else None
-
-    def text(self) -> str:
-        """Say what may be written."""
-        return "'horizontal', 'vertical', 'none', '{angle: 30}' or '{circular: left|right}'"
-
-    def example(self) -> str:
-        """Give a sample."""
-        return "'vertical'"
-
-    def schema(self) -> dict[str, Any]:
-        """Allow all ways."""
-        return self._form.schema()
-
-    def show(self, value: object) -> str:
-        """Write a state as a user would."""
-        return "none" if value == UNPOLARIZED else str(value)
-
-
-class PulseTrain(Record):
-    """Equal pulses at an even rate."""
-
-    energy_j: float = key(_ENERGY, name="energy", meaning="energy of one pulse")
-    duration_s: float = key(_DURATION, name="duration", meaning="duration of one pulse")
-    rate_hz: float = key(_RATE, name="rate", meaning="pulses a second")
-
-    def after_read(self, reader: Reader) -> None:
-        """Refuse pulses that overlap."""
-        if self.duration_s * self.rate_hz > 1.0:
-            reader.complain(
-                self.spans["duration"],
-                "the pulses last longer than the time between them",
-                expected=f"a duration of at most {1 / self.rate_hz:.6g} s at this rate",
-                remedy="check duration and rate, or state continuous 'power'",
-            )
-
-
-class Line(NamedTuple):
-    """One line of a source; `power_w` of pulses is their mean power."""
-
-    wavelength_nm: float
-    power_w: float
-    pulse: PulseTrain | None
-    span: Span
-
-
-class _Emits(Record):
-    power_w: float | None = key(POWER, default=None, name="power", meaning="continuous power")
-    pulse: PulseTrain | None = key(
-        RecordForm(PulseTrain), default=None, meaning="pulses instead of continuous power"
-    )
-
-    def check_power(self, reader: Reader) -> None:
-        """Ask for power or pulse, and only one of them."""
-        if (self.power_w is None) == (self.pulse is None):
-            both = self.power_w is not None
-            reader.complain(
-                self.span_of("pulse"),
-                "both power and pulse are given" if both else "nothing says how much it emits",
-                expected="either 'power' or 'pulse'",
-                remedy="remove one of the two"
-                if both
-                else "add 'power: 150 mW', or 'pulse: {energy: 2 mJ, duration: 8 ns, rate: 10 Hz}'",
-            )
-
-    def line(self, wavelength_nm: float, span: Span) -> Line:
-        """Return the line it makes at a wavelength."""
-        if self.pulse is not None:
-            mean = self.pulse.energy_j * self.pulse.rate_hz
-            return Line(wavelength_nm, mean, self.pulse, span)
-        return Line(wavelength_nm, self.power_w or 0.0, None, span)
-
-
-class _LineKeys(_Emits):
-    wavelength_nm: float = key(WAVELENGTH, name="wavelength", meaning="vacuum wavelength")
-
-    def after_read(self, reader: Reader) -> None:
-        """Ask for power or pulse."""
-        self.check_power(reader)
 
 
 class FedBy(Record):
@@ -164,14 +36,14 @@ class Body(Record):
     height_mm: float = key(POSITIVE, name="height", meaning="upright")
 
 
-class SourceKeys(_Emits, Place):
+class SourceKeys(Emits, Place):
     """The keys of a source."""
 
     wavelength_nm: float | None = key(
         WAVELENGTH, default=None, name="wavelength", meaning="vacuum wavelength"
     )
-    several: tuple[_LineKeys, ...] | None = key(
-        ListOf(RecordForm(_LineKeys), min=1, max=100),
+    several: tuple[LineKeys, ...] | None = key(
+        ListOf(RecordForm(LineKeys), min=1, max=100),
         default=None,
         name="lines",
         meaning="several wavelengths with their powers, instead of wavelength and power",
