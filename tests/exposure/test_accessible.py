@@ -108,6 +108,11 @@ def test_impossible_energy_is_refused(energy):
         accessible_limit(532.0, 100.0, Pulse(energy, 1e-8, 10.0))
 
 
+def test_a_source_that_is_off_has_its_limit_all_the_same():
+    off = accessible_limit(532.0, 100.0, Pulse(0.0, 1e-8, 10.0))
+    assert off == accessible_limit(532.0, 100.0, Pulse(1e-3, 1e-8, 10.0))
+
+
 def test_too_short_a_pulse_is_refused_not_guessed():
     with pytest.raises(OutOfRange, match="1e-13 s"):
         accessible_limit(800.0, 100.0, Pulse(1e-9, 3e-14, 8e7))

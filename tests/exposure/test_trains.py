@@ -116,6 +116,7 @@ def test_shorter_groups_are_tried_for_large_sources():
     average = by_name(rules)["average"].per_pulse
     assert min(rule.per_pulse for rule in groups) < average
     for rule in groups:
+        assert rule.duration_s == pytest.approx((rule.pulses - 1.0) / 1e4 + 1e-5)
         dose = eye_limit(800.0, rule.duration_s, alpha_mrad=100.0).dose_j_m2
         assert rule.per_pulse == pytest.approx(dose / rule.pulses)
     # every group length, one by one: no other is stricter than those tried
