@@ -36,8 +36,8 @@ from benchlay.optics._shares_order import Intervals, Rays, Stretches
 from benchlay.optics._shares_prepare import Section
 
 _NEAR_AXIS = 0.5  # closer than this the pole-free integrand is taken
-_PANEL = 2.0  # longest panel, in w: exp(-2 r^2) varies on the scale of w/2
-_SHORT = 0.5  # up to here the small rule does
+_PANEL = {8: 0.5, 16: 2.0}  # longest panel, in w: exp(-2 r^2) varies on the scale of w/2
+_TURN = {8: 0.8, 16: 1.6}  # longest panel of an arc, in rad
 _TINY = 1e-300  # in place of r^2 = 0, where the integrand is 2
 # A Gauss rule of n nodes on a panel of length L errs by about rho^(-2n), where
 # rho + 1/rho = (sum of the distances of the nearest pole from the panel's ends) / (L/2).
@@ -45,8 +45,9 @@ _POLE = {8: 4.4, 16: 1.6}  # least (sum of distances) / L for an error below 1e-
 _RULES = {n: np.polynomial.legendre.leggauss(n) for n in _POLE}
 
 
-# r^2 and r x r' at the places t, from the columns of `Pieces.shape`
-Outline = Callable[[tuple[Floats, ...], Floats], tuple[Floats, Floats]]
+# From the columns of `Pieces.shape`, the middles and half lengths of panels (N, 1), and
+# nodes x in -1 .. 1: r^2 and (r x r') dt/dx at the nodes.
+Outline = Callable[[tuple[Floats, ...], Floats, Floats, Floats], tuple[Floats, Floats]]
 
 
 class Pieces(NamedTuple):
@@ -109,10 +110,7 @@ def _evaluate(
     polygon = np.zeros(len(section.bodies.problem), dtype=bool)
     polygon[section.polygons.body] = True
     ray = np.where(outline, found.bound // 2, 0)
-    # The body of a ray row: its slot counted from the first row of its interval.
-    interval = found.interval
-    begin = section.bodies.first[sweep.problem[interval]]
-    body = begin + np.where(outline, ray - rays.first[interval], 0)
+    interval, body = found.interval, rays.body[ray]
     straight = np.flatnonzero(outline & polygon[body])
     curved = np.flatnonzero(outline & ~polygon[body])
     level_rows = np.flatnonzero(level)
@@ -231,9 +229,12 @@ def _integrate(pieces: Pieces, outline: Outline) -> Floats:
     total = np.zeros(len(pieces.begin))
     size = np.abs(pieces.length)
     pole = np.where(pieces.near, np.inf, 2.0 * pieces.pole)
-    short = (size * pieces.scale <= _SHORT) & (size * _POLE[8] <= pole)
-    many = np.ceil(np.maximum(size * pieces.scale / _PANEL, size * _POLE[16] / pole))
-    many = np.maximum(many, 1.0).astype(np.intp)
+    panels = {
+        n: size * np.maximum(np.maximum(pieces.scale / _PANEL[n], _POLE[n] / pole), 1.0 / turn)
+        for n, turn in _TURN.items()
+    }
+    short = panels[8] <= 1.0
+    many = np.maximum(np.ceil(panels[16]), 1.0).astype(np.intp)
     for nodes, chosen in ((8, short), (16, ~short)):
         for near in (False, True):
             rows = np.flatnonzero(chosen & (pieces.near == near))
@@ -251,22 +252,37 @@ def _sum(pieces: Pieces, rows: Ints, count: Ints, rule: _Rule) -> Floats:
     middle = pieces.begin[row] + (2.0 * panel + 1.0) * half
     x, weight = _RULES[rule.nodes]
     shape = tuple(column[row][:, None] for column in pieces.shape)
-    r2, cross = rule.outline(shape, middle[:, None] + half[:, None] * x)
+    r2, cross = rule.outline(shape, middle[:, None], half[:, None], x)
     r2 = np.maximum(r2, _TINY)
     power = -np.expm1(-2.0 * r2) if rule.near else np.exp(-2.0 * r2)
-    value = ((power * cross / r2) @ weight) * half
+    value = (power * cross / r2) @ weight
     return _collect(piece, value, len(rows))
 
 
-def _straight(shape: tuple[Floats, ...], t: Floats) -> tuple[Floats, Floats]:
+def _straight(
+    shape: tuple[Floats, ...], middle: Floats, half: Floats, x: Floats
+) -> tuple[Floats, Floats]:
     """Follow a line at a distance from the axis, t from its foot."""
     (distance,) = shape
-    return distance * distance + t * t, distance
+    t = middle + half * x
+    return distance * distance + t * t, distance * half
 
 
-def _curved(shape: tuple[Floats, ...], t: Floats) -> tuple[Floats, Floats]:
-    """Follow an ellipse, t its eccentric angle."""
+def _curved(
+    shape: tuple[Floats, ...], middle: Floats, half: Floats, x: Floats
+) -> tuple[Floats, Floats]:
+    """Follow an ellipse, t its eccentric angle.
+
+    The nodes are even in tan((t - middle) / 2) instead of t, which needs no sine.
+    """
     x0, y0, axx, axy, ayx, ayy = shape
-    c, s = np.cos(t), np.sin(t)
-    x, y = x0 + axx * c + axy * s, y0 + ayx * c + ayy * s
-    return x * x + y * y, x * (ayy * c - ayx * s) - y * (axy * c - axx * s)
+    c, s = np.cos(middle), np.sin(middle)
+    ux, uy = axx * c + axy * s, ayx * c + ayy * s
+    vx, vy = axy * c - axx * s, ayy * c - ayx * s
+    stretch = np.tan(0.5 * half)
+    t = stretch * x
+    q = 2.0 / (1.0 + t * t)
+    c, s = q - 1.0, t * q
+    px, py = x0 + ux * c + vx * s, y0 + uy * c + vy * s
+    cross = (ux * vy - uy * vx) + (x0 * vy - y0 * vx) * c - (x0 * uy - y0 * ux) * s
+    return px * px + py * py, cross * q * stretch

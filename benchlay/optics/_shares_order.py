@@ -37,11 +37,13 @@ class Intervals(NamedTuple):
 class Rays(NamedTuple):
     """Where the middle ray of each interval enters and leaves each body.
 
-    A row is an (interval, body) pair, the bodies of an interval together, in the order
-    of their slots. Radii are cut at the cut radius; a body missed has enter > leave.
+    A row is an (interval, body met) pair, those of an interval together and in the order
+    of the slots. Radii are cut at the cut radius.
     """
 
-    first: Ints  # (I,) row of slot 0
+    first: Ints  # (I + 1,) first row of each interval
+    body: Ints  # (R,) row in Bodies
+    host: Ints  # (R,) place within the interval of the body a hole is in; -1 for a body
     enter: Floats  # (R,)
     leave: Floats  # (R,)
     row: Ints  # (R,) row in `edge_radius`, or of the ellipse
@@ -88,9 +90,18 @@ def cast(section: Section, sweep: Intervals) -> Rays:
     near, far = _through_ellipses(section, which, sweep.middle[:, interval])
     place = first[interval] + bodies.slot[section.ellipses.body[which]]
     enter[place], leave[place], row[place] = near, far, which
-    return Rays(
-        first, np.minimum(enter, CUT_RADIUS), np.minimum(leave, CUT_RADIUS), row, edge_radius
-    )
+    interval = np.repeat(np.arange(len(many)), many)
+    body = np.arange(total) - (first - bodies.first[sweep.problem])[interval]
+    met = (enter < leave) & (enter < CUT_RADIUS)
+    hole = np.flatnonzero(bodies.host[body] >= 0)
+    around = first[interval[hole]] + bodies.host[body[hole]]
+    met[hole] &= met[around]
+    kept = np.flatnonzero(met)
+    begin = starts(interval[kept], len(many))
+    host = np.full(total, -1)
+    host[hole] = np.cumsum(met)[around] - 1 - begin[interval[hole]]
+    leave = np.minimum(leave, CUT_RADIUS)
+    return Rays(begin, body[kept], host[kept], enter[kept], leave[kept], row[kept], edge_radius)
 
 
 def _members(section: Section, sweep: Intervals, body: Ints) -> tuple[Ints, Ints]:
@@ -136,11 +147,11 @@ def _through_ellipses(section: Section, which: Ints, ray: Floats) -> tuple[Float
 def stretches(section: Section, sweep: Intervals, rays: Rays) -> Stretches:
     """Divide every middle ray among the bodies it meets first."""
     levels = _levels(section, sweep, 2 * len(rays.enter))
-    size = np.diff(section.bodies.first)[sweep.problem]
+    size = np.diff(rays.first)
     sequence = np.argsort(-size, kind="stable")
     parts, done = [], 0
     while done < len(sequence):
-        slots = int(size[sequence[done]])
+        slots = max(1, int(size[sequence[done]]))
         step = max(1, _ELEMENTS // (slots * (2 * slots + 1)))
         chunk = np.sort(sequence[done : done + step])
         parts.append(_divide(section, sweep, rays, chunk, levels))
@@ -177,22 +188,20 @@ def _divide(
     levels: tuple[Ints, Floats, Ints],
 ) -> tuple[Ints, Ints, Ints]:
     """Owners along the middle rays of some intervals (as the columns of Stretches)."""
-    bodies = section.bodies
-    problem = sweep.problem[chunk]
-    many = np.diff(bodies.first)[problem]
-    slot = np.arange(int(many.max()))[:, None]
+    many = rays.first[chunk + 1] - rays.first[chunk]
+    slot = np.arange(max(1, int(many.max())))[:, None]
     real = slot < many
-    ray = np.where(real, rays.first[chunk] + slot, 0)
+    ray = np.where(real, rays.first[chunk] + slot, -1)  # -1: any row, never covering
     enter = np.where(real, rays.enter[ray], CUT_RADIUS)
     leave = np.where(real, rays.leave[ray], 0.0)
     radius, bound = _bounds(enter, leave, ray, chunk, levels)
     sequence = np.argsort(radius, axis=1)
     radius = np.take_along_axis(radius, sequence, axis=1)
     middle = np.ascontiguousarray(0.5 * (radius[:, 1:] + radius[:, :-1]).T)
-    body = np.where(real, bodies.first[problem] + slot, 0)
     cover = (enter[:, None] < middle) & (middle < leave[:, None])
-    _pierce(cover, bodies.host[body])
-    owner = _foremost(cover, bodies.depth[body], sweep.middle[:, chunk], middle)
+    _pierce(cover, np.where(real, rays.host[ray], -1))
+    depth = section.bodies.depth[rays.body[ray]]
+    owner = _foremost(cover, depth, sweep.middle[:, chunk], middle)
     real_stretch = radius[:, 1:] - radius[:, :-1] > _EMPTY * radius[:, 1:]
     which, place = np.nonzero(real_stretch)
     owner = owner[place, which]
@@ -202,8 +211,8 @@ def _divide(
     change[1:] = opens[1:] | (np.diff(owner) != 0)
     inner = np.where(opens, -1, bound[which, sequence[which, place]])[change]
     which, owner = which[change], owner[change]
-    free = owner == len(slot)
-    return chunk[which], np.where(free, -1, bodies.first[problem[which]] + owner), inner
+    ray = ray[np.minimum(owner, len(slot) - 1), which]
+    return chunk[which], np.where(owner == len(slot), -1, rays.body[ray]), inner
 
 
 def _bounds(
