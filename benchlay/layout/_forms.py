@@ -10,7 +10,7 @@ from benchlay.document.nodes import Node, Scalar
 from benchlay.document.quantity import Dimension
 from benchlay.document.span import Span
 from benchlay.document.texts import NAME_PATTERN
-from benchlay.document.words import quote
+from benchlay.document.words import format_choices, quote
 from benchlay.geometry.polygon import Polygon, signed_area, simple
 
 LENGTH = Quantity(Dimension.LENGTH)
@@ -106,8 +106,8 @@ class RefForm(Form[Ref]):
 class DottedForm(Form[tuple[str, str, Span]]):
     """Reads `NAME` or `NAME.PART` (or only the latter, with `both`)."""
 
-    def __init__(self, what: str, sample: str, *, both: bool = False) -> None:
-        self.what, self.sample, self.both = what, sample, both
+    def __init__(self, what: str, *samples: str, both: bool = False) -> None:
+        self.what, self.samples, self.both = what, samples, both
 
     def read(self, node: Node, reader: Reader) -> tuple[str, str, Span] | None:
         """Return name, part (empty if there is none) and place."""
@@ -120,7 +120,7 @@ class DottedForm(Form[tuple[str, str, Span]]):
                 node,
                 f"{quote(node.text)} is not {self.what}",
                 expected=self.text(),
-                remedy=f"write {self.what}, such as {self.example()}",
+                remedy=f"write {self.text()}",
             )
             return None
         return name, part, node.span
@@ -131,11 +131,11 @@ class DottedForm(Form[tuple[str, str, Span]]):
 
     def text(self) -> str:
         """Say what it names."""
-        return self.what
+        return f"{self.what}, as {format_choices(self.samples)}"
 
     def example(self) -> str:
         """Give a sample."""
-        return f"'{self.sample}'"
+        return quote(self.samples[0])
 
     def schema(self) -> dict[str, Any]:
         """Give the pattern."""

@@ -2,17 +2,20 @@
 
 from __future__ import annotations
 
+from collections.abc import Set as AbstractSet
 from typing import Any, NamedTuple
 
-from benchlay.document.form import Reader
-from benchlay.document.forms import Deferred, RecordForm, Text
+from benchlay.document.form import Form, Reader
+from benchlay.document.forms import RecordForm, Text
 from benchlay.document.nodes import Broken, Mapping, Node, Scalar
+from benchlay.document.problems import Problems
 from benchlay.document.record import key, read_record
 from benchlay.document.span import Span
 from benchlay.document.words import format_choices, nearest, quote
 from benchlay.elements import KINDS, ElementKind
 from benchlay.elements.mount import MOUNT
 from benchlay.layout.materials import Withstands
+from benchlay.layout.names import Later
 from benchlay.layout.stand import Stand
 
 
@@ -23,12 +26,11 @@ class Shared(Stand):
     withstands: Withstands | None = key(RecordForm(Withstands), default=None, meaning="its rating")
 
 
-_SHARED_NAMES = frozenset(k.name for k in Shared.KEYS.values())
+_SHARED_FORMS = {k.name: k.form for k in Shared.KEYS.values()}
 _STAND_NAMES = tuple(Stand.KEYS)
 _COMMON = (*(k.name for k in Shared.KEYS.values()), "kind", "part")
 
-# Parts are read in `include`'s own stage; here they can only be refused.
-PART = Deferred("the name of a part")
+_TABLE = Later("a table with 'kind' and the keys of that kind", "{kind: mirror}")
 KIND = Text(40, what="a kind of element", sample="mirror")
 
 
@@ -51,7 +53,7 @@ class Element(NamedTuple):
 def read_element(name: Scalar, node: Node, reader: Reader) -> Element | None:
     """Read one entry of `elements`; None after problems."""
     if not isinstance(node, Mapping):
-        reader.refuse(node, RecordForm(Shared))
+        reader.refuse(node, _TABLE)
         return None
     cls = _kind(node, reader)
     if cls is None:
@@ -59,10 +61,7 @@ def read_element(name: Scalar, node: Node, reader: Reader) -> Element | None:
     if cls.PENDING is not None:
         _refuse_pending(cls, node, reader)
         return None
-    own = frozenset(k.name for k in cls.KEYS.values())
-    record = read_record(cls, node, reader, extra=_COMMON)
-    strange = [n for n in node.names() if n not in _SHARED_NAMES]
-    shared = read_record(Shared, node, reader, ignore=own.union(strange))
+    record, shared = _read_both(cls, node, reader)
     if record is None or shared is None:
         return None
     if not _turns(record, shared, reader):
@@ -110,6 +109,42 @@ def _kind(node: Mapping, reader: Reader) -> type[ElementKind] | None:
     return None
 
 
+def _read_both(
+    cls: type[ElementKind], node: Mapping, reader: Reader
+) -> tuple[ElementKind | None, Shared | None]:
+    """Read the keys of the kind and the shared ones, each leaving the other's alone."""
+    own = {k.name: k.form for k in cls.KEYS.values()}
+    written = frozenset(node.names())
+    twice = written.intersection(own, _SHARED_FORMS)
+    shared_too = {n for n in twice if _means_shared(n, own[n], node)}
+    others = [n for n in _COMMON if n not in own]
+    record = read_record(cls, _leave_out(node, shared_too), reader, extra=others)
+    strange = written.difference(_SHARED_FORMS)
+    return record, read_record(Shared, _leave_out(node, twice - shared_too), reader, ignore=strange)
+
+
+def _leave_out(node: Mapping, names: AbstractSet[str]) -> Mapping:
+    if not names:
+        return node
+    return Mapping((pair for pair in node.pairs if pair[0].text not in names), node.span)
+
+
+def _means_shared(name: str, own: Form[Any], node: Mapping) -> bool:
+    """Tell which key is meant where the language has two of one name.
+
+    `hole` is that of a mirror or of its post, `side` that of a cube or of a reflection: what
+    is written under it tells them apart.
+    """
+    value, shared = node.get(name), _SHARED_FORMS[name]
+    if value is None or not shared.takes(value):
+        return False
+    if not own.takes(value):
+        return True
+    trial = Reader(Problems())
+    shared.read(value, trial)
+    return trial.failures == 0
+
+
 def _refuse_pending(cls: type[ElementKind], node: Mapping, reader: Reader) -> None:
     """Say that a kind is not acted on yet, and what else is wrong with its keys."""
     reader.complain(
@@ -118,10 +153,7 @@ def _refuse_pending(cls: type[ElementKind], node: Mapping, reader: Reader) -> No
         expected="a kind that this version traces",
         remedy="take the element out of the layout; nothing is computed as if it were not there",
     )
-    read_record(cls, node, reader, extra=_COMMON)
-    own = {k.name for k in cls.KEYS.values()}
-    strange = {n for n in node.names() if n not in _SHARED_NAMES}
-    read_record(Shared, node, reader, ignore=own | strange)
+    _read_both(cls, node, reader)
 
 
 def _turns(record: ElementKind, shared: Shared, reader: Reader) -> bool:

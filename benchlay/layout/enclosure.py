@@ -76,7 +76,7 @@ class Opening(Record):
             shape = "a round opening" if self.round else "a rectangular opening"
             reader.complain(
                 self.span_of(strange[0]) if strange and not missing else self.span,
-                f"{what} {'of ' if missing else ''}{shape}",
+                f"{what} {'for ' if missing else ''}{shape}",
                 expected="'along', 'width', 'from_height' and 'to_height', "
                 "or 'along', 'height' and 'diameter'",
                 remedy=f"add '{missing[0]}'" if missing else f"remove '{strange[0]}'",

@@ -6,7 +6,7 @@ from collections.abc import Callable
 from typing import NamedTuple, TypeVar
 
 from benchlay.document.form import Form, Reader
-from benchlay.document.forms import Deferred, Entries, RecordForm, Table
+from benchlay.document.forms import Entries, RecordForm, Table
 from benchlay.document.nodes import Mapping, Node, Scalar, parse, parse_bytes, replace_at
 from benchlay.document.problems import Problems
 from benchlay.document.record import read_record
@@ -19,7 +19,7 @@ from benchlay.layout.enclosure import Enclosure
 from benchlay.layout.header import SECTIONS, Header
 from benchlay.layout.limits import Limits
 from benchlay.layout.materials import Material
-from benchlay.layout.names import AS_DRAWN, names_in, read_entries
+from benchlay.layout.names import AS_DRAWN, Later, names_in, read_entries
 from benchlay.layout.paths import Cavity, Matched
 from benchlay.layout.references import References
 from benchlay.layout.room import Room
@@ -29,7 +29,9 @@ from benchlay.layout.states import Item, State, read_states, replaced
 from benchlay.layout.tolerances import Tolerances
 
 T = TypeVar("T")
-_ENTRIES: Form[object] = Table(Deferred("a table of keys"))
+_SOURCES: Form[object] = Table(Later("its keys", "{wavelength: 532}"))
+_ELEMENTS: Form[object] = Table(Later("its keys", "{kind: mirror}"))
+_ROUTES: Form[object] = Table(Later("a list of items", "[green, M1]"))
 _ENCLOSURE = RecordForm(Enclosure)
 _LIMITS = RecordForm(Limits)
 
@@ -130,7 +132,7 @@ class _Document:
         header = read_record(Header, self.root, self.reader, extra=SECTIONS)
         parts = self._parts(header)
         routes = read_entries(
-            self.root.get("routes"), "routes", _ENTRIES, read_route, self.reader, taken={}
+            self.root.get("routes"), "routes", _ROUTES, read_route, self.reader, taken={}
         )
         states = read_states(self.root.get("states"), self.names, self.reader)
         references = References(self.names, parts.sources, parts.elements, self.reader)
@@ -151,8 +153,8 @@ class _Document:
         taken: dict[str, Scalar] = {}
         sources, elements = self.root.get("sources"), self.root.get("elements")
         return _Parts(
-            read_entries(sources, "sources", _ENTRIES, read_source, self.reader, taken=taken),
-            read_entries(elements, "elements", _ENTRIES, read_element, self.reader, taken=taken),
+            read_entries(sources, "sources", _SOURCES, read_source, self.reader, taken=taken),
+            read_entries(elements, "elements", _ELEMENTS, read_element, self.reader, taken=taken),
             self._enclosure(self.root.get("enclosure")),
             None if header is None else header.limits,
         )

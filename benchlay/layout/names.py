@@ -8,7 +8,7 @@ from typing import NamedTuple, TypeVar
 from benchlay.document.form import Form, Reader
 from benchlay.document.nodes import Mapping, Node, Scalar
 from benchlay.document.span import Span
-from benchlay.document.texts import Name
+from benchlay.document.texts import Deferred, Name
 from benchlay.document.words import format_choices, nearest, quote
 
 T = TypeVar("T")
@@ -54,6 +54,27 @@ def _value(node: Node | None, name: str) -> Node | None:
     return node.get(name) if isinstance(node, Mapping) else None
 
 
+class Later(Deferred):
+    """Entries that are read one by one: their form in words only."""
+
+    def __init__(self, text: str, sample: str) -> None:
+        super().__init__(text)
+        self.sample = sample
+
+    def example(self) -> str:
+        """Return the sample."""
+        return self.sample
+
+
+def a(noun: str) -> str:
+    """Put the article before a noun.
+
+    >>> a("element")
+    'an element'
+    """
+    return f"an {noun}" if noun[0] in "aeiou" else f"a {noun}"
+
+
 def unknown(name: str, where: Span, what: str, known: Iterable[str], reader: Reader) -> None:
     """Say that a name refers to nothing, and which one comes nearest."""
     choices = list(known)
@@ -62,7 +83,7 @@ def unknown(name: str, where: Span, what: str, known: Iterable[str], reader: Rea
     reader.complain(
         where,
         f"there is no {what} named {quote(name)}",
-        expected=f"the name of a {what}: {listed}",
+        expected=f"the name of {a(what)}: {listed}",
         remedy=f"write '{guess}'" if guess else f"correct the name, or add the {what}",
     )
 

@@ -37,7 +37,7 @@ class Turn(NamedTuple):
 class PathItemForm(Form[PathItem]):
     """Reads `M1` or `BS1.reflected`."""
 
-    _dotted = DottedForm("an item of a path, 'M1' or 'BS1.reflected'", "M1")
+    _dotted = DottedForm("an item of a path", "M1", "BS1.reflected")
 
     def read(self, node: Node, reader: Reader) -> PathItem | None:
         """Read one item."""
@@ -155,7 +155,7 @@ class OpeningRef(NamedTuple):
 class OpeningForm(Form[OpeningRef]):
     """Reads `east.port`."""
 
-    _dotted = DottedForm("a panel and its opening, 'east.port'", "east.port", both=True)
+    _dotted = DottedForm("a panel and its opening", "east.port", both=True)
 
     def read(self, node: Node, reader: Reader) -> OpeningRef | None:
         """Read both names."""

@@ -70,9 +70,7 @@ def _too_long(node: Node, reader: Reader) -> None:
 class _ItemForm(Form[tuple[RouteItem, ...]]):
     """Reads one item, or a repeated run of items as `{times: 12, through: [A, B]}`."""
 
-    _dotted = DottedForm(
-        "an item of a route, 'M1', 'BS1.reflected', 'green.1064' or 'east.port'", "M1"
-    )
+    _dotted = DottedForm("an item of a route", "M1", "BS1.reflected", "green.1064", "east.port")
 
     def read(self, node: Node, reader: Reader) -> tuple[RouteItem, ...] | None:
         """Return the items it stands for."""

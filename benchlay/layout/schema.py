@@ -73,7 +73,12 @@ def _kind(name: str) -> dict[str, Any]:
     shared = {
         key.name: {"$ref": f"#/$defs/shared/properties/{key.name}"} for key in Shared.KEYS.values()
     }
-    properties = {"kind": {"const": name}, **shared, **own["properties"]}
+    both = {
+        key: {"anyOf": [shared[key], form]}
+        for key, form in own["properties"].items()
+        if key in shared
+    }
+    properties = {"kind": {"const": name}, **shared, **own["properties"], **both, "part": {}}
     return {
         "type": "object",
         "properties": properties,

@@ -179,7 +179,7 @@ def check_one_place(place: Place, reader: Reader, *, with_after: bool) -> None:
             expected=f"one of {known}",
             remedy=f"remove '{ways[0]}' or '{ways[1]}'",
         )
-    elif not ways and not (with_after and place.written("after")):
+    elif not ways and not (with_after and (place.written("after") or place.written("distance"))):
         reader.complain(
             place.span,
             "nothing says where it stands",

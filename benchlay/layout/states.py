@@ -5,11 +5,11 @@ from __future__ import annotations
 from typing import NamedTuple
 
 from benchlay.document.form import Form, Reader
-from benchlay.document.forms import Deferred, Table
+from benchlay.document.forms import Table
 from benchlay.document.nodes import Mapping, Node, PathError, Scalar, replace_at
 from benchlay.document.span import Span
 from benchlay.document.words import format_choices, nearest, quote
-from benchlay.layout.names import AS_DRAWN, Names, claim, unknown
+from benchlay.layout.names import AS_DRAWN, Later, Names, claim, unknown
 
 ROOTS = ("sources", "elements", "enclosure", "limits")
 _SHEETS = ("panels", "lids")
@@ -22,7 +22,8 @@ _INSTEAD = (
     ("diameter", "size"),
     ("power", "pulse"),
 )
-STATES: Form[object] = Table(Deferred("a table of key paths and the values they take"))
+_KEYS = Later("a table of key paths and the values they take", "{elements.M1.out: yes}")
+STATES: Form[object] = Table(_KEYS)
 
 Item = tuple[str, ...]
 """The path to what is read again as a whole: ``("elements", "M1")``, ``("limits",)``."""
@@ -90,7 +91,7 @@ def _refuse_as_drawn(name: Scalar, reader: Reader) -> None:
 
 def _overrides(node: Node, names: Names, reader: Reader) -> tuple[Override, ...]:
     if not isinstance(node, Mapping):
-        reader.refuse(node, STATES.form if isinstance(STATES, Table) else STATES)
+        reader.refuse(node, _KEYS)
         return ()
     found = []
     for key, value in node.pairs:
@@ -172,6 +173,7 @@ def replaced(item: Node, path: Item, state: State, reader: Reader) -> Node | Non
         try:
             node = replace_at(node, override.path[len(path) :], override.value)
         except PathError as error:
+            reader.path = ["states", state.name]
             whole = ".".join(override.path[: len(path) + error.depth])
             reader.complain(
                 override.span,
@@ -179,6 +181,7 @@ def replaced(item: Node, path: Item, state: State, reader: Reader) -> Node | Non
                 expected=f"a path no longer than {quote(whole)}",
                 remedy=f"set {quote(whole)} as a whole",
             )
+            reader.path = []
             return None
     return node
 
