@@ -135,7 +135,7 @@ class Dimension(NamedTuple):
     line_through: Point
     text: str | None = None
     decimals: int = 1
-    height_mm: float = 2.5
+    height_mm: float = 3.5
 
 
 class Block(NamedTuple):

@@ -95,7 +95,7 @@ def _add_dimension_style(doc: Drawing, sheet: Sheet) -> None:
         DIMSTYLE,
         dxfattribs={
             "dimtxsty": LETTERING,
-            "dimtxt": 2.5 * n,
+            "dimtxt": 3.5 * n,
             "dimasz": ARROW_MM * n,
             "dimexo": GAP_MM * n,
             "dimexe": OVERSHOOT_MM * n,

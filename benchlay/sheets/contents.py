@@ -1,0 +1,118 @@
+"""What a plan shows, as plain data: the one thing between the traced bench and the drawing.
+
+Lengths in mm in the plan frame (x right, y away, z up from the bench top), headings in degrees
+anticlockwise from +x. Outlines are the kinds' own, true to size; an element's are in its own
+frame, x along the front normal.
+"""
+
+from __future__ import annotations
+
+from typing import NamedTuple
+
+from benchlay.sheets.primitives import Point
+from benchlay.sheets.title_block import TitleFields
+
+Place = tuple[float, float, float]
+
+
+class Shape(NamedTuple):
+    """A closed outline; `bulges` as in `primitives.Polyline`."""
+
+    points: tuple[Point, ...]
+    bulges: tuple[float, ...] = ()
+
+
+class Item(NamedTuple):
+    """An element or a source: what it is, where it stands, what it looks like from above."""
+
+    name: str
+    kind: str
+    at: Place
+    facing_deg: float
+    outlines: tuple[Shape, ...] = ()  # of glass, metal, plates: what light meets
+    coated: tuple[tuple[Point, Point], ...] = ()  # the outline's edges that bear a coating
+    bodies: tuple[Shape, ...] = ()  # mounts, posts, feet, housings
+    note: str = ""  # a few words for the table of elements
+
+
+class Leg(NamedTuple):
+    """A straight piece of a beam, working or stray."""
+
+    name: str  # B1, S3; a tag of its own is drawn where `words` are given
+    wavelength_nm: float
+    start: Place
+    end: Place
+    stray: bool = False
+    words: str = ""  # at the source, and where power or polarization change
+    ends: str = ""  # the sink, or optic
+    radii_mm: tuple[tuple[float, float], ...] = ()  # (distance along the leg, 1/e2 radius)
+
+
+class Opening(NamedTuple):
+    """A gap in a panel, by distance along it."""
+
+    name: str
+    start_mm: float
+    end_mm: float
+
+
+class PanelLine(NamedTuple):
+    """An upright sheet seen from above: its inner face from start to end."""
+
+    name: str
+    start: Point
+    end: Point
+    thickness_mm: float
+    openings: tuple[Opening, ...] = ()
+    is_open: bool = False
+    access: str = "none"
+
+
+class Zone(NamedTuple):
+    """A hazard zone: one polygon with holes, its label and its row of the schedule."""
+
+    name: str  # Z1
+    kind: str  # direct | diffuse | over
+    rings: tuple[tuple[Point, ...], ...]  # outer, holes
+    label: tuple[str, ...]  # lines that stand in the zone
+    schedule: tuple[str, ...]  # source of it, wavelength, reach, what it assumes
+
+
+class BeamEntry(NamedTuple):
+    """A row of the legend: how a wavelength is drawn and what it is."""
+
+    wavelength_nm: float
+    width_mm: float
+    words: str
+
+
+class Holes(NamedTuple):
+    """The mounting holes: a regular grid."""
+
+    first: Point
+    pitch_mm: float
+    columns: int
+    rows: int
+    thread: str = ""
+
+
+class Picture(NamedTuple):
+    """All that the plan of one state shows."""
+
+    name: str
+    fields: TitleFields
+    outline: tuple[Point, ...]
+    state: str = "as drawn"
+    holes: Holes | None = None
+    beam_height_mm: float = 0.0
+    items: tuple[Item, ...] = ()
+    legs: tuple[Leg, ...] = ()
+    panels: tuple[PanelLine, ...] = ()
+    zones: tuple[Zone, ...] = ()
+    legend: tuple[BeamEntry, ...] = ()
+    revisions: tuple[tuple[str, str, str, str], ...] = ()  # rev, date, what, by
+    notes: tuple[str, ...] = ()
+    properties: tuple[tuple[str, str], ...] = ()
+    sheet: str | None = None
+    scale: int | None = None
+    decimal: str = ","

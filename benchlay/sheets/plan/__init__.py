@@ -1,0 +1,165 @@
+"""The plan sheet: the bench from above, true to scale, with all that names and measures it.
+
+`compose` turns a `Picture` into a `Sheet`. The order matters: what must not be covered is put
+on the board first, tags find their places among it, and hatching comes last, since it is
+broken for lettering.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from benchlay.sheets.contents import Picture
+from benchlay.sheets.dimensions import figure_box
+from benchlay.sheets.frame import frame
+from benchlay.sheets.layers import BeamLook, sheet_layers
+from benchlay.sheets.lettering import LARGE_MM, SMALL_MM, shorten
+from benchlay.sheets.plan.beams import beams
+from benchlay.sheets.plan.bench import bench, hole_step, levels_note, main_dimensions
+from benchlay.sheets.plan.board import Board, lay_out
+from benchlay.sheets.plan.column import column
+from benchlay.sheets.plan.items import blocks_and_uses
+from benchlay.sheets.plan.panels import panels
+from benchlay.sheets.plan.tags import names, tags
+from benchlay.sheets.plan.zones import hatching, limits
+from benchlay.sheets.primitives import (
+    Across,
+    Dimension,
+    Line,
+    Point,
+    Primitive,
+    Sheet,
+    Text,
+    figure,
+    line_ends,
+)
+from benchlay.sheets.scale import frame_of
+from benchlay.sheets.title_block import TitleFields, title_block
+
+_BAR_MM = 50.0  # of the scale bar, on paper
+
+
+def compose(picture: Picture) -> Sheet:
+    """Compose the plan of a bench.
+
+    Raises
+    ------
+    NothingFitsError
+        If no listed sheet and scale hold it.
+    """
+    board = lay_out(picture)
+    empty = _sheet(picture, board)
+    dimensions = main_dimensions(picture, board)
+    for dimension in dimensions:
+        _reserve(dimension, empty, board)
+    drawn = list(blocks_and_uses(picture, board))
+    model: list[Primitive] = [
+        *bench(picture, board),
+        *panels(picture, board),
+        *(use for _, use in drawn),
+        *beams(picture, board),
+        *limits(picture, board),
+        *dimensions,
+    ]
+    tagged = tags(picture, board)
+    lettering = board.crowd.boxes
+    model += hatching(picture, board, lettering)
+    paper = [
+        *frame(board.choice.sheet, board.choice.size_mm),
+        *title_block(_fields(picture, board), board.choice.size_mm),
+        *_view_title(picture, board),
+        *_scale_bar(picture, board),
+        *tagged.paper,
+        *column(picture, board, _notes(picture, board, tagged.left_out)),
+    ]
+    return empty._replace(
+        model=tuple(model), paper=tuple(paper), blocks=tuple(block for block, _ in drawn)
+    )
+
+
+def _sheet(picture: Picture, board: Board) -> Sheet:
+    field = board.field
+    looks = [BeamLook(entry.wavelength_nm, entry.width_mm) for entry in picture.legend]
+    return Sheet(
+        name=picture.name,
+        title=picture.fields.title or picture.name,
+        description=_words(picture, board),
+        size_mm=board.choice.size_mm,
+        scale=board.scale,
+        origin_mm=board.origin_mm,
+        window_mm=((field.left, field.low), (field.right, field.high)),
+        layers=sheet_layers(looks),
+        model=(),
+        paper=(),
+        properties=picture.properties,
+        decimal=picture.decimal,
+    )
+
+
+def _words(picture: Picture, board: Board) -> str:
+    """Say in words what the sheet shows."""
+    strays = sum(leg.stray for leg in picture.legs)
+    return (
+        f"Plan of the bench at 1:{board.choice.scale}, state {picture.state}: "
+        f"{len(picture.items)} elements and sources, "
+        f"{len(picture.legs) - strays} legs of working beams, {strays} of stray light, "
+        f"{len(picture.panels)} panels, {len(picture.zones)} hazard zones."
+    )
+
+
+def _reserve(dimension: Dimension, sheet: Sheet, board: Board) -> None:
+    """Keep tags off a dimension and its figure."""
+    board.crowd.add_box(figure_box(dimension, sheet))
+    start, end = line_ends(dimension)
+    for ends in ((start, end), (dimension.first, start), (dimension.second, end)):
+        board.crowd_model_line(ends)
+
+
+def _fields(picture: Picture, board: Board) -> TitleFields:
+    scale = f"1:{board.choice.scale}"
+    return picture.fields._replace(scale=scale)
+
+
+def _view_title(picture: Picture, board: Board) -> Iterator[Primitive]:
+    inner = frame_of(board.choice.size_mm)
+    words = f"PLAN 1:{board.choice.scale} – state: {picture.state}"
+    words = shorten(words, board.field.width - 8.0, LARGE_MM)
+    at = (inner.left + 6.0, inner.high - 6.0 - LARGE_MM)
+    yield Text("NOTES", at, words, LARGE_MM)
+
+
+def _scale_bar(picture: Picture, board: Board) -> Iterator[Primitive]:
+    """Draw a bar by which a shrunk print is seen to be one."""
+    inner = frame_of(board.choice.size_mm)
+    x, y = inner.left + 8.0, inner.low + 8.0
+    yield Line("NOTES", (x, y), (x + _BAR_MM, y))
+    for n in range(6):
+        at = x + n * _BAR_MM / 5
+        tall = 2.4 if n in (0, 5) else 1.4
+        yield Line("NOTES", (at, y), (at, y + tall))
+    for part, across in ((0.0, Across.CENTRE), (1.0, Across.CENTRE)):
+        length = figure(part * board.long(_BAR_MM), 1, picture.decimal)
+        at_text: Point = (x + part * _BAR_MM, y + 3.2)
+        yield Text("NOTES", at_text, length, SMALL_MM, across)
+    words = "mm of the bench; 50 mm on paper when printed at 100 %"
+    room = inner.right - 180.0 - x - 4.0
+    yield Text("NOTES", (x, y - 4.4), shorten(words, room, SMALL_MM), SMALL_MM)
+
+
+def _notes(picture: Picture, board: Board, left_out: tuple[str, ...]) -> list[str]:
+    out = [
+        "Dimensions in mm, from the datum hole where one is marked. Do not scale.",
+        levels_note(picture),
+    ]
+    holes = picture.holes
+    if holes is not None:
+        x, y, pitch = (figure(v, 3, picture.decimal) for v in (*holes.first, holes.pitch_mm))
+        step = hole_step(holes, board.scale)
+        every = "every hole is" if step == 1 else f"one hole in {step} each way is"
+        out.append(
+            f"Datum: hole column 1, row 1, at {x}, {y} from the near left corner. "
+            f"Holes {holes.thread} at {pitch} pitch; {every} drawn."
+        )
+    if left_out:
+        out.append(names(left_out))
+    return [*out, *picture.notes]

@@ -1,0 +1,105 @@
+"""The bench itself: outline, holes, datum and main dimensions."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from benchlay.sheets.contents import Holes, Picture
+from benchlay.sheets.dimensions import below, beside
+from benchlay.sheets.plan.board import Board
+from benchlay.sheets.primitives import (
+    Circle,
+    Dimension,
+    Fill,
+    Line,
+    Polyline,
+    Primitive,
+    Text,
+    figure,
+)
+
+_CROSS_MM = 1.6
+_CLOSEST_MM = 9.0  # holes drawn nearer than this are specks: every second, fifth, … then
+_STEPS = (1, 2, 4, 5, 10, 20, 50, 100)
+_ARROW_MM = 15.0
+
+
+def bench(picture: Picture, board: Board) -> Iterator[Primitive]:
+    """Draw the outline, the holes and the datum."""
+    yield Polyline("BENCH", picture.outline, closed=True)
+    board.crowd_model_line(picture.outline, closed=True)
+    if picture.holes is not None:
+        yield from _holes(picture.holes, board)
+        yield from _datum(picture.holes, board)
+
+
+def hole_step(holes: Holes, scale: float) -> int:
+    """Return of how many holes one is drawn; the first is always."""
+    for step in _STEPS:
+        if step * holes.pitch_mm / scale >= _CLOSEST_MM:
+            return step
+    return _STEPS[-1]
+
+
+def _holes(holes: Holes, board: Board) -> Iterator[Line]:
+    """Draw small crosses; an outline of each hole would be a grey field."""
+    step, half = hole_step(holes, board.scale), board.long(_CROSS_MM) / 2
+    for row in range(0, holes.rows, step):
+        y = holes.first[1] + row * holes.pitch_mm
+        for column in range(0, holes.columns, step):
+            x = holes.first[0] + column * holes.pitch_mm
+            yield Line("HOLES", (x - half, y), (x + half, y))
+            yield Line("HOLES", (x, y - half), (x, y + half))
+
+
+def _datum(holes: Holes, board: Board) -> Iterator[Primitive]:
+    x, y = holes.first
+    reach, tip, half = board.long(_ARROW_MM), board.long(3.0), board.long(0.6)
+    for radius in (2.0, 3.0):
+        yield Circle("DATUM", holes.first, board.long(radius))
+    for ux, uy, name in ((1.0, 0.0, "X"), (0.0, 1.0, "Y")):
+        end = (x + reach * ux, y + reach * uy)
+        back = (end[0] - tip * ux, end[1] - tip * uy)
+        side = (half * uy, half * ux)
+        yield Line("DATUM", holes.first, back)
+        corners = (end, (back[0] + side[0], back[1] + side[1]))
+        yield Fill("DATUM", (*corners, (back[0] - side[0], back[1] - side[1])))
+        at = (end[0] + board.long(1.0), end[1] - board.long(1.2 * ux))
+        yield Text("DATUM", at, name, 2.5)
+        board.crowd_model_line((holes.first, end))
+
+
+def main_dimensions(picture: Picture, board: Board) -> list[Dimension]:
+    """Return overall sizes, and the datum hole from both edges and along its rows."""
+    xs, ys = [p[0] for p in picture.outline], [p[1] for p in picture.outline]
+    left, low = min(xs), min(ys)
+    out: list[Dimension] = []
+    rows = 0
+    holes = picture.holes
+    if holes is not None:
+        last = (holes.columns - 1) * holes.pitch_mm, (holes.rows - 1) * holes.pitch_mm
+        x, y = holes.first
+        across = below("DIMENSIONS", (left, x, x + last[0]), low, 0, board.scale)
+        up = beside("DIMENSIONS", (low, y, y + last[1]), left, 0, board.scale)
+        out += _with_counts(across, holes.columns, holes.pitch_mm, picture.decimal)
+        out += _with_counts(up, holes.rows, holes.pitch_mm, picture.decimal)
+        rows = 1
+    out += below("DIMENSIONS", (left, max(xs)), low, rows, board.scale)
+    out += beside("DIMENSIONS", (low, max(ys)), left, rows, board.scale)
+    return out
+
+
+def _with_counts(
+    row: list[Dimension], count: int, pitch_mm: float, decimal: str
+) -> list[Dimension]:
+    """Write a row of holes as so many pitches, never as a chain of them."""
+    if count > 1:
+        pitch, total = (figure(v, 3, decimal) for v in (pitch_mm, (count - 1) * pitch_mm))
+        row[-1] = row[-1]._replace(text=f"{count - 1} × {pitch} (= {total})")
+    return row
+
+
+def levels_note(picture: Picture) -> str:
+    """Return the note that says from where heights are measured."""
+    height = figure(picture.beam_height_mm, 2, picture.decimal)
+    return f"Heights are above the bench top (±0). Beam height +{height} where no level is written."

@@ -1,0 +1,98 @@
+"""The board a plan is drawn on: its sheet, scale and place, and what crowds it."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Sequence
+from typing import NamedTuple
+
+from benchlay.sheets.contents import Picture
+from benchlay.sheets.placing_text import Crowd
+from benchlay.sheets.primitives import Point
+from benchlay.sheets.scale import (
+    ABOVE_MM,
+    COLUMN_MM,
+    Choice,
+    Window,
+    choose,
+    frame_of,
+    view_of,
+)
+from benchlay.sheets.title_block import HEIGHT_MM
+
+_CLEAR_MM = 2.0
+
+
+class Board(NamedTuple):
+    """Sheet and scale, and the conversions between paper and model."""
+
+    choice: Choice
+    origin_mm: Point  # of the model, on paper
+    field: Window  # where the drawing may go at all, on paper
+    column: Window  # where tables go
+    crowd: Crowd  # on paper; grows while the plan is drawn
+
+    @property
+    def scale(self) -> float:
+        """N of 1:N."""
+        return float(self.choice.scale)
+
+    def long(self, paper_mm: float) -> float:
+        """Return how long in the model is what has a length on paper."""
+        return paper_mm * self.choice.scale
+
+    def on_paper(self, point: Sequence[float]) -> Point:
+        """Return where a point of the model lies on paper; a height is left aside."""
+        x, y = self.origin_mm
+        return (x + point[0] / self.choice.scale, y + point[1] / self.choice.scale)
+
+    def in_model(self, point: Point) -> Point:
+        """Return the point of the model at a place on paper."""
+        x, y = self.origin_mm
+        return ((point[0] - x) * self.choice.scale, (point[1] - y) * self.choice.scale)
+
+    def field_in_model(self) -> Window:
+        """Return the field, in the model's coordinates."""
+        low = self.in_model((self.field.left, self.field.low))
+        high = self.in_model((self.field.right, self.field.high))
+        return Window(*low, *high)
+
+    def crowd_model_line(self, points: Iterable[Point], *, closed: bool = False) -> None:
+        """Let tags keep off a line of the model."""
+        self.crowd.add_line([self.on_paper(p) for p in points], closed=closed)
+
+
+def lay_out(picture: Picture) -> Board:
+    """Choose sheet and scale for a picture, and the bench's place on it.
+
+    Raises
+    ------
+    NothingFitsError
+        If no listed sheet and scale hold the bench with its panels.
+    """
+    left, low, right, high = extent(picture)
+    choice = choose((right - left, high - low), picture.sheet, picture.scale)
+    view, inner = view_of(choice.size_mm), frame_of(choice.size_mm)
+    n = choice.scale
+    # In the middle of its field: light that leaves the bench needs room on every side.
+    spare = (view.width - (right - left) / n, view.height - (high - low) / n)
+    origin = (view.left + spare[0] / 2 - left / n, view.low + spare[1] / 2 - low / n)
+    column_left = inner.right - COLUMN_MM + _CLEAR_MM
+    title_top = inner.low + HEIGHT_MM + _CLEAR_MM
+    field = Window(
+        inner.left + _CLEAR_MM,
+        title_top,
+        column_left - _CLEAR_MM,
+        inner.high - ABOVE_MM / 2,
+    )
+    column = Window(column_left, title_top, inner.right - _CLEAR_MM, inner.high - _CLEAR_MM)
+    return Board(choice, origin, field, column, Crowd(field))
+
+
+def extent(picture: Picture) -> tuple[float, float, float, float]:
+    """Return the corners of what must be seen: the bench, its panels, all that stands."""
+    points = [*picture.outline]
+    for panel in picture.panels:
+        points += [panel.start, panel.end]
+    points += [item.at[:2] for item in picture.items]
+    xs, ys = [p[0] for p in points], [p[1] for p in points]
+    return min(xs), min(ys), max(xs), max(ys)

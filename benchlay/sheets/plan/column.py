@@ -1,0 +1,177 @@
+"""The column at the right of a plan: revisions, legend, zones, elements, notes."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from benchlay.sheets.contents import Item, Picture
+from benchlay.sheets.layers import beam_layer
+from benchlay.sheets.lettering import MIDDLE_MM, SMALL_MM, shorten
+from benchlay.sheets.plan.beams import end_mark
+from benchlay.sheets.plan.board import Board
+from benchlay.sheets.primitives import (
+    Circle,
+    Fill,
+    Line,
+    Point,
+    Polyline,
+    Primitive,
+    Text,
+    figure,
+)
+from benchlay.sheets.scale import Window
+from benchlay.sheets.tables import BETWEEN_MM, Column, Drawn, Table, notes, table
+
+_SAMPLE_MM = 22.0
+_ROW_MM = 5.2
+_LEAST_MM = 24.0  # what a table must have to be begun
+_NOTES_SHARE = 0.3  # of the column, kept for notes
+
+_ELEMENTS = (
+    Column("Tag", 16.0),
+    Column("Kind", 24.0),
+    Column("X", 17.0),
+    Column("Y", 17.0),
+    Column("Z", 14.0),
+    Column("Facing °", 20.0),
+)
+_ZONES = (Column("No.", 11.0), Column("Zone, and what it assumes", 97.0))
+_REVISIONS = (
+    Column("Rev", 11.0),
+    Column("Date", 24.0),
+    Column("Change", 57.0),
+    Column("By", 16.0),
+)
+
+
+def column(picture: Picture, board: Board, all_notes: list[str]) -> list[Primitive]:
+    """Draw the column; whatever is too long says where the rest is."""
+    out: list[Primitive] = []
+    room = board.column
+    reserve = _NOTES_SHARE * room.height
+
+    def put(drawn: Drawn) -> None:
+        nonlocal room
+        out.extend(drawn.primitives)
+        room = room._replace(high=drawn.foot - BETWEEN_MM)
+
+    if picture.revisions:
+        put(_revisions(picture, room))
+    put(_legend(picture, room))
+    if picture.zones:
+        put(_zones(picture, room._replace(low=room.low + reserve)))
+    put(notes("NOTES", all_notes, room, "the report"))
+    if picture.items and room.height > _LEAST_MM:
+        put(_elements(picture, room))
+    return out
+
+
+def _revisions(picture: Picture, room: Window) -> Drawn:
+    rows = tuple(picture.revisions)
+    content = Table("REVISIONS", _REVISIONS, rows, "the layout", "REVISION")
+    return table(content, room._replace(low=room.high - room.height / 5))
+
+
+def _zones(picture: Picture, room: Window) -> Drawn:
+    rows = tuple((zone.name, "; ".join(zone.schedule)) for zone in picture.zones)
+    return table(Table("HAZARD ZONES", _ZONES, rows, "the report"), room)
+
+
+def _elements(picture: Picture, room: Window) -> Drawn:
+    """List where everything stands, from the datum hole where there is one."""
+    rows = tuple(_element(item, picture) for item in picture.items)
+    origin = "X, Y FROM DATUM" if picture.holes else "X, Y FROM NEAR LEFT CORNER"
+    content = Table(f"ELEMENTS, {origin}", _ELEMENTS, rows, "the report", most_lines=1)
+    return table(content, room)
+
+
+def _element(item: Item, picture: Picture) -> tuple[str, ...]:
+    x, y = picture.holes.first if picture.holes else (0.0, 0.0)
+    numbers = (item.at[0] - x, item.at[1] - y, item.at[2])
+    lengths = (figure(value, 1, picture.decimal) for value in numbers)
+    facing = figure(item.facing_deg % 360.0, 2, picture.decimal)
+    return (item.name, item.kind, *lengths, facing)
+
+
+def _legend(picture: Picture, room: Window) -> Drawn:
+    out: list[Primitive] = []
+    y = room.high - MIDDLE_MM
+    out.append(Text("TABLES", (room.left, y), "LEGEND", MIDDLE_MM))
+    y -= 1.0
+    for words, sample in _samples(picture, room.left):
+        y -= _ROW_MM
+        out += [_shifted(primitive, y + SMALL_MM / 2) for primitive in sample]
+        words = shorten(words, room.width - _SAMPLE_MM - 2.0, SMALL_MM)
+        out.append(Text("TABLES", (room.left + _SAMPLE_MM + 2.0, y), words, SMALL_MM))
+    return Drawn(tuple(out), y)
+
+
+def _samples(picture: Picture, x: float) -> Iterator[tuple[str, list[Primitive]]]:
+    """Return the legend's rows: words, and a sample about y = 0."""
+    right = x + _SAMPLE_MM
+    middle = (x + right) / 2
+    for entry in picture.legend:
+        layer = beam_layer(entry.wavelength_nm)
+        arrow = ((middle + 2.0, 0.0), (middle - 2.0, 1.2), (middle - 2.0, -1.2))
+        yield entry.words, [Line(layer, (x, 0.0), (right, 0.0)), Fill(layer, arrow)]
+    if any(leg.stray for leg in picture.legs):
+        yield "stray light, off every route", _stray_sample(x, right)
+        for sink, words in _ENDS:
+            mark = list(end_mark("STRAY", sink, (x, 0.0), (right - 3.0, 0.0), 1.0))
+            yield words, [Line("STRAY", (x, 0.0), (right - 3.0, 0.0)), *mark]
+    if any(leg.radii_mm for leg in picture.legs):
+        pair: list[Primitive] = [Line("ENVELOPE", (x, dy), (right, dy)) for dy in (0.8, -0.8)]
+        yield "envelope: 1/e² radius on either side, to scale", pair
+    if any(item.coated for item in picture.items):
+        yield "coated side: second line before the face", _coated_sample(middle)
+    if picture.zones:
+        yield "hazard zone: limit, ticks to its inside, hatched rim", _zone_sample(x, right)
+    if picture.panels:
+        corners = ((x, -0.4), (right, -0.4), (right, 0.4), (x, 0.4))
+        yield "panel of the enclosure", [Polyline("PANELS", corners, closed=True)]
+
+
+_ENDS = (
+    ("dump", "… that ends in a dump"),
+    ("panel", "… on a panel, wall, body or rim"),
+    ("escaped", "… that leaves the bench"),
+)
+
+
+def _stray_sample(x: float, right: float) -> list[Primitive]:
+    middle = (x + right) / 2
+    out: list[Primitive] = [Line("STRAY", (x, 0.0), (right, 0.0))]
+    out += [Line("STRAY", (middle, 0.0), (middle - 2.7, dy)) for dy in (1.25, -1.25)]
+    return out
+
+
+def _coated_sample(middle: float) -> list[Primitive]:
+    glass = ((middle - 5, -1.4), (middle + 5, -1.4), (middle + 5, 0.2), (middle - 5, 0.2))
+    coated = Line("OPTICS", (middle - 5.0, 1.1), (middle + 5.0, 1.1))
+    return [Polyline("OPTICS", glass, closed=True), coated]
+
+
+def _zone_sample(x: float, right: float) -> list[Primitive]:
+    out: list[Primitive] = [Line("HAZARD", (x, 1.4), (right, 1.4))]
+    out += [Line("HAZARD", (x + a, 1.4), (x + a, -0.2)) for a in (5.0, 15.0)]
+    for n in range(5):
+        start = x + 1.0 + 4.0 * n
+        out.append(Line("HAZARD", (start, -1.6), (start + 3.0, 1.4)))
+    return out
+
+
+def _shifted(primitive: Primitive, up: float) -> Primitive:
+    """Return a sample's primitive moved up."""
+
+    def moved(point: Point) -> Point:
+        return (point[0], point[1] + up)
+
+    match primitive:
+        case Line():
+            return primitive._replace(start=moved(primitive.start), end=moved(primitive.end))
+        case Circle():
+            return primitive._replace(centre=moved(primitive.centre))
+        case Fill() | Polyline():
+            return primitive._replace(points=tuple(map(moved, primitive.points)))
+    msg = f"no sample is made of {type(primitive).__name__}"
+    raise TypeError(msg)

@@ -1,0 +1,208 @@
+"""Tags and heights: every element, beam and zone says its name, clear of everything else."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterable, Iterator, Sequence
+from typing import NamedTuple
+
+import shapely
+
+from benchlay.sheets.contents import Item, Leg, Picture, Zone
+from benchlay.sheets.frame import rectangle
+from benchlay.sheets.lettering import LINE_PITCH, MIDDLE_MM, SMALL_MM, plain, width_mm
+from benchlay.sheets.placing_text import Place
+from benchlay.sheets.plan.beams import clipped, layer_of
+from benchlay.sheets.plan.board import Board
+from benchlay.sheets.plan.items import placed, straightened
+from benchlay.sheets.plan.zones import seen
+from benchlay.sheets.primitives import (
+    Across,
+    Line,
+    Point,
+    Polyline,
+    Primitive,
+    Text,
+    figure,
+)
+from benchlay.sheets.scale import Window
+
+_PAD_MM = 0.8
+_X_MM = 0.8
+_CORNER = 0.9  # mm, of the rounded border of a stray's tag
+_QUARTER = math.tan(math.pi / 8)  # bulge of a quarter circle
+_ON_LEG = (0.5, 0.3, 0.7, 0.15, 0.85)
+_LEVEL_MM = 1e-3  # heights that differ by less are the same to every reader
+_TRIANGLE_MM = 8.0
+
+
+class Tagged(NamedTuple):
+    """What was drawn on paper, and the names for which there was no room."""
+
+    paper: tuple[Primitive, ...]
+    left_out: tuple[str, ...]
+
+
+class _Wanted(NamedTuple):
+    """A tag: its lines with the layers they are written on, its border, where it belongs."""
+
+    name: str
+    lines: tuple[tuple[str, str, float], ...]  # layer, words, height
+    border: str  # "", square, rounded
+    layer: str  # of border and leader
+    anchors: tuple[tuple[Point, float], ...]
+
+
+def tags(picture: Picture, board: Board) -> Tagged:
+    """Place and draw every tag, most needed first."""
+    out: list[Primitive] = []
+    left_out: list[str] = []
+    wanted = [
+        *(_item_tag(item, picture, board) for item in picture.items),
+        *_leg_tags(picture, board, stray=False),
+        *_zone_tags(picture, board),
+        *_leg_tags(picture, board, stray=True),
+    ]
+    for item in picture.items:
+        if _height_written(item, picture):
+            out += _cross(board.on_paper(item.at))
+    for tag in wanted:
+        place = board.crowd.place(_size(tag), tag.anchors) if tag.anchors else None
+        if place is None:
+            left_out.append(tag.name)
+        else:
+            out += _drawn(tag, place)
+    return Tagged(tuple(out), tuple(dict.fromkeys(left_out)))
+
+
+def _height_written(item: Item, picture: Picture) -> bool:
+    return abs(item.at[2] - picture.beam_height_mm) > _LEVEL_MM
+
+
+def _item_tag(item: Item, picture: Picture, board: Board) -> _Wanted:
+    lines = [("TAGS", plain(item.name), MIDDLE_MM)]
+    if _height_written(item, picture):
+        level = figure(item.at[2], 2, picture.decimal)
+        lines.append(("LEVELS", level if level[0] in "-0" else f"+{level}", SMALL_MM))
+    shapes = item.outlines or item.bodies
+    points = [placed(item, p) for shape in shapes for p in straightened(shape)]
+    on_paper = [board.on_paper(p) for p in points] or [board.on_paper(item.at)]
+    xs, ys = [p[0] for p in on_paper], [p[1] for p in on_paper]
+    middle = ((min(xs) + max(xs)) / 2, (min(ys) + max(ys)) / 2)
+    reach = min(max(math.dist(middle, p) for p in on_paper), 12.0)
+    anchors = [(middle, 0.6 * reach), (middle, reach)]
+    return _Wanted(item.name, tuple(lines), "", "TAGS", tuple(anchors))
+
+
+def _leg_tags(picture: Picture, board: Board, *, stray: bool) -> Iterator[_Wanted]:
+    for leg in picture.legs:
+        if leg.words and leg.stray is stray:
+            lines = (("TAGS", plain(leg.words), SMALL_MM),)
+            border = "rounded" if stray else "square"
+            anchors = tuple(_on_leg(leg, board))
+            layer = layer_of(leg) if stray else "TAGS"
+            yield _Wanted(leg.name, lines, border, layer, anchors)
+
+
+def _on_leg(leg: Leg, board: Board) -> Iterator[tuple[Point, float]]:
+    part = clipped(leg.start[:2], leg.end[:2], board.field_in_model())
+    if part is None:
+        return
+    (ax, ay), (bx, by) = (board.on_paper(p) for p in part)
+    for share in _ON_LEG:
+        yield (ax + share * (bx - ax), ay + share * (by - ay)), 0.0
+
+
+def _zone_tags(picture: Picture, board: Board) -> Iterator[_Wanted]:
+    for zone in picture.zones:
+        lines = tuple(("HAZARD", plain(words), SMALL_MM) for words in zone.label)
+        yield _Wanted(zone.name, lines, "zone", "HAZARD", tuple(_in_zone(zone, board)))
+
+
+def _in_zone(zone: Zone, board: Board) -> Iterator[tuple[Point, float]]:
+    area = seen(zone, board)
+    if shapely.is_empty(area):
+        return
+    inner = shapely.point_on_surface(area)
+    yield board.on_paper((inner.x, inner.y)), 0.0
+    edge = shapely.boundary(area)
+    for share in (0.1, 0.35, 0.6, 0.85):
+        at = shapely.line_interpolate_point(shapely.get_parts(edge)[0], share, normalized=True)
+        yield board.on_paper((at.x, at.y)), 0.0
+
+
+def _size(tag: _Wanted) -> Point:
+    pad = 2 * _PAD_MM if tag.border else 0.0
+    width = max(width_mm(words, height) for _, words, height in tag.lines)
+    tall = _tall(tag.lines)
+    if tag.border == "zone":
+        return (width + pad + _TRIANGLE_MM + 1.0, max(tall + pad, _TRIANGLE_MM))
+    return (width + pad, tall + pad)
+
+
+def _tall(lines: Sequence[tuple[str, str, float]]) -> float:
+    """Return the height from the top of the first line to the foot of the last."""
+    descent = 0.25 * lines[-1][2]
+    return lines[0][2] + sum(LINE_PITCH * line[2] for line in lines[1:]) + descent
+
+
+def _drawn(tag: _Wanted, place: Place) -> Iterator[Primitive]:
+    box, pad = place.box, _PAD_MM if tag.border else 0.0
+    left = box.left + pad
+    if tag.border == "square":
+        yield rectangle(tag.layer, box)
+    elif tag.border == "rounded":
+        yield _rounded(tag.layer, box)
+    elif tag.border == "zone":
+        yield rectangle(tag.layer, box)
+        yield from _sign(tag, (box.left + 0.6, (box.low + box.high) / 2))
+        left += _TRIANGLE_MM
+    y = box.high - pad
+    for n, (layer, words, height) in enumerate(tag.lines):
+        y -= height if n == 0 else LINE_PITCH * height
+        if tag.border == "zone":
+            yield Text(layer, (left, y), words, height)
+        else:
+            at = ((box.left + box.right) / 2, y)
+            yield Text(layer, at, words, height, Across.CENTRE)
+    if place.leader is not None:
+        yield Line("TAGS" if tag.layer == "STRAY" else tag.layer, *place.leader)
+
+
+def _sign(tag: _Wanted, at: Point) -> Iterator[Primitive]:
+    """Draw the number of a zone in a triangle; a plain one, no safety sign."""
+    x, y = at
+    side, tall = _TRIANGLE_MM, _TRIANGLE_MM * math.sqrt(0.75)
+    low = y - tall / 2
+    corners = ((x, low), (x + side, low), (x + side / 2, low + tall))
+    yield Polyline(tag.layer, corners, closed=True)
+    at = (x + side / 2, low + 0.7)
+    yield Text(tag.layer, at, plain(tag.name), SMALL_MM, Across.CENTRE)
+
+
+def _rounded(layer: str, box: Window) -> Polyline:
+    left, low, right, high = box
+    c = _CORNER
+    points = (
+        (left + c, low),
+        (right - c, low),
+        (right, low + c),
+        (right, high - c),
+        (right - c, high),
+        (left + c, high),
+        (left, high - c),
+        (left, low + c),
+    )
+    return Polyline(layer, points, closed=True, bulges=(0.0, _QUARTER) * 4)
+
+
+def _cross(at: Point) -> Iterator[Line]:
+    """Mark the point whose height is written."""
+    x, y = at
+    yield Line("LEVELS", (x - _X_MM, y - _X_MM), (x + _X_MM, y + _X_MM))
+    yield Line("LEVELS", (x - _X_MM, y + _X_MM), (x + _X_MM, y - _X_MM))
+
+
+def names(left_out: Iterable[str]) -> str:
+    """Return the note that names what bears no tag."""
+    return "Not tagged for want of room: " + ", ".join(left_out) + "."

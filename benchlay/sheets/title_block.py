@@ -1,0 +1,121 @@
+"""The title block, after the fields of ISO 7200 (from memory), 180 mm wide, bottom right.
+
+Nothing is made smaller to fit. A long title runs on in the line of the supplementary title,
+and what still does not fit is cut with an ellipsis.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from typing import NamedTuple
+
+from benchlay.sheets.frame import rectangle
+from benchlay.sheets.lettering import MIDDLE_MM, SMALL_MM, shorten, wrap
+from benchlay.sheets.primitives import Circle, Line, Point, Polyline, Primitive, Text
+from benchlay.sheets.scale import Window, frame_of
+
+WIDTH_MM = 180.0
+ROW_MM = 9.0
+HEIGHT_MM = 4 * ROW_MM
+_INSET_MM = 1.2
+_CAPTION_MM = 6.0  # base line of a cell's caption above its foot
+_VALUE_MM = 1.5
+NOTHING = "–"  # a field that the layout leaves out is seen to be empty
+
+
+class TitleFields(NamedTuple):
+    """What the title block says; everything comes from the layout, nothing from a clock."""
+
+    owner: str = ""
+    title: str = ""
+    document_type: str = ""
+    number: str = ""
+    revision: str = ""
+    date: str = ""
+    drawn_by: str = ""
+    approved_by: str = ""
+    scale: str = ""
+    sheet: str = "1/1"
+    projection: str = "first"  # or third
+
+
+class _Cell(NamedTuple):
+    caption: str
+    value: str
+    width_mm: float
+
+
+def title_block(fields: TitleFields, size_mm: Point) -> Iterator[Primitive]:
+    """Draw the title block of a sheet."""
+    inner = frame_of(size_mm)
+    left, low = inner.right - WIDTH_MM, inner.low
+    yield rectangle("SHEET", Window(left, low, inner.right, low + HEIGHT_MM))
+    for row, cells in enumerate(reversed(_rows(fields))):
+        foot = low + row * ROW_MM
+        if row:
+            yield Line("TITLE", (left, foot), (inner.right, foot))
+        yield from _row(cells, left, foot)
+    yield from _projection(fields.projection, (inner.right - 20.0, low + 3.5 * ROW_MM))
+
+
+def _rows(fields: TitleFields) -> list[list[_Cell]]:
+    width = 120.0
+    lines = wrap(fields.title, width - 2 * _INSET_MM, MIDDLE_MM, most=2)
+    title, more = lines[0], (lines[1] if len(lines) > 1 else "")
+    return [
+        [
+            _Cell("Owner", fields.owner, 60.0),
+            _Cell("Document type", fields.document_type, 60.0),
+            _Cell("Projection", " ", 60.0),
+        ],
+        [_Cell("Title", title, width), _Cell("Drawing number", fields.number, 60.0)],
+        [
+            _Cell("Supplementary title", more or " ", width),
+            _Cell("Revision", fields.revision, 20.0),
+            _Cell("Date", fields.date, 40.0),
+        ],
+        [
+            _Cell("Drawn by", fields.drawn_by, 60.0),
+            _Cell("Approved by", fields.approved_by, 60.0),
+            _Cell("Scale", fields.scale, 20.0),
+            _Cell("Unit", "mm", 20.0),
+            _Cell("Sheet", fields.sheet, 20.0),
+        ],
+    ]
+
+
+def _row(cells: list[_Cell], left: float, foot: float) -> Iterator[Primitive]:
+    x = left
+    for cell in cells:
+        room = cell.width_mm - 2 * _INSET_MM
+        if x > left:
+            yield Line("TITLE", (x, foot), (x, foot + ROW_MM))
+        at = (x + _INSET_MM, foot + _CAPTION_MM)
+        yield Text("NOTES", at, shorten(cell.caption, room, SMALL_MM), SMALL_MM)
+        value = shorten(cell.value or NOTHING, room, MIDDLE_MM)
+        if value.strip():
+            yield Text("TITLE", (x + _INSET_MM, foot + _VALUE_MM), value, MIDDLE_MM)
+        x += cell.width_mm
+
+
+def _projection(name: str, at: Point) -> Iterator[Primitive]:
+    """Draw the sign of the projection: a cut cone and its end, after ISO 5456-2.
+
+    First angle has the circles at the right of the cone, third angle at its left.
+    """
+    x, y = at
+    cone, rings = (x - 7.0, x + 7.0) if name == "first" else (x + 7.0, x - 7.0)
+    small, large, half = 1.75, 3.5, 3.5
+    corners = (
+        (cone - half, y - small),
+        (cone + half, y - large),
+        (cone + half, y + large),
+        (cone - half, y + small),
+    )
+    yield Polyline("TITLE", corners, closed=True)
+    yield Circle("TITLE", (rings, y), small)
+    yield Circle("TITLE", (rings, y), large)
+    reach = large + 0.8
+    yield Line("AXIS", (cone - reach, y), (cone + reach, y))
+    yield Line("AXIS", (rings - reach, y), (rings + reach, y))
+    yield Line("AXIS", (rings, y - reach), (rings, y + reach))
