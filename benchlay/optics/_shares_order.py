@@ -20,7 +20,7 @@ from benchlay.optics._shares_curves import (
 from benchlay.optics._shares_prepare import Section
 
 _EMPTY = 1e-12  # a stretch thinner than this part of its radius is rounding
-_ELEMENTS = 250_000  # of the largest table at a time: it should stay in the cache
+_ELEMENTS = 60_000  # of the largest table at a time: it should stay in the cache
 
 
 class Intervals(NamedTuple):
@@ -195,8 +195,6 @@ def _divide(
     enter = np.where(real, rays.enter[ray], CUT_RADIUS)
     leave = np.where(real, rays.leave[ray], 0.0)
     radius, bound = _bounds(enter, leave, ray, chunk, levels)
-    sequence = np.argsort(radius, axis=1)
-    radius = np.take_along_axis(radius, sequence, axis=1)
     middle = np.ascontiguousarray(0.5 * (radius[:, 1:] + radius[:, :-1]).T)
     cover = (enter[:, None] < middle) & (middle < leave[:, None])
     _pierce(cover, np.where(real, rays.host[ray], -1))
@@ -209,7 +207,7 @@ def _divide(
     opens = change.copy()
     opens[1:] = np.diff(which) > 0
     change[1:] = opens[1:] | (np.diff(owner) != 0)
-    inner = np.where(opens, -1, bound[which, sequence[which, place]])[change]
+    inner = np.where(opens, -1, bound[which, place])[change]
     which, owner = which[change], owner[change]
     ray = ray[np.minimum(owner, len(slot) - 1), which]
     return chunk[which], np.where(owner == len(slot), -1, rays.body[ray]), inner
@@ -222,7 +220,7 @@ def _bounds(
     chunk: Ints,
     levels: tuple[Ints, Floats, Ints],
 ) -> tuple[Floats, Ints]:
-    """Radii (n, B) at which the owner may change, and what stands there."""
+    """Radii (n, B) at which the owner may change, rising, and what stands there."""
     n = len(chunk)
     radius = [np.zeros((n, 1)), enter.T, leave.T, np.full((n, 1), CUT_RADIUS)]
     nothing = np.full((n, 1), -1)
@@ -235,7 +233,14 @@ def _bounds(
         place = np.where(held, first[chunk][:, None] + column, 0)
         radius.append(np.where(held, level[place], CUT_RADIUS))
         bound.append(line[place])
-    return np.concatenate(radius, axis=1), np.concatenate(bound, axis=1)
+    whole = np.concatenate(radius, axis=1)
+    whole[:, 1:][whole[:, 1:] <= 0.0] = CUT_RADIUS  # the axis is inside: nothing begins
+    sequence = np.argsort(whole, axis=1)
+    sequence = sequence[:, : int((whole < CUT_RADIUS).sum(axis=1).max()) + 1]
+    return (
+        np.take_along_axis(whole, sequence, axis=1),
+        np.take_along_axis(np.concatenate(bound, axis=1), sequence, axis=1),
+    )
 
 
 def _pierce(cover: Bools, host: Ints) -> None:

@@ -73,6 +73,33 @@ def test_referee_agrees(seed):
     assert stands(scene, *divide(*scene))
 
 
+def lattice_scene(seed):
+    """Few round numbers: outlines meet, touch, coincide and pass through the axis."""
+    rng = np.random.default_rng(seed)
+    scene = []
+    for order in range(rng.integers(2, 6)):
+        depth, (x, y) = rng.integers(1, 4), rng.integers(-2, 3, 2) / 2
+        slope = rng.choice([0, 0, 1], 2)
+        figure = Figure((depth, *slope), centre=(x, y), order=order)
+        if rng.random() < 0.5:
+            figure.axes = tuple(map(tuple, np.diag(rng.choice([0.5, 1.0, 1.5], 2))))
+        else:
+            w, h = rng.choice([0.5, 1.0, 2.0], 2)
+            figure.corners = [(x - w, y - h), (x + w, y - h), (x + w, y + h), (x - w, y + h)]
+            figure.corners = figure.corners[: rng.integers(3, 5)]
+        if rng.random() < 0.4:
+            radius = rng.choice([0.25, 0.5, 1.0])
+            figure.holes = [disc(radius, at=(x, y))]
+        scene.append(figure)
+    return scene
+
+
+@pytest.mark.parametrize("seed", range(40))
+def test_referee_agrees_where_outlines_coincide(seed):
+    scene = lattice_scene(seed)
+    assert stands(scene, *divide(*scene))
+
+
 def test_referee_sees_a_share_wrong_by_one_part_in_a_hundred_thousand():
     scene = random_scene(1)
     share, free = divide(*scene)
