@@ -28,6 +28,7 @@ from benchlay.optics._shares_prepare import Section
 
 _SAME_ANGLE = 1e-14  # breaks are good to a few 1e-16 rad
 _END = 1e-12  # how far beyond its ends a piece is still crossed (widths of the beam)
+_TOUCH = 1e-9  # outlines this near to touching (of a semi-axis) have a break there
 _AT_OUTLINE = 1e-6  # the axis is this near an outline, of a semi-axis
 _CIRCULAR = 1e-9  # below this the quartic is solved as a quadratic, then polished
 _ON_CIRCLE = 1e-2  # a double root may leave the unit circle by the root of its error
@@ -103,8 +104,8 @@ def _lines_with_ellipses(lines: Lines, ellipses: Ellipses, first: Ints) -> tuple
     length2 = d[0] * d[0] + d[1] * d[1]
     foot = -(p[0] * d[0] + p[1] * d[1]) / length2
     miss = (p[0] * d[1] - p[1] * d[0]) ** 2 / length2
-    pick = np.flatnonzero(miss < 1.0)
-    half = np.sqrt((1.0 - miss[pick]) / length2[pick])
+    pick = np.flatnonzero(miss < 1.0 + _TOUCH)
+    half = np.sqrt(np.maximum(1.0 - miss[pick], 0.0) / length2[pick])
     where = np.concatenate((foot[pick] - half, foot[pick] + half))
     pick = np.concatenate((pick, pick))
     on = (where > -_END) & (where < 1.0 + _END)
@@ -162,11 +163,11 @@ def _product(left: Floats, right: Floats) -> Floats:
 
 
 def _overlap(inverse: Floats, axes: Floats, offset: Floats) -> Bools:
-    """Can an ellipse cross the other's outline? No if wholly beyond or within it."""
+    """Can an ellipse cross the other's outline? No if clearly beyond or within it."""
     centre = transform(inverse, offset)
     distance = np.hypot(centre[0], centre[1])
     reach = largest_stretch(_product(inverse, axes))
-    result: Bools = (distance - reach < 1.0) & (distance + reach > 1.0 + _END)
+    result: Bools = (distance - reach < 1.0 + _TOUCH) & (distance + reach > 1.0 - _TOUCH)
     return result
 
 
@@ -184,11 +185,12 @@ def _crossings(matrix: Floats, centre: Floats) -> tuple[Ints, Floats]:
     next_ = alpha * c.conj() + c * beta.conj()
     level = np.abs(c) ** 2 + np.abs(alpha) ** 2 + np.abs(beta) ** 2 - 1.0
     scale = np.abs(next_) + np.abs(level) + np.abs(lead)
-    full = np.abs(lead) > _CIRCULAR * scale
+    least = np.maximum(_CIRCULAR * scale, _END)  # all below _END: one ellipse twice
+    full = np.abs(lead) > least
     root = np.zeros((len(c), 4), dtype=np.complex128)
     quartic = np.stack((next_, level + 0j, next_.conj(), lead.conj()), axis=-1)
     root[full] = _roots(quartic[full] / lead[full, None])
-    simple = ~full & (np.abs(next_) > _CIRCULAR * scale)
+    simple = ~full & (np.abs(next_) > least)
     quadratic = np.stack((level + 0j, next_.conj()), axis=-1)
     root[simple, :2] = _roots(quadratic[simple] / next_[simple, None])
     pair, which = np.nonzero(np.abs(np.abs(root) - 1.0) < _ON_CIRCLE)

@@ -20,6 +20,9 @@ from benchlay.optics._shares_curves import (
 from benchlay.optics._shares_prepare import Section
 
 _EMPTY = 1e-12  # a stretch thinner than this part of its radius is rounding
+# Not the middle: in a symmetric layout outlines that touch do so in the middle of an
+# interval, and the one ray on which they are one would stand for all.
+_PROBE = 0.4637
 _ELEMENTS = 60_000  # of the largest table at a time: it should stay in the cache
 
 
@@ -29,13 +32,13 @@ class Intervals(NamedTuple):
     problem: Ints  # (I,)
     width: Floats  # (I,) rad, below pi
     begin: Floats  # (2, I) direction as a unit vector
-    middle: Floats  # (2, I)
+    probe: Floats  # (2, I) the ray whose order stands for the interval
     end: Floats  # (2, I)
     first: Ints  # (problems + 1,) first interval of each problem
 
 
 class Rays(NamedTuple):
-    """Where the middle ray of each interval enters and leaves each body.
+    """Where the probing ray of each interval enters and leaves each body.
 
     A row is an (interval, body met) pair, those of an interval together and in the order
     of the slots. Radii are cut at the cut radius.
@@ -66,8 +69,8 @@ def intervals(problem: Ints, angle: Floats, problems: int) -> Intervals:
     last = first[1:][problem] == follow
     follow = np.where(last, first[problem], follow)
     width = angle[follow] - angle + np.where(last, 2.0 * np.pi, 0.0)
-    begin, middle = _unit(angle), _unit(angle + 0.5 * width)
-    return Intervals(problem, width, begin, middle, begin[:, follow], first)
+    begin, probe = _unit(angle), _unit(angle + _PROBE * width)
+    return Intervals(problem, width, begin, probe, begin[:, follow], first)
 
 
 def _unit(angle: Floats) -> Floats:
@@ -75,7 +78,7 @@ def _unit(angle: Floats) -> Floats:
 
 
 def cast(section: Section, sweep: Intervals) -> Rays:
-    """Send the middle ray of each interval through all bodies of its problem."""
+    """Send the probing ray of each interval through all bodies of its problem."""
     bodies = section.bodies
     many = np.diff(bodies.first)[sweep.problem]
     first = np.cumsum(many) - many
@@ -83,11 +86,11 @@ def cast(section: Section, sweep: Intervals) -> Rays:
     enter, leave = np.full(total, CUT_RADIUS), np.zeros(total)
     row = np.zeros(total, dtype=np.intp)
     which, interval = _members(section, sweep, section.polygons.body)
-    near, far, edge_radius = _through_polygons(section, which, sweep.middle[:, interval])
+    near, far, edge_radius = _through_polygons(section, which, sweep.probe[:, interval])
     place = first[interval] + bodies.slot[section.polygons.body[which]]
     enter[place], leave[place], row[place] = near, far, np.arange(len(place))
     which, interval = _members(section, sweep, section.ellipses.body)
-    near, far = _through_ellipses(section, which, sweep.middle[:, interval])
+    near, far = _through_ellipses(section, which, sweep.probe[:, interval])
     place = first[interval] + bodies.slot[section.ellipses.body[which]]
     enter[place], leave[place], row[place] = near, far, which
     interval = np.repeat(np.arange(len(many)), many)
@@ -145,7 +148,7 @@ def _through_ellipses(section: Section, which: Ints, ray: Floats) -> tuple[Float
 
 
 def stretches(section: Section, sweep: Intervals, rays: Rays) -> Stretches:
-    """Divide every middle ray among the bodies it meets first."""
+    """Divide every probing ray among the bodies it meets first."""
     levels = _levels(section, sweep, 2 * len(rays.enter))
     size = np.diff(rays.first)
     sequence = np.argsort(-size, kind="stable")
@@ -170,7 +173,7 @@ def _levels(section: Section, sweep: Intervals, base: int) -> tuple[Ints, Floats
     begin = sweep.first[problem]
     line, interval = spans(begin, sweep.first[problem + 1] - begin)
     line = nobody[line]
-    normal, ray = section.lines.normal[:, line], sweep.middle[:, interval]
+    normal, ray = section.lines.normal[:, line], sweep.probe[:, interval]
     toward = normal[0] * ray[0] + normal[1] * ray[1]
     hit = section.lines.distance[line] < CUT_RADIUS * toward
     line, interval, toward = line[hit], interval[hit], toward[hit]
@@ -187,7 +190,7 @@ def _divide(
     chunk: Ints,
     levels: tuple[Ints, Floats, Ints],
 ) -> tuple[Ints, Ints, Ints]:
-    """Owners along the middle rays of some intervals (as the columns of Stretches)."""
+    """Owners along the probing rays of some intervals (as the columns of Stretches)."""
     many = rays.first[chunk + 1] - rays.first[chunk]
     slot = np.arange(max(1, int(many.max())))[:, None]
     real = slot < many
@@ -199,7 +202,7 @@ def _divide(
     cover = (enter[:, None] < middle) & (middle < leave[:, None])
     _pierce(cover, np.where(real, rays.host[ray], -1))
     depth = section.bodies.depth[rays.body[ray]]
-    owner = _foremost(cover, depth, sweep.middle[:, chunk], middle)
+    owner = _foremost(cover, depth, sweep.probe[:, chunk], middle)
     real_stretch = radius[:, 1:] - radius[:, :-1] > _EMPTY * radius[:, 1:]
     which, place = np.nonzero(real_stretch)
     owner = owner[place, which]

