@@ -2,12 +2,16 @@
 
 from __future__ import annotations
 
+from itertools import pairwise
 from typing import Any, NamedTuple
 
 from benchlay.document.form import Form, Reader
-from benchlay.document.forms import Choice, Quantity
-from benchlay.document.nodes import Mapping, Node, Scalar, Sequence
+from benchlay.document.forms import Choice, ListOf, OneOf, Quantity, RecordForm, Words
+from benchlay.document.nodes import Node, Scalar
 from benchlay.document.quantity import Dimension
+from benchlay.document.record import Record, key
+from benchlay.document.words import quote
+from benchlay.elements._shares import SHARE
 
 METAL_NAMES = ("silver", "gold", "aluminium")
 
@@ -37,7 +41,10 @@ class Coating(NamedTuple):
         return next((band for band in self.bands if band.from_nm is None), None)
 
     def at(self, wavelength_nm: float) -> Band | None:
-        """Return the band stated for a wavelength, if there is one."""
+        """Return the band stated for a wavelength, if there is one; of two that touch, the first.
+
+        Both ends belong to a band.
+        """
         for band in self.bands:
             if (
                 band.from_nm is not None
@@ -61,181 +68,161 @@ def everywhere(s: float, p: float, absorbs: tuple[float, float] = (0.0, 0.0)) ->
     return Coating("stated", bands=(Band(0.0, float("inf"), s, p),), absorbs=absorbs)
 
 
-SHARE = Quantity(Dimension.RATIO, at_least=0.0, at_most=1.0)
-_WAVELENGTH = Quantity(Dimension.WAVELENGTH, above=0.0)
-_EXPECTED = (
-    "`uncoated`, `metal: silver|gold|aluminium`, a reflectance (`0.5 %` or `{s: 2 %, p: 1 %}`), "
-    "or a list of `{from, to, is}` by wavelength"
-)
+class BandKeys(Record):
+    """The two ends of a band of wavelengths."""
+
+    from_nm: float = key(
+        Quantity(Dimension.WAVELENGTH, above=0.0), name="from", meaning="lowest wavelength"
+    )
+    to_nm: float = key(
+        Quantity(Dimension.WAVELENGTH, above=0.0), name="to", meaning="highest wavelength"
+    )
+
+    def after_read(self, reader: Reader) -> None:
+        """Refuse a band that runs backwards."""
+        super().after_read(reader)
+        if self.from_nm > self.to_nm:
+            reader.complain(
+                self.span_of("from"),
+                f"the band runs backwards, from {self.from_nm:g} nm to {self.to_nm:g} nm",
+                expected="'from' at or below 'to'",
+                remedy=f"write 'from: {self.to_nm:g}' and 'to: {self.from_nm:g}'",
+            )
+
+
+class SharePair(Record):
+    """What is reflected of s and of p light."""
+
+    s: float = key(SHARE, meaning="share of s light")
+    p: float = key(SHARE, meaning="share of p light")
+
+
+class MetalFilm(Record):
+    """An opaque film of metal."""
+
+    metal: str = key(Choice(*METAL_NAMES), meaning="the metal")
+
+
+class ReflectedBand(BandKeys):
+    """What is reflected between two wavelengths."""
+
+    share: float | SharePair = key(
+        OneOf(SHARE, RecordForm(SharePair)), name="is", meaning="reflected share"
+    )
+
+
+def refuse_overlap(bands: tuple[BandKeys, ...], reader: Reader) -> bool:
+    """Refuse bands that overlap, at the later one; bands may touch. Tell whether any did."""
+    found = False
+    for first, second in pairwise(sorted(bands, key=lambda band: (band.from_nm, band.to_nm))):
+        if second.from_nm < first.to_nm:
+            found = True
+            reader.complain(
+                second.span_of("from"),
+                f"this band begins at {second.from_nm:g} nm, "
+                f"inside the one from {first.from_nm:g} nm to {first.to_nm:g} nm",
+                expected="bands that do not overlap",
+                remedy=f"begin it at {first.to_nm:g}, or end the other one at {second.from_nm:g}",
+            )
+    return found
+
+
+_SHARES = "a reflectance, as '0.5 %' or '{s: 2 %, p: 1 %}'"
+_BANDS = "a list by wavelength, as '[{from: 520, to: 545, is: 99.5 %}]'"
+_METALS = "'{metal: silver}' (or gold, aluminium)"
 
 
 class CoatingForm(Form[Coating]):
-    """Reads a coating; `words` are the single words allowed (`uncoated`)."""
+    """Reads a coating.
 
-    def __init__(self, words: tuple[str, ...] = ("uncoated",)) -> None:
-        self.words = words
+    Parameters
+    ----------
+    bare : bool
+        Whether `uncoated` may be written.
+    metals : bool
+        Whether an opaque film of metal may be written.
+    """
+
+    def __init__(self, *, bare: bool = True, metals: bool = True) -> None:
+        self.bare = bare
+        self.metals = metals
+        forms: list[Form[Any]] = [
+            SHARE,
+            RecordForm(SharePair),
+            ListOf(RecordForm(ReflectedBand), 1),
+        ]
+        if metals:
+            forms.insert(2, RecordForm(MetalFilm))
+        if bare:
+            forms.insert(0, Words({"uncoated": UNCOATED}))
+        self._forms = OneOf(*forms)
 
     def text(self) -> str:
         """Say what is expected."""
-        return _EXPECTED
+        said = ["'uncoated'"] if self.bare else []
+        said += [_METALS] if self.metals else []
+        return ", ".join([*said, _SHARES]) + f", or {_BANDS}"
 
     def example(self) -> str:
         """Give one that may be written."""
-        return "uncoated"
+        return "'uncoated'" if self.bare else "'99.5 %'"
+
+    def takes(self, node: Node) -> bool:
+        """Take what may be a coating."""
+        return self._forms.takes(node)
 
     def schema(self) -> dict[str, Any]:
         """Return the JSON Schema of a coating."""
-        share = SHARE.schema()
-        pair = {
-            "type": "object",
-            "properties": {"s": share, "p": share},
-            "required": ["s", "p"],
-            "additionalProperties": False,
-        }
-        band = {
-            "type": "object",
-            "properties": {
-                "from": _WAVELENGTH.schema(),
-                "to": _WAVELENGTH.schema(),
-                "is": {"anyOf": [share, pair]},
-            },
-            "required": ["from", "to", "is"],
-            "additionalProperties": False,
-        }
-        metal = {
-            "type": "object",
-            "properties": {"metal": {"enum": list(METAL_NAMES)}},
-            "required": ["metal"],
-            "additionalProperties": False,
-        }
-        words = {"enum": list(self.words)}
-        return {
-            "anyOf": [
-                words,
-                share,
-                pair,
-                metal,
-                {"type": "array", "items": band, "minItems": 1},
-            ]
-        }
+        return self._forms.schema()
+
+    def show(self, value: object) -> str:
+        """Write the default as a user would."""
+        return "uncoated" if value == UNCOATED else super().show(value)
 
     def read(self, node: Node, reader: Reader) -> Coating | None:
         """Read a coating, adding what is wrong to the reader's problems."""
-        if isinstance(node, Sequence):
-            return self._read_bands(node, reader)
-        if isinstance(node, Mapping) and node.get("metal") is not None:
-            return self._read_metal(node, reader)
-        if isinstance(node, Scalar) and node.text in self.words:
-            return Coating(node.text)
-        if isinstance(node, Scalar) and node.text.startswith(("metal", "un")):
-            reader.complain(
-                node.span,
-                f"{node.text!r} is not a coating",
-                expected=_EXPECTED,
-                remedy="write `uncoated`, or `{metal: silver}`",
-            )
+        if isinstance(node, Scalar) and self._is_word(node.text):
+            self._refuse_word(node, reader)
             return None
-        pair = _read_share(node, reader)
-        return None if pair is None else reflecting(*pair)
-
-    def _read_metal(self, node: Mapping, reader: Reader) -> Coating | None:
-        if not _only(node, ("metal",), reader):
+        before = reader.failures
+        value = self._forms.read(node, reader)
+        if reader.failures > before or value is None:
             return None
-        value = node.get("metal")
-        assert value is not None
-        name = Choice(*METAL_NAMES).read(value, reader)
-        return None if name is None else Coating("metal", metal=name)
+        return _coating(value, reader)
 
-    def _read_bands(self, node: Sequence, reader: Reader) -> Coating | None:
-        bands = [_read_band(item, reader) for item in node.items]
-        if not bands:
-            reader.complain(
-                node.span,
-                "the list of bands is empty",
-                expected=_EXPECTED,
-                remedy="write at least one band",
-            )
-            return None
-        good = [band for band in bands if band is not None]
-        if len(good) < len(bands) or not _disjoint(good, node, reader):
-            return None
-        return Coating("stated", bands=tuple(sorted(good, key=lambda band: band.from_nm or 0.0)))
+    def _is_word(self, text: str) -> bool:
+        """Tell words from shares; an empty text and one in digits are left to the forms."""
+        word = text.strip()
+        bare = self.bare and word == UNCOATED.kind
+        return word[:1].isalpha() and not word.startswith("OD") and not bare
 
-
-def _only(node: Mapping, names: tuple[str, ...], reader: Reader) -> bool:
-    unknown = [name for name, _ in node.pairs if name.text not in names]
-    for name in unknown:
+    def _refuse_word(self, node: Scalar, reader: Reader) -> None:
+        remedy = f"write a coating, such as {self.example()}"
+        if self.metals and node.text in METAL_NAMES:
+            remedy = f"write '{{metal: {node.text}}}'"
         reader.complain(
-            name.span,
-            f"unknown key {name.text!r}",
-            expected="one of " + ", ".join(names),
-            remedy="remove it",
+            node, f"{quote(node.text)} is not a coating", expected=self.text(), remedy=remedy
         )
-    missing = [name for name in names if node.get(name) is None]
-    if missing:
-        reader.complain(
-            node.span,
-            f"{missing[0]!r} is missing",
-            expected=", ".join(names),
-            remedy=f"add `{missing[0]}`",
-        )
-    return not unknown and not missing
 
 
-def _read_share(node: Node, reader: Reader) -> tuple[float, float] | None:
-    if not isinstance(node, Mapping):
-        share = SHARE.read(node, reader)
-        return None if share is None else (share, share)
-    if not _only(node, ("s", "p"), reader):
+def _coating(value: Any, reader: Reader) -> Coating | None:  # noqa: ANN401 (what the forms read)
+    """Make a coating of what was written."""
+    if isinstance(value, Coating):
+        return value
+    if isinstance(value, MetalFilm):
+        return Coating("metal", metal=value.metal)
+    if not isinstance(value, tuple):
+        return reflecting(*_pair(value))
+    if refuse_overlap(value, reader):
         return None
-    parts = [
-        SHARE.read(value, reader) for name in ("s", "p") if (value := node.get(name)) is not None
-    ]
-    if len(parts) != 2 or parts[0] is None or parts[1] is None:  # noqa: PLR2004 (s and p)
-        return None
-    return parts[0], parts[1]
+    bands = (Band(band.from_nm, band.to_nm, *_pair(band.share)) for band in value)
+    return Coating("stated", bands=tuple(sorted(bands, key=lambda band: band.from_nm or 0.0)))
 
 
-def _read_band(node: Node, reader: Reader) -> Band | None:
-    if not isinstance(node, Mapping):
-        reader.complain(
-            node.span,
-            "a band of a coating is a mapping",
-            expected="`{from: 520, to: 545, is: 99.5 %}`",
-            remedy="write from, to and is",
-        )
-        return None
-    if not _only(node, ("from", "to", "is"), reader):
-        return None
-    low, high, share = node.get("from"), node.get("to"), node.get("is")
-    assert low is not None and high is not None and share is not None
-    start, stop = _WAVELENGTH.read(low, reader), _WAVELENGTH.read(high, reader)
-    pair = _read_share(share, reader)
-    if start is None or stop is None or pair is None:
-        return None
-    if start > stop:
-        reader.complain(
-            low.span,
-            f"the band runs backwards: from {start:g} nm to {stop:g} nm",
-            expected="`from` at or below `to`",
-            remedy="swap the two",
-        )
-        return None
-    return Band(start, stop, *pair)
-
-
-def _disjoint(bands: list[Band], node: Sequence, reader: Reader) -> bool:
-    ordered = sorted(bands, key=lambda band: band.from_nm or 0.0)
-    for first, second in zip(ordered, ordered[1:], strict=False):
-        if second.from_nm is not None and first.to_nm is not None and second.from_nm < first.to_nm:
-            reader.complain(
-                node.span,
-                f"two bands overlap at {second.from_nm:g} nm",
-                expected="bands that do not overlap",
-                remedy=f"end the first band at {second.from_nm:g}",
-            )
-            return False
-    return True
+def _pair(share: float | SharePair) -> tuple[float, float]:
+    return (share.s, share.p) if isinstance(share, SharePair) else (share, share)
 
 
 COATING = CoatingForm()
+REFLECTANCE = CoatingForm(bare=False, metals=False)
+BARE_OR_REFLECTANCE = CoatingForm(metals=False)

@@ -113,7 +113,8 @@ class Geometry(NamedTuple):
     """Everything of an element that light and ink may meet, in its own frame.
 
     `extent` is the box round the optic as (x back, x front, half width, half height), from
-    which a mount is made; `post_at` is where the post of a bare body stands.
+    which a mount is made; `post_at` is where the post of a bare body stands, and
+    `post_top_mm` how far above the bench it reaches (None: to the lower side of the extent).
     """
 
     faces: tuple[Face, ...]
@@ -124,6 +125,7 @@ class Geometry(NamedTuple):
     bulk: Bulk = CLEAR
     material: str | None = None
     post_at: tuple[float, float] | None = None
+    post_top_mm: float | None = None
 
 
 class ElementKind(Record):

@@ -5,36 +5,53 @@ from __future__ import annotations
 from typing import Any
 
 from benchlay.document.form import Form, Reader
-from benchlay.document.forms import Pair
-from benchlay.document.nodes import Node, Scalar
+from benchlay.document.forms import OneOf, Pair
+from benchlay.document.nodes import Node, Scalar, Sequence
+from benchlay.document.record import Record
 from benchlay.elements._kind import Geometry, Stroke
 from benchlay.elements._sized import LENGTH, opening_front
 from benchlay.geometry.outline import Outline, circle, rectangle
 from benchlay.geometry.solid import Solid, box
 
-PLATE_THICKNESS_MM = 2.0  # of plates whose thickness the language does not ask for: common practice
+PLATE_THICKNESS_MM = 2.0  # of plates that have no key for it: common practice
 
 
 class OpeningForm(Form[Outline]):
     """Reads an opening: a diameter, or `[width, height]`."""
 
+    _forms = OneOf(LENGTH, Pair(LENGTH))
+
     def text(self) -> str:
         """Say what is expected."""
-        return "a diameter, or `[width, height]`"
+        return f"{LENGTH.text()} (the diameter); or a list of two, '[width, height]'"
 
     def example(self) -> str:
         """Give one that may be written."""
-        return "5"
+        return "'5'"
+
+    def takes(self, node: Node) -> bool:
+        """Take a diameter or a list."""
+        return self._forms.takes(node)
+
+    def show(self, value: object) -> str:
+        """Write the default as a user would."""
+        if not isinstance(value, Outline):
+            return super().show(value)
+        width, height = (2 * radius for radius in value.radii)
+        return LENGTH.show(width) if value.round else f"[{width:g}, {height:g}] mm"
 
     def schema(self) -> dict[str, Any]:
         """Return the JSON Schema of an opening."""
-        return {"anyOf": [LENGTH.schema(), Pair(LENGTH).schema()]}
+        return self._forms.schema()
 
     def read(self, node: Node, reader: Reader) -> Outline | None:
         """Read an opening, adding what is wrong to the reader's problems."""
-        if isinstance(node, Scalar):
+        if isinstance(node, Scalar) and node.text.strip():
             diameter = LENGTH.read(node, reader)
             return None if diameter is None else circle(diameter / 2)
+        if not isinstance(node, Sequence):
+            reader.refuse(node, self)
+            return None
         size = Pair(LENGTH).read(node, reader)
         return None if size is None else rectangle(*size)
 
@@ -43,16 +60,17 @@ OPENING = OpeningForm()
 
 
 def ask_for_margin(
-    opening: Outline, size_mm: tuple[float, float], record: Any, reader: Reader
+    opening: Outline, size_mm: tuple[float, float], record: Record, reader: Reader
 ) -> None:
     """Refuse an opening that is no smaller than its plate."""
     for i, what in ((0, "width"), (1, "height")):
         if 2 * opening.radii[i] >= size_mm[i]:
             reader.complain(
-                record.spans.get("opening", record.span),
-                f"the opening is {2 * opening.radii[i]:g} mm in {what}, its plate {size_mm[i]:g} mm",
+                record.span_of("opening" if record.written("opening") else "size"),
+                f"the opening is {2 * opening.radii[i]:g} mm in {what}, "
+                f"its plate {size_mm[i]:g} mm",
                 expected="an opening smaller than its plate",
-                remedy=f"give a larger `size`, or an opening below {size_mm[i]:g} mm",
+                remedy=f"write a larger 'size', or an 'opening' below {size_mm[i]:g}",
             )
             return
 

@@ -1,97 +1,25 @@
-"""Keys and geometry that plate-like kinds share: sizes, glass, faces, edge."""
+"""Keys and geometry that plate-like kinds share: sizes, wedge, faces, edge."""
 
 from __future__ import annotations
 
-from math import atan, cos, tan
-from typing import Any, NamedTuple
+from math import ceil, hypot, radians, tan
+from typing import NamedTuple
 
-from benchlay.document.form import Form, Reader
+from benchlay.document.form import Reader
 from benchlay.document.forms import Choice, Pair, Quantity
-from benchlay.document.nodes import Mapping, Node, Scalar
-from benchlay.document.problems import nearest
 from benchlay.document.quantity import Dimension
 from benchlay.document.record import Record, key
-from benchlay.elements._coating import SHARE, Coating
-from benchlay.elements._kind import Acts, Face, Geometry, Glass, Inside, Stroke
+from benchlay.elements._coating import Coating
+from benchlay.elements._kind import CLEAR, Acts, Bulk, Face, Geometry, Glass, Inside, Stroke
+from benchlay.elements._shares import USABLE
 from benchlay.geometry.outline import Outline, circle, rectangle
 from benchlay.geometry.solid import Solid, Vector, disc, slab
 
 LENGTH = Quantity(Dimension.LENGTH, above=0.0)
 LENGTH_OR_ZERO = Quantity(Dimension.LENGTH, at_least=0.0)
-INDEX = Quantity(Dimension.RATIO, at_least=1.0, at_most=10.0)
-GLASS_NAMES = (
-    "fused-silica",
-    "BK7",
-    "SF10",
-    "SF11",
-    "CaF2",
-    "MgF2",
-    "sapphire",
-    "ZnSe",
-    "quartz",
-    "calcite",
-    "water",
-)
-_GLASS_EXPECTED = "a material (" + ", ".join(GLASS_NAMES) + ") or `{index: 1.5}`"
-
-
-class GlassForm(Form[Glass]):
-    """Reads a glass: a name of the catalogue, or an index relative to the bench's medium."""
-
-    def text(self) -> str:
-        """Say what is expected."""
-        return _GLASS_EXPECTED
-
-    def example(self) -> str:
-        """Give one that may be written."""
-        return "BK7"
-
-    def schema(self) -> dict[str, Any]:
-        """Return the JSON Schema of a glass."""
-        index = {
-            "type": "object",
-            "properties": {"index": INDEX.schema()},
-            "required": ["index"],
-            "additionalProperties": False,
-        }
-        return {"anyOf": [{"enum": list(GLASS_NAMES)}, index]}
-
-    def read(self, node: Node, reader: Reader) -> Glass | None:
-        """Read a glass, adding what is wrong to the reader's problems."""
-        if isinstance(node, Scalar):
-            return self._named(node, reader)
-        value = node.get("index") if isinstance(node, Mapping) else None
-        if value is None or not isinstance(node, Mapping) or len(node.pairs) != 1:
-            reader.complain(
-                node.span,
-                "this is not a glass",
-                expected=_GLASS_EXPECTED,
-                remedy="name a material, or give its index",
-            )
-            return None
-        index = INDEX.read(value, reader)
-        return None if index is None else Glass(None, index, node.span)
-
-    def _named(self, node: Scalar, reader: Reader) -> Glass | None:
-        if node.text in GLASS_NAMES:
-            return Glass(node.text, None, node.span)
-        guess = nearest(node.text, GLASS_NAMES)
-        reader.complain(
-            node.span,
-            f"unknown glass {node.text!r}",
-            expected=_GLASS_EXPECTED,
-            remedy=f"did you mean {guess!r}?"
-            if guess
-            else "name a material of the list, or give its index",
-        )
-        return None
-
-
-GLASS = GlassForm()
 SIDE = Choice("left", "right", "up", "down")
-_MAX_WEDGE = Quantity(
-    Dimension.ANGLE, at_least=0.0, at_most=0.35
-)  # 20 degrees: beyond that it is a prism
+# Beyond 20 degrees it is a prism, and its thickness at the centre says little.
+_WEDGE = Quantity(Dimension.ANGLE, at_least=0.0, at_most=radians(20.0))
 
 
 class Sized(Record):
@@ -106,19 +34,20 @@ class Sized(Record):
         name="size",
         meaning="width and height of a rectangular one",
     )
-    clear: float = key(SHARE, default=0.9, meaning="usable share of the diameter or sizes")
+    clear: float = key(USABLE, default=0.9, meaning="usable share of the diameter or sizes")
 
     def after_read(self, reader: Reader) -> None:
         """Ask for one size, and only one."""
+        super().after_read(reader)
         if (self.diameter_mm is None) == (self.size_mm is None):
             both = self.diameter_mm is not None
             reader.complain(
-                self.spans["size"] if both else self.span,
-                "both a diameter and a size are given" if both else "it has no size",
-                expected="either `diameter` or `size: [width, height]`",
-                remedy="remove one of the two"
+                self.span_of("size"),
+                "both a diameter and a size are given" if both else "no size is given",
+                expected="either 'diameter' or 'size: [width, height]'",
+                remedy="remove 'diameter' or 'size'"
                 if both
-                else "add `diameter: 25.4`, or `size: [25, 36]`",
+                else "add 'diameter: 25.4' or 'size: [25, 36]', with the size that is meant",
             )
 
     def outline(self) -> Outline:
@@ -133,25 +62,48 @@ class Sized(Record):
         return self.diameter_mm is not None
 
 
-class Wedged(Record):
-    """A plate whose back may be inclined to its front."""
+class Wedged(Sized):
+    """A plate whose back may be inclined to its front; its kind says the key of `thickness_mm`."""
 
-    wedge_rad: float = key(_MAX_WEDGE, default=0.0, name="wedge", meaning="angle between the faces")
+    thickness_mm: float
+    wedge_rad: float = key(
+        _WEDGE, default=0.0, name="wedge", meaning="angle between front and back"
+    )
     wedge_towards: str | None = key(
         SIDE,
         default=None,
         meaning="where the thick edge is, as seen by light that arrives at the front",
     )
 
-    def ask_for_thick_edge(self, reader: Reader) -> None:
-        """A wedge without its direction could go either way: ask."""
-        if self.wedge_rad > 0.0 and self.wedge_towards is None:
+    def after_read(self, reader: Reader) -> None:
+        """Ask where the thick edge is, and for some glass at the thin one."""
+        super().after_read(reader)
+        if self.wedge_rad == 0.0:
+            return
+        if self.wedge_towards is None:
             reader.complain(
-                self.spans["wedge"],
-                "a wedge needs its direction",
-                expected="`wedge_towards: left|right|up|down`: where the thick edge is, seen by light that arrives",
-                remedy="add `wedge_towards: right`",
+                self.span_of("wedge"),
+                "a wedge without its direction",
+                expected="'wedge_towards' with 'left', 'right', 'up' or 'down': where the thick "
+                "edge is, as seen by light that arrives at the front",
+                remedy="add 'wedge_towards: right', with the side that is meant",
             )
+        else:
+            self._ask_for_thin_edge(reader)
+
+    def _ask_for_thin_edge(self, reader: Reader) -> None:
+        """Refuse a back that comes through the front."""
+        half_width, half_height = self.outline().radii
+        slope = self.slope()
+        needed = abs(slope[0]) * half_width + abs(slope[1]) * half_height
+        if needed == 0.0 or needed < self.thickness_mm:  # without a size there is nothing to say
+            return
+        reader.complain(
+            self.span_of("wedge"),
+            f"the thin edge is {self.thickness_mm - needed:.3g} mm thick",
+            expected=f"a thickness above {needed:.4g} mm at the centre for this wedge",
+            remedy=f"set 'thickness' to {ceil(10 * needed + 1) / 10:.6g} or more",
+        )
 
     def slope(self) -> tuple[float, float]:
         """Return how the glass thickens along (left, up) of the element frame, in mm per mm."""
@@ -177,8 +129,12 @@ class PlateShape(NamedTuple):
     def back_normal(self) -> Vector:
         """Return the outward normal of the back."""
         a, b = self.slope
-        scale = cos(atan((a * a + b * b) ** 0.5))
-        return (-scale, -a * scale, -b * scale)
+        length = hypot(1.0, a, b)
+        return (-1.0 / length, -a / length, -b / length)
+
+    def back_stretch(self) -> tuple[float, float]:
+        """Return how much wider and higher the inclined back is than the front."""
+        return (hypot(1.0, self.slope[0]), hypot(1.0, self.slope[1]))
 
     def faces(self, front: Coating, back: Coating) -> tuple[Face, Face]:
         """Return two refracting faces."""
@@ -195,8 +151,8 @@ class PlateShape(NamedTuple):
                 "back",
                 (-self.thickness_mm, 0.0, 0.0),
                 self.back_normal(),
-                self.outline,
-                self.clear,
+                self.outline.stretched(self.back_stretch()),
+                self.clear.stretched(self.back_stretch()),
                 coating=back,
             ),
         )
@@ -211,8 +167,11 @@ class PlateShape(NamedTuple):
         return (slab("edge", self.outline.corners, across, self.slope),)
 
     def strokes(self, *, coated: str = "front") -> tuple[Stroke, ...]:
-        """Return the plan outline with its coated side marked."""
+        """Return the section at the height of its middle, with its coated side marked."""
         half = self.outline.radii[0]
+        if self.thickness_mm <= 0.0:
+            role = "coated" if coated else "outline"
+            return (Stroke(((0.0, -half), (0.0, half)), closed=False, role=role),)
         t = self.thickness_mm
         tilt = self.slope[0] * half
         corners = ((0.0, -half), (0.0, half), (-t - tilt, half), (-t + tilt, -half))
@@ -233,7 +192,7 @@ def plate_geometry(
     glass: Glass | None,
     *,
     coated: str = "front",
-    **more: Any,
+    bulk: Bulk = CLEAR,
 ) -> Geometry:
     """Return the geometry of a plate with these faces."""
     return Geometry(
@@ -242,7 +201,7 @@ def plate_geometry(
         shape.strokes(coated=coated),
         shape.extent(),
         glass=glass,
-        **more,
+        bulk=bulk,
     )
 
 

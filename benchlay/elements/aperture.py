@@ -3,6 +3,7 @@
 .. code-block:: yaml
 
    A1: {kind: aperture, after: laser, distance: 50, opening: 3}
+The opening is in the middle of the front; light beside it ends on the plate.
 """
 
 from __future__ import annotations
@@ -36,6 +37,7 @@ class Aperture(ElementKind):
 
     def after_read(self, reader: Reader) -> None:
         """Refuse an opening as large as the plate."""
+        super().after_read(reader)
         ask_for_margin(self.opening, self.size_mm, self, reader)
 
     def geometry(self) -> Geometry:

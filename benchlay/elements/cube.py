@@ -6,7 +6,8 @@
 
 Its reference point is its centre. `sends` is where light that enters the front is reflected
 to, as that light sees it; faces are named in the element's own frame, where left is
-anticlockwise of the front normal seen from above.
+anticlockwise of the front normal seen from above. Top and bottom are ground and end what
+reaches them. Say `PBS.reflected` or `PBS.transmitted` where a beam goes on from it.
 """
 
 from __future__ import annotations
@@ -16,7 +17,8 @@ from typing import ClassVar
 
 from benchlay.document.forms import Choice
 from benchlay.document.record import key
-from benchlay.elements._coating import COATING, SHARE, UNCOATED, Coating
+from benchlay.elements._coating import COATING, REFLECTANCE, UNCOATED, Coating
+from benchlay.elements._glass import GLASS
 from benchlay.elements._kind import (
     Branches,
     ElementKind,
@@ -26,7 +28,8 @@ from benchlay.elements._kind import (
     Inside,
     Stroke,
 )
-from benchlay.elements._sized import GLASS, LENGTH
+from benchlay.elements._shares import USABLE
+from benchlay.elements._sized import LENGTH
 from benchlay.geometry.outline import rectangle
 from benchlay.geometry.solid import box
 
@@ -56,7 +59,7 @@ class Cube(ElementKind):
 
     side_mm: float = key(LENGTH, default=25.4, name="side", meaning="length of its edges")
     reflectance: Coating = key(
-        COATING, meaning="reflected share of the diagonal, `{s: 99 %, p: 1 %}`"
+        REFLECTANCE, meaning="reflected share of the diagonal; the rest goes straight on"
     )
     sends: str = key(
         Choice("left", "right"),
@@ -65,7 +68,7 @@ class Cube(ElementKind):
     )
     faces: Coating = key(COATING, default=UNCOATED, meaning="coating of the outer faces")
     glass: Glass = key(GLASS, default=Glass("BK7", None), meaning="the two prisms")
-    clear: float = key(SHARE, default=0.9, meaning="usable share of the outer faces")
+    clear: float = key(USABLE, default=0.9, meaning="usable share of the outer faces")
 
     def branches(self) -> Branches:
         """Return the ways through this cube, which hang on where it sends the light."""
@@ -106,7 +109,10 @@ class Cube(ElementKind):
         block = box("edge", (-half, half), (-half, half), (-half, half))
         square = ((half, -half), (half, half), (-half, half), (-half, -half))
         cut = ((-half, -half), (half, half)) if slant < 0 else ((-half, half), (half, -half))
-        strokes = (Stroke(square, True, "outline"), Stroke(cut, False, "coated"))
+        strokes = (
+            Stroke(square, closed=True, role="outline"),
+            Stroke(cut, closed=False, role="coated"),
+        )
         return Geometry(
             (*outer, diagonal),
             (block,),

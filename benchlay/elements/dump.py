@@ -3,13 +3,15 @@
 .. code-block:: yaml
 
    D1: {kind: dump, after: BS1.reflected, distance: 120, opening: 20, withstands: {power: 5 W}}
+Its body is a box 5 mm wider than the opening on every side; light that misses the opening
+lands on that box. Without `facing` it faces the beam squarely.
 """
 
 from __future__ import annotations
 
 from benchlay.document.record import key
-from benchlay.elements._coating import SHARE
 from benchlay.elements._kind import ElementKind, Geometry, Stroke
+from benchlay.elements._shares import SHARE
 from benchlay.elements._sized import LENGTH, opaque_front
 from benchlay.geometry.outline import circle
 from benchlay.geometry.solid import box

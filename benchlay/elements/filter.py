@@ -4,60 +4,47 @@
 
    F1: {kind: filter, after: laser, distance: 90, diameter: 25.4, density: OD 1, incidence: 4}
 
-`density` and `bands` are internal, at normal incidence, and grow with the path inside;
-outside every band nothing passes. With `reflective: yes` the front face sends the refused
-share back instead.
+`density` (an optical density: `2` and `OD 2` both let 1 % pass) and `bands` are internal, at
+normal incidence, and grow with the path inside; outside every band nothing passes. With
+`reflective: yes` the front face sends the refused share back instead.
 """
 
 from __future__ import annotations
 
+from math import inf
 from typing import ClassVar
 
 from benchlay.document.form import Reader
-from benchlay.document.forms import ListOf, Quantity, RecordForm, YesNo
-from benchlay.document.quantity import Dimension
-from benchlay.document.record import Record, key
+from benchlay.document.forms import ListOf, RecordForm, YesNo
+from benchlay.document.record import key
 from benchlay.elements._coating import (
     COATING,
-    SHARE,
     UNCOATED,
     Band,
+    BandKeys,
     Coating,
     everywhere,
+    refuse_overlap,
 )
+from benchlay.elements._glass import GLASS
 from benchlay.elements._kind import CLEAR, Branches, Bulk, ElementKind, Geometry, Glass
+from benchlay.elements._shares import SHARE, DensityForm
 from benchlay.elements._sized import (
-    GLASS,
     LENGTH,
     PlateShape,
-    Sized,
     Wedged,
     plate_geometry,
 )
 from benchlay.elements._through import PASSING_PLATE
 
-_WAVELENGTH = Quantity(Dimension.WAVELENGTH, above=0.0)
 
-
-class PassBand(Record):
+class PassBand(BandKeys):
     """A share passed between two wavelengths."""
 
-    from_nm: float = key(_WAVELENGTH, name="from", meaning="lowest wavelength of the band")
-    to_nm: float = key(_WAVELENGTH, name="to", meaning="highest wavelength of the band")
     transmits: float = key(SHARE, meaning="internal share passed at normal incidence")
 
-    def after_read(self, reader: Reader) -> None:
-        """Refuse a band that runs backwards."""
-        if self.from_nm > self.to_nm:
-            reader.complain(
-                self.spans["from"],
-                f"the band runs backwards: from {self.from_nm:g} nm to {self.to_nm:g} nm",
-                expected="`from` at or below `to`",
-                remedy="swap the two",
-            )
 
-
-class Filter(Sized, Wedged, ElementKind):
+class Filter(Wedged, ElementKind):
     """A filter: a window that weakens light inside."""
 
     KIND = "filter"
@@ -66,12 +53,10 @@ class Filter(Sized, Wedged, ElementKind):
     TURNS_FRONT = True
 
     density: float | None = key(
-        SHARE,
-        default=None,
-        meaning="internal share passed (`OD 1` or `10 %`), all wavelengths",
+        DensityForm(), default=None, meaning="internal optical density, the same at all wavelengths"
     )
     bands: tuple[PassBand, ...] | None = key(
-        ListOf(RecordForm(PassBand)),
+        ListOf(RecordForm(PassBand), min=1),
         default=None,
         meaning="internal share passed by wavelength; nothing outside",
     )
@@ -88,43 +73,43 @@ class Filter(Sized, Wedged, ElementKind):
     def after_read(self, reader: Reader) -> None:
         """Ask for exactly one way of weakening, and for a sensible front."""
         super().after_read(reader)
-        self.ask_for_thick_edge(reader)
         if (self.density is None) == (self.bands is None):
+            both = self.bands is not None
             reader.complain(
-                self.span,
-                "a filter needs either a density or bands",
-                expected="`density: OD 1`, or `bands: [{from: 500, to: 560, transmits: 90 %}]`",
-                remedy="remove one of the two" if self.bands else "add `density: OD 1`",
+                self.span_of("bands"),
+                "both a density and bands are given" if both else "neither density nor bands",
+                expected="either 'density: OD 1' or 'bands: [{from: 500, to: 560, "
+                "transmits: 90 %}]'",
+                remedy="remove 'density' or 'bands'"
+                if both
+                else "add 'density: OD 1', with the density that is meant",
             )
+        refuse_overlap(self.bands or (), reader)
         if self.reflective and self.written("front"):
             reader.complain(
-                self.spans["front"],
+                self.span_of("front"),
                 "the front of a reflective filter follows from its density or bands",
-                expected="no `front` beside `reflective: yes`",
-                remedy="remove `front`",
+                expected="no 'front' beside 'reflective: yes'",
+                remedy="remove 'front'",
             )
+
+    def passes(self) -> float:
+        """Return the internal share that the density passes at normal incidence."""
+        return float(10.0 ** -(self.density or 0.0))
 
     def _front(self) -> Coating:
         if not self.reflective:
             return self.front
         if self.density is not None:
-            return everywhere(1.0 - self.density, 1.0 - self.density)
-        edges = [0.0]
-        bands: list[Band] = []
-        for band in sorted(self.bands or (), key=lambda band: band.from_nm):
-            bands.append(Band(edges[-1], band.from_nm, 1.0, 1.0))
-            bands.append(Band(band.from_nm, band.to_nm, 1.0 - band.transmits, 1.0 - band.transmits))
-            edges.append(band.to_nm)
-        stated = [band for band in bands if band.s < 1.0] + [
-            band for band in bands if band.s >= 1.0
-        ]
-        return Coating("stated", bands=(*stated, Band(edges[-1], float("inf"), 1.0, 1.0)))
+            refused = 1.0 - self.passes()
+            return everywhere(refused, refused)
+        return _mirror_outside(self.bands or ())
 
     def _bulk(self) -> Bulk:
         if self.reflective:
             return CLEAR
         if self.density is not None:
-            return Bulk("absorber", passes=self.density, thickness_mm=self.thickness_mm)
+            return Bulk("absorber", passes=self.passes(), thickness_mm=self.thickness_mm)
         bands = tuple((band.from_nm, band.to_nm, band.transmits) for band in self.bands or ())
         return Bulk("absorber", passes=0.0, thickness_mm=self.thickness_mm, bands=bands)
 
@@ -139,3 +124,19 @@ class Filter(Sized, Wedged, ElementKind):
     def glass_of(self) -> Glass:
         """Return the glass of the plate."""
         return self.glass
+
+
+def _mirror_outside(bands: tuple[PassBand, ...]) -> Coating:
+    """Return a coating that reflects what the bands refuse, and everything between them.
+
+    The bands come first, so that light at their very ends belongs to them.
+    """
+    ordered = sorted(bands, key=lambda band: band.from_nm)
+    passing = [
+        Band(band.from_nm, band.to_nm, 1.0 - band.transmits, 1.0 - band.transmits)
+        for band in ordered
+    ]
+    starts = [0.0, *(band.to_nm for band in ordered)]
+    ends = [*(band.from_nm for band in ordered), inf]
+    between = [Band(low, high, 1.0, 1.0) for low, high in zip(starts, ends, strict=True)]
+    return Coating("stated", bands=(*passing, *between))

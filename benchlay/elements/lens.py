@@ -10,7 +10,7 @@ of a lens of `glass` whose two radii are equal (an assumption that the notes rep
 
 from __future__ import annotations
 
-from math import copysign, sqrt
+from math import copysign, inf, sqrt
 from typing import ClassVar
 
 from benchlay.document.form import Reader
@@ -18,14 +18,17 @@ from benchlay.document.forms import Choice, Pair, Quantity
 from benchlay.document.quantity import Dimension
 from benchlay.document.record import key
 from benchlay.elements._coating import COATING, UNCOATED, Coating
+from benchlay.elements._glass import GLASS
 from benchlay.elements._kind import Acts, Branches, ElementKind, Geometry, Glass, Stroke
 from benchlay.elements._radius import RADIUS
-from benchlay.elements._sized import GLASS, LENGTH, PlateShape, Sized
+from benchlay.elements._sized import LENGTH, PlateShape, Sized
 from benchlay.elements._through import TRANSMITTED
 
 _FOCAL = Quantity(Dimension.LENGTH)
 _DRAWN_INDEX = 1.5  # for the picture only: radii of the drawn lens are 2 (n - 1) f
 _ARC_STEPS = 12
+_STRONGEST = 1.05  # a drawn radius is at least this many times the half width
+_EDGE_MM = 0.8  # of a drawn convex lens, at least
 
 
 class Lens(Sized, ElementKind):
@@ -54,39 +57,33 @@ class Lens(Sized, ElementKind):
     acts: str = key(
         Choice("both", "across", "up"),
         default="both",
-        meaning="in which directions it bends (cylindrical lenses)",
+        meaning="in which directions it bends",
+        not_yet="cylindrical lenses",
     )
 
     def after_read(self, reader: Reader) -> None:
-        """Ask for a focal length that is not nought, and say what is not traced yet."""
+        """Ask for a focal length that is not nought."""
         super().after_read(reader)
-        if self.focal_mm is None and self.radii_mm is None:
+        if self.focal_mm is None:
             reader.complain(
                 self.span,
-                "a lens needs its focal length",
-                expected="`focal: 200`",
-                remedy="add `focal`",
+                "'focal' is missing",
+                expected="'focal' with a length other than 0; negative for a diverging lens",
+                remedy="add 'focal: 200', with the length that is meant",
             )
         if self.focal_mm == 0.0:
             reader.complain(
-                self.spans["focal"],
+                self.span_of("focal"),
                 "a focal length of 0 mm",
                 expected="a length other than 0; negative for a diverging lens",
-                remedy="give the focal length",
-            )
-        if self.acts != "both":
-            reader.complain(
-                self.spans["acts"],
-                "not yet: cylindrical lenses are read but cannot be traced by this version",
-                expected="`acts: both`",
-                remedy="leave `acts` out",
+                remedy="write the focal length, such as 'focal: 200'",
             )
 
     def geometry(self) -> Geometry:
         """Return two bending faces in one place."""
         outline = self.outline()
         shape = PlateShape(outline, outline.scaled(self.clear), 0.0)
-        focal = self.focal_mm or float("inf")
+        focal = self.focal_mm or inf
         faces = tuple(
             face._replace(acts=Acts.LENS, focal_mm=focal)
             for face in shape.faces(self.front, self.back)
@@ -101,14 +98,17 @@ class Lens(Sized, ElementKind):
         return Geometry(faces, (), (self._picture(half_width),), extent, glass=self.glass)
 
     def _picture(self, half: float) -> Stroke:
-        radius = max(2 * (_DRAWN_INDEX - 1) * abs(self.focal_mm or 1.0), 1.05 * half)
-        sign = copysign(1.0, self.focal_mm or 1.0)
+        """Return the section of an equi-convex or equi-concave lens of this focal length.
+
+        Where that is too strong to be drawn, arcs just below half a circle stand for it; a
+        convex one keeps an edge, if need be by more thickness in the middle.
+        """
+        focal = self.focal_mm or inf
+        radius = max(2 * (_DRAWN_INDEX - 1) * abs(focal), _STRONGEST * half)
         steps = [half * (2 * i / _ARC_STEPS - 1) for i in range(_ARC_STEPS + 1)]
-        sags = [radius - sqrt(radius * radius - y * y) for y in steps]
-        middle = self.thickness_mm / 2 if sign > 0 else self.thickness_mm / 4
-        edge = max(middle - sags[0], 0.4) if sign > 0 else 0.0
-        top = edge + sags[0] if sign > 0 else middle
-        front = [(top - sign * sag, y) for y, sag in zip(steps, sags, strict=True)]
+        sags = [copysign(radius - sqrt(radius * radius - y * y), focal) for y in steps]
+        middle = max(self.thickness_mm / 2, sags[0] + _EDGE_MM / 2)
+        front = [(middle - sag, y) for y, sag in zip(steps, sags, strict=True)]
         back = [(-x, y) for x, y in reversed(front)]
         return Stroke((*front, *back), closed=True, role="outline")
 

@@ -2,7 +2,13 @@
 
 .. code-block:: yaml
 
-   M1: {kind: mirror, after: laser, distance: 200, turn: left 90, diameter: 25.4, reflectance: 99.5 %}
+   M1:
+     kind: mirror
+     after: laser
+     distance: 200
+     turn: left 90
+     diameter: 25.4
+     reflectance: 99.5 %
 
 What the coating neither reflects nor absorbs leaks into the substrate. A ground back (the
 default) swallows the leak; a polished one lets it out, and `M1.transmitted` follows it.
@@ -15,10 +21,12 @@ from typing import Any, ClassVar
 from benchlay.document.form import Reader
 from benchlay.document.forms import Choice
 from benchlay.document.record import key
-from benchlay.elements._coating import COATING, METAL_NAMES, SHARE, UNCOATED, Coating
+from benchlay.elements._coating import METAL_NAMES, REFLECTANCE, UNCOATED, Coating
+from benchlay.elements._glass import GLASS
 from benchlay.elements._kind import Acts, Branches, ElementKind, Geometry, Glass
-from benchlay.elements._radius import RADIUS, refuse_curved
-from benchlay.elements._sized import GLASS, LENGTH, PlateShape, Sized, plate_geometry
+from benchlay.elements._radius import FLAT, RADIUS
+from benchlay.elements._shares import SHARE, refuse_excess
+from benchlay.elements._sized import LENGTH, LENGTH_OR_ZERO, PlateShape, Sized, plate_geometry
 
 
 class Mirror(Sized, ElementKind):
@@ -39,20 +47,21 @@ class Mirror(Sized, ElementKind):
     TURNS_FRONT = True
 
     reflectance: Coating | None = key(
-        COATING, default=None, meaning="reflected share; the rest leaks through"
+        REFLECTANCE, default=None, meaning="reflected share; the rest leaks through"
     )
     absorbs: float = key(SHARE, default=0.0, meaning="share that the coating swallows")
     metal: str | None = key(
         Choice(*METAL_NAMES), default=None, meaning="an opaque metal film instead"
     )
-    radius_mm: float | None = key(
+    radius_mm: float = key(
         RADIUS,
-        default=None,
+        default=FLAT,
         name="radius",
-        meaning="radius of curvature, `500 CC`; flat",
+        meaning="radius of curvature, `500 CC`",
+        not_yet="curved mirrors",
     )
     thickness_mm: float = key(
-        LENGTH, default=6.0, name="thickness", meaning="thickness at the centre"
+        LENGTH_OR_ZERO, default=6.0, name="thickness", meaning="thickness at the centre"
     )
     glass: Glass = key(GLASS, default=Glass("BK7", None), meaning="the substrate")
     back: str = key(
@@ -70,29 +79,26 @@ class Mirror(Sized, ElementKind):
     def after_read(self, reader: Reader) -> None:
         """Ask for one kind of coating, whose parts fit together."""
         super().after_read(reader)
-        refuse_curved(self.radius_mm, "radius", self, reader)
         if (self.reflectance is None) == (self.metal is None):
+            both = self.metal is not None
             reader.complain(
-                self.span,
-                "a mirror needs either a reflectance or a metal",
-                expected="`reflectance: 99.5 %` or `metal: aluminium`",
-                remedy="remove one of the two" if self.metal else "add `reflectance: 99.5 %`",
+                self.span_of("metal"),
+                "both a reflectance and a metal are given" if both else "no coating is given",
+                expected="either 'reflectance: 99.5 %' or 'metal: aluminium'",
+                remedy="remove 'reflectance' or 'metal'"
+                if both
+                else "add 'reflectance: 99.5 %', with the share that is meant",
             )
-        elif self.metal and self.absorbs:
+        elif self.metal and self.written("absorbs"):
             reader.complain(
-                self.spans["absorbs"],
-                "a metal's absorption follows from the metal",
-                expected="`absorbs` only beside `reflectance`",
-                remedy="remove `absorbs`",
+                self.span_of("absorbs"),
+                "what a metal swallows follows from the metal",
+                expected="'absorbs' only beside 'reflectance'",
+                remedy="remove 'absorbs'",
             )
-        for band in self.reflectance.bands if self.reflectance else ():
-            if max(band.s, band.p) + self.absorbs > 1.0:
-                reader.complain(
-                    self.spans["absorbs"],
-                    f"reflectance and absorption add up to {max(band.s, band.p) + self.absorbs:.6g}",
-                    expected="at most 1 together",
-                    remedy=f"set `absorbs` to {1 - max(band.s, band.p):.6g} or less",
-                )
+        if self.reflectance is not None:
+            most = max(max(band.s, band.p) for band in self.reflectance.bands)
+            refuse_excess(self, ("reflectance", most), ("absorbs", self.absorbs), reader)
 
     def coating(self) -> Coating:
         """Return the coating of the front."""

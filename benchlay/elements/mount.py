@@ -2,11 +2,11 @@
 
 from __future__ import annotations
 
+from math import radians
 from typing import Any, NamedTuple
 
-from benchlay.document.form import Form, Reader
-from benchlay.document.forms import Choice, Fixed, ListOf, Quantity
-from benchlay.document.nodes import Node, Scalar
+from benchlay.document.form import Reader
+from benchlay.document.forms import Choice, Fixed, ListOf, OneOf, Quantity, Words
 from benchlay.document.quantity import Dimension
 from benchlay.document.record import Record, RecordForm, key
 from benchlay.elements._kind import ElementKind, Geometry
@@ -21,7 +21,7 @@ _RIM_MM = 14.0
 _BEHIND_MM = 12.0
 FOOT_MM = (50.0, 75.0)
 FOOT_THICKNESS_MM = 10.0
-POST_DIAMETER_MM = 12.7
+POST_DIAMETER_MM = 12.7  # half an inch, the usual post
 
 
 class Mount(Record):
@@ -67,43 +67,37 @@ class Mount(Record):
     )
     range_rad: float = key(
         Quantity(Dimension.ANGLE, at_least=0.0),
-        default=0.06981317007977318,
+        default=radians(4.0),
         name="range",
         meaning="tilt, both ways",
     )
 
-
-class MountForm(Form[Any]):
-    """Reads a mount: `none`, or a table of its sizes. The value is NO_MOUNT or a Mount."""
-
-    _record = RecordForm(Mount)
-
-    def text(self) -> str:
-        """Say what is expected."""
-        return "`none`, or " + self._record.text()
-
-    def example(self) -> str:
-        """Give one that may be written."""
-        return "{width: 40, depth: 20, height: 40}"
-
-    def schema(self) -> dict[str, Any]:
-        """Return the JSON Schema of a mount."""
-        return {"anyOf": [{"const": "none"}, self._record.schema()]}
-
-    def read(self, node: Node, reader: Reader) -> Any:  # noqa: ANN401 (NO_MOUNT or a Mount)
-        """Read a mount, adding what is wrong to the reader's problems."""
-        if isinstance(node, Scalar) and node.text == "none":
-            return NO_MOUNT
-        return self._record.read(node, reader)
+    def after_read(self, reader: Reader) -> None:
+        """Refuse a box that does not reach its own optical centre."""
+        super().after_read(reader)
+        if None in (self.height_mm, self.optic_height_mm):
+            return
+        height, optic = self.height_mm or 0.0, self.optic_height_mm or 0.0
+        if optic >= height:
+            reader.complain(
+                self.span_of("optic_height"),
+                f"the optical centre, {optic:g} mm up, lies above the box of {height:g} mm",
+                expected="'optic_height' below 'height'",
+                remedy=f"set 'optic_height' below {height:g}",
+            )
 
 
 class NoMount:
     """The class of `NO_MOUNT`: no box, post or foot."""
 
+    def __repr__(self) -> str:
+        return "NO_MOUNT"
+
 
 NO_MOUNT = NoMount()
-MOUNT = MountForm()
 DEFAULT_MOUNT = Mount()
+MOUNT = OneOf(Words({"none": NO_MOUNT}), RecordForm(Mount))
+"""Reads a mount: `none`, or a table of its sizes. The value is NO_MOUNT or a Mount."""
 
 
 class Holder(NamedTuple):
@@ -125,7 +119,8 @@ def holder(
 ) -> Holder:
     """Return what holds an element whose reference point is `height_mm` above the bench.
 
-    `mount` is what the layout says (None where it says nothing).
+    Where the layout says nothing (`mount` is None), a round optic up to 50 mm has the default
+    mount, and targets, dumps and obstacles have a post without a foot; nothing else is held.
     """
     if isinstance(mount, NoMount):
         return NOTHING
@@ -160,7 +155,9 @@ def _bare(geometry: Geometry, mount: Mount, height_mm: float) -> Holder:
     at = mount.post_mm or geometry.post_at
     if at is None:
         return NOTHING
-    top = height_mm - geometry.extent[3]
+    top = geometry.post_top_mm
+    if top is None:
+        top = height_mm - geometry.extent[3]
     without_foot = mount.replace(foot_mm=None) if not mount.written("foot") else mount
     return Holder(None, _stand(at, without_foot, top), at)
 

@@ -2,10 +2,17 @@
 
 .. code-block:: yaml
 
-   supply: {kind: obstacle, at: [900, 200], facing: 0, outline: [[0, 0], [200, 0], [200, 80], [0, 80]], to_height: 120}
+   supply:
+     kind: obstacle
+     at: [900, 200]
+     facing: 0
+     outline: [[0, 0], [200, 0], [200, 80], [0, 80]]
+     to_height: 120
 
 The outline is in the element's own frame (x along `facing`, y to its left); heights are
-above the bench. It stands upright whatever its pitch.
+above the bench. It stands upright whatever its pitch; one that does not reach down to the
+bench stands on a post under the middle of its largest convex part (`mount: none` takes the
+post away).
 """
 
 from __future__ import annotations
@@ -15,7 +22,7 @@ from benchlay.document.forms import Fixed, ListOf, Quantity, Text
 from benchlay.document.quantity import Dimension
 from benchlay.document.record import key
 from benchlay.elements._kind import ElementKind, Geometry, Stroke
-from benchlay.geometry.polygon import convex_pieces, signed_area, simple
+from benchlay.geometry.polygon import convex_pieces, middle, signed_area, simple
 from benchlay.geometry.solid import prism
 
 _COORDINATE = Quantity(Dimension.LENGTH)
@@ -48,16 +55,18 @@ class Obstacle(ElementKind):
 
     def after_read(self, reader: Reader) -> None:
         """Refuse outlines that cross themselves and bodies without height."""
+        super().after_read(reader)
         if self.to_height_mm <= self.from_height_mm:
             reader.complain(
-                self.spans["to_height"],
-                f"its upper side ({self.to_height_mm:g} mm) is not above its lower side ({self.from_height_mm:g} mm)",
-                expected="`to_height` above `from_height`",
-                remedy=f"set `to_height` above {self.from_height_mm:g}",
+                self.span_of("to_height"),
+                f"the upper side at {self.to_height_mm:g} mm is not above "
+                f"the lower one at {self.from_height_mm:g} mm",
+                expected="'to_height' above 'from_height'",
+                remedy=f"set 'to_height' to {self.from_height_mm + 1:g} or more",
             )
         if not simple(self.outline_mm):
             reader.complain(
-                self.spans["outline"],
+                self.span_of("outline"),
                 "the outline crosses itself or encloses nothing",
                 expected="corners in order round the body",
                 remedy="put the corners in order",
@@ -65,22 +74,20 @@ class Obstacle(ElementKind):
 
     def geometry(self) -> Geometry:
         """Return one prism for each convex piece of the outline."""
-        outline = (
-            self.outline_mm
-            if signed_area(self.outline_mm) > 0
-            else tuple(reversed(self.outline_mm))
-        )
+        outline = self.outline_mm
+        if signed_area(outline) < 0:
+            outline = tuple(reversed(outline))
+        parts = convex_pieces(outline)
         heights = (self.from_height_mm, self.to_height_mm)
-        pieces = tuple(
-            prism("body", piece, heights, upright=True) for piece in convex_pieces(outline)
-        )
         xs = [x for x, _ in outline]
         half_width = max(abs(y) for _, y in outline)
-        half_height = (self.to_height_mm - self.from_height_mm) / 2
+        stands = self.from_height_mm <= 0.0
         return Geometry(
             (),
-            pieces,
+            tuple(prism("body", part, heights, upright=True) for part in parts),
             (Stroke(outline, closed=True, role="outline"),),
-            (min(xs), max(xs), half_width, half_height),
+            (min(xs), max(xs), half_width, (heights[1] - heights[0]) / 2),
             material=self.material,
+            post_at=None if stands else middle(max(parts, key=signed_area)),
+            post_top_mm=self.from_height_mm,
         )

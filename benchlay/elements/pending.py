@@ -5,6 +5,7 @@ Their keys are read and checked like all others; a layout that uses one is told 
 
 from __future__ import annotations
 
+from math import radians
 from typing import Any, ClassVar
 
 from benchlay.document.forms import (
@@ -22,9 +23,11 @@ from benchlay.document.forms import (
 )
 from benchlay.document.record import Record, key
 from benchlay.elements import _through
-from benchlay.elements._coating import COATING, SHARE, UNCOATED, Coating
+from benchlay.elements._coating import COATING, METAL_NAMES, UNCOATED, Coating
+from benchlay.elements._glass import GLASS
 from benchlay.elements._kind import Branches, ElementKind, Glass
-from benchlay.elements._sized import GLASS, LENGTH, LENGTH_OR_ZERO, Sized
+from benchlay.elements._shares import SHARE, USABLE
+from benchlay.elements._sized import LENGTH, LENGTH_OR_ZERO, Sized
 
 _ANGLE = Quantity(Dimension.ANGLE)
 _COORDINATE = Quantity(Dimension.LENGTH)
@@ -41,9 +44,7 @@ class Rotator(Sized, ElementKind):
     DEFAULT_BRANCH = "transmitted"
     PENDING = _WHY
 
-    angle_rad: float = key(
-        _ANGLE, default=0.7853981633974483, name="angle", meaning="by which it turns"
-    )
+    angle_rad: float = key(_ANGLE, default=radians(45.0), name="angle", meaning="by which it turns")
     thickness_mm: float = key(
         LENGTH_OR_ZERO,
         default=0.0,
@@ -105,8 +106,8 @@ class Parabola(ElementKind):
         Pair(LENGTH), default=None, name="size", meaning="width and height"
     )
     reflectance: Coating | None = key(COATING, default=None, meaning="reflected share")
-    metal: str | None = key(Text(), default=None, meaning="metal film")
-    clear: float = key(SHARE, default=0.9, meaning="usable share of the diameter or sizes")
+    metal: str | None = key(Choice(*METAL_NAMES), default=None, meaning="an opaque metal film")
+    clear: float = key(USABLE, default=0.9, meaning="usable share of the diameter or sizes")
 
 
 class Retroreflector(ElementKind):
@@ -120,7 +121,7 @@ class Retroreflector(ElementKind):
     diameter_mm: float = key(LENGTH, name="diameter", meaning="of its opening")
     glass: Glass | None = key(GLASS, default=None, meaning="the glass; hollow without")
     reflectance: Coating | None = key(COATING, default=None, meaning="of its faces")
-    clear: float = key(SHARE, default=0.9, meaning="usable share of the diameter")
+    clear: float = key(USABLE, default=0.9, meaning="usable share of the diameter")
 
 
 class CellWindows(Record):
@@ -163,7 +164,7 @@ class Cell(ElementKind):
         default=None,
         meaning="what it is filled with; the bench's medium without",
     )
-    clear: float = key(SHARE, default=0.9, meaning="usable share of the windows")
+    clear: float = key(USABLE, default=0.9, meaning="usable share of the windows")
 
 
 class Product(Record):

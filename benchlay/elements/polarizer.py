@@ -2,9 +2,11 @@
 
 .. code-block:: yaml
 
-   P1: {kind: polarizer, after: laser, distance: 80, diameter: 25.4, axis: 90, transmits: 88 %, extinction: 1e-4}
+   P1: {kind: polarizer, after: laser, distance: 80, diameter: 25.4, axis: 90, transmits: 88 %}
 
-`axis` is from horizontal, anticlockwise to a viewer looking at its back face.
+`axis` is the direction of the light that passes, from horizontal, anticlockwise to a viewer
+looking at its back face. `extinction` is the share of the refused component that passes,
+relative to that of the passed one. All is internal: the faces reflect besides.
 """
 
 from __future__ import annotations
@@ -14,10 +16,11 @@ from typing import ClassVar
 from benchlay.document.forms import Quantity
 from benchlay.document.quantity import Dimension
 from benchlay.document.record import key
-from benchlay.elements._coating import COATING, SHARE, UNCOATED, Coating
+from benchlay.elements._coating import COATING, UNCOATED, Coating
+from benchlay.elements._glass import GLASS
 from benchlay.elements._kind import Branches, Bulk, ElementKind, Geometry, Glass
+from benchlay.elements._shares import SHARE
 from benchlay.elements._sized import (
-    GLASS,
     LENGTH_OR_ZERO,
     PlateShape,
     Sized,
@@ -25,7 +28,7 @@ from benchlay.elements._sized import (
 )
 from benchlay.elements._through import PASSING_PLATE
 
-ANGLE = Quantity(Dimension.ANGLE)
+_ANGLE = Quantity(Dimension.ANGLE)
 
 
 class Polarizer(Sized, ElementKind):
@@ -36,7 +39,7 @@ class Polarizer(Sized, ElementKind):
     DEFAULT_BRANCH = "transmitted"
     TURNS_FRONT = True
 
-    axis_rad: float = key(ANGLE, name="axis", meaning="direction of the light that passes")
+    axis_rad: float = key(_ANGLE, name="axis", meaning="direction of the light that passes")
     transmits: float = key(
         SHARE, default=0.9, meaning="internal share of light along the axis that passes"
     )

@@ -3,11 +3,10 @@
 .. code-block:: yaml
 
    K1: {kind: screen, at: [400, 300], facing: 180, size: [50, 75]}
+It ends what meets its front on purpose; its thickness is 2 mm.
 """
 
 from __future__ import annotations
-
-from typing import ClassVar
 
 from benchlay.document.forms import Pair, Text
 from benchlay.document.record import key
@@ -21,7 +20,6 @@ class Screen(ElementKind):
     """A beam block."""
 
     KIND = "screen"
-    SQUARE: ClassVar[bool] = False
     DARK_MATTERS = False
     BLOCKS = True
 

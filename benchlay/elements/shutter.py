@@ -3,6 +3,8 @@
 .. code-block:: yaml
 
    S1: {kind: shutter, after: laser, distance: 60, opening: 8, closed: no}
+Its plate is 2 mm thick. Closed, it ends on its front whatever meets it; a state may close or
+open it.
 """
 
 from __future__ import annotations
@@ -44,6 +46,7 @@ class Shutter(ElementKind):
 
     def after_read(self, reader: Reader) -> None:
         """Refuse an opening as large as the plate."""
+        super().after_read(reader)
         ask_for_margin(self.opening, self.size_mm, self, reader)
 
     def geometry(self) -> Geometry:

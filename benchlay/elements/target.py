@@ -3,6 +3,8 @@
 .. code-block:: yaml
 
    plate: {kind: target, after: M4, distance: 300, size: [100, 125], diffuse: 60 %}
+Light ends on its face, save for the specular share, which goes on as from a mirror, and the
+diffuse share, which scatters in all directions. Without `facing` it faces the beam squarely.
 """
 
 from __future__ import annotations
@@ -10,15 +12,13 @@ from __future__ import annotations
 from benchlay.document.form import Reader
 from benchlay.document.forms import Pair
 from benchlay.document.record import key
-from benchlay.elements._coating import SHARE
 from benchlay.elements._kind import ElementKind, Geometry
 from benchlay.elements._plates import plate_behind, plate_stroke
+from benchlay.elements._shares import SHARE, refuse_excess
 from benchlay.elements._sized import LENGTH, opaque_front
 from benchlay.geometry.outline import rectangle
 
-BODY_THICKNESS_MM = (
-    5.0  # the language gives a target no thickness: a plausible holder, common practice
-)
+BODY_THICKNESS_MM = 5.0  # there is no key for it: a plausible holder, common practice
 
 
 class Target(ElementKind):
@@ -37,14 +37,8 @@ class Target(ElementKind):
 
     def after_read(self, reader: Reader) -> None:
         """Refuse a face that gives more than it gets."""
-        if self.diffuse + self.specular > 1.0:
-            where = self.spans.get("specular", self.spans.get("diffuse", self.span))
-            reader.complain(
-                where,
-                f"diffuse and specular add up to {self.diffuse + self.specular:.6g}",
-                expected="at most 1 together",
-                remedy=f"set `diffuse` to {1 - self.specular:.6g} or less",
-            )
+        super().after_read(reader)
+        refuse_excess(self, ("specular", self.specular), ("diffuse", self.diffuse), reader)
 
     def geometry(self) -> Geometry:
         """Return the face and the body behind it."""

@@ -18,9 +18,9 @@ from benchlay.document.nodes import Node, Scalar
 from benchlay.document.quantity import Dimension
 from benchlay.document.record import key
 from benchlay.elements._coating import COATING, UNCOATED, Coating
+from benchlay.elements._glass import GLASS
 from benchlay.elements._kind import Branches, Bulk, ElementKind, Geometry, Glass
 from benchlay.elements._sized import (
-    GLASS,
     LENGTH_OR_ZERO,
     PlateShape,
     Sized,
@@ -28,8 +28,8 @@ from benchlay.elements._sized import (
 )
 from benchlay.elements._through import PASSING_PLATE
 
-ANGLE = Quantity(Dimension.ANGLE)
-_WAVES = Quantity(Dimension.RATIO)
+_ANGLE = Quantity(Dimension.ANGLE)
+_WAVES = Quantity(Dimension.RATIO, above=0.0)
 _WORDS = {"half": 0.5, "quarter": 0.25}
 
 
@@ -66,7 +66,7 @@ class Waveplate(Sized, ElementKind):
     retardance: float = key(
         RetardanceForm(), meaning="waves by which the slow component falls behind"
     )
-    axis_rad: float = key(ANGLE, name="axis", meaning="direction of the fast axis")
+    axis_rad: float = key(_ANGLE, name="axis", meaning="direction of the fast axis")
     design_nm: float | None = key(
         Quantity(Dimension.WAVELENGTH, above=0.0),
         default=None,

@@ -10,8 +10,8 @@ Point: TypeAlias = tuple[float, float]
 class Outline(NamedTuple):
     """An ellipse, or a convex polygon, in a face's own axes (left, up), in mm.
 
-    A polygon has `corners` (anticlockwise seen from outside); an ellipse has none,
-    but a `centre` and `radii` along left and up.
+    A polygon has `corners` (anticlockwise seen from outside), an ellipse has none. `radii`
+    are half of width and height, along left and up.
     """
 
     corners: tuple[Point, ...]
@@ -24,10 +24,14 @@ class Outline(NamedTuple):
         return not self.corners
 
     def scaled(self, factor: float) -> Outline:
-        """Return the outline drawn in by a factor about its centre."""
-        cx, cy = self.centre
-        corners = tuple((cx + factor * (x - cx), cy + factor * (y - cy)) for x, y in self.corners)
-        return Outline(corners, self.centre, (factor * self.radii[0], factor * self.radii[1]))
+        """Return the outline drawn in (or out) by a factor about its centre."""
+        return self.stretched((factor, factor))
+
+    def stretched(self, factors: Point) -> Outline:
+        """Return the outline drawn out by factors along left and up about its centre."""
+        (cx, cy), (fx, fy) = self.centre, factors
+        corners = tuple((cx + fx * (x - cx), cy + fy * (y - cy)) for x, y in self.corners)
+        return Outline(corners, self.centre, (fx * self.radii[0], fy * self.radii[1]))
 
     @property
     def half_size(self) -> Point:

@@ -17,7 +17,14 @@ def signed_area(corners: Polygon) -> float:
     return sum(ax * by - bx * ay for (ax, ay), (bx, by) in pairs) / 2
 
 
+def middle(corners: Polygon) -> Point:
+    """Return the mean of the corners; for a convex outline it lies inside."""
+    count = len(corners)
+    return sum(x for x, _ in corners) / count, sum(y for _, y in corners) / count
+
+
 def _turn(a: Point, b: Point, c: Point) -> float:
+    """Return twice the area of abc, positive for a turn to the left."""
     return (b[0] - a[0]) * (c[1] - a[1]) - (b[1] - a[1]) * (c[0] - a[0])
 
 
@@ -39,6 +46,7 @@ def _cross(a: Point, b: Point, c: Point, d: Point) -> bool:
 
 
 def _between(a: Point, b: Point, c: Point) -> bool:
+    """Whether c, on the line through a and b, lies on the segment ab."""
     return min(a[0], b[0]) <= c[0] <= max(a[0], b[0]) and min(a[1], b[1]) <= c[1] <= max(a[1], b[1])
 
 
@@ -59,7 +67,7 @@ def simple(corners: Polygon) -> bool:
 
 
 def is_convex(corners: Polygon) -> bool:
-    """Whether an anticlockwise outline has no reflex corner."""
+    """Whether a simple anticlockwise outline has no reflex corner (flat ones may be)."""
     count = len(corners)
     return all(
         _turn(corners[i - 1], corners[i], corners[(i + 1) % count]) >= 0 for i in range(count)
@@ -69,24 +77,34 @@ def is_convex(corners: Polygon) -> bool:
 def convex_pieces(corners: Polygon) -> tuple[Polygon, ...]:
     """Return convex pieces that tile a simple anticlockwise outline: itself, or its triangles.
 
-    Triangles are cut off one ear at a time (G. H. Meisters, 1975, Polygons have ears,
-    Amer. Math. Monthly 82, 648).
+    Triangles are cut off one ear at a time: every simple polygon has at least two [1]_.
+    Slivers of no area are left out.
+
+    Raises
+    ------
+    ValueError
+        If the corners run clockwise or cross one another so that no ear is left.
+
+    References
+    ----------
+    .. [1] Meisters, G. H. (1975). Polygons have ears. Amer. Math. Monthly 82(6), 648-651.
     """
     if is_convex(corners):
         return (corners,)
     rest = list(corners)
     pieces: list[Polygon] = []
     while len(rest) > 3:  # noqa: PLR2004 (a triangle is left)
-        ear = next((i for i in range(len(rest)) if _is_ear(rest, i)), 0)
+        ear = next((i for i in range(len(rest)) if _is_ear(rest, i)), None)
+        if ear is None:
+            msg = "corners must go once round a simple outline, anticlockwise"
+            raise ValueError(msg)
         pieces.append((rest[ear - 1], rest[ear], rest[(ear + 1) % len(rest)]))
         del rest[ear]
-    return (
-        *(piece for piece in pieces if signed_area(piece) > _NO_AREA_MM2),
-        tuple(rest),
-    )
+    return tuple(piece for piece in (*pieces, tuple(rest)) if signed_area(piece) > _NO_AREA_MM2)
 
 
 def _is_ear(rest: list[Point], i: int) -> bool:
+    """Whether the triangle at a corner lies inside and no other corner in it or on its rim."""
     a, b, c = rest[i - 1], rest[i], rest[(i + 1) % len(rest)]
     if _turn(a, b, c) <= 0:
         return False

@@ -13,17 +13,17 @@ Vector: TypeAlias = tuple[float, float, float]
 
 
 class Hole(NamedTuple):
-    """An opening right through a solid, between two of its patches.
+    """An opening right through a solid, given on one of its sides.
 
-    `points` are its corners on the first patch, or for a round one its centre and the ends
-    of two half axes at right angles; `through` is the vector to the other side.
+    `half_axes` are two vectors at right angles from its centre: to the middle of its sides,
+    or of a round one its radii. `through` leads from its centre to the other side.
     """
 
-    points: tuple[Vector, ...]
-    round: bool
-    through: Vector
-    patches: tuple[int, int]
     name: str
+    round: bool
+    centre: Vector
+    half_axes: tuple[Vector, Vector]
+    through: Vector
 
 
 class Solid(NamedTuple):
