@@ -45,8 +45,8 @@ _POLE = {8: 4.4, 16: 1.6}  # least (sum of distances) / L for an error below 1e-
 _RULES = {n: np.polynomial.legendre.leggauss(n) for n in _POLE}
 
 
-# From the columns of `Pieces.shape`, the middles and half lengths of panels (N, 1), and
-# nodes x in -1 .. 1: r^2 and (r x r') dt/dx at the nodes.
+# From the columns of `Pieces.shape`, the middles and half lengths of panels (N,), and
+# nodes x (n, 1) in -1 .. 1: r^2 and (r x r') dt/dx at the nodes (n, N).
 Outline = Callable[[tuple[Floats, ...], Floats, Floats, Floats], tuple[Floats, Floats]]
 
 
@@ -251,11 +251,11 @@ def _sum(pieces: Pieces, rows: Ints, count: Ints, rule: _Rule) -> Floats:
     half = 0.5 * pieces.length[row] / count[piece]
     middle = pieces.begin[row] + (2.0 * panel + 1.0) * half
     x, weight = _RULES[rule.nodes]
-    shape = tuple(column[row][:, None] for column in pieces.shape)
-    r2, cross = rule.outline(shape, middle[:, None], half[:, None], x)
+    shape = tuple(column[row] for column in pieces.shape)
+    r2, cross = rule.outline(shape, middle, half, x[:, None])
     r2 = np.maximum(r2, _TINY)
     power = -np.expm1(-2.0 * r2) if rule.near else np.exp(-2.0 * r2)
-    value = (power * cross / r2) @ weight
+    value = weight @ (power * cross / r2)
     return _collect(piece, value, len(rows))
 
 
