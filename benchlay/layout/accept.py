@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from typing import Any, NamedTuple
 
 from benchlay.document.form import Form, Reader
@@ -22,6 +23,7 @@ _MEASURED = (
     Dimension.RATIO,
 )
 _BARE = Quantity(Dimension.RATIO)
+_NUMBER = re.compile(r"[+-]?[0-9.]+([eE][+-]?[0-9]+)?")
 
 
 class Amount(NamedTuple):
@@ -41,7 +43,7 @@ class AmountForm(Form[Amount]):
             reader.refuse(node, self)
             return None
         text = node.text.strip()
-        if text[-1].isdigit() or text[-1] == ".":
+        if _NUMBER.fullmatch(text):
             number = _BARE.read(node, reader)
             return None if number is None else Amount(number, None, text)
         for dimension in _MEASURED:
