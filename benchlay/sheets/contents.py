@@ -14,6 +14,8 @@ from benchlay.sheets.title_block import TitleFields
 
 Place = tuple[float, float, float]
 
+SOURCE = "source"  # the kind of an item that light starts from
+
 
 class Shape(NamedTuple):
     """A closed outline; `bulges` as in `primitives.Polyline`."""

@@ -73,7 +73,11 @@ def figure_box(dimension: Dimension, sheet: Sheet) -> Window:
     if (end[0] - start[0]) * ux + (end[1] - start[1]) * uy < 0.0:
         start, end = end, start
     width = width_mm(label_of(dimension, sheet.decimal), dimension.height_mm)
-    middle = ((start[0] + end[0]) / 2, (start[1] + end[1]) / 2)
+    share = dimension.figure_share
+    middle = (
+        start[0] + share * (end[0] - start[0]),
+        start[1] + share * (end[1] - start[1]),
+    )
     if width > math.dist(start, end) - _ARROWS_MM:
         out = _ARROWS_MM + 1.0 + width / 2
         middle = (end[0] + ux * out, end[1] + uy * out)

@@ -13,14 +13,16 @@ from typing import NamedTuple
 
 from benchlay.sheets.primitives import Layer
 
-_PATTERNS_MM: tuple[tuple[float, ...], ...] = (
-    (8.4, 1.2, 0.35, 1.2),
-    (8.4, 1.2, 0.35, 1.2, 0.35, 1.2),
-    (0.5, 1.4),
-    (8.4, 1.2, 0.35, 1.2, 0.35, 1.2, 0.35, 1.2),
-    (8.4, 2.0),
-    (4.2, 1.2, 4.2, 1.2, 0.35, 1.2),
-    (4.2, 1.2, 0.35, 1.2),
+# Names are those that CAD programs have always used: some know patterns by name alone and
+# draw their own, so each name must mean much the same to them.
+_PATTERNS: tuple[tuple[str, tuple[float, ...]], ...] = (
+    ("DASHDOT", (8.4, 1.2, 0.35, 1.2)),
+    ("DIVIDE", (8.4, 1.2, 0.35, 1.2, 0.35, 1.2)),
+    ("DOT", (0.5, 1.4)),
+    ("BORDER", (4.2, 1.2, 4.2, 1.2, 0.35, 1.2)),
+    ("DASHEDX2", (8.4, 2.0)),
+    ("DIVIDEX2", (8.4, 1.2, 0.35, 1.2, 0.35, 1.2, 0.35, 1.2)),
+    ("DASHDOT2", (4.2, 1.2, 0.35, 1.2)),
 )
 STRAY_PATTERN_MM = (2.1, 1.05)
 
@@ -70,8 +72,8 @@ def sheet_layers(beams: Iterable[BeamLook]) -> tuple[Layer, ...]:
         Layer("HOLES", "mounting holes", "#808080", 0.13),
         Layer("ENVELOPE", "beam envelopes, 1/e2 radius", "#8c8c8c", 0.13),
         Layer("BODIES", "mounts, posts and bodies", "#404040", 0.25),
-        Layer("AXIS", "axes of elements", "#404040", 0.25, (6.0, 1.0, 0.35, 1.0)),
-        Layer("STRAY", "stray light", "#b00060", 0.35, STRAY_PATTERN_MM),
+        Layer("AXIS", "axes of elements", "#404040", 0.25, (6.0, 1.0, 0.35, 1.0), "CENTER"),
+        Layer("STRAY", "stray light", "#b00060", 0.35, STRAY_PATTERN_MM, "DASHED2"),
         *(_beam(look, n) for n, look in enumerate(ordered)),
         Layer("PANELS", "enclosure panels", width_mm=0.5),
         Layer("OPTICS", "outlines of optics", width_mm=0.5),
@@ -92,8 +94,9 @@ def sheet_layers(beams: Iterable[BeamLook]) -> tuple[Layer, ...]:
 def _beam(look: BeamLook, rank: int) -> Layer:
     name = beam_layer(look.wavelength_nm)
     meaning = f"working beams, {look.wavelength_nm:g} nm"
-    pattern = _PATTERNS_MM[rank % len(_PATTERNS_MM)]
-    return Layer(name, meaning, _hue(look.wavelength_nm), look.width_mm, pattern)
+    words, pattern = _PATTERNS[rank % len(_PATTERNS)]
+    colour = _hue(look.wavelength_nm)
+    return Layer(name, meaning, colour, look.width_mm, pattern, words)
 
 
 def _hue(wavelength_nm: float) -> str:

@@ -111,9 +111,9 @@ def shorten(text: str, room_mm: float, height_mm: float) -> str:
     low, high = 0, len(text)
     while low < high:
         middle = (low + high + 1) // 2
-        fits = width_mm(text[:middle].rstrip() + "…", height_mm) <= room_mm
+        fits = width_mm(text[:middle].rstrip() + "...", height_mm) <= room_mm
         low, high = (middle, high) if fits else (low, middle - 1)
-    return text[:low].rstrip() + "…"
+    return text[:low].rstrip() + "..."
 
 
 def wrap(text: str, room_mm: float, height_mm: float, most: int = 99) -> list[str]:
@@ -133,7 +133,7 @@ def wrap(text: str, room_mm: float, height_mm: float, most: int = 99) -> list[st
         if len(lines) > most:
             break
     if len(lines) > most:
-        rest = lines[most - 1] + " " + lines[most] + "…"
+        rest = lines[most - 1] + " " + lines[most] + "..."
         lines = [*lines[: most - 1], shorten(rest, room_mm, height_mm)]
     return lines
 

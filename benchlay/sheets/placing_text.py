@@ -20,11 +20,11 @@ from benchlay.sheets.scale import Window
 Floats = NDArray[np.float64]
 
 _RINGS_MM = (1.5, 3.5, 6.0, 9.0, 13.0, 18.0, 24.0, 32.0, 42.0, 54.0)
-_DIRECTIONS = 16
+_DIRECTIONS = 24
 _MARGIN_MM = 0.7  # ISO 128: lines keep at least this apart
 _OVERLAP = 1e4  # of two lines of lettering: never taken
-_LINE_UNDER = 8.0  # a line that runs through the lettering
-_LEADER_CROSSES = 3.0
+_LINE_UNDER = 20.0  # a line that runs through the lettering
+_LEADER_CROSSES = 2.0
 _LEADER_THROUGH = 60.0  # a leader through other lettering
 _PER_MM = 0.25
 _GOOD = 4.0  # cheap enough to stop looking further out
@@ -69,6 +69,11 @@ class Crowd:
         """Let tags rather not stand on a line, nor leaders cross it."""
         ends = [*points[1:], points[0]] if closed else points[1:]
         self._segments += [(*a, *b) for a, b in zip(points, ends, strict=False)]
+
+    def lines_through(self, box: Window) -> int:
+        """Return how many lines run through a box."""
+        lines = np.array(self._segments, dtype=np.float64).reshape(-1, 4)
+        return int(_runs_through(lines, np.array([box])).sum())
 
     def place(self, size_mm: Point, anchors: Iterable[tuple[Point, float]]) -> Place | None:
         """Find a place for a box of lettering and take it.

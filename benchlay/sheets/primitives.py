@@ -61,6 +61,7 @@ class Layer(NamedTuple):
     colour: str = "#000000"  # always #rrggbb
     width_mm: float = 0.25  # on paper
     pattern_mm: tuple[float, ...] = ()  # dash, gap, dash, gap, … on paper; empty: continuous
+    pattern_name: str = ""  # for readers that know patterns by the trade's names only
 
 
 class Line(NamedTuple):
@@ -136,6 +137,7 @@ class Dimension(NamedTuple):
     text: str | None = None
     decimals: int = 1
     height_mm: float = 3.5
+    figure_share: float = 0.5  # where on the line the figure stands
 
 
 class Block(NamedTuple):

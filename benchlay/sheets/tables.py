@@ -103,7 +103,7 @@ def _heading(words: str, left: float, top: float, width: float) -> Text:
 
 
 def _missing(rest: int, elsewhere: str, width: float) -> str:
-    return shorten(f"… and {rest} more: see {elsewhere}", width - 2 * _PAD_MM, SMALL_MM)
+    return shorten(f"... and {rest} more: see {elsewhere}", width - 2 * _PAD_MM, SMALL_MM)
 
 
 def _lettering(content: Table, row: list[list[str]], left: float, top: float) -> Iterator[Text]:

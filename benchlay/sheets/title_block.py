@@ -1,7 +1,7 @@
 """The title block, after the fields of ISO 7200 (from memory), 180 mm wide, bottom right.
 
-Nothing is made smaller to fit. A long title runs on in the line of the supplementary title,
-and what still does not fit is cut with an ellipsis.
+A value that is too long at 3,5 mm is written at 2,5 mm, never lower. A long title runs on in
+the line of the supplementary title. What still does not fit is cut, and three points say so.
 """
 
 from __future__ import annotations
@@ -10,17 +10,24 @@ from collections.abc import Iterator
 from typing import NamedTuple
 
 from benchlay.sheets.frame import rectangle
-from benchlay.sheets.lettering import MIDDLE_MM, SMALL_MM, shorten, wrap
+from benchlay.sheets.lettering import (
+    MIDDLE_MM,
+    SMALL_MM,
+    plain,
+    shorten,
+    width_mm,
+    wrap,
+)
 from benchlay.sheets.primitives import Circle, Line, Point, Polyline, Primitive, Text
 from benchlay.sheets.scale import Window, frame_of
 
 WIDTH_MM = 180.0
-ROW_MM = 9.0
+ROW_MM = 10.0
 HEIGHT_MM = 4 * ROW_MM
 _INSET_MM = 1.2
-_CAPTION_MM = 6.0  # base line of a cell's caption above its foot
-_VALUE_MM = 1.5
-NOTHING = "–"  # a field that the layout leaves out is seen to be empty
+_CAPTION_MM = 6.5  # base line of a cell's caption above its foot
+_VALUE_MM = 1.9
+NOTHING = "-"  # a field that the layout leaves out is seen to be empty
 
 
 class TitleFields(NamedTuple):
@@ -55,7 +62,7 @@ def title_block(fields: TitleFields, size_mm: Point) -> Iterator[Primitive]:
         if row:
             yield Line("TITLE", (left, foot), (inner.right, foot))
         yield from _row(cells, left, foot)
-    yield from _projection(fields.projection, (inner.right - 20.0, low + 3.5 * ROW_MM))
+    yield from _projection(fields.projection, (inner.right - 10.0, low + 3 * ROW_MM + 3.0))
 
 
 def _rows(fields: TitleFields) -> list[list[_Cell]]:
@@ -64,9 +71,9 @@ def _rows(fields: TitleFields) -> list[list[_Cell]]:
     title, more = lines[0], (lines[1] if len(lines) > 1 else "")
     return [
         [
-            _Cell("Owner", fields.owner, 60.0),
+            _Cell("Owner", fields.owner, 90.0),
             _Cell("Document type", fields.document_type, 60.0),
-            _Cell("Projection", " ", 60.0),
+            _Cell("Projection", " ", 30.0),
         ],
         [_Cell("Title", title, width), _Cell("Drawing number", fields.number, 60.0)],
         [
@@ -92,9 +99,13 @@ def _row(cells: list[_Cell], left: float, foot: float) -> Iterator[Primitive]:
             yield Line("TITLE", (x, foot), (x, foot + ROW_MM))
         at = (x + _INSET_MM, foot + _CAPTION_MM)
         yield Text("NOTES", at, shorten(cell.caption, room, SMALL_MM), SMALL_MM)
-        value = shorten(cell.value or NOTHING, room, MIDDLE_MM)
+        value = cell.value or NOTHING
+        # The smaller of the listed heights rather than words lost; nothing in between.
+        fits = width_mm(plain(value), MIDDLE_MM) <= room
+        height = MIDDLE_MM if fits else SMALL_MM
         if value.strip():
-            yield Text("TITLE", (x + _INSET_MM, foot + _VALUE_MM), value, MIDDLE_MM)
+            at = (x + _INSET_MM, foot + _VALUE_MM)
+            yield Text("TITLE", at, shorten(value, room, height), height)
         x += cell.width_mm
 
 
@@ -104,8 +115,8 @@ def _projection(name: str, at: Point) -> Iterator[Primitive]:
     First angle has the circles at the right of the cone, third angle at its left.
     """
     x, y = at
-    cone, rings = (x - 7.0, x + 7.0) if name == "first" else (x + 7.0, x - 7.0)
-    small, large, half = 1.75, 3.5, 3.5
+    cone, rings = (x - 4.0, x + 4.0) if name == "first" else (x + 4.0, x - 4.0)
+    small, large, half = 1.1, 2.2, 2.2
     corners = (
         (cone - half, y - small),
         (cone + half, y - large),
@@ -115,7 +126,7 @@ def _projection(name: str, at: Point) -> Iterator[Primitive]:
     yield Polyline("TITLE", corners, closed=True)
     yield Circle("TITLE", (rings, y), small)
     yield Circle("TITLE", (rings, y), large)
-    reach = large + 0.8
+    reach = large + 0.5
     yield Line("AXIS", (cone - reach, y), (cone + reach, y))
     yield Line("AXIS", (rings - reach, y), (rings + reach, y))
     yield Line("AXIS", (rings, y - reach), (rings, y + reach))

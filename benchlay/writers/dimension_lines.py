@@ -103,7 +103,11 @@ def _figure(dimension: Dimension, start: Point, end: Point, scale: float, decima
     ux, uy = direction_of(dimension)
     label = label_of(dimension, decimal)
     room = math.dist(start, end) / scale - 2 * ARROW_MM
-    middle = ((start[0] + end[0]) / 2, (start[1] + end[1]) / 2)
+    share = dimension.figure_share
+    middle = (
+        start[0] + share * (end[0] - start[0]),
+        start[1] + share * (end[1] - start[1]),
+    )
     width = width_mm(label, dimension.height_mm)
     if width > room:
         middle = _move(end, (ux, uy), (2 * ARROW_MM + 1.0 + width / 2) * scale)

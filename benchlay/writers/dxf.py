@@ -48,7 +48,9 @@ from benchlay.writers.dimension_lines import take_apart
 from benchlay.writers.dxf_setup import DIMSTYLE, LETTERING, NAME, document
 from benchlay.writers.dxf_text import rounded, safe_markup, safe_text
 
-_LINEAR, _ALIGNED, _OWN_BLOCK = 0, 1, 32  # DIMENSION, group code 70
+# DIMENSION, group code 70
+_LINEAR, _ALIGNED, _OWN_BLOCK, _FIGURE_MOVED = 0, 1, 32, 128
+_MIDDLE = 0.5
 _INVISIBLE = 1  # ATTDEF, group code 70
 
 _ALIGNMENT = {
@@ -251,11 +253,12 @@ class DxfBackend:
         ux, uy = direction_of(dimension)
         lift = figure.height_mm / 2 * self._sheet.scale
         middle = (figure.at[0] - lift * uy, figure.at[1] + lift * ux)
+        moved = _FIGURE_MOVED if dimension.figure_share != _MIDDLE else 0
         attributes = {
             "layer": dimension.layer,
             "dimstyle": DIMSTYLE,
             "geometry": picture,
-            "dimtype": (_ALIGNED if aligned else _LINEAR) | _OWN_BLOCK,
+            "dimtype": (_ALIGNED if aligned else _LINEAR) | _OWN_BLOCK | moved,
             "defpoint": line_ends(dimension)[1],
             "defpoint2": dimension.first,
             "defpoint3": dimension.second,

@@ -80,7 +80,9 @@ def _pattern(doc: Drawing, layer: Layer) -> str:
     if len(lengths) % 2:
         msg = f"layer {layer.name!r}: a pattern is pairs of dash and gap"
         raise ValueError(msg)
-    name = "MM_" + "_".join(f"{length:g}".replace(".", "P") for length in lengths)
+    name = layer.pattern_name or "MM_" + "_".join(
+        f"{length:g}".replace(".", "P") for length in lengths
+    )
     if name not in doc.linetypes:
         signed = [v if n % 2 == 0 else -v for n, v in enumerate(lengths)]
         words = "dash, gap in mm on paper: " + " ".join(f"{v:g}" for v in lengths)

@@ -3,6 +3,7 @@
 Run as a script with a folder to write trial.svg and trial.dxf there.
 """
 
+import itertools
 import math
 import sys
 from pathlib import Path
@@ -25,7 +26,7 @@ from benchlay.sheets.title_block import TitleFields
 GREEN, INFRARED = 532.0, 1064.0
 
 
-def mirror(name, at, came_from, goes_to, kind="mirror", diameter=25.4, thick=6.0, z=100.0):
+def mirror(name, at, came_from, goes_to, *, kind="mirror", diameter=25.4, thick=6.0, z=100.0):
     """A plate whose normal halves the angle between the beams that come and go."""
     a = math.atan2(came_from[1] - at[1], came_from[0] - at[0])
     b = math.atan2(goes_to[1] - at[1], goes_to[0] - at[0])
@@ -69,7 +70,7 @@ def target(name, at, facing_deg):
     return Item(name, "target", (*at, 100.0), facing_deg, (plate,))
 
 
-def leg(name, wavelength, a, b, stray=False, words="", ends="optic", z=100.0, z2=None):
+def leg(name, wavelength, a, b, *, stray=False, words="", ends="optic", z=100.0, z2=None):
     length = math.dist(a, b)
     radii = [(s, math.hypot(1.0, 0.004 * s)) for s in (0.0, length / 2, length)]
     end_z = z if z2 is None else z2
@@ -80,7 +81,7 @@ def path(name, wavelength, points, words):
     """Legs of a working beam; the name is repeated after each element."""
     return [
         leg(name, wavelength, a, b, words=words if n == 0 else name)
-        for n, (a, b) in enumerate(zip(points, points[1:], strict=False))
+        for n, (a, b) in enumerate(itertools.pairwise(points))
     ]
 
 
@@ -91,7 +92,7 @@ B3 = [(1150, 480), (820, 560)]
 
 def items():
     out = [source("green", B1[0], 0.0), source("infrared", B2[0], 0.0)]
-    names = iter("M1 M2 M3 M4 M5 M6 M7 M8 M9 M10".split())
+    names = iter(["M1", "M2", "M3", "M4", "M5", "M6", "M7", "M8", "M9", "M10"])
     for points in (B1, B2):
         for a, at, b in zip(points, points[1:], points[2:], strict=False):
             out.append(mirror(next(names), at, a, b))
@@ -108,12 +109,46 @@ def legs():
     out += path("B2", INFRARED, B2, "B2 1064 nm 2 W")
     out += path("B3", INFRARED, [B2[-1], B3[-1]], "B3 1064 nm 1 W")
     out += [
-        leg("S1", GREEN, (600, 700), (760, 780), True, "S1 ← M1 0,5 % 0,7 mW", "panel"),
-        leg("S1", GREEN, (760, 780), (820, 900), True, "", "panel"),
-        leg("S2", INFRARED, (1150, 480), (1150, 900), True, "S2 ← BS1 48 % 0,96 W", "panel"),
-        leg("S3", GREEN, (1350, 420), (1500, 330), True, "S3 ← L2 0,4 mW", "escaped"),
-        leg("S4", INFRARED, (500, 300), (500, 420), True, "S4 ← M7 4 mW", "dump"),
-        leg("S5", INFRARED, (800, 120), (400, -3000), True, "S5 ← M9 1,1 mW", "escaped"),
+        leg(
+            "S1",
+            GREEN,
+            (600, 700),
+            (760, 780),
+            stray=True,
+            words="S1 from M1 0,5 % 0,7 mW",
+            ends="panel",
+        ),
+        leg("S1", GREEN, (760, 780), (820, 900), stray=True, ends="panel"),
+        leg(
+            "S2",
+            INFRARED,
+            (1150, 480),
+            (1150, 900),
+            stray=True,
+            words="S2 from BS1 48 % 0,96 W",
+            ends="panel",
+        ),
+        leg(
+            "S3",
+            GREEN,
+            (1350, 420),
+            (1500, 330),
+            stray=True,
+            words="S3 from L2 0,4 mW",
+            ends="escaped",
+        ),
+        leg(
+            "S4", INFRARED, (500, 300), (500, 420), stray=True, words="S4 from M7 4 mW", ends="dump"
+        ),
+        leg(
+            "S5",
+            INFRARED,
+            (800, 120),
+            (400, -3000),
+            stray=True,
+            words="S5 from M9 1,1 mW",
+            ends="escaped",
+        ),
     ]
     return tuple(out)
 

@@ -15,7 +15,7 @@ from benchlay.sheets.frame import frame
 from benchlay.sheets.layers import BeamLook, sheet_layers
 from benchlay.sheets.lettering import LARGE_MM, SMALL_MM, shorten
 from benchlay.sheets.plan.beams import beams
-from benchlay.sheets.plan.bench import bench, hole_step, levels_note, main_dimensions
+from benchlay.sheets.plan.bench import bench, hole_step, holes, levels_note, main_dimensions
 from benchlay.sheets.plan.board import Board, lay_out
 from benchlay.sheets.plan.column import column
 from benchlay.sheets.plan.items import blocks_and_uses
@@ -36,6 +36,7 @@ from benchlay.sheets.primitives import (
 from benchlay.sheets.scale import frame_of
 from benchlay.sheets.title_block import TitleFields, title_block
 
+_FIGURE_SHARES = (0.5, 0.4, 0.6, 0.3, 0.7, 0.2, 0.8)
 _BAR_MM = 50.0  # of the scale bar, on paper
 
 
@@ -49,9 +50,6 @@ def compose(picture: Picture) -> Sheet:
     """
     board = lay_out(picture)
     empty = _sheet(picture, board)
-    dimensions = main_dimensions(picture, board)
-    for dimension in dimensions:
-        _reserve(dimension, empty, board)
     drawn = list(blocks_and_uses(picture, board))
     model: list[Primitive] = [
         *bench(picture, board),
@@ -59,11 +57,12 @@ def compose(picture: Picture) -> Sheet:
         *(use for _, use in drawn),
         *beams(picture, board),
         *limits(picture, board),
-        *dimensions,
     ]
+    model += [_reserved(dimension, empty, board) for dimension in main_dimensions(picture, board)]
     tagged = tags(picture, board)
     lettering = board.crowd.boxes
     model += hatching(picture, board, lettering)
+    model += holes(picture, board, lettering)
     paper = [
         *frame(board.choice.sheet, board.choice.size_mm),
         *title_block(_fields(picture, board), board.choice.size_mm),
@@ -107,12 +106,16 @@ def _words(picture: Picture, board: Board) -> str:
     )
 
 
-def _reserve(dimension: Dimension, sheet: Sheet, board: Board) -> None:
-    """Keep tags off a dimension and its figure."""
-    board.crowd.add_box(figure_box(dimension, sheet))
-    start, end = line_ends(dimension)
-    for ends in ((start, end), (dimension.first, start), (dimension.second, end)):
+def _reserved(dimension: Dimension, sheet: Sheet, board: Board) -> Dimension:
+    """Move a dimension's figure out of the way of beams, and keep tags off it."""
+    choices = [dimension._replace(figure_share=share) for share in _FIGURE_SHARES]
+    # The first of equals is the middle: nothing is moved without need.
+    best = min(choices, key=lambda d: board.crowd.lines_through(figure_box(d, sheet)))
+    board.crowd.add_box(figure_box(best, sheet))
+    start, end = line_ends(best)
+    for ends in ((start, end), (best.first, start), (best.second, end)):
         board.crowd_model_line(ends)
+    return best
 
 
 def _fields(picture: Picture, board: Board) -> TitleFields:
@@ -122,7 +125,7 @@ def _fields(picture: Picture, board: Board) -> TitleFields:
 
 def _view_title(picture: Picture, board: Board) -> Iterator[Primitive]:
     inner = frame_of(board.choice.size_mm)
-    words = f"PLAN 1:{board.choice.scale} – state: {picture.state}"
+    words = f"PLAN 1:{board.choice.scale}, STATE: {picture.state}"
     words = shorten(words, board.field.width - 8.0, LARGE_MM)
     at = (inner.left + 6.0, inner.high - 6.0 - LARGE_MM)
     yield Text("NOTES", at, words, LARGE_MM)
@@ -151,14 +154,14 @@ def _notes(picture: Picture, board: Board, left_out: tuple[str, ...]) -> list[st
         "Dimensions in mm, from the datum hole where one is marked. Do not scale.",
         levels_note(picture),
     ]
-    holes = picture.holes
-    if holes is not None:
-        x, y, pitch = (figure(v, 3, picture.decimal) for v in (*holes.first, holes.pitch_mm))
-        step = hole_step(holes, board.scale)
+    grid = picture.holes
+    if grid is not None:
+        x, y, pitch = (figure(v, 3, picture.decimal) for v in (*grid.first, grid.pitch_mm))
+        step = hole_step(grid, board.scale)
         every = "every hole is" if step == 1 else f"one hole in {step} each way is"
         out.append(
             f"Datum: hole column 1, row 1, at {x}, {y} from the near left corner. "
-            f"Holes {holes.thread} at {pitch} pitch; {every} drawn."
+            f"Holes {grid.thread} at {pitch} pitch; {every} drawn."
         )
     if left_out:
         out.append(names(left_out))

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Sequence
 
 from benchlay.sheets.contents import Holes, Picture
 from benchlay.sheets.dimensions import below, beside
@@ -12,11 +12,13 @@ from benchlay.sheets.primitives import (
     Dimension,
     Fill,
     Line,
+    Point,
     Polyline,
     Primitive,
     Text,
     figure,
 )
+from benchlay.sheets.scale import Window
 
 _CROSS_MM = 1.6
 _CLOSEST_MM = 9.0  # holes drawn nearer than this are specks: every second, fifth, … then
@@ -25,11 +27,10 @@ _ARROW_MM = 15.0
 
 
 def bench(picture: Picture, board: Board) -> Iterator[Primitive]:
-    """Draw the outline, the holes and the datum."""
+    """Draw the outline and the datum."""
     yield Polyline("BENCH", picture.outline, closed=True)
     board.crowd_model_line(picture.outline, closed=True)
     if picture.holes is not None:
-        yield from _holes(picture.holes, board)
         yield from _datum(picture.holes, board)
 
 
@@ -41,15 +42,28 @@ def hole_step(holes: Holes, scale: float) -> int:
     return _STEPS[-1]
 
 
-def _holes(holes: Holes, board: Board) -> Iterator[Line]:
-    """Draw small crosses; an outline of each hole would be a grey field."""
-    step, half = hole_step(holes, board.scale), board.long(_CROSS_MM) / 2
-    for row in range(0, holes.rows, step):
-        y = holes.first[1] + row * holes.pitch_mm
-        for column in range(0, holes.columns, step):
-            x = holes.first[0] + column * holes.pitch_mm
-            yield Line("HOLES", (x - half, y), (x + half, y))
-            yield Line("HOLES", (x, y - half), (x, y + half))
+def holes(picture: Picture, board: Board, lettering: Sequence[Window]) -> Iterator[Line]:
+    """Draw small crosses, none of them under lettering; outlines would be a grey field."""
+    grid = picture.holes
+    if grid is None:
+        return
+    step, half = hole_step(grid, board.scale), board.long(_CROSS_MM) / 2
+    for row in range(0, grid.rows, step):
+        y = grid.first[1] + row * grid.pitch_mm
+        for column in range(0, grid.columns, step):
+            x = grid.first[0] + column * grid.pitch_mm
+            if not _under(board.on_paper((x, y)), lettering):
+                yield Line("HOLES", (x - half, y), (x + half, y))
+                yield Line("HOLES", (x, y - half), (x, y + half))
+
+
+def _under(point: Point, boxes: Sequence[Window]) -> bool:
+    x, y = point
+    near = _CROSS_MM
+    return any(
+        left - near < x < right + near and low - near < y < high + near
+        for left, low, right, high in boxes
+    )
 
 
 def _datum(holes: Holes, board: Board) -> Iterator[Primitive]:
@@ -67,6 +81,8 @@ def _datum(holes: Holes, board: Board) -> Iterator[Primitive]:
         at = (end[0] + board.long(1.0), end[1] - board.long(1.2 * ux))
         yield Text("DATUM", at, name, 2.5)
         board.crowd_model_line((holes.first, end))
+        px, py = board.on_paper(at)
+        board.crowd.add_box(Window(px - 0.5, py - 0.5, px + 2.5, py + 3.0))
 
 
 def main_dimensions(picture: Picture, board: Board) -> list[Dimension]:

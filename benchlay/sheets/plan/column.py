@@ -125,16 +125,16 @@ def _samples(picture: Picture, x: float) -> Iterator[tuple[str, list[Primitive]]
     if any(item.coated for item in picture.items):
         yield "coated side: second line before the face", _coated_sample(middle)
     if picture.zones:
-        yield "hazard zone: limit, ticks to its inside, hatched rim", _zone_sample(x, right)
+        yield "hazard zone: limit, ticks and hatching inside", _zone_sample(x, right)
     if picture.panels:
         corners = ((x, -0.4), (right, -0.4), (right, 0.4), (x, 0.4))
         yield "panel of the enclosure", [Polyline("PANELS", corners, closed=True)]
 
 
 _ENDS = (
-    ("dump", "… that ends in a dump"),
-    ("panel", "… on a panel, wall, body or rim"),
-    ("escaped", "… that leaves the bench"),
+    ("dump", "stray that ends in a dump"),
+    ("panel", "stray that ends on a panel, wall or body"),
+    ("escaped", "stray that leaves the bench"),
 )
 
 

@@ -8,13 +8,14 @@ from typing import NamedTuple
 
 import shapely
 
-from benchlay.sheets.contents import Item, Leg, Picture, Zone
+from benchlay.sheets.contents import SOURCE, Item, Leg, PanelLine, Picture, Zone
 from benchlay.sheets.frame import rectangle
 from benchlay.sheets.lettering import LINE_PITCH, MIDDLE_MM, SMALL_MM, plain, width_mm
 from benchlay.sheets.placing_text import Place
 from benchlay.sheets.plan.beams import clipped, layer_of
 from benchlay.sheets.plan.board import Board
 from benchlay.sheets.plan.items import placed, straightened
+from benchlay.sheets.plan.panels import point_on
 from benchlay.sheets.plan.zones import seen
 from benchlay.sheets.primitives import (
     Across,
@@ -58,8 +59,10 @@ def tags(picture: Picture, board: Board) -> Tagged:
     out: list[Primitive] = []
     left_out: list[str] = []
     wanted = [
+        *_datum_tag(picture, board),
         *(_item_tag(item, picture, board) for item in picture.items),
         *_leg_tags(picture, board, stray=False),
+        *_panel_tags(picture, board),
         *_zone_tags(picture, board),
         *_leg_tags(picture, board, stray=True),
     ]
@@ -76,7 +79,34 @@ def tags(picture: Picture, board: Board) -> Tagged:
 
 
 def _height_written(item: Item, picture: Picture) -> bool:
-    return abs(item.at[2] - picture.beam_height_mm) > _LEVEL_MM
+    """Heights stand where light starts, and wherever they are not the bench's own."""
+    own = abs(item.at[2] - picture.beam_height_mm) <= _LEVEL_MM
+    return item.kind == SOURCE or not own
+
+
+def _datum_tag(picture: Picture, board: Board) -> Iterator[_Wanted]:
+    if picture.holes is not None:
+        lines = (("DATUM", "datum, hole 1-1", SMALL_MM),)
+        at = board.on_paper(picture.holes.first)
+        yield _Wanted("datum", lines, "", "DATUM", ((at, 3.0),))
+
+
+def _panel_tags(picture: Picture, board: Board) -> Iterator[_Wanted]:
+    """Name every panel and every opening in it."""
+    for panel in picture.panels:
+        length = math.dist(panel.start, panel.end)
+        words = f"{panel.name} (open)" if panel.is_open else panel.name
+        shares = [length * share for share in _ON_LEG]
+        yield _panel_tag(words, panel, shares, board)
+        for opening in panel.openings:
+            middle = (opening.start_mm + opening.end_mm) / 2
+            yield _panel_tag(f"{panel.name}.{opening.name}", panel, [middle], board)
+
+
+def _panel_tag(words: str, panel: PanelLine, along: Iterable[float], board: Board) -> _Wanted:
+    lines = (("TAGS", plain(words), SMALL_MM),)
+    places = (board.on_paper(point_on(panel, s, panel.thickness_mm)) for s in along)
+    return _Wanted(words, lines, "", "TAGS", tuple((at, 1.0) for at in places))
 
 
 def _item_tag(item: Item, picture: Picture, board: Board) -> _Wanted:
@@ -136,7 +166,7 @@ def _size(tag: _Wanted) -> Point:
     width = max(width_mm(words, height) for _, words, height in tag.lines)
     tall = _tall(tag.lines)
     if tag.border == "zone":
-        return (width + pad + _TRIANGLE_MM + 1.0, max(tall + pad, _TRIANGLE_MM))
+        return (width + pad + _TRIANGLE_MM + 1.6, max(tall + pad, _TRIANGLE_MM))
     return (width + pad, tall + pad)
 
 
@@ -156,7 +186,7 @@ def _drawn(tag: _Wanted, place: Place) -> Iterator[Primitive]:
     elif tag.border == "zone":
         yield rectangle(tag.layer, box)
         yield from _sign(tag, (box.left + 0.6, (box.low + box.high) / 2))
-        left += _TRIANGLE_MM
+        left += _TRIANGLE_MM + 0.8
     y = box.high - pad
     for n, (layer, words, height) in enumerate(tag.lines):
         y -= height if n == 0 else LINE_PITCH * height

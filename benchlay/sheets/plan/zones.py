@@ -35,6 +35,7 @@ def limits(picture: Picture, board: Board) -> Iterator[Primitive]:
         for line in shapely.get_parts(shapely.line_merge(edge)):
             points = tuple((float(x), float(y)) for x, y in line.coords)
             if len(points) > 1:
+                board.crowd_model_line(points)
                 yield Polyline("HAZARD", points)
         for tick in ticks("HAZARD", whole, board.long(_EVERY_MM), board.long(_TICK_MM)):
             yield from _inside(tick, whole, field)

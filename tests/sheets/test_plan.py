@@ -1,0 +1,187 @@
+"""The plan of a made-up bench: what a reviewer would look for, on every size of sheet."""
+
+import itertools
+import math
+
+import pytest
+import trial_bench
+
+from benchlay.sheets.contents import Leg
+from benchlay.sheets.dimensions import figure_box
+from benchlay.sheets.lettering import box_of
+from benchlay.sheets.plan import compose
+from benchlay.sheets.primitives import (
+    BlockUse,
+    Dimension,
+    Line,
+    Polyline,
+    Text,
+    to_paper,
+)
+from benchlay.sheets.scale import NothingFitsError, frame_of
+from benchlay.writers import recorder
+
+STRIP_MM = 5.0  # the zones' letters stand outside the frame
+SHEETS = {"A2": compose(trial_bench.picture()), "A3": compose(trial_bench.picture(sheet="A3"))}
+
+
+@pytest.fixture(params=SHEETS)
+def sheet(request):
+    return SHEETS[request.param]
+
+
+def boxes(sheet):
+    """Every piece of lettering on paper, with its words. Turned ones are dimensions."""
+    for primitive in (*sheet.paper, *sheet.model):
+        if isinstance(primitive, Text):
+            at = primitive.at if primitive in sheet.paper else to_paper(sheet, primitive.at)
+            (x0, y0), (x1, y1) = box_of(primitive)
+            yield primitive.text, (at[0] + x0, at[1] + y0, at[0] + x1, at[1] + y1)
+        elif isinstance(primitive, Dimension):
+            yield "dimension", tuple(figure_box(primitive, sheet))
+
+
+def on_layer(sheet, name, kind=object):
+    return [p for p in (*sheet.model, *sheet.paper) if p.layer == name and isinstance(p, kind)]
+
+
+def test_a_handy_sheet_and_a_listed_scale_are_chosen():
+    assert (SHEETS["A2"].size_mm, SHEETS["A2"].scale) == ((594.0, 420.0), 5.0)
+    assert (SHEETS["A3"].size_mm, SHEETS["A3"].scale) == ((420.0, 297.0), 10.0)
+
+
+def test_no_two_texts_overlap(sheet):
+    bad = [
+        (a, b)
+        for (a, p), (b, q) in itertools.combinations(boxes(sheet), 2)
+        if p[0] < q[2] and q[0] < p[2] and p[1] < q[3] and q[1] < p[3]
+    ]
+    assert bad == []
+
+
+def test_lettering_is_never_lower_than_two_and_a_half(sheet):
+    heights = [p.height_mm for p in (*sheet.paper, *sheet.model) if isinstance(p, Text | Dimension)]
+    assert min(heights) >= 2.5
+    assert set(heights) <= {2.5, 3.5, 5.0}
+
+
+def test_all_lettering_lies_in_the_frame(sheet):
+    left, low, right, high = frame_of(sheet.size_mm)
+    for words, (x0, y0, x1, y1) in boxes(sheet):
+        if len(words) > 2:  # the sheet's own size and zones stand in the margin
+            assert left <= x0 <= x1 <= right, words
+            assert low <= y0 <= y1 <= high, words
+
+
+def test_every_element_is_named_and_carries_its_data(sheet):
+    tags = {p.text for p in on_layer(sheet, "TAGS", Text)}
+    items = trial_bench.items()
+    assert {item.name for item in items} <= tags
+    uses = {dict(p.attributes)["TAG"]: p for p in sheet.model if isinstance(p, BlockUse)}
+    for item in items:
+        assert uses[item.name].at == item.at[:2]
+        assert dict(uses[item.name].attributes)["KIND"] == item.kind
+
+
+def test_outlines_are_the_elements_own():
+    block = next(b for b in SHEETS["A2"].blocks if b.name == "E-M1")
+    (glass,) = [p for p in block.primitives if p.layer == "OPTICS" and isinstance(p, Polyline)]
+    assert glass.points == trial_bench.items()[2].outlines[0].points
+
+
+def test_the_coated_side_is_marked_before_the_face():
+    block = next(b for b in SHEETS["A2"].blocks if b.name == "E-M1")
+    (mark,) = [p for p in block.primitives if p.layer == "OPTICS" and isinstance(p, Line)]
+    # The face is x = 0, the glass behind it; the mark is 0.9 mm off on paper at 1:5.
+    assert {mark.start, mark.end} == {(4.5, -12.7), (4.5, 12.7)}
+
+
+def test_beams_lie_on_the_layer_of_their_wavelength_true_to_size():
+    lines = on_layer(SHEETS["A2"], "BEAM_532", Line)
+    drawn = sum(math.dist(p.start, p.end) for p in lines if p in SHEETS["A2"].model)
+    expected = sum(math.dist(a, b) for a, b in itertools.pairwise(trial_bench.B1))
+    assert drawn == pytest.approx(expected)
+
+
+def test_strays_are_on_a_layer_of_their_own(sheet):
+    starts = {p.start for p in on_layer(sheet, "STRAY", Line)}
+    assert (1150, 480) in starts
+    beams = {p.start for p in on_layer(sheet, "BEAM_1064", Line)}
+    assert (1150, 480) in beams
+
+
+def test_light_that_leaves_the_sheet_ends_at_the_edge_of_the_field(sheet):
+    (low, high) = sheet.window_mm
+    for line in (p for p in sheet.model if p.layer == "STRAY" and isinstance(p, Line)):
+        for x, y in (to_paper(sheet, line.start), to_paper(sheet, line.end)):
+            assert low[0] - 1e-6 <= x <= high[0] + 1e-6
+            assert low[1] - 1e-6 <= y <= high[1] + 1e-6
+
+
+def test_envelope_is_to_scale():
+    plain = trial_bench.picture(
+        legs=(Leg("B1", 532.0, (0, 450, 100), (1000, 450, 100), radii_mm=((0, 1), (1000, 3))),)
+    )
+    edges = {p.points for p in on_layer(compose(plain), "ENVELOPE", Polyline)}
+    assert edges == {((0.0, 451.0), (1000.0, 453.0)), ((0.0, 449.0), (1000.0, 447.0))}
+
+
+def test_zones_are_hatched_at_the_rim_and_broken_for_their_label(sheet):
+    words = {p.text for p in on_layer(sheet, "HAZARD", Text)}
+    assert {"Z1", "Z2", "Z3", "MPE 10 W/m², to walls"} <= words
+    labels = [box for text, box in boxes(sheet) if text in words]
+    hatch = [p for p in sheet.model if p.layer == "HAZARD" and isinstance(p, Line)]
+    assert len(hatch) > 100
+    for line in hatch:
+        x, y = to_paper(
+            sheet, tuple((a + b) / 2 for a, b in zip(line.start, line.end, strict=True))
+        )
+        assert not any(b[0] < x < b[2] and b[1] < y < b[3] for b in labels)
+
+
+def test_the_bench_is_dimensioned_overall_and_from_its_first_hole(sheet):
+    texts = [d.text for d in sheet.model if isinstance(d, Dimension)]
+    assert texts.count("58 × 25 (= 1450)") == texts.count("34 × 25 (= 850)") == 1
+    spans = {
+        (d.first, d.second) for d in sheet.model if isinstance(d, Dimension) and d.text is None
+    }
+    assert {((0.0, 0.0), (1500.0, 0.0)), ((0.0, 0.0), (0.0, 900.0))} <= spans
+
+
+def test_heights_are_written_where_they_are_not_the_beams_own(sheet):
+    assert [p.text for p in on_layer(sheet, "LEVELS", Text)].count("+125") == 1
+    assert any("Beam height +100" in p.text for p in on_layer(sheet, "NOTES", Text))
+
+
+def test_what_does_not_fit_is_counted_not_dropped(sheet):
+    many = tuple(("A", "2026-01-01", f"change {n}", "wks") for n in range(60))
+    full = compose(trial_bench.picture(revisions=many))
+    rows = [p.text for p in on_layer(full, "REVISION", Text)]
+    shown = sum(text.startswith("change") for text in rows)
+    assert f"... and {60 - shown} more: see the layout" in rows
+
+
+def test_every_layer_of_the_drawing_is_used():
+    used = {r.primitive.layer for r in recorder.record(SHEETS["A2"])}
+    for block in SHEETS["A2"].blocks:
+        used |= {p.layer for p in block.primitives}
+    assert {layer.name for layer in SHEETS["A2"].layers} - used == {"VIEWPORT"}
+
+
+def test_what_fits_nowhere_says_so():
+    with pytest.raises(NothingFitsError, match="do not fit on A3 at 1:2"):
+        compose(trial_bench.picture(sheet="A3", scale=2))
+
+
+def test_a_bare_bench_is_drawn_too():
+    bare = trial_bench.picture(
+        items=(), legs=(), panels=(), zones=(), legend=(), revisions=(), holes=None, notes=()
+    )
+    sheet = compose(bare)
+    assert on_layer(sheet, "BENCH", Polyline)
+
+
+def test_a_leg_seen_end_on_is_a_ring():
+    up = trial_bench.picture(legs=(Leg("B1", 532.0, (500, 450, 100), (500, 450, 200)),))
+    rings = [p for p in compose(up).model if p.layer == "LEVELS"]
+    assert {p.centre for p in rings} == {(500, 450)}
