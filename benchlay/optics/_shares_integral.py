@@ -38,6 +38,7 @@ from benchlay.optics._shares_prepare import Section
 _NEAR_AXIS = 0.5  # closer than this the pole-free integrand is taken
 _PANEL = {8: 0.5, 16: 2.0}  # longest panel, in w: exp(-2 r^2) varies on the scale of w/2
 _TURN = {8: 0.8, 16: 1.6}  # longest panel of an arc, in rad
+_TOGETHER = 400  # panels at a time: their tables stay in the cache
 _TINY = 1e-300  # in place of r^2 = 0, where the integrand is 2
 # A Gauss rule of n nodes on a panel of length L errs by about rho^(-2n), where
 # rho + 1/rho = (sum of the distances of the nearest pole from the panel's ends) / (L/2).
@@ -250,13 +251,22 @@ def _sum(pieces: Pieces, rows: Ints, count: Ints, rule: _Rule) -> Floats:
     row = rows[piece]
     half = 0.5 * pieces.length[row] / count[piece]
     middle = pieces.begin[row] + (2.0 * panel + 1.0) * half
+    value = np.empty(len(row))
+    for start in range(0, len(row), _TOGETHER):
+        some = slice(start, start + _TOGETHER)
+        shape = tuple(column[row[some]] for column in pieces.shape)
+        value[some] = _panels(shape, middle[some], half[some], rule)
+    return _collect(piece, value, len(rows))
+
+
+def _panels(shape: tuple[Floats, ...], middle: Floats, half: Floats, rule: _Rule) -> Floats:
+    """Integrate over single panels."""
     x, weight = _RULES[rule.nodes]
-    shape = tuple(column[row] for column in pieces.shape)
     r2, cross = rule.outline(shape, middle, half, x[:, None])
     r2 = np.maximum(r2, _TINY)
     power = -np.expm1(-2.0 * r2) if rule.near else np.exp(-2.0 * r2)
-    value = weight @ (power * cross / r2)
-    return _collect(piece, value, len(rows))
+    value: Floats = weight @ (power * cross / r2)
+    return value
 
 
 def _straight(
