@@ -1,0 +1,240 @@
+"""Which nominal beam arrives at an item, and which one leaves it."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Sequence
+from typing import TYPE_CHECKING, NamedTuple
+
+from benchlay.document.span import Span
+from benchlay.placing.nominal import Lost, NominalRay, Standing, through
+
+if TYPE_CHECKING:
+    from benchlay.layout.layout import Element
+    from benchlay.placing.solve import Solver
+
+_SAME_MM = 1e-6  # nominal rays nearer than this, and as parallel, are one ray
+_SAME_DIRECTION = 1e-9
+_DEEPEST = 400  # items of a path looked back along; a longer chain is a fault in the layout
+
+
+class Unplaceable(Exception):  # noqa: N818 (a signal between stages, never shown)
+    """An item has no place; the problem was reported where it arose."""
+
+
+class Item(NamedTuple):
+    """One item of a path with the branch by which it is left."""
+
+    name: str
+    branch: str | None
+    wavelength_nm: float | None = None
+
+
+class Choice(NamedTuple):
+    """A ray that could be meant, and the path that brings it."""
+
+    path: tuple[Item, ...]
+    ray: NominalRay
+
+
+class Arrivals:
+    """Finds nominal rays; remembers them by path."""
+
+    def __init__(self, solver: Solver) -> None:
+        self._solver = solver
+        self._leaving: dict[tuple[Item, ...], tuple[Choice, ...]] = {}
+        self.known: dict[str, NominalRay] = {}
+        self.trying = 0
+
+    def at(self, element: Element) -> NominalRay | None:
+        """Return the nominal ray that arrives at an element; None if nothing says which.
+
+        Raises
+        ------
+        Unplaceable
+            Where the ray is ambiguous or cannot be found; the problem has been reported.
+        """
+        choices = list(self._arriving(element))
+        if not choices:
+            return None
+        wanted = element.stand.wavelength_nm
+        if wanted is not None:
+            choices = [
+                choice for choice in choices if choice.ray.wavelength_nm == wanted
+            ] or choices
+        distinct = _distinct(choices)
+        needs_one_line = element.stand.incidence == "brewster"
+        lines = sorted({choice.ray.wavelength_nm for choice in choices})
+        if len(distinct) > 1 or (needs_one_line and len(lines) > 1):
+            self._report_ambiguous(element, choices, distinct)
+            raise Unplaceable(element.name)
+        ray = distinct[0].ray
+        self.known[element.name] = ray
+        return ray
+
+    def _arriving(self, element: Element) -> Iterator[Choice]:
+        stand = element.stand
+        if stand.after:
+            path = tuple(Item(item.item, item.branch) for item in stand.after)
+            found = self.leaving(path)
+            if not found:
+                self._report_unreachable(element, path)
+                raise Unplaceable(element.name)
+            yield from found
+            return
+        for prefix in self._prefixes(element.name, None):
+            yield from self._try(prefix)
+
+    def _try(self, path: tuple[Item, ...]) -> tuple[Choice, ...]:
+        """Follow a route's path if it can be followed without what is being solved."""
+        if any(item.name in self._solver.busy for item in path):
+            return ()
+        self.trying += 1
+        failed = set(self._solver.failed)
+        try:
+            return self.leaving(path)
+        except Unplaceable:
+            return ()
+        finally:
+            self.trying -= 1
+            if self.trying:
+                self._solver.failed = failed
+
+    def _prefixes(self, name: str, branch: str | None) -> Iterator[tuple[Item, ...]]:
+        """Return the ways of routes up to an item, left by a branch (None: any)."""
+        for key in sorted(self._solver.layout.routes):
+            items = self._solver.layout.routes[key].items
+            for i, item in enumerate(items):
+                if (
+                    i
+                    and item.name == name
+                    and (branch is None or self._branch(item.name, item.branch) == branch)
+                ):
+                    yield tuple(Item(o.name, o.branch, o.wavelength_nm) for o in items[:i])
+
+    def _branch(self, name: str, branch: str | None) -> str | None:
+        element = self._solver.layout.elements.get(name)
+        return branch or (None if element is None else element.record.DEFAULT_BRANCH)
+
+    def leaving(self, path: tuple[Item, ...]) -> tuple[Choice, ...]:
+        """Return the rays that leave the last item of a path's tail.
+
+        Raises
+        ------
+        Unplaceable
+            Where an item on the way has no place.
+        """
+        known = self._leaving.get(path)
+        if known is None:
+            if len(path) > _DEEPEST:
+                raise Unplaceable(path[-1].name)
+            known = tuple(self._leave(path))
+            self._leaving[path] = known
+        return known
+
+    def _leave(self, path: tuple[Item, ...]) -> Iterator[Choice]:
+        last = path[-1]
+        solver = self._solver
+        source = solver.layout.sources.get(last.name)
+        if source is not None:
+            pose = solver.pose(last.name)
+            for line in source.lines:
+                if last.wavelength_nm in (None, line.wavelength_nm):
+                    yield Choice(path, NominalRay(pose.at, pose.axes()[0], line.wavelength_nm))
+            return
+        element = solver.layout.elements[last.name]
+        standing = Standing(last.name, solver.pose(last.name), solver.geometry(last.name))
+        ways = element.record.branches().get(self._branch(last.name, last.branch) or "", ())
+        for choice in self._before(path):
+            ray = through(choice.ray, ways, standing, solver.media)
+            if not isinstance(ray, Lost):
+                yield Choice((*choice.path, last), ray)
+
+    def _before(self, path: tuple[Item, ...]) -> Iterator[Choice]:
+        """Return the rays that arrive at the last item of a path."""
+        if len(path) > 1:
+            yield from self.leaving(path[:-1])
+            return
+        last = path[0]
+        element = self._solver.layout.elements[last.name]
+        if element.stand.after:
+            own = tuple(Item(item.item, item.branch) for item in element.stand.after)
+            yield from self.leaving(own)
+        for prefix in self._prefixes(last.name, self._branch(last.name, last.branch)):
+            yield from self._try(prefix)
+
+    def _report_ambiguous(
+        self, element: Element, choices: Sequence[Choice], distinct: Sequence[Choice]
+    ) -> None:
+        paths = sorted({_written(choice.path) for choice in distinct})
+        lines = sorted({choice.ray.wavelength_nm for choice in choices})
+        if len(paths) > 1:
+            which = "; ".join(f"after: {path}" for path in paths)
+            remedy = f"write the path that is meant, such as `after: {paths[0]}`"
+        else:
+            which = "; ".join(f"wavelength: {line:g}" for line in lines)
+            remedy = f"add the line that is meant, such as `wavelength: {lines[0]:g}`"
+        self._solver.problems.add(
+            _where(element, "after"),
+            f"more than one beam could be meant to arrive at {element.name!r}",
+            expected=f"one of these: {which}",
+            remedy=remedy,
+        )
+
+    def _report_unreachable(self, element: Element, path: tuple[Item, ...]) -> None:
+        last = path[-1]
+        why = self._why_lost(path)
+        self._solver.problems.add(
+            _where(element, "after"),
+            f"no nominal beam leaves {_label(last)!r} towards {element.name!r}: {why}",
+            expected="an item that a beam reaches and leaves by that branch",
+            remedy=f"name another item or branch in `after`, or see that a beam arrives at {last.name!r}",
+        )
+
+    def _why_lost(self, path: tuple[Item, ...]) -> str:
+        last = path[-1]
+        element = self._solver.layout.elements.get(last.name)
+        if element is None:
+            return "it emits nothing of that wavelength"
+        standing = Standing(
+            last.name, self._solver.pose(last.name), self._solver.geometry(last.name)
+        )
+        branch = self._branch(last.name, last.branch)
+        ways = element.record.branches().get(branch or "", ())
+        if not ways:
+            return f"it has no branch {branch!r}" if branch else "it does not say by which branch"
+        reasons = [
+            through(choice.ray, ways, standing, self._solver.media) for choice in self._before(path)
+        ]
+        lost = next((reason.why for reason in reasons if isinstance(reason, Lost)), None)
+        return (
+            lost
+            or f"nothing says which beam arrives at {last.name!r}: give it `after`, or name it in a route"
+        )
+
+
+def _distinct(choices: Sequence[Choice]) -> list[Choice]:
+    found: list[Choice] = []
+    for choice in choices:
+        if not any(_same(choice.ray, other.ray) for other in found):
+            found.append(choice)
+    return found
+
+
+def _same(a: NominalRay, b: NominalRay) -> bool:
+    turned = max(abs(x - y) for x, y in zip(a.direction, b.direction, strict=True))
+    moved = max(abs(x - y) for x, y in zip(a.point, b.point, strict=True))
+    return turned < _SAME_DIRECTION and moved < _SAME_MM
+
+
+def _label(item: Item) -> str:
+    if item.branch:
+        return f"{item.name}.{item.branch}"
+    return item.name if item.wavelength_nm is None else f"{item.name}.{item.wavelength_nm:g}"
+
+
+def _written(path: tuple[Item, ...]) -> str:
+    return "[" + ", ".join(_label(item) for item in path) + "]"
+
+
+def _where(element: Element, key: str) -> Span:
+    return element.spans.get(key, element.span)

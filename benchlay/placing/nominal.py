@@ -1,0 +1,174 @@
+"""The nominal chief ray through one element: from face to face, without clipping."""
+
+from __future__ import annotations
+
+from math import isnan
+from typing import NamedTuple
+
+from benchlay.elements._kind import Acts, Face, Geometry, Inside, Step
+from benchlay.geometry.axes import in_plane_axes
+from benchlay.optics.rays import reflect, refract
+from benchlay.optics.thin_lens import bend
+from benchlay.placing.media import Media
+from benchlay.placing.pose import Pose, Vector, add, dot, unit
+
+
+class NominalRay(NamedTuple):
+    """Where a chief ray leaves an item, in the bench's medium, and its unit direction."""
+
+    point: Vector
+    direction: Vector
+    wavelength_nm: float
+
+
+class Lost(NamedTuple):
+    """Why a ray does not come through."""
+
+    why: str
+
+
+class Standing(NamedTuple):
+    """An element in its place: what a ray meets."""
+
+    name: str
+    pose: Pose
+    geometry: Geometry
+
+
+_BEHIND_MM = 1e-9  # a face met less than this behind the ray counts as touched
+
+
+def through(
+    ray: NominalRay, ways: tuple[tuple[Step, ...], ...], standing: Standing, media: Media
+) -> NominalRay | Lost:
+    """Return the ray that leaves an element by one of its branches.
+
+    The way whose first face the ray enters nearest to its middle is the one taken.
+    """
+    best: tuple[float, tuple[Step, ...]] | None = None
+    for way in ways:
+        reach = _enters(ray, _face(standing, way[0][0]), standing, way[0][1])
+        if reach is not None and (best is None or reach < best[0]):
+            best = (reach, way)
+    if best is None:
+        return Lost(
+            f"the beam does not come towards {standing.name!r} from a side where this branch begins"
+        )
+    if best[0] > 1.0:
+        return Lost(f"the beam passes beside {standing.name!r}")
+    return _along(ray, best[1], standing, media)
+
+
+def _face(standing: Standing, name: str) -> Face:
+    return next(face for face in standing.geometry.faces if face.name == name)
+
+
+def _meet(ray: NominalRay, face: Face, pose: Pose) -> tuple[float, Vector, Vector]:
+    """Return the distance to a face's plane, where it is met, and its normal."""
+    normal = pose.turn(face.normal)
+    centre = pose.point(face.origin)
+    slope = dot(ray.direction, normal)
+    if abs(slope) < _BEHIND_MM:
+        return float("inf"), ray.point, normal
+    distance = dot(add(centre, ray.point, -1.0), normal) / slope
+    return distance, add(ray.point, ray.direction, distance), normal
+
+
+def _enters(ray: NominalRay, face: Face, standing: Standing, event: str) -> float | None:
+    """Return how far from the middle (1 = at the rim) the ray enters a face from outside."""
+    distance, point, normal = _meet(ray, face, standing.pose)
+    from_front = dot(ray.direction, normal) < 0.0
+    if not -_BEHIND_MM <= distance < float("inf"):
+        return None
+    if face.acts is not Acts.PASSES and not from_front:
+        return None
+    if face.acts is Acts.OPAQUE and event == "transmitted":
+        return None
+    return _reach(point, face, standing.pose)
+
+
+def _reach(point: Vector, face: Face, pose: Pose) -> float:
+    left, up = (pose.turn(axis) for axis in in_plane_axes(face.normal))
+    from_centre = add(point, pose.point(face.origin), -1.0)
+    u = dot(from_centre, left) - face.outline.centre[0]
+    v = dot(from_centre, up) - face.outline.centre[1]
+    a, b = face.outline.radii
+    if face.outline.round:
+        return ((u / a) ** 2 + (v / b) ** 2) ** 0.5
+    return max(abs(u) / a, abs(v) / b)
+
+
+def _along(
+    ray: NominalRay, way: tuple[Step, ...], standing: Standing, media: Media
+) -> NominalRay | Lost:
+    outside = media.index(None, ray.wavelength_nm)
+    glass = standing.geometry.glass
+    within = outside if glass is None else media.index(glass, ray.wavelength_nm)
+    if isnan(within):
+        return Lost(
+            f"the glass of {standing.name!r} has no known index at {ray.wavelength_nm:g} nm"
+        )
+    index = outside
+    for name, event in way:
+        face = _face(standing, name)
+        distance, point, normal = _meet(ray, face, standing.pose)
+        if not -_BEHIND_MM <= distance < float("inf"):
+            return Lost(f"the beam inside {standing.name!r} does not reach its face {name!r}")
+        behind = _other_index(face, index, outside, within)
+        if face.acts is Acts.LENS and event == "transmitted":
+            power = outside / (2.0 * face.focal_mm)
+            direction = _lensed(ray.direction, point, (index, behind, power), face, standing.pose)
+        else:
+            direction = _turned(ray.direction, normal, event, (index, behind), face)
+        if direction is None:
+            return Lost(f"the beam is totally reflected at face {name!r} of {standing.name!r}")
+        index = behind if event == "transmitted" else index
+        ray = NominalRay(point, direction, ray.wavelength_nm)
+    return ray
+
+
+def _other_index(face: Face, index: float, outside: float, within: float) -> float:
+    if face.inside is not Inside.BEHIND:
+        return index
+    return within if index == outside else outside
+
+
+def _turned(
+    direction: Vector, normal: Vector, event: str, indices: tuple[float, float], face: Face
+) -> Vector | None:
+    if face.acts is Acts.PASSES:
+        return direction
+    if event == "reflected":
+        return _vector(reflect(direction, normal))
+    bent, total = refract(direction, normal, *indices)
+    return None if bool(total) else _vector(bent)
+
+
+def _lensed(
+    direction: Vector,
+    point: Vector,
+    indices: tuple[float, float, float],
+    face: Face,
+    pose: Pose,
+) -> Vector:
+    """Bend by one face of the ideal thin lens: indices before and behind, and its power."""
+    forward, left, up = pose.axes()
+    along = dot(direction, forward)
+    from_centre = add(point, pose.point(face.origin), -1.0)
+    offset = (dot(from_centre, left), dot(from_centre, up))
+    slope = (dot(direction, left) / abs(along), dot(direction, up) / abs(along))
+    bent = bend(slope, offset, indices[2], indices[0], indices[1])
+    way = 1.0 if along > 0 else -1.0
+    total = add(
+        add((way * forward[0], way * forward[1], way * forward[2]), left, float(bent[0])),
+        up,
+        float(bent[1]),
+    )
+    result = unit(total)
+    assert result is not None
+    return result
+
+
+def _vector(array: object) -> Vector:
+    x, y, z = array.tolist()  # type: ignore[attr-defined]  # numpy arrays of three
+    return (x, y, z)

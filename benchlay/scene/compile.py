@@ -1,0 +1,253 @@
+"""Placed variants to one scene: distinct rows of faces and solids, and who has which."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+
+import numpy as np
+
+from benchlay.elements._kind import Acts, Face
+from benchlay.layout.layout import Layout
+from benchlay.layout.materials import BODY
+from benchlay.placing.media import Media
+from benchlay.placing.placed import Placed, PlacedElement, PlacedState
+
+from benchlay.scene.bulks import bulks_table
+from benchlay.scene.coatings import Figures, figures, spoken_for
+from benchlay.scene.rows import FaceRows, Frames, SolidRows
+from benchlay.scene.solids import solids_table
+from benchlay.scene.surroundings import (
+    Surrounding,
+    bench_and_room,
+    material_of,
+    sheets,
+    source_body,
+)
+from benchlay.scene.tables import CLOSE_PARTS, PART, SINK, Faces, Flags, Floats, Scene
+
+_PLATE_SINK = {"plate": "rim"}
+
+
+class Compiler:
+    """Gathers rows item by item; what states share becomes one row."""
+
+    def __init__(self, placed: Placed) -> None:
+        self.placed = placed
+        base = placed.base.layout
+        self.elements = tuple(sorted(base.elements))
+        self.sources = tuple(sorted(base.sources))
+        self.number = {name: i for i, name in enumerate(self.elements)}
+        self.names: list[str] = []
+        self.name_number: dict[str, int] = {}
+        self.frames = Frames()
+        self.faces = FaceRows()
+        self.solids = SolidRows()
+        self.hole_names: list[int] = []
+        self.items: list[PlacedElement] = []  # distinct placed elements: rows of bulks
+        self.item_of_face: list[int] = []
+        self.face_rows: list[set[int]] = [set() for _ in placed.states]
+        self.solid_rows: list[set[int]] = [set() for _ in placed.states]
+        self.wavelengths = sorted(
+            {
+                line.wavelength_nm
+                for state in placed.states
+                for source in state.sources.values()
+                for line in source.source.lines
+            }
+        )
+
+    def name(self, name: str | None) -> int:
+        """Return the number of a name; -1 for none."""
+        if name is None:
+            return -1
+        if name not in self.name_number:
+            self.name_number[name] = len(self.names)
+            self.names.append(name)
+        return self.name_number[name]
+
+    def gather(self) -> None:
+        """Add the rows of every variant."""
+        done: dict[int, tuple[list[int], list[int]]] = {}
+        surroundings: dict[object, int] = {}
+        for variant, state in enumerate(self.placed.states):
+            for key in self.elements:
+                item = state.elements[key]
+                if item.out:
+                    continue
+                rows = done.get(id(item))
+                if rows is None:
+                    rows = done[id(item)] = self._element(item, state.layout)
+                self.face_rows[variant].update(rows[0])
+                self.solid_rows[variant].update(rows[1])
+            for surrounding in _surroundings(state):
+                row = surroundings.get(surrounding)
+                if row is None:
+                    row = surroundings[surrounding] = self._surrounding(surrounding)
+                self.solid_rows[variant].add(row)
+
+    def _element(self, item: PlacedElement, layout: Layout) -> tuple[list[int], list[int]]:
+        owner = self.number[item.element.name]
+        frame = self.frames.add(item.pose.axes(), item.pose.at)
+        number = len(self.items)
+        self.items.append(item)
+        faces = []
+        for face in item.geometry.faces:
+            faces.append(self.faces.add(_with_material(face, layout), owner, frame))
+            self.item_of_face.append(number)
+        x, y, _ = item.pose.at
+        upright = self.frames.add(item.pose.upright_axes(), (x, y, 0.0))
+        boxed = () if item.holder.box is None else (item.holder.box,)
+        material = material_of(layout, item.geometry.material, BODY)
+        solids = []
+        for solid in (*item.geometry.solids, *boxed, *item.holder.upright):
+            sink = _PLATE_SINK.get(solid.part, "body")
+            own = material.specular if solid.part == "body" else 0.0
+            label = (owner, self.name(item.element.name), PART[solid.part], SINK[sink], own)
+            solids.append(self.solids.add(solid, upright if solid.upright else frame, label))
+        return faces, solids
+
+    def _surrounding(self, item: Surrounding) -> int:
+        frame = self.frames.add(item.axes, item.origin)
+        part = PART[item.solid.part]
+        label = (self._owner(item), self.name(item.name), part, SINK[item.sink], item.specular)
+        for hole in item.solid.holes:
+            self.hole_names.append(self.name(hole.name))
+        return self.solids.add(item.solid, frame, label)
+
+    def _owner(self, item: Surrounding) -> int:
+        """Number a source's body after the elements; what belongs to nobody comes last."""
+        if item.solid.part == "source":
+            return len(self.elements) + self.sources.index(item.name or "")
+        return len(self.elements) + len(self.sources)
+
+    def present(self, rows: list[set[int]], count: int) -> Flags:
+        """Return which variant has which row."""
+        table = np.zeros((len(rows), count), dtype=np.bool_)
+        for variant, owned in enumerate(rows):
+            table[variant, list(owned)] = True
+        return table
+
+
+def _with_material(face: Face, layout: Layout) -> Face:
+    if face.material is None:
+        return face
+    return face._replace(specular=material_of(layout, face.material, BODY).specular)
+
+
+def _surroundings(state: PlacedState) -> Sequence[Surrounding]:
+    bodies = (source_body(state.sources[name]) for name in sorted(state.sources))
+    return [
+        *bench_and_room(state.layout),
+        *sheets(state.layout),
+        *(body for body in bodies if body is not None),
+    ]
+
+
+def compile_scene(placed: Placed) -> Scene:
+    """Return the scene of all states of a placed layout."""
+    compiler = Compiler(placed)
+    compiler.gather()
+    base = placed.base.layout
+    waves = np.array(compiler.wavelengths)
+    spoken = spoken_for(base, compiler.wavelengths)
+    faces, inside = _faces_table(compiler, spoken)
+    outside = np.array([placed.media.index(None, nm) for nm in compiler.wavelengths])
+    solids = solids_table(
+        compiler.solids,
+        compiler.frames,
+        compiler.hole_names,
+        compiler.present(compiler.solid_rows, len(compiler.solids.solids)),
+    )
+    return Scene(
+        tuple(state.name for state in placed.states),
+        tuple(compiler.names),
+        compiler.elements,
+        compiler.sources,
+        FACE_NAMES,
+        waves,
+        outside,
+        inside,
+        faces,
+        solids,
+        bulks_table(compiler.items, compiler.wavelengths, spoken),
+        np.array(compiler.item_of_face, dtype=np.int64),
+        np.array(
+            [compiler.name(compiler.elements[owner]) for owner in compiler.faces.owners],
+            dtype=np.int64,
+        ),
+        np.eye(len(compiler.elements), dtype=np.float32)[faces.owner],
+        np.isin(solids.part, [PART[part] for part in CLOSE_PARTS]),
+        max(state.layout.limits.reach_mm for state in placed.states),
+    )
+
+
+FACE_NAMES = ("front", "back", "left", "right", "diagonal", "opening")
+
+
+def _faces_table(compiler: Compiler, spoken: dict[str, frozenset[float]]) -> tuple[Faces, Floats]:
+    rows = compiler.faces
+    origin, left, up, normal = rows.axes(compiler.frames)
+    faces = rows.faces
+    inside = np.array(
+        [_inside_indices(compiler, i) for i in range(len(faces))], dtype=np.float64
+    ).reshape(len(faces), -1)
+    per_wave = [
+        [figures(face.coating, nm, spoken[compiler.elements[owner]]) for nm in compiler.wavelengths]
+        for face, owner in zip(faces, rows.owners, strict=True)
+    ]
+    power, curvature = _lens_tables(compiler, inside)
+    table = Faces(
+        np.array(rows.owners, dtype=np.int64),
+        np.array([FACE_NAMES.index(face.name) for face in faces], dtype=np.int64),
+        origin,
+        left,
+        up,
+        normal,
+        np.array([face.outline.round for face in faces], dtype=np.bool_),
+        _pairs([face.outline.centre for face in faces]),
+        _pairs([face.outline.radii for face in faces]),
+        _pairs([face.clear.radii for face in faces]),
+        np.array([face.clear.round for face in faces], dtype=np.bool_),
+        np.array([face.acts for face in faces], dtype=np.int64),
+        np.array([face.inside for face in faces], dtype=np.int64),
+        np.array([SINK[face.sink] for face in faces], dtype=np.int64),
+        np.array([SINK[face.beside] for face in faces], dtype=np.int64),
+        np.array([face.specular for face in faces], dtype=np.float64),
+        power,
+        curvature,
+        *_figure_tables(per_wave, len(compiler.wavelengths)),
+        compiler.present(compiler.face_rows, len(faces)),
+    )
+    return table, inside
+
+
+def _pairs(values: list[tuple[float, float]]) -> Floats:
+    return np.array(values, dtype=np.float64).reshape(-1, 2)
+
+
+def _inside_indices(compiler: Compiler, row: int) -> list[float]:
+    media: Media = compiler.placed.media
+    glass = compiler.items[compiler.item_of_face[row]].geometry.glass
+    return [media.index(glass, nm) for nm in compiler.wavelengths]
+
+
+def _figure_tables(per_wave: list[list[Figures]], waves: int) -> list[np.ndarray]:
+    flat = [figure for row in per_wave for figure in row]
+    shape = (len(per_wave), waves)
+    kinds = (np.int64, np.float64, np.float64, np.float64, np.float64, np.complex128, np.bool_)
+    return [
+        np.array([figure[i] for figure in flat], dtype=kind).reshape(shape)
+        for i, kind in enumerate(kinds)
+    ]
+
+
+def _lens_tables(compiler: Compiler, inside: Floats) -> tuple[Floats, Floats]:
+    """Return power and curvature of each lens face: half of n/f, and what bends that much."""
+    outside = np.array([compiler.placed.media.index(None, nm) for nm in compiler.wavelengths])
+    focal = np.array(
+        [face.focal_mm if face.acts is Acts.LENS else np.inf for face in compiler.faces.faces]
+    )
+    power = outside / (2.0 * focal[:, None])
+    step = inside - outside
+    curvature = np.divide(power, step, out=np.zeros_like(power), where=step != 0.0)
+    return power, curvature

@@ -1,0 +1,218 @@
+"""Where a beam is cut: gathers the bodies in a cross-section and shares the power out.
+
+Runs only for the beams beside which a body comes near, or whose optic does not cover them.
+Everything is worked out in the beam's scaled coordinates, in which its flow lines are
+points; `optics.shares` divides them.
+"""
+
+from __future__ import annotations
+
+from typing import NamedTuple
+
+import numpy as np
+
+from benchlay.elements._kind import Acts, Inside
+from benchlay.optics.shares import partition
+from benchlay.scene.tables import PART, SINK, Flags, Floats, Ints, Scene
+from benchlay.tracing.front import OUTSIDE, Front
+from benchlay.tracing.hits import FACE, SOLID, Hits
+from benchlay.tracing.silhouettes import (
+    CORE,
+    HOLE,
+    OPTIC,
+    Outlines,
+    cylinder_sides,
+    disc_outlines,
+    face_outlines,
+    hole_outlines,
+    patch_outlines,
+)
+
+
+class Landings(NamedTuple):
+    """Power that lands beside the core: one row a beam and body."""
+
+    beam: Ints  # (K,) in the front
+    sink: Ints  # (K,) number in SINKS
+    name: Ints  # (K,) number in Scene.names
+    power: Floats  # (K,) W
+
+
+class Spills(NamedTuple):
+    """Power that passes beside one optic and lands inside the clear region of another."""
+
+    beam: Ints
+    face: Ints
+    power: Floats
+
+
+class Cut(NamedTuple):
+    """What the cross-sections of a generation give.
+
+    `core` is the power that is left to the chief ray's own hit, `kept` the share of the
+    unclipped beam that this is.
+    """
+
+    core: Floats  # (N,)
+    kept: Floats  # (N,)
+    landings: Landings
+    spills: Spills
+
+
+def cut(front: Front, scene: Scene, hits: Hits, beams: Ints, reach: Floats) -> Cut:
+    """Share out the power of some beams (`beams`, ascending) of a front.
+
+    Parameters
+    ----------
+    front, hits : Front, Hits
+        The generation, after what happens inside optics on the way.
+    beams : (n,) ndarray of int
+        Rows of the front to be cut.
+    reach : (n,) ndarray of float64
+        Radius in scaled coordinates outside which the share does not count.
+    """
+    core, kept = front.power.copy(), front.kept.copy()
+    if not len(beams):
+        return Cut(core, kept, _no_landings(), Spills(*_nothing()))
+    outlines = gather(front, scene, hits, beams, reach)
+    divided = partition(outlines.shapes(), len(beams))
+    share = divided.share
+    whole = front.power[beams] / front.kept[beams]
+    is_core = outlines.role == CORE
+    mine = np.bincount(outlines.problem[is_core], share[is_core], minlength=len(beams))
+    nothing_met = hits.kind[beams] == 0
+    mine = np.where(nothing_met, mine + divided.free, mine)
+    beside = ~is_core & (outlines.role != HOLE)
+    blocked = np.bincount(outlines.problem[beside], share[beside], minlength=len(beams))
+    blocked = np.where(nothing_met, blocked, blocked + divided.free)
+    gone = 1.0 - front.kept[beams]
+    # A beam cut before: only what exceeds the earlier loss is lost now, since the power
+    # beside the edges that cut it is not there any more.
+    factor = np.where(blocked > gone, (blocked - gone) / np.where(blocked > 0.0, blocked, 1.0), 0.0)
+    kept[beams] = np.where(blocked > gone, mine, front.kept[beams])
+    core[beams] = kept[beams] * whole
+    power = share * (factor * whole)[outlines.problem]
+    free = np.where(nothing_met, 0.0, divided.free * factor * whole)
+    return Cut(
+        core,
+        kept,
+        _landings(outlines, power, free, beams, beside, front),
+        _spills(outlines, power, beams),
+    )
+
+
+def _nothing() -> tuple[Ints, Ints, Floats]:
+    none = np.zeros(0, dtype=np.int64)
+    return none, none, np.zeros(0)
+
+
+def _no_landings() -> Landings:
+    none, _, power = _nothing()
+    return Landings(none, none, none, power)
+
+
+def _landings(
+    outlines: Outlines, power: Floats, free: Floats, beams: Ints, beside: Flags, front: Front
+) -> Landings:
+    rows = np.flatnonzero(beside & (outlines.role != OPTIC) & (power > 0.0))
+    passing = np.flatnonzero(free > 0.0)
+    # Inside glass what misses the clear region meets the barrel; outside it goes on for good.
+    inside = front.within[beams[passing]] != OUTSIDE
+    sink = np.where(inside, SINK["rim"], SINK["escaped"])
+    name = np.where(inside, outlines.inside_name[passing], -1)
+    return Landings(
+        np.concatenate((beams[outlines.problem[rows]], beams[passing])),
+        np.concatenate((outlines.sink[rows], sink)),
+        np.concatenate((outlines.name[rows], name)),
+        np.concatenate((power[rows], free[passing])),
+    )
+
+
+def _spills(outlines: Outlines, power: Floats, beams: Ints) -> Spills:
+    rows = np.flatnonzero((outlines.role == OPTIC) & (power > 0.0))
+    return Spills(beams[outlines.problem[rows]], outlines.face[rows], power[rows])
+
+
+def gather(front: Front, scene: Scene, hits: Hits, beams: Ints, reach: Floats) -> Outlines:
+    """Return all outlines that matter in the cross-sections of some beams."""
+    part = front.take(beams)
+    kind, row = hits.kind[beams], hits.row[beams]
+    met = np.where(kind == FACE, scene.faces.owner[np.where(kind == FACE, row, 0)], -2)
+    inside = part.within != OUTSIDE
+    radius = _radius_bound(part, reach)
+    faces = _faces_in_reach(part, scene, hits, beams, radius, inside)
+    solids = _solids_in_reach(part, scene, radius, met) & ~inside[:, None]
+    own_solid = np.where(kind == SOLID, row, -1)
+    pieces = [
+        face_outlines(part, scene, faces, kind == FACE, row, reach),
+        *_solid_outlines(part, scene, solids, met, own_solid, reach),
+    ]
+    return Outlines.joined([piece for piece in pieces if len(piece.problem)], scene, part, row)
+
+
+def _radius_bound(part: Front, reach: Floats) -> Floats:
+    """Return (n, 3): coefficients of a bound c0 + c1 z + c2 z² of the squared radius at z, mm²."""
+    m = part.moments
+    scale = 4.0 * reach * reach
+    return np.stack(
+        (
+            scale * (m[0] + m[2]),
+            scale * 2.0 * (m[3] + m[6]) / part.index,
+            scale * (m[7] + m[9]) / part.index**2,
+        ),
+        axis=1,
+    )
+
+
+def _in_reach(part: Front, centre: Floats, size: Floats, bound: Floats) -> Flags:
+    away = centre - part.position[:, None, :]
+    z = np.einsum("nmi,ni->nm", away, part.direction)
+    square = np.einsum("nmi,nmi->nm", away, away) - z * z
+    far = np.maximum(z + size, 0.0)
+    near = np.maximum(z - size, 0.0)
+    radius2 = np.maximum(
+        bound[:, :1] + bound[:, 1:2] * far + bound[:, 2:] * far * far,
+        bound[:, :1] + bound[:, 1:2] * near + bound[:, 2:] * near * near,
+    )
+    apart = np.sqrt(np.maximum(square, 0.0)) - size
+    close: Flags = (apart < np.sqrt(np.maximum(radius2, 0.0))) & (z + size > 0.0)
+    return close
+
+
+def _faces_in_reach(
+    part: Front, scene: Scene, hits: Hits, beams: Ints, bound: Floats, inside: Flags
+) -> Flags:
+    f = scene.faces
+    size = np.sqrt(np.einsum("ij,ij->i", f.radii, f.radii)) + np.abs(f.middle).sum(axis=1)
+    close = _in_reach(part, f.origin, size, bound) & f.present[part.variant]
+    slope = hits.faces.slope[beams]
+    entering = (slope < 0.0) | (f.acts == Acts.PASSES)
+    same = f.owner == part.owner[:, None]
+    close &= entering & ~same & (f.inside != Inside.BOTH) & ~inside[:, None]
+    is_face = hits.kind[beams] == FACE
+    chosen = np.flatnonzero(is_face)
+    close[chosen, hits.row[beams[chosen]]] = True
+    return close
+
+
+def _solids_in_reach(part: Front, scene: Scene, bound: Floats, met: Ints) -> Flags:
+    s = scene.solids
+    close = _in_reach(part, s.centre, s.reach, bound) & s.present[part.variant]
+    del met
+    close &= ~(scene.close & (s.owner == part.owner[:, None]))
+    return close
+
+
+def _solid_outlines(
+    part: Front, scene: Scene, solids: Flags, met: Ints, own: Ints, reach: Floats
+) -> list[Outlines]:
+    s = scene.solids
+    # Of the mount of the optic that the light goes to only the ring in the front plane counts.
+    ringed = (s.owner == met[:, None]) & (s.part == PART["mount"])
+    patches = patch_outlines(part, scene, solids, ringed, own, reach)
+    return [
+        patches,
+        disc_outlines(part, scene, solids, own, reach),
+        cylinder_sides(part, scene, solids, own, reach),
+        hole_outlines(part, scene, solids, patches, reach),
+    ]
