@@ -34,8 +34,8 @@ _PREFERENCES = (
 )
 
 COLUMN_MM = 112.0  # tables at the right
-BELOW_MM = 74.0  # title block, and two rows of dimensions under the view
-ABOVE_MM = 26.0  # title of the view and the grid's letters
+BELOW_MM = 72.0  # title block, and two rows of dimensions under the view
+ABOVE_MM = 24.0  # title of the view
 BESIDE_MM = 28.0  # a row of dimensions at the left
 
 
