@@ -71,7 +71,8 @@ def test_widths_turn_diameter_and_divergence_both(beam):
 def test_m2_of_exactly_the_least_allowed(complaints):
     def text(divergence):
         return (
-            "bench: {size: [9, 9]}\nsources:\n  a: {wavelength: 1000, power: 1 W, at: [1, 1], heading: 0, "
+            "bench: {size: [9, 9]}\nsources:\n  a: {wavelength: "
+            "1000, power: 1 W, at: [1, 1], heading: 0, "
             f"beam: {{diameter: 1, divergence: {divergence!r} mrad}}}}\n"
         )
 

@@ -52,7 +52,10 @@ def test_a_route_of_exactly_as_many_items_as_allowed(layout_of, laser):
 
 
 def test_needs(layout_of, laser):
-    needs = "{transmits: 90 %, power: 20 mW, polarization: {angle: 0, within: 2}, path: {is: 812, within: 2}}"
+    needs = (
+        "{transmits: 90 %, power: 20 mW, polarization: "
+        "{angle: 0, within: 2}, path: {is: 812, within: 2}}"
+    )
     layout = layout_of(laser + ELEMENTS + f"  r: {{path: [green, M1], needs: {needs}}}\n")
     found = layout.routes["r"].needs
     assert (found.transmits, found.power_w, found.path.is_mm, found.path.within_mm) == (

@@ -4,7 +4,10 @@ from math import pi, radians
 
 import pytest
 
-BENCH = "bench: {size: [1500, 900]}\nsources:\n  a:\n    at: [100, 450]\n    beam: {waist_radius: 0.5}\n"
+BENCH = (
+    "bench: {size: [1500, 900]}\nsources:\n  a:\n   "
+    " at: [100, 450]\n    beam: {waist_radius: 0.5}\n"
+)
 CW = BENCH + "    wavelength: 532\n    power: 150 mW\n"
 
 
@@ -19,9 +22,9 @@ def test_one_line_of_continuous_light(layout_of):
 
 
 def test_pulses_have_a_mean_power(layout_of):
-    text = (
-        BENCH
-        + "    heading: 0\n    wavelength: 532\n    pulse: {energy: 2 mJ, duration: 8 ns, rate: 10 Hz}\n"
+    text = BENCH + (
+        "    heading: 0\n    wavelength: 532\n    pulse: "
+        "{energy: 2 mJ, duration: 8 ns, rate: 10 Hz}\n"
     )
     (line,) = layout_of(text).sources["a"].lines
     assert line.power_w == pytest.approx(0.02)
@@ -29,9 +32,9 @@ def test_pulses_have_a_mean_power(layout_of):
 
 
 def test_several_lines_in_the_order_of_the_file(layout_of):
-    text = (
-        BENCH
-        + "    heading: 0\n    lines: [{wavelength: 1064, power: 2 mW}, {wavelength: 532, power: 150 mW}]\n"
+    text = BENCH + (
+        "    heading: 0\n    lines: [{wavelength: 1064, "
+        "power: 2 mW}, {wavelength: 532, power: 150 mW}]\n"
     )
     lines = layout_of(text).sources["a"].lines
     assert [(line.wavelength_nm, line.power_w) for line in lines] == [
@@ -79,10 +82,12 @@ def test_a_fed_source_in_an_opening_needs_no_heading(layout_of):
         "bench: {size: [1500, 900]}\n"
         "sources:\n"
         "  a: {wavelength: 532, power: 1 W, beam: {waist_radius: 1}, at: [1, 1], heading: 0}\n"
-        "  b: {wavelength: 532, power: 1 W, beam: {waist_radius: 1}, in: east.port, fed_by: {target: T, share: 60 %}}\n"
+        "  b: {wavelength: 532, power: 1 W, beam: {waist_radius: "
+        "1}, in: east.port, fed_by: {target: T, share: 60 %}}\n"
         "elements:\n"
         "  T: {kind: target, after: a, distance: 100}\n"
-        "enclosure: {panels: {east: {from: [0, 0], to: [9, 0], openings: {port: {along: 4, height: 100, diameter: 3}}}}}\n"
+        "enclosure: {panels: {east: {from: [0, 0], to: [9, 0], "
+        "openings: {port: {along: 4, height: 100, diameter: 3}}}}}\n"
     )
     source = layout_of(text).sources["b"]
     assert source.stand.in_opening[:2] == ("east", "port")

@@ -62,7 +62,10 @@ def test_after_is_a_path_of_items_with_branches(layout_of, laser):
 
 def test_what_moves_it_from_its_pose(stand):
     found = stand(
-        "distance: 10, offset: [1, 2, 3], yaw_error: 1 mrad, pitch_error: -2 mrad, beam_at: [1, 0], height: 90, pitch: 5, out: yes"
+
+            "distance: 10, offset: [1, 2, 3], yaw_error: 1 mrad, pitch_error: "
+            "-2 mrad, beam_at: [1, 0], height: 90, pitch: 5, out: yes"
+
     )
     assert found.offset_mm == (1.0, 2.0, 3.0)
     assert (found.yaw_error_rad, found.pitch_error_rad) == (1e-3, -2e-3)
@@ -71,17 +74,17 @@ def test_what_moves_it_from_its_pose(stand):
 
 
 def test_an_element_that_only_a_route_names_may_be_turned(layout_of, laser):
-    text = (
-        laser
-        + "elements:\n  M1: {kind: mirror, diameter: 25, metal: silver, at: [300, 450], turn: left 90}\n"
+    text = laser + (
+        "elements:\n  M1: {kind: mirror, diameter: 25, "
+        "metal: silver, at: [300, 450], turn: left 90}\n"
     )
     assert layout_of(text).elements["M1"].stand.after == ()
 
 
 def test_side_of_a_cube_and_side_of_a_reflection(layout_of, laser):
-    cube = (
-        laser
-        + "elements:\n  C: {kind: cube, reflectance: 50 %, after: green, distance: 9, incidence: 3, side: "
+    cube = laser + (
+        "elements:\n  C: {kind: cube, reflectance: 50 %, "
+        "after: green, distance: 9, incidence: 3, side: "
     )
     own = layout_of(cube + "30}\n").elements["C"]
     assert (own.record.side_mm, own.stand.side) == (30.0, "left")

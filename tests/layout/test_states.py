@@ -4,7 +4,8 @@ import pytest
 
 REST = (
     "elements:\n"
-    "  M1: {kind: mirror, diameter: 25, metal: silver, after: green, distance: 100, turn: left 90}\n"
+    "  M1: {kind: mirror, diameter: 25, metal: silver, "
+    "after: green, distance: 100, turn: left 90}\n"
     "  S1: {kind: shutter, after: M1, distance: 50, opening: 8}\n"
     "enclosure:\n"
     "  panels: {south: {from: [0, 0], to: [9, 0]}, west: {from: [0, 9], to: [0, 0]}}\n"
