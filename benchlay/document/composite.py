@@ -10,7 +10,7 @@ from benchlay.document.form import Failed, Form, Reader, show_plainly
 from benchlay.document.nodes import Mapping, Node, Scalar, Sequence
 from benchlay.document.span import Span
 from benchlay.document.texts import Name
-from benchlay.document.words import quote
+from benchlay.document.words import format_choices, quote
 
 T = TypeVar("T")
 _MANY = 1_000
@@ -229,6 +229,12 @@ class Table(Form[Entries[T]]):
     def takes(self, node: Node) -> bool:
         """Take tables."""
         return isinstance(node, Mapping)
+
+    def show(self, value: object) -> str:
+        """Write an empty table as none."""
+        if isinstance(value, Entries):
+            return format_choices(value, "and") if value else "none"
+        return show_plainly(value)
 
     def schema(self) -> dict[str, Any]:
         """Bound names by their pattern."""

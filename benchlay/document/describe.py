@@ -37,7 +37,7 @@ def reference_text(cls: type[Keyed]) -> str:
     for spec in cls.KEYS.values():
         meaning = spec.meaning
         if spec.not_yet is not None:
-            meaning += f" Not yet: {spec.not_yet}."
+            meaning = f"{meaning.rstrip('.')}. Not yet: {spec.not_yet}."
         cells = (f"`{spec.name}`", spec.form.text(), _default(spec), meaning)
         lines.append("| " + " | ".join(c.replace("|", "\\|") for c in cells) + " |")
     return "\n".join(lines) + "\n"
@@ -46,7 +46,7 @@ def reference_text(cls: type[Keyed]) -> str:
 def _property(spec: Key) -> dict[str, Any]:
     description = spec.meaning
     if not spec.required:
-        description += f" Default: {_default(spec)}."
+        description = f"{description.rstrip('.')}. Default: {_default(spec)}."
     return {**spec.form.schema(), "description": description}
 
 

@@ -11,7 +11,7 @@ from collections.abc import Mapping as AbstractMapping
 from typing import Any, ClassVar, NoReturn, Self, TypeVar, dataclass_transform
 
 from benchlay.document.describe import schema_of
-from benchlay.document.form import Failed, Form, Reader
+from benchlay.document.form import Failed, Form, Reader, show_plainly
 from benchlay.document.keys import REQUIRED, Key, key
 from benchlay.document.nodes import Mapping, Node, Scalar
 from benchlay.document.span import NOWHERE, Span
@@ -250,6 +250,10 @@ class RecordForm(Form[R]):
         shown = [k for k in keys if k.required] or keys[:1]
         inner = (f"{k.name}: {k.form.example()}".replace("'", "") for k in shown)
         return "{" + ", ".join(inner) + "}"
+
+    def show(self, value: object) -> str:
+        """Say that a default record is what its own keys' defaults make it."""
+        return "as its keys" if isinstance(value, Record) else show_plainly(value)
 
     def schema(self) -> dict[str, Any]:
         """Give the schema of the record."""

@@ -69,8 +69,8 @@ SECTIONS: tuple[tuple[str, type[Record]], ...] = (
 def reference() -> str:
     """Return the reference: a table of keys for every part and every kind."""
     parts = ["# Reference of the layout language\n"]
-    parts += [f"## `{path}`\n\n{_page(cls)}" for path, cls in SECTIONS]
-    parts += [f"## kind `{name}`\n\n{kind_text(name)}" for name in KINDS]
+    parts += [f"## {path}\n\n{_page(cls)}" for path, cls in SECTIONS]
+    parts += [f"## kind {name}\n\n{kind_text(name)}" for name in KINDS]
     return "\n".join(parts)
 
 
