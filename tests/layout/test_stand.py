@@ -62,10 +62,8 @@ def test_after_is_a_path_of_items_with_branches(layout_of, laser):
 
 def test_what_moves_it_from_its_pose(stand):
     found = stand(
-
-            "distance: 10, offset: [1, 2, 3], yaw_error: 1 mrad, pitch_error: "
-            "-2 mrad, beam_at: [1, 0], height: 90, pitch: 5, out: yes"
-
+        "distance: 10, offset: [1, 2, 3], yaw_error: 1 mrad, pitch_error: "
+        "-2 mrad, beam_at: [1, 0], height: 90, pitch: 5, out: yes"
     )
     assert found.offset_mm == (1.0, 2.0, 3.0)
     assert (found.yaw_error_rad, found.pitch_error_rad) == (1e-3, -2e-3)
