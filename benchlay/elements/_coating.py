@@ -5,12 +5,11 @@ from __future__ import annotations
 from itertools import pairwise
 from typing import Any, NamedTuple
 
-from benchlay.document.form import Form, Reader
+from benchlay.document.form import Reader
 from benchlay.document.forms import Choice, ListOf, OneOf, Quantity, RecordForm, Words
-from benchlay.document.nodes import Node, Scalar
+from benchlay.document.nodes import Mapping, Node, Scalar, describe
 from benchlay.document.quantity import Dimension
 from benchlay.document.record import Record, key
-from benchlay.document.words import quote
 from benchlay.elements._shares import SHARE
 
 METAL_NAMES = ("silver", "gold", "aluminium")
@@ -132,7 +131,7 @@ _BANDS = "a list by wavelength, as '[{from: 520, to: 545, is: 99.5 %}]'"
 _METALS = "'{metal: silver}' (or gold, aluminium)"
 
 
-class CoatingForm(Form[Coating]):
+class CoatingForm(OneOf):
     """Reads a coating.
 
     Parameters
@@ -144,18 +143,12 @@ class CoatingForm(Form[Coating]):
     """
 
     def __init__(self, *, bare: bool = True, metals: bool = True) -> None:
+        words = [Words({UNCOATED.kind: UNCOATED})] if bare else []
+        films = [RecordForm(MetalFilm)] if metals else []
+        bands = ListOf(RecordForm(ReflectedBand), min=1)
+        super().__init__(*words, SHARE, RecordForm(SharePair), *films, bands)
         self.bare = bare
         self.metals = metals
-        forms: list[Form[Any]] = [
-            SHARE,
-            RecordForm(SharePair),
-            ListOf(RecordForm(ReflectedBand), 1),
-        ]
-        if metals:
-            forms.insert(2, RecordForm(MetalFilm))
-        if bare:
-            forms.insert(0, Words({"uncoated": UNCOATED}))
-        self._forms = OneOf(*forms)
 
     def text(self) -> str:
         """Say what is expected."""
@@ -167,42 +160,39 @@ class CoatingForm(Form[Coating]):
         """Give one that may be written."""
         return "'uncoated'" if self.bare else "'99.5 %'"
 
-    def takes(self, node: Node) -> bool:
-        """Take what may be a coating."""
-        return self._forms.takes(node)
-
-    def schema(self) -> dict[str, Any]:
-        """Return the JSON Schema of a coating."""
-        return self._forms.schema()
-
     def show(self, value: object) -> str:
         """Write the default as a user would."""
         return "uncoated" if value == UNCOATED else super().show(value)
 
     def read(self, node: Node, reader: Reader) -> Coating | None:
         """Read a coating, adding what is wrong to the reader's problems."""
-        if isinstance(node, Scalar) and self._is_word(node.text):
-            self._refuse_word(node, reader)
+        if self._is_strange(node):
+            self._refuse_strange(node, reader)
             return None
         before = reader.failures
-        value = self._forms.read(node, reader)
-        if reader.failures > before or value is None:
-            return None
-        return _coating(value, reader)
+        value = super().read(node, reader)
+        return None if reader.failures > before else _coating(value, reader)
 
-    def _is_word(self, text: str) -> bool:
-        """Tell words from shares; an empty text and one in digits are left to the forms."""
-        word = text.strip()
+    def _is_strange(self, node: Node) -> bool:
+        """Tell words that are no coating, and films of metal where none can be."""
+        if isinstance(node, Mapping):
+            return not self.metals and node.get("metal") is not None
+        if not isinstance(node, Scalar):
+            return False
+        word = node.text.strip()
         bare = self.bare and word == UNCOATED.kind
         return word[:1].isalpha() and not word.startswith("OD") and not bare
 
-    def _refuse_word(self, node: Scalar, reader: Reader) -> None:
-        remedy = f"write a coating, such as {self.example()}"
-        if self.metals and node.text in METAL_NAMES:
-            remedy = f"write '{{metal: {node.text}}}'"
-        reader.complain(
-            node, f"{quote(node.text)} is not a coating", expected=self.text(), remedy=remedy
-        )
+    def _refuse_strange(self, node: Node, reader: Reader) -> None:
+        what, remedy = f"{describe(node)} is not a coating", f"such as {self.example()}"
+        if isinstance(node, Mapping):
+            what = "a film of metal is opaque, which is not what is read here"
+            remedy = f"the share that is reflected, {remedy}"
+        elif self.metals and isinstance(node, Scalar) and node.text in METAL_NAMES:
+            remedy = f"'{{metal: {node.text}}}'"
+        else:
+            remedy = f"a coating, {remedy}"
+        reader.complain(node, what, expected=self.text(), remedy=f"write {remedy}")
 
 
 def _coating(value: Any, reader: Reader) -> Coating | None:  # noqa: ANN401 (what the forms read)

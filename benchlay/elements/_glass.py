@@ -63,11 +63,12 @@ class GlassForm(Form[Glass]):
 
     def read(self, node: Node, reader: Reader) -> Glass | None:
         """Read a glass, adding what is wrong to the reader's problems."""
-        if isinstance(node, Scalar) and node.text.strip() and node.text not in GLASS_NAMES:
-            self._refuse_name(node, reader)
-            return None
-        if not self.takes(node):
+        empty = isinstance(node, Scalar) and not node.text.strip()
+        if empty or not self.takes(node):
             reader.refuse(node, self)
+            return None
+        if isinstance(node, Scalar) and node.text not in GLASS_NAMES:
+            self._refuse_name(node, reader)
             return None
         value = self._forms.read(node, reader)
         if isinstance(value, PlainIndex):

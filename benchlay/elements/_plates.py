@@ -23,7 +23,7 @@ class OpeningForm(Form[Outline]):
 
     def text(self) -> str:
         """Say what is expected."""
-        return f"{LENGTH.text()} (the diameter); or a list of two, '[width, height]'"
+        return f"a diameter, {LENGTH.text()}; or '[width, height]'"
 
     def example(self) -> str:
         """Give one that may be written."""

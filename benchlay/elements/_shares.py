@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from math import floor, log10
+from math import log10
 
 from benchlay.document.form import Reader
 from benchlay.document.forms import Quantity
@@ -14,7 +14,7 @@ from benchlay.document.words import quote
 SHARE = Quantity(Dimension.RATIO, at_least=0.0, at_most=1.0)
 USABLE = Quantity(Dimension.RATIO, above=0.0, at_most=1.0)
 
-_STEP = 1e6  # shares are shown to six decimals
+_DECIMALS = 6  # to which shares are shown
 
 
 class DensityForm(Quantity):
@@ -28,11 +28,12 @@ class DensityForm(Quantity):
         share = _share_with_unit(node.text)
         if share is None:
             return super().value(node, reader)
+        density = 0.0 - log10(share)
         reader.complain(
             node,
             f"{quote(node.text)} is a share, not an optical density",
             expected=self.text(),
-            remedy=f"write 'OD {-log10(share):.6g}', which lets {share:.6g} of the light pass",
+            remedy=f"write 'OD {density:.6g}', which lets {node.text.strip()} of the light pass",
         )
         return None
 
@@ -59,8 +60,9 @@ def refuse_excess(
     if share + rest <= 1.0:
         return
     written = [n for n in (other, name) if record.written(n)]
-    # Rounded down, so that the mend, when followed, is enough.
-    room = floor((1.0 - share) * _STEP) / _STEP
+    room = round(1.0 - share, _DECIMALS)
+    if share + room > 1.0:  # the mend, when followed, must be enough
+        room -= 10.0**-_DECIMALS
     reader.complain(
         record.span_of(written[0] if written else other),
         f"'{name}' and '{other}' add up to {share + rest:.9g}",

@@ -100,7 +100,7 @@ class Wedged(Sized):
             return
         reader.complain(
             self.span_of("wedge"),
-            f"the thin edge is {self.thickness_mm - needed:.3g} mm thick",
+            f"at the thin edge its thickness would be {self.thickness_mm - needed:.3g} mm",
             expected=f"a thickness above {needed:.4g} mm at the centre for this wedge",
             remedy=f"set 'thickness' to {ceil(10 * needed + 1) / 10:.6g} or more",
         )

@@ -10,11 +10,9 @@ names it) and goes with 1/wavelength elsewhere.
 
 from __future__ import annotations
 
-from typing import Any, ClassVar
+from typing import ClassVar
 
-from benchlay.document.form import Form, Reader
-from benchlay.document.forms import Quantity
-from benchlay.document.nodes import Node, Scalar
+from benchlay.document.forms import OneOf, Quantity, Words
 from benchlay.document.quantity import Dimension
 from benchlay.document.record import key
 from benchlay.elements._coating import COATING, UNCOATED, Coating
@@ -29,30 +27,8 @@ from benchlay.elements._sized import (
 from benchlay.elements._through import PASSING_PLATE
 
 _ANGLE = Quantity(Dimension.ANGLE)
-_WAVES = Quantity(Dimension.RATIO, above=0.0)
-_WORDS = {"half": 0.5, "quarter": 0.25}
-
-
-class RetardanceForm(Form[float]):
-    """Reads a retardance in waves: `half`, `quarter` or a number."""
-
-    def text(self) -> str:
-        """Say what is expected."""
-        return "`half`, `quarter` or a number of waves"
-
-    def example(self) -> str:
-        """Give one that may be written."""
-        return "half"
-
-    def schema(self) -> dict[str, Any]:
-        """Return the JSON Schema of a retardance."""
-        return {"anyOf": [{"enum": list(_WORDS)}, _WAVES.schema()]}
-
-    def read(self, node: Node, reader: Reader) -> float | None:
-        """Read waves, adding what is wrong to the reader's problems."""
-        if isinstance(node, Scalar) and node.text in _WORDS:
-            return _WORDS[node.text]
-        return _WAVES.read(node, reader)
+RETARDANCE = OneOf(Words({"half": 0.5, "quarter": 0.25}), Quantity(Dimension.RATIO, above=0.0))
+"""Reads a retardance in waves."""
 
 
 class Waveplate(Sized, ElementKind):
@@ -63,9 +39,7 @@ class Waveplate(Sized, ElementKind):
     DEFAULT_BRANCH = "transmitted"
     TURNS_FRONT = True
 
-    retardance: float = key(
-        RetardanceForm(), meaning="waves by which the slow component falls behind"
-    )
+    retardance: float = key(RETARDANCE, meaning="waves by which the slow component falls behind")
     axis_rad: float = key(_ANGLE, name="axis", meaning="direction of the fast axis")
     design_nm: float | None = key(
         Quantity(Dimension.WAVELENGTH, above=0.0),
