@@ -43,6 +43,7 @@ def emitted(placed: Placed, scene: Scene, ways: Ways) -> Front:
         np.zeros(count, dtype=np.int64),
         np.full(count, EMITTED),
         np.full(count, EXIT),
+        none,
         source + len(scene.elements),
         np.full(count, OUTSIDE),
         index,

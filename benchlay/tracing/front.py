@@ -26,6 +26,7 @@ class Front(NamedTuple):
     splits: Ints  # (N,)
     event: Ints  # (N,)
     face: Ints  # (N,) row of the face it left, -1 for an exit or a body
+    body: Ints  # (N,) row of the solid it left, -1 for none
     owner: Ints  # (N,) of what it left
     within: Ints  # (N,) row of the optic it is inside of, or OUTSIDE
     index: Floats  # (N,) absolute index of the medium

@@ -15,13 +15,14 @@ from benchlay.tracing.bulk import passage
 from benchlay.tracing.faces import Child, Meeting, divide, plane_of_incidence
 from benchlay.tracing.front import OUTSIDE, REFLECTED, SPILLED, TRANSMITTED, Front, join
 from benchlay.tracing.hits import FACE, NOTHING, SOLID, Hits, near, nearest
-from benchlay.tracing.section import Cut, cut
+from benchlay.tracing.section import Cut, cut, uncut
 from benchlay.tracing.ways import Ways
 
 MOST_GENERATIONS = 4000
 MOST_BEAMS = 400_000
 # Bodies are looked for out to where what lies beyond is this share of the power floor.
 _TAIL = 0.01
+_PARALLEL = 1e-9  # squared sine below which two planes count as parallel
 
 
 class Traced(NamedTuple):
@@ -62,6 +63,9 @@ class _Run:
 def run(front: Front, scene: Scene, ways: Ways, floor_w: Floats) -> Traced:
     """Trace beams until all power has landed or lies under the floor.
 
+    Dividing cross-sections has a high price a call and a low one a beam. Beams that must be
+    cut therefore wait until no others are left, and are then cut together.
+
     Parameters
     ----------
     front : Front
@@ -74,13 +78,20 @@ def run(front: Front, scene: Scene, ways: Ways, floor_w: Floats) -> Traced:
         Power below which a beam is booked and not followed, W, by wavelength.
     """
     state = _Run(scene, ways, floor_w)
+    waiting: list[Front] = []
     for _ in range(MOST_GENERATIONS):
-        if not len(front.variant) or state.count > MOST_BEAMS:
+        cutting = not len(front.variant)
+        if (cutting and not waiting) or state.count > MOST_BEAMS:
             break
-        front = _generation(front, state)
-    if len(front.variant):
-        state.bounded[np.unique(front.variant)] = True
-        _book_rest(front, state)
+        if cutting:
+            front, waiting = join(waiting), []
+        front, uncut = _generation(front, state, cutting=cutting)
+        if len(uncut.variant):
+            waiting.append(uncut)
+    rest = join([front, *waiting])
+    if len(rest.variant):
+        state.bounded[np.unique(rest.variant)] = True
+        _book_rest(rest, state)
     return _finished(state)
 
 
@@ -102,36 +113,64 @@ def _finished(state: _Run) -> Traced:
     return Traced(Beams(start, *ends), ledger, state.bounded)
 
 
-def _generation(front: Front, state: _Run) -> Front:
-    """Bring all live beams to what they meet, book what lands, return their children."""
+def _generation(front: Front, state: _Run, *, cutting: bool) -> tuple[Front, Front]:
+    """Bring live beams to what they meet, book what lands, return their children.
+
+    Also returns the beams that must be cut, untouched, unless this is their turn.
+    """
     scene = state.scene
     hits = nearest(front, scene)
     length = np.where(hits.kind == NOTHING, scene.reach_mm, hits.distance)
-    inside = front.within != OUTSIDE
+    # A beam inside glass that meets no face of its optic within the outline ends on the
+    # barrel; how far away does not matter, since nothing goes on from there.
+    length[(front.within != OUTSIDE) & (hits.kind == NOTHING)] = 0.0
+    end_moments = moments.propagate(front.moments, length, front.index)
+    wanted, reach = _to_be_cut(front, scene, hits, end_moments, state.floor_w)
+    if not cutting and wanted.any():
+        uncut, kept = front.take(wanted), np.flatnonzero(~wanted)
+        children = _advance(
+            front.take(kept), hits.take(kept), length[kept], end_moments[:, kept], None, state
+        )
+        return children, uncut
+    sections = (np.flatnonzero(wanted), reach[wanted]) if cutting else None
+    none = front.take(np.zeros(0, dtype=np.int64))
+    return _advance(front, hits, length, end_moments, sections, state), none
+
+
+def _advance(
+    front: Front,
+    hits: Hits,
+    length: Floats,
+    end_moments: Floats,
+    sections: tuple[Ints, Floats] | None,
+    state: _Run,
+) -> Front:
+    """Take beams to the end of their legs and return what leaves there."""
+    scene = state.scene
     arrived = front
-    if inside.any():
-        rows = np.flatnonzero(inside)
-        # A beam inside glass that meets no face of its optic within the outline ends on the
-        # barrel; where exactly does not matter, the element's size is far enough.
-        length = np.where(inside & (hits.kind == NOTHING), 0.0, length)
+    rows = np.flatnonzero(front.within != OUTSIDE)
+    if len(rows) and scene.bulks.kind[front.within[rows]].any():
         j, lost = passage(front.take(rows), scene, length[rows])
         whole = front.coherency.copy()
         whole[:, rows] = j
         arrived = front._replace(coherency=whole)
-        owner = scene.face_owner_name[front.face[rows]]
-        state.book(rows, SINK["absorbed"], owner, lost)
-    end_moments = moments.propagate(front.moments, length, front.index)
-    beams, reach = _to_be_cut(arrived, scene, hits, end_moments, state.floor_w)
-    divided = cut(arrived, scene, hits, beams, reach)
-    rows = divided.landings.beam
-    state.book(rows, divided.landings.sink, divided.landings.name, divided.landings.power)
+        state.book(rows, SINK["absorbed"], scene.face_owner_name[front.face[rows]], lost)
+    power = arrived.power
+    if sections is None:
+        divided = uncut(power, front.kept)
+        coherent = arrived.coherency
+    else:
+        divided = cut(arrived, scene, hits, *sections)
+        landed = divided.landings
+        state.book(landed.beam, landed.sink, landed.name, landed.power)
+        coherent = arrived.coherency * _ratio(divided.core, power)
     end = front.position + length[:, None] * front.direction
     core = arrived._replace(
         position=end,
         moments=end_moments,
         kept=divided.kept,
         optical_path=front.optical_path + front.index * length,
-        coherency=arrived.coherency * _ratio(divided.core, arrived.power),
+        coherency=coherent,
         parent=np.arange(len(length)) + state.count,
     )
     _record(front, arrived, hits, end, length, end_moments, divided, state)
@@ -146,8 +185,8 @@ def _ratio(part: Floats, whole: Floats) -> Floats:
 
 def _to_be_cut(
     front: Front, scene: Scene, hits: Hits, end_moments: Floats, floor_w: Floats
-) -> tuple[Ints, Floats]:
-    """Return the beams that something may cut, and how far out in w one has to look."""
+) -> tuple[Flags, Floats]:
+    """Tell which beams something may cut, and how far out in w one has to look."""
     power = front.power
     tail = _TAIL * floor_w[front.wave]
     share = np.clip(tail / np.maximum(power / front.kept, tail), 1e-18, 1.0)
@@ -156,8 +195,7 @@ def _to_be_cut(
     widest = reach * np.maximum(start, stop)
     wanted = near(front, scene, hits, widest) | ~_covered(scene, hits, front, reach * stop)
     wanted &= ~front.lump
-    rows = np.flatnonzero(wanted)
-    return rows, np.maximum(reach[rows], 0.5)
+    return wanted, np.maximum(reach, 0.5)
 
 
 def _radius(m: Floats) -> Floats:
@@ -182,18 +220,43 @@ def _covered(scene: Scene, hits: Hits, front: Front, radius: Floats) -> Flags:
         as_box = (left + spread <= a) & (up + spread <= b)
         on_face = np.where(f.clear_round[face], as_round, as_box)
         covered = np.where(hits.kind == FACE, on_face, covered)
-    solid = np.where(hits.kind == SOLID, hits.row, 0)
-    flat = hits.plane >= 0
-    plane = np.maximum(hits.plane, 0)
-    own = (s.plane_solid == solid[:, None]) & (np.arange(len(s.plane_solid)) != plane[:, None])
-    depth = np.where(np.isfinite(hits.distance), hits.distance, 0.0)[:, None]
-    room = np.where(own, hits.solids.gap - depth * hits.solids.slope, np.inf).min(axis=1)
-    spread = radius / np.maximum(np.abs(hits.solids.slope[beams, plane]), 1e-9)
-    pierced = np.isin(solid, s.hole_solid) | np.isin(solid, s.axis_solid)
-    on_solid = flat & (room >= spread) & ~pierced
-    covered = np.where(hits.kind == SOLID, on_solid, covered)
-    # What leaves an optic's glass for nowhere ends on its barrel.
-    return covered & ~((hits.kind == NOTHING) & (front.within != OUTSIDE) & ~front.lump & False)
+    at_solid = hits.kind == SOLID
+    if at_solid.any():
+        rows = np.flatnonzero(at_solid)
+        covered[rows] = _solid_covers(scene, hits, front, rows, radius)
+    return covered
+
+
+def _solid_covers(scene: Scene, hits: Hits, front: Front, rows: Ints, radius: Floats) -> Flags:
+    """Tell which beams land wholly on the flat side of the solid that their chief ray meets.
+
+    On that side the distance to another bounding plane is the gap to it over the sine of the
+    angle between the two; planes parallel to the side bound nothing of it.
+    """
+    s = scene.solids
+    solid, plane = hits.row[rows], np.maximum(hits.plane[rows], 0)
+    normals = s.plane_normal
+    sine2 = 1.0 - (normals[plane] @ normals.T) ** 2
+    depth = hits.distance[rows]
+    gap = hits.solids.gap[rows] - depth[:, None] * hits.solids.slope[rows]
+    bounds = (s.plane_solid == solid[:, None]) & (sine2 > _PARALLEL)
+    room2 = np.where(bounds, gap * np.abs(gap), np.inf) / np.where(bounds, sine2, 1.0)
+    spread = radius[rows] / np.maximum(np.abs(hits.solids.slope[rows, plane]), 1e-9)
+    covers: Flags = (hits.plane[rows] >= 0) & (room2.min(axis=1) >= spread * spread)
+    covers &= ~np.isin(solid, s.axis_solid)
+    if len(s.hole_solid):
+        point = front.position[rows] + depth[:, None] * front.direction[rows]
+        size = np.sqrt(np.einsum("hki,hki->h", s.hole_axes, s.hole_axes))
+        near_side = _apart(point, s.hole_centre), _apart(point, s.hole_centre + s.hole_through)
+        touched = np.minimum(*near_side) < size + spread[:, None]
+        covers &= ~(touched & (s.hole_solid == solid[:, None])).any(axis=1)
+    return covers
+
+
+def _apart(point: Floats, centre: Floats) -> Floats:
+    away = point[:, None, :] - centre
+    apart: Floats = np.sqrt(np.einsum("bhi,bhi->bh", away, away))
+    return apart
 
 
 def _record(
@@ -297,6 +360,7 @@ def _from_solids(core: Front, hits: Hits, state: _Run) -> list[Front]:
     return [
         mirrored._replace(
             face=none,
+            body=solid[shiny],
             owner=s.owner[solid[shiny]],
             node=none,
             splits=beam.splits + 1,
@@ -360,6 +424,7 @@ def _opaque(core: Front, face: Ints, rows: Ints, state: _Run) -> list[Front]:
     return [
         mirrored._replace(
             face=at,
+            body=np.full(count, -1),
             owner=f.owner[at],
             node=np.full(count, -1),
             splits=beam.splits + 1,
@@ -374,6 +439,7 @@ def _passed(core: Front, face: Ints, state: _Run, *, spilled: bool) -> Front:
     count = len(face)
     return core._replace(
         face=face,
+        body=np.full(len(face), -1),
         owner=f.owner[face],
         node=np.full(count, -1) if spilled else node,
         event=np.full(count, SPILLED if spilled else TRANSMITTED),
@@ -426,6 +492,7 @@ def _child(
     meant = (node >= 0) | state.ways.main[face, 0 if event == REFLECTED else 1]
     return core._replace(
         face=face,
+        body=np.full(len(face), -1),
         owner=f.owner[face],
         within=within,
         index=np.where(through, meeting.n_out, core.index),

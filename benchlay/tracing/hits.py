@@ -51,6 +51,17 @@ class Hits(NamedTuple):
     faces: FaceHits
     solids: SolidHits
 
+    def take(self, rows: Ints) -> Hits:
+        """Return the hits of some beams."""
+        return Hits(
+            self.kind[rows],
+            self.row[rows],
+            self.distance[rows],
+            self.plane[rows],
+            FaceHits(*(value[rows] for value in self.faces)),
+            SolidHits(*(value[rows] for value in self.solids)),
+        )
+
 
 def face_hits(front: Front, scene: Scene) -> FaceHits:
     """Meet all planes of faces; beams inside glass meet only their own optic's."""
@@ -113,6 +124,8 @@ def solid_hits(front: Front, scene: Scene, faces: FaceHits) -> SolidHits:
     _round_solids(front, s, None, enter, leave)
     candidate = s.present[front.variant] & (front.within == OUTSIDE)[:, None]
     candidate &= ~_own(front, scene, faces)
+    left = np.flatnonzero(front.body >= 0)
+    candidate[left, front.body[left]] = False
     return SolidHits(enter, leave, slope, gap, candidate)
 
 

@@ -59,6 +59,11 @@ class Cut(NamedTuple):
     spills: Spills
 
 
+def uncut(power: Floats, kept: Floats) -> Cut:
+    """Return beams of which nothing is cut away."""
+    return Cut(power, kept, _no_landings(), Spills(*_nothing()))
+
+
 def cut(front: Front, scene: Scene, hits: Hits, beams: Ints, reach: Floats) -> Cut:
     """Share out the power of some beams (`beams`, ascending) of a front.
 
@@ -73,7 +78,7 @@ def cut(front: Front, scene: Scene, hits: Hits, beams: Ints, reach: Floats) -> C
     """
     core, kept = front.power.copy(), front.kept.copy()
     if not len(beams):
-        return Cut(core, kept, _no_landings(), Spills(*_nothing()))
+        return uncut(core, kept)
     outlines = gather(front, scene, hits, beams, reach)
     divided = partition(outlines.shapes(), len(beams))
     share = divided.share
@@ -141,13 +146,13 @@ def gather(front: Front, scene: Scene, hits: Hits, beams: Ints, reach: Floats) -
     inside = part.within != OUTSIDE
     radius = _radius_bound(part, reach)
     faces = _faces_in_reach(part, scene, hits, beams, radius, inside)
-    solids = _solids_in_reach(part, scene, radius, met) & ~inside[:, None]
+    solids = _solids_in_reach(part, scene, radius) & ~inside[:, None]
     own_solid = np.where(kind == SOLID, row, -1)
     pieces = [
         face_outlines(part, scene, faces, kind == FACE, row, reach),
         *_solid_outlines(part, scene, solids, met, own_solid, reach),
     ]
-    return Outlines.joined([piece for piece in pieces if len(piece.problem)], scene, part, row)
+    return Outlines.joined(pieces, 1, scene, part)  # the second piece: flat sides
 
 
 def _radius_bound(part: Front, reach: Floats) -> Floats:
@@ -195,11 +200,12 @@ def _faces_in_reach(
     return close
 
 
-def _solids_in_reach(part: Front, scene: Scene, bound: Floats, met: Ints) -> Flags:
+def _solids_in_reach(part: Front, scene: Scene, bound: Floats) -> Flags:
     s = scene.solids
     close = _in_reach(part, s.centre, s.reach, bound) & s.present[part.variant]
-    del met
     close &= ~(scene.close & (s.owner == part.owner[:, None]))
+    left = np.flatnonzero(part.body >= 0)
+    close[left, part.body[left]] = False
     return close
 
 

@@ -48,24 +48,24 @@ class Outlines(NamedTuple):
         return Shapes(*self[:8])
 
     @staticmethod
-    def joined(pieces: list[Outlines], scene: Scene, part: Front, row: Ints) -> Outlines:
-        """Return pieces together, sorted by problem."""
+    def joined(pieces: list[Outlines], hosts: int, scene: Scene, part: Front) -> Outlines:
+        """Return pieces together, sorted by problem; piece number `hosts` has all holes in it."""
         widest = max((piece.vertices.shape[1] for piece in pieces), default=3)
-        shift = np.cumsum([0] + [len(piece.problem) for piece in pieces])
+        shift = sum(len(piece.problem) for piece in pieces[:hosts])
         columns: list[np.ndarray] = []
         for number, field in enumerate(Outlines._fields[:-1]):
             values = [piece[number] for piece in pieces]
             if field == "vertices":
                 values = [_padded(value, widest) for value in values]
             if field == "hole_of":
-                values = [np.where(v >= 0, v + s, -1) for v, s in zip(values, shift, strict=False)]
-            columns.append(np.concatenate(values) if values else _EMPTY[number])
+                values = [np.where(value >= 0, value + shift, -1) for value in values]
+            columns.append(np.concatenate(values))
         order = np.argsort(columns[0], kind="stable")
         place = np.empty(len(order), dtype=np.int64)
         place[order] = np.arange(len(order))
         columns = [column[order] for column in columns]
         columns[7] = np.where(columns[7] >= 0, place[columns[7]], -1)
-        inside = scene.face_owner_name[np.where(part.within >= 0, row, 0)]
+        inside = scene.face_owner_name[np.where(part.within >= 0, part.face, 0)]
         return Outlines(*columns, inside)
 
 
