@@ -87,6 +87,7 @@ class Compiler:
 
     def _element(self, item: PlacedElement, layout: Layout) -> tuple[list[int], list[int]]:
         owner = self.number[item.element.name]
+        self.name(item.element.name)  # what is thin and free has faces only; they book as well
         frame = self.frames.add(item.pose.axes(), item.pose.at)
         number = len(self.items)
         self.items.append(item)
