@@ -77,7 +77,9 @@ class Filter(Wedged, ElementKind):
             both = self.bands is not None
             reader.complain(
                 self.span_of("bands"),
-                "both a density and bands are given" if both else "neither a density nor bands are given",
+                "both a density and bands are given"
+                if both
+                else "neither a density nor bands are given",
                 expected="either 'density: OD 1' or 'bands: [{from: 500, to: 560, "
                 "transmits: 90 %}]'",
                 remedy="remove 'density' or 'bands'"

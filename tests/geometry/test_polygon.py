@@ -15,6 +15,8 @@ COMB = (
     (0.0, 0.0), (7.0, 0.0), (7.0, 3.0), (6.0, 1.0), (5.0, 3.0),
     (4.0, 1.0), (3.0, 3.0), (2.0, 1.0), (1.0, 3.0),
 )  # fmt: skip
+# The corner (2, 2) lies on the line that would cut off the corner (0, 0).
+TOUCHED = ((0.0, 0.0), (4.0, 0.0), (5.0, 3.0), (2.0, 2.0), (3.0, 5.0), (0.0, 4.0))
 
 
 def test_area_has_the_sign_of_the_order():
@@ -56,12 +58,16 @@ def test_a_convex_outline_is_its_own_piece():
     assert convex_pieces(SQUARE) == (SQUARE,)
 
 
-@pytest.mark.parametrize("corners", [ELL, COMB, ELL[2:] + ELL[:2]])
+@pytest.mark.parametrize("corners", [ELL, COMB, ELL[2:] + ELL[:2], TOUCHED])
 def test_pieces_are_convex_and_tile_the_outline(corners):
     pieces = convex_pieces(corners)
     assert all(is_convex(piece) and signed_area(piece) > 0.0 for piece in pieces)
     assert sum(map(signed_area, pieces)) == pytest.approx(signed_area(corners), rel=1e-12)
     assert all(_inside(middle(piece), corners) for piece in pieces)
+
+
+def test_no_corner_is_cut_off_through_another():
+    assert ((0.0, 4.0), (0.0, 0.0), (4.0, 0.0)) not in convex_pieces(TOUCHED)
 
 
 def test_pieces_of_an_ell_leave_out_its_notch():
