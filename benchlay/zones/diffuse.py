@@ -1,0 +1,207 @@
+r"""Where hazardous light lands on a matt surface: the space in front, out to the limit.
+
+The irradiance at a distance r from a small matt spot is at most :math:`\rho P/(\pi r^2)`
+(Lambert, seen along its normal), so the limit E is kept from
+
+.. math:: r = \sqrt{\rho P/(\pi E)}
+
+on. The limit of a point source is taken, which is the smaller; the full radius is taken in
+every direction of the half space in front, which is the larger hazard.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from typing import NamedTuple
+
+import numpy as np
+import shapely
+from shapely.geometry.base import BaseGeometry
+
+from benchlay.exposure.distances import diffuse_distance_m
+from benchlay.layout.materials import BODY, SHEET, Material
+from benchlay.placing.placed import PlacedState
+from benchlay.scene.tables import SINKS, Floats, Ints
+from benchlay.tracing.beams import FACE, SOLID
+from benchlay.tracing.trace import Trace
+from benchlay.zones.limits import LimitTable
+
+_MM_PER_M = 1e3
+_TOGETHER_MM = 25.0  # spots nearer than this act as one to a distant eye
+_ON_PLANE_MM = 1e-3
+_STEPS = 32  # of half a circle
+# What the layout says nothing of may be as white as can be.
+_UNSTATED = 1.0
+_DARK = frozenset({"absorbed", "below-floor", "handed-over", "escaped"})
+
+
+class Spot(NamedTuple):
+    """Light of one wavelength on one place of a surface."""
+
+    beam: int  # the strongest that lands there
+    sink: str
+    name: str | None
+    at: tuple[float, float, float]
+    normal: tuple[float, float, float] | None  # to the side that light comes from
+    power_w: float
+    reflectance: float
+    radius_mm: float
+    area: BaseGeometry
+
+
+class _Landing(NamedTuple):
+    power_w: float
+    beam: int
+    sink: str
+    name: str | None
+    at: tuple[float, float, float]
+
+
+def spots(trace: Trace, limits: LimitTable, variant: int, wave: int) -> Iterator[Spot]:
+    """Yield the places of a state where a hazardous share lands on a surface that scatters."""
+    state = trace.placed.states[variant]
+    for group in _groups(trace, variant, wave):
+        first = group[0]
+        power = sum(landing.power_w for landing in group)
+        allowed, mpe, _ = (float(v[0]) for v in limits.of(trace, np.array([first.beam])))
+        share = diffuse_share(state, first.sink, first.name)
+        if power * share <= allowed:  # the eye's aperture cannot take more than all of it
+            continue
+        if mpe > 0.0:
+            radius = _MM_PER_M * diffuse_distance_m(power, mpe, reflectance=share)
+        else:  # no limit exists: as far as anything is followed
+            radius = state.layout.limits.reach_mm
+        normal = _normal(trace, first)
+        area = _in_front(first.at, normal, radius)
+        for shadow in _shadows(state, first.at, radius):
+            area = shapely.difference(area, shadow)
+        yield Spot(first.beam, first.sink, first.name, first.at, normal, power, share, radius, area)
+
+
+def _groups(trace: Trace, variant: int, wave: int) -> list[list[_Landing]]:
+    """Return landings on one surface that lie together, the strongest of each first."""
+    s, ledger = trace.beams.start, trace.ledger
+    rows: Ints = trace.landings_of(variant)
+    rows = rows[s.wave[ledger.beam[rows]] == wave]
+    found = []
+    for row in rows.tolist():
+        beam, sink = int(ledger.beam[row]), SINKS[ledger.sink[row]]
+        name = None if ledger.name[row] < 0 else trace.scene.names[ledger.name[row]]
+        if sink not in _DARK and ledger.power[row] > 0.0:
+            at = tuple(trace.beams.end[beam].tolist())
+            found.append(_Landing(float(ledger.power[row]), beam, sink, name, at))
+    found.sort(key=lambda landing: (-landing.power_w, landing.at, landing.beam))
+    groups: list[list[_Landing]] = []
+    for landing in found:
+        home = next((g for g in groups if _together(g[0], landing)), None)
+        if home is None:
+            groups.append([landing])
+        else:
+            home.append(landing)
+    return groups
+
+
+def _together(a: _Landing, b: _Landing) -> bool:
+    same = a.sink == b.sink and a.name == b.name
+    return same and float(np.hypot.reduce(np.subtract(a.at, b.at))) < _TOGETHER_MM
+
+
+def diffuse_share(state: PlacedState, sink: str, name: str | None) -> float:
+    """Return what share of the light on a surface it scatters; what nobody states is 1."""
+    layout = state.layout
+    if sink == "panel" and layout.enclosure is not None and name is not None:
+        enclosure = layout.enclosure
+        sheet = enclosure.panels.get(name) or enclosure.lids.get(name)
+        material = None if sheet is None else enclosure.material_of(sheet)
+        return _material(state, material, SHEET).diffuse
+    item = state.elements.get(name) if name is not None else None
+    if item is None:
+        return BODY.diffuse if name in state.sources else _UNSTATED
+    own = _OWN_KEY.get(sink)
+    if own is not None:
+        return float(getattr(item.element.record, own, _UNSTATED))
+    return _material(state, item.geometry.material, BODY).diffuse
+
+
+_OWN_KEY = {"target": "diffuse", "dump": "returns"}
+
+
+def _material(state: PlacedState, name: str | None, otherwise: Material) -> Material:
+    return otherwise if name is None else state.layout.materials[name]
+
+
+def _normal(trace: Trace, landing: _Landing) -> tuple[float, float, float] | None:
+    """Return the normal of the surface a beam ends on; None where it is not known.
+
+    Only what the chief ray meets has a known place and side: what lands beside it is taken
+    to lie at the same place, with space all round.
+    """
+    b, scene = trace.beams, trace.scene
+    kind, row = int(b.end_kind[landing.beam]), int(b.end_row[landing.beam])
+    towards = b.start.direction[landing.beam]
+    if kind == FACE:
+        owner, normal = scene.face_owner_name[row], scene.faces.normal[row]
+    elif kind == SOLID:
+        owner, normal = scene.solids.name[row], _side(trace, row, np.array(landing.at), towards)
+    else:
+        return None
+    mine = owner if owner < 0 else scene.names[owner]
+    if mine != (landing.name if landing.name is not None else -1):
+        return None
+    if float(normal @ towards) > 0.0:
+        normal = -normal
+    x, y, z = normal.tolist()
+    return (x, y, z)
+
+
+def _side(trace: Trace, row: int, point: Floats, towards: Floats) -> Floats:
+    """Return the outward normal of a solid's side at a point; back along the beam if round."""
+    s = trace.scene.solids
+    planes = np.flatnonzero(s.plane_solid == row)
+    gaps = np.abs(s.plane_normal[planes] @ point - s.plane_offset[planes])
+    if not len(planes) or gaps.min() > _ON_PLANE_MM:
+        return -towards
+    normal: Floats = s.plane_normal[planes[int(np.argmin(gaps))]]
+    return normal
+
+
+def _in_front(
+    at: tuple[float, float, float], normal: tuple[float, float, float] | None, radius: float
+) -> BaseGeometry:
+    """Return half a ball seen from above: half a circle and, for a tilted side, half an ellipse."""
+    x, y, z = normal or (0.0, 0.0, 1.0)
+    flat = float(np.hypot(x, y))
+    ux, uy = (x / flat, y / flat) if flat > 0.0 else (1.0, 0.0)
+    outer = radius / np.cos(np.pi / (2 * _STEPS))
+    angle = np.linspace(-np.pi / 2, np.pi / 2, _STEPS + 1)
+    front = np.stack([np.cos(angle), np.sin(angle)], axis=1)
+    back = np.stack([-abs(z) * np.cos(angle), np.sin(angle)], axis=1)[::-1]
+    local = outer * (np.concatenate([front, back[1:-1]]) if z != 0.0 else front)
+    turned = local @ np.array([[ux, uy], [-uy, ux]])
+    return shapely.Polygon(turned + np.array(at[:2]))
+
+
+def _shadows(
+    state: PlacedState, at: tuple[float, float, float], radius: float
+) -> Iterator[BaseGeometry]:
+    """Yield what lies behind panels that are closed, whole, and too high to be looked over."""
+    enclosure = state.layout.enclosure
+    if enclosure is None:
+        return
+    x, y, z = at
+    for name in sorted(enclosure.panels):
+        panel = enclosure.panels[name]
+        low, high = enclosure.heights_mm(panel)
+        blocks = high >= z + radius and (low <= 0.0 or low <= z - radius)
+        if panel.open or panel.openings or not blocks:
+            continue
+        ends = np.array([panel.from_mm, panel.to_mm])
+        away = ends - (x, y)
+        distances = np.hypot(away[:, 0], away[:, 1])
+        beside = abs(away[0, 0] * away[1, 1] - away[0, 1] * away[1, 0])
+        if beside < _ON_PLANE_MM * panel.length_mm or distances.min() <= 0.0:
+            continue  # the spot lies on it, or in its line
+        height = beside / panel.length_mm  # of the spot above the panel's line
+        far = away * (2.0 * radius + height) / height
+        behind = far[::-1] + np.array([x, y])
+        yield shapely.Polygon([*ends, *behind])

@@ -1,0 +1,168 @@
+r"""What beams sweep in plan: strips as wide as an eye's limiting aperture can take too much.
+
+An aperture of radius a whose centre lies d beside the axis takes no more than the half plane
+beyond d - a holds of the beam,
+
+.. math:: \tfrac12 P \,\mathrm{erfc}(\sqrt2 (d - a)/w)
+          \le \tfrac12 P \exp(-2 (d - a)^2/w^2),
+
+so that the limit L cannot be exceeded beyond
+:math:`d = a + w \sqrt{\tfrac12 \ln(P/2L)}`, w being the 1/e^2 radius across the beam in plan.
+A strip is at least as wide as the 1/e^2 radius and the aperture.
+"""
+
+from __future__ import annotations
+
+from typing import NamedTuple
+
+import numpy as np
+import shapely
+from shapely.geometry.base import BaseGeometry
+
+from benchlay.optics import moments
+from benchlay.optics.special import circle_share
+from benchlay.scene.tables import Flags, Floats, Ints
+from benchlay.tracing.trace import Trace
+from benchlay.zones.limits import LimitTable
+
+_SAMPLES = 33
+_HALVINGS = 40
+_STRAIGHT_MM = 0.05  # a strip's side is one line where it bends by less
+_SIDES = 64  # of a circle
+_MM_PER_M = 1e3
+
+
+class Leg(NamedTuple):
+    """A leg on which the limit is exceeded, and how far."""
+
+    beam: int
+    start: tuple[float, float, float]
+    end: tuple[float, float, float]  # where the limit, or the leg, ends
+    area: BaseGeometry
+    reach_m: float
+    power_w: float  # the most that passes the aperture anywhere on the leg
+
+
+def hazardous_legs(trace: Trace, limits: LimitTable, variant: int) -> list[Leg]:
+    """Return the legs of a state on which the limit is exceeded.
+
+    A leg counts from its start to the last place where too much passes the aperture, even
+    where it is too wide at the start. Legs inside optics count too: they join the zones on
+    either side, and are out of reach anyway.
+    """
+    s = trace.beams.start
+    beams = np.flatnonzero(s.variant == variant)
+    allowed, _, _ = limits.of(trace, beams)
+    beams = beams[s.power[beams] > allowed]
+    if not len(beams):
+        return []
+    reach = trace.placed.states[variant].layout.limits.reach_mm
+    length = np.minimum(trace.beams.length[beams], reach)
+    stop, most = _extent(trace, limits, beams, length)
+    found = np.flatnonzero(most > limits.of(trace, beams)[0])
+    return [_leg(trace, limits, int(beams[i]), (float(stop[i]), float(most[i]))) for i in found]
+
+
+def through_aperture(trace: Trace, limits: LimitTable, beams: Ints, depth: Floats) -> Floats:
+    """Return the power (N, K) through the limiting aperture at depths (N, K), mm, of beams."""
+    s = trace.beams.start
+    m = moments.propagate(s.moments[:, beams, None], depth, s.index[beams, None])
+    w1, w2, _ = moments.radii(m)
+    _, _, aperture = limits.of(trace, beams)
+    tiny = np.finfo(np.float64).tiny
+    share = circle_share(np.maximum(w1, tiny), np.maximum(w2, tiny), aperture[:, None] / 2)
+    power: Floats = s.power[beams, None] * share
+    return power
+
+
+def _extent(trace: Trace, limits: LimitTable, beams: Ints, length: Floats) -> tuple[Floats, Floats]:
+    """Return how far along each leg the limit is exceeded (0: nowhere), and the most power."""
+    s = trace.beams.start
+    even = length[:, None] * np.linspace(0.0, 1.0, _SAMPLES)
+    # A focus lies between samples: the waists of both axes are looked at as well.
+    waists = moments.waist_distance(s.moments[:, beams], s.index[beams]).T
+    depth = np.sort(np.concatenate([even, np.clip(waists, 0.0, length[:, None])], axis=1), axis=1)
+    power = through_aperture(trace, limits, beams, depth)
+    allowed = limits.of(trace, beams)[0]
+    too_much = power > allowed[:, None]
+    rows, last = np.arange(len(beams)), depth.shape[1] - 1
+    at = np.where(too_much.any(axis=1), last - np.argmax(too_much[:, ::-1], axis=1), 0)
+    near, far = depth[rows, at], depth[rows, np.minimum(at + 1, last)]
+    for _ in range(_HALVINGS):
+        middle = 0.5 * (near + far)
+        still = through_aperture(trace, limits, beams, middle[:, None])[:, 0] > allowed
+        near, far = np.where(still, middle, near), np.where(still, far, middle)
+    return np.where(too_much.any(axis=1), far, 0.0), power.max(axis=1)
+
+
+def _leg(trace: Trace, limits: LimitTable, beam: int, extent: tuple[float, float]) -> Leg:
+    stop, most = extent
+    s = trace.beams.start
+    depth = np.linspace(0.0, stop, _SAMPLES)
+    half = half_widths(trace, limits, beam, depth)
+    points = s.position[beam] + depth[:, None] * s.direction[beam]
+    (ax, ay, az), (bx, by, bz) = points[0].tolist(), points[-1].tolist()
+    area = _strip(points[:, :2], half)
+    return Leg(beam, (ax, ay, az), (bx, by, bz), area, stop / _MM_PER_M, most)
+
+
+def half_widths(trace: Trace, limits: LimitTable, beam: int, depth: Floats) -> Floats:
+    """Return half the width of a beam's strip in plan at depths along it, mm."""
+    s = trace.beams.start
+    one = np.array([beam])
+    allowed, _, aperture = (float(v[0]) for v in limits.of(trace, one))
+    across = envelope_radii(trace, beam, depth)
+    power = float(s.power[beam])
+    tail = 0.5 * np.log(max(power / (2.0 * allowed), 1.0)) if allowed > 0.0 else _NO_LIMIT
+    a = aperture / 2
+    half: Floats = np.maximum(a + across * np.sqrt(tail), across)
+    return half
+
+
+_NO_LIMIT = 2.0 * 2.0  # twice the 1/e2 radius beyond the aperture, where any light counts
+
+
+def envelope_radii(trace: Trace, beam: int, depth: Floats) -> Floats:
+    """Return the 1/e2 radius across a beam as seen in plan, at depths along it, mm."""
+    s = trace.beams.start
+    m = moments.propagate(s.moments[:, [beam]], depth, s.index[beam])
+    k, e1 = s.direction[beam], s.axis[beam]
+    flat = float(np.hypot(k[0], k[1]))
+    w1, w2, _ = moments.radii(m)
+    if flat < _UPRIGHT:
+        return np.maximum(w1, w2)
+    side = np.array([-k[1], k[0], 0.0]) / flat
+    a, b = float(side @ e1), float(side @ np.cross(k, e1))
+    variance = a * a * m[moments.XX] + 2.0 * a * b * m[moments.XY] + b * b * m[moments.YY]
+    radius: Floats = 2.0 * np.sqrt(np.maximum(variance, 0.0))
+    return radius
+
+
+_UPRIGHT = 1e-9
+
+
+def _strip(points: Floats, half: Floats) -> BaseGeometry:
+    """Return the area along a leg in plan; round about both ends where it is steep."""
+    along = points[-1] - points[0]
+    length = float(np.hypot(*along))
+    widest = float(half.max())
+    if length < 2.0 * widest:
+        ends = [circle(points[0], float(half[0])), circle(points[-1], float(half[-1]))]
+        return shapely.convex_hull(shapely.union_all(ends))
+    side = np.array([-along[1], along[0]]) / length
+    share = np.linspace(0.0, 1.0, len(half))
+    # Radii of beams are convex along them, so a chord never lies inside.
+    chord = half[0] + share * (half[-1] - half[0])
+    kept: Flags = np.ones(len(half), dtype=np.bool_)
+    if float(np.max(chord - half)) < _STRAIGHT_MM:
+        kept[1:-1] = False
+    left = points[kept] + half[kept, None] * side
+    right = points[kept] - half[kept, None] * side
+    return shapely.Polygon([*right, *left[::-1]])
+
+
+def circle(centre: Floats, radius: float) -> BaseGeometry:
+    """Return a polygon round a circle, nowhere inside it."""
+    angle = 2.0 * np.pi * np.arange(_SIDES) / _SIDES
+    outer = radius / np.cos(np.pi / _SIDES)
+    return shapely.Polygon(centre + outer * np.stack([np.cos(angle), np.sin(angle)], axis=1))
