@@ -1,0 +1,258 @@
+"""The stages in a row: what the commands and Python users call.
+
+`read`, `place`, `trace`, `check` and `draw` are the public stages. A layout that cannot be
+used raises `LayoutError`, which carries every problem in it. The functions with `review` and
+`result` in their names are what the commands use: they take a file's bytes and return
+problems as results.
+"""
+
+from __future__ import annotations
+
+import os
+import re
+from collections.abc import Sequence
+from datetime import date
+from hashlib import sha256
+from pathlib import Path
+from typing import TYPE_CHECKING
+
+from benchlay.document.problems import Problem, Problems
+from benchlay.document.span import Span
+from benchlay.document.words import nearest
+from benchlay.layout import AS_DRAWN, LayoutSource, read_layout
+from benchlay.placing import Placed
+from benchlay.report.model import LayoutErrors, Reported, Review, TraceResult
+
+if TYPE_CHECKING:
+    from benchlay.results.review import Checked
+    from benchlay.tracing import Trace
+
+_LINE_BREAK = re.compile("\r\n|[\n\r\x85\u2028\u2029]")  # what counts as one in YAML
+
+
+class LayoutError(Exception):
+    """A layout that cannot be used.
+
+    Attributes
+    ----------
+    problems : tuple of Problem
+        All that is wrong with it, in the order of the file.
+    """
+
+    def __init__(self, problems: tuple[Problem, ...]) -> None:
+        super().__init__("\n".join(map(str, problems)))
+        self.problems = problems
+
+
+def read(file: str | os.PathLike[str], text: str | bytes | None = None) -> LayoutSource:
+    """Read a layout.
+
+    Parameters
+    ----------
+    file : str or path
+        The file; its name stands in every message.
+    text : str or bytes, optional
+        What it holds, where it is not to be read from disk.
+
+    Returns
+    -------
+    LayoutSource
+        The layout in every state, `as drawn` first, the others by name.
+
+    Raises
+    ------
+    LayoutError
+        If anything is wrong with what is written.
+    OSError
+        If the file cannot be read.
+    """
+    data = Path(file).read_bytes() if text is None else text
+    layout, problems = read_layout(data, os.fspath(file))
+    if layout is None:
+        raise LayoutError(tuple(problems.sorted()))
+    others = sorted(name for name in layout.layouts if name != AS_DRAWN)
+    return layout._replace(layouts={name: layout.layouts[name] for name in (AS_DRAWN, *others)})
+
+
+def place(layout: LayoutSource) -> Placed:
+    """Place every source and element in every state, along the nominal chief ray.
+
+    Raises
+    ------
+    LayoutError
+        If a place is ambiguous, hangs on itself or cannot be reached by a beam.
+    """
+    from benchlay.placing import place as solve
+
+    problems = Problems()
+    placed = solve(layout, problems)
+    if placed is None:
+        raise LayoutError(tuple(problems.sorted()))
+    return placed
+
+
+def trace(placed: Placed) -> Trace:
+    """Trace the light of every state down to the power floor."""
+    from benchlay.checks._check.limits import floors_w, limits_of
+    from benchlay.tracing import trace as follow
+
+    return follow(placed, floors_w(placed, limits_of(placed)))
+
+
+def check(
+    traced: Trace, *, on: date | None = None, states: Sequence[str] | None = None
+) -> tuple[Reported, ...]:
+    """Run every check in every state.
+
+    Parameters
+    ----------
+    traced : Trace
+        From `trace`.
+    on : date, optional
+        The day on which the layout's accept entries are held against what is found; without
+        one they are left alone, and nothing counts as accepted.
+    states : sequence of str, optional
+        The states to speak of; all of them by default.
+
+    Returns
+    -------
+    tuple of Reported
+        The gravest first; each over all the states in which it holds.
+    """
+    from benchlay.results.review import judge
+
+    return judge(_checked(traced, states), on).findings
+
+
+def draw(traced: Trace, *, on: date | None = None) -> dict[str, bytes]:
+    """Draw every sheet in each of its formats.
+
+    Returns
+    -------
+    dict of str to bytes
+        By file name, such as ``plan.dxf``.
+    """
+    from benchlay.results.drawings import drawings
+
+    return drawings(_checked(traced, None), on)
+
+
+def review(
+    data: bytes, file: str, *, on: date, state: str | None, in_full: bool
+) -> Review | LayoutErrors:
+    """Review a layout given by its bytes; one state of it where one is named."""
+    try:
+        return _reviewed(data, file, on=on, state=state, in_full=in_full)[0]
+    except LayoutError as error:
+        return LayoutErrors(file, error.problems, _lines(data))
+
+
+def review_files(
+    data: bytes, file: str, *, on: date, state: str | None
+) -> tuple[Review, dict[str, bytes]] | LayoutErrors:
+    """Review a layout in full; also return every file of the review, by name."""
+    from benchlay import __version__
+    from benchlay.report.json_out import check_document, dumps, trace_document
+    from benchlay.results.drawings import drawings
+
+    try:
+        reviewed, checked = _reviewed(data, file, on=on, state=state, in_full=True)
+    except LayoutError as error:
+        return LayoutErrors(file, error.problems, _lines(data))
+    documents = {
+        "findings.json": check_document([reviewed], version=__version__),
+        "beams.json": trace_document(_traced(checked.trace, file, checked.states[0])),
+    }
+    files = {name: dumps(document).encode("ascii") for name, document in documents.items()}
+    return reviewed, files | drawings(checked, on)
+
+
+def draw_files(
+    data: bytes, file: str, *, sheet: str | None, form: str | None
+) -> dict[str, bytes] | LayoutErrors:
+    """Draw the sheets asked for (all of them for None), each in its forms, by file name."""
+    from benchlay.results.drawings import drawings
+
+    try:
+        traced = trace(place(read(file, data)))
+    except LayoutError as error:
+        return LayoutErrors(file, error.problems, _lines(data))
+    return drawings(_checked(traced, None), None, sheet=sheet, form=form)
+
+
+def _reviewed(
+    data: bytes, file: str, *, on: date, state: str | None, in_full: bool
+) -> tuple[Review, Checked]:
+    from benchlay.results.review import Paper
+    from benchlay.results.review import review as put_together
+
+    traced = trace(place(_with_state(read(file, data), state)))
+    checked = _checked(traced, None if state is None else (state,))
+    paper = Paper(file, sha256(data).hexdigest(), _lines(data))
+    return put_together(checked, paper, on, in_full=in_full), checked
+
+
+def _checked(traced: Trace, states: Sequence[str] | None) -> Checked:
+    from benchlay.checks._check.limits import limits_of
+    from benchlay.results.review import Checked
+
+    limits = limits_of(traced.placed)
+    try:
+        from benchlay.checks import Context, run_checks
+
+        findings, runs = run_checks(Context(traced, limits))
+    except ImportError:
+        findings, runs = (), ()
+    spoken_of = traced.scene.variants if states is None else tuple(states)
+    return Checked(traced, limits, tuple(findings), tuple(runs), spoken_of)
+
+
+def trace_result(data: bytes, file: str, *, state: str | None) -> TraceResult | LayoutErrors:
+    """Trace one state of a layout given by its bytes; the state as drawn by default."""
+    wanted = AS_DRAWN if state is None else state
+    try:
+        return _traced(trace(place(_with_state(read(file, data), wanted))), file, wanted)
+    except LayoutError as error:
+        return LayoutErrors(file, error.problems, _lines(data))
+
+
+def _traced(traced: Trace, file: str, state: str) -> TraceResult:
+    from benchlay.results.beam_rows import beam_rows
+    from benchlay.results.ledger import ledgers
+    from benchlay.results.placed import poses
+
+    variant = traced.scene.variants.index(state)
+    return TraceResult(
+        file,
+        state,
+        beam_rows(traced, variant),
+        poses(traced.placed.states[variant]),
+        ledgers(traced, variant),
+    )
+
+
+def _with_state(layout: LayoutSource, state: str | None) -> LayoutSource:
+    """Return the layout whole, if it has the state.
+
+    All states are traced whichever is asked for: the power floor is the lowest over all of
+    them, and beams have the same numbers in every output.
+    """
+    if state is not None and state not in layout.layouts:
+        raise LayoutError((_unknown_state(layout, state),))
+    return layout
+
+
+def _unknown_state(layout: LayoutSource, state: str) -> Problem:
+    known = (AS_DRAWN, *sorted(set(layout.layouts) - {AS_DRAWN}))
+    near = nearest(state, known)
+    return Problem(
+        Span(layout.file, 1, 1),
+        f"the layout has no state {state!r}",
+        "one of its states: " + ", ".join(known),
+        f"write --state {near!r}" if near else "name one of these after --state",
+    )
+
+
+def _lines(data: bytes) -> tuple[str, ...]:
+    text = data.decode("utf-8", errors="replace").removeprefix("\ufeff")
+    return tuple(_LINE_BREAK.split(text))

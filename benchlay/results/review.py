@@ -1,0 +1,120 @@
+"""Everything that is said of one layout, put together from trace and findings."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Mapping, Sequence
+from datetime import date
+from typing import NamedTuple
+
+from benchlay.checks._check.limits import Limits
+from benchlay.checks._check.protocol import Run
+from benchlay.findings import Finding, MergedFinding, Severity, identify, merge_states, sort_key
+from benchlay.layout.layout import Layout
+from benchlay.report.model import Acceptance, CheckRun, Reported, Review, reported
+from benchlay.results.accept import hold
+from benchlay.results.handed_over import handed_over
+from benchlay.results.ledger import ledgers
+from benchlay.results.limits import limits_used
+from benchlay.results.routes import route_results
+from benchlay.tracing import Trace
+
+NOT_YET = "not-yet"
+
+
+class Paper(NamedTuple):
+    """What a review says of the file itself."""
+
+    name: str
+    sha256: str
+    lines: tuple[str, ...]
+
+
+class Checked(NamedTuple):
+    """A trace, what was found in it, and the limits this was held against."""
+
+    trace: Trace
+    limits: Limits
+    findings: tuple[Finding, ...]
+    runs: tuple[Run, ...]
+    states: tuple[str, ...]
+    """Names of the states that are spoken of, in order."""
+
+
+class Judged(NamedTuple):
+    """Findings over all states, held against the layout's accept entries."""
+
+    findings: tuple[Reported, ...]
+    runs: tuple[CheckRun, ...]
+
+
+def judge(checked: Checked, on: date | None) -> Judged:
+    """Name, merge, accept and sort what was found.
+
+    Parameters
+    ----------
+    checked : Checked
+        What was found, state by state.
+    on : date or None
+        The day on which accept entries are held against findings; None leaves them alone.
+    """
+    placed = checked.trace.placed
+    spoken_of = [f for f in checked.findings if f.state in checked.states]
+    own = _merged([*spoken_of, *_not_yet(placed.base.layout, checked.states[0])])
+    held = hold(own, placed, on, checked.states)
+    about = _merged(f._replace(state=checked.states[0]) for f in held.findings)
+    runs = [CheckRun(*run) for run in checked.runs if run.state in checked.states]
+    return Judged(_reported([*own, *about], held.accepted), (*runs, *held.runs))
+
+
+def _merged(findings: Iterable[Finding]) -> list[MergedFinding]:
+    return merge_states(identify(findings))
+
+
+def _reported(
+    merged: Sequence[MergedFinding], accepted: Mapping[str, Acceptance]
+) -> tuple[Reported, ...]:
+    ordered = sorted(merged, key=lambda one: sort_key(one.finding))
+    return tuple(reported(one, accepted.get(one.id)) for one in ordered)
+
+
+def _not_yet(layout: Layout, state: str) -> Iterable[Finding]:
+    """Say of every key that is read and not acted on yet that it is so."""
+    for span, what in sorted(layout.not_yet):
+        yield Finding(
+            NOT_YET,
+            Severity.NOTE,
+            what,
+            "only keys that this version acts on",
+            "nothing; what the key says is kept for a later version",
+            state=state,
+            span=span,
+            key=(what,),
+        )
+
+
+def review(checked: Checked, paper: Paper, on: date, *, in_full: bool) -> Review:
+    """Return the review of a layout; what costs time only where it is asked for in full."""
+    trace = checked.trace
+    layout = trace.placed.base.layout
+    judged = judge(checked, on)
+    variants = [trace.scene.variants.index(name) for name in checked.states]
+    told = variants if in_full else []
+    return Review(
+        layout=paper.name,
+        sha256=paper.sha256,
+        title=layout.title or None,
+        revision=layout.revision or None,
+        as_of=on.isoformat() if layout.accept else None,
+        findings=judged.findings,
+        checks=judged.runs,
+        limits_used=limits_used(trace.placed, checked.limits, checked.states),
+        routes=tuple(row for variant in told for row in route_results(trace, variant)),
+        ledger=tuple(row for variant in told for row in ledgers(trace, variant)),
+        zones=(),
+        coverage=(),
+        panels=(),
+        cavities=(),
+        matched=(),
+        handed_over=tuple(row for variant in told for row in handed_over(trace, variant)),
+        lines=paper.lines,
+    )
