@@ -1,0 +1,19 @@
+"""Checks: one file a check, in the order in which the tables list them."""
+
+from __future__ import annotations
+
+from benchlay.checks import coating_unstated
+from benchlay.checks._check import Check, Context, LineLimit, Run, floors_w, limits_of
+from benchlay.checks._run import run_checks as _run
+from benchlay.findings import Finding
+
+CHECKS: tuple[Check, ...] = (coating_unstated,)
+"""Every check."""
+
+
+def run_checks(context: Context) -> tuple[list[Finding], list[Run]]:
+    """Run every check in every state; see `Run` for what could be evaluated."""
+    return _run(context, CHECKS)
+
+
+__all__ = ["CHECKS", "Check", "Context", "LineLimit", "Run", "floors_w", "limits_of", "run_checks"]

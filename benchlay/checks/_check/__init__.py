@@ -1,0 +1,44 @@
+"""What a check is, and what all checks share: the only room that a check may lean on."""
+
+from __future__ import annotations
+
+from benchlay.checks._check.context import Context
+from benchlay.checks._check.limits import LineLimit, floors_w, limits_of
+from benchlay.checks._check.protocol import Check, Found, Run, Unevaluated
+from benchlay.checks._check.unjudged import unjudged
+from benchlay.checks._check.words import (
+    above,
+    angle_text,
+    event_words,
+    irradiance_text,
+    length_text,
+    listed,
+    place_words,
+    power_text,
+    rounded_up,
+    share_text,
+    wavelength_text,
+)
+
+__all__ = [
+    "Check",
+    "Context",
+    "Found",
+    "LineLimit",
+    "Run",
+    "Unevaluated",
+    "above",
+    "angle_text",
+    "event_words",
+    "floors_w",
+    "irradiance_text",
+    "length_text",
+    "limits_of",
+    "listed",
+    "place_words",
+    "power_text",
+    "rounded_up",
+    "share_text",
+    "unjudged",
+    "wavelength_text",
+]

@@ -1,0 +1,104 @@
+"""Light meets a coating that says nothing of its wavelength.
+
+Why it matters
+--------------
+A coating made for one wavelength may do anything at another: mirrors turn into windows, and
+windows into mirrors. The trace takes the bare material there, which a real coating is not.
+
+Fails
+-----
+.. code-block:: yaml
+
+   bench: {size: [800, 400]}
+   sources:
+     red: {wavelength: 633, power: 5 mW, beam: {waist_radius: 0.5}, at: [100, 200], heading: 0}
+   elements:
+     M1:  # <- coating-unstated
+       kind: mirror
+       after: red
+       distance: 300
+       turn: left 90
+       diameter: 25.4
+       reflectance: [{from: 520, to: 545, is: 99.5 %}]
+     T1: {kind: target, after: M1, distance: 100}
+   routes:
+     alignment: [red, M1, T1]
+
+Passes
+------
+.. code-block:: yaml
+
+   bench: {size: [800, 400]}
+   sources:
+     red: {wavelength: 633, power: 5 mW, beam: {waist_radius: 0.5}, at: [100, 200], heading: 0}
+   elements:
+     M1:
+       kind: mirror
+       after: red
+       distance: 300
+       turn: left 90
+       diameter: 25.4
+       reflectance: [{from: 520, to: 545, is: 99.5 %}, {from: 600, to: 700, is: 40 %}]
+     T1: {kind: target, after: M1, distance: 100}
+   routes:
+     alignment: [red, M1, T1]
+
+What it does not see
+--------------------
+Light below the power floor. Whether a figure that is stated is true of the part on the bench,
+or holds at this angle of incidence.
+
+Source
+------
+Common practice: ask the maker for the curve at every wavelength on the bench, pumps, harmonics
+and alignment lasers included.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+import numpy as np
+
+from benchlay.checks._check import Context, power_text, wavelength_text
+from benchlay.findings import Finding, Severity
+
+NAME = "coating-unstated"
+
+# The figures that follow are assumptions, but the larger hazard among plausible ones.
+SEVERITY = Severity.WARN
+
+
+def check(context: Context, variant: int) -> Iterator[Finding]:
+    """Report each face and wavelength once, with all the power that meets it."""
+    beams, scene = context.trace.beams, context.trace.scene
+    rows = context.beams_of(variant)
+    rows = rows[beams.unstated[rows]]
+    pairs = np.stack((beams.end_row[rows], beams.start.wave[rows]))
+    for face, wave in np.unique(pairs, axis=1).T.tolist():
+        met = rows[(pairs[0] == face) & (pairs[1] == wave)]
+        nm = float(scene.wavelengths_nm[wave])
+        name = scene.elements[int(scene.faces.owner[face])]
+        power = float(beams.end_core[met].sum())
+        side = scene.face_names[int(scene.faces.name[face])]
+        yield Finding(
+            check=NAME,
+            severity=SEVERITY,
+            message=(
+                f"the {side} of '{name}' says nothing of {wavelength_text(nm)}, and "
+                f"{power_text(power)} of it from '{context.source_of(int(met[0]))}' meets it; "
+                "the bare material is assumed"
+            ),
+            expected=f"a coating that states its reflectance at {wavelength_text(nm)}",
+            remedy=(
+                f"add a band with {nm:g} nm to the coating of '{name}', such as "
+                f"`{{from: {nm - 10:g}, to: {nm + 10:g}, is: …}}` with the maker's figure"
+            ),
+            element=name,
+            beam=int(context.numbers[met[0]]),
+            at=context.end_at(int(met[0])),
+            span=context.span_of(name, variant),
+            value=power,
+            unit="W",
+            key=(nm, context.face_text(face)),
+        )
