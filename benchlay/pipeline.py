@@ -93,7 +93,7 @@ def place(layout: LayoutSource) -> Placed:
 
 def trace(placed: Placed) -> Trace:
     """Trace the light of every state down to the power floor."""
-    from benchlay.checks._check.limits import floors_w, limits_of
+    from benchlay.checks import floors_w, limits_of
     from benchlay.tracing import trace as follow
 
     return follow(placed, floors_w(placed, limits_of(placed)))
@@ -147,6 +147,15 @@ def review(
         return LayoutErrors(file, error.problems, _lines(data))
 
 
+def trace_result(data: bytes, file: str, *, state: str | None) -> TraceResult | LayoutErrors:
+    """Trace one state of a layout given by its bytes; the state as drawn by default."""
+    wanted = AS_DRAWN if state is None else state
+    try:
+        return _traced(trace(place(_with_state(read(file, data), wanted))), file, wanted)
+    except LayoutError as error:
+        return LayoutErrors(file, error.problems, _lines(data))
+
+
 def review_files(
     data: bytes, file: str, *, on: date, state: str | None
 ) -> tuple[Review, dict[str, bytes]] | LayoutErrors:
@@ -180,42 +189,6 @@ def draw_files(
     return drawings(_checked(traced, None), None, sheet=sheet, form=form)
 
 
-def _reviewed(
-    data: bytes, file: str, *, on: date, state: str | None, in_full: bool
-) -> tuple[Review, Checked]:
-    from benchlay.results.review import Paper
-    from benchlay.results.review import review as put_together
-
-    traced = trace(place(_with_state(read(file, data), state)))
-    checked = _checked(traced, None if state is None else (state,))
-    paper = Paper(file, sha256(data).hexdigest(), _lines(data))
-    return put_together(checked, paper, on, in_full=in_full), checked
-
-
-def _checked(traced: Trace, states: Sequence[str] | None) -> Checked:
-    from benchlay.checks._check.limits import limits_of
-    from benchlay.results.review import Checked
-
-    limits = limits_of(traced.placed)
-    try:
-        from benchlay.checks import Context, run_checks
-
-        findings, runs = run_checks(Context(traced, limits))
-    except ImportError:
-        findings, runs = (), ()
-    spoken_of = traced.scene.variants if states is None else tuple(states)
-    return Checked(traced, limits, tuple(findings), tuple(runs), spoken_of)
-
-
-def trace_result(data: bytes, file: str, *, state: str | None) -> TraceResult | LayoutErrors:
-    """Trace one state of a layout given by its bytes; the state as drawn by default."""
-    wanted = AS_DRAWN if state is None else state
-    try:
-        return _traced(trace(place(_with_state(read(file, data), wanted))), file, wanted)
-    except LayoutError as error:
-        return LayoutErrors(file, error.problems, _lines(data))
-
-
 def _traced(traced: Trace, file: str, state: str) -> TraceResult:
     from benchlay.results.beam_rows import beam_rows
     from benchlay.results.ledger import ledgers
@@ -229,6 +202,28 @@ def _traced(traced: Trace, file: str, state: str) -> TraceResult:
         poses(traced.placed.states[variant]),
         ledgers(traced, variant),
     )
+
+
+def _reviewed(
+    data: bytes, file: str, *, on: date, state: str | None, in_full: bool
+) -> tuple[Review, Checked]:
+    from benchlay.results.review import Paper
+    from benchlay.results.review import review as put_together
+
+    traced = trace(place(_with_state(read(file, data), state)))
+    checked = _checked(traced, None if state is None else (state,))
+    paper = Paper(file, sha256(data).hexdigest(), _lines(data))
+    return put_together(checked, paper, on, in_full=in_full), checked
+
+
+def _checked(traced: Trace, states: Sequence[str] | None) -> Checked:
+    from benchlay.checks import Context, limits_of, run_checks
+    from benchlay.results.review import Checked
+
+    limits = limits_of(traced.placed)
+    findings, runs = run_checks(Context(traced, limits))
+    spoken_of = traced.scene.variants if states is None else tuple(states)
+    return Checked(traced, limits, tuple(findings), tuple(runs), spoken_of)
 
 
 def _with_state(layout: LayoutSource, state: str | None) -> LayoutSource:

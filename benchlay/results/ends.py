@@ -113,8 +113,8 @@ def _on_rims(trace: Trace, rows: Ints, sink: Ints, rims: Ints) -> Floats:
     at = at[landings]
     name = scene.face_owner_name[beams.end_row[rows[at]]]
     there = (ledger.sink[landings] == sink[at]) & (ledger.name[landings] == name)
-    landed: Floats = np.bincount(at[there], ledger.power[landings][there], minlength=len(rows))
-    return landed
+    landed = np.bincount(at[there], ledger.power[landings][there], minlength=len(rows))
+    return landed.astype(np.float64)
 
 
 def _named(

@@ -2,12 +2,16 @@
 
 from __future__ import annotations
 
-from collections.abc import Collection
+from collections.abc import Collection, Mapping
+from typing import TypeAlias
 
-from benchlay.checks._check.limits import Limits
+from benchlay.checks import LineLimit
 from benchlay.exposure import AccessibleLimit
 from benchlay.placing.placed import Placed
 from benchlay.report.model import LimitUsed
+
+Limits: TypeAlias = Mapping[tuple[int, str, float], LineLimit]
+"""By state (number), source (name) and wavelength in nm, as `checks.limits_of` gives them."""
 
 
 def limits_used(placed: Placed, limits: Limits, states: Collection[str]) -> tuple[LimitUsed, ...]:

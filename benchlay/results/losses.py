@@ -45,5 +45,5 @@ def _landed(trace: Trace, rows: Ints) -> Floats:
     at = place[trace.ledger.beam]
     mine = at >= 0
     code = at[mine] * len(SINKS) + trace.ledger.sink[mine]
-    total: Floats = np.bincount(code, trace.ledger.power[mine], minlength=len(rows) * len(SINKS))
-    return total.reshape(len(rows), len(SINKS))
+    total = np.bincount(code, trace.ledger.power[mine], minlength=len(rows) * len(SINKS))
+    return total.astype(np.float64).reshape(len(rows), len(SINKS))

@@ -6,15 +6,14 @@ from collections.abc import Iterable, Mapping, Sequence
 from datetime import date
 from typing import NamedTuple
 
-from benchlay.checks._check.limits import Limits
-from benchlay.checks._check.protocol import Run
+from benchlay.checks import Run
 from benchlay.findings import Finding, MergedFinding, Severity, identify, merge_states, sort_key
 from benchlay.layout.layout import Layout
 from benchlay.report.model import Acceptance, CheckRun, Reported, Review, reported
 from benchlay.results.accept import hold
 from benchlay.results.handed_over import handed_over
 from benchlay.results.ledger import ledgers
-from benchlay.results.limits import limits_used
+from benchlay.results.limits import Limits, limits_used
 from benchlay.results.routes import route_results
 from benchlay.tracing import Trace
 
@@ -59,15 +58,12 @@ def judge(checked: Checked, on: date | None) -> Judged:
     """
     placed = checked.trace.placed
     spoken_of = [f for f in checked.findings if f.state in checked.states]
-    own = _merged([*spoken_of, *_not_yet(placed.base.layout, checked.states[0])])
+    notes = identify(_not_yet(placed.base.layout, checked.states[0]))
+    own = merge_states([*spoken_of, *notes])
     held = hold(own, placed, on, checked.states)
-    about = _merged(f._replace(state=checked.states[0]) for f in held.findings)
+    about = merge_states(identify(f._replace(state=checked.states[0]) for f in held.findings))
     runs = [CheckRun(*run) for run in checked.runs if run.state in checked.states]
     return Judged(_reported([*own, *about], held.accepted), (*runs, *held.runs))
-
-
-def _merged(findings: Iterable[Finding]) -> list[MergedFinding]:
-    return merge_states(identify(findings))
 
 
 def _reported(

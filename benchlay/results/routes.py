@@ -19,9 +19,9 @@ from benchlay.tracing.beams import FACE
 def route_results(trace: Trace, variant: int) -> tuple[RouteResult, ...]:
     """Return one entry a route, in name order.
 
-    A route arrives where a beam that follows it meets its last item with more than the power
-    floor. Several beams may (lines of a source, two ways through an element): their powers
-    are added, and lengths and polarization are those of the strongest. The transmission is
+    A route arrives where a beam that follows it meets its last item with any
+    power. Several beams may (lines of a source, two ways through an element): their powers
+    are added, and lengths and polarization are those of the someest. The transmission is
     what arrives of what the source emits in the route's lines. Where nothing arrives,
     lengths are not known and polarization is null.
     """
@@ -75,12 +75,12 @@ def _result(trace: Trace, variant: int, route: int, legs: Ints) -> RouteResult:
 def _arrives(trace: Trace, route: int, legs: Ints) -> Flags:
     """Tell which beams meet the route's last item, an element or a panel's opening."""
     beams, last = trace.beams, trace.ways.routes[route].items[-1]
-    strong = beams.end_core[legs] >= trace.floor_w[beams.start.wave[legs]]
+    some = beams.end_core[legs] > 0.0
     if last.opening is not None:
-        return strong & through_opening(trace, legs, last.opening)
+        return some & through_opening(trace, legs, last.opening)
     on_face = beams.end_kind[legs] == FACE
     owner = trace.scene.faces.owner[np.where(on_face, beams.end_row[legs], 0)]
-    met: Flags = strong & on_face & (owner == trace.ways.elements[last.name])
+    met: Flags = some & on_face & (owner == trace.ways.elements[last.name])
     return met
 
 
