@@ -30,7 +30,7 @@ from benchlay.elements._glass import GLASS
 from benchlay.elements._kind import CLEAR, Branches, Bulk, ElementKind, Geometry, Glass
 from benchlay.elements._shares import SHARE, DensityForm
 from benchlay.elements._sized import (
-    LENGTH,
+    LENGTH_OR_ZERO,
     PlateShape,
     Wedged,
     plate_geometry,
@@ -64,7 +64,7 @@ class Filter(Wedged, ElementKind):
         YesNo(), default=False, meaning="the front face sends the refused share back"
     )
     thickness_mm: float = key(
-        LENGTH, default=2.0, name="thickness", meaning="thickness at the centre"
+        LENGTH_OR_ZERO, default=2.0, name="thickness", meaning="thickness at the centre"
     )
     glass: Glass = key(GLASS, default=Glass("BK7", None), meaning="the plate")
     front: Coating = key(COATING, default=UNCOATED, meaning="coating of the front face")

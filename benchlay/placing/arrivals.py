@@ -17,7 +17,7 @@ _SAME_DIRECTION = 1e-9
 _DEEPEST = 400  # items of a path looked back along; a longer chain is a fault in the layout
 
 
-class Unplaceable(Exception):  # noqa: N818 (a signal between stages, never shown)
+class Unplaceable(Exception):  # a signal between stages, never shown
     """An item has no place; the problem was reported where it arose."""
 
 

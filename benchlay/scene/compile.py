@@ -13,6 +13,7 @@ from benchlay.placing.media import Media
 from benchlay.placing.placed import Placed, PlacedElement, PlacedState
 
 from benchlay.scene.bulks import bulks_table
+from benchlay.scene.fixed import fixed_products
 from benchlay.scene.coatings import Figures, figures, spoken_for
 from benchlay.scene.rows import FaceRows, Frames, SolidRows
 from benchlay.scene.solids import solids_table
@@ -179,6 +180,7 @@ def compile_scene(placed: Placed) -> Scene:
         np.eye(len(compiler.elements), dtype=np.float32)[faces.owner],
         np.isin(solids.part, [PART[part] for part in CLOSE_PARTS]),
         max(state.layout.limits.reach_mm for state in placed.states),
+        fixed_products(faces, solids, np.array(compiler.item_of_face, dtype=np.int64)),
     )
 
 

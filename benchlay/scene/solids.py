@@ -42,6 +42,7 @@ def solids_table(rows: SolidRows, frames: Frames, hole_names: list[int], present
         disc_solid,
         disc_centre,
         disc_axes,
+        disc_normal,
         *_holes(rows, frames, hole_names),
         present,
     )

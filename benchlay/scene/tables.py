@@ -73,6 +73,7 @@ class Solids(NamedTuple):
     disc_solid: Ints  # (D,)
     disc_centre: Floats  # (D, 3)
     disc_axes: Floats  # (D, 2, 3)
+    disc_normal: Floats  # (D, 3)
     hole_solid: Ints  # (H,)
     hole_name: Ints  # (H,) number in `Scene.names`: "east.port"
     hole_round: Flags  # (H,)
@@ -150,6 +151,18 @@ class Bulks(NamedTuple):
 BULKS = ("clear", "absorber", "polarizer", "retarder")
 
 
+class Fixed(NamedTuple):
+    """Products that every generation needs, worked out once."""
+
+    face_axes: Floats  # (3, 3 F) columns: normals, lefts, ups
+    face_offsets: Floats  # (3 F,) what to subtract from position . axis
+    plane_axes: Floats  # (3, P + C) columns: plane normals, axes of round solids
+    axis_offset: Floats  # (C,) axis point . axis
+    axis_square: Floats  # (C,) axis point squared
+    own_faces: Ints  # (E, K) face rows of each placed element, -1 where it has fewer
+    pierced: Ints  # solids with holes
+
+
 class Scene(NamedTuple):
     """Everything that light can meet, in every variant."""
 
@@ -169,3 +182,4 @@ class Scene(NamedTuple):
     owner_of_face: NDArray[np.float32]  # (F, elements) 1 where the face is the element's
     close: Flags  # (S,) holds its optic so closely that the optic's own light passes it
     reach_mm: float
+    fixed: Fixed

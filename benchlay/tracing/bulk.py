@@ -31,8 +31,11 @@ def passage(front: Front, scene: Scene, length_mm: Floats) -> tuple[Floats, Floa
     absorber = kind == _ABSORBER
     if absorber.any():
         share = b.passes[front.within, front.wave]
-        thickness = np.where(absorber, b.thickness[front.within], 1.0)
-        passed = np.where(absorber, share ** (length_mm / thickness), 1.0)
+        thickness = b.thickness[front.within]
+        # A filter without thickness weakens every passage alike, whatever the angle.
+        grows = absorber & (thickness > 0.0)
+        paths = np.where(grows, length_mm, 1.0) / np.where(grows, thickness, 1.0)
+        passed = np.where(absorber, share**paths, 1.0)
         lost = front.power * (1.0 - passed)
         j = j * passed
     acting = (kind == _POLARIZER) | (kind == _RETARDER)

@@ -28,33 +28,29 @@ def emitted(placed: Placed, scene: Scene, ways: Ways) -> Front:
     source = np.array([number for _, number, _, _, _ in found], dtype=np.int64)
     direction = np.array([item.pose.axes()[0] for _, _, _, item, _ in found]).reshape(-1, 3)
     index = scene.index_outside[wave]
-    ones = np.ones(count)
-    none = np.full(count, -1)
     node = [
         ways.roots.get((scene.sources[s], scene.wavelengths_nm[w]), -1)
         for s, w in zip(source, wave, strict=True)
     ]
-    return Front(
-        np.array([variant for variant, *_ in found], dtype=np.int64),
-        source,
-        wave,
-        none,
-        np.array(node, dtype=np.int64),
-        np.zeros(count, dtype=np.int64),
-        np.full(count, EMITTED),
-        np.full(count, EXIT),
-        none,
-        source + len(scene.elements),
-        np.full(count, OUTSIDE),
-        index,
-        np.array([item.pose.at for _, _, _, item, _ in found]).reshape(-1, 3),
-        direction,
-        bench_basis(direction)[0],
-        _coherency([(item.source.polarization, power) for _, _, _, item, power in found]),
-        _moments([item for _, _, _, item, _ in found], scene.wavelengths_nm[wave], index),
-        ones,
-        np.zeros(count),
-        np.zeros(count, dtype=np.bool_),
+    return Front.made(
+        count,
+        variant=np.array([variant for variant, *_ in found], dtype=np.int64),
+        source=source,
+        wave=wave,
+        parent=-1,
+        node=np.array(node, dtype=np.int64),
+        event=EMITTED,
+        face=EXIT,
+        body=-1,
+        owner=source + len(scene.elements),
+        within=OUTSIDE,
+        index=index,
+        kept=1.0,
+        position=np.array([item.pose.at for _, _, _, item, _ in found]).reshape(-1, 3),
+        direction=direction,
+        axis=bench_basis(direction)[0],
+        coherency=_coherency([(item.source.polarization, power) for *_, item, power in found]),
+        moments=_moments([item for *_, item, _ in found], scene.wavelengths_nm[wave], index),
     )
 
 

@@ -32,7 +32,7 @@ class Meeting(NamedTuple):
     n_out: Floats  # (N,)
     outward: Flags  # (N,) the beam arrives from the side the face's own normal points to
     direction: Floats  # (N, 3)
-    offset: Floats  # (N, 2) from the face's centre along left and up
+    position: Floats  # (N, 3) where it meets the face, mm
     coherency: Floats  # (4, N)
     moments: Floats  # (10, N)
 
@@ -50,7 +50,7 @@ class Divided(NamedTuple):
 
     reflected: Child
     transmitted: Child
-    absorbed: Floats  # (N,) W
+    absorbed: Floats | None  # (N,) W; None where nothing is
 
 
 def plane_of_incidence(
@@ -74,7 +74,7 @@ def divide(meeting: Meeting, scene: Scene) -> Divided:
     j = meeting.coherency
     reflected = coherency.diagonal(j, r_s, r_p)
     transmitted = coherency.diagonal(j, t_s, t_p)
-    absorbed = lost[0] * j[0] + lost[1] * j[1]
+    absorbed = None if lost is None else lost[0] * j[0] + lost[1] * j[1]
     return Divided(
         _reflected(meeting, scene, reflected), _transmitted(meeting, scene, transmitted), absorbed
     )
@@ -82,7 +82,7 @@ def divide(meeting: Meeting, scene: Scene) -> Divided:
 
 def _amplitudes(
     meeting: Meeting, scene: Scene
-) -> tuple[Floats, Floats, Floats, Floats, tuple[Floats, Floats]]:
+) -> tuple[Floats, Floats, Floats, Floats, tuple[Floats, Floats] | None]:
     """Return r_s, r_p, t_s, t_p (t in units of power: |t|² is the share) and the two losses."""
     f = scene.faces
     at = (meeting.row, meeting.wave)
@@ -93,23 +93,23 @@ def _amplitudes(
     root = np.sqrt(np.where(total, 0.0, bare.transmitted_flux.real))
     r_s, r_p = bare.rs, bare.rp
     t_s, t_p = bare.ts * root, bare.tp * root
-    lost_s = np.zeros(len(mode))
-    lost_p = lost_s
+    if not mode.any():
+        return r_s, r_p, t_s, t_p, None
     stated = mode == Mode.STATED
-    if stated.any():
-        loss_s, loss_p = f.loss_s[at], f.loss_p[at]
-        # Beyond the critical angle nothing passes: what a coating would pass is sent back.
-        share_s = np.where(total, 1.0 - loss_s, f.share_s[at])
-        share_p = np.where(total, 1.0 - loss_p, f.share_p[at])
-        r_s = np.where(stated, -np.sqrt(share_s), r_s)
-        r_p = np.where(stated, np.sqrt(share_p), r_p)
-        t_s = np.where(stated, np.sqrt(np.maximum(1.0 - share_s - loss_s, 0.0)), t_s)
-        t_p = np.where(stated, np.sqrt(np.maximum(1.0 - share_p - loss_p, 0.0)), t_p)
-        lost_s, lost_p = np.where(stated, loss_s, lost_s), np.where(stated, loss_p, lost_p)
+    loss_s, loss_p = f.loss_s[at], f.loss_p[at]
+    # Beyond the critical angle nothing passes: what a coating would pass is sent back.
+    share_s = np.where(total, 1.0 - loss_s, f.share_s[at])
+    share_p = np.where(total, 1.0 - loss_p, f.share_p[at])
+    r_s = np.where(stated, -np.sqrt(share_s), r_s)
+    r_p = np.where(stated, np.sqrt(share_p), r_p)
+    t_s = np.where(stated, np.sqrt(np.maximum(1.0 - share_s - loss_s, 0.0)), t_s)
+    t_p = np.where(stated, np.sqrt(np.maximum(1.0 - share_p - loss_p, 0.0)), t_p)
+    lost_s, lost_p = np.where(stated, loss_s, 0.0), np.where(stated, loss_p, 0.0)
     metal = mode == Mode.METAL
     if metal.any():
-        film = fresnel.amplitudes(n_in, np.where(metal, f.metal[at], n_out), cosine)
-        shares = fresnel.powers(n_in, np.where(metal, f.metal[at], n_out), cosine)
+        index = np.where(metal, f.metal[at], n_out)
+        film = fresnel.amplitudes(n_in, index, cosine)
+        shares = fresnel.powers(n_in, index, cosine)
         r_s, r_p = np.where(metal, film.rs, r_s), np.where(metal, film.rp, r_p)
         t_s, t_p = np.where(metal, 0.0, t_s), np.where(metal, 0.0, t_p)
         lost_s, lost_p = np.where(metal, shares.ts, lost_s), np.where(metal, shares.tp, lost_p)
@@ -151,12 +151,12 @@ def _transmitted(meeting: Meeting, scene: Scene, j: Floats) -> Child:
 
 def _slopes(meeting: Meeting, scene: Scene) -> tuple[Floats, Floats]:
     """Return tangents to the lens axis and distances from it, along left and up."""
-    left, up = scene.faces.left[meeting.row], scene.faces.up[meeting.row]
-    along = meeting.cosine
-    slope = np.stack(
-        (dot(meeting.direction, left) / along, dot(meeting.direction, up) / along), axis=-1
-    )
-    return slope, meeting.offset
+    f = scene.faces
+    left, up = f.left[meeting.row], f.up[meeting.row]
+    away = meeting.position - f.origin[meeting.row]
+    k, along = meeting.direction, meeting.cosine
+    slope = np.stack((dot(k, left) / along, dot(k, up) / along), axis=-1)
+    return slope, np.stack((dot(away, left), dot(away, up)), axis=-1)
 
 
 def _by_slope(meeting: Meeting, scene: Scene, slope: Floats, *, back: bool) -> Floats:

@@ -1,6 +1,7 @@
-"""What each beam's chief ray meets first, and what comes near its envelope on the way.
+"""What each beam's chief ray meets first.
 
-B beams, F faces, S solids, P planes. All distances in mm along the unit direction.
+B beams, F faces, S solids, P planes. All distances in mm along the unit direction. Beams
+inside glass meet only the faces of their own optic; all others meet everything.
 """
 
 from __future__ import annotations
@@ -11,125 +12,152 @@ import numpy as np
 
 from benchlay.elements._kind import Acts, Inside
 from benchlay.scene.tables import Flags, Floats, Ints, Scene, Solids
-from benchlay.tracing.front import OUTSIDE, Front
+from benchlay.tracing.front import Front
 
-_SKIN_MM = 1e-7  # an optic is not met again nearer than this to where it was left
+SKIN_MM = 1e-7  # an optic is not met again nearer than this to where it was left
 _TOUCH_MM = 1e-9
 _PARALLEL = 1e-12
-_GRAZING = 1e-3  # at flatter incidence a face's footprint test says nothing: spheres decide
 
 NOTHING, FACE, SOLID = 0, 1, 2
 
 
-class FaceHits(NamedTuple):
-    """Where chief rays meet the planes of faces (B, F)."""
-
-    distance: Floats
-    slope: Floats  # direction . normal
-    along_left: Floats  # from the middle of the outline
-    along_up: Floats
-    valid: Flags  # met inside the outline, from a side that counts
-
-
-class SolidHits(NamedTuple):
-    """Where chief rays meet solids (B, S), and the figures they come from (B, P)."""
-
-    enter: Floats
-    leave: Floats
-    slope: Floats  # (B, P) direction . plane normal
-    gap: Floats  # (B, P) offset - normal . position
-    candidate: Flags  # (B, S) present, and not the beam's own
-
-
 class Hits(NamedTuple):
-    """What is met first: kind, row, distance; for a solid the row of the plane entered."""
+    """What is met first by each beam (B,).
+
+    `plane` is the bounding plane by which a solid is entered, -1 where it is round there or
+    nothing of the kind was met; the last three say how a face is met.
+    """
 
     kind: Ints
-    row: Ints
+    row: Ints  # of the face or solid
     distance: Floats
     plane: Ints
-    faces: FaceHits
-    solids: SolidHits
+    slope: Floats  # direction . face normal
+    left: Floats  # mm from the middle of the outline
+    up: Floats
 
     def take(self, rows: Ints) -> Hits:
         """Return the hits of some beams."""
-        return Hits(
-            self.kind[rows],
-            self.row[rows],
-            self.distance[rows],
-            self.plane[rows],
-            FaceHits(*(value[rows] for value in self.faces)),
-            SolidHits(*(value[rows] for value in self.solids)),
+        return Hits(*(value[rows] for value in self))
+
+
+class FacesMet(NamedTuple):
+    """Where chief rays meet the planes of all faces (B, F)."""
+
+    distance: Floats
+    slope: Floats
+    left: Floats
+    up: Floats
+    valid: Flags  # inside the outline, from a side that counts
+
+    def take(self, rows: Ints) -> FacesMet:
+        """Return those of some beams."""
+        return FacesMet(*(value[rows] for value in self))
+
+
+class SolidsMet(NamedTuple):
+    """Where chief rays meet solids, and the figures they come from."""
+
+    slope: Floats  # (B, P) direction . plane normal
+    gap: Floats  # (B, P) offset - normal . position
+    round: RoundsMet
+    candidate: Flags  # (B, S) present, and not the beam's own
+
+    def take(self, rows: Ints) -> SolidsMet:
+        """Return those of some beams."""
+        return SolidsMet(
+            self.slope[rows],
+            self.gap[rows],
+            RoundsMet(*(v[rows] for v in self.round)),
+            self.candidate[rows],
         )
 
 
-def face_hits(front: Front, scene: Scene) -> FaceHits:
-    """Meet all planes of faces; beams inside glass meet only their own optic's."""
+class RoundsMet(NamedTuple):
+    """Coefficients of chief rays against cylinders (B, C): a t² + 2 b t + c0 = radius²."""
+
+    a: Floats
+    b: Floats
+    c0: Floats
+
+
+def inside_hits(front: Front, scene: Scene) -> Hits:
+    """Return which face of its own optic each beam inside glass meets."""
     f = scene.faces
-    slope = front.direction @ f.normal.T
-    offset = np.einsum("ij,ij->i", f.origin, f.normal)
-    gap = offset - front.position @ f.normal.T
-    with np.errstate(divide="ignore", invalid="ignore"):
-        distance = gap / slope
-    left = _along(front, f.origin, f.left, distance) - f.middle[:, 0]
-    up = _along(front, f.origin, f.up, distance) - f.middle[:, 1]
-    valid = _in_outline(left, up, f.radii, f.round) & np.isfinite(distance)
-    inside = front.within != OUTSIDE
-    valid &= np.where(
-        inside[:, None],
-        _from_inside(front, scene, slope, distance),
-        _from_outside(front, scene, slope, distance),
+    rows = scene.fixed.own_faces[front.within]  # (B, K)
+    normal, away = f.normal[rows], f.origin[rows] - front.position[:, None, :]
+    slope = np.einsum("bki,bi->bk", normal, front.direction)
+    gap = np.einsum("bki,bki->bk", normal, away)
+    leaving = (slope > _PARALLEL) | ((f.inside[rows] == Inside.BOTH) & (np.abs(slope) > _PARALLEL))
+    distance = np.where(leaving, gap, np.inf) / np.where(leaving, slope, 1.0)
+    to_face = front.direction[:, None, :] * np.where(leaving, distance, 0.0)[..., None] - away
+    left = np.einsum("bki,bki->bk", f.left[rows], to_face) - f.middle[rows, 0]
+    up = np.einsum("bki,bki->bk", f.up[rows], to_face) - f.middle[rows, 1]
+    valid = leaving & (rows >= 0) & (rows != front.face[:, None]) & (distance > -_TOUCH_MM)
+    # A spilled lump runs on the chief ray's line wherever that is: no outline holds it.
+    valid &= in_outline(left, up, f.radii[rows], f.round[rows]) | front.lump[:, None]
+    distance = np.where(valid, distance, np.inf)
+    best = distance.argmin(axis=1)
+    at = (np.arange(len(best)), best)
+    met = np.isfinite(distance[at])
+    return Hits(
+        np.where(met, FACE, NOTHING),
+        rows[at],
+        np.where(met, distance[at], 0.0),
+        np.full(len(best), -1),
+        slope[at],
+        left[at],
+        up[at],
     )
-    return FaceHits(distance, slope, left, up, valid)
 
 
-def _along(front: Front, origin: Floats, axis: Floats, distance: Floats) -> Floats:
-    start = front.position @ axis.T - np.einsum("ij,ij->i", origin, axis)
-    with np.errstate(invalid="ignore"):
-        met: Floats = start + distance * (front.direction @ axis.T)
-    return met
-
-
-def _in_outline(left: Floats, up: Floats, radii: Floats, is_round: Flags) -> Flags:
-    a, b = np.abs(left) / radii[:, 0], np.abs(up) / radii[:, 1]
-    with np.errstate(invalid="ignore", over="ignore"):
-        inside: Flags = np.where(is_round, a * a + b * b, np.maximum(a, b)) <= 1.0
+def in_outline(left: Floats, up: Floats, radii: Floats, is_round: Flags) -> Flags:
+    """Tell which points lie inside outlines with half sizes `radii`."""
+    a, b = np.abs(left) / radii[..., 0], np.abs(up) / radii[..., 1]
+    inside: Flags = np.where(is_round, a * a + b * b, np.maximum(a, b)) <= 1.0
     return inside
 
 
-def _from_inside(front: Front, scene: Scene, slope: Floats, distance: Floats) -> Flags:
-    f = scene.faces
-    own = scene.bulk_of_face == front.within[:, None]
-    leaving = (slope > 0.0) | (f.inside == Inside.BOTH)
-    other = np.arange(len(f.owner)) != front.face[:, None]
-    met: Flags = own & leaving & other & (distance > -_TOUCH_MM)
-    return met
-
-
-def _from_outside(front: Front, scene: Scene, slope: Floats, distance: Floats) -> Flags:
-    f = scene.faces
+def faces_met(front: Front, scene: Scene) -> FacesMet:
+    """Meet the planes of all faces from outside."""
+    f, count = scene.faces, len(scene.faces.owner)
+    onward = front.direction @ scene.fixed.face_axes
+    start = scene.fixed.face_offsets - front.position @ scene.fixed.face_axes
+    slope = onward[:, :count]
+    flat = np.abs(slope) < _PARALLEL
+    distance = np.where(flat, np.inf, start[:, :count]) / np.where(flat, 1.0, slope)
+    along = np.where(flat, 0.0, distance)
+    left = along * onward[:, count : 2 * count] - start[:, count : 2 * count]
+    up = along * onward[:, 2 * count :] - start[:, 2 * count :]
     entering = (slope < 0.0) | (f.acts == Acts.PASSES)
     same = f.owner == front.owner[:, None]
-    ahead = distance > np.where(same, _SKIN_MM, -_SKIN_MM)
-    met: Flags = scene.faces.present[front.variant] & entering & (f.inside != Inside.BOTH) & ahead
-    return met
+    ahead = distance > np.where(same, SKIN_MM, -SKIN_MM)
+    valid = f.present[front.variant] & entering & (f.inside != Inside.BOTH) & ahead & ~flat
+    valid &= in_outline(left, up, f.radii, f.round)
+    return FacesMet(distance, slope, left, up, valid)
 
 
-def solid_hits(front: Front, scene: Scene, faces: FaceHits) -> SolidHits:
-    """Meet all solids that a beam outside glass may meet."""
-    s = scene.solids
-    slope = front.direction @ s.plane_normal.T
-    gap = s.plane_offset - front.position @ s.plane_normal.T
-    enter, leave = _slabs(s, slope, gap, None)
-    _round_solids(front, s, None, enter, leave)
-    candidate = s.present[front.variant] & (front.within == OUTSIDE)[:, None]
-    candidate &= ~_own(front, scene, faces)
+def solids_met(front: Front, scene: Scene, faces: FacesMet) -> SolidsMet:
+    """Meet all solids from outside."""
+    s, planes = scene.solids, len(scene.solids.plane_solid)
+    onward = front.direction @ scene.fixed.plane_axes
+    start = front.position @ scene.fixed.plane_axes
+    along, mixed = onward[:, planes:], start[:, planes:] - scene.fixed.axis_offset
+    square = np.einsum("ij,ij->i", front.position, front.position)[:, None]
+    apart2 = square + scene.fixed.axis_square - 2.0 * (front.position @ s.axis_point.T)
+    dotted = np.einsum("ij,ij->i", front.position, front.direction)[:, None]
+    rounds = RoundsMet(
+        1.0 - along * along,
+        dotted - front.direction @ s.axis_point.T - mixed * along,
+        apart2 - mixed * mixed,
+    )
+    candidate = s.present[front.variant] & ~_own(front, scene, faces)
     left = np.flatnonzero(front.body >= 0)
     candidate[left, front.body[left]] = False
-    return SolidHits(enter, leave, slope, gap, candidate)
+    return SolidsMet(onward[:, :planes], s.plane_offset - start[:, :planes], rounds, candidate)
 
 
-def _own(front: Front, scene: Scene, faces: FaceHits) -> Flags:
+def _own(front: Front, scene: Scene, faces: FacesMet) -> Flags:
     """Tell which solids hold the optic that a beam comes from, or that it goes to.
 
     Light that leaves an optic, or meets its face inside the outline, passes the box that
@@ -137,169 +165,117 @@ def _own(front: Front, scene: Scene, faces: FaceHits) -> Flags:
     """
     s = scene.solids
     met = (faces.valid.astype(np.float32) @ scene.owner_of_face) > 0.0
-    pad = np.zeros((len(met), 1), dtype=np.bool_)
-    by_owner = np.concatenate(
-        (met, np.zeros((len(met), len(scene.sources)), dtype=np.bool_), pad), axis=1
-    )
+    others = np.zeros((len(met), len(scene.sources) + 1), dtype=np.bool_)
+    by_owner = np.concatenate((met, others), axis=1)
     own: Flags = scene.close & (by_owner[:, s.owner] | (front.owner[:, None] == s.owner))
     return own
 
 
-def _slabs(s: Solids, slope: Floats, gap: Floats, margin: Floats | None) -> tuple[Floats, Floats]:
-    """Return where rays enter and leave each convex solid, its planes moved out by a margin."""
-    if margin is not None:
-        gap = gap + margin[:, None]
-    with np.errstate(divide="ignore", invalid="ignore"):
-        distance = gap / slope
-    flat = np.abs(slope) < _PARALLEL
-    apart = flat & (gap < 0.0)
-    enter = np.where(slope < 0.0, distance, -np.inf)
-    leave = np.where(slope > 0.0, distance, np.inf)
+def crossings(s: Solids, met: SolidsMet, margin: Floats | None = None) -> tuple[Floats, Floats]:
+    """Return where rays enter and leave each solid (B, S), grown by a margin (B,) in mm."""
+    gap = met.gap if margin is None else met.gap + margin[:, None]
+    flat = np.abs(met.slope) < _PARALLEL
+    distance = gap / np.where(flat, 1.0, met.slope)
+    enter = np.where(met.slope < 0.0, distance, -np.inf)
+    leave = np.where(met.slope > 0.0, distance, np.inf)
     if flat.any():
-        enter[flat], leave[flat] = -np.inf, np.inf
-        enter[apart] = np.inf
-    return (
-        np.maximum.reduceat(enter, s.plane_start, axis=1),
-        np.minimum.reduceat(leave, s.plane_start, axis=1),
-    )
+        enter[flat] = np.where(gap[flat] < 0.0, np.inf, -np.inf)
+        leave[flat] = np.inf
+    first = np.maximum.reduceat(enter, s.plane_start, axis=1)
+    last = np.minimum.reduceat(leave, s.plane_start, axis=1)
+    if len(s.axis_solid):
+        _narrow_to_rounds(s, met.round, margin, first, last)
+    return first, last
 
 
-def _round_solids(
-    front: Front, s: Solids, margin: Floats | None, enter: Floats, leave: Floats
+def _narrow_to_rounds(
+    s: Solids, met: RoundsMet, margin: Floats | None, enter: Floats, leave: Floats
 ) -> None:
-    """Narrow entry and exit of round solids to their cylinders, in place."""
-    if not len(s.axis_solid):
-        return
-    along = front.direction @ s.axis.T
-    start = front.position @ s.axis.T - np.einsum("ij,ij->i", s.axis_point, s.axis)
-    apart2 = _squared_apart(front.position, s.axis_point)
-    mixed = (
-        np.einsum("ij,ij->i", front.position, front.direction)[:, None]
-        - front.direction @ s.axis_point.T
-    )
     radius = s.axis_radius if margin is None else s.axis_radius + margin[:, None]
-    a = 1.0 - along * along
-    b = mixed - start * along
-    c = apart2 - start * start - radius * radius
-    square = b * b - a * c
-    with np.errstate(divide="ignore", invalid="ignore"):
-        root = np.sqrt(np.maximum(square, 0.0))
-        first, last = (-b - root) / a, (-b + root) / a
-    axial = a < _PARALLEL
+    c = met.c0 - radius * radius
+    square = met.b * met.b - met.a * c
+    axial = met.a < _PARALLEL
+    root = np.sqrt(np.maximum(square, 0.0))
+    scale = 1.0 / np.where(axial, 1.0, met.a)
     missed = np.where(axial, c > 0.0, square < 0.0)
-    first = np.where(missed, np.inf, np.where(axial, -np.inf, first))
-    last = np.where(missed, -np.inf, np.where(axial, np.inf, last))
-    enter[:, s.axis_solid] = np.maximum(enter[:, s.axis_solid], first)
-    leave[:, s.axis_solid] = np.minimum(leave[:, s.axis_solid], last)
+    first = np.where(axial, -np.inf, (-met.b - root) * scale)
+    last = np.where(axial, np.inf, (-met.b + root) * scale)
+    enter[:, s.axis_solid] = np.maximum(enter[:, s.axis_solid], np.where(missed, np.inf, first))
+    leave[:, s.axis_solid] = np.minimum(leave[:, s.axis_solid], np.where(missed, -np.inf, last))
 
 
-def _squared_apart(position: Floats, point: Floats) -> Floats:
-    apart: Floats = (
-        np.einsum("ij,ij->i", position, position)[:, None]
-        + np.einsum("ij,ij->i", point, point)
-        - 2.0 * (position @ point.T)
-    )
-    return apart
-
-
-def nearest(front: Front, scene: Scene) -> Hits:
-    """Return what each beam meets first: a face, a solid, or nothing within reach."""
-    faces = face_hits(front, scene)
-    solids = solid_hits(front, scene, faces)
+def nearest(front: Front, scene: Scene) -> tuple[Hits, FacesMet, SolidsMet]:
+    """Return what each beam outside glass meets first: a face, a solid, or nothing."""
+    s = scene.solids
+    faces = faces_met(front, scene)
+    solids = solids_met(front, scene, faces)
     beams = np.arange(len(front.variant))
-    at_face = np.where(faces.valid, faces.distance, np.inf)
-    face = at_face.argmin(axis=1) if at_face.shape[1] else np.zeros(len(beams), dtype=np.int64)
-    to_face = at_face[beams, face] if at_face.shape[1] else np.full(len(beams), np.inf)
-    blocked = solids.candidate & (solids.enter <= solids.leave) & (solids.leave > _SKIN_MM)
-    blocked &= ~_through_hole(front, scene.solids, solids)
-    at_solid = np.where(blocked, np.maximum(solids.enter, 0.0), np.inf)
-    solid = at_solid.argmin(axis=1)
-    to_solid = at_solid[beams, solid]
-    kind = np.where(to_face <= to_solid + _SKIN_MM, FACE, SOLID)
-    distance = np.where(kind == FACE, to_face, to_solid)
-    kind[~np.isfinite(distance)] = NOTHING
-    row = np.where(kind == FACE, face, solid)
-    plane = _plane_entered(scene.solids, solids, solid, beams)
-    return Hits(kind, row, distance, plane, faces, solids)
+    face, to_face = _first(np.where(faces.valid, faces.distance, np.inf), beams)
+    enter, leave = crossings(s, solids)
+    blocked = solids.candidate & (enter <= leave) & (leave > SKIN_MM)
+    if len(scene.fixed.pierced) and blocked[:, scene.fixed.pierced].any():
+        blocked &= ~_through_hole(front, s)
+    solid, to_solid = _first(np.where(blocked, np.maximum(enter, 0.0), np.inf), beams)
+    at_face = to_face <= to_solid + SKIN_MM
+    distance = np.where(at_face, to_face, to_solid)
+    kind = np.where(np.isfinite(distance), np.where(at_face, FACE, SOLID), NOTHING)
+    plane = np.full(len(beams), -1)
+    rows = np.flatnonzero(kind == SOLID)
+    if len(rows):
+        plane[rows] = _plane_entered(s, solids, solid[rows], rows, enter[rows, solid[rows]])
+    at = (beams, face)
+    there = len(scene.faces.owner) > 0
+    nothing = np.zeros(len(beams))
+    hits = Hits(
+        kind,
+        np.where(kind == FACE, face, solid),
+        np.where(kind == NOTHING, scene.reach_mm, distance),
+        plane,
+        faces.slope[at] if there else nothing,
+        faces.left[at] if there else nothing,
+        faces.up[at] if there else nothing,
+    )
+    return hits, faces, solids
 
 
-def _plane_entered(s: Solids, hits: SolidHits, solid: Ints, beams: Ints) -> Ints:
+def _first(distance: Floats, beams: Ints) -> tuple[Ints, Floats]:
+    if not distance.shape[1]:
+        return np.zeros(len(beams), dtype=np.int64), np.full(len(beams), np.inf)
+    row = distance.argmin(axis=1)
+    return row, distance[beams, row]
+
+
+def _plane_entered(s: Solids, met: SolidsMet, solid: Ints, rows: Ints, enter: Floats) -> Ints:
     """Return the plane by which each beam enters its solid; -1 where it is round there."""
-    own = s.plane_solid == solid[:, None]
-    with np.errstate(divide="ignore", invalid="ignore"):
-        distance = np.where(own & (hits.slope < 0.0), hits.gap / hits.slope, -np.inf)
+    slope = met.slope[rows]
+    own = (s.plane_solid == solid[:, None]) & (slope < -_PARALLEL)
+    distance = np.where(own, met.gap[rows], -np.inf) / np.where(own, slope, 1.0)
+    distance = np.where(own, distance, -np.inf)
     plane: Ints = distance.argmax(axis=1)
-    enter = hits.enter[beams, solid]
-    flat = np.abs(distance[beams, plane] - enter) <= _SKIN_MM
+    flat = np.abs(distance[np.arange(len(rows)), plane] - enter) <= SKIN_MM
     return np.where(flat, plane, -1)
 
 
-def _through_hole(front: Front, s: Solids, hits: SolidHits) -> Flags:
-    """Tell which solids a ray passes through one of their openings."""
-    passed = np.zeros(hits.enter.shape, dtype=np.bool_)
-    if not len(s.hole_solid):
-        return passed
-    first = _in_hole(front, s, s.hole_centre)
-    second = _in_hole(front, s, s.hole_centre + s.hole_through)
-    through = first & second
+def _through_hole(front: Front, s: Solids) -> Flags:
+    """Tell which solids (B, S) a ray passes through one of their openings."""
+    passed = np.zeros((len(front.variant), len(s.owner)), dtype=np.bool_)
+    through = _in_hole(front, s, s.hole_centre) & _in_hole(front, s, s.hole_centre + s.hole_through)
     for hole in np.flatnonzero(through.any(axis=0)):
         passed[:, s.hole_solid[hole]] |= through[:, hole]
     return passed
 
 
 def _in_hole(front: Front, s: Solids, centre: Floats) -> Flags:
-    length = np.sqrt(np.einsum("ij,ij->i", s.hole_through, s.hole_through))
-    normal = s.hole_through / length[:, None]
-    slope = front.direction @ normal.T
-    gap = np.einsum("ij,ij->i", centre, normal) - front.position @ normal.T
-    with np.errstate(divide="ignore", invalid="ignore"):
-        distance = gap / slope
-    coordinates = []
+    slope = front.direction @ s.hole_through.T
+    flat = np.abs(slope) < _PARALLEL
+    gap = np.einsum("ij,ij->i", centre, s.hole_through) - front.position @ s.hole_through.T
+    distance = np.where(flat, 0.0, gap) / np.where(flat, 1.0, slope)
+    places = []
     for k in (0, 1):
         axis = s.hole_axes[:, k]
-        scale = np.einsum("ij,ij->i", axis, axis)
-        coordinates.append(_along(front, centre, axis, distance) / scale)
-    a, b = np.abs(coordinates[0]), np.abs(coordinates[1])
-    with np.errstate(invalid="ignore", over="ignore"):
-        inside = np.where(s.hole_round, a * a + b * b, np.maximum(a, b)) <= 1.0
-    met: Flags = inside & np.isfinite(distance)
-    return met
-
-
-def near(front: Front, scene: Scene, hits: Hits, reach_mm: Floats) -> Flags:
-    """Tell beside which chief rays (B,) a body comes within `reach_mm` before what they meet.
-
-    A body counts where its planes, moved outwards by the reach, are crossed; that is never
-    less than what lies within the reach.
-    """
-    s = scene.solids
-    enter, leave = _slabs(s, hits.solids.slope, hits.solids.gap, reach_mm)
-    _round_solids(front, s, reach_mm, enter, leave)
-    limit = np.where(hits.kind == NOTHING, scene.reach_mm, hits.distance)[:, None]
-    close = hits.solids.candidate & (enter <= np.minimum(leave, limit)) & (leave > 0.0)
-    beams = np.arange(len(limit))
-    is_solid = hits.kind == SOLID
-    close[beams[is_solid], hits.row[is_solid]] = False
-    met_owner = np.where(
-        hits.kind == FACE, scene.faces.owner[np.where(hits.kind == FACE, hits.row, 0)], -2
-    )
-    close &= ~(scene.close & (s.owner == met_owner[:, None]))
-    result: Flags = close.any(axis=1) | _near_faces(front, scene, hits, reach_mm, limit, met_owner)
-    return result & (front.within == OUTSIDE)
-
-
-def _near_faces(
-    front: Front, scene: Scene, hits: Hits, reach_mm: Floats, limit: Floats, met_owner: Ints
-) -> Flags:
-    f = scene.faces
-    h = hits.faces
-    with np.errstate(divide="ignore", invalid="ignore"):
-        spread = reach_mm[:, None] / np.abs(h.slope)
-        a = np.abs(h.along_left) - f.radii[:, 0] - spread
-        b = np.abs(h.along_up) - f.radii[:, 1] - spread
-    touched = (a < 0.0) & (b < 0.0) & (np.abs(h.slope) > _GRAZING)
-    between = (h.distance > -_SKIN_MM) & (h.distance < limit)
-    strange = (f.owner != front.owner[:, None]) & (f.owner != met_owner[:, None])
-    counts = f.present[front.variant] & (f.inside != Inside.BOTH)
-    result: Flags = (touched & between & strange & counts).any(axis=1)
-    return result
+        start = front.position @ axis.T - np.einsum("ij,ij->i", centre, axis)
+        along = start + distance * (front.direction @ axis.T)
+        places.append(np.abs(along) / np.einsum("ij,ij->i", axis, axis))
+    a, b = places
+    inside: Flags = ~flat & (np.where(s.hole_round, a * a + b * b, np.maximum(a, b)) <= 1.0)
+    return inside

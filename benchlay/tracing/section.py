@@ -15,7 +15,7 @@ from benchlay.elements._kind import Acts, Inside
 from benchlay.optics.shares import partition
 from benchlay.scene.tables import PART, SINK, Flags, Floats, Ints, Scene
 from benchlay.tracing.front import OUTSIDE, Front
-from benchlay.tracing.hits import FACE, SOLID, Hits
+from benchlay.tracing.hits import FACE, NOTHING, SOLID, Hits
 from benchlay.tracing.silhouettes import (
     CORE,
     HOLE,
@@ -64,46 +64,37 @@ def uncut(power: Floats, kept: Floats) -> Cut:
     return Cut(power, kept, _no_landings(), Spills(*_nothing()))
 
 
-def cut(front: Front, scene: Scene, hits: Hits, beams: Ints, reach: Floats) -> Cut:
-    """Share out the power of some beams (`beams`, ascending) of a front.
+def cut(front: Front, scene: Scene, hits: Hits, reach: Floats) -> Cut:
+    """Share out the power of beams among all that stands in their cross-sections.
 
     Parameters
     ----------
     front, hits : Front, Hits
-        The generation, after what happens inside optics on the way.
-    beams : (n,) ndarray of int
-        Rows of the front to be cut.
-    reach : (n,) ndarray of float64
+        Beams, after what happens inside optics on the way, and what their chief rays meet.
+    reach : (N,) ndarray of float64
         Radius in scaled coordinates outside which the share does not count.
     """
-    core, kept = front.power.copy(), front.kept.copy()
-    if not len(beams):
-        return uncut(core, kept)
-    outlines = gather(front, scene, hits, beams, reach)
-    divided = partition(outlines.shapes(), len(beams))
+    count = len(reach)
+    outlines = gather(front, scene, hits, reach)
+    divided = partition(outlines.shapes(), count)
     share = divided.share
-    whole = front.power[beams] / front.kept[beams]
+    whole = front.power / front.kept
     is_core = outlines.role == CORE
-    mine = np.bincount(outlines.problem[is_core], share[is_core], minlength=len(beams))
-    nothing_met = hits.kind[beams] == 0
+    mine = np.bincount(outlines.problem[is_core], share[is_core], minlength=count)
+    nothing_met = hits.kind == NOTHING
     mine = np.where(nothing_met, mine + divided.free, mine)
     beside = ~is_core & (outlines.role != HOLE)
-    blocked = np.bincount(outlines.problem[beside], share[beside], minlength=len(beams))
+    blocked = np.bincount(outlines.problem[beside], share[beside], minlength=count)
     blocked = np.where(nothing_met, blocked, blocked + divided.free)
-    gone = 1.0 - front.kept[beams]
+    gone = 1.0 - front.kept
     # A beam cut before: only what exceeds the earlier loss is lost now, since the power
     # beside the edges that cut it is not there any more.
     factor = np.where(blocked > gone, (blocked - gone) / np.where(blocked > 0.0, blocked, 1.0), 0.0)
-    kept[beams] = np.where(blocked > gone, mine, front.kept[beams])
-    core[beams] = kept[beams] * whole
+    kept = np.where(blocked > gone, mine, front.kept)
     power = share * (factor * whole)[outlines.problem]
     free = np.where(nothing_met, 0.0, divided.free * factor * whole)
-    return Cut(
-        core,
-        kept,
-        _landings(outlines, power, free, beams, beside, front),
-        _spills(outlines, power, beams),
-    )
+    landings = _landings(outlines, power, free, beside, front)
+    return Cut(kept * whole, kept, landings, _spills(outlines, power))
 
 
 def _nothing() -> tuple[Ints, Ints, Floats]:
@@ -117,42 +108,43 @@ def _no_landings() -> Landings:
 
 
 def _landings(
-    outlines: Outlines, power: Floats, free: Floats, beams: Ints, beside: Flags, front: Front
+    outlines: Outlines, power: Floats, free: Floats, beside: Flags, front: Front
 ) -> Landings:
     rows = np.flatnonzero(beside & (outlines.role != OPTIC) & (power > 0.0))
     passing = np.flatnonzero(free > 0.0)
     # Inside glass what misses the clear region meets the barrel; outside it goes on for good.
-    inside = front.within[beams[passing]] != OUTSIDE
+    inside = front.within[passing] != OUTSIDE
     sink = np.where(inside, SINK["rim"], SINK["escaped"])
     name = np.where(inside, outlines.inside_name[passing], -1)
     return Landings(
-        np.concatenate((beams[outlines.problem[rows]], beams[passing])),
+        np.concatenate((outlines.problem[rows], passing)),
         np.concatenate((outlines.sink[rows], sink)),
         np.concatenate((outlines.name[rows], name)),
         np.concatenate((power[rows], free[passing])),
     )
 
 
-def _spills(outlines: Outlines, power: Floats, beams: Ints) -> Spills:
+def _spills(outlines: Outlines, power: Floats) -> Spills:
     rows = np.flatnonzero((outlines.role == OPTIC) & (power > 0.0))
-    return Spills(beams[outlines.problem[rows]], outlines.face[rows], power[rows])
+    return Spills(outlines.problem[rows], outlines.face[rows], power[rows])
 
 
-def gather(front: Front, scene: Scene, hits: Hits, beams: Ints, reach: Floats) -> Outlines:
-    """Return all outlines that matter in the cross-sections of some beams."""
-    part = front.take(beams)
-    kind, row = hits.kind[beams], hits.row[beams]
-    met = np.where(kind == FACE, scene.faces.owner[np.where(kind == FACE, row, 0)], -2)
-    inside = part.within != OUTSIDE
-    radius = _radius_bound(part, reach)
-    faces = _faces_in_reach(part, scene, hits, beams, radius, inside)
-    solids = _solids_in_reach(part, scene, radius) & ~inside[:, None]
-    own_solid = np.where(kind == SOLID, row, -1)
+def gather(front: Front, scene: Scene, hits: Hits, reach: Floats) -> Outlines:
+    """Return all outlines that matter in the cross-sections of beams."""
+    on_face = hits.kind == FACE
+    target = np.full(len(reach), -2)
+    if len(scene.faces.owner):
+        target = np.where(on_face, scene.faces.owner[np.where(on_face, hits.row, 0)], -2)
+    inside = front.within != OUTSIDE
+    bound = _radius_bound(front, reach)
+    faces = _faces_in_reach(front, scene, hits, bound, inside)
+    solids = _solids_in_reach(front, scene, bound) & ~inside[:, None]
+    own = np.where(hits.kind == SOLID, hits.row, -1)
     pieces = [
-        face_outlines(part, scene, faces, kind == FACE, row, reach),
-        *_solid_outlines(part, scene, solids, met, own_solid, reach),
+        face_outlines(front, scene, faces, on_face, hits.row, reach),
+        *_solid_outlines(front, scene, solids, target, own, reach),
     ]
-    return Outlines.joined(pieces, 1, scene, part)  # the second piece: flat sides
+    return Outlines.joined(pieces, 1, scene, front)  # the second piece: flat sides
 
 
 def _radius_bound(part: Front, reach: Floats) -> Floats:
@@ -184,19 +176,17 @@ def _in_reach(part: Front, centre: Floats, size: Floats, bound: Floats) -> Flags
     return close
 
 
-def _faces_in_reach(
-    part: Front, scene: Scene, hits: Hits, beams: Ints, bound: Floats, inside: Flags
-) -> Flags:
+def _faces_in_reach(part: Front, scene: Scene, hits: Hits, bound: Floats, inside: Flags) -> Flags:
     f = scene.faces
+    if not len(f.owner):
+        return np.zeros((len(inside), 0), dtype=np.bool_)
     size = np.sqrt(np.einsum("ij,ij->i", f.radii, f.radii)) + np.abs(f.middle).sum(axis=1)
     close = _in_reach(part, f.origin, size, bound) & f.present[part.variant]
-    slope = hits.faces.slope[beams]
-    entering = (slope < 0.0) | (f.acts == Acts.PASSES)
+    entering = (part.direction @ f.normal.T < 0.0) | (f.acts == Acts.PASSES)
     same = f.owner == part.owner[:, None]
     close &= entering & ~same & (f.inside != Inside.BOTH) & ~inside[:, None]
-    is_face = hits.kind[beams] == FACE
-    chosen = np.flatnonzero(is_face)
-    close[chosen, hits.row[beams[chosen]]] = True
+    chosen = np.flatnonzero(hits.kind == FACE)
+    close[chosen, hits.row[chosen]] = True
     return close
 
 
@@ -220,5 +210,5 @@ def _solid_outlines(
         patches,
         disc_outlines(part, scene, solids, own, reach),
         cylinder_sides(part, scene, solids, own, reach),
-        hole_outlines(part, scene, solids, patches, reach),
+        hole_outlines(part, scene, patches, reach),
     ]

@@ -15,7 +15,7 @@ import numpy as np
 from benchlay.elements._kind import Acts
 from benchlay.optics.rays import cross, dot
 from benchlay.optics.shares import Shapes
-from benchlay.scene.tables import Flags, Floats, Ints, Scene, Solids
+from benchlay.scene.tables import PART, Flags, Floats, Ints, Scene, Solids
 from benchlay.tracing.clipping import clip_behind
 from benchlay.tracing.front import Front
 
@@ -23,6 +23,7 @@ CORE, BESIDE, OPTIC, BODY, HOLE = range(5)
 _GRAZING = 0.2  # sine of the angle between beam and plane below which it counts as lying along
 _CLEAR_ORDER, _OUTLINE_ORDER, _SOLID_ORDER = 0, 1, 2
 _FLAT = 1e-12
+_EDGE_ON = 1e-6
 
 
 class Outlines(NamedTuple):
@@ -205,10 +206,15 @@ def _scaled(root: tuple[Floats, Floats, Floats], x: Floats, y: Floats) -> Floats
 
 
 def _pieces(
-    frame: Frame, plates: Plates, order: Ints, labels: tuple[Ints, Ints, Ints, Ints, Ints]
+    frame: Frame,
+    plates: Plates,
+    order: Ints,
+    labels: tuple[Ints, Ints, Ints, Ints, Ints],
+    reach: Floats,
 ) -> Outlines:
-    """Return outlines of plates; labels are role, sink, name, face, row."""
+    """Return outlines of plates; labels are role, sink, name, face, row (of a host, for holes)."""
     vertices, centre, axes, corners, depth, ahead = _plate_shapes(frame, plates)
+    ahead &= _touches(vertices, reach[frame.problem])
     none = np.full(len(corners), -1)
     columns = (frame.problem, corners, vertices, centre, axes, depth, order, none, *labels)
     return Outlines(*(column[ahead] for column in columns), _NO_INTS)
@@ -218,7 +224,6 @@ def face_outlines(
     part: Front, scene: Scene, close: Flags, met: Flags, row: Ints, reach: Floats
 ) -> Outlines:
     """Return clear regions and, where they are larger, whole outlines of faces."""
-    del reach
     f = scene.faces
     problem, face = np.nonzero(close)
     own = met[problem] & (face == row[problem])
@@ -242,7 +247,7 @@ def face_outlines(
         np.full(len(face), -1),
     )
     order = np.where(is_ring, _OUTLINE_ORDER, _CLEAR_ORDER)
-    return _pieces(frame_of(part, problem), plates, order, labels)
+    return _pieces(frame_of(part, problem), plates, order, labels, reach)
 
 
 def _solid_labels(
@@ -254,9 +259,13 @@ def _solid_labels(
 
 def disc_outlines(part: Front, scene: Scene, close: Flags, own: Ints, reach: Floats) -> Outlines:
     """Return the round ends of solids, both of them: together with the sides they make the body."""
-    del reach
     s = scene.solids
-    problem, disc = np.nonzero(close[:, s.disc_solid])
+    slopes = part.direction @ s.disc_normal.T
+    # An end that faces the light is the optic's own face, which is an outline already; ends
+    # seen edge-on have no area.
+    facing = (slopes < -_GRAZING) & (s.part[s.disc_solid] == PART["edge"])
+    seen = close[:, s.disc_solid] & ~facing & (np.abs(slopes) > _EDGE_ON)
+    problem, disc = np.nonzero(seen)
     plates = Plates(
         s.disc_centre[disc],
         s.disc_axes[disc, 0],
@@ -264,18 +273,17 @@ def disc_outlines(part: Front, scene: Scene, close: Flags, own: Ints, reach: Flo
         np.ones(len(disc), dtype=np.bool_),
     )
     labels = _solid_labels(s, problem, s.disc_solid[disc], own, np.full(len(disc), -1))
-    return _pieces(frame_of(part, problem), plates, np.full(len(disc), _SOLID_ORDER), labels)
+    return _pieces(frame_of(part, problem), plates, np.full(len(disc), _SOLID_ORDER), labels, reach)
 
 
 def cylinder_sides(part: Front, scene: Scene, close: Flags, own: Ints, reach: Floats) -> Outlines:
     """Return the sides of round solids as the rectangles in which the beam sees them."""
-    del reach
     s = scene.solids
     problem, number = np.nonzero(close[:, s.axis_solid])
-    frame = frame_of(part, problem)
-    axis = s.axis[number]
-    across = cross(frame.direction, axis)
-    seen = np.sqrt(dot(across, across)) > _FLAT
+    direction, axis = part.direction[problem], s.axis[number]
+    across = cross(direction, axis)
+    seen = dot(across, across) > _EDGE_ON**2
+    problem, number, axis, across = problem[seen], number[seen], axis[seen], across[seen]
     half = 0.5 * s.axis_length[number]
     plates = Plates(
         s.axis_point[number] + half[:, None] * axis,
@@ -284,13 +292,8 @@ def cylinder_sides(part: Front, scene: Scene, close: Flags, own: Ints, reach: Fl
         np.zeros(len(number), dtype=np.bool_),
     )
     labels = _solid_labels(s, problem, s.axis_solid[number], own, np.full(len(number), -1))
-    sides = _pieces(frame, plates, np.full(len(number), _SOLID_ORDER), labels)
-    kept = seen[_ahead(frame, plates)]
-    return Outlines(*(column[kept] for column in sides[:-1]), _NO_INTS)
-
-
-def _ahead(frame: Frame, plates: Plates) -> Flags:
-    return _plate_shapes(frame, plates)[-1]
+    order = np.full(len(number), _SOLID_ORDER)
+    return _pieces(frame_of(part, problem), plates, order, labels, reach)
 
 
 def patch_outlines(
@@ -353,11 +356,8 @@ def _flat_sides(
     return vertices, plane
 
 
-def hole_outlines(
-    part: Front, scene: Scene, close: Flags, patches: Outlines, reach: Floats
-) -> Outlines:
+def hole_outlines(part: Front, scene: Scene, patches: Outlines, reach: Floats) -> Outlines:
     """Return the openings of panels as holes in the sides that are seen."""
-    del close, reach
     s = scene.solids
     if not len(s.hole_solid) or not len(patches.row):
         return Outlines(*_EMPTY, _NO_INTS)
@@ -369,8 +369,7 @@ def hole_outlines(
     plates = Plates(
         s.hole_centre[hole], s.hole_axes[hole, 0], s.hole_axes[hole, 1], s.hole_round[hole]
     )
-    frame = frame_of(part, problem)
     none = np.full(len(hole), -1)
-    labels = (np.full(len(hole), HOLE), none, none, none, none)
-    found = _pieces(frame, plates, none, labels)
-    return found._replace(hole_of=host[_ahead(frame, plates)])
+    labels = (np.full(len(hole), HOLE), none, none, none, host)
+    found = _pieces(frame_of(part, problem), plates, none, labels, reach)
+    return found._replace(hole_of=found.row)

@@ -42,7 +42,7 @@ class Ways(NamedTuple):
     main: Flags  # (F, 2) reflected, transmitted
     elements: Mapping[str, int]
 
-    def follow(self, node: Ints, owner: Ints, face_name: Ints, event: int) -> Ints:
+    def follow(self, node: Ints, owner: Ints, face_name: Ints, event: Ints | int) -> Ints:
         """Return the nodes after events at faces; -1 off the tree."""
         if not len(self.codes):
             return np.full(len(node), -1)
@@ -60,7 +60,7 @@ class Ways(NamedTuple):
         return items[leg + 1].name
 
 
-def _code(node: Ints, owner: Ints, face_name: Ints, event: int) -> Ints:
+def _code(node: Ints, owner: Ints, face_name: Ints, event: Ints | int) -> Ints:
     code: Ints = ((node * 4096 + owner) * 16 + face_name) * 8 + event
     return code
 

@@ -1,0 +1,223 @@
+"""What leaves the end of each leg: reflected, refracted, passed, spilled, or nothing more."""
+
+from __future__ import annotations
+
+import numpy as np
+
+from benchlay.elements._kind import Acts, Inside
+from benchlay.optics import coherency, moments
+from benchlay.optics.rays import dot
+from benchlay.scene.tables import SINK, Floats, Ints, Scene
+from benchlay.tracing.faces import Meeting, divide, plane_of_incidence
+from benchlay.tracing.front import OUTSIDE, REFLECTED, SPILLED, TRANSMITTED, Front, join
+from benchlay.tracing.hits import FACE, NOTHING, SOLID, Hits
+from benchlay.tracing.run_state import RunState
+from benchlay.tracing.section import Spills
+
+_FLAT = 1e-12
+
+
+def children(core: Front, hits: Hits, spills: Spills, state: RunState) -> Front:
+    """Book what ends here, and return the beams that go on."""
+    born: list[Front] = []
+    kind = hits.kind
+    at_face = (kind == FACE).nonzero()[0]
+    if len(at_face) == len(kind):
+        born += _from_faces(core, hits.row, at_face, state)
+    else:
+        _end_nowhere(core, (kind == NOTHING).nonzero()[0], state)
+        born += _from_solids(core, hits, (kind == SOLID).nonzero()[0], state)
+        if len(at_face):
+            born += _from_faces(core.take(at_face), hits.row[at_face], at_face, state)
+    if len(spills.beam):
+        lumps = _lumps(core, spills.beam, spills.face, spills.power, state.scene)
+        born += _from_faces(lumps, spills.face, spills.beam, state, spilled=True)
+    return _living(born, core, state)
+
+
+def _end_nowhere(core: Front, rows: Ints, state: RunState) -> None:
+    """Book what meets nothing: inside glass it ends on the barrel, outside it is gone."""
+    if not len(rows):
+        return
+    inside = core.within[rows] != OUTSIDE
+    power = core.power
+    barrel, free = rows[inside], rows[~inside]
+    state.book(barrel, SINK["rim"], state.scene.face_owner_name[core.face[barrel]], power[barrel])
+    state.book(free, SINK["escaped"], -1, power[free])
+
+
+def _lumps(core: Front, beam: Ints, face: Ints, power: Floats, scene: Scene) -> Front:
+    """Return what falls on further optics, as lumps where the chief ray crosses their plane."""
+    lump = core.take(beam)
+    f = scene.faces
+    slope = dot(lump.direction, f.normal[face])
+    safe = np.where(np.abs(slope) < _FLAT, _FLAT, slope)
+    ahead = dot(f.origin[face] - lump.position, f.normal[face]) / safe
+    own = lump.power
+    even = np.stack((0.5 * power, 0.5 * power, 0.0 * power, 0.0 * power))
+    whole = np.where(own > 0.0, lump.coherency * (power / np.where(own > 0.0, own, 1.0)), even)
+    return lump.changed(
+        position=lump.position + ahead[:, None] * lump.direction,
+        optical_path=lump.optical_path + ahead * lump.index,
+        moments=moments.propagate(lump.moments, ahead, lump.index),
+        coherency=whole,
+        kept=1.0,
+        lump=1,
+    )
+
+
+def _from_solids(core: Front, hits: Hits, rows: Ints, state: RunState) -> list[Front]:
+    s = state.scene.solids
+    if not len(rows):
+        return []
+    solid = hits.row[rows]
+    # A round side has no plane to reflect from; those bodies state no specular share.
+    specular = np.where(hits.plane[rows] >= 0, s.specular[solid], 0.0)
+    state.book(rows, s.sink[solid], s.name[solid], core.power[rows] * (1.0 - specular))
+    shiny = specular.nonzero()[0]
+    if not len(shiny):
+        return []
+    at = rows[shiny]
+    mirrored = _mirrored(core.take(at), s.plane_normal[hits.plane[at]], specular[shiny])
+    mirrored.set(face=-1, body=solid[shiny], owner=s.owner[solid[shiny]])
+    return [mirrored]
+
+
+def _mirrored(beam: Front, normal: Floats, share: Floats) -> Front:
+    """Return the specular share of light on an opaque surface: an ideal mirror's phases."""
+    s, cos, sin = plane_of_incidence(beam.direction, normal, beam.axis)
+    j = coherency.rotate(beam.coherency, cos, sin)
+    m = moments.rotate(beam.moments, cos, sin)
+    root = np.sqrt(share)
+    return beam.changed(
+        direction=beam.direction - (2.0 * dot(beam.direction, normal))[:, None] * normal,
+        axis=s,
+        coherency=coherency.diagonal(j, -root, root),
+        moments=moments.scale_second(m, -1.0),
+        node=-1,
+        splits=beam.splits + 1,
+        event=REFLECTED,
+    )
+
+
+def _from_faces(
+    core: Front, face: Ints, rows: Ints, state: RunState, *, spilled: bool = False
+) -> list[Front]:
+    """Return the children of beams at faces, and book what the faces swallow."""
+    acts = state.scene.faces.acts[face]
+    optic = (acts == Acts.INTERFACE) | (acts == Acts.LENS)
+    if optic.all():
+        return [_divided(core, face, rows, state, spilled=spilled)]
+    born: list[Front] = []
+    for kind, work in (
+        (acts == Acts.OPAQUE, _opaque),
+        (acts == Acts.PASSES, _passed),
+        (optic, _divided),
+    ):
+        some = kind.nonzero()[0]
+        if len(some):
+            born.append(work(core.take(some), face[some], rows[some], state, spilled=spilled))
+    return born
+
+
+def _opaque(core: Front, face: Ints, rows: Ints, state: RunState, *, spilled: bool) -> Front:
+    f = state.scene.faces
+    inside = core.within != OUTSIDE
+    specular = np.where(inside, 0.0, f.specular[face])
+    sink = np.where(inside, SINK["absorbed"], f.sink[face])
+    state.book(rows, sink, state.scene.face_owner_name[face], core.power * (1.0 - specular))
+    shiny = specular.nonzero()[0]
+    at = face[shiny]
+    mirrored = _mirrored(core.take(shiny), f.normal[at], specular[shiny])
+    mirrored.set(face=at, body=-1, owner=f.owner[at])
+    if spilled:
+        mirrored.set(event=SPILLED)
+    return mirrored
+
+
+def _passed(core: Front, face: Ints, rows: Ints, state: RunState, *, spilled: bool) -> Front:
+    del rows  # nothing is swallowed
+    f = state.scene.faces
+    node = state.ways.follow(core.node, f.owner[face], f.name[face], TRANSMITTED)
+    return core.changed(
+        face=face,
+        body=-1,
+        owner=f.owner[face],
+        node=-1 if spilled else node,
+        event=SPILLED if spilled else TRANSMITTED,
+    )
+
+
+def _divided(core: Front, face: Ints, rows: Ints, state: RunState, *, spilled: bool) -> Front:
+    """Return the reflected children, then the transmitted ones."""
+    scene = state.scene
+    f, count = scene.faces, len(face)
+    meeting = _meeting(core, face, scene)
+    parts = divide(meeting, scene)
+    if parts.absorbed is not None:
+        state.book(rows, SINK["absorbed"], scene.face_owner_name[face], parts.absorbed)
+    both = core.twice()
+    faces = np.concatenate((face, face))
+    owner = f.owner[faces]
+    both.set(face=faces, body=-1, owner=owner, event=REFLECTED)
+    both.ints[6, count:] = TRANSMITTED
+    node = state.ways.follow(both.node, owner, f.name[faces], both.event)
+    if spilled:
+        node = np.full(2 * count, -1)
+    meant = (node >= 0) | state.ways.main[faces, both.event - REFLECTED]
+    through = (f.inside[face] == Inside.BEHIND).nonzero()[0]
+    entering = core.within[through] == OUTSIDE
+    beyond = through + count
+    within = both.within
+    within[beyond] = np.where(entering, scene.bulk_of_face[face[through]], OUTSIDE)
+    both.index[beyond] = meeting.n_out[through]
+    both.set(
+        node=node,
+        splits=both.splits + ~meant,
+        direction=np.concatenate((parts.reflected.direction, parts.transmitted.direction)),
+        axis=np.concatenate((meeting.s, meeting.s)),
+        coherency=np.concatenate((parts.reflected.coherency, parts.transmitted.coherency), axis=1),
+        moments=np.concatenate((parts.reflected.moments, parts.transmitted.moments), axis=1),
+    )
+    if spilled:
+        both.set(event=SPILLED)
+    return both
+
+
+def _meeting(core: Front, face: Ints, scene: Scene) -> Meeting:
+    f = scene.faces
+    direction, normal = core.direction, f.normal[face]
+    slope = dot(direction, normal)
+    outward = slope < 0.0
+    normal = np.where(outward, -1.0, 1.0)[:, None] * normal
+    s, cos, sin = plane_of_incidence(direction, normal, core.axis)
+    wave = core.wave
+    beyond = np.where(
+        core.within == OUTSIDE, scene.index_inside[face, wave], scene.index_outside[wave]
+    )
+    return Meeting(
+        face,
+        wave,
+        normal,
+        np.abs(slope),
+        s,
+        core.index,
+        np.where(f.inside[face] == Inside.BOTH, core.index, beyond),
+        outward,
+        direction,
+        core.position,
+        coherency.rotate(core.coherency, cos, sin),
+        moments.rotate(core.moments, cos, sin),
+    )
+
+
+def _living(born: list[Front], core: Front, state: RunState) -> Front:
+    """Book children under the floor; return the others."""
+    if not born:
+        return core.take(np.zeros(0, dtype=np.int64))
+    all_born = join(born)
+    power = all_born.power
+    alive = power >= state.floor_w[all_born.wave]
+    dead = (~alive & (power > 0.0)).nonzero()[0]
+    state.book(all_born.parent[dead] - state.count, SINK["below-floor"], -1, power[dead])
+    return all_born.take(alive.nonzero()[0])

@@ -1,0 +1,134 @@
+"""Which beams must be cut: what they meet does not cover them, or a body comes near."""
+
+from __future__ import annotations
+
+import numpy as np
+
+from benchlay.elements._kind import Inside
+from benchlay.scene.tables import Flags, Floats, Ints, Scene
+from benchlay.tracing.front import Front
+from benchlay.tracing.hits import FACE, SKIN_MM, SOLID, FacesMet, Hits, SolidsMet, crossings
+
+# Bodies are looked for out to where what lies beyond is this share of the power floor.
+_TAIL = 0.01
+_LEAST_SHARE = 1e-18
+_LEAST_REACH = 0.5
+_PARALLEL = 1e-9  # squared sine below which two planes count as parallel
+_GRAZING = 1e-3  # at flatter incidence a face's footprint test says nothing
+
+
+def reach_of(front: Front, floor_w: Floats) -> Floats:
+    """Return how far out, in w, a body may take a share that counts (B,)."""
+    tail = _TAIL * floor_w[front.wave]
+    whole = front.power / front.kept
+    share = np.clip(tail / np.maximum(whole, tail), _LEAST_SHARE, 1.0)
+    reach: Floats = np.maximum(np.sqrt(-0.5 * np.log(share)), _LEAST_REACH)
+    return reach
+
+
+def radius_of(m: Floats) -> Floats:
+    """Return the larger principal 1/e² radius, mm."""
+    half, differ = 0.5 * (m[0] + m[2]), 0.5 * (m[0] - m[2])
+    radius: Floats = 2.0 * np.sqrt(half + np.sqrt(differ * differ + m[1] * m[1]))
+    return radius
+
+
+def face_covers(scene: Scene, hits: Hits, radius: Floats) -> Flags:
+    """Tell which faces' clear regions take the whole beam out to a radius (mm) of chief hits."""
+    f = scene.faces
+    face = np.where(hits.kind == FACE, hits.row, 0)
+    spread = radius / np.maximum(np.abs(hits.slope), SKIN_MM)
+    left, up = np.abs(hits.left), np.abs(hits.up)
+    a, b = f.clear[face, 0], f.clear[face, 1]
+    as_round = np.hypot(left, up) + spread <= np.minimum(a, b)
+    as_box = (left + spread <= a) & (up + spread <= b)
+    covers: Flags = np.where(f.clear_round[face], as_round, as_box)
+    return covers
+
+
+def covered(scene: Scene, hits: Hits, solids: SolidsMet, front: Front, radius: Floats) -> Flags:
+    """Tell which chief hits outside glass take the whole beam out to a radius (mm)."""
+    if len(scene.faces.owner):
+        whole = (hits.kind != FACE) | face_covers(scene, hits, radius)
+    else:
+        whole = np.ones(len(radius), dtype=np.bool_)
+    rows = np.flatnonzero(hits.kind == SOLID)
+    if len(rows):
+        whole[rows] = _solid_covers(scene, hits, solids, front, rows, radius)
+    return whole
+
+
+def _solid_covers(
+    scene: Scene, hits: Hits, solids: SolidsMet, front: Front, rows: Ints, radius: Floats
+) -> Flags:
+    """Tell which beams land wholly on the flat side of the solid that their chief ray meets.
+
+    On that side the distance to another bounding plane is the gap to it over the sine of the
+    angle between the two; planes parallel to the side bound nothing of it.
+    """
+    s = scene.solids
+    solid, plane = hits.row[rows], np.maximum(hits.plane[rows], 0)
+    sine2 = 1.0 - (s.plane_normal[plane] @ s.plane_normal.T) ** 2
+    depth = hits.distance[rows]
+    slope = solids.slope[rows]
+    gap = solids.gap[rows] - depth[:, None] * slope
+    bounds = (s.plane_solid == solid[:, None]) & (sine2 > _PARALLEL)
+    room2 = np.where(bounds, gap * np.abs(gap), np.inf) / np.where(bounds, sine2, 1.0)
+    steep = np.abs(slope[np.arange(len(rows)), plane])
+    spread = radius[rows] / np.maximum(steep, SKIN_MM)
+    covers: Flags = (hits.plane[rows] >= 0) & (room2.min(axis=1) >= spread * spread)
+    covers &= ~np.isin(solid, s.axis_solid)
+    if len(s.hole_solid):
+        point = front.position[rows] + depth[:, None] * front.direction[rows]
+        size = np.sqrt(np.einsum("hki,hki->h", s.hole_axes, s.hole_axes))
+        sides = _apart(point, s.hole_centre), _apart(point, s.hole_centre + s.hole_through)
+        touched = np.minimum(*sides) < size + spread[:, None]
+        covers &= ~(touched & (s.hole_solid == solid[:, None])).any(axis=1)
+    return covers
+
+
+def _apart(point: Floats, centre: Floats) -> Floats:
+    away = point[:, None, :] - centre
+    apart: Floats = np.sqrt(np.einsum("bhi,bhi->bh", away, away))
+    return apart
+
+
+def near(
+    front: Front, scene: Scene, hits: Hits, faces: FacesMet, solids: SolidsMet, radius: Floats
+) -> Flags:
+    """Tell beside which chief rays (B,) a body comes within a radius (mm) on their way.
+
+    A body counts where its planes, moved outwards by the radius, are crossed; that is never
+    less than what lies within the radius.
+    """
+    s = scene.solids
+    enter, leave = crossings(s, solids, radius)
+    limit = hits.distance[:, None]
+    close = solids.candidate & (enter <= np.minimum(leave, limit)) & (leave > 0.0)
+    rows = np.flatnonzero(hits.kind == SOLID)
+    close[rows, hits.row[rows]] = False
+    target = np.full(len(limit), -2)
+    if len(scene.faces.owner):
+        on_face = hits.kind == FACE
+        target = np.where(on_face, scene.faces.owner[np.where(on_face, hits.row, 0)], -2)
+    close &= ~(scene.close & (s.owner == target[:, None]))
+    result: Flags = close.any(axis=1)
+    if len(scene.faces.owner):
+        result |= _near_faces(front, scene, faces, radius, limit, target)
+    return result
+
+
+def _near_faces(
+    front: Front, scene: Scene, met: FacesMet, radius: Floats, limit: Floats, target: Ints
+) -> Flags:
+    f = scene.faces
+    steep = np.abs(met.slope)
+    spread = radius[:, None] / np.maximum(steep, _GRAZING)
+    touched = (np.abs(met.left) - f.radii[:, 0] < spread) & (
+        np.abs(met.up) - f.radii[:, 1] < spread
+    )
+    between = (met.distance > -SKIN_MM) & (met.distance < limit)
+    strange = (f.owner != front.owner[:, None]) & (f.owner != target[:, None])
+    counts = f.present[front.variant] & (f.inside != Inside.BOTH) & (steep > _GRAZING)
+    result: Flags = (touched & between & strange & counts).any(axis=1)
+    return result

@@ -1,0 +1,30 @@
+"""What grows while a trace runs: beams that are done, and where power landed."""
+
+from __future__ import annotations
+
+import numpy as np
+
+from benchlay.scene.tables import Floats, Ints, Scene
+from benchlay.tracing.front import Front
+from benchlay.tracing.ways import Ways
+
+
+class RunState:
+    """Collects legs and landings; `count` is the number of legs that are done."""
+
+    def __init__(self, scene: Scene, ways: Ways, floor_w: Floats) -> None:
+        self.scene = scene
+        self.ways = ways
+        self.floor_w = floor_w  # (L,)
+        self.fronts: list[Front] = []
+        self.ends: list[tuple[np.ndarray, ...]] = []
+        self.landings: list[tuple[Ints, Ints, Ints, Floats]] = []
+        self.count = 0
+
+    def book(self, beam: Ints, sink: Ints | int, name: Ints | int, power: Floats) -> None:
+        """Book power where it lands; beams are numbered from the first of the batch in hand."""
+        if len(beam):
+            count = len(beam)
+            sinks = np.full(count, sink) if isinstance(sink, int) else sink
+            names = np.full(count, name) if isinstance(name, int) else name
+            self.landings.append((beam + self.count, sinks, names, power))
