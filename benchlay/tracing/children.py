@@ -175,7 +175,7 @@ def _divided(core: Front, face: Ints, rows: Ints, state: RunState, *, spilled: b
         node=node,
         splits=both.splits + ~meant,
         direction=np.concatenate((parts.reflected.direction, parts.transmitted.direction)),
-        axis=np.concatenate((meeting.s, meeting.s)),
+        axis=np.concatenate((parts.reflected.axis, parts.transmitted.axis)),
         coherency=np.concatenate((parts.reflected.coherency, parts.transmitted.coherency), axis=1),
         moments=np.concatenate((parts.reflected.moments, parts.transmitted.moments), axis=1),
     )

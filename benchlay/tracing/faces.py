@@ -41,6 +41,7 @@ class Child(NamedTuple):
     """Beams that leave faces, row by row as they came."""
 
     direction: Floats  # (N, 3)
+    axis: Floats  # (N, 3) s; behind a lens, s carried along
     coherency: Floats  # (4, N)
     moments: Floats  # (10, N)
 
@@ -119,16 +120,18 @@ def _amplitudes(
 def _reflected(meeting: Meeting, scene: Scene, j: Floats) -> Child:
     k, n = meeting.direction, meeting.normal
     direction = k - (2.0 * dot(k, n))[:, None] * n
+    axis = meeting.s
     m = moments.scale_second(meeting.moments, -1.0)
     lens = scene.faces.acts[meeting.row] == Acts.LENS
     if lens.any():
         bulge = scene.faces.lens_curvature[meeting.row, meeting.wave]
         bulge = np.where(meeting.outward, bulge, -bulge)
         curved = _by_slope(meeting, scene, throw_back(*_slopes(meeting, scene), bulge), back=True)
+        axis = np.where(lens[:, None], _carried(axis, direction, curved), axis)
         direction = np.where(lens[:, None], curved, direction)
         power = np.where(lens, -2.0 * meeting.n_in * bulge, 0.0)
         m = moments.kick(m, power, 0.0, power)
-    return Child(direction, j, m)
+    return Child(direction, axis, j, m)
 
 
 def _transmitted(meeting: Meeting, scene: Scene, j: Floats) -> Child:
@@ -136,17 +139,20 @@ def _transmitted(meeting: Meeting, scene: Scene, j: Floats) -> Child:
     ratio = meeting.n_in / meeting.n_out
     beyond = np.sqrt(np.maximum(1.0 - ratio * ratio * (1.0 - cosine * cosine), 0.0))
     direction = ratio[:, None] * k + (beyond - ratio * cosine)[:, None] * n
+    axis = meeting.s
     lens = scene.faces.acts[meeting.row] == Acts.LENS
     if lens.any():
         power = np.where(lens, scene.faces.lens_power[meeting.row, meeting.wave], 0.0)
         slope, offset = _slopes(meeting, scene)
         bent = bend(slope, offset, power, meeting.n_in, meeting.n_out)
-        direction = np.where(lens[:, None], _by_slope(meeting, scene, bent, back=False), direction)
+        bent = _by_slope(meeting, scene, bent, back=False)
+        axis = np.where(lens[:, None], _carried(axis, direction, bent), axis)
+        direction = np.where(lens[:, None], bent, direction)
         beyond = np.where(lens, dot(direction, n), beyond)
     m = moments.scale_second(meeting.moments, np.maximum(beyond, _NORMAL) / cosine)
     if lens.any():
         m = moments.kick(m, power, 0.0, power)
-    return Child(direction, j, m)
+    return Child(direction, axis, j, m)
 
 
 def _slopes(meeting: Meeting, scene: Scene) -> tuple[Floats, Floats]:
@@ -157,6 +163,17 @@ def _slopes(meeting: Meeting, scene: Scene) -> tuple[Floats, Floats]:
     k, along = meeting.direction, meeting.cosine
     slope = np.stack((dot(k, left) / along, dot(k, up) / along), axis=-1)
     return slope, np.stack((dot(away, left), dot(away, up)), axis=-1)
+
+
+def _carried(axis: Floats, before: Floats, after: Floats) -> Floats:
+    """Return an axis across `before` turned with it, the shortest way, to `after`.
+
+    An ideal lens bends by position, out of the plane of incidence of its flat face as well.
+    Behind a total reflection `before` is no direction; no light goes there.
+    """
+    lean = dot(axis, after) / np.maximum(1.0 + dot(before, after), _NORMAL)
+    carried: Floats = axis - lean[:, None] * (before + after)
+    return carried
 
 
 def _by_slope(meeting: Meeting, scene: Scene, slope: Floats, *, back: bool) -> Floats:

@@ -96,6 +96,11 @@ def inside_hits(front: Front, scene: Scene) -> Hits:
     valid = leaving & (rows >= 0) & (rows != front.face[:, None]) & (distance > -_TOUCH_MM)
     # A spilled lump runs on the chief ray's line wherever that is: no outline holds it.
     valid &= in_outline(left, up, f.radii[rows], f.round[rows]) | front.lump[:, None]
+    # Between the faces of an ideal lens, which stand in one place, light beyond the critical
+    # angle would go to and fro for ever: it is on its way to the edge and ends on the barrel.
+    tangential = front.index[:, None] ** 2 * (1.0 - slope * slope)
+    total = tangential >= scene.index_outside[front.wave][:, None] ** 2
+    valid &= ~((f.acts[rows] == Acts.LENS) & total)
     distance = np.where(valid, distance, np.inf)
     best = distance.argmin(axis=1)
     at = (np.arange(len(best)), best)

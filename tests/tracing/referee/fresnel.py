@@ -94,8 +94,9 @@ def s_vector(k, normal):
     return unit(cross)
 
 
-def acted(field, k_in, k_out, s, a_s, a_p):
+def acted(field, k_in, k_out, s, amplitude):
     """The field after amplitudes on s and p = k x s: E' = a_s s (s.E) + a_p p' (p.E)."""
+    a_s, a_p = amplitude
     operator = a_s * np.outer(s, s) + a_p * np.outer(np.cross(k_out, s), np.cross(k_in, s))
     return operator @ field @ operator.conj().T
 
@@ -104,7 +105,7 @@ def mirrored(ray, normal, rs, rp):
     """Reflection with given amplitudes."""
     k = ray.k - 2.0 * (ray.k @ normal) * normal
     s = s_vector(ray.k, normal)
-    return ray._replace(k=k, field=acted(ray.field, ray.k, k, s, rs, rp))
+    return ray._replace(k=k, field=acted(ray.field, ray.k, k, s, (rs, rp)))
 
 
 def at_face(ray, normal, n1, n2, share=None):
@@ -125,7 +126,7 @@ def at_face(ray, normal, n1, n2, share=None):
     if k2 is None:
         return reflected, None
     s = s_vector(ray.k, normal)
-    field = flux * acted(ray.field, ray.k, k2, s, ts, tp)
+    field = flux * acted(ray.field, ray.k, k2, s, (ts, tp))
     return reflected, ray._replace(k=k2, field=field)
 
 

@@ -138,7 +138,7 @@ def metal_mirrors():
                 s = np.cross(ALONG, normal)
                 s = s / np.linalg.norm(s) if np.linalg.norm(s) > 1e-9 else np.array([0, 0, 1.0])
                 rs, rp, *_ = amplitudes(1.0, index, abs(ALONG @ normal))
-                field = acted(tensor(ALONG, STATES[polarization]), ALONG, k, s, rs, rp)
+                field = acted(tensor(ALONG, STATES[polarization]), ALONG, k, s, (rs, rp))
                 beam = bench.from_("M.front")[0]
                 tag = f"{metal} {polarization} {incidence} {pitch}"
                 yield from vectors(tag, stokes(beam.field, beam.k), stokes(field, k), 1e-9)
