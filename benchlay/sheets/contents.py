@@ -33,6 +33,8 @@ class Item(NamedTuple):
     facing_deg: float
     outlines: tuple[Shape, ...] = ()  # of glass, metal, plates: what light meets
     coated: tuple[tuple[Point, Point], ...] = ()  # the outline's edges that bear a coating
+    lines: tuple[tuple[Point, ...], ...] = ()  # of glass or metal that encloses nothing
+    hidden: tuple[tuple[Point, ...], ...] = ()  # what lies inside a body
     bodies: tuple[Shape, ...] = ()  # mounts, posts, feet, housings
     note: str = ""  # a few words for the table of elements
 
@@ -48,6 +50,8 @@ class Leg(NamedTuple):
     words: str = ""  # at the source, and where power or polarization change
     ends: str = ""  # the sink, or optic
     radii_mm: tuple[tuple[float, float], ...] = ()  # (distance along the leg, 1/e2 radius)
+    weak: bool = False  # a stray below the limit: a line, and nothing that draws the eye
+    inside: bool = False  # within an optic
 
 
 class Opening(NamedTuple):
@@ -66,6 +70,16 @@ class PanelLine(NamedTuple):
     end: Point
     thickness_mm: float
     openings: tuple[Opening, ...] = ()
+    is_open: bool = False
+    access: str = "none"
+
+
+class LidOutline(NamedTuple):
+    """A level sheet above the bench, seen from above."""
+
+    name: str
+    corners: tuple[Point, ...]
+    height_mm: float
     is_open: bool = False
     access: str = "none"
 
@@ -110,6 +124,7 @@ class Picture(NamedTuple):
     items: tuple[Item, ...] = ()
     legs: tuple[Leg, ...] = ()
     panels: tuple[PanelLine, ...] = ()
+    lids: tuple[LidOutline, ...] = ()
     zones: tuple[Zone, ...] = ()
     legend: tuple[BeamEntry, ...] = ()
     revisions: tuple[tuple[str, str, str, str], ...] = ()  # rev, date, what, by

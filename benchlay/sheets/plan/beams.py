@@ -41,6 +41,8 @@ def beams(picture: Picture, board: Board) -> Iterator[Primitive]:
             yield from _upright(leg, board)
             continue
         yield Line(layer_of(leg), *seen)
+        if leg.weak or leg.inside:
+            continue
         yield from _envelope(leg, field)
         yield from _arrow(leg, seen, board)
         if seen[1] == end:

@@ -31,6 +31,8 @@ def blocks_and_uses(picture: Picture, board: Board) -> Iterator[tuple[Block, Blo
         for shape in (*item.outlines, *item.bodies):
             points = [placed(item, p) for p in straightened(shape)]
             board.crowd_model_line(points, closed=True)
+        for line in item.lines:
+            board.crowd_model_line([placed(item, p) for p in line])
 
 
 def _data(item: Item) -> tuple[tuple[str, str], ...]:
@@ -45,21 +47,29 @@ def _shapes(item: Item, board: Board) -> Iterator[Line | Polyline]:
         yield Polyline("BODIES", body.points, closed=True, bulges=body.bulges)
     for outline in item.outlines:
         yield Polyline("OPTICS", outline.points, closed=True, bulges=outline.bulges)
+    for points in item.lines:
+        yield Polyline("OPTICS", points)
+    for points in item.hidden:
+        yield Polyline("BODIES", points)
     middle = _middle(item)
     for start, end in item.coated:
         yield _beside(start, end, middle, board.long(_COATED_MM))
-    if item.outlines:
-        xs = [p[0] for shape in item.outlines for p in shape.points]
+    xs = [p[0] for points in _seen(item) for p in points]
+    if xs:
         reach = board.long(_AXIS_MM)
         yield Line("AXIS", (min(xs) - reach, 0.0), (max(xs) + reach, 0.0))
 
 
 def _middle(item: Item) -> Point:
-    points = [p for shape in item.outlines for p in shape.points]
+    points = [p for line in _seen(item) for p in line]
     if not points:
         return (-1.0, 0.0)
     xs, ys = [p[0] for p in points], [p[1] for p in points]
     return ((min(xs) + max(xs)) / 2, (min(ys) + max(ys)) / 2)
+
+
+def _seen(item: Item) -> list[tuple[Point, ...]]:
+    return [*(shape.points for shape in item.outlines), *item.lines]
 
 
 def _beside(start: Point, end: Point, middle: Point, by: float) -> Line:

@@ -1,0 +1,198 @@
+"""The plan of one state as plain data."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Iterable
+
+from benchlay.findings import Severity
+from benchlay.layout.layout import Layout
+from benchlay.placing.placed import PlacedState
+from benchlay.sheets.contents import BeamEntry, Picture
+from benchlay.sheets.drafting.legs import DrawnLegs, legs_of, limit_words
+from benchlay.sheets.drafting.outlines import items_of
+from benchlay.sheets.drafting.schedule import zones_drawn
+from benchlay.sheets.drafting.surroundings import holes_of, lids_of, panels_of
+from benchlay.sheets.layers import WIDTHS_MM, wavelength_words
+from benchlay.sheets.scale import SCALES, SIZES_MM
+from benchlay.sheets.title_block import TitleFields
+from benchlay.tracing.trace import Trace
+from benchlay.zones import LimitTable, Zones, limits_of
+from benchlay.zones.words import number, with_unit
+
+# How wide a beam is drawn: the limits of the classes for long exposures, roughly. It is a
+# matter of ink, and no class is awarded by it.
+_STRONG = 5.0  # times the accessible limit
+_STRONGEST_W = 0.5
+
+
+def plan_picture(
+    trace: Trace,
+    zones: Zones,
+    *,
+    variant: int = 0,
+    counts: Iterable[tuple[Severity, int]] = (),
+    sha256: str = "",
+) -> Picture:
+    """Return what the plan of a state shows.
+
+    Parameters
+    ----------
+    trace : Trace
+    zones : Zones
+        Of at least this state.
+    variant : int
+        Number of the state.
+    counts : iterable of (Severity, int)
+        How many findings of each severity a review of the layout has, for the notes; none
+        are written if it is empty.
+    sha256 : str
+        Of the layout's bytes: which text the sheet was drawn from.
+    """
+    state = trace.placed.states[variant]
+    layout, drawing = state.layout, state.layout.drawing
+    decimal = "." if drawing.decimal == "point" else ","
+    limits = limits_of(trace)
+    legs = legs_of(trace, limits, variant, decimal)
+    sheet, scale, unmet = _wishes(layout)
+    return Picture(
+        name="plan",
+        fields=_fields(layout),
+        outline=tuple(layout.bench.outline),
+        state=state.name,
+        holes=holes_of(layout),
+        beam_height_mm=layout.bench.beam_height_mm,
+        items=items_of(state),
+        legs=legs.legs,
+        panels=panels_of(layout),
+        lids=lids_of(layout),
+        zones=zones_drawn(zones.zones, state.name, decimal),
+        legend=tuple(_legend(trace, limits, variant, legs, decimal)),
+        revisions=tuple((r.rev, r.date, r.what, r.by) for r in layout.revisions),
+        notes=(
+            *drawing.notes,
+            *unmet,
+            *_assumptions(state, zones, legs, decimal),
+            *_findings(counts),
+            _CAUTION,
+        ),
+        properties=tuple(_properties(layout, sha256)),
+        sheet=sheet,
+        scale=scale,
+        decimal=decimal,
+    )
+
+
+_CAUTION = (
+    "A calculation aid, not an approval: the standard, local rules and the laser safety officer "
+    "decide. Survey stray light on the bench itself, at low power."
+)
+
+
+def _fields(layout: Layout) -> TitleFields:
+    d = layout.drawing
+    return TitleFields(
+        owner=d.owner,
+        title=layout.title,
+        document_type="Bench layout, plan",
+        number=d.number,
+        revision=layout.revision,
+        date=d.date,
+        drawn_by=d.drawn_by,
+        approved_by=d.approved_by,
+        projection=d.projection,
+    )
+
+
+def _properties(layout: Layout, sha256: str) -> list[tuple[str, str]]:
+    known = {
+        "drawing number": layout.drawing.number,
+        "revision": layout.revision,
+        "layout sha256": sha256,
+    }
+    return [(key, value) for key, value in known.items() if value]
+
+
+def _wishes(layout: Layout) -> tuple[str | None, int | None, list[str]]:
+    """Return the sheet and scale that were asked for, and which of it is not to be had."""
+    d, unmet = layout.drawing, []
+    sheet = None if d.sheet == "auto" else d.sheet
+    if sheet is not None and sheet not in SIZES_MM:
+        unmet.append(f"Sheet {sheet} was asked for; plans are drawn on {', '.join(SIZES_MM)}.")
+        sheet = None
+    scale = None
+    if d.scale != "auto":
+        match = re.fullmatch(r"1:(\d+)", d.scale)
+        scale = int(match[1]) if match and int(match[1]) in SCALES else None
+        if scale is None:
+            unmet.append(f"Scale {d.scale} was asked for; it is no listed scale of a plan.")
+    return sheet, scale, unmet
+
+
+def _legend(
+    trace: Trace, limits: LimitTable, variant: int, legs: DrawnLegs, decimal: str
+) -> list[BeamEntry]:
+    state, scene = trace.placed.states[variant], trace.scene
+    out = []
+    for wave, nm in enumerate(scene.wavelengths_nm.tolist()):
+        emits = [
+            (name, line.power_w, float(limits.accessible_w[variant, number_, wave]))
+            for number_, name in enumerate(scene.sources)
+            for line in state.sources[name].source.lines
+            if line.wavelength_nm == nm and not state.sources[name].source.stand.out
+        ]
+        names = [name for name, wavelength in legs.working if wavelength == nm]
+        span = f": {names[0]} to {names[-1]}" if len(names) > 1 else "".join(f": {n}" for n in names)
+        who = ", ".join(f"{name} {with_unit(p, 'W', decimal=decimal)}" for name, p, _ in emits)
+        words = f"{wavelength_words(nm, decimal)}, {who or 'not emitted'}{span}"
+        out.append(BeamEntry(nm, max((_width(p, lim) for _, p, lim in emits), default=_THIN), words))
+    return out
+
+
+_THIN = WIDTHS_MM[0]
+
+
+def _width(power_w: float, limit_w: float) -> float:
+    if power_w > _STRONGEST_W:
+        return WIDTHS_MM[2]
+    return WIDTHS_MM[1] if power_w > _STRONG * limit_w else WIDTHS_MM[0]
+
+
+def _assumptions(
+    state: PlacedState, zones: Zones, legs: DrawnLegs, decimal: str
+) -> list[str]:
+    out = []
+    own = [zone for zone in zones.zones if zone.state == state.name]
+    if own:
+        limit = limit_words(own[0].limit_w, own[0].aperture_mm, own[0].time_base_s, decimal)
+        which = f" ({limit})" if len({z.limit_w for z in own}) == 1 else ""
+        out.append(
+            "Hazard zones: where an eye's aperture could take more than the exposure limit"
+            f"{which} of one beam alone, to the first opaque thing, in plan whatever the height."
+        )
+    out.append(_strays(legs, decimal))
+    out += [f"Not computed: {words}." for words in zones.not_computed]
+    if any(item.out for item in state.elements.values()):
+        taken = ", ".join(name for name, item in sorted(state.elements.items()) if item.out)
+        out.append(f"Taken out in this state: {taken}.")
+    return out
+
+
+def _strays(legs: DrawnLegs, decimal: str) -> str:
+    percent = number(100.0 * legs.left_out_below, 3, decimal)
+    if not (legs.tagged or legs.weak or legs.left_out):
+        return "No stray light outside optics was traced above the power floor."
+    out = f"Stray beams above the limit: {legs.tagged}, each tagged."
+    if legs.weak:
+        out += f" Below it, {legs.weak} legs from {percent} % of the limit up bear no tag."
+    if legs.left_out:
+        out += f" Not drawn: {legs.left_out} legs below {percent} % of the limit."
+    return out
+
+
+def _findings(counts: Iterable[tuple[Severity, int]]) -> list[str]:
+    known = dict(counts)
+    if not known:
+        return []
+    words = ", ".join(f"{known.get(s, 0)} {s.word}" for s in sorted(Severity, reverse=True))
+    return [f"Findings of the review, all states: {words}; each stands in the report."]
