@@ -2,12 +2,28 @@
 
 from __future__ import annotations
 
-from benchlay.checks import coating_unstated
+from benchlay.checks import (
+    beam_blocked,
+    clipped,
+    coating_unstated,
+    dark_element,
+    off_centre,
+    off_height,
+    route_broken,
+)
 from benchlay.checks._check import Check, Context, LineLimit, Run, floors_w, limits_of
 from benchlay.checks._run import run_checks as _run
 from benchlay.findings import Finding
 
-CHECKS: tuple[Check, ...] = (coating_unstated,)
+CHECKS: tuple[Check, ...] = (
+    clipped,
+    off_height,
+    off_centre,
+    route_broken,
+    beam_blocked,
+    coating_unstated,
+    dark_element,
+)
 """Every check."""
 
 

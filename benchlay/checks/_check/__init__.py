@@ -4,6 +4,8 @@ from __future__ import annotations
 
 from benchlay.checks._check.context import Context
 from benchlay.checks._check.limits import LineLimit, floors_w, limits_of
+from benchlay.checks._check.meetings import Loss, Mark
+from benchlay.checks._check.openings import Room, room_at
 from benchlay.checks._check.protocol import Check, Found, Run, Unevaluated
 from benchlay.checks._check.unjudged import unjudged
 from benchlay.checks._check.words import (
@@ -25,6 +27,9 @@ __all__ = [
     "Context",
     "Found",
     "LineLimit",
+    "Loss",
+    "Mark",
+    "Room",
     "Run",
     "Unevaluated",
     "above",
@@ -37,6 +42,7 @@ __all__ = [
     "listed",
     "place_words",
     "power_text",
+    "room_at",
     "rounded_up",
     "share_text",
     "unjudged",

@@ -10,6 +10,7 @@ from math import nan
 import numpy as np
 
 from benchlay.checks._check.limits import LineLimit
+from benchlay.checks._check.meetings import Meetings
 from benchlay.checks._check.power import accessible_w, peak_irradiance_w_m2
 from benchlay.checks._check.routes import Routes
 from benchlay.checks._check.words import place_words
@@ -64,6 +65,11 @@ class Context:
     def routes(self) -> Routes:
         """What became of every route in every state."""
         return Routes(self.trace)
+
+    @cached_property
+    def meetings(self) -> Meetings:
+        """Where working beams meet their optics, and what they lose on the way."""
+        return Meetings(self.trace, self.routes)
 
     # ------------------------------------------------------------------ limits
 

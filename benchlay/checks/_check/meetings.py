@@ -1,0 +1,170 @@
+"""Where working beams meet what they are meant to meet, and what they lose on the way."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from typing import NamedTuple
+
+import numpy as np
+
+from benchlay.checks._check.routes import Routes
+from benchlay.scene.tables import PARTS, SINK, SINKS, Ints
+from benchlay.tracing import Trace
+from benchlay.tracing.beams import FACE, SOLID
+from benchlay.tracing.front import OUTSIDE
+
+_OWN = (SINK["rim"], SINK["body"])
+_OPAQUE = (*_OWN, SINK["screen"], SINK["dump"], SINK["target"], SINK["panel"], SINK["bench"])
+
+
+class Loss(NamedTuple):
+    """What a working beam loses on one leg to one thing.
+
+    `own` tells whether the thing is what the beam goes to (or is inside of), `share` is of
+    what arrives, `whole` whether the chief ray itself ends there.
+    """
+
+    beam: int
+    name: str | None
+    sink: str
+    part: str | None
+    power_w: float
+    share: float
+    own: bool
+    whole: bool
+
+
+class Mark(NamedTuple):
+    """Where a working beam meets an optic, seen from where it is meant to, mm."""
+
+    beam: int
+    element: str
+    face: int
+    left_mm: float
+    up_mm: float
+
+
+class Meetings:
+    """Losses and marks of a trace, by state."""
+
+    def __init__(self, trace: Trace, routes: Routes) -> None:
+        self._trace = trace
+        self._routes = routes
+
+    def losses(self, rows: Ints) -> list[Loss]:
+        """Return what the working ones of some beams lose, by beam and name."""
+        ledger, scene = self._trace.ledger, self._trace.scene
+        wanted = np.zeros(len(self._routes.working), dtype=np.bool_)
+        wanted[rows] = self._routes.working[rows]
+        found = np.flatnonzero(wanted[ledger.beam] & np.isin(ledger.sink, _OPAQUE))
+        groups: dict[tuple[int, int], list[tuple[int, float]]] = {}
+        columns = (ledger.beam[found], ledger.name[found], ledger.sink[found], ledger.power[found])
+        for beam, name, sink, power in zip(*(c.tolist() for c in columns), strict=True):
+            groups.setdefault((beam, name), []).append((sink, power))
+        losses = []
+        for (beam, name), parts in sorted(groups.items()):
+            loss = self._loss(beam, scene.names[name] if name >= 0 else None, parts)
+            if loss is not None:
+                losses.append(loss)
+        return losses
+
+    def _loss(self, beam: int, name: str | None, parts: list[tuple[int, float]]) -> Loss | None:
+        own = name in self._routes.wanted(beam)
+        kept = [(sink, power) for sink, power in parts if not own or self._is_loss(sink, name)]
+        power = sum(power for _, power in kept)
+        if power <= 0.0:
+            return None
+        beams = self._trace.beams
+        arriving = float(beams.end_coherency[0, beam] + beams.end_coherency[1, beam])
+        sink = max(kept, key=lambda part: part[1])[0]
+        part, whole = self._chief(beam, name)
+        return Loss(beam, name, SINKS[sink], part, power, min(power / arriving, 1.0), own, whole)
+
+    def _is_loss(self, sink: int, name: str | None) -> bool:
+        """Whether light on what it was meant for is lost: beside a face, not on it."""
+        return sink in _OWN or (sink == SINK["panel"] and name is not None)
+
+    def _chief(self, beam: int, name: str | None) -> tuple[str | None, bool]:
+        """Return the part that the chief ray meets, and whether it ends on that name."""
+        beams, scene = self._trace.beams, self._trace.scene
+        row = int(beams.end_row[beam])
+        if beams.end_kind[beam] == SOLID:
+            met = int(scene.solids.name[row])
+            here = (scene.names[met] if met >= 0 else None) == name
+            return (PARTS[scene.solids.part[row]] if here else None), here
+        if beams.end_kind[beam] == FACE:
+            here = scene.elements[int(scene.faces.owner[row])] == name
+            return None, here and not bool(beams.end_core[beam] > 0.0)
+        return None, False
+
+    def aimed(self, beam: int) -> bool:
+        """Whether the chief ray of a beam, let through, would meet what it is meant to."""
+        return any(self.where_on(beam, face) is not None for face in self.faces_wanted(beam))
+
+    def faces_wanted(self, beam: int) -> list[int]:
+        """Return the face rows of what a working beam is meant to meet, in its state."""
+        f, scene = self._trace.scene.faces, self._trace.scene
+        present = f.present[self._trace.beams.start.variant[beam]]
+        names = self._routes.wanted(beam)
+        owners = [i for i, name in enumerate(scene.elements) if name in names]
+        rows: list[int] = np.flatnonzero(present & np.isin(f.owner, owners)).tolist()
+        return rows
+
+    def where_on(self, beam: int, face: int) -> tuple[float, float] | None:
+        """Return where a chief ray meets a face's outline (left, up from its middle), mm."""
+        f, start = self._trace.scene.faces, self._trace.beams.start
+        k, p = start.direction[beam], start.position[beam]
+        slope = float(k @ f.normal[face])
+        if abs(slope) < 1e-9:  # noqa: PLR2004 (runs along the face)
+            return None
+        way = float((f.origin[face] - p) @ f.normal[face]) / slope
+        at = p + way * k - f.origin[face]
+        left = float(at @ f.left[face] - f.middle[face, 0])
+        up = float(at @ f.up[face] - f.middle[face, 1])
+        a, b = abs(left) / f.radii[face, 0], abs(up) / f.radii[face, 1]
+        inside = a * a + b * b <= 1.0 if f.round[face] else max(a, b) <= 1.0
+        return (left, up) if inside and way >= 0.0 else None
+
+    def marks(self, variant: int, rows: Ints) -> Iterator[Mark]:
+        """Yield where working beams meet optics, each optic once a passage.
+
+        The mark is on the front, so that is where it is measured, from whichever side the
+        light comes; light that never meets the front is measured where it enters.
+        """
+        beams, scene = self._trace.beams, self._trace.scene
+        state = self._trace.placed.states[variant]
+        for beam in rows[self._routes.working[rows] & (beams.end_kind[rows] == FACE)].tolist():
+            face = int(beams.end_row[beam])
+            name = scene.elements[int(scene.faces.owner[face])]
+            if name not in self._routes.wanted(beam):
+                continue
+            front = scene.face_names[int(scene.faces.name[face])] in ("front", "opening")
+            if not front and (beams.start.within[beam] != OUTSIDE or self._meets_front(beam)):
+                continue
+            mark = state.elements[name].element.stand.beam_at_mm if front else (0.0, 0.0)
+            yield Mark(
+                beam,
+                name,
+                face,
+                float(beams.off_left[beam] + scene.faces.middle[face, 0]) - mark[0],
+                float(beams.off_up[beam] + scene.faces.middle[face, 1]) - mark[1],
+            )
+
+    def _meets_front(self, beam: int) -> bool:
+        """Whether light that enters an optic elsewhere meets its front on its way."""
+        beams, scene = self._trace.beams, self._trace.scene
+        owner = scene.faces.owner[beams.end_row[beam]]
+        inside = [beam]
+        start = beams.start
+        while inside:
+            children = np.flatnonzero(
+                np.isin(start.parent, inside)
+                & (start.within != OUTSIDE)
+                & self._routes.working
+                & (scene.faces.owner[np.maximum(start.face, 0)] == owner)
+            )
+            ends = scene.faces.name[beams.end_row[children]]
+            if any(scene.face_names[name] == "front" for name in ends):
+                return True
+            inside = children.tolist()
+        return False

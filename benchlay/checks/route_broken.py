@@ -1,0 +1,129 @@
+"""The beam does not do what its route says.
+
+Why it matters
+--------------
+Everything behind the broken leg is dark, and the light is somewhere else: where nobody has
+planned for it.
+
+Fails
+-----
+.. code-block:: yaml
+
+   bench: {size: [800, 400]}
+   sources:
+     red: {wavelength: 633, power: 5 mW, beam: {waist_radius: 0.5}, at: [100, 200], heading: 0}
+   elements:
+     M1: {kind: mirror, at: [400, 200], facing: 120, diameter: 25.4, reflectance: 99 %}
+     T1: {kind: target, at: [400, 300], facing: 270}
+   routes:
+     main: [red, M1, T1]  # <- route-broken
+
+Passes
+------
+.. code-block:: yaml
+
+   bench: {size: [800, 400]}
+   sources:
+     red: {wavelength: 633, power: 5 mW, beam: {waist_radius: 0.5}, at: [100, 200], heading: 0}
+   elements:
+     M1: {kind: mirror, at: [400, 200], facing: 135, diameter: 25.4, reflectance: 99 %}
+     T1: {kind: target, at: [400, 300], facing: 270}
+   routes:
+     main: [red, M1, T1]
+
+What it does not see
+--------------------
+Legs that an opaque body or a rim explains (`beam-blocked`, `clipped`), and what a state does
+on purpose: an element of the route that it moves, closes or takes out, or one that another
+state moves out of the way.
+
+Source
+------
+Common practice: a route is walked through card in hand, leg by leg.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+import numpy as np
+
+from benchlay.checks._check import Context, above, power_text
+from benchlay.findings import Finding, Severity
+from benchlay.tracing.beams import FACE
+
+NAME = "route-broken"
+
+# The bench does not do what it was drawn for.
+SEVERITY = Severity.FAIL
+
+
+def check(context: Context, variant: int) -> Iterator[Finding]:
+    """Report each beam with which a route ends too early, once for all its routes."""
+    explained = _explained(context, variant)
+    told: set[tuple[int, str]] = set()
+    for leg in context.routes.of_state(variant):
+        route = context.trace.ways.routes[leg.route]
+        if not leg.broken or leg.beam is None or leg.beam in explained:
+            continue
+        wanted = route.items[leg.reached + 1]
+        if (leg.beam, wanted.name) not in told:
+            told.add((leg.beam, wanted.name))
+            yield _finding(context, leg.beam, leg.route, leg.reached)
+
+
+def _explained(context: Context, variant: int) -> set[int]:
+    """Return the beams whose loss `clipped` or `beam-blocked` tells."""
+    clip = context.layout(variant).limits.clip
+    return {
+        loss.beam
+        for loss in context.meetings.losses(context.beams_of(variant))
+        if loss.whole
+        and above(loss.share, clip)
+        and (loss.own or context.meetings.aimed(loss.beam))
+    }
+
+
+def _finding(context: Context, beam: int, number: int, reached: int) -> Finding:
+    route = context.trace.ways.routes[number]
+    here, wanted = route.items[reached], route.items[reached + 1]
+    target = f"{wanted.name}.{wanted.part}" if wanted.part else wanted.name
+    power = float(context.trace.beams.start.power[beam])
+    return Finding(
+        check=NAME,
+        severity=SEVERITY,
+        message=(
+            f"route '{route.name}' breaks between '{here.name}' and '{target}': the beam "
+            f"({power_text(power)}) {_instead(context, beam, wanted.name)}"
+        ),
+        expected=f"the beam that leaves '{here.name}' meets '{target}' and goes on as named",
+        remedy=_remedy(context, beam, here.name, target),
+        element=wanted.name,
+        beam=int(context.numbers[beam]),
+        at=context.end_at(beam),
+        span=wanted.span,
+        related=((route.span, f"route '{route.name}'"),),
+        key=(*context.chain(beam), target),
+    )
+
+
+def _instead(context: Context, beam: int, wanted: str) -> str:
+    """Say where the light goes instead."""
+    if context.routes.met(beam) != wanted:
+        return f"goes to {context.end_words(beam)} instead"
+    if not _goes_on(context, beam):
+        return f"ends at {context.end_words(beam)}"
+    return f"meets {context.end_words(beam)} but does not leave it as the route says"
+
+
+def _goes_on(context: Context, beam: int) -> bool:
+    return bool(np.any(context.trace.beams.start.parent == beam))
+
+
+def _remedy(context: Context, beam: int, here: str, target: str) -> str:
+    met = context.routes.met(beam)
+    if met is None or context.trace.beams.end_kind[beam] != FACE:
+        return f"turn '{here}' so that the beam meets '{target}', or move '{target}' there"
+    if met == target.partition(".")[0]:
+        return f"turn '{met}' the other way round, or name the branch that is meant in the route"
+    return f"take '{met}' out of the way, or name it in the route before '{target}'"
