@@ -89,12 +89,9 @@ class Lens(Sized, ElementKind):
             for face in shape.faces(self.front, self.back)
         )
         half_width, half_height = outline.radii
-        extent = (
-            -self.thickness_mm / 2,
-            self.thickness_mm / 2,
-            half_width,
-            half_height,
-        )
+        # The mount's front plane is the plane in which the ideal lens acts, so that its ring
+        # stands beside the lens and not before it.
+        extent = (-self.thickness_mm, 0.0, half_width, half_height)
         return Geometry(faces, (), (self._picture(half_width),), extent, glass=self.glass)
 
     def _picture(self, half: float) -> Stroke:

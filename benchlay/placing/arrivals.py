@@ -156,11 +156,23 @@ class Arrivals:
             return
         last = path[0]
         element = self._solver.layout.elements[last.name]
+        own: tuple[Item, ...] = ()
         if element.stand.after:
             own = tuple(Item(item.item, item.branch) for item in element.stand.after)
             yield from self.leaving(own)
         for prefix in self._prefixes(last.name, self._branch(last.name, last.branch)):
-            yield from self._try(prefix)
+            if not self._same_tail(prefix, own):
+                yield from self._try(prefix)
+
+    def _same_tail(self, prefix: tuple[Item, ...], own: tuple[Item, ...]) -> bool:
+        """Tell whether a route comes by the very items that `after` names: the same beam."""
+        if not own or len(prefix) < len(own):
+            return False
+        pairs = zip(prefix[len(prefix) - len(own) :], own, strict=True)
+        return all(
+            a.name == b.name and self._branch(a.name, a.branch) == self._branch(b.name, b.branch)
+            for a, b in pairs
+        )
 
     def _report_ambiguous(
         self, element: Element, choices: Sequence[Choice], distinct: Sequence[Choice]

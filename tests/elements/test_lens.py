@@ -29,7 +29,7 @@ def test_it_has_two_bending_faces_in_one_place_and_no_body(make, face_of):
         assert face.clear.radii == (9.0, 9.0)
     assert face_of(geometry, "front").coating == reflecting(0.01, 0.01)
     assert geometry.solids == ()
-    assert geometry.extent == (-2.0, 2.0, 10.0, 10.0)
+    assert geometry.extent == (-4.0, 0.0, 10.0, 10.0)
 
 
 def section(make, keys):
