@@ -124,17 +124,20 @@ def check(
     return judge(_checked(traced, states), on).findings
 
 
-def draw(traced: Trace, *, on: date | None = None) -> dict[str, bytes]:
+def draw(traced: Trace) -> dict[str, bytes]:
     """Draw every sheet in each of its formats.
 
     Returns
     -------
     dict of str to bytes
         By file name, such as ``plan.dxf``.
-    """
-    from benchlay.results.drawings import drawings
 
-    return drawings(_checked(traced, None), on)
+    Raises
+    ------
+    LayoutError
+        If a sheet fits on no paper, or not on the one that the layout asks for.
+    """
+    return _drawn(traced)
 
 
 def review(
@@ -162,10 +165,10 @@ def review_files(
     """Review a layout in full; also return every file of the review, by name."""
     from benchlay import __version__
     from benchlay.report.json_out import check_document, dumps, trace_document
-    from benchlay.results.drawings import drawings
 
     try:
         reviewed, checked = _reviewed(data, file, on=on, state=state, in_full=True)
+        drawings = _drawn(checked.trace, reviewed.findings, reviewed.sha256)
     except LayoutError as error:
         return LayoutErrors(file, error.problems, _lines(data))
     documents = {
@@ -173,20 +176,37 @@ def review_files(
         "beams.json": trace_document(_traced(checked.trace, file, checked.states[0])),
     }
     files = {name: dumps(document).encode("ascii") for name, document in documents.items()}
-    return reviewed, files | drawings(checked, on)
+    return reviewed, files | drawings
 
 
 def draw_files(
     data: bytes, file: str, *, sheet: str | None, form: str | None
 ) -> dict[str, bytes] | LayoutErrors:
     """Draw the sheets asked for (all of them for None), each in its forms, by file name."""
-    from benchlay.results.drawings import drawings
-
     try:
         traced = trace(place(read(file, data)))
+        return _drawn(traced, (), sha256(data).hexdigest(), sheet=sheet, form=form)
     except LayoutError as error:
         return LayoutErrors(file, error.problems, _lines(data))
-    return drawings(_checked(traced, None), None, sheet=sheet, form=form)
+
+
+def _drawn(
+    traced: Trace,
+    judged: Sequence[Reported] = (),
+    digest: str = "",
+    *,
+    sheet: str | None = None,
+    form: str | None = None,
+) -> dict[str, bytes]:
+    from benchlay.results.drawings import drawings, refusals
+
+    problems = refusals(traced.placed.base.layout, sheet, form)
+    if problems:
+        raise LayoutError(problems)
+    made = drawings(traced, judged, digest, sheet=sheet, form=form)
+    if isinstance(made, Problem):
+        raise LayoutError((made,))
+    return made
 
 
 def _traced(traced: Trace, file: str, state: str) -> TraceResult:
@@ -212,6 +232,11 @@ def _reviewed(
 
     traced = trace(place(_with_state(read(file, data), state)))
     checked = _checked(traced, None if state is None else (state,))
+    if in_full:
+        # Loaded here: polygons take longer to load than all the rest of a plain check.
+        from benchlay.zones import zones_of
+
+        checked = checked._replace(zones=zones_of(traced, checked.states))
     paper = Paper(file, sha256(data).hexdigest(), _lines(data))
     return put_together(checked, paper, on, in_full=in_full), checked
 

@@ -206,7 +206,8 @@ class HandedOver(NamedTuple):
 class Review(NamedTuple):
     """Everything that is said of one layout.
 
-    `lines` are the layout's own lines, for quoting; they are no part of the JSON.
+    `not_computed` says in sentences what the zones leave out. `lines` are the layout's own
+    lines, for quoting; they are no part of the JSON.
     """
 
     layout: str
@@ -225,6 +226,7 @@ class Review(NamedTuple):
     cavities: tuple[Cavity, ...]
     matched: tuple[Match, ...]
     handed_over: tuple[HandedOver, ...]
+    not_computed: tuple[str, ...] = ()
     lines: tuple[str, ...] = ()
 
     @property

@@ -19,10 +19,11 @@ from benchlay.report.model import BeamRow, Polarization
 from benchlay.results.ends import Ends, ends_of
 from benchlay.results.frames import horizontals
 from benchlay.results.losses import losses
+from benchlay.results.names import left
 from benchlay.scene.tables import Floats, Ints, Scene
 from benchlay.tracing import Trace
 from benchlay.tracing.beams import Beams
-from benchlay.tracing.front import EMITTED, EVENTS, Front
+from benchlay.tracing.front import EVENTS, Front
 from benchlay.tracing.ways import Ways
 
 _W_CM2_OF_W_MM2 = 100.0
@@ -38,7 +39,7 @@ def beam_rows(trace: Trace, variant: int) -> tuple[BeamRow, ...]:
     columns = zip(
         range(len(rows)),
         (parent if parent >= 0 else None for parent in parents.tolist()),
-        *_origin(trace, beams, parents, ends),
+        *_origin(trace, beams, rows, ends),
         *_places(beams),
         beams.start.index.tolist(),
         beams.start.power.tolist(),
@@ -91,19 +92,10 @@ class _Origin(NamedTuple):
     event: list[str]
 
 
-def _origin(trace: Trace, beams: Beams, parents: Ints, ends: Ends) -> _Origin:
+def _origin(trace: Trace, beams: Beams, rows: Ints, ends: Ends) -> _Origin:
     scene, start = trace.scene, beams.start
     followed = [_followed(trace.ways, node) for node in start.node.tolist()]
-    names = (*scene.elements, *scene.sources)
-    left = [
-        # What a panel or another body throws back comes from what its parent ended on.
-        names[owner] if owner < len(names) else (ends.to[parent] or "bench")
-        for owner, parent in zip(start.owner.tolist(), parents.tolist(), strict=True)
-    ]
-    faces = [
-        "exit" if event == EMITTED else _face_name(scene, face)
-        for event, face in zip(start.event.tolist(), start.face.tolist(), strict=True)
-    ]
+    origins = [left(trace, beam) for beam in rows.tolist()]
     return _Origin(
         [scene.sources[number] for number in start.source.tolist()],
         scene.wavelengths_nm[start.wave].tolist(),
@@ -111,8 +103,8 @@ def _origin(trace: Trace, beams: Beams, parents: Ints, ends: Ends) -> _Origin:
         [names[0] if names else None for names, _ in followed],
         [names for names, _ in followed],
         [leg for _, leg in followed],
-        left,
-        faces,
+        [name for name, _ in origins],
+        [face for _, face in origins],
         ends.to,
         ends.to_face,
         ends.word,
@@ -126,10 +118,6 @@ def _followed(ways: Ways, node: int) -> tuple[tuple[str, ...], int | None]:
         return (), None
     routes = ways.places[node].routes
     return tuple(ways.names[route] for route, _ in routes), routes[0][1] if routes else None
-
-
-def _face_name(scene: Scene, row: int) -> str:
-    return scene.face_names[int(scene.faces.name[row])] if row >= 0 else "front"
 
 
 def _places(beams: Beams) -> tuple[list[tuple[float, ...]], ...]:

@@ -1,14 +1,84 @@
-"""The drawings of a checked layout, each in its formats, as files' bytes."""
+"""The drawings of a traced layout, each in its formats, as files' bytes.
+
+The drawing libraries are loaded with this module, so it is loaded when something is drawn.
+"""
 
 from __future__ import annotations
 
-from datetime import date
+from collections import Counter
+from collections.abc import Callable, Mapping, Sequence
 
-from benchlay.results.review import Checked
+from benchlay.document.problems import Problem, format_choices
+from benchlay.document.span import Span
+from benchlay.findings import Severity
+from benchlay.layout.layout import Layout
+from benchlay.report.model import Reported
+from benchlay.sheets import SHEETS, sheets_of
+from benchlay.sheets.primitives import Sheet
+from benchlay.sheets.scale import SIZES_MM, NothingFitsError
+from benchlay.tracing import Trace
+from benchlay.writers import dxf, svg
+
+FORMS: Mapping[str, Callable[[Sheet], bytes]] = {"dxf": dxf.write, "svg": svg.write}
+"""How a sheet is written, by the ending of its file."""
+
+
+def refusals(layout: Layout, sheet: str | None, form: str | None) -> tuple[Problem, ...]:
+    """Return what speaks against drawing what is asked for."""
+    place = Span(layout.file, 1, 1)
+    found = []
+    if sheet is not None and sheet not in SHEETS:
+        what = f"there is no sheet {sheet!r}"
+        found.append(Problem(place, what, f"--sheet {format_choices(SHEETS)}", "name another"))
+    if form is not None and form not in FORMS:
+        what = f"not yet: sheets are not written as {form}"
+        found.append(Problem(place, what, f"--format {format_choices(FORMS)}", "name another"))
+    asked = layout.drawing.sheet
+    if asked not in ("auto", *SIZES_MM):
+        found.append(
+            Problem(
+                layout.drawing.span_of("sheet"),
+                f"a plan has no room on {asked} beside its tables and title block",
+                f"auto, or one of {format_choices(SIZES_MM)}",
+                "write 'sheet: auto'",
+            )
+        )
+    return tuple(found)
 
 
 def drawings(
-    checked: Checked, on: date | None, *, sheet: str | None = None, form: str | None = None
-) -> dict[str, bytes]:
-    """Return the sheets asked for (all for None) in the formats asked for, by file name."""
-    return {}
+    trace: Trace,
+    judged: Sequence[Reported] = (),
+    sha256: str = "",
+    *,
+    sheet: str | None = None,
+    form: str | None = None,
+) -> dict[str, bytes] | Problem:
+    """Return the sheets asked for (all for None) in the formats asked for, by file name.
+
+    A sheet that fits on no paper is a problem of the layout. The findings, where they are
+    known, are counted in the sheets' notes; `sha256` is that of the layout's bytes.
+    """
+    only = None if sheet is None else (sheet,)
+    counts = Counter(Severity[finding.severity.upper()] for finding in judged)
+    try:
+        composed = sheets_of(trace, only=only, counts=sorted(counts.items()), sha256=sha256)
+    except NothingFitsError as error:
+        return _too_large(trace.placed.base.layout, error)
+    return {
+        f"{drawn.name}.{ending}": write(drawn)
+        for drawn in composed
+        for ending, write in FORMS.items()
+        if form in (None, ending)
+    }
+
+
+def _too_large(layout: Layout, error: NothingFitsError) -> Problem:
+    drawing = layout.drawing
+    asked = drawing.written("sheet") or drawing.written("scale")
+    return Problem(
+        drawing.span if asked else layout.bench.span,
+        f"the plan cannot be drawn: {error}",
+        "a bench that fits on the sheet at the scale asked for",
+        "write 'sheet: auto' and 'scale: auto'" if asked else "check the size of the bench",
+    )

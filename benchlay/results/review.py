@@ -4,18 +4,21 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Mapping, Sequence
 from datetime import date
-from typing import NamedTuple
+from typing import TYPE_CHECKING, NamedTuple
 
 from benchlay.checks import Run
 from benchlay.findings import Finding, MergedFinding, Severity, identify, merge_states, sort_key
 from benchlay.layout.layout import Layout
-from benchlay.report.model import Acceptance, CheckRun, Reported, Review, reported
+from benchlay.report.model import Acceptance, CheckRun, Reported, Review, Zone, reported
 from benchlay.results.accept import hold
 from benchlay.results.handed_over import handed_over
 from benchlay.results.ledger import ledgers
 from benchlay.results.limits import Limits, limits_used
 from benchlay.results.routes import route_results
 from benchlay.tracing import Trace
+
+if TYPE_CHECKING:
+    from benchlay.zones import Zones
 
 NOT_YET = "not-yet"
 
@@ -35,8 +38,8 @@ class Checked(NamedTuple):
     limits: Limits
     findings: tuple[Finding, ...]
     runs: tuple[Run, ...]
-    states: tuple[str, ...]
-    """Names of the states that are spoken of, in order."""
+    states: tuple[str, ...]  # that are spoken of, in order
+    zones: Zones | None = None  # where they were worked out
 
 
 class Judged(NamedTuple):
@@ -95,6 +98,7 @@ def review(checked: Checked, paper: Paper, on: date, *, in_full: bool) -> Review
     judged = judge(checked, on)
     variants = [trace.scene.variants.index(name) for name in checked.states]
     told = variants if in_full else []
+    zones = checked.zones
     return Review(
         layout=paper.name,
         sha256=paper.sha256,
@@ -106,11 +110,14 @@ def review(checked: Checked, paper: Paper, on: date, *, in_full: bool) -> Review
         limits_used=limits_used(trace.placed, checked.limits, checked.states),
         routes=tuple(row for variant in told for row in route_results(trace, variant)),
         ledger=tuple(row for variant in told for row in ledgers(trace, variant)),
-        zones=(),
+        zones=()
+        if zones is None
+        else tuple(Zone(*zone[: len(Zone._fields)]) for zone in zones.zones),
         coverage=(),
         panels=(),
         cavities=(),
         matched=(),
         handed_over=tuple(row for variant in told for row in handed_over(trace, variant)),
+        not_computed=() if zones is None else zones.not_computed,
         lines=paper.lines,
     )

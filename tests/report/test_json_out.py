@@ -32,7 +32,7 @@ FINDING_KEYS = [
 REVIEW_KEYS = [
     "layout", "sha256", "title", "revision", "as_of", "verdict", "findings", "checks",
     "limits_used", "routes", "ledger", "zones", "coverage", "panels", "cavities", "matched",
-    "handed_over",
+    "handed_over", "not_computed",
 ]  # fmt: skip
 BEAM_KEYS = [
     "beam", "parent", "source", "wavelength_nm", "splits", "route", "routes", "leg", "from",
