@@ -26,6 +26,7 @@ from benchlay.report.model import LayoutErrors, Reported, Review, TraceResult
 if TYPE_CHECKING:
     from benchlay.results.review import Checked
     from benchlay.tracing import Trace
+    from benchlay.zones import Zones
 
 _LINE_BREAK = re.compile("\r\n|[\n\r\x85\u2028\u2029]")  # what counts as one in YAML
 
@@ -168,7 +169,7 @@ def review_files(
 
     try:
         reviewed, checked = _reviewed(data, file, on=on, state=state, in_full=True)
-        drawings = _drawn(checked.trace, reviewed.findings, reviewed.sha256)
+        drawings = _drawn(checked.trace, reviewed.findings, checked.zones, reviewed.sha256)
     except LayoutError as error:
         return LayoutErrors(file, error.problems, _lines(data))
     documents = {
@@ -185,7 +186,7 @@ def draw_files(
     """Draw the sheets asked for (all of them for None), each in its forms, by file name."""
     try:
         traced = trace(place(read(file, data)))
-        return _drawn(traced, (), sha256(data).hexdigest(), sheet=sheet, form=form)
+        return _drawn(traced, digest=sha256(data).hexdigest(), sheet=sheet, form=form)
     except LayoutError as error:
         return LayoutErrors(file, error.problems, _lines(data))
 
@@ -193,6 +194,7 @@ def draw_files(
 def _drawn(
     traced: Trace,
     judged: Sequence[Reported] = (),
+    zones: Zones | None = None,
     digest: str = "",
     *,
     sheet: str | None = None,
@@ -203,7 +205,7 @@ def _drawn(
     problems = refusals(traced.placed.base.layout, sheet, form)
     if problems:
         raise LayoutError(problems)
-    made = drawings(traced, judged, digest, sheet=sheet, form=form)
+    made = drawings(traced, judged, zones, digest, sheet=sheet, form=form)
     if isinstance(made, Problem):
         raise LayoutError((made,))
     return made

@@ -18,6 +18,7 @@ from benchlay.sheets.primitives import Sheet
 from benchlay.sheets.scale import SIZES_MM, NothingFitsError
 from benchlay.tracing import Trace
 from benchlay.writers import dxf, svg
+from benchlay.zones import Zones
 
 FORMS: Mapping[str, Callable[[Sheet], bytes]] = {"dxf": dxf.write, "svg": svg.write}
 """How a sheet is written, by the ending of its file."""
@@ -49,6 +50,7 @@ def refusals(layout: Layout, sheet: str | None, form: str | None) -> tuple[Probl
 def drawings(
     trace: Trace,
     judged: Sequence[Reported] = (),
+    zones: Zones | None = None,
     sha256: str = "",
     *,
     sheet: str | None = None,
@@ -56,13 +58,14 @@ def drawings(
 ) -> dict[str, bytes] | Problem:
     """Return the sheets asked for (all for None) in the formats asked for, by file name.
 
-    A sheet that fits on no paper is a problem of the layout. The findings, where they are
-    known, are counted in the sheets' notes; `sha256` is that of the layout's bytes.
+    A sheet that fits on no paper is a problem of the layout. Findings and zones are what the
+    review has of them: the findings are counted in the sheets' notes, and zones that are not
+    known yet are worked out. `sha256` is that of the layout's bytes.
     """
     only = None if sheet is None else (sheet,)
     counts = Counter(Severity[finding.severity.upper()] for finding in judged)
     try:
-        composed = sheets_of(trace, only=only, counts=sorted(counts.items()), sha256=sha256)
+        composed = sheets_of(trace, zones, only=only, counts=sorted(counts.items()), sha256=sha256)
     except NothingFitsError as error:
         return _too_large(trace.placed.base.layout, error)
     return {

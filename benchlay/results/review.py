@@ -91,6 +91,13 @@ def _not_yet(layout: Layout, state: str) -> Iterable[Finding]:
         )
 
 
+def _zones(zones: Zones | None) -> tuple[Zone, ...]:
+    return tuple(
+        Zone(z.state, z.kind, z.wavelength_nm, z.reason, z.area_m2, z.reach_m, z.polygon)
+        for z in (() if zones is None else zones.zones)
+    )
+
+
 def review(checked: Checked, paper: Paper, on: date, *, in_full: bool) -> Review:
     """Return the review of a layout; what costs time only where it is asked for in full."""
     trace = checked.trace
@@ -110,9 +117,7 @@ def review(checked: Checked, paper: Paper, on: date, *, in_full: bool) -> Review
         limits_used=limits_used(trace.placed, checked.limits, checked.states),
         routes=tuple(row for variant in told for row in route_results(trace, variant)),
         ledger=tuple(row for variant in told for row in ledgers(trace, variant)),
-        zones=()
-        if zones is None
-        else tuple(Zone(*zone[: len(Zone._fields)]) for zone in zones.zones),
+        zones=_zones(zones),
         coverage=(),
         panels=(),
         cavities=(),
