@@ -22,6 +22,7 @@ from benchlay.layout.materials import Material
 from benchlay.layout.names import AS_DRAWN, Later, names_in, read_entries
 from benchlay.layout.paths import Cavity, Matched
 from benchlay.layout.references import References
+from benchlay.layout.rings import refuse_rings
 from benchlay.layout.room import Room
 from benchlay.layout.routes import Route, read_route
 from benchlay.layout.sources import Source, read_source
@@ -173,6 +174,7 @@ class _Document:
             references.source(source)
         for element in parts.elements.values():
             references.element(element)
+        refuse_rings(parts.elements, references.reader)
         if parts.enclosure is not None:
             references.enclosure(parts.enclosure)
 

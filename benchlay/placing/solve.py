@@ -90,13 +90,16 @@ class Solver:
             return stand_source(source, self)
         return stand_element(self.layout.elements[name], self)
 
+    def _item(self, name: str) -> Source | Element:
+        return self.layout.sources.get(name) or self.layout.elements[name]
+
     def _report_cycle(self, name: str) -> None:
         ring = [*self.busy[self.busy.index(name) :], name]
         self.failed.update(ring)
         if self.arrivals.trying:
             return
         self.problems.add(
-            self.layout.spans[f"elements.{name}"],
+            self._item(name).span,
             "these places hang on one another: " + " → ".join(ring),
             expected="places that lead back to a source, or to `at` with `facing`",
             remedy=f"give one of them, such as {name!r}, a place of its own: `at` and `facing`",

@@ -63,7 +63,7 @@ def stand_element(element: Element, solver: Solver) -> Pose:
 
 def _needs_no_ray(stand: Stand) -> bool:
     fixed = stand.at_mm is not None or stand.hole is not None or stand.in_opening is not None
-    return fixed and stand.facing is not None and not stand.after
+    return fixed and stand.facing is not None
 
 
 def _fixed_point(item: Source | Element, stand: Stand, solver: Solver) -> Vector | None:
@@ -151,10 +151,20 @@ def _aimed(element: Element, ray: NominalRay, at: Vector | None, solver: Solver)
 
 def _point_meant(item: Source | Element, meant: Ref | tuple[float, ...], solver: Solver) -> Vector:
     if isinstance(meant, Ref):
-        return solver.pose(meant.name).at
+        return _reference_point(meant.name, solver)
     if len(meant) > 2:  # noqa: PLR2004 (x, y and z)
         return (meant[0], meant[1], meant[2])
     return (meant[0], meant[1], solver.layout.bench.beam_height_mm)
+
+
+def _reference_point(name: str, solver: Solver) -> Vector:
+    """Return where something stands; what has a place of its own need not be turned first."""
+    if name not in solver.poses:
+        named = solver.layout.sources.get(name) or solver.layout.elements[name]
+        fixed = _fixed_point(named, named.stand, solver)
+        if fixed is not None:
+            return fixed
+    return solver.pose(name).at
 
 
 def _brewster(element: Element, ray: NominalRay, solver: Solver) -> float:
