@@ -58,7 +58,7 @@ def _hangs_on(name: str, elements: Mapping[str, Element]) -> Iterator[str]:
             if item.item in elements:
                 yield item.item
     for ref in (stand.aim, stand.facing):
-        if isinstance(ref, Ref) and ref.name in elements:
+        if isinstance(ref, Ref) and ref.name != name and ref.name in elements:
             looked_at = elements[ref.name].stand
             if looked_at.at_mm is None and looked_at.in_opening is None:
                 yield ref.name
