@@ -236,8 +236,8 @@ def layout(elements, **more):
         (
             "bench: {{size: {size}, medium: {medium}}}\n"
             "sources:\n"
-            "  laser: {{wavelength: {wavelength}, power: 1 W, beam: {beam}, polarization: {polarization},"
-            " at: {at}, heading: {heading}, body: none{source}}}\n"
+            "  laser: {{wavelength: {wavelength}, power: 1 W, beam: {beam},"
+            " polarization: {polarization}, at: {at}, heading: {heading}, body: none{source}}}\n"
             "elements:\n"
         ).format(**parts)
         + elements

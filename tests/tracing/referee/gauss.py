@@ -5,6 +5,8 @@ w is the 1/e^2 radius: irradiance exp(-2 r^2 / w^2). Siegman, Lasers, ch. 17.
 
 from __future__ import annotations
 
+from itertools import pairwise
+
 import numpy as np
 from scipy.integrate import quad
 from scipy.special import erfc
@@ -60,8 +62,7 @@ def strips(intervals, w_x, w_y, breaks=(), reach=6.5):
 
     stops = sorted({-reach * w_y, reach * w_y, *(b for b in breaks if abs(b) < reach * w_y)})
     parts = [
-        quad(column, a, b, epsabs=1e-14, epsrel=1e-11, limit=400)[0]
-        for a, b in zip(stops, stops[1:], strict=False)
+        quad(column, a, b, epsabs=1e-14, epsrel=1e-11, limit=400)[0] for a, b in pairwise(stops)
     ]
     return float(sum(parts))
 

@@ -74,8 +74,8 @@ def decentred_lenses_bend_the_chief_ray():
     for focal in (120, -200):
         for off, up in ((3, 0), (0, -2), (4, 5)):
             text = (
-                f"  L: {{kind: lens, at: [350, {450 + off}, {100 + up}], facing: 180, size: [40, 40],"
-                f" focal: {focal}, mount: none}}\n"
+                f"  L: {{kind: lens, at: [350, {450 + off}, {100 + up}], facing: 180,"
+                f" size: [40, 40], focal: {focal}, mount: none}}\n"
             )
             beam = Bench(layout(text)).from_("L.back")[0]
             expected = (off / focal, up / focal)
@@ -198,7 +198,7 @@ def several_lines_from_one_source():
                     watts * (1 - rp) / (1 + rp))  # fmt: skip
         yield power(f"{nm} away", bench.sink("escaped", wavelength_nm=nm),
                     watts * 2 * rp / (1 + rp))  # fmt: skip
-        main = [b for b in bench.reaching("T") if b.wavelength_nm == nm][0]
+        main = next(b for b in bench.reaching("T") if b.wavelength_nm == nm)
         inside = np.arcsin(np.sin(np.radians(40)) / n)
         shift = 5 * np.sin(np.radians(40) - inside) / np.cos(inside)
         yield length(f"{nm} shift", abs(main.end[1] - 450), shift)
