@@ -6,19 +6,22 @@ line are answered at once.
 
 from __future__ import annotations
 
+import os
 import sys
 from argparse import Namespace
 from collections.abc import Callable, Iterator, Mapping
 from datetime import date
 from enum import IntEnum
-from pathlib import Path, PurePath
-from typing import NamedTuple, Protocol, TypeAlias, TypeVar
+from typing import TYPE_CHECKING, NamedTuple, Protocol, TypeAlias, TypeVar
 
 from benchlay.document.problems import Problem
 from benchlay.document.span import Span
 from benchlay.findings import Severity
 from benchlay.report.model import LayoutErrors, Review, TraceResult
 from benchlay.report.words import Ink
+
+if TYPE_CHECKING:
+    from pathlib import Path
 
 Result = TypeVar("Result")
 Files: TypeAlias = Mapping[str, bytes]
@@ -115,7 +118,7 @@ def run_draw(options: Namespace, ink: Ink) -> Outcome:
     drawn = _of_file(options.layout, draw)
     if isinstance(drawn, LayoutErrors):
         return _errors(drawn, ink)
-    folder = options.output or _folder(options.layout)
+    (folder,) = _folders([options.layout], options.output)
     written = write_all(folder, drawn)
     return Outcome(Status.NOTHING, "".join(f"{path}\n" for path in written))
 
@@ -194,10 +197,17 @@ def _status(result: Review | LayoutErrors, fail_on: str) -> Status:
 def _of_file(name: str, work: Callable[[bytes, str], Result]) -> Result | LayoutErrors:
     """Read a layout's bytes and work on them; a file that cannot be read is an error in it."""
     try:
-        data = sys.stdin.buffer.read() if name == "-" else Path(name).read_bytes()
+        data = _bytes_of(name)
     except OSError as error:
         return LayoutErrors(name, (_unreadable(name, error),))
     return work(data, name)
+
+
+def _bytes_of(name: str) -> bytes:
+    if name == "-":
+        return sys.stdin.buffer.read()
+    with open(name, "rb") as file:
+        return file.read()
 
 
 def _unreadable(name: str, error: OSError) -> Problem:
@@ -212,28 +222,21 @@ def _unreadable(name: str, error: OSError) -> Problem:
 
 def _beside(name: str) -> str:
     """Name the layouts that stand in the same folder, for a path with a slip in it."""
-    found = sorted(_layouts_in(Path(name).parent))
+    found = sorted(_layouts_in(os.path.dirname(name) or os.curdir))
     return f"; in that folder there are: {', '.join(found[:8])}" if found else ""
 
 
-def _layouts_in(folder: Path) -> Iterator[str]:
+def _layouts_in(folder: str) -> Iterator[str]:
     try:
-        yield from (p.name for p in folder.iterdir() if p.suffix in {".yaml", ".yml"})
+        yield from (name for name in os.listdir(folder) if name.endswith((".yaml", ".yml")))
     except OSError:
         return
 
 
-def _folders(layouts: list[str], output: Path | None) -> list[Path]:
-    if output is None:
-        return [_folder(name) for name in layouts]
-    if len(layouts) == 1:
-        return [output]
-    return [output / _stem(name) for name in layouts]
+def _folders(layouts: list[str], output: str | None) -> list[Path]:
+    from pathlib import Path
 
-
-def _folder(layout: str) -> Path:
-    return Path("exports") / _stem(layout)
-
-
-def _stem(layout: str) -> str:
-    return "stdin" if layout == "-" else PurePath(layout).stem
+    if output is not None and len(layouts) == 1:
+        return [Path(output)]
+    above = Path("exports" if output is None else output)
+    return [above / ("stdin" if name == "-" else Path(name).stem) for name in layouts]

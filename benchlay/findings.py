@@ -9,7 +9,6 @@ from __future__ import annotations
 import math
 from collections.abc import Iterable, Sequence
 from enum import IntEnum
-from hashlib import blake2s
 from typing import NamedTuple, TypeAlias
 
 from benchlay.document.span import Span
@@ -112,6 +111,9 @@ def make_id(
     >>> make_id("escape", "W1", ("green", 532.0, "W1.front")).rpartition("/")[0]
     'escape/W1'
     """
+    # Loaded here: a bench without findings needs no digest.
+    from hashlib import blake2s
+
     parts = [check, element or "", *(_stable(part) for part in key)]
     # The length of each part goes in too, so that no two different lists can look alike.
     told = "".join(f"{len(part)}:{part}" for part in parts)

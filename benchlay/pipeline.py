@@ -12,8 +12,6 @@ import os
 import re
 from collections.abc import Sequence
 from datetime import date
-from hashlib import sha256
-from pathlib import Path
 from typing import TYPE_CHECKING
 
 from benchlay.document.problems import Problem, Problems
@@ -67,8 +65,10 @@ def read(file: str | os.PathLike[str], text: str | bytes | None = None) -> Layou
     OSError
         If the file cannot be read.
     """
-    data = Path(file).read_bytes() if text is None else text
-    layout, problems = read_layout(data, os.fspath(file))
+    if text is None:
+        with open(file, "rb") as opened:
+            text = opened.read()
+    layout, problems = read_layout(text, os.fspath(file))
     if layout is None:
         raise LayoutError(tuple(problems.sorted()))
     others = sorted(name for name in layout.layouts if name != AS_DRAWN)
@@ -186,7 +186,7 @@ def draw_files(
     """Draw the sheets asked for (all of them for None), each in its forms, by file name."""
     try:
         traced = trace(place(read(file, data)))
-        return _drawn(traced, digest=sha256(data).hexdigest(), sheet=sheet, form=form)
+        return _drawn(traced, digest=_digest(data), sheet=sheet, form=form)
     except LayoutError as error:
         return LayoutErrors(file, error.problems, _lines(data))
 
@@ -239,7 +239,7 @@ def _reviewed(
         from benchlay.zones import zones_of
 
         checked = checked._replace(zones=zones_of(traced, checked.states))
-    paper = Paper(file, sha256(data).hexdigest(), _lines(data))
+    paper = Paper(file, _digest(data) if in_full else "", _lines(data))
     return put_together(checked, paper, on, in_full=in_full), checked
 
 
@@ -251,6 +251,12 @@ def _checked(traced: Trace, states: Sequence[str] | None) -> Checked:
     findings, runs = run_checks(Context(traced, limits))
     spoken_of = traced.scene.variants if states is None else tuple(states)
     return Checked(traced, limits, tuple(findings), tuple(runs), spoken_of)
+
+
+def _digest(data: bytes) -> str:
+    from hashlib import sha256
+
+    return sha256(data).hexdigest()
 
 
 def _with_state(layout: LayoutSource, state: str | None) -> LayoutSource:

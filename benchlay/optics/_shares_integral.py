@@ -20,6 +20,7 @@ from typing import NamedTuple
 
 import numpy as np
 
+from benchlay.optics import _gauss
 from benchlay.optics._shares_curves import (
     Bools,
     Ellipses,
@@ -43,7 +44,7 @@ _TINY = 1e-300  # in place of r^2 = 0, where the integrand is 2
 # A Gauss rule of n nodes on a panel of length L errs by about rho^(-2n), where
 # rho + 1/rho = (sum of the distances of the nearest pole from the panel's ends) / (L/2).
 _POLE = {8: 4.4, 16: 1.6}  # least (sum of distances) / L for an error below 1e-14
-_RULES = {n: np.polynomial.legendre.leggauss(n) for n in _POLE}
+_RULES = {n: _gauss.rule(n) for n in _POLE}
 
 
 # From the columns of `Pieces.shape`, the middles and half lengths of panels (N,), and

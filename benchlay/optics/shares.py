@@ -22,6 +22,7 @@ from typing import NamedTuple
 import numpy as np
 from numpy.typing import ArrayLike
 
+from benchlay.geometry.distinct import ranked
 from benchlay.optics._shares_breaks import break_angles
 from benchlay.optics._shares_curves import Bools, Floats, Ints, Shapes
 from benchlay.optics._shares_integral import shares
@@ -140,7 +141,7 @@ def _blocks(problem: Ints) -> list[slice]:
 
 def _fill(shapes: Shapes, rows: Ints, share: Floats, free: Floats) -> None:
     """Work out the problems of some rows, and write their shares in place."""
-    named, local = np.unique(shapes.problem[rows], return_inverse=True)
+    named, local = ranked(shapes.problem[rows])
     problem = np.zeros(len(shapes.problem), dtype=np.intp)
     problem[rows] = local
     section = prepare(shapes._replace(problem=problem), rows, len(named))

@@ -9,12 +9,9 @@ from typing import TYPE_CHECKING, NamedTuple
 from benchlay.checks import Run
 from benchlay.findings import Finding, MergedFinding, Severity, identify, merge_states, sort_key
 from benchlay.layout.layout import Layout
-from benchlay.report.model import Acceptance, CheckRun, Reported, Review, Zone, reported
+from benchlay.report.model import Acceptance, CheckRun, Reported, Review, reported
 from benchlay.results.accept import hold
-from benchlay.results.handed_over import handed_over
-from benchlay.results.ledger import ledgers
 from benchlay.results.limits import Limits, limits_used
-from benchlay.results.routes import route_results
 from benchlay.tracing import Trace
 
 if TYPE_CHECKING:
@@ -91,22 +88,12 @@ def _not_yet(layout: Layout, state: str) -> Iterable[Finding]:
         )
 
 
-def _zones(zones: Zones | None) -> tuple[Zone, ...]:
-    return tuple(
-        Zone(z.state, z.kind, z.wavelength_nm, z.reason, z.area_m2, z.reach_m, z.polygon)
-        for z in (() if zones is None else zones.zones)
-    )
-
-
 def review(checked: Checked, paper: Paper, on: date, *, in_full: bool) -> Review:
     """Return the review of a layout; what costs time only where it is asked for in full."""
     trace = checked.trace
     layout = trace.placed.base.layout
     judged = judge(checked, on)
-    variants = [trace.scene.variants.index(name) for name in checked.states]
-    told = variants if in_full else []
-    zones = checked.zones
-    return Review(
+    short = Review(
         layout=paper.name,
         sha256=paper.sha256,
         title=layout.title or None,
@@ -115,14 +102,18 @@ def review(checked: Checked, paper: Paper, on: date, *, in_full: bool) -> Review
         findings=judged.findings,
         checks=judged.runs,
         limits_used=limits_used(trace.placed, checked.limits, checked.states),
-        routes=tuple(row for variant in told for row in route_results(trace, variant)),
-        ledger=tuple(row for variant in told for row in ledgers(trace, variant)),
-        zones=_zones(zones),
+        routes=(),
+        ledger=(),
+        zones=(),
         coverage=(),
         panels=(),
         cavities=(),
         matched=(),
-        handed_over=tuple(row for variant in told for row in handed_over(trace, variant)),
-        not_computed=() if zones is None else zones.not_computed,
+        handed_over=(),
         lines=paper.lines,
     )
+    if not in_full:
+        return short
+    from benchlay.results.details import with_details
+
+    return with_details(short, trace, checked.states, checked.zones)

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import numpy as np
 
+from benchlay.geometry.distinct import distinct
 from benchlay.scene.tables import Faces, Fixed, Floats, Ints, Solids
 
 
@@ -22,7 +23,7 @@ def fixed_products(faces: Faces, solids: Solids, item_of_face: Ints) -> Fixed:
         _products(s.axis_point, s.axis),
         _products(s.axis_point, s.axis_point),
         _own_faces(item_of_face),
-        np.unique(s.hole_solid),
+        distinct(s.hole_solid),
     )
 
 

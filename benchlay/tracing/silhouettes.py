@@ -13,6 +13,7 @@ from typing import NamedTuple
 import numpy as np
 
 from benchlay.elements._kind import Acts
+from benchlay.geometry.distinct import distinct
 from benchlay.optics.rays import cross, dot
 from benchlay.optics.shares import Shapes
 from benchlay.scene.tables import PART, Flags, Floats, Ints, Scene, Solids
@@ -304,7 +305,7 @@ def patch_outlines(
     slopes = part.direction @ s.patch_normal.T
     seen = close[:, s.patch_solid] & (slopes < _GRAZING)
     first = np.zeros(len(s.patch_solid), dtype=np.bool_)
-    first[np.searchsorted(s.patch_solid, np.unique(s.patch_solid))] = True
+    first[np.searchsorted(s.patch_solid, distinct(s.patch_solid))] = True
     only_front = ringed[:, s.patch_solid]
     seen = np.where(only_front, close[:, s.patch_solid] & first, seen)
     problem, patch = np.nonzero(seen)
