@@ -22,6 +22,7 @@ Floats = NDArray[np.float64]
 _RINGS_MM = (1.5, 3.5, 6.0, 9.0, 13.0, 18.0, 24.0, 32.0, 42.0, 54.0)
 _DIRECTIONS = 24
 _MARGIN_MM = 0.7  # ISO 128: lines keep at least this apart
+_SAME_MM = 0.4
 _OVERLAP = 1e4  # of two lines of lettering: never taken
 _LINE_UNDER = 20.0  # a line that runs through the lettering
 _LEADER_CROSSES = 2.0
@@ -55,6 +56,7 @@ class Crowd:
         self._boxes: list[Window] = []
         self._segments: list[tuple[float, float, float, float]] = []
         self._array: Floats = np.empty((0, 4))
+        self._known: set[tuple[tuple[int, int], ...]] = set()
 
     @property
     def boxes(self) -> tuple[Window, ...]:
@@ -66,14 +68,32 @@ class Crowd:
         self._boxes.append(box)
 
     def add_line(self, points: Sequence[Point], *, closed: bool = False) -> None:
-        """Let tags rather not stand on a line, nor leaders cross it."""
+        """Let tags rather not stand on a line, nor leaders cross it.
+
+        Lines that look like one, as light that runs to and fro, count once.
+        """
         ends = [*points[1:], points[0]] if closed else points[1:]
-        self._segments += [(*a, *b) for a, b in zip(points, ends, strict=False)]
+        for a, b in zip(points, ends, strict=False):
+            key = tuple(sorted((round(x / _SAME_MM), round(y / _SAME_MM)) for x, y in (a, b)))
+            if key not in self._known:
+                self._known.add(key)
+                self._segments.append((*a, *b))
 
     def lines_through(self, box: Window) -> int:
         """Return how many lines run through a box."""
         lines = np.array(self._segments, dtype=np.float64).reshape(-1, 4)
         return int(_runs_through(lines, np.array([box])).sum())
+
+    def take(self, box: Window) -> bool:
+        """Take a box where nothing is in its way; return whether it was taken."""
+        left, low, right, high = self._window
+        inside = box.left >= left and box.low >= low and box.right <= right and box.high <= high
+        boxes = np.array(self._boxes, dtype=np.float64).reshape(-1, 4)
+        covers = _overlaps(np.array([box]), boxes).any()
+        if not inside or covers or self.lines_through(box):
+            return False
+        self.add_box(box)
+        return True
 
     def place(self, size_mm: Point, anchors: Iterable[tuple[Point, float]]) -> Place | None:
         """Find a place for a box of lettering and take it.

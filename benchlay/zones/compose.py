@@ -47,9 +47,14 @@ class Zones(NamedTuple):
     not_computed: tuple[str, ...]
 
 
+class _Maker(NamedTuple):
+    how: str  # with the words before what it names
+    names: tuple[str, ...]
+
+
 class _Piece(NamedTuple):
     area: BaseGeometry
-    maker: str
+    maker: _Maker
     power_w: float
     reach_m: float
     beam: int
@@ -133,7 +138,7 @@ def _zone(
         float(limits.aperture_mm[at]),
         float(limits.time_base_s[at]),
     )
-    makers = tuple(dict.fromkeys(piece.maker for piece in own))
+    makers = _makers(piece.maker for piece in own)
     return Zone(
         trace.scene.variants[at[0]],
         kind,
@@ -158,9 +163,7 @@ class _Measure(NamedTuple):
 
 
 def _reason(kind: str, makers: tuple[str, ...], measure: _Measure) -> str:
-    who = ", ".join(makers[:_NAMED])
-    if len(makers) > _NAMED:
-        who += f" and {len(makers) - _NAMED} more"
+    who = "; ".join(makers)
     power, limit, aperture, time_s = measure
     above = (
         f"limit {with_unit(limit, 'W')} through {number(aperture)} mm in {number(time_s)} s"
@@ -177,22 +180,35 @@ _WHERE = {
 }
 
 
-def _maker(trace: Trace, beam: int) -> str:
+def _maker(trace: Trace, beam: int) -> _Maker:
     s, ways = trace.beams.start, trace.ways
     source = trace.scene.sources[s.source[beam]]
     node = int(s.node[beam])
     if node >= 0:
         routes = sorted({ways.names[route] for route, _ in ways.places[node].routes})
-        return f"{source} on {' and '.join(routes)}"
+        return _Maker(f"{source} on", tuple(routes))
     names = (*trace.scene.elements, *trace.scene.sources)
     owner = int(s.owner[beam])
-    if owner >= len(names):
-        return f"stray light of {source} from the surroundings"
-    return f"stray light of {source} from {names[owner]}"
+    place = names[owner] if owner < len(names) else "the surroundings"
+    return _Maker(f"stray light of {source} from", (place,))
 
 
-def _spot_maker(spot: Spot) -> str:
-    return f"scattered from {spot.name or 'the ' + spot.sink}"
+def _makers(makers: Iterable[_Maker]) -> tuple[str, ...]:
+    """Return in words what makes a zone, each way of making it once."""
+    found: dict[str, dict[str, None]] = {}
+    for maker in makers:
+        found.setdefault(maker.how, {}).update(dict.fromkeys(maker.names))
+    return tuple(f"{how} {_listed(list(names))}" for how, names in found.items())
+
+
+def _listed(names: list[str]) -> str:
+    if len(names) > _NAMED:
+        return f"{', '.join(names[:_NAMED])} and {len(names) - _NAMED} more"
+    return " and ".join([", ".join(names[:-1]), names[-1]] if len(names) > 1 else names)
+
+
+def _spot_maker(spot: Spot) -> _Maker:
+    return _Maker("scattered from", (spot.name or f"the {spot.sink}",))
 
 
 def _beside(trace: Trace, limits: LimitTable, variant: int) -> list[str]:
@@ -213,7 +229,7 @@ def _beside(trace: Trace, limits: LimitTable, variant: int) -> list[str]:
             continue
         place = scene.names[name] if name >= 0 else "no element or panel"
         out.append(
-            f"{with_unit(power, 'W')} of the {_maker(trace, beam)} passes beside "
+            f"{with_unit(power, 'W')} of {_makers([_maker(trace, beam)])[0]} passes beside "
             f"{scene.names[owner] if owner >= 0 else 'the bench'} and ends on {place}: "
             f"no zone is drawn for it (state {scene.variants[variant]})"
         )

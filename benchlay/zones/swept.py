@@ -26,7 +26,7 @@ from benchlay.tracing.trace import Trace
 from benchlay.zones.limits import LimitTable
 
 _SAMPLES = 33
-_HALVINGS = 40
+_HALVINGS = 24  # of a stretch between two samples: to micrometres
 _STRAIGHT_MM = 0.05  # a strip's side is one line where it bends by less
 _SIDES = 64  # of a circle
 _MM_PER_M = 1e3
@@ -88,10 +88,13 @@ def _extent(trace: Trace, limits: LimitTable, beams: Ints, length: Floats) -> tu
     rows, last = np.arange(len(beams)), depth.shape[1] - 1
     at = np.where(too_much.any(axis=1), last - np.argmax(too_much[:, ::-1], axis=1), 0)
     near, far = depth[rows, at], depth[rows, np.minimum(at + 1, last)]
-    for _ in range(_HALVINGS):
-        middle = 0.5 * (near + far)
-        still = through_aperture(trace, limits, beams, middle[:, None])[:, 0] > allowed
-        near, far = np.where(still, middle, near), np.where(still, far, middle)
+    ending = np.flatnonzero(far > near)  # all others are hazardous to the end of the leg
+    for _ in range(_HALVINGS if len(ending) else 0):
+        middle = 0.5 * (near[ending] + far[ending])
+        power_there = through_aperture(trace, limits, beams[ending], middle[:, None])[:, 0]
+        still = power_there > allowed[ending]
+        near[ending] = np.where(still, middle, near[ending])
+        far[ending] = np.where(still, far[ending], middle)
     return np.where(too_much.any(axis=1), far, 0.0), power.max(axis=1)
 
 

@@ -22,6 +22,9 @@ _CHANGE = 0.05
 # Weaker strays than this share of the limit say little, and there are many.
 WEAKEST = 0.1
 _MOST_WEAK = 80
+_MOST_TAGS = 24  # on strays: with more, a sheet says less
+_MOST_FULL_TAGS = 6  # that also say where the light comes from
+_TOGETHER_MM = 10.0  # strays that start and end nearer to each other than this share a tag
 _SAMPLES = 13
 _DEPTHS = 5  # at which a stray's power through the aperture is looked at
 _OFF_CLEAR = 0.01  # of the light reaches a face's clear region: it ends on the rim
@@ -32,7 +35,8 @@ class DrawnLegs(NamedTuple):
 
     legs: tuple[Leg, ...]
     working: tuple[tuple[str, float], ...]  # beams in the order of their names: name, nm
-    tagged: int  # stray beams above the limit
+    strays: int  # beams above the limit
+    tags: int  # on them: those that run together share one
     weak: int  # drawn without a tag
     left_out: int
     left_out_below: float  # share of the limit
@@ -53,7 +57,9 @@ def legs_of(trace: Trace, limits: LimitTable, variant: int, decimal: str) -> Dra
     strong, weak = strays[share > 1.0], strays[(share <= 1.0) & (share >= weakest)]
     names = _Names(trace, decimal)
     legs = [_leg(trace, int(beam), names.working(int(beam)), stray=False) for beam in working]
-    legs += [_leg(trace, int(beam), names.stray(int(beam)), stray=True) for beam in strong]
+    named = [(int(beam), *names.stray(int(beam))) for beam in sorted(strong.tolist())]
+    tags = _tags(trace, named, decimal)
+    legs += [_leg(trace, beam, tag, stray=True) for beam, tag in tags]
     legs += [
         _leg(trace, int(beam), ("", ""), stray=True)._replace(weak=True, radii_mm=())
         for beam in weak
@@ -62,9 +68,48 @@ def legs_of(trace: Trace, limits: LimitTable, variant: int, decimal: str) -> Dra
         tuple(legs),
         tuple(names.begun),
         names.strays,
+        sum(bool(words) for _, (_, words) in tags),
         len(weak),
         len(strays) - len(strong) - len(weak),
         weakest,
+    )
+
+
+def _tags(
+    trace: Trace, named: list[tuple[int, str, str]], decimal: str
+) -> list[tuple[int, tuple[str, str]]]:
+    """Return the tag of each stray leg; of many, only the strongest, in fewer words."""
+    power = trace.beams.start.power
+    groups = _together(trace, [beam for beam, _, words in named if words])
+    full = len(groups) <= _MOST_FULL_TAGS
+    shown = {group[0]: len(group) - 1 for group in groups[:_MOST_TAGS]}
+    out = []
+    for beam, name, words in named:
+        tag = words if full else f"{name} {with_unit(float(power[beam]), 'W', decimal=decimal)}"
+        more = f", {shown[beam]} weaker" if shown.get(beam) else ""
+        out.append((beam, (name, tag + more if beam in shown else "")))
+    return out
+
+
+def _together(trace: Trace, beams: list[int]) -> list[list[int]]:
+    """Return strays that run side by side, either way, the strongest of each group first."""
+    s, b = trace.beams.start, trace.beams
+    groups: list[list[int]] = []
+    for beam in sorted(beams, key=lambda one: (-s.power[one], one)):
+        ends = s.position[beam], b.end[beam]
+        for group in groups:
+            first = s.position[group[0]], b.end[group[0]]
+            if any(_near(ends, way) for way in (first, first[::-1])):
+                group.append(beam)
+                break
+        else:
+            groups.append([beam])
+    return groups
+
+
+def _near(one: tuple[Floats, ...], other: tuple[Floats, ...]) -> bool:
+    return all(
+        float(np.hypot.reduce(a - b)) < _TOGETHER_MM for a, b in zip(one, other, strict=True)
     )
 
 
@@ -92,6 +137,17 @@ class _Names:
         self.strays = 0
         self._named: dict[int, tuple[str, float]] = {}  # by beam: name, power at its tag
         self._continued: set[int] = set()  # beams whose name went on to a leg outside
+        # An element may be called S1: no beam is then, in the field or on the sheet.
+        owners = (*trace.scene.elements, *trace.scene.sources)
+        self._taken = {name.upper() for name in owners}
+        self._last = {"B": 0, "S": 0}
+
+    def _new(self, letter: str) -> str:
+        while True:
+            self._last[letter] += 1
+            name = f"{letter}{self._last[letter]}"
+            if name not in self._taken:
+                return name
 
     def working(self, beam: int) -> tuple[str, str]:
         """Return name and words of a leg; no words where its name was met before."""
@@ -103,7 +159,7 @@ class _Names:
         kept = self._kept(beam)
         if kept is not None:
             return kept, ""
-        name = f"B{len(self.begun) + 1}"
+        name = self._new("B")
         nm = float(self.trace.scene.wavelengths_nm[s.wave[beam]])
         self.begun.append((name, nm))
         self._named[beam] = (name, float(s.power[beam]))
@@ -116,7 +172,7 @@ class _Names:
             return kept, ""
         s, scene = self.trace.beams.start, self.trace.scene
         self.strays += 1
-        name = f"S{self.strays}"
+        name = self._new("S")
         self._named[beam] = (name, float(s.power[beam]))
         owners = (*scene.elements, *scene.sources)
         owner = int(s.owner[beam])

@@ -70,11 +70,11 @@ def plan_picture(
         legend=tuple(_legend(trace, limits, variant, legs, decimal)),
         revisions=tuple((r.rev, r.date, r.what, r.by) for r in layout.revisions),
         notes=(
-            *drawing.notes,
-            *unmet,
+            _CAUTION,
             *_assumptions(state, zones, legs, decimal),
             *_findings(counts),
-            _CAUTION,
+            *drawing.notes,
+            *unmet,
         ),
         properties=tuple(_properties(layout, sha256)),
         sheet=sheet,
@@ -180,9 +180,10 @@ def _assumptions(
 
 def _strays(legs: DrawnLegs, decimal: str) -> str:
     percent = number(100.0 * legs.left_out_below, 3, decimal)
-    if not (legs.tagged or legs.weak or legs.left_out):
+    if not (legs.strays or legs.weak or legs.left_out):
         return "No stray light outside optics was traced above the power floor."
-    out = f"Stray beams above the limit: {legs.tagged}, each tagged."
+    out = f"Stray beams above the limit: {legs.strays}"
+    out += ", each tagged." if legs.tags == legs.strays else f", under {legs.tags} tags."
     if legs.weak:
         out += f" Below it, {legs.weak} legs from {percent} % of the limit up bear no tag."
     if legs.left_out:

@@ -11,7 +11,6 @@ from benchlay.zones import Zone
 from benchlay.zones.words import number, with_unit
 
 _KINDS = {"direct": "direct beam", "diffuse": "scattered light", "over": "beam above the enclosure"}
-_NAMED = 3
 
 
 def zones_drawn(zones: Iterable[Zone], state: str, decimal: str) -> tuple[DrawnZone, ...]:
@@ -24,9 +23,7 @@ def zones_drawn(zones: Iterable[Zone], state: str, decimal: str) -> tuple[DrawnZ
 def _drawn(zone: Zone, name: str, decimal: str) -> DrawnZone:
     wavelength = wavelength_words(zone.wavelength_nm, decimal)
     reach = f"reach {with_unit(zone.reach_m, 'm', decimal=decimal)}"
-    makers = ", ".join(zone.makers[:_NAMED])
-    if len(zone.makers) > _NAMED:
-        makers += f" and {len(zone.makers) - _NAMED} more"
+    makers = "; ".join(zone.makers)
     power = with_unit(zone.power_w, "W", decimal=decimal)
     limit = limit_words(zone.limit_w, zone.aperture_mm, zone.time_base_s, decimal)
     area = f"{number(zone.area_m2, 2, decimal)} m²"
@@ -35,5 +32,10 @@ def _drawn(zone: Zone, name: str, decimal: str) -> DrawnZone:
         zone.kind,
         zone.polygon,
         (f"{zone.kind} {wavelength}", reach),
-        (f"{_KINDS[zone.kind]} {wavelength}", f"limit {limit}", f"{reach}, {area}", f"up to {power} of {makers}"),
+        (
+            f"{_KINDS[zone.kind]} {wavelength}",
+            f"limit {limit}",
+            f"{reach}, {area}",
+            f"up to {power}: {makers}",
+        ),
     )

@@ -18,8 +18,9 @@ from benchlay.sheets.plan.beams import beams
 from benchlay.sheets.plan.bench import bench, hole_step, holes, levels_note, main_dimensions
 from benchlay.sheets.plan.board import Board, lay_out
 from benchlay.sheets.plan.column import column
+from benchlay.sheets.plan.elements import elements
 from benchlay.sheets.plan.items import blocks_and_uses
-from benchlay.sheets.plan.panels import panels
+from benchlay.sheets.plan.panels import lids, panels
 from benchlay.sheets.plan.tags import names, tags
 from benchlay.sheets.plan.zones import hatching, limits
 from benchlay.sheets.primitives import (
@@ -54,6 +55,7 @@ def compose(picture: Picture) -> Sheet:
     model: list[Primitive] = [
         *bench(picture, board),
         *panels(picture, board),
+        *lids(picture, board),
         *(use for _, use in drawn),
         *beams(picture, board),
         *limits(picture, board),
@@ -69,6 +71,7 @@ def compose(picture: Picture) -> Sheet:
         *_view_title(picture, board),
         *_scale_bar(picture, board),
         *tagged.paper,
+        *elements(picture, board),
         *column(picture, board, _notes(picture, board, tagged.left_out)),
     ]
     return empty._replace(
@@ -150,19 +153,16 @@ def _scale_bar(picture: Picture, board: Board) -> Iterator[Primitive]:
 
 
 def _notes(picture: Picture, board: Board, left_out: tuple[str, ...]) -> list[str]:
-    out = [
-        "Dimensions in mm, from the datum hole where one is marked. Do not scale.",
-        levels_note(picture),
-    ]
     grid = picture.holes
+    datum = "the near left corner of the bench"
+    drawn = ""
     if grid is not None:
         x, y, pitch = (figure(v, 3, picture.decimal) for v in (*grid.first, grid.pitch_mm))
+        datum = f"the datum, hole column 1, row 1, at {x}, {y} from the near left corner"
         step = hole_step(grid, board.scale)
-        every = "every hole is" if step == 1 else f"one hole in {step} each way is"
-        out.append(
-            f"Datum: hole column 1, row 1, at {x}, {y} from the near left corner. "
-            f"Holes {grid.thread} at {pitch} pitch; {every} drawn."
-        )
+        every = "all" if step == 1 else f"one in {step} each way"
+        drawn = f" Holes {grid.thread} at {pitch} pitch, {every} drawn."
+    out = [f"Dimensions in mm, X and Y from {datum}. Do not scale.{drawn}", levels_note(picture)]
     if left_out:
         out.append(names(left_out))
     return [*out, *picture.notes]

@@ -18,9 +18,9 @@ _SHORT_MM = 9.0  # shorter legs bear no arrow
 _END_MM = 1.6
 _UPRIGHT_MM = 0.05  # a leg that is a point from above
 
-_DUMPS = frozenset({"dump"})
-_STOPS = frozenset({"panel", "wall", "screen", "body", "bench", "rim", "target"})
-_LEAVES = frozenset({"escaped", "handed-over"})
+DUMPS = frozenset({"dump"})
+STOPS = frozenset({"panel", "wall", "screen", "body", "bench", "rim", "target"})
+LEAVES = frozenset({"escaped", "handed-over"})
 
 
 def layer_of(leg: Leg) -> str:
@@ -118,14 +118,14 @@ def end_mark(layer: str, ends: str, start: Point, end: Point, scale: float) -> I
     ux, uy = _along((start, end))
     half = _END_MM / 2 * scale
     (x, y) = end
-    if ends in _DUMPS:
+    if ends in DUMPS:
         corners = ((-1, -1), (1, -1), (1, 1), (-1, 1))
         turned = [(a * ux - b * uy, a * uy + b * ux) for a, b in corners]
         yield Fill(layer, tuple((x + half * a, y + half * b) for a, b in turned))
-    elif ends in _STOPS:
+    elif ends in STOPS:
         reach = 1.6 * half
         yield Line(layer, (x - reach * uy, y + reach * ux), (x + reach * uy, y - reach * ux))
-    elif ends in _LEAVES:
+    elif ends in LEAVES:
         yield Circle(layer, (x + half * ux, y + half * uy), half)
 
 

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterable, Sequence
 from typing import NamedTuple
 
@@ -17,9 +18,13 @@ from benchlay.sheets.scale import (
     frame_of,
     view_of,
 )
-from benchlay.sheets.title_block import HEIGHT_MM
+from benchlay.sheets.title_block import HEIGHT_MM, WIDTH_MM
 
 _CLEAR_MM = 2.0
+BLOCK_MM, BLOCK_GAP_MM = 101.0, 4.0  # of the table of elements
+_HEAD_MM, _ROW_MM = 11.0, 4.95  # of that table: its headings, each of its rows
+_SCALE_BAR_MM = 17.0
+_DIMENSIONS_MM = 26.0  # two rows below the view, with the figures
 
 
 class Board(NamedTuple):
@@ -30,6 +35,7 @@ class Board(NamedTuple):
     field: Window  # where the drawing may go at all, on paper
     column: Window  # where tables go
     crowd: Crowd  # on paper; grows while the plan is drawn
+    strip: tuple[Window, int] | None = None  # for the table of elements: where, and its blocks
 
     @property
     def scale(self) -> float:
@@ -75,17 +81,35 @@ def lay_out(picture: Picture) -> Board:
     n = choice.scale
     # In the middle of its field: light that leaves the bench needs room on every side.
     spare = (view.width - (right - left) / n, view.height - (high - low) / n)
-    origin = (view.left + spare[0] / 2 - left / n, view.low + spare[1] / 2 - low / n)
+    foot = view.low + spare[1] / 2
+    strip = _strip(len(picture.items), inner, foot + spare[1] / 2 - _DIMENSIONS_MM)
+    if strip is not None:
+        foot = max(foot, strip[0].high + _DIMENSIONS_MM)
+    origin = (view.left + spare[0] / 2 - left / n, foot - low / n)
     column_left = inner.right - COLUMN_MM + _CLEAR_MM
     title_top = inner.low + HEIGHT_MM + _CLEAR_MM
     field = Window(
         inner.left + _CLEAR_MM,
-        title_top,
+        title_top if strip is None else max(title_top, strip[0].high + _CLEAR_MM),
         column_left - _CLEAR_MM,
         inner.high - ABOVE_MM / 2,
     )
     column = Window(column_left, title_top, inner.right - _CLEAR_MM, inner.high - _CLEAR_MM)
-    return Board(choice, origin, field, column, Crowd(field))
+    return Board(choice, origin, field, column, Crowd(field), strip)
+
+
+def _strip(items: int, inner: Window, highest: float) -> tuple[Window, int] | None:
+    """Return where a table of so many rows stands left of the title block, below the view."""
+    low = inner.low + _SCALE_BAR_MM
+    left, right = inner.left + _CLEAR_MM, inner.right - WIDTH_MM - _CLEAR_MM
+    blocks = int((right - left + BLOCK_GAP_MM) // (BLOCK_MM + BLOCK_GAP_MM))
+    if not items or not blocks:
+        return None
+    blocks = min(blocks, items)
+    high = low + _HEAD_MM + _ROW_MM * math.ceil(items / blocks)
+    if high > highest:
+        return None
+    return Window(left, low, right, high), blocks
 
 
 def extent(picture: Picture) -> tuple[float, float, float, float]:

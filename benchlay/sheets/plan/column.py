@@ -4,11 +4,12 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from benchlay.sheets.contents import Item, Picture
+from benchlay.sheets.contents import Picture
 from benchlay.sheets.layers import beam_layer
 from benchlay.sheets.lettering import MIDDLE_MM, SMALL_MM, shorten
-from benchlay.sheets.plan.beams import end_mark
+from benchlay.sheets.plan.beams import DUMPS, LEAVES, STOPS, end_mark
 from benchlay.sheets.plan.board import Board
+from benchlay.sheets.plan.elements import elements_table
 from benchlay.sheets.primitives import (
     Circle,
     Fill,
@@ -27,14 +28,6 @@ _ROW_MM = 5.2
 _LEAST_MM = 24.0  # what a table must have to be begun
 _NOTES_SHARE = 0.3  # of the column, kept for notes
 
-_ELEMENTS = (
-    Column("Tag", 16.0),
-    Column("Kind", 24.0),
-    Column("X", 17.0),
-    Column("Y", 17.0),
-    Column("Z", 14.0),
-    Column("Facing °", 20.0),
-)
 _ZONES = (Column("No.", 11.0), Column("Zone, and what it assumes", 97.0))
 _REVISIONS = (
     Column("Rev", 11.0),
@@ -61,8 +54,8 @@ def column(picture: Picture, board: Board, all_notes: list[str]) -> list[Primiti
     if picture.zones:
         put(_zones(picture, room._replace(low=room.low + reserve)))
     put(notes("NOTES", all_notes, room, "the report"))
-    if picture.items and room.height > _LEAST_MM:
-        put(_elements(picture, room))
+    if board.strip is None and picture.items and room.height > _LEAST_MM:
+        put(table(elements_table(picture, picture.items), room))
     return out
 
 
@@ -74,23 +67,7 @@ def _revisions(picture: Picture, room: Window) -> Drawn:
 
 def _zones(picture: Picture, room: Window) -> Drawn:
     rows = tuple((zone.name, "; ".join(zone.schedule)) for zone in picture.zones)
-    return table(Table("HAZARD ZONES", _ZONES, rows, "the report"), room)
-
-
-def _elements(picture: Picture, room: Window) -> Drawn:
-    """List where everything stands, from the datum hole where there is one."""
-    rows = tuple(_element(item, picture) for item in picture.items)
-    origin = "X, Y FROM DATUM" if picture.holes else "X, Y FROM NEAR LEFT CORNER"
-    content = Table(f"ELEMENTS, {origin}", _ELEMENTS, rows, "the report", most_lines=1)
-    return table(content, room)
-
-
-def _element(item: Item, picture: Picture) -> tuple[str, ...]:
-    x, y = picture.holes.first if picture.holes else (0.0, 0.0)
-    numbers = (item.at[0] - x, item.at[1] - y, item.at[2])
-    lengths = (figure(value, 1, picture.decimal) for value in numbers)
-    facing = figure(item.facing_deg % 360.0, 2, picture.decimal)
-    return (item.name, item.kind, *lengths, facing)
+    return table(Table("HAZARD ZONES", _ZONES, rows, "the report", most_lines=4), room)
 
 
 def _legend(picture: Picture, room: Window) -> Drawn:
@@ -116,7 +93,8 @@ def _samples(picture: Picture, x: float) -> Iterator[tuple[str, list[Primitive]]
         yield entry.words, [Line(layer, (x, 0.0), (right, 0.0)), Fill(layer, arrow)]
     if any(leg.stray for leg in picture.legs):
         yield "stray light, off every route", _stray_sample(x, right)
-        for sink, words in _ENDS:
+        sinks = {leg.ends for leg in picture.legs if leg.stray and not leg.weak}
+        for sink, words in ((sink, words) for sink, words, all_ in _ENDS if all_ & sinks):
             mark = list(end_mark("STRAY", sink, (x, 0.0), (right - 3.0, 0.0), 1.0))
             yield words, [Line("STRAY", (x, 0.0), (right - 3.0, 0.0)), *mark]
     if any(leg.radii_mm for leg in picture.legs):
@@ -129,12 +107,15 @@ def _samples(picture: Picture, x: float) -> Iterator[tuple[str, list[Primitive]]
     if picture.panels:
         corners = ((x, -0.4), (right, -0.4), (right, 0.4), (x, 0.4))
         yield "panel of the enclosure", [Polyline("PANELS", corners, closed=True)]
+    if picture.lids:
+        dashes = [Line("PANELS", (x + a, 0.0), (x + a + 4.0, 0.0)) for a in (0.0, 6.0, 12.0, 18.0)]
+        yield "edge of a lid, above; drawn within the true one", [*dashes]
 
 
 _ENDS = (
-    ("dump", "stray that ends in a dump"),
-    ("panel", "stray that ends on a panel, wall or body"),
-    ("escaped", "stray that leaves the bench"),
+    ("dump", "stray that ends in a dump", DUMPS),
+    ("panel", "stray that ends on a panel, wall or body", STOPS),
+    ("escaped", "stray that leaves the bench", LEAVES),
 )
 
 

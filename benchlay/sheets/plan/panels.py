@@ -5,12 +5,16 @@ from __future__ import annotations
 import math
 from collections.abc import Iterator
 
-from benchlay.sheets.contents import PanelLine, Picture
+import shapely
+
+from benchlay.sheets.contents import LidOutline, PanelLine, Picture
 from benchlay.sheets.plan.board import Board
 from benchlay.sheets.primitives import Line, Point, Polyline, Primitive
 
 _LEAST_MM = 0.8  # thinner sheets would run together on paper
 _TICK_MM = 1.6
+_DASH_MM, _GAP_MM = 4.0, 2.0
+_WITHIN_MM = 1.6  # lids mostly end on panels: their edge is drawn this far inside, on paper
 
 
 def panels(picture: Picture, board: Board) -> Iterator[Primitive]:
@@ -18,6 +22,44 @@ def panels(picture: Picture, board: Board) -> Iterator[Primitive]:
     for panel in picture.panels:
         board.crowd_model_line((panel.start, panel.end))
         yield from _panel(panel, board)
+
+
+def lid_line(lid: LidOutline, board: Board) -> tuple[Point, ...]:
+    """Return the corners of a lid's edge as it is drawn: a little inside the true one."""
+    inner = shapely.buffer(
+        shapely.Polygon(lid.corners), -board.long(_WITHIN_MM), join_style="mitre"
+    )
+    if inner.geom_type != "Polygon" or inner.is_empty:
+        return lid.corners
+    return tuple((float(x), float(y)) for x, y in inner.exterior.coords[:-1])
+
+
+def lids(picture: Picture, board: Board) -> Iterator[Line]:
+    """Draw the edges of lids in dashes, since they lie above what is seen."""
+    for lid in picture.lids:
+        corners = lid_line(lid, board)
+        board.crowd_model_line(corners, closed=True)
+        for start, end in zip(corners, (*corners[1:], corners[0]), strict=True):
+            yield from _dashes(start, end, board)
+
+
+def _dashes(start: Point, end: Point, board: Board) -> Iterator[Line]:
+    """Draw a line in dashes that begin and end it."""
+    length = math.dist(start, end)
+    dash, gap = board.long(_DASH_MM), board.long(_GAP_MM)
+    count = max(1, round((length + gap) / (dash + gap)))
+    # Gaps give way, so that corners are closed.
+    step = (length - min(dash, length)) / (count - 1) if count > 1 else 0.0
+    for n in range(count):
+        a, b = n * step / length, min(n * step + dash, length) / length
+        yield Line("PANELS", _between(start, end, a), _between(start, end, b))
+
+
+def _between(start: Point, end: Point, share: float) -> Point:
+    return (
+        start[0] + share * (end[0] - start[0]),
+        start[1] + share * (end[1] - start[1]),
+    )
 
 
 def point_on(panel: PanelLine, along_mm: float, out_mm: float = 0.0) -> Point:

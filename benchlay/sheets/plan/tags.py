@@ -3,19 +3,20 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Iterable, Iterator, Sequence
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 from typing import NamedTuple
 
 import shapely
+from shapely.geometry.base import BaseGeometry
 
-from benchlay.sheets.contents import SOURCE, Item, Leg, PanelLine, Picture, Zone
+from benchlay.sheets.contents import SOURCE, Item, Leg, LidOutline, PanelLine, Picture, Zone
 from benchlay.sheets.frame import rectangle
 from benchlay.sheets.lettering import LINE_PITCH, MIDDLE_MM, SMALL_MM, plain, width_mm
 from benchlay.sheets.placing_text import Place
 from benchlay.sheets.plan.beams import clipped, layer_of
 from benchlay.sheets.plan.board import Board
 from benchlay.sheets.plan.items import placed, straightened
-from benchlay.sheets.plan.panels import point_on
+from benchlay.sheets.plan.panels import lid_line, point_on
 from benchlay.sheets.plan.zones import seen
 from benchlay.sheets.primitives import (
     Across,
@@ -35,6 +36,8 @@ _QUARTER = math.tan(math.pi / 8)  # bulge of a quarter circle
 _ON_LEG = (0.5, 0.3, 0.7, 0.15, 0.85)
 _LEVEL_MM = 1e-3  # heights that differ by less are the same to every reader
 _TRIANGLE_MM = 8.0
+_FAR_MM = 3.0  # a tag farther from its item than this points to it
+_CLEARLY_MM = 1.5  # and one that is not nearer to its own item by this
 
 
 class Tagged(NamedTuple):
@@ -52,12 +55,14 @@ class _Wanted(NamedTuple):
     border: str  # "", square, rounded
     layer: str  # of border and leader
     anchors: tuple[tuple[Point, float], ...]
+    within: Window | None = None  # a body that it may stand in the middle of
 
 
 def tags(picture: Picture, board: Board) -> Tagged:
     """Place and draw every tag, most needed first."""
     out: list[Primitive] = []
     left_out: list[str] = []
+    shapes = {item.name: _on_paper(item, board) for item in picture.items}
     wanted = [
         *_datum_tag(picture, board),
         *(_item_tag(item, picture, board) for item in picture.items),
@@ -70,12 +75,47 @@ def tags(picture: Picture, board: Board) -> Tagged:
         if _height_written(item, picture):
             out += _cross(board.on_paper(item.at))
     for tag in wanted:
-        place = board.crowd.place(_size(tag), tag.anchors) if tag.anchors else None
+        place = _place(tag, board)
         if place is None:
             left_out.append(tag.name)
         else:
-            out += _drawn(tag, place)
+            out += _drawn(tag, _pointed(tag, place, shapes))
     return Tagged(tuple(out), tuple(dict.fromkeys(left_out)))
+
+
+def _place(tag: _Wanted, board: Board) -> Place | None:
+    size = _size(tag)
+    if tag.within is not None:
+        x, y = ((tag.within[n] + tag.within[n + 2]) / 2 for n in (0, 1))
+        box = Window(x - size[0] / 2, y - size[1] / 2, x + size[0] / 2, y + size[1] / 2)
+        if board.crowd.take(box):
+            return Place(box, None)
+    return board.crowd.place(size, tag.anchors) if tag.anchors else None
+
+
+def _on_paper(item: Item, board: Board) -> BaseGeometry:
+    """Return what of an item tags may be taken to name: its outline, else its body, on paper."""
+    shapes = [straightened(shape) for shape in item.outlines or item.bodies]
+    lines = shapes or [list(line) for line in item.lines] or [[(0.0, 0.0)]]
+    points = [[board.on_paper(placed(item, p)) for p in line] for line in lines]
+    return shapely.union_all([shapely.MultiPoint(line).convex_hull for line in points])
+
+
+def _pointed(tag: _Wanted, place: Place, shapes: Mapping[str, BaseGeometry]) -> Place:
+    """Give an item's tag a leader where it is far from its item, or nearer to another."""
+    own = shapes.get(tag.name)
+    if own is None or place.leader is not None:
+        return place
+    box = shapely.box(*place.box)
+    away = float(shapely.distance(own, box))
+    nearest = min(
+        (shapely.distance(other, box) for name, other in shapes.items() if name != tag.name),
+        default=math.inf,
+    )
+    if away < min(_FAR_MM, nearest - _CLEARLY_MM):
+        return place
+    (ax, ay), (bx, by) = shapely.shortest_line(own, box).coords
+    return place._replace(leader=((ax, ay), (bx, by)))
 
 
 def _height_written(item: Item, picture: Picture) -> bool:
@@ -95,12 +135,31 @@ def _panel_tags(picture: Picture, board: Board) -> Iterator[_Wanted]:
     """Name every panel and every opening in it."""
     for panel in picture.panels:
         length = math.dist(panel.start, panel.end)
-        words = f"{panel.name} (open)" if panel.is_open else panel.name
+        words = _sheet_words(panel.name, panel)
         shares = [length * share for share in _ON_LEG]
         yield _panel_tag(words, panel, shares, board)
         for opening in panel.openings:
             middle = (opening.start_mm + opening.end_mm) / 2
             yield _panel_tag(f"{panel.name}.{opening.name}", panel, [middle], board)
+
+
+    for lid in picture.lids:
+        words = _sheet_words(f"lid {lid.name} +{figure(lid.height_mm, 1, picture.decimal)}", lid)
+        corners = [board.on_paper(p) for p in lid_line(lid, board)]
+        edges = zip(corners, (*corners[1:], corners[0]), strict=True)
+        anchors = tuple(_between(edge, share) for edge in edges for share in _ON_LEG)
+        yield _Wanted(words, (("TAGS", plain(words), SMALL_MM),), "", "TAGS", anchors)
+
+
+def _sheet_words(name: str, sheet: PanelLine | LidOutline) -> str:
+    """Return the tag of a panel or lid: how it may be opened, and whether it stands open."""
+    access = {"none": "", "tool": ", by tool", "interlocked": ", interlocked"}[sheet.access]
+    return f"{name}{access}{' (open)' if sheet.is_open else ''}"
+
+
+def _between(edge: tuple[Point, Point], share: float) -> tuple[Point, float]:
+    (ax, ay), (bx, by) = edge
+    return (ax + share * (bx - ax), ay + share * (by - ay)), 0.0
 
 
 def _panel_tag(words: str, panel: PanelLine, along: Iterable[float], board: Board) -> _Wanted:
@@ -121,7 +180,8 @@ def _item_tag(item: Item, picture: Picture, board: Board) -> _Wanted:
     middle = ((min(xs) + max(xs)) / 2, (min(ys) + max(ys)) / 2)
     reach = min(max(math.dist(middle, p) for p in on_paper), 12.0)
     anchors = [(middle, 0.6 * reach), (middle, reach)]
-    return _Wanted(item.name, tuple(lines), "", "TAGS", tuple(anchors))
+    within = None if item.outlines else Window(min(xs), min(ys), max(xs), max(ys))
+    return _Wanted(item.name, tuple(lines), "", "TAGS", tuple(anchors), within)
 
 
 def _leg_tags(picture: Picture, board: Board, *, stray: bool) -> Iterator[_Wanted]:
@@ -138,9 +198,9 @@ def _on_leg(leg: Leg, board: Board) -> Iterator[tuple[Point, float]]:
     part = clipped(leg.start[:2], leg.end[:2], board.field_in_model())
     if part is None:
         return
-    (ax, ay), (bx, by) = (board.on_paper(p) for p in part)
+    ends = (board.on_paper(part[0]), board.on_paper(part[1]))
     for share in _ON_LEG:
-        yield (ax + share * (bx - ax), ay + share * (by - ay)), 0.0
+        yield _between(ends, share)
 
 
 def _zone_tags(picture: Picture, board: Board) -> Iterator[_Wanted]:

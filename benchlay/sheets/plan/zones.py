@@ -17,6 +17,7 @@ _BAND_MM = 6.0
 _SPACING_MM = 3.0
 _TICK_MM, _EVERY_MM = 2.0, 10.0
 _AROUND_TEXT_MM = 0.8
+_NARROW_MM = 2.4  # a narrower zone bears no hatching: that would hide the beam in it
 _ANGLES_DEG = {"direct": 45.0, "over": 0.0}  # all others lean the other way
 _OTHER_DEG = 135.0
 
@@ -37,8 +38,16 @@ def limits(picture: Picture, board: Board) -> Iterator[Primitive]:
             if len(points) > 1:
                 board.crowd_model_line(points)
                 yield Polyline("HAZARD", points)
+        wide = _wide(whole, board)
         for tick in ticks("HAZARD", whole, board.long(_EVERY_MM), board.long(_TICK_MM)):
-            yield from _inside(tick, whole, field)
+            yield from _inside(tick, wide, field)
+
+
+def _wide(area: BaseGeometry, board: Board) -> BaseGeometry:
+    """Return the parts of an area that are wide enough on paper to be hatched."""
+    half = board.long(_NARROW_MM / 2)
+    core = shapely.buffer(area, -half, join_style="mitre")
+    return shapely.intersection(area, shapely.buffer(core, half, join_style="mitre"))
 
 
 def _inside(tick: Line, *areas: BaseGeometry) -> Iterator[Line]:
@@ -55,7 +64,7 @@ def hatching(picture: Picture, board: Board, lettering: Sequence[Window]) -> Ite
     """Hatch the rims of zones, broken for lettering."""
     boxes = [_grown(box, board) for box in lettering]
     for zone in picture.zones:
-        band = rim(seen(zone, board), board.long(_BAND_MM))
+        band = rim(_wide(seen(zone, board), board), board.long(_BAND_MM))
         free = shapely.difference(band, shapely.union_all(boxes))
         angle = _ANGLES_DEG.get(zone.kind, _OTHER_DEG)
         yield from hatch("HAZARD", free, board.long(_SPACING_MM), angle)
