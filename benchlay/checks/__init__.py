@@ -3,13 +3,18 @@
 from __future__ import annotations
 
 from benchlay.checks import (
+    as_modelled,
     beam_blocked,
     clipped,
     coating_unstated,
     dark_element,
+    escape,
+    not_yet,
     off_centre,
     off_height,
     route_broken,
+    stray_unstopped,
+    unaccounted,
 )
 from benchlay.checks._check import Check, Context, LineLimit, Run, floors_w, limits_of
 from benchlay.checks._run import run_checks as _run
@@ -21,8 +26,13 @@ CHECKS: tuple[Check, ...] = (
     off_centre,
     route_broken,
     beam_blocked,
+    stray_unstopped,
+    escape,
     coating_unstated,
     dark_element,
+    unaccounted,
+    as_modelled,
+    not_yet,
 )
 """Every check."""
 

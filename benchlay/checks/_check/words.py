@@ -10,6 +10,7 @@ _PREFIXES = (
     (1e-3, "m"), (1e-6, "µ"), (1e-9, "n"), (1e-12, "p"),
 )  # fmt: skip
 _DIGITS = 3
+_NO_LENGTH_MM = 1e-6  # a nanometre on a bench is rounding
 
 
 def _prefixed(value: float, unit: str) -> str:
@@ -42,9 +43,11 @@ def irradiance_text(irradiance_w_m2: float) -> str:
 def length_text(length_mm: float) -> str:
     """Write a length to a hundredth of a millimetre, or three figures.
 
-    >>> length_text(3.14159), length_text(1234.5678), length_text(0.00123)
-    ('3.14 mm', '1234.57 mm', '0.00123 mm')
+    >>> length_text(3.14159), length_text(1234.5678), length_text(0.00123), length_text(1e-14)
+    ('3.14 mm', '1234.57 mm', '0.00123 mm', '0 mm')
     """
+    if abs(length_mm) < _NO_LENGTH_MM:
+        return "0 mm"
     if abs(length_mm) < 1.0:
         return f"{length_mm:.{_DIGITS}g} mm"
     return f"{round(length_mm, 2):.10g} mm"

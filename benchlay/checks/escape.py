@@ -1,0 +1,297 @@
+"""A beam above the accessible limit leaves the bench or its enclosure.
+
+Why it matters
+--------------
+Beyond the line everyone in the room is within reach of the beam, those included who do not
+know that it is there.
+
+Fails
+-----
+.. code-block:: yaml
+
+   bench: {size: [800, 400]}
+   sources:
+     red: {wavelength: 633, power: 5 mW, beam: {waist_radius: 0.5}, at: [100, 200], heading: 0}
+   elements:
+     M1:  # <- escape
+       kind: mirror
+       after: red
+       distance: 300
+       turn: left 90
+       pitch: 20
+       diameter: 25.4
+       metal: silver
+   routes:
+     main: [red, M1]
+   enclosure:
+     to_height: 150
+     panels:
+       south: {from: [0, 0], to: [800, 0]}
+       east: {from: [800, 0], to: [800, 400]}
+       north: {from: [800, 400], to: [0, 400]}
+       west: {from: [0, 400], to: [0, 0]}
+
+Passes
+------
+.. code-block:: yaml
+
+   bench: {size: [800, 400]}
+   sources:
+     red: {wavelength: 633, power: 5 mW, beam: {waist_radius: 0.5}, at: [100, 200], heading: 0}
+   elements:
+     M1: {kind: mirror, after: red, distance: 300, turn: left 90, diameter: 25.4, metal: silver}
+   routes:
+     main: [red, M1]
+   enclosure:
+     to_height: 150
+     panels:
+       south: {from: [0, 0], to: [800, 0]}
+       east: {from: [800, 0], to: [800, 400]}
+       north: {from: [800, 400], to: [0, 400]}
+       west: {from: [0, 400], to: [0, 0]}
+
+What it does not see
+--------------------
+Diffuse light, and beams that a fault or a hand could send out: coverage and the review of
+faults are for those. A route whose last item is an opening hands its beam over there on
+purpose; what becomes of it beyond is for whoever receives it.
+
+Source
+------
+A beam is compared by the power that passes the limiting aperture of the eye, centred on it,
+at the worst place beyond the line: IEC 60825-1:2014 for the limits and apertures.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from typing import NamedTuple
+
+import numpy as np
+
+from benchlay.checks._check import (
+    Context,
+    Found,
+    above,
+    length_text,
+    power_text,
+    rounded_up,
+    unjudged,
+    wavelength_text,
+)
+from benchlay.findings import Finding, Severity
+from benchlay.layout.enclosure import Opening
+from benchlay.optics import moments
+from benchlay.scene.tables import SINKS
+from benchlay.tracing.beams import NOTHING, SOLID
+from benchlay.zones.enclosure_line import (
+    EnclosureLine,
+    Side,
+    bench_line,
+    enclosure_line,
+    inside,
+    leaving,
+)
+
+NAME = "escape"
+
+# A beam that can hurt an eye is where people are.
+SEVERITY = Severity.FAIL
+
+_LITTLE_MM = 1e-3  # above rounding, below any thickness
+
+
+class _Exit(NamedTuple):
+    """Where a beam goes beyond the line; no side where it goes upwards or starts beyond."""
+
+    beam: int
+    way_mm: float
+    side: Side | None
+    upwards: bool
+
+
+def check(context: Context, variant: int) -> Iterator[Found]:
+    """Report each beam where it first leaves; what it does beyond is not told again."""
+    yield from unjudged(context, variant)
+    line = enclosure_line(context.layout(variant))
+    exits = list(_exits(context, variant, line))
+    if not exits:
+        return
+    beams = np.array([found.beam for found in exits])
+    powers = context.beyond_w(beams, np.array([found.way_mm for found in exits]))
+    for found, power in zip(exits, powers.tolist(), strict=True):
+        if above(power, float(context.limit_w[found.beam])):
+            yield _finding(context, variant, line, found, power)
+
+
+def _exits(context: Context, variant: int, line: EnclosureLine) -> Iterator[_Exit]:
+    rows = context.beams_of(variant)
+    bench = bench_line(context.layout(variant))
+    gone: set[int] = set()
+    for beam in rows[context.hazardous[rows]].tolist():
+        found = _exit(context, beam, line, bench, gone)
+        if found is None:
+            continue
+        gone.add(beam)
+        if not _handed_over(context, beam):
+            yield found
+
+
+def _exit(
+    context: Context, beam: int, line: EnclosureLine, bench: EnclosureLine, gone: set[int]
+) -> _Exit | None:
+    """Return where a beam leaves, unless what it came from has left before."""
+    crossing = _crossing(context, beam, line)
+    if crossing is not None:
+        return _Exit(beam, crossing[0], crossing[1], upwards=False)
+    if inside(line, _just_after(context, beam)):
+        way = _upwards(context, beam, line)
+        return None if way is None else _Exit(beam, way, None, upwards=True)
+    ancestors = context.ancestors(beam)
+    if gone.intersection(ancestors):
+        return None
+    if inside(line, _just_after(context, ancestors[-1])):
+        return _Exit(beam, 0.0, None, upwards=False)  # it left inside an optic on the line
+    crossing = _crossing(context, beam, bench)
+    return None if crossing is None else _Exit(beam, crossing[0], None, upwards=False)
+
+
+def _plan(context: Context, beam: int) -> tuple[float, float]:
+    x, y, _ = context.point(context.trace.beams.start.position[beam])
+    return x, y
+
+
+def _just_after(context: Context, beam: int) -> tuple[float, float]:
+    """Return a place a little along a leg: what starts on a panel is on the side it goes to."""
+    (x, y), k = _plan(context, beam), context.trace.beams.start.direction[beam]
+    return x + _LITTLE_MM * float(k[0]), y + _LITTLE_MM * float(k[1])
+
+
+def _crossing(context: Context, beam: int, line: EnclosureLine) -> tuple[float, Side | None] | None:
+    beams = context.trace.beams
+    x, y, _ = context.point(beams.start.direction[beam])
+    found = leaving(line, _plan(context, beam), (x, y), float(beams.length[beam]))
+    return None if found is None else (found.way_mm, found.side)
+
+
+def _upwards(context: Context, beam: int, line: EnclosureLine) -> float | None:
+    """Return where a beam that nothing on the bench stops rises above the enclosure."""
+    beams, s = context.trace.beams, context.trace.scene.solids
+    row = int(beams.end_row[beam])
+    lost = beams.end_kind[beam] == NOTHING or (
+        beams.end_kind[beam] == SOLID and SINKS[s.sink[row]] == "wall"
+    )
+    z, slope = float(beams.start.position[beam, 2]), float(beams.start.direction[beam, 2])
+    if not lost or slope <= 0.0:
+        return None
+    length = float(beams.length[beam])
+    if line.top_mm == np.inf:
+        return 0.0
+    return min(max((line.top_mm - z) / slope, 0.0), length)
+
+
+def _handed_over(context: Context, beam: int) -> bool:
+    """Whether the beam leaves by the opening that ends its route."""
+    start = context.trace.beams.start
+    if start.node[beam] < 0:
+        return False
+    place = context.trace.ways.places[int(start.node[beam])]
+    for number, leg in place.routes:
+        items = context.trace.ways.routes[number].items
+        last = items[-1]
+        if leg + 1 == len(items) - 1 and last.opening is not None:
+            return context.routes.passes_opening(beam, ".".join(last.opening))
+    return False
+
+
+def _finding(
+    context: Context, variant: int, line: EnclosureLine, found: _Exit, power: float
+) -> Finding:
+    beam = found.beam
+    beams = context.trace.beams
+    at = context.point(beams.start.position[beam] + found.way_mm * beams.start.direction[beam])
+    name = context.left_name(beam)
+    nm = context.wavelength_nm(beam)
+    limit = float(context.limit_w[beam])
+    how, remedy = _how(context, variant, line, found, at)
+    return Finding(
+        check=NAME,
+        severity=SEVERITY,
+        message=(
+            f"{power_text(power)} of {wavelength_text(nm)} from '{context.source_of(beam)}', "
+            f"last met by '{name}', {how} at a height of {length_text(at[2])}"
+        ),
+        expected=f"at most {power_text(limit)} beyond {_limits_of_bench(line)}",
+        remedy=remedy,
+        element=name,
+        beam=int(context.numbers[beam]),
+        at=at,
+        span=context.span_of(name, variant),
+        value=power,
+        limit=limit,
+        unit="W",
+        key=context.chain(beam),
+    )
+
+
+def _limits_of_bench(line: EnclosureLine) -> str:
+    return "the enclosure" if line.enclosed else "the edge of the bench"
+
+
+def _how(
+    context: Context,
+    variant: int,
+    line: EnclosureLine,
+    found: _Exit,
+    at: tuple[float, float, float],
+) -> tuple[str, str]:
+    """Say how a beam leaves, and what would keep it in."""
+    stop = "end it on a dump or screen before"
+    if found.upwards:
+        return "leaves upwards", f"{stop}, or put a lid over it"
+    if not line.enclosed or found.side is None:
+        return "leaves the bench", f"{stop}, or enclose the bench with panels"
+    name = found.side.panel
+    if name is None:
+        return "leaves where no panel stands", f"{stop}, or close that side with a panel"
+    return _past_panel(context, variant, found, at)
+
+
+def _past_panel(
+    context: Context, variant: int, found: _Exit, at: tuple[float, float, float]
+) -> tuple[str, str]:
+    """Say how a beam gets past the panel that stands on its side of the line."""
+    enclosure = context.layout(variant).enclosure
+    assert enclosure is not None
+    assert found.side is not None
+    name = found.side.panel or ""
+    stop = "end it on a dump or screen before"
+    panel = enclosure.panels[name]
+    low, high = enclosure.heights_mm(panel)
+    if at[2] >= high:
+        needed = rounded_up(at[2] + 3.0 * _radius(context, found), 3)
+        return f"passes over panel '{name}'", f"{stop}, or raise '{name}' to {needed:g} mm"
+    if at[2] <= low:
+        return f"passes under panel '{name}'", f"{stop}, or bring '{name}' down to the bench"
+    along = float(np.hypot(at[0] - panel.from_mm[0], at[1] - panel.from_mm[1]))
+    openings = sorted(panel.openings.items())
+    opening = next((key for key, hole in openings if _is_in(hole, along, at[2])), "")
+    if panel.open or not opening:
+        return f"passes the open panel '{name}'", f"{stop}, or keep '{name}' shut in this state"
+    return (
+        f"leaves through '{name}.{opening}'",
+        f"{stop}, or name '{name}.{opening}' as the last item of its route if it is handed over",
+    )
+
+
+def _radius(context: Context, found: _Exit) -> float:
+    """Return the larger 1/e² radius where a beam leaves, mm."""
+    start = context.trace.beams.start
+    m = start.moments[:, found.beam]
+    w1, w2, _ = moments.radii(moments.propagate(m, found.way_mm, start.index[found.beam]))
+    return float(np.maximum(w1, w2))
+
+
+def _is_in(opening: Opening, along: float, height: float) -> bool:
+    start, end, low, high = opening.box_mm()
+    return start <= along <= end and low <= height <= high
