@@ -193,7 +193,7 @@ def _faces_table(compiler: Compiler, spoken: dict[str, frozenset[float]]) -> tup
     faces = rows.faces
     inside = np.array(
         [_inside_indices(compiler, i) for i in range(len(faces))], dtype=np.float64
-    ).reshape(len(faces), -1)
+    ).reshape(len(faces), len(compiler.wavelengths))
     per_wave = [
         [figures(face.coating, nm, spoken[compiler.elements[owner]]) for nm in compiler.wavelengths]
         for face, owner in zip(faces, rows.owners, strict=True)
