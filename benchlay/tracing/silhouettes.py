@@ -2,8 +2,8 @@
 
 A body's outline is seen along the beam's flow lines: a point at transverse place x and depth
 z has coordinates W(z)^-1 x. A body that stands across the beam takes W at the depth where
-its plane crosses the chief ray; one that lies along the beam takes it corner by corner, so
-that light spreading into it is caught.
+its plane crosses the chief ray, and is seen in the perspective of W there; one that lies
+along the beam takes W corner by corner, so that light spreading into it is caught.
 """
 
 from __future__ import annotations
@@ -19,6 +19,7 @@ from benchlay.optics.shares import Shapes
 from benchlay.scene.tables import PART, Flags, Floats, Ints, Scene, Solids
 from benchlay.tracing.clipping import clip_behind
 from benchlay.tracing.front import Front
+from benchlay.tracing.spreading import growth, perspective, perspective_plate
 
 CORE, BESIDE, OPTIC, BODY, HOLE = range(5)
 _GRAZING = 0.2  # sine of the angle between beam and plane below which it counts as lying along
@@ -180,12 +181,15 @@ def _plate_shapes(
     bx, by, bz = _local(frame, plates.second, point=False)
     crossing, slope = _plane_depth(frame, plates.centre, normal)
     reach = np.where(plates.round, np.hypot(az, bz), np.abs(az) + np.abs(bz))
-    depth = np.clip(crossing, z - reach, z + reach)
-    root = inverse_roots(frame, np.maximum(depth, 0.0))
-    centre = _scaled(root, x, y)
-    first, second = _scaled(root, ax, ay), _scaled(root, bx, by)
-    signs = ((-1, -1), (1, -1), (1, 1), (-1, 1))
-    vertices = np.stack([centre + i * first + j * second for i, j in signs], axis=1)
+    depth = np.maximum(np.clip(crossing, z - reach, z + reach), 0.0)
+    root = inverse_roots(frame, depth)
+    rate = growth(frame.moments, frame.index, depth)
+    vertices, centre, first, second = perspective_plate(
+        _scaled(root, x, y),
+        _scaled(root, ax, ay),
+        _scaled(root, bx, by),
+        (rate * (z - depth), rate * az, rate * bz),
+    )
     clockwise = first[:, 0] * second[:, 1] - first[:, 1] * second[:, 0] < 0.0
     vertices[clockwise] = vertices[clockwise, ::-1]
     gradient = _gradient(frame, normal, slope, root)
@@ -348,6 +352,8 @@ def _flat_sides(
     along = np.abs(slope) < _GRAZING
     depth = np.clip(crossing, z.min(axis=1), z.max(axis=1))
     vertices = _scaled(inverse_roots(frame, np.where(along[:, None], z, depth[:, None])), x, y)
+    rate = growth(frame.moments, frame.index, depth)
+    vertices = perspective(vertices, np.where(along, 0.0, rate)[:, None] * (z - depth[:, None]))
     area = np.roll(vertices, -1, axis=1)
     twice = (vertices[..., 0] * area[..., 1] - vertices[..., 1] * area[..., 0]).sum(axis=1)
     vertices[twice < 0.0] = vertices[twice < 0.0, ::-1]

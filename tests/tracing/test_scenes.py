@@ -6,7 +6,7 @@ import pytest
 
 from tests.tracing.bench import SCENES
 
-for name in ("plates", "glasses", "states", "lenses", "cuts"):
+for name in ("plates", "glasses", "states", "lenses", "cuts", "bodies"):
     importlib.import_module(f"tests.tracing.scenes.{name}")
 
 

@@ -203,8 +203,8 @@ def a_long_wall_beside_a_diverging_beam():
     for far in (400, 800):
         text = (
             f"  K: {{kind: obstacle, at: [200, 452, 1000], facing: 0,"
-            f" outline: [[0, 0], [{far - 200}, 0], [{far - 200}, 60], [0, 60]], from_height: 500, to_height: 1500, mount: none}}\n"
-            + WALL
+            f" outline: [[0, 0], [{far - 200}, 0], [{far - 200}, 60], [0, 60]],"
+            " from_height: 500, to_height: 1500, mount: none}\n" + WALL
         )
         bench = Bench(_high(text, beam="{waist_radius: 0.1}"), floor=1e-15)
         w = gauss.radius(0.1, far - 100, NM)
@@ -225,3 +225,32 @@ def a_wall_met_at_a_grazing_angle():
         end_z, end_y = 100 + 300 * np.cos(t), 3 - 300 * np.sin(t)
         w_end = gauss.radius(0.15, end_z, NM)
         yield power(f"{degrees}", bench.sink("body", "K"), gauss.beyond(end_y, w_end))
+
+
+@scene
+def tilted_optics_off_the_middle_of_a_spreading_beam():
+    """Each point of the face has the radius of the beam at its own depth."""
+    from scipy.integrate import dblquad
+
+    t = np.radians(45)
+    for w0, distance, a, off in ((0.5, 500, 0.5, 0.25), (1, 300, 1, -0.5), (0.2, 500, 0.5, 0.25)):
+        text = (
+            f"  M: {{kind: mirror, at: [{100 + distance}, {450 + off}, 1000], facing: 135,"
+            f" diameter: {2 * a}, clear: 100 %, reflectance: 100 %, thickness: 0, mount: none}}\n"
+        )
+        bench = Bench(_high(text, beam=f"{{waist_radius: {w0}}}"), floor=1e-14)
+        zr = gauss.rayleigh(w0, NM)
+
+        def density(v, u, at=(w0, distance, off, zr)):
+            w0, distance, off, zr = at
+            z, x = distance + u * np.sin(t), off + u * np.cos(t)
+            w = w0 * np.hypot(1.0, z / zr)
+            widening = w0 * w0 * z / (zr * zr * w)
+            area = (np.cos(t) - x / w * widening * np.sin(t)) / (w * w)
+            return 2 / np.pi * np.exp(-2 * (x * x + v * v) / (w * w)) * area
+
+        inside = dblquad(
+            density, -a, a, lambda u, a=a: -np.sqrt(a * a - u * u),
+            lambda u, a=a: np.sqrt(a * a - u * u), epsabs=1e-12, epsrel=1e-10,
+        )[0]  # fmt: skip
+        yield power(f"{w0} {off}", bench.from_("M.front")[0].power, inside, 1e-7)
