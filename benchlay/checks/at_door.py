@@ -1,0 +1,156 @@
+"""A beam above the accessible limit reaches a door or a window of the room.
+
+Why it matters
+--------------
+Who opens the door stands in the beam; what leaves by a window meets people who know nothing of
+the laser.
+
+Fails
+-----
+.. code-block:: yaml
+
+   bench: {size: [800, 400]}
+   sources:
+     red: {wavelength: 633, power: 5 mW, beam: {waist_radius: 0.5}, at: [100, 200], heading: 0}
+   elements:
+     M1:  # <- at-door
+       {kind: mirror, after: red, distance: 300, turn: left 90, diameter: 25.4, metal: silver}
+   room:
+     outline: [[-1000, -1500], [2000, -1500], [2000, 1500], [-1000, 1500]]
+     doors: {corridor: {from: [800, 1500], to: [0, 1500]}}
+
+Passes
+------
+.. code-block:: yaml
+
+   bench: {size: [800, 400]}
+   sources:
+     red: {wavelength: 633, power: 5 mW, beam: {waist_radius: 0.5}, at: [100, 200], heading: 0}
+   elements:
+     M1: {kind: mirror, after: red, distance: 300, turn: right 90, diameter: 25.4, metal: silver}
+   room:
+     outline: [[-1000, -1500], [2000, -1500], [2000, 1500], [-1000, 1500]]
+     doors: {corridor: {from: [800, 1500], to: [0, 1500]}}
+
+What it does not see
+--------------------
+Diffuse light, and what walls send back. Panes and curtains of windows do not count: a window
+is taken to be open.
+
+Source
+------
+Beams are kept off doors and windows (common practice of laser safety manuals). The accessible
+limit is that of IEC 60825-1:2014 for the layout's time base.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from math import hypot
+from typing import NamedTuple
+
+from benchlay.checks._check import (
+    Context,
+    Found,
+    above,
+    power_text,
+    unjudged,
+    wavelength_text,
+)
+from benchlay.findings import Finding, Severity
+from benchlay.geometry.polygon import Point
+from benchlay.layout.layout import Layout
+from benchlay.optics import moments
+from benchlay.scene.tables import SINKS
+from benchlay.tracing.beams import SOLID
+
+NAME = "at-door"
+
+# A beam that can hurt an eye is where people come and go.
+SEVERITY = Severity.FAIL
+
+_IN_WALL_MM = 1.0  # doors lie in the wall's line: rounding and decimals stay far below
+
+
+class _Way(NamedTuple):
+    """A door or window: its ends in plan and its heights above the floor, mm."""
+
+    what: str
+    name: str
+    start: Point
+    end: Point
+    low_mm: float
+    high_mm: float
+
+
+def check(context: Context, variant: int) -> Iterator[Found]:
+    """Report each beam that ends on a wall where a door or window is."""
+    layout = context.layout(variant)
+    ways = list(_ways(layout))
+    if not ways:
+        return
+    yield from unjudged(context, variant)
+    beams, s = context.trace.beams, context.trace.scene.solids
+    rows = context.beams_of(variant)
+    rows = rows[context.hazardous[rows] & (beams.end_kind[rows] == SOLID)]
+    for beam in rows.tolist():
+        if SINKS[s.sink[beams.end_row[beam]]] != "wall":
+            continue
+        for way in ways:
+            if _reaches(context, beam, way, layout.bench.surface_height_mm):
+                power = float(context.accessible_w[beam])
+                if above(power, float(context.limit_w[beam])):
+                    yield _finding(context, variant, beam, way, power)
+
+
+def _ways(layout: Layout) -> Iterator[_Way]:
+    if layout.room is None:
+        return
+    for name, door in sorted(layout.room.doors.items()):
+        yield _Way("door", name, door.from_mm, door.to_mm, 0.0, door.height_mm)
+    for name, window in sorted(layout.room.windows.items()):
+        yield _Way(
+            "window",
+            name,
+            window.from_mm,
+            window.to_mm,
+            window.from_height_mm,
+            window.to_height_mm,
+        )
+
+
+def _reaches(context: Context, beam: int, way: _Way, floor_mm: float) -> bool:
+    """Whether the envelope of a beam overlaps a door or window where it meets the wall."""
+    x, y, z = context.end_at(beam)
+    m = context.trace.beams.end_moments[:, beam]
+    width = float(max(moments.radii(m)[0], moments.radii(m)[1]))
+    (ax, ay), (bx, by) = way.start, way.end
+    length = hypot(bx - ax, by - ay)
+    along = ((x - ax) * (bx - ax) + (y - ay) * (by - ay)) / length
+    off = abs((x - ax) * (by - ay) - (y - ay) * (bx - ax)) / length
+    height = z + floor_mm
+    beside = -width <= along <= length + width
+    return off <= _IN_WALL_MM and beside and way.low_mm - width <= height <= way.high_mm + width
+
+
+def _finding(context: Context, variant: int, beam: int, way: _Way, power: float) -> Finding:
+    name = context.left_name(beam)
+    limit = float(context.limit_w[beam])
+    return Finding(
+        check=NAME,
+        severity=SEVERITY,
+        message=(
+            f"{power_text(power)} of {wavelength_text(context.wavelength_nm(beam))} from "
+            f"'{context.source_of(beam)}', last met by '{name}', reaches {way.what} '{way.name}'"
+        ),
+        expected=f"at most {power_text(limit)} at doors and windows",
+        remedy=f"end the beam on a dump or screen before it reaches {way.what} '{way.name}'",
+        element=name,
+        beam=int(context.numbers[beam]),
+        at=context.end_at(beam),
+        span=context.span_of(name, variant),
+        value=power,
+        limit=limit,
+        unit="W",
+        key=(*context.chain(beam), way.name),
+    )

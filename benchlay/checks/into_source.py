@@ -1,0 +1,185 @@
+"""A beam comes back into a source.
+
+Why it matters
+--------------
+Light that comes back makes many lasers unsteady and some break. It also says that a face
+stands square to the beam, so that everything before it sees the light twice.
+
+Fails
+-----
+.. code-block:: yaml
+
+   bench: {size: [800, 400]}
+   sources:
+     red:  # <- into-source
+       {wavelength: 633, power: 5 mW, beam: {waist_radius: 0.5}, at: [100, 200], heading: 0}
+   elements:
+     W1: {kind: window, after: red, distance: 200, diameter: 25.4}
+     T1: {kind: target, after: W1, distance: 100}
+   routes:
+     main: [red, W1, T1]
+
+Passes
+------
+.. code-block:: yaml
+
+   bench: {size: [800, 400]}
+   sources:
+     red: {wavelength: 633, power: 5 mW, beam: {waist_radius: 0.5}, at: [100, 200], heading: 0}
+   elements:
+     W1: {kind: window, after: red, distance: 200, incidence: 1, diameter: 25.4}
+     T1: {kind: target, after: W1, distance: 100}
+   routes:
+     main: [red, W1, T1]
+
+What it does not see
+--------------------
+Diffuse light that comes back. Interference of several returns. The exit is taken as a circle
+half as wide again as the beam is there.
+
+Source
+------
+Faces are tilted by 1 to 3 degrees or wedged against this (common practice). Without
+`limits.back_reflection` the limit is a ten-thousandth of what the source emits (common
+practice: 40 dB is what is asked of isolators at most). An opening of half width 1.5 w passes
+98.9 % of a round beam: exp(-2 a²/w²).
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+import numpy as np
+
+from benchlay.checks._check import (
+    Context,
+    above,
+    angle_text,
+    length_text,
+    power_text,
+    wavelength_text,
+)
+from benchlay.findings import Finding, Severity
+from benchlay.optics import moments
+from benchlay.optics.special import circle_share
+from benchlay.placing.placed import PlacedSource
+from benchlay.scene.tables import Floats, Ints
+
+NAME = "into-source"
+
+# The light is where it was meant to be; the source suffers.
+SEVERITY = Severity.WARN
+
+_EXIT_WIDTHS = 1.5  # half width of the exit, in 1/e² radii of the beam there
+_LEAST_ACCEPTANCE_RAD = 2e-3  # of the language: full angle
+_SHARE = 1e-4  # of what the source emits, where the layout sets no power
+_ROUNDING_MM = 1e-6
+
+
+def check(context: Context, variant: int) -> Iterator[Finding]:
+    """Report each beam that enters an exit within its acceptance, above the limit."""
+    for name, item in sorted(context.state(variant).sources.items()):
+        if item.source.stand.out:
+            continue
+        own = _own(context, variant, name)
+        if not len(own):
+            continue
+        half_width, half_angle = _exit(context, own, item)
+        rows, offset, angle = _returning(context, variant, item)
+        near = angle <= half_angle
+        for beam, off, turn in zip(
+            rows[near].tolist(), offset[near].tolist(), angle[near].tolist(), strict=True
+        ):
+            power = _entering(context, beam, item, half_width)
+            limit = _limit(context, variant, own)
+            if above(power, limit):
+                yield _finding(context, variant, name, beam, (power, limit, off, turn))
+
+
+def _own(context: Context, variant: int, name: str) -> Ints:
+    start = context.trace.beams.start
+    rows = context.beams_of(variant)
+    number = context.trace.scene.sources.index(name)
+    own: Ints = rows[(start.parent[rows] < 0) & (start.source[rows] == number)]
+    return own
+
+
+def _exit(context: Context, own: Ints, item: PlacedSource) -> tuple[float, float]:
+    """Return half the width of the exit (mm) and half the angle that it accepts (rad)."""
+    start = context.trace.beams.start
+    m = start.moments[:, own]
+    half_width = _EXIT_WIDTHS * float(np.max(moments.radii(m)[:2]))
+    if item.source.acceptance_rad is not None:
+        return half_width, 0.5 * item.source.acceptance_rad
+    spread = 4.0 * np.sqrt(np.maximum(m[moments.UU], m[moments.VV])) / start.index[own]
+    return half_width, max(float(spread.max()), 0.5 * _LEAST_ACCEPTANCE_RAD)
+
+
+def _returning(context: Context, variant: int, item: PlacedSource) -> tuple[Ints, Floats, Floats]:
+    """Return beams that cross the exit's plane from in front: offset (mm) and angle (rad)."""
+    beams = context.trace.beams
+    rows = context.beams_of(variant)
+    rows = rows[context.outside[rows] & (beams.start.parent[rows] >= 0)]
+    normal = np.array(item.pose.axes()[0])
+    away = np.array(item.pose.at) - beams.start.position[rows]
+    slope = -(beams.start.direction[rows] @ normal)
+    with np.errstate(divide="ignore", invalid="ignore"):
+        way = -(away @ normal) / slope
+    met = (slope > 0.0) & (way >= 0.0) & (way <= beams.length[rows] + _ROUNDING_MM)
+    rows, way, slope, away = rows[met], way[met], slope[met], away[met]
+    off = np.linalg.norm(way[:, None] * beams.start.direction[rows] - away, axis=1)
+    return rows, off, np.arccos(np.minimum(slope, 1.0))
+
+
+def _entering(context: Context, beam: int, item: PlacedSource, half_width: float) -> float:
+    """Return the power of a beam that the exit lets in, W."""
+    start = context.trace.beams.start
+    k, e1 = start.direction[beam], start.axis[beam]
+    away = np.array(item.pose.at) - start.position[beam]
+    m = moments.propagate(start.moments[:, beam], float(away @ k), start.index[beam])
+    w1, w2, angle = moments.radii(m)
+    first = np.cos(angle) * e1 + np.sin(angle) * np.cross(k, e1)
+    across = away - (away @ k) * k
+    share = circle_share(
+        w1, w2, half_width, float(across @ first), float(across @ np.cross(k, first))
+    )
+    arriving = context.trace.beams.end_core[beam]
+    return float(min(start.power[beam] / start.kept[beam] * share, max(arriving, 0.0)))
+
+
+def _limit(context: Context, variant: int, own: Ints) -> float:
+    written = context.layout(variant).limits.back_reflection_w
+    return (
+        _SHARE * float(context.trace.beams.start.power[own].sum()) if written is None else written
+    )
+
+
+def _finding(
+    context: Context,
+    variant: int,
+    name: str,
+    beam: int,
+    figures: tuple[float, float, float, float],
+) -> Finding:
+    power, limit, off, turn = figures
+    chain = context.ancestors(beam)
+    turned = context.left_name(chain[0])
+    return Finding(
+        check=NAME,
+        severity=SEVERITY,
+        message=(
+            f"{power_text(power)} of {wavelength_text(context.wavelength_nm(beam))} from "
+            f"'{context.source_of(beam)}', last met by '{turned}', comes back into '{name}', "
+            f"{length_text(off)} from its middle and {angle_text(turn)} from its axis"
+        ),
+        expected=f"at most {power_text(limit)} within its exit and acceptance",
+        remedy="tilt the face that sends it back, or put an isolator before it",
+        element=name,
+        beam=int(context.numbers[beam]),
+        at=context.state(variant).sources[name].pose.at,
+        span=context.span_of(name, variant),
+        value=power,
+        limit=limit,
+        unit="W",
+        key=(*context.chain(beam), name),
+    )
