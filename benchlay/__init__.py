@@ -16,11 +16,11 @@ from __future__ import annotations
 from typing import TYPE_CHECKING, Any
 
 if TYPE_CHECKING:
-    from benchlay.pipeline import check, draw, place, read, trace
+    from benchlay.pipeline import LayoutError, check, draw, place, read, trace
 
 __version__ = "0.1.0"
 
-__all__ = ["__version__", "check", "draw", "place", "read", "trace"]
+__all__ = ["LayoutError", "__version__", "check", "draw", "place", "read", "trace"]
 
 
 def __getattr__(name: str) -> Any:  # noqa: ANN401 - whatever the pipeline offers

@@ -2,13 +2,12 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping, Sequence
+from collections.abc import Mapping, Sequence
 from datetime import date
 from typing import TYPE_CHECKING, NamedTuple
 
 from benchlay.checks import Run
-from benchlay.findings import Finding, MergedFinding, Severity, identify, merge_states, sort_key
-from benchlay.layout.layout import Layout
+from benchlay.findings import Finding, MergedFinding, identify, merge_states, sort_key
 from benchlay.report.model import Acceptance, CheckRun, Reported, Review, reported
 from benchlay.results.accept import hold
 from benchlay.results.limits import Limits, limits_used
@@ -16,8 +15,6 @@ from benchlay.tracing import Trace
 
 if TYPE_CHECKING:
     from benchlay.zones import Zones
-
-NOT_YET = "not-yet"
 
 
 class Paper(NamedTuple):
@@ -58,8 +55,7 @@ def judge(checked: Checked, on: date | None) -> Judged:
     """
     placed = checked.trace.placed
     spoken_of = [f for f in checked.findings if f.state in checked.states]
-    notes = identify(_not_yet(placed.base.layout, checked.states[0]))
-    own = merge_states([*spoken_of, *notes])
+    own = merge_states(spoken_of)
     held = hold(own, placed, on, checked.states)
     about = merge_states(identify(f._replace(state=checked.states[0]) for f in held.findings))
     runs = [CheckRun(*run) for run in checked.runs if run.state in checked.states]
@@ -71,21 +67,6 @@ def _reported(
 ) -> tuple[Reported, ...]:
     ordered = sorted(merged, key=lambda one: sort_key(one.finding))
     return tuple(reported(one, accepted.get(one.id)) for one in ordered)
-
-
-def _not_yet(layout: Layout, state: str) -> Iterable[Finding]:
-    """Say of every key that is read and not acted on yet that it is so."""
-    for span, what in sorted(layout.not_yet):
-        yield Finding(
-            NOT_YET,
-            Severity.NOTE,
-            what,
-            "only keys that this version acts on",
-            "nothing; what the key says is kept for a later version",
-            state=state,
-            span=span,
-            key=(what,),
-        )
 
 
 def review(checked: Checked, paper: Paper, on: date, *, in_full: bool) -> Review:
