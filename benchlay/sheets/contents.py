@@ -33,10 +33,9 @@ class Item(NamedTuple):
     facing_deg: float
     outlines: tuple[Shape, ...] = ()  # of glass, metal, plates: what light meets
     coated: tuple[tuple[Point, Point], ...] = ()  # the outline's edges that bear a coating
+    bodies: tuple[Shape, ...] = ()  # mounts, posts, feet, housings
     lines: tuple[tuple[Point, ...], ...] = ()  # of glass or metal that encloses nothing
     hidden: tuple[tuple[Point, ...], ...] = ()  # what lies inside a body
-    bodies: tuple[Shape, ...] = ()  # mounts, posts, feet, housings
-    note: str = ""  # a few words for the table of elements
 
 
 class Leg(NamedTuple):

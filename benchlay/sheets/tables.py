@@ -19,6 +19,7 @@ _PAD_MM = 1.2
 _HEADING_MM = MIDDLE_MM + 2.4
 BETWEEN_MM = 4.0
 _INDENT_MM = 5.0
+_NOTE_SHARE = 0.93
 
 
 class Column(NamedTuple):
@@ -130,7 +131,8 @@ def _grid(content: Table, left: float, edges: list[float], foot: float) -> Itera
 
 def notes(heading: str, lines: Sequence[str], window: Window, elsewhere: str) -> Drawn:
     """Write numbered notes at the top of a window, as many as there is room for."""
-    room = window.width - _INDENT_MM
+    # Nothing at the right holds a note in: fonts of other programs run wider still.
+    room = _NOTE_SHARE * (window.width - _INDENT_MM)
     wrapped = [wrap(note, room, SMALL_MM) for note in lines]
     y = window.high - _HEADING_MM
     shown = _fitting([len(w) * PITCH_MM for w in wrapped], y - window.low)

@@ -18,7 +18,7 @@ from benchlay.zones.swept import envelope_radii, through_aperture
 from benchlay.zones.words import number, with_unit
 
 # A tag says how much power there is; it stands until that has changed by more.
-_CHANGE = 0.05
+_CHANGE = 0.1
 # Weaker strays than this share of the limit say little, and there are many.
 WEAKEST = 0.1
 _MOST_WEAK = 80
@@ -45,11 +45,13 @@ class DrawnLegs(NamedTuple):
 def legs_of(trace: Trace, limits: LimitTable, variant: int, decimal: str) -> DrawnLegs:
     """Return what of the light in a state is drawn.
 
-    Every leg of a working beam is drawn. A stray counts by the power that passes the
-    limiting aperture, where that is most along its way.
+    Every leg of a working beam is drawn, save those of no length inside thin elements. A
+    stray counts by the power that passes the limiting aperture, where that is most along its
+    way.
     """
     s = trace.beams.start
     rows = trace.of_variant(variant)
+    rows = rows[trace.beams.length[rows] > 0.0]
     working = rows[s.node[rows] >= 0]
     strays = rows[(s.node[rows] < 0) & (s.within[rows] == OUTSIDE) & (s.power[rows] > 0.0)]
     share = _share_of_limit(trace, limits, strays)
@@ -264,6 +266,4 @@ def limit_words(limit_w: float, aperture_mm: float, time_s: float, decimal: str)
     if not limit_w > 0.0:
         return "no limit known"
     power = with_unit(limit_w, "W", decimal=decimal)
-    return (
-        f"{power} through Ø{number(aperture_mm, 3, decimal)} mm, {number(time_s, 3, decimal)} s"
-    )
+    return f"{power} through Ø{number(aperture_mm, 3, decimal)} mm, {number(time_s, 3, decimal)} s"

@@ -116,7 +116,5 @@ def _corners(solid: Solid) -> Iterator[tuple[float, float, float]]:
         c, a, b = solid.points[centre], solid.points[first], solid.points[second]
         for n in range(_STEPS):
             cos, sin = math.cos(math.tau * n / _STEPS), math.sin(math.tau * n / _STEPS)
-            x, y, z = (
-                o + cos * (p - o) + sin * (q - o) for o, p, q in zip(c, a, b, strict=True)
-            )
+            x, y, z = (o + cos * (p - o) + sin * (q - o) for o, p, q in zip(c, a, b, strict=True))
             yield (x, y, z)

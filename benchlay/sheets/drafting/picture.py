@@ -142,10 +142,14 @@ def _legend(
             if line.wavelength_nm == nm and not state.sources[name].source.stand.out
         ]
         names = [name for name, wavelength in legs.working if wavelength == nm]
-        span = f": {names[0]} to {names[-1]}" if len(names) > 1 else "".join(f": {n}" for n in names)
+        span = (
+            f": {names[0]} to {names[-1]}" if len(names) > 1 else "".join(f": {n}" for n in names)
+        )
         who = ", ".join(f"{name} {with_unit(p, 'W', decimal=decimal)}" for name, p, _ in emits)
         words = f"{wavelength_words(nm, decimal)}, {who or 'not emitted'}{span}"
-        out.append(BeamEntry(nm, max((_width(p, lim) for _, p, lim in emits), default=_THIN), words))
+        out.append(
+            BeamEntry(nm, max((_width(p, lim) for _, p, lim in emits), default=_THIN), words)
+        )
     return out
 
 
@@ -158,9 +162,7 @@ def _width(power_w: float, limit_w: float) -> float:
     return WIDTHS_MM[1] if power_w > _STRONG * limit_w else WIDTHS_MM[0]
 
 
-def _assumptions(
-    state: PlacedState, zones: Zones, legs: DrawnLegs, decimal: str
-) -> list[str]:
+def _assumptions(state: PlacedState, zones: Zones, legs: DrawnLegs, decimal: str) -> list[str]:
     out = []
     own = [zone for zone in zones.zones if zone.state == state.name]
     if own:

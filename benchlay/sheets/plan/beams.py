@@ -16,7 +16,7 @@ _ARROW_MM, _ARROW_WIDE_MM = 4.0, 2.4
 _OPEN_MM, _OPEN_HALF_DEG = 3.0, 25.0
 _SHORT_MM = 9.0  # shorter legs bear no arrow
 _END_MM = 1.6
-_UPRIGHT_MM = 0.05  # a leg that is a point from above
+_STEEP = 1e-3  # a leg that goes sideways by less, for its height, is a point from above
 
 DUMPS = frozenset({"dump"})
 STOPS = frozenset({"panel", "wall", "screen", "body", "bench", "rim", "target"})
@@ -37,7 +37,7 @@ def beams(picture: Picture, board: Board) -> Iterator[Primitive]:
         if seen is None:
             continue
         board.crowd_model_line(seen)
-        if math.dist(*seen) < board.long(_UPRIGHT_MM):
+        if math.dist(start, end) < _STEEP * abs(leg.end[2] - leg.start[2]):
             yield from _upright(leg, board)
             continue
         yield Line(layer_of(leg), *seen)

@@ -118,4 +118,4 @@ def _with_counts(
 def levels_note(picture: Picture) -> str:
     """Return the note that says from where heights are measured."""
     height = figure(picture.beam_height_mm, 2, picture.decimal)
-    return f"Heights are above the bench top (±0). Beam height +{height} where no level is written."
+    return f"Beam height +{height} where no level is written; heights are above the bench top (±0)."

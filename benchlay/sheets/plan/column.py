@@ -18,7 +18,6 @@ from benchlay.sheets.primitives import (
     Polyline,
     Primitive,
     Text,
-    figure,
 )
 from benchlay.sheets.scale import Window
 from benchlay.sheets.tables import BETWEEN_MM, Column, Drawn, Table, notes, table

@@ -142,7 +142,6 @@ def _panel_tags(picture: Picture, board: Board) -> Iterator[_Wanted]:
             middle = (opening.start_mm + opening.end_mm) / 2
             yield _panel_tag(f"{panel.name}.{opening.name}", panel, [middle], board)
 
-
     for lid in picture.lids:
         words = _sheet_words(f"lid {lid.name} +{figure(lid.height_mm, 1, picture.decimal)}", lid)
         corners = [board.on_paper(p) for p in lid_line(lid, board)]
