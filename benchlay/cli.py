@@ -13,12 +13,14 @@ import os
 import sys
 from collections.abc import Sequence
 from datetime import date
-from typing import NoReturn, TextIO
+from typing import Any, NoReturn, TextIO
 
 _DEBUG = "BENCHLAY_DEBUG"
 _INTERRUPTED = 130  # as shells write "ended by the interrupt signal"
 _FAILED = 3
 _WRONG = 2
+_USUAL_WIDTH = 80
+_NARROWEST = 20
 
 _LATER = {
     "faults": "every credible single fault, and random misalignment",
@@ -112,19 +114,41 @@ def _takes_colour(stream: TextIO) -> bool:
     return stream.isatty()
 
 
+class _Help(argparse.HelpFormatter):
+    """Help as wide as the terminal.
+
+    Left to itself, argparse asks `shutil` for the width while the arguments are being
+    declared, which loads five archive libraries on every run.
+    """
+
+    def __init__(self, prog: str) -> None:
+        super().__init__(prog, width=_columns() - 2)
+
+
+def _columns() -> int:
+    try:
+        columns = int(os.environ.get("COLUMNS", 0)) or os.get_terminal_size().columns
+    except (ValueError, OSError):
+        columns = 0
+    return columns if columns > _NARROWEST else _USUAL_WIDTH
+
+
+class _Parser(argparse.ArgumentParser):
+    """A parser whose commands' parsers write help alike."""
+
+    def __init__(self, **options: Any) -> None:  # noqa: ANN401 - as argparse has it
+        super().__init__(formatter_class=_Help, **options)
+
+
 def _parser() -> argparse.ArgumentParser:
-    parser = argparse.ArgumentParser(
+    parser = _Parser(
         prog="benchlay",
         description="Reviews laser benches written as YAML: places, traces, checks and draws.",
         epilog="Exit status: 0 nothing at or above --fail-on, 1 findings at or above it, "
         "2 the layout or the command line is wrong, 3 the program itself failed.",
     )
     parser.add_argument("--version", action="version", version=_version())
-    # With `prog` given, argparse need not measure the terminal, for which it loads five
-    # archive libraries.
-    commands = parser.add_subparsers(
-        dest="command", required=True, metavar="COMMAND", prog=parser.prog
-    )
+    commands = parser.add_subparsers(dest="command", required=True, metavar="COMMAND")
     _add_review(commands.add_parser("review", help="the main job: everything, into a folder"))
     _add_check(commands.add_parser("check", help="findings only; writes nothing else"))
     _add_trace(commands.add_parser("trace", help="the beams and where their power goes"))

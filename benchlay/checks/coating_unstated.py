@@ -75,7 +75,7 @@ def check(context: Context, variant: int) -> Iterator[Finding]:
     rows = context.beams_of(variant)
     rows = rows[beams.unstated[rows]]
     pairs = np.stack((beams.end_row[rows], beams.start.wave[rows]))
-    for face, wave in np.unique(pairs, axis=1).T.tolist():
+    for face, wave in sorted(set(zip(*pairs.tolist(), strict=True))):
         met = rows[(pairs[0] == face) & (pairs[1] == wave)]
         nm = float(scene.wavelengths_nm[wave])
         name = scene.elements[int(scene.faces.owner[face])]

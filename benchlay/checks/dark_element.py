@@ -47,10 +47,9 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-import numpy as np
-
 from benchlay.checks._check import Context
 from benchlay.findings import Finding, Severity
+from benchlay.geometry.distinct import distinct
 from benchlay.tracing.beams import FACE
 
 NAME = "dark-element"
@@ -97,9 +96,9 @@ def _lit(context: Context) -> set[str]:
     """Return the elements that light reaches in some state, on a face or on what holds it."""
     trace = context.trace
     beams, scene = trace.beams, trace.scene
-    faces = np.unique(beams.end_row[beams.end_kind == FACE])
+    faces = distinct(beams.end_row[beams.end_kind == FACE])
     lit = {scene.elements[owner] for owner in scene.faces.owner[faces].tolist()}
     ledger = trace.ledger
     enough = ledger.power >= trace.floor_w[beams.start.wave[ledger.beam]]
-    names = np.unique(ledger.name[enough & (ledger.name >= 0)])
+    names = distinct(ledger.name[enough & (ledger.name >= 0)])
     return lit | {scene.names[name] for name in names.tolist()}

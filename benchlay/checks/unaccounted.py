@@ -66,6 +66,7 @@ import numpy as np
 
 from benchlay.checks._check import Context, above, power_text, wavelength_text
 from benchlay.findings import Finding, Severity
+from benchlay.geometry.distinct import distinct
 from benchlay.scene.tables import SINK, Ints
 
 NAME = "unaccounted"
@@ -118,7 +119,7 @@ def _below_floor(context: Context, variant: int, source: str, rows: Ints) -> Ite
     ledger = trace.ledger
     rows = rows[ledger.sink[rows] == SINK["below-floor"]]
     waves = trace.beams.start.wave[ledger.beam[rows]]
-    for wave in np.unique(waves).tolist():
+    for wave in distinct(waves).tolist():
         mine = rows[waves == wave]
         nm = float(trace.scene.wavelengths_nm[wave])
         total, largest = fsum(ledger.power[mine].tolist()), float(ledger.power[mine].max())

@@ -1,0 +1,56 @@
+"""Drawings as files, and what speaks against making one."""
+
+import xml.etree.ElementTree as ET
+
+import pytest
+
+from benchlay.results.drawings import drawings, refusals
+
+
+def test_every_sheet_in_every_form(corner):
+    files = drawings(corner, sha256="0" * 64)
+    assert sorted(files) == ["plan.dxf", "plan.svg"]
+    assert ET.fromstring(files["plan.svg"]).tag.endswith("svg")
+    assert b"0" * 64 in files["plan.dxf"]
+
+
+def test_one_form_alone(corner):
+    assert list(drawings(corner, form="svg")) == ["plan.svg"]
+
+
+@pytest.mark.parametrize(
+    ("sheet", "form", "said"),
+    [
+        ("plan", "svg", []),
+        (None, None, []),
+        ("pln", None, ["there is no sheet 'pln'"]),
+        (None, "pdf", ["not yet: sheets are not written as pdf"]),
+    ],
+)
+def test_what_cannot_be_drawn_is_refused(corner, sheet, form, said):
+    layout = corner.placed.base.layout
+    assert [problem.message for problem in refusals(layout, sheet, form)] == said
+
+
+SMALL = """
+bench: {{size: [9000, 6000]}}
+sources:
+  red: {{wavelength: 633, power: 8 mW, beam: {{waist_radius: 0.5}}, at: [100, 100], heading: 0}}
+elements:
+  T1: {{kind: target, at: [400, 100], facing: 180}}
+drawing: {{{asked}}}
+"""
+
+
+def test_a_sheet_that_is_too_small_is_refused_at_its_line(traced):
+    trace = traced(SMALL.format(asked="sheet: A4"))
+    (problem,) = refusals(trace.placed.base.layout, None, None)
+    assert (problem.span.line, problem.span.column) == (7, 18)
+    assert "A4" in problem.message
+
+
+def test_what_fits_nowhere_is_a_problem_of_the_layout(traced):
+    problem = drawings(traced(SMALL.format(asked="sheet: A3, scale: '1:1'")))
+    assert problem.message.startswith("the plan cannot be drawn: ")
+    assert problem.span.line == 7
+    assert "sheet: auto" in problem.remedy
