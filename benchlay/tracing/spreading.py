@@ -45,7 +45,7 @@ def perspective(vertices: Floats, widening: Floats) -> Floats:
 
     Both are taken from the depth at which the corners were scaled.
     """
-    usable: Flags = (np.abs(widening) < _MOST).all(axis=1)
+    usable: Flags = np.abs(widening).max(axis=1) < _MOST
     scale = np.where(usable[:, None], 1.0 + widening, 1.0)
     seen: Floats = vertices / scale[..., None]
     return seen

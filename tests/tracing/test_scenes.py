@@ -6,7 +6,7 @@ import pytest
 
 from tests.tracing.bench import SCENES
 
-for name in ("plates", "glasses", "states", "lenses", "cuts", "bodies"):
+for name in ("plates", "glasses", "states", "lenses", "cuts", "bodies", "landings"):
     importlib.import_module(f"tests.tracing.scenes.{name}")
 
 
