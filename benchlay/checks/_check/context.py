@@ -150,6 +150,14 @@ class Context:
         """Return the irradiance on the axis of beams where they end, across them, W/m²."""
         return peak_irradiance_w_m2(self.trace.beams, rows)
 
+    def pulse_rate_hz(self, beam: int) -> float | None:
+        """Return the rate of the pulses that a beam is made of; None for continuous light."""
+        variant = int(self.trace.beams.start.variant[beam])
+        lines = self.state(variant).sources[self.source_of(beam)].source.lines
+        own = [line for line in lines if line.wavelength_nm == self.wavelength_nm(beam)]
+        pulses = [line.pulse for line in own or lines if line.pulse is not None]
+        return pulses[0].rate_hz if pulses else None
+
     # ------------------------------------------------------------------ beams in words
 
     def source_of(self, beam: int) -> str:
