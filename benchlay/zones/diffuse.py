@@ -11,6 +11,7 @@ every direction of the half space in front, which is the larger hazard.
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterator
 from typing import NamedTuple
 
@@ -91,19 +92,16 @@ def _groups(trace: Trace, variant: int, wave: int) -> list[list[_Landing]]:
             at = tuple(trace.beams.end[beam].tolist())
             found.append(_Landing(float(ledger.power[row]), beam, sink, name, at))
     found.sort(key=lambda landing: (-landing.power_w, landing.at, landing.beam))
-    groups: list[list[_Landing]] = []
+    by_surface: dict[tuple[str, str | None], list[list[_Landing]]] = {}
     for landing in found:
-        home = next((g for g in groups if _together(g[0], landing)), None)
+        groups = by_surface.setdefault((landing.sink, landing.name), [])
+        near = (g for g in groups if math.dist(g[0].at, landing.at) < _TOGETHER_MM)
+        home = next(near, None)
         if home is None:
             groups.append([landing])
         else:
             home.append(landing)
-    return groups
-
-
-def _together(a: _Landing, b: _Landing) -> bool:
-    same = a.sink == b.sink and a.name == b.name
-    return same and float(np.hypot.reduce(np.subtract(a.at, b.at))) < _TOGETHER_MM
+    return [group for groups in by_surface.values() for group in groups]
 
 
 def diffuse_share(state: PlacedState, sink: str, name: str | None) -> float:
