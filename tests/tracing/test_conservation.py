@@ -163,7 +163,7 @@ def test_a_black_thing_far_away_changes_nothing():
 
 
 def test_two_mirrors_that_lose_nothing_meet_the_bound_and_say_so(monkeypatch):
-    monkeypatch.setattr(generations, "MOST_GENERATIONS", 150)
+    monkeypatch.setattr(generations, "MOST_BATCHES", 150)
     mirror = "kind: mirror, size: [20, 20], reflectance: 100 %, mount: none"
     text = (
         "bench: {size: [900, 500]}\n"
