@@ -79,7 +79,7 @@ from benchlay.checks._check import (
     unjudged,
     wavelength_text,
 )
-from benchlay.findings import Finding, Severity
+from benchlay.findings import Finding, KeyPart, Severity
 from benchlay.layout.enclosure import Opening
 from benchlay.optics import moments
 from benchlay.scene.tables import SINKS
@@ -119,9 +119,28 @@ def check(context: Context, variant: int) -> Iterator[Found]:
         return
     beams = np.array([found.beam for found in exits])
     powers = context.beyond_w(beams, np.array([found.way_mm for found in exits]))
+    # Light sent to and fro between two faces leaves as many beams by one way: the strongest of
+    # them is told.
+    strongest: dict[tuple[KeyPart, ...], tuple[float, _Exit]] = {}
     for found, power in zip(exits, powers.tolist(), strict=True):
         if above(power, float(context.limit_w[found.beam])):
-            yield _finding(context, variant, line, found, power)
+            way = _way_out(context, found)
+            if way not in strongest or power > strongest[way][0]:
+                strongest[way] = power, found
+    for way, (power, found) in strongest.items():
+        yield _finding(context, variant, line, found, (power, way))
+
+
+def _way_out(context: Context, found: _Exit) -> tuple[KeyPart, ...]:
+    """Return what beams that leave alike have in common, the same from run to run."""
+    beam = found.beam
+    return (
+        context.source_of(beam),
+        context.wavelength_nm(beam),
+        context.left_at(context.astray_since(beam)),
+        context.left_at(beam),
+        "up" if found.upwards else found.side.panel if found.side is not None else "edge",
+    )
 
 
 def _exits(context: Context, variant: int, line: EnclosureLine) -> Iterator[_Exit]:
@@ -205,9 +224,13 @@ def _handed_over(context: Context, beam: int) -> bool:
 
 
 def _finding(
-    context: Context, variant: int, line: EnclosureLine, found: _Exit, power: float
+    context: Context,
+    variant: int,
+    line: EnclosureLine,
+    found: _Exit,
+    what: tuple[float, tuple[KeyPart, ...]],
 ) -> Finding:
-    beam = found.beam
+    beam, (power, key) = found.beam, what
     beams = context.trace.beams
     at = context.point(beams.start.position[beam] + found.way_mm * beams.start.direction[beam])
     name = context.left_name(beam)
@@ -230,7 +253,7 @@ def _finding(
         value=power,
         limit=limit,
         unit="W",
-        key=context.chain(beam),
+        key=key,
     )
 
 

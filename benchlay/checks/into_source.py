@@ -34,7 +34,8 @@ Passes
 
 What it does not see
 --------------------
-Diffuse light that comes back. Interference of several returns. The exit is taken as a circle
+Diffuse light that comes back. Light of one source in a bare exit of another (`body: none`),
+such as a sample that glows. Interference of several returns. The exit is taken as a circle
 half as wide again as the beam is there.
 
 Source
@@ -48,6 +49,7 @@ practice: 40 dB is what is asked of isolators at most). An opening of half width
 from __future__ import annotations
 
 from collections.abc import Iterator
+from typing import NamedTuple
 
 import numpy as np
 
@@ -61,6 +63,7 @@ from benchlay.checks._check import (
 )
 from benchlay.findings import Finding, Severity
 from benchlay.optics import moments
+from benchlay.optics.rays import cross, dot
 from benchlay.optics.special import circle_share
 from benchlay.placing.placed import PlacedSource
 from benchlay.scene.tables import Floats, Ints
@@ -76,24 +79,50 @@ _SHARE = 1e-4  # of what the source emits, where the layout sets no power
 _ROUNDING_MM = 1e-6
 
 
+class _Return(NamedTuple):
+    """A beam that comes back: the power that enters, how far off and how much turned."""
+
+    beam: int
+    power_w: float
+    off_mm: float
+    turn_rad: float
+
+
 def check(context: Context, variant: int) -> Iterator[Finding]:
-    """Report each beam that enters an exit within its acceptance, above the limit."""
+    """Report by source and face what enters its exit within its acceptance, with the sum."""
     for name, item in sorted(context.state(variant).sources.items()):
-        if item.source.stand.out:
-            continue
         own = _own(context, variant, name)
-        if not len(own):
+        if item.source.stand.out or not len(own):
             continue
-        half_width, half_angle = _exit(context, own, item)
-        rows, offset, angle = _returning(context, variant, item)
-        near = angle <= half_angle
-        for beam, off, turn in zip(
-            rows[near].tolist(), offset[near].tolist(), angle[near].tolist(), strict=True
-        ):
-            power = _entering(context, beam, item, half_width)
-            limit = _limit(context, variant, own)
-            if above(power, limit):
-                yield _finding(context, variant, name, beam, (power, limit, off, turn))
+        limit = _limit(context, variant, own)
+        groups: dict[tuple[int, int, str], list[_Return]] = {}
+        for found in _returns(context, variant, item, own, limit):
+            start = context.trace.beams.start
+            since = context.left_at(context.astray_since(found.beam))
+            key = int(start.source[found.beam]), int(start.wave[found.beam]), since
+            groups.setdefault(key, []).append(found)
+        for (_, _, since), returns in groups.items():
+            yield _finding(context, variant, (name, since), returns, limit)
+
+
+def _returns(
+    context: Context, variant: int, item: PlacedSource, own: Ints, limit: float
+) -> list[_Return]:
+    """Return what enters an exit within its acceptance, each of it above the limit."""
+    half_width, half_angle = _exit(context, own, item)
+    rows, off, turn = _returning(context, variant, item)
+    start = context.trace.beams.start
+    counts = (turn <= half_angle) & (start.power[rows] > limit)
+    if item.source.body is None:
+        # A bare exit is no laser's: only its own light comes *back* to it.
+        counts &= start.source[rows] == start.source[own[0]]
+    chosen = np.flatnonzero(counts)
+    power = _entering(context, rows[chosen], item, half_width)
+    columns = zip(
+        rows[chosen].tolist(), power.tolist(), off[chosen].tolist(), turn[chosen].tolist(),
+        strict=True,
+    )  # fmt: skip
+    return [_Return(*row) for row in columns if above(row[1], limit)]
 
 
 def _own(context: Context, variant: int, name: str) -> Ints:
@@ -131,20 +160,20 @@ def _returning(context: Context, variant: int, item: PlacedSource) -> tuple[Ints
     return rows, off, np.arccos(np.minimum(slope, 1.0))
 
 
-def _entering(context: Context, beam: int, item: PlacedSource, half_width: float) -> float:
-    """Return the power of a beam that the exit lets in, W."""
+def _entering(context: Context, rows: Ints, item: PlacedSource, half_width: float) -> Floats:
+    """Return the power of beams that the exit lets in, W."""
     start = context.trace.beams.start
-    k, e1 = start.direction[beam], start.axis[beam]
-    away = np.array(item.pose.at) - start.position[beam]
-    m = moments.propagate(start.moments[:, beam], float(away @ k), start.index[beam])
+    k, e1 = start.direction[rows], start.axis[rows]
+    away = np.array(item.pose.at) - start.position[rows]
+    along = dot(away, k)
+    m = moments.propagate(start.moments[:, rows], along, start.index[rows])
     w1, w2, angle = moments.radii(m)
-    first = np.cos(angle) * e1 + np.sin(angle) * np.cross(k, e1)
-    across = away - (away @ k) * k
-    share = circle_share(
-        w1, w2, half_width, float(across @ first), float(across @ np.cross(k, first))
-    )
-    arriving = context.trace.beams.end_core[beam]
-    return float(min(start.power[beam] / start.kept[beam] * share, max(arriving, 0.0)))
+    first = np.cos(angle)[:, None] * e1 + np.sin(angle)[:, None] * cross(k, e1)
+    across = away - along[:, None] * k
+    share = circle_share(w1, w2, half_width, dot(across, first), dot(across, cross(k, first)))
+    whole = start.power[rows] / start.kept[rows] * share
+    entering: Floats = np.minimum(whole, context.trace.beams.end_core[rows])
+    return entering
 
 
 def _limit(context: Context, variant: int, own: Ints) -> float:
@@ -155,31 +184,29 @@ def _limit(context: Context, variant: int, own: Ints) -> float:
 
 
 def _finding(
-    context: Context,
-    variant: int,
-    name: str,
-    beam: int,
-    figures: tuple[float, float, float, float],
+    context: Context, variant: int, way: tuple[str, str], returns: list[_Return], limit: float
 ) -> Finding:
-    power, limit, off, turn = figures
-    chain = context.ancestors(beam)
-    turned = context.left_name(chain[0])
+    name, since = way
+    worst = max(returns, key=lambda one: (one.power_w, -one.beam))
+    beam = worst.beam
+    total = float(sum(one.power_w for one in returns))
+    source, nm = context.source_of(beam), context.wavelength_nm(beam)
     return Finding(
         check=NAME,
         severity=SEVERITY,
         message=(
-            f"{power_text(power)} of {wavelength_text(context.wavelength_nm(beam))} from "
-            f"'{context.source_of(beam)}', last met by '{turned}', comes back into '{name}', "
-            f"{length_text(off)} from its middle and {angle_text(turn)} from its axis"
+            f"{power_text(total)} of {wavelength_text(nm)} from '{source}', sent aside by "
+            f"'{since}', comes back into '{name}', {length_text(worst.off_mm)} from its middle "
+            f"and {angle_text(worst.turn_rad)} from its axis"
         ),
         expected=f"at most {power_text(limit)} within its exit and acceptance",
-        remedy="tilt the face that sends it back, or put an isolator before it",
+        remedy=f"tilt '{since.partition('.')[0]}', or put an isolator before it",
         element=name,
         beam=int(context.numbers[beam]),
         at=context.state(variant).sources[name].pose.at,
         span=context.span_of(name, variant),
-        value=power,
+        value=total,
         limit=limit,
         unit="W",
-        key=(*context.chain(beam), name),
+        key=(source, nm, since),
     )

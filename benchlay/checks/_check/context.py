@@ -212,12 +212,19 @@ class Context:
 
     def astray_since(self, beam: int) -> int:
         """Return the first beam off every route among a beam and those it came from."""
+        return int(self._astray[beam])
+
+    @cached_property
+    def _astray(self) -> Ints:
+        """Of each stray the first beam of its line that follows no route, else itself (N,)."""
         start = self.trace.beams.start
-        first = beam
-        for ancestor in self.ancestors(beam):
-            if start.node[ancestor] >= 0:
-                break
-            first = ancestor
+        own = np.arange(len(start.node))
+        parent = np.maximum(start.parent, 0)
+        led = (start.node < 0) & (start.parent >= 0) & (start.node[parent] < 0)
+        first = np.where(led, parent, own)
+        # Each step doubles how far back is looked: the number of steps goes as its logarithm.
+        while not np.array_equal(further := first[first], first):
+            first = further
         return first
 
     def end_words(self, beam: int) -> str:
