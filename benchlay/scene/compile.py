@@ -177,7 +177,6 @@ def compile_scene(placed: Placed) -> Scene:
             [compiler.name(compiler.elements[owner]) for owner in compiler.faces.owners],
             dtype=np.int64,
         ),
-        np.eye(len(compiler.elements), dtype=np.float32)[faces.owner],
         np.isin(solids.part, [PART[part] for part in CLOSE_PARTS]),
         max(state.layout.limits.reach_mm for state in placed.states),
         fixed_products(faces, solids, np.array(compiler.item_of_face, dtype=np.int64)),

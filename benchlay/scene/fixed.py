@@ -7,10 +7,17 @@ import numpy as np
 from benchlay.geometry.distinct import distinct
 from benchlay.scene.tables import Faces, Fixed, Floats, Ints, Solids
 
+# Beams are met by their distance from a solid's middle, of which rounding takes this much.
+_ROUNDING = 1e-9
+_SLACK_MM = 1e-3
+
 
 def fixed_products(faces: Faces, solids: Solids, item_of_face: Ints) -> Fixed:
     """Return products of the scene's own vectors."""
     f, s = faces, solids
+    plane_of = _planes_of(s)
+    round_of = np.full(len(s.owner), -1)
+    round_of[s.axis_solid] = np.arange(len(s.axis_solid))
     offsets = (
         _products(f.origin, f.normal),
         _products(f.origin, f.left) + f.middle[:, 0],
@@ -19,9 +26,13 @@ def fixed_products(faces: Faces, solids: Solids, item_of_face: Ints) -> Fixed:
     return Fixed(
         np.ascontiguousarray(np.concatenate((f.normal, f.left, f.up)).T),
         np.concatenate(offsets),
-        np.ascontiguousarray(np.concatenate((s.plane_normal, s.axis)).T),
-        _products(s.axis_point, s.axis),
-        _products(s.axis_point, s.axis_point),
+        plane_of,
+        s.plane_normal[plane_of],
+        s.plane_offset[plane_of],
+        round_of,
+        np.ascontiguousarray(s.centre.T),
+        _products(s.centre, s.centre),
+        s.reach * (1.0 + _ROUNDING) + _SLACK_MM,
         _own_faces(item_of_face),
         distinct(s.hole_solid),
     )
@@ -30,6 +41,13 @@ def fixed_products(faces: Faces, solids: Solids, item_of_face: Ints) -> Fixed:
 def _products(first: Floats, second: Floats) -> Floats:
     product: Floats = np.einsum("ij,ij->i", first, second)
     return product
+
+
+def _planes_of(s: Solids) -> Ints:
+    count = np.diff(s.plane_start, append=len(s.plane_solid))
+    place = np.arange(int(count.max(initial=1)))
+    planes: Ints = s.plane_start[:, None] + np.where(place < count[:, None], place, 0)
+    return planes
 
 
 def _own_faces(item_of_face: Ints) -> Ints:

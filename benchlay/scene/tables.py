@@ -141,14 +141,14 @@ class Bulks(NamedTuple):
     """What elements do inside, by element row (E rows: distinct elements)."""
 
     kind: Ints  # (E,) number in BULKS
-    axis: Floats  # (E, 3) unit vector of the axis, plan frame
+    axis: Floats  # (E, 3) unit vector, plan frame: fast axis, or that a rotator turns about
     passes: Floats  # (E, L)
     refused: Floats  # (E, L)
-    phase: Floats  # (E, L) rad
+    phase: Floats  # (E, L) rad: retardance, or the angle of a rotator
     thickness: Floats  # (E,)
 
 
-BULKS = ("clear", "absorber", "polarizer", "retarder")
+BULKS = ("clear", "absorber", "polarizer", "retarder", "rotator")
 
 
 class Fixed(NamedTuple):
@@ -156,9 +156,13 @@ class Fixed(NamedTuple):
 
     face_axes: Floats  # (3, 3 F) columns: normals, lefts, ups
     face_offsets: Floats  # (3 F,) what to subtract from position . axis
-    plane_axes: Floats  # (3, P + C) columns: plane normals, axes of round solids
-    axis_offset: Floats  # (C,) axis point . axis
-    axis_square: Floats  # (C,) axis point squared
+    plane_of: Ints  # (S, K) bounding planes of each solid, the first repeated at the end
+    plane_normals: Floats  # (S, K, 3)
+    plane_offsets: Floats  # (S, K)
+    round_of: Ints  # (S,) number of its axis, -1 where a solid is not round
+    centres: Floats  # (3, S) middles of the spheres round solids
+    centre_square: Floats  # (S,) mm²
+    sphere: Floats  # (S,) radii with room for rounding, mm
     own_faces: Ints  # (E, K) face rows of each placed element, -1 where it has fewer
     pierced: Ints  # solids with holes
 
@@ -179,7 +183,6 @@ class Scene(NamedTuple):
     bulks: Bulks
     bulk_of_face: Ints  # (F,) row in bulks
     face_owner_name: Ints  # (F,) number in names of the element
-    owner_of_face: NDArray[np.float32]  # (F, elements) 1 where the face is the element's
     close: Flags  # (S,) holds its optic so closely that the optic's own light passes it
     reach_mm: float
     fixed: Fixed

@@ -5,9 +5,11 @@ from __future__ import annotations
 import numpy as np
 
 from benchlay.elements._kind import Inside
+from benchlay.optics.rays import dot
 from benchlay.scene.tables import Flags, Floats, Ints, Scene
+from benchlay.tracing.bodies import Passing, pairs, planes_met
 from benchlay.tracing.front import Front
-from benchlay.tracing.hits import FACE, SKIN_MM, SOLID, FacesMet, Hits, SolidsMet, crossings
+from benchlay.tracing.hits import FACE, SKIN_MM, SOLID, FacesMet, Hits
 
 # Bodies are looked for out to where what lies beyond is this share of the power floor.
 _TAIL = 0.01
@@ -36,6 +38,8 @@ def radius_of(m: Floats) -> Floats:
 def face_covers(scene: Scene, hits: Hits, radius: Floats) -> Flags:
     """Tell which faces' clear regions take the whole beam out to a radius (mm) of chief hits."""
     f = scene.faces
+    if not len(f.owner):
+        return np.ones(len(radius), dtype=np.bool_)
     face = np.where(hits.kind == FACE, hits.row, 0)
     spread = radius / np.maximum(np.abs(hits.slope), SKIN_MM)
     left, up = np.abs(hits.left), np.abs(hits.up)
@@ -46,21 +50,16 @@ def face_covers(scene: Scene, hits: Hits, radius: Floats) -> Flags:
     return covers
 
 
-def covered(scene: Scene, hits: Hits, solids: SolidsMet, front: Front, radius: Floats) -> Flags:
-    """Tell which chief hits outside glass take the whole beam out to a radius (mm)."""
-    if len(scene.faces.owner):
-        whole = (hits.kind != FACE) | face_covers(scene, hits, radius)
-    else:
-        whole = np.ones(len(radius), dtype=np.bool_)
-    rows = np.flatnonzero(hits.kind == SOLID)
+def covered(front: Front, scene: Scene, hits: Hits, radius: Floats) -> Flags:
+    """Tell which chief hits take the whole beam out to a radius (mm), if they are of solids."""
+    whole = np.ones(len(radius), dtype=np.bool_)
+    rows = (hits.kind == SOLID).nonzero()[0]
     if len(rows):
-        whole[rows] = _solid_covers(scene, hits, solids, front, rows, radius)
+        whole[rows] = _solid_covers(front, scene, hits, rows, radius[rows])
     return whole
 
 
-def _solid_covers(
-    scene: Scene, hits: Hits, solids: SolidsMet, front: Front, rows: Ints, radius: Floats
-) -> Flags:
+def _solid_covers(front: Front, scene: Scene, hits: Hits, rows: Ints, radius: Floats) -> Flags:
     """Tell which beams land wholly on the flat side of the solid that their chief ray meets.
 
     On that side the distance to another bounding plane is the gap to it over the sine of the
@@ -68,16 +67,17 @@ def _solid_covers(
     """
     s = scene.solids
     solid, plane = hits.row[rows], np.maximum(hits.plane[rows], 0)
-    sine2 = 1.0 - (s.plane_normal[plane] @ s.plane_normal.T) ** 2
+    normal = s.plane_normal[plane]
+    sine2 = 1.0 - np.einsum("nki,ni->nk", scene.fixed.plane_normals[solid], normal) ** 2
     depth = hits.distance[rows]
-    slope = solids.slope[rows]
-    gap = solids.gap[rows] - depth[:, None] * slope
-    bounds = (s.plane_solid == solid[:, None]) & (sine2 > _PARALLEL)
+    slope, gap = planes_met(front, scene, rows, solid)
+    gap -= depth[:, None] * slope
+    bounds = sine2 > _PARALLEL
     room2 = np.where(bounds, gap * np.abs(gap), np.inf) / np.where(bounds, sine2, 1.0)
-    steep = np.abs(slope[np.arange(len(rows)), plane])
-    spread = radius[rows] / np.maximum(steep, SKIN_MM)
+    steep = np.abs(dot(front.direction[rows], normal))
+    spread = radius / np.maximum(steep, SKIN_MM)
     covers: Flags = (hits.plane[rows] >= 0) & (room2.min(axis=1) >= spread * spread)
-    covers &= ~np.isin(solid, s.axis_solid)
+    covers &= scene.fixed.round_of[solid] < 0
     if len(s.hole_solid):
         point = front.position[rows] + depth[:, None] * front.direction[rows]
         size = np.sqrt(np.einsum("hki,hki->h", s.hole_axes, s.hole_axes))
@@ -94,7 +94,7 @@ def _apart(point: Floats, centre: Floats) -> Floats:
 
 
 def near(
-    front: Front, scene: Scene, hits: Hits, faces: FacesMet, solids: SolidsMet, radius: Floats
+    front: Front, scene: Scene, hits: Hits, faces: FacesMet, passed: Passing, radius: Floats
 ) -> Flags:
     """Tell beside which chief rays (B,) a body comes within a radius (mm) on their way.
 
@@ -102,19 +102,18 @@ def near(
     less than what lies within the radius.
     """
     s = scene.solids
-    enter, leave = crossings(s, solids, radius)
-    limit = hits.distance[:, None]
-    close = solids.candidate & (enter <= np.minimum(leave, limit)) & (leave > 0.0)
-    rows = np.flatnonzero(hits.kind == SOLID)
-    close[rows, hits.row[rows]] = False
-    target = np.full(len(limit), -2)
+    on_face = hits.kind == FACE
+    target = np.full(len(radius), -2)
     if len(scene.faces.owner):
-        on_face = hits.kind == FACE
         target = np.where(on_face, scene.faces.owner[np.where(on_face, hits.row, 0)], -2)
-    close &= ~(scene.close & (s.owner == target[:, None]))
-    result: Flags = close.any(axis=1)
+    beam, solid, enter, leave = pairs(front, scene, passed, hits.distance, radius)
+    close = (enter <= np.minimum(leave, hits.distance[beam])) & (leave > 0.0)
+    close &= (hits.kind[beam] != SOLID) | (hits.row[beam] != solid)
+    close &= ~(scene.close[solid] & (s.owner[solid] == target[beam]))
+    result = np.zeros(len(radius), dtype=np.bool_)
+    result[beam[close]] = True
     if len(scene.faces.owner):
-        result |= _near_faces(front, scene, faces, radius, limit, target)
+        result |= _near_faces(front, scene, faces, radius, hits.distance[:, None], target)
     return result
 
 

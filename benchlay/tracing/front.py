@@ -117,6 +117,10 @@ class Front:
         """Return some of the beams."""
         return Front(self.ints[:, rows], self.floats[:, rows])
 
+    def part(self, rows: slice) -> Front:
+        """Return a view of neighbouring beams."""
+        return Front(self.ints[:, rows], self.floats[:, rows])
+
     def twice(self) -> Front:
         """Return all beams, and all of them again."""
         return Front(

@@ -1,8 +1,8 @@
-"""Traces in batches: all live beams of a kind meet what they meet together.
+"""Traces in batches: all live beams meet what they meet together.
 
-A batch has a high price and a beam in it a low one, so beams are sorted by what they need:
-those inside glass (cheap) go first, then those outside, and those whose cross-sections must
-be divided wait until no others are left.
+A batch has a high price and a beam in it a low one, so all that live are advanced together,
+inside glass or outside, and those whose cross-sections must be divided wait until no others
+are left.
 """
 
 from __future__ import annotations
@@ -18,7 +18,7 @@ from benchlay.tracing.bulk import passage
 from benchlay.tracing.children import children
 from benchlay.tracing.coverage import covered, face_covers, near, radius_of, reach_of
 from benchlay.tracing.front import OUTSIDE, Front, join
-from benchlay.tracing.hits import FACE, NOTHING, Hits, inside_hits, nearest
+from benchlay.tracing.hits import FACE, Hits, inside_hits, nearest
 from benchlay.tracing.run_state import RunState
 from benchlay.tracing.section import Cut, cut, uncut
 from benchlay.tracing.ways import Ways
@@ -65,102 +65,66 @@ def run(front: Front, scene: Scene, ways: Ways, floor_w: Floats) -> Traced:
         Power below which a beam is booked and not followed, W, by wavelength.
     """
     state = RunState(scene, ways, floor_w)
-    queue = _Queue(front)
+    live, waiting = front, list[_Ready]()
     for _ in range(MOST_BATCHES):
-        if queue.empty or state.count > MOST_BEAMS:
+        if state.count > MOST_BEAMS or not (len(live) or waiting):
             break
-        if queue.inside:
-            ready, wanted = _meet_inside(join(queue.take_inside()), state)
-        elif queue.outside:
-            ready, wanted = _meet_outside(join(queue.take_outside()), state)
-        else:
-            queue.add(_advance(_joined(queue.take_waiting()), state, cutting=True))
+        if not len(live):
+            live, waiting = _advance(_joined(waiting), state, cutting=True), []
             continue
+        ready, wanted = _meet(live, state)
         if wanted.any():
-            queue.waiting.append(ready.take(np.flatnonzero(wanted)))
-            ready = ready.take(np.flatnonzero(~wanted))
-        if len(ready.reach):
-            queue.add(_advance(ready, state, cutting=False))
+            waiting.append(ready.take(wanted.nonzero()[0]))
+            ready = ready.take((~wanted).nonzero()[0])
+        live = _advance(ready, state, cutting=False)
     bounded = np.zeros(len(scene.variants), dtype=np.bool_)
-    for rest in queue.rest():
+    for rest in (live, *(ready.front for ready in waiting)):
         bounded[rest.variant] = True
         # The leg they would have been is not there: they are booked with their parents.
         state.book(rest.parent - state.count, SINK["below-floor"], -1, rest.power)
     return Traced(*_finished(state), bounded)
 
 
-class _Queue:
-    """Live beams by what they need."""
-
-    def __init__(self, front: Front) -> None:
-        self.inside: list[Front] = []
-        self.outside: list[Front] = [front] if len(front) else []
-        self.waiting: list[_Ready] = []
-
-    @property
-    def empty(self) -> bool:
-        return not (self.inside or self.outside or self.waiting)
-
-    def add(self, front: Front) -> None:
-        inside = front.within != OUTSIDE
-        count = int(inside.sum())
-        if count == len(front):
-            self.inside += [front] if count else []
-            return
-        if count:
-            self.inside.append(front.take(inside))
-        self.outside.append(front.take(~inside) if count else front)
-
-    def take_inside(self) -> list[Front]:
-        taken, self.inside = self.inside, []
-        return taken
-
-    def take_outside(self) -> list[Front]:
-        taken, self.outside = self.outside, []
-        return taken
-
-    def take_waiting(self) -> list[_Ready]:
-        taken, self.waiting = self.waiting, []
-        return taken
-
-    def rest(self) -> list[Front]:
-        return [*self.inside, *self.outside, *(ready.front for ready in self.waiting)]
-
-
 def _joined(parts: list[_Ready]) -> _Ready:
     return _Ready(
         join([part.front for part in parts]),
-        Hits(
-            *(np.concatenate(values) for values in zip(*(part.hits for part in parts), strict=True))
-        ),
+        Hits.joined([part.hits for part in parts]),
         np.concatenate([part.moments for part in parts], axis=1),
         np.concatenate([part.reach for part in parts]),
     )
 
 
-def _meet_inside(front: Front, state: RunState) -> tuple[_Ready, Flags]:
-    """Find the faces that beams inside glass meet, and which beams these do not cover.
+def _meet(front: Front, state: RunState) -> tuple[_Ready, Flags]:
+    """Find what beams meet, and which of them must be cut; those inside glass come first.
 
-    A beam that meets no face of its optic within the outline ends on the barrel; how far
-    away does not matter, since nothing goes on from there.
+    A beam inside glass that meets no face of its optic within the outline ends on the
+    barrel; how far away does not matter, since nothing goes on from there.
     """
-    hits = inside_hits(front, state.scene)
-    end = moments.propagate(front.moments, hits.distance, front.index)
-    reach = reach_of(front, state.floor_w)
-    whole = (hits.kind == NOTHING) | face_covers(state.scene, hits, reach * radius_of(end))
-    return _Ready(front, hits, end, reach), ~whole & ~front.lump
-
-
-def _meet_outside(front: Front, state: RunState) -> tuple[_Ready, Flags]:
-    """Find what beams outside glass meet, and which of them something may cut."""
     scene = state.scene
-    hits, faces, solids = nearest(front, scene)
+    outside = front.within == OUTSIDE
+    order = outside.argsort(kind="stable")
+    first = len(order) - int(np.count_nonzero(outside))
+    front = front.take(order) if first else front
+    parts = []
+    if first:
+        parts.append(inside_hits(front.part(slice(0, first)), scene))
+    if first < len(order):
+        free = front.part(slice(first, None))
+        hits, faces, passed = nearest(free, scene)
+        parts.append(hits)
+    hits = Hits.joined(parts)
     end = moments.propagate(front.moments, hits.distance, front.index)
     reach = reach_of(front, state.floor_w)
-    stop = radius_of(end)
-    widest = reach * np.maximum(radius_of(front.moments), stop)
-    wanted = ~covered(scene, hits, solids, front, reach * stop)
-    wanted |= near(front, scene, hits, faces, solids, widest)
+    radius = radius_of(np.concatenate((front.moments[:3], end[:3]), axis=1))
+    stop = radius[len(order) :]
+    wanted = ~face_covers(scene, hits, reach * stop)
+    wanted &= hits.kind == FACE
+    if first < len(order):
+        rest = slice(first, None)
+        widest = reach[rest] * np.maximum(radius[first : len(order)], stop[rest])
+        met = hits.take(rest)
+        wanted[rest] |= ~covered(free, scene, met, (reach * stop)[rest])
+        wanted[rest] |= near(free, scene, met, faces, passed, widest)
     return _Ready(front, hits, end, reach), wanted & ~front.lump
 
 

@@ -1,7 +1,7 @@
 """What each beam's chief ray meets first.
 
-B beams, F faces, S solids, P planes. All distances in mm along the unit direction. Beams
-inside glass meet only the faces of their own optic; all others meet everything.
+B beams, F faces. All distances in mm along the unit direction. Beams inside glass meet only
+the faces of their own optic; all others meet everything.
 """
 
 from __future__ import annotations
@@ -11,34 +11,88 @@ from typing import NamedTuple
 import numpy as np
 
 from benchlay.elements._kind import Acts, Inside
-from benchlay.scene.tables import Flags, Floats, Ints, Scene, Solids
+from benchlay.scene.tables import Flags, Floats, Ints, Scene
+from benchlay.tracing.bodies import PARALLEL, Passing, pairs, passing, planes_met, through_holes
 from benchlay.tracing.front import Front
 
 SKIN_MM = 1e-7  # an optic is not met again nearer than this to where it was left
 _TOUCH_MM = 1e-9
-_PARALLEL = 1e-12
 
 NOTHING, FACE, SOLID = 0, 1, 2
 
 
-class Hits(NamedTuple):
-    """What is met first by each beam (B,).
+class Hits:
+    """What is met first by each of B beams, packed as `Front` is.
 
-    `plane` is the bounding plane by which a solid is entered, -1 where it is round there or
-    nothing of the kind was met; the last three say how a face is met.
+    Attributes
+    ----------
+    kind, row : (B,) ndarray of int
+        `NOTHING`, `FACE` or `SOLID`, and the row of the face or solid.
+    plane : (B,) ndarray of int
+        Bounding plane by which a solid is entered, -1 where it is round there or nothing of
+        the kind was met.
+    distance : (B,) ndarray of float64
+        mm.
+    slope : (B,) ndarray of float64
+        Direction . face normal.
+    left, up : (B,) ndarray of float64
+        On the face, from the middle of the outline, mm.
     """
 
-    kind: Ints
-    row: Ints  # of the face or solid
-    distance: Floats
-    plane: Ints
-    slope: Floats  # direction . face normal
-    left: Floats  # mm from the middle of the outline
-    up: Floats
+    __slots__ = ("floats", "ints")
 
-    def take(self, rows: Ints) -> Hits:
+    def __init__(self, ints: Ints, floats: Floats) -> None:
+        self.ints = ints
+        self.floats = floats
+
+    def take(self, rows: Ints | slice) -> Hits:
         """Return the hits of some beams."""
-        return Hits(*(value[rows] for value in self))
+        return Hits(self.ints[:, rows], self.floats[:, rows])
+
+    @staticmethod
+    def joined(parts: list[Hits]) -> Hits:
+        """Return the hits of several sets of beams as one."""
+        if len(parts) == 1:
+            return parts[0]
+        return Hits(
+            np.concatenate([part.ints for part in parts], axis=1),
+            np.concatenate([part.floats for part in parts], axis=1),
+        )
+
+    @property
+    def kind(self) -> Ints:  # noqa: D102 (see the class)
+        value: Ints = self.ints[0]
+        return value
+
+    @property
+    def row(self) -> Ints:  # noqa: D102 (see the class)
+        value: Ints = self.ints[1]
+        return value
+
+    @property
+    def plane(self) -> Ints:  # noqa: D102 (see the class)
+        value: Ints = self.ints[2]
+        return value
+
+    @property
+    def distance(self) -> Floats:  # noqa: D102 (see the class)
+        value: Floats = self.floats[0]
+        return value
+
+    @property
+    def slope(self) -> Floats:  # noqa: D102 (see the class)
+        value: Floats = self.floats[1]
+        return value
+
+    @property
+    def left(self) -> Floats:  # noqa: D102 (see the class)
+        value: Floats = self.floats[2]
+        return value
+
+    @property
+    def up(self) -> Floats:  # noqa: D102 (see the class)
+        value: Floats = self.floats[3]
+        return value
 
 
 class FacesMet(NamedTuple):
@@ -50,36 +104,6 @@ class FacesMet(NamedTuple):
     up: Floats
     valid: Flags  # inside the outline, from a side that counts
 
-    def take(self, rows: Ints) -> FacesMet:
-        """Return those of some beams."""
-        return FacesMet(*(value[rows] for value in self))
-
-
-class SolidsMet(NamedTuple):
-    """Where chief rays meet solids, and the figures they come from."""
-
-    slope: Floats  # (B, P) direction . plane normal
-    gap: Floats  # (B, P) offset - normal . position
-    round: RoundsMet
-    candidate: Flags  # (B, S) present, and not the beam's own
-
-    def take(self, rows: Ints) -> SolidsMet:
-        """Return those of some beams."""
-        return SolidsMet(
-            self.slope[rows],
-            self.gap[rows],
-            RoundsMet(*(v[rows] for v in self.round)),
-            self.candidate[rows],
-        )
-
-
-class RoundsMet(NamedTuple):
-    """Coefficients of chief rays against cylinders (B, C): a t² + 2 b t + c0 = radius²."""
-
-    a: Floats
-    b: Floats
-    c0: Floats
-
 
 def inside_hits(front: Front, scene: Scene) -> Hits:
     """Return which face of its own optic each beam inside glass meets."""
@@ -88,7 +112,7 @@ def inside_hits(front: Front, scene: Scene) -> Hits:
     normal, away = f.normal[rows], f.origin[rows] - front.position[:, None, :]
     slope = np.einsum("bki,bi->bk", normal, front.direction)
     gap = np.einsum("bki,bki->bk", normal, away)
-    leaving = (slope > _PARALLEL) | ((f.inside[rows] == Inside.BOTH) & (np.abs(slope) > _PARALLEL))
+    leaving = (slope > PARALLEL) | ((f.inside[rows] == Inside.BOTH) & (np.abs(slope) > PARALLEL))
     distance = np.where(leaving, gap, np.inf) / np.where(leaving, slope, 1.0)
     to_face = front.direction[:, None, :] * np.where(leaving, distance, 0.0)[..., None] - away
     left = np.einsum("bki,bki->bk", f.left[rows], to_face) - f.middle[rows, 0]
@@ -106,13 +130,8 @@ def inside_hits(front: Front, scene: Scene) -> Hits:
     at = (np.arange(len(best)), best)
     met = np.isfinite(distance[at])
     return Hits(
-        np.where(met, FACE, NOTHING),
-        rows[at],
-        np.where(met, distance[at], 0.0),
-        np.full(len(best), -1),
-        slope[at],
-        left[at],
-        up[at],
+        np.array((np.where(met, FACE, NOTHING), rows[at], np.full(len(best), -1))),
+        np.array((np.where(met, distance[at], 0.0), slope[at], left[at], up[at])),
     )
 
 
@@ -129,7 +148,7 @@ def faces_met(front: Front, scene: Scene) -> FacesMet:
     onward = front.direction @ scene.fixed.face_axes
     start = scene.fixed.face_offsets - front.position @ scene.fixed.face_axes
     slope = onward[:, :count]
-    flat = np.abs(slope) < _PARALLEL
+    flat = np.abs(slope) < PARALLEL
     distance = np.where(flat, np.inf, start[:, :count]) / np.where(flat, 1.0, slope)
     along = np.where(flat, 0.0, distance)
     left = along * onward[:, count : 2 * count] - start[:, count : 2 * count]
@@ -142,105 +161,38 @@ def faces_met(front: Front, scene: Scene) -> FacesMet:
     return FacesMet(distance, slope, left, up, valid)
 
 
-def solids_met(front: Front, scene: Scene, faces: FacesMet) -> SolidsMet:
-    """Meet all solids from outside."""
-    s, planes = scene.solids, len(scene.solids.plane_solid)
-    onward = front.direction @ scene.fixed.plane_axes
-    start = front.position @ scene.fixed.plane_axes
-    along, mixed = onward[:, planes:], start[:, planes:] - scene.fixed.axis_offset
-    square = np.einsum("ij,ij->i", front.position, front.position)[:, None]
-    apart2 = square + scene.fixed.axis_square - 2.0 * (front.position @ s.axis_point.T)
-    dotted = np.einsum("ij,ij->i", front.position, front.direction)[:, None]
-    rounds = RoundsMet(
-        1.0 - along * along,
-        dotted - front.direction @ s.axis_point.T - mixed * along,
-        apart2 - mixed * mixed,
-    )
-    candidate = s.present[front.variant] & ~_own(front, scene, faces)
-    left = np.flatnonzero(front.body >= 0)
-    candidate[left, front.body[left]] = False
-    return SolidsMet(onward[:, :planes], s.plane_offset - start[:, :planes], rounds, candidate)
-
-
-def _own(front: Front, scene: Scene, faces: FacesMet) -> Flags:
-    """Tell which solids hold the optic that a beam comes from, or that it goes to.
-
-    Light that leaves an optic, or meets its face inside the outline, passes the box that
-    holds it; what falls beside the outline is booked by the partition of the cross-section.
-    """
-    s = scene.solids
-    met = (faces.valid.astype(np.float32) @ scene.owner_of_face) > 0.0
-    others = np.zeros((len(met), len(scene.sources) + 1), dtype=np.bool_)
-    by_owner = np.concatenate((met, others), axis=1)
-    own: Flags = scene.close & (by_owner[:, s.owner] | (front.owner[:, None] == s.owner))
-    return own
-
-
-def crossings(s: Solids, met: SolidsMet, margin: Floats | None = None) -> tuple[Floats, Floats]:
-    """Return where rays enter and leave each solid (B, S), grown by a margin (B,) in mm."""
-    gap = met.gap if margin is None else met.gap + margin[:, None]
-    flat = np.abs(met.slope) < _PARALLEL
-    distance = gap / np.where(flat, 1.0, met.slope)
-    enter = np.where(met.slope < 0.0, distance, -np.inf)
-    leave = np.where(met.slope > 0.0, distance, np.inf)
-    if flat.any():
-        enter[flat] = np.where(gap[flat] < 0.0, np.inf, -np.inf)
-        leave[flat] = np.inf
-    first = np.maximum.reduceat(enter, s.plane_start, axis=1)
-    last = np.minimum.reduceat(leave, s.plane_start, axis=1)
-    if len(s.axis_solid):
-        _narrow_to_rounds(s, met.round, margin, first, last)
-    return first, last
-
-
-def _narrow_to_rounds(
-    s: Solids, met: RoundsMet, margin: Floats | None, enter: Floats, leave: Floats
-) -> None:
-    radius = s.axis_radius if margin is None else s.axis_radius + margin[:, None]
-    c = met.c0 - radius * radius
-    square = met.b * met.b - met.a * c
-    axial = met.a < _PARALLEL
-    root = np.sqrt(np.maximum(square, 0.0))
-    scale = 1.0 / np.where(axial, 1.0, met.a)
-    missed = np.where(axial, c > 0.0, square < 0.0)
-    first = np.where(axial, -np.inf, (-met.b - root) * scale)
-    last = np.where(axial, np.inf, (-met.b + root) * scale)
-    enter[:, s.axis_solid] = np.maximum(enter[:, s.axis_solid], np.where(missed, np.inf, first))
-    leave[:, s.axis_solid] = np.minimum(leave[:, s.axis_solid], np.where(missed, -np.inf, last))
-
-
-def nearest(front: Front, scene: Scene) -> tuple[Hits, FacesMet, SolidsMet]:
+def nearest(front: Front, scene: Scene) -> tuple[Hits, FacesMet, Passing]:
     """Return what each beam outside glass meets first: a face, a solid, or nothing."""
-    s = scene.solids
     faces = faces_met(front, scene)
-    solids = solids_met(front, scene, faces)
-    beams = np.arange(len(front.variant))
+    beams = np.arange(len(front))
     face, to_face = _first(np.where(faces.valid, faces.distance, np.inf), beams)
-    enter, leave = crossings(s, solids)
-    blocked = solids.candidate & (enter <= leave) & (leave > SKIN_MM)
-    if len(scene.fixed.pierced) and blocked[:, scene.fixed.pierced].any():
-        blocked &= ~_through_hole(front, s)
-    solid, to_solid = _first(np.where(blocked, np.maximum(enter, 0.0), np.inf), beams)
+    passed = passing(front, scene, _aimed(faces, scene))
+    solid, to_solid, enter = _first_solid(front, scene, passed, beams)
     at_face = to_face <= to_solid + SKIN_MM
     distance = np.where(at_face, to_face, to_solid)
     kind = np.where(np.isfinite(distance), np.where(at_face, FACE, SOLID), NOTHING)
     plane = np.full(len(beams), -1)
-    rows = np.flatnonzero(kind == SOLID)
+    rows = (kind == SOLID).nonzero()[0]
     if len(rows):
-        plane[rows] = _plane_entered(s, solids, solid[rows], rows, enter[rows, solid[rows]])
+        plane[rows] = _plane_entered(front, scene, rows, solid[rows], enter[rows])
     at = (beams, face)
-    there = len(scene.faces.owner) > 0
     nothing = np.zeros(len(beams))
+    there = len(scene.faces.owner) > 0
+    on_face = (faces.slope[at], faces.left[at], faces.up[at]) if there else (nothing,) * 3
     hits = Hits(
-        kind,
-        np.where(kind == FACE, face, solid),
-        np.where(kind == NOTHING, scene.reach_mm, distance),
-        plane,
-        faces.slope[at] if there else nothing,
-        faces.left[at] if there else nothing,
-        faces.up[at] if there else nothing,
+        np.array((kind, np.where(kind == FACE, face, solid), plane)),
+        np.array((np.where(kind == NOTHING, scene.reach_mm, distance), *on_face)),
     )
-    return hits, faces, solids
+    return hits, faces, passed
+
+
+def _aimed(faces: FacesMet, scene: Scene) -> Flags:
+    """Tell which owners' optics (B, owners) lie on the way, wherever and however far."""
+    count = len(scene.elements) + len(scene.sources) + 1
+    aimed = np.zeros((len(faces.valid), count), dtype=np.bool_)
+    beam, face = faces.valid.nonzero()
+    aimed[beam, scene.faces.owner[face]] = True
+    return aimed
 
 
 def _first(distance: Floats, beams: Ints) -> tuple[Ints, Floats]:
@@ -250,37 +202,30 @@ def _first(distance: Floats, beams: Ints) -> tuple[Ints, Floats]:
     return row, distance[beams, row]
 
 
-def _plane_entered(s: Solids, met: SolidsMet, solid: Ints, rows: Ints, enter: Floats) -> Ints:
+def _first_solid(
+    front: Front, scene: Scene, passed: Passing, beams: Ints
+) -> tuple[Ints, Floats, Floats]:
+    """Return the solid that each ray meets first, how far away, and where it would be entered."""
+    beam, solid, enter, leave = pairs(front, scene, passed)
+    blocked = (enter <= leave) & (leave > SKIN_MM)
+    if len(scene.fixed.pierced) and np.isin(solid[blocked], scene.fixed.pierced).any():
+        blocked &= ~through_holes(front, scene)[beam, solid]
+    beam, solid, enter = beam[blocked], solid[blocked], enter[blocked]
+    table = np.full((len(beams), len(scene.solids.owner)), np.inf)
+    table[beam, solid] = np.maximum(enter, 0.0)
+    first, distance = _first(table, beams)
+    entered = np.zeros_like(table)
+    entered[beam, solid] = enter
+    return first, distance, entered[beams, first] if table.shape[1] else distance
+
+
+def _plane_entered(front: Front, scene: Scene, rows: Ints, solid: Ints, enter: Floats) -> Ints:
     """Return the plane by which each beam enters its solid; -1 where it is round there."""
-    slope = met.slope[rows]
-    own = (s.plane_solid == solid[:, None]) & (slope < -_PARALLEL)
-    distance = np.where(own, met.gap[rows], -np.inf) / np.where(own, slope, 1.0)
-    distance = np.where(own, distance, -np.inf)
-    plane: Ints = distance.argmax(axis=1)
-    flat = np.abs(distance[np.arange(len(rows)), plane] - enter) <= SKIN_MM
-    return np.where(flat, plane, -1)
-
-
-def _through_hole(front: Front, s: Solids) -> Flags:
-    """Tell which solids (B, S) a ray passes through one of their openings."""
-    passed = np.zeros((len(front.variant), len(s.owner)), dtype=np.bool_)
-    through = _in_hole(front, s, s.hole_centre) & _in_hole(front, s, s.hole_centre + s.hole_through)
-    for hole in np.flatnonzero(through.any(axis=0)):
-        passed[:, s.hole_solid[hole]] |= through[:, hole]
-    return passed
-
-
-def _in_hole(front: Front, s: Solids, centre: Floats) -> Flags:
-    slope = front.direction @ s.hole_through.T
-    flat = np.abs(slope) < _PARALLEL
-    gap = np.einsum("ij,ij->i", centre, s.hole_through) - front.position @ s.hole_through.T
-    distance = np.where(flat, 0.0, gap) / np.where(flat, 1.0, slope)
-    places = []
-    for k in (0, 1):
-        axis = s.hole_axes[:, k]
-        start = front.position @ axis.T - np.einsum("ij,ij->i", centre, axis)
-        along = start + distance * (front.direction @ axis.T)
-        places.append(np.abs(along) / np.einsum("ij,ij->i", axis, axis))
-    a, b = places
-    inside: Flags = ~flat & (np.where(s.hole_round, a * a + b * b, np.maximum(a, b)) <= 1.0)
-    return inside
+    slope, gap = planes_met(front, scene, rows, solid)
+    inward = slope < -PARALLEL
+    distance = np.where(inward, gap, -np.inf) / np.where(inward, slope, 1.0)
+    distance[~inward] = -np.inf
+    place = distance.argmax(axis=1)
+    every = np.arange(len(rows))
+    flat = np.abs(distance[every, place] - enter) <= SKIN_MM
+    return np.where(flat, scene.fixed.plane_of[solid, place], -1)
