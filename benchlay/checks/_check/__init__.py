@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from benchlay.checks._check.bodies import Body, distance_mm, middle_between, overlap_mm
 from benchlay.checks._check.context import Context
 from benchlay.checks._check.limits import LineLimit, floors_w, limits_of
 from benchlay.checks._check.meetings import Loss, Mark
@@ -23,6 +24,7 @@ from benchlay.checks._check.words import (
 )
 
 __all__ = [
+    "Body",
     "Check",
     "Context",
     "Found",
@@ -34,12 +36,15 @@ __all__ = [
     "Unevaluated",
     "above",
     "angle_text",
+    "distance_mm",
     "event_words",
     "floors_w",
     "irradiance_text",
     "length_text",
     "limits_of",
     "listed",
+    "middle_between",
+    "overlap_mm",
     "place_words",
     "power_text",
     "room_at",

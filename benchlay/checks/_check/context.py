@@ -9,6 +9,7 @@ from math import nan
 
 import numpy as np
 
+from benchlay.checks._check.bodies import Bodies
 from benchlay.checks._check.limits import LineLimit
 from benchlay.checks._check.meetings import Meetings
 from benchlay.checks._check.power import accessible_w, peak_irradiance_w_m2
@@ -70,6 +71,11 @@ class Context:
     def meetings(self) -> Meetings:
         """Where working beams meet their optics, and what they lose on the way."""
         return Meetings(self.trace, self.routes)
+
+    @cached_property
+    def bodies(self) -> Bodies:
+        """What stands on the bench, seen from above."""
+        return Bodies(self.trace.scene)
 
     # ------------------------------------------------------------------ limits
 
