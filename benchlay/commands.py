@@ -17,11 +17,13 @@ from typing import TYPE_CHECKING, NamedTuple, Protocol, TypeAlias, TypeVar
 from benchlay.document.problems import Problem
 from benchlay.document.span import Span
 from benchlay.findings import Severity
-from benchlay.report.model import LayoutErrors, Review, TraceResult
+from benchlay.report.model import LayoutErrors, Review
 from benchlay.report.words import Ink
 
 if TYPE_CHECKING:
     from pathlib import Path
+
+    from benchlay.report.details import TraceResult
 
 Result = TypeVar("Result")
 Files: TypeAlias = Mapping[str, bytes]

@@ -19,9 +19,10 @@ from benchlay.document.span import Span
 from benchlay.document.words import nearest
 from benchlay.layout import AS_DRAWN, LayoutSource, read_layout
 from benchlay.placing import Placed
-from benchlay.report.model import LayoutErrors, Reported, Review, TraceResult
+from benchlay.report.model import LayoutErrors, Reported, Review
 
 if TYPE_CHECKING:
+    from benchlay.report.details import TraceResult
     from benchlay.results.review import Checked
     from benchlay.tracing import Trace
     from benchlay.zones import Zones
@@ -212,6 +213,7 @@ def _drawn(
 
 
 def _traced(traced: Trace, file: str, state: str) -> TraceResult:
+    from benchlay.report.details import TraceResult
     from benchlay.results.beam_rows import beam_rows
     from benchlay.results.ledger import ledgers
     from benchlay.results.placed import poses

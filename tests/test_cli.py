@@ -13,7 +13,8 @@ import benchlay
 from benchlay import cli
 from benchlay.document.problems import Problem
 from benchlay.document.span import Span
-from benchlay.report.model import LayoutErrors, TraceResult
+from benchlay.report.details import TraceResult
+from benchlay.report.model import LayoutErrors
 
 
 @pytest.fixture

@@ -9,7 +9,8 @@ from typing import Any, TypeAlias
 from benchlay.document.problems import Problem
 from benchlay.exposure.cautions import CAUTIONS as EXPOSURE_CAUTIONS
 from benchlay.report.cautions import CAUTIONS
-from benchlay.report.model import LayoutErrors, Ledger, Review, TraceResult
+from benchlay.report.details import Ledger, TraceResult
+from benchlay.report.model import LayoutErrors, Review
 from benchlay.report.numbers import decimals_of, rounded, settled
 
 Json: TypeAlias = Any

@@ -1,4 +1,4 @@
-"""Results as plain data, field by field what the JSON says.
+"""Results as plain data, field by field what the JSON says; what is said in full is in `details`.
 
 The pipeline fills these; every form of output (JSON, text, later the record) reads them and
 nothing else. A field's name is its JSON key; a trailing underscore, put where the key is a
@@ -8,15 +8,24 @@ and mm are written as users of the JSON see them.
 
 from __future__ import annotations
 
-from collections.abc import Mapping
-from typing import NamedTuple, TypeAlias
+from typing import TYPE_CHECKING, NamedTuple, TypeAlias
 
 from benchlay.document.problems import Problem
 from benchlay.findings import MergedFinding, Severity
 
+if TYPE_CHECKING:
+    from benchlay.report.details import (
+        Cavity,
+        Coverage,
+        HandedOver,
+        Ledger,
+        Match,
+        PanelLoad,
+        RouteResult,
+        Zone,
+    )
+
 Point: TypeAlias = tuple[float, float, float]
-Ring: TypeAlias = tuple[tuple[float, float], ...]
-Angles: TypeAlias = tuple[float, float]
 
 
 class Acceptance(NamedTuple):
@@ -82,127 +91,6 @@ class LimitUsed(NamedTuple):
     overridden: bool
 
 
-class Polarization(NamedTuple):
-    """State of polarization of a beam; angles from its own horizontal."""
-
-    degree: float
-    angle_deg: float | None
-    ellipticity_deg: float | None
-    horizontal: Point
-
-
-class RouteResult(NamedTuple):
-    """What became of a route in a state."""
-
-    route: str
-    state: str
-    arrives: bool
-    power_W: float
-    transmission: float
-    path_mm: float
-    optical_path_mm: float
-    polarization: Polarization | None
-
-
-class Sink(NamedTuple):
-    """Where some of the emitted power ended."""
-
-    kind: str
-    name: str | None
-    wavelength_nm: float
-    power_W: float
-    largest_W: float | None = None
-
-
-class Ledger(NamedTuple):
-    """The power of one source in one state: what was emitted, where it all went."""
-
-    state: str
-    source: str
-    emitted_W: float
-    sinks: tuple[Sink, ...]
-    unaccounted_W: float
-
-
-class Zone(NamedTuple):
-    """A polygon in which a beam exceeds the exposure limit; outer ring first, then holes."""
-
-    state: str
-    kind: str
-    wavelength_nm: float
-    reason: str
-    area_m2: float
-    reach_m: float
-    polygon: tuple[Ring, ...]
-
-
-class Gap(NamedTuple):
-    """Directions in which nothing would stop a beam; angles in degrees."""
-
-    id: str
-    azimuth: Angles
-    elevation: Angles
-    solid_angle_sr: float
-    through: str
-    width_mm: float
-
-
-class Coverage(NamedTuple):
-    """How much of what surrounds a place on the bench is closed."""
-
-    state: str
-    from_: str
-    covered: float
-    gaps: tuple[Gap, ...]
-
-
-class PanelLoad(NamedTuple):
-    """The worst a panel takes, beside what it withstands."""
-
-    panel: str
-    worst_irradiance_W_cm2: float | None
-    state: str | None
-    withstands_W_cm2: float | None
-    margin: float | None
-
-
-class Cavity(NamedTuple):
-    """Whether a declared cavity holds a mode."""
-
-    cavity: str
-    stable: bool
-    g: tuple[float, ...]
-    waists_mm: tuple[float, ...]
-    spots_mm: Mapping[str, tuple[float, ...]]
-    loss: float
-    gain: float
-    mode_spacing_Hz: float
-
-
-class Match(NamedTuple):
-    """How far two routes that are meant to be equally long differ."""
-
-    routes: tuple[str, str]
-    difference_mm: float
-    visibility: float | None
-
-
-class Axis(NamedTuple):
-    """A ray in space."""
-
-    at: Point
-    direction: Point
-
-
-class HandedOver(NamedTuple):
-    """A beam that leaves through a port on purpose."""
-
-    through: str
-    axis: Axis
-    w_mm: tuple[float, float]
-    power_W: float
-
-
 class Review(NamedTuple):
     """Everything that is said of one layout.
 
@@ -247,58 +135,6 @@ class LayoutErrors(NamedTuple):
     layout: str
     errors: tuple[Problem, ...]
     lines: tuple[str, ...] = ()
-
-
-class BeamRow(NamedTuple):
-    """One leg of light, from where it was made to where it ends."""
-
-    beam: int
-    parent: int | None
-    source: str
-    wavelength_nm: float
-    splits: int
-    route: str | None
-    routes: tuple[str, ...]
-    leg: int | None
-    from_: str
-    from_face: str
-    to: str | None
-    to_face: str | None
-    ends: str
-    event: str
-    start: Point
-    end: Point
-    direction: Point
-    medium_index: float
-    power_W: float | None
-    power_at_end_W: float | None
-    lost_W: Mapping[str, float]
-    pulse_energy_J: float | None
-    w_start_mm: tuple[float, float]
-    w_end_mm: tuple[float, float]
-    w_axis_deg: float
-    m2: tuple[float, float]
-    optical_path_mm: float
-    polarization: Polarization | None
-    peak_irradiance_end_W_cm2: float | None
-
-
-class Pose(NamedTuple):
-    """Where an element's reference point stands and its front faces; degrees."""
-
-    at: Point
-    facing: float
-    pitch: float
-
-
-class TraceResult(NamedTuple):
-    """The light of one state."""
-
-    layout: str
-    state: str
-    beams: tuple[BeamRow, ...]
-    placed: Mapping[str, Pose]
-    ledger: tuple[Ledger, ...]
 
 
 def reported(merged: MergedFinding, accepted: Acceptance | None = None) -> Reported:

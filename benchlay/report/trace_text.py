@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 
-from benchlay.report.model import BeamRow, Ledger, TraceResult
+from benchlay.report.details import BeamRow, Ledger, TraceResult
 from benchlay.report.numbers import settled, shown
 from benchlay.report.words import tame
 

@@ -15,7 +15,7 @@ import numpy as np
 
 from benchlay.optics import coherency, moments
 from benchlay.optics.rays import cross, dot
-from benchlay.report.model import BeamRow, Polarization
+from benchlay.report.details import BeamRow, Polarization
 from benchlay.results.ends import Ends, ends_of
 from benchlay.results.frames import horizontals
 from benchlay.results.losses import losses

@@ -4,7 +4,8 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Sequence
 
-from benchlay.report.model import Review, Zone
+from benchlay.report.details import Zone
+from benchlay.report.model import Review
 from benchlay.results.handed_over import handed_over
 from benchlay.results.ledger import ledgers
 from benchlay.results.routes import route_results

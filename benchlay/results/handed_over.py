@@ -6,7 +6,7 @@ import numpy as np
 
 from benchlay.optics import moments
 from benchlay.optics.rays import bench_basis, cross, dot
-from benchlay.report.model import Axis, HandedOver
+from benchlay.report.details import Axis, HandedOver
 from benchlay.results.routes import last_legs, through_opening
 from benchlay.tracing import Trace
 

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator
 from math import fsum
 
-from benchlay.report.model import Ledger, Sink
+from benchlay.report.details import Ledger, Sink
 from benchlay.scene.tables import SINK, SINKS
 from benchlay.tracing import Trace
 

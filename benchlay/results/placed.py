@@ -6,7 +6,7 @@ from math import degrees
 
 from benchlay.placing.placed import PlacedState
 from benchlay.placing.pose import Pose
-from benchlay.report.model import Pose as ReportedPose
+from benchlay.report.details import Pose as ReportedPose
 
 _ROUNDS_TO_A_TURN = 5e-10  # degrees: printed with nine decimals this would read 360
 

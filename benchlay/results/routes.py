@@ -8,7 +8,7 @@ import numpy as np
 
 from benchlay.optics import coherency
 from benchlay.optics.rays import cross, dot
-from benchlay.report.model import RouteResult
+from benchlay.report.details import RouteResult
 from benchlay.results.beam_rows import polarizations
 from benchlay.results.frames import horizontals
 from benchlay.scene.tables import Flags, Ints

@@ -9,20 +9,18 @@ import pytest
 from benchlay.document.problems import Problem
 from benchlay.document.span import Span
 from benchlay.findings import Finding, MergedFinding, Severity
-from benchlay.report.json_out import check_document, dumps, plain, trace_document
-from benchlay.report.model import (
-    Acceptance,
+from benchlay.report.details import (
     BeamRow,
     Coverage,
     Gap,
-    LayoutErrors,
     Ledger,
     Polarization,
     Pose,
     Sink,
     TraceResult,
-    reported,
 )
+from benchlay.report.json_out import check_document, dumps, plain, trace_document
+from benchlay.report.model import Acceptance, LayoutErrors, reported
 
 FINDING_KEYS = [
     "id", "check", "severity", "states", "worst_state", "message", "expected", "remedy",

@@ -3,15 +3,8 @@
 from benchlay.document.problems import Problem
 from benchlay.document.span import Span
 from benchlay.report.cautions import CAUTIONS
-from benchlay.report.model import (
-    Acceptance,
-    CheckRun,
-    Elsewhere,
-    LayoutErrors,
-    Ledger,
-    Sink,
-    TraceResult,
-)
+from benchlay.report.details import Ledger, Sink, TraceResult
+from benchlay.report.model import Acceptance, CheckRun, Elsewhere, LayoutErrors
 from benchlay.report.text import check_text, errors_text, verdict_line
 from benchlay.report.trace_text import trace_text
 from benchlay.report.words import Ink, quoted, tame
