@@ -46,7 +46,7 @@ class Leg(NamedTuple):
     start: Place
     end: Place
     stray: bool = False
-    words: str = ""  # at the source, and where power or polarization change
+    words: str = ""  # at the source, and where power or polarization change; lines by \n
     ends: str = ""  # the sink, or optic
     radii_mm: tuple[tuple[float, float], ...] = ()  # (distance along the leg, 1/e2 radius)
     weak: bool = False  # a stray below the limit: a line, and nothing that draws the eye

@@ -26,6 +26,7 @@ _SAME_MM = 0.4
 _OVERLAP = 1e4  # of two lines of lettering: never taken
 _LINE_UNDER = 20.0  # a line that runs through the lettering
 _LEADER_CROSSES = 2.0
+_LEADER_PER_MM = 0.15
 _LEADER_THROUGH = 60.0  # a leader through other lettering
 _PER_MM = 0.25
 _GOOD = 4.0  # cheap enough to stop looking further out
@@ -133,7 +134,9 @@ class Crowd:
     ) -> tuple[float, Place] | None:
         boxes = _boxes_round(size_mm, anchor, radius + ring)
         leaders = _leaders(boxes, anchor)
+        steps = leaders[:, 2:] - leaders[:, :2]
         cost = self._costs(boxes, leaders) + _PER_MM * ring
+        cost += _LEADER_PER_MM * np.hypot(steps[:, 0], steps[:, 1])
         n = int(np.argmin(cost))
         if cost[n] >= _OVERLAP:
             return None

@@ -180,7 +180,7 @@ class _Names:
         owner = int(s.owner[beam])
         place = owners[owner] if owner < len(owners) else self._surroundings(beam)
         way = "beside" if s.event[beam] == SPILLED else "from"
-        return name, f"{name} {way} {place} {self._words(beam, first=False)}"
+        return name, f"{name} {way} {place}\n{self._words(beam, first=False)}"
 
     def _surroundings(self, beam: int) -> str:
         solid = int(self.trace.beams.start.body[beam])

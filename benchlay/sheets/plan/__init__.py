@@ -162,7 +162,11 @@ def _notes(picture: Picture, board: Board, left_out: tuple[str, ...]) -> list[st
         step = hole_step(grid, board.scale)
         every = "all" if step == 1 else f"one in {step} each way"
         drawn = f" Holes {grid.thread} at {pitch} pitch, {every} drawn."
-    out = [f"Dimensions in mm, X and Y from {datum}. Do not scale.{drawn}", levels_note(picture)]
+    out = [
+        f"Dimensions in mm, X and Y from {datum}; facing in degrees from X, anticlockwise. "
+        f"Do not scale.{drawn}",
+        levels_note(picture),
+    ]
     if left_out:
         out.append(names(left_out))
     return [*out, *picture.notes]

@@ -10,13 +10,14 @@ from benchlay.sheets.plan.board import BLOCK_GAP_MM, BLOCK_MM, Board
 from benchlay.sheets.primitives import Primitive, figure
 from benchlay.sheets.tables import Column, Table, table
 
+# As wide as six figures and a point for places, four and a point for heights and angles.
 _COLUMNS = (
-    Column("Tag", 20.0),
+    Column("Tag", 25.8),
     Column("Kind", 21.0),
-    Column("X", 16.0),
-    Column("Y", 16.0),
-    Column("Z", 11.0),
-    Column("Facing °", 17.0),
+    Column("X", 14.5),
+    Column("Y", 14.5),
+    Column("Z", 12.2),
+    Column("Facing", 13.0),
 )
 assert math.isclose(sum(column.width_mm for column in _COLUMNS), BLOCK_MM)
 
@@ -42,13 +43,13 @@ def elements(picture: Picture, board: Board) -> Iterator[Primitive]:
 def elements_table(picture: Picture, items: Sequence[Item]) -> Table:
     """Return where items stand, from the datum hole where there is one."""
     rows = tuple(_row(item, picture) for item in items)
-    origin = "X, Y FROM DATUM" if picture.holes else "X, Y FROM NEAR LEFT CORNER"
-    return Table(f"ELEMENTS, {origin}", _COLUMNS, rows, "the layout", most_lines=1)
+    origin = "DATUM" if picture.holes else "NEAR LEFT CORNER"
+    return Table(f"ELEMENTS, X, Y FROM {origin}", _COLUMNS, rows, "the layout", most_lines=1)
 
 
 def _row(item: Item, picture: Picture) -> tuple[str, ...]:
     x, y = picture.holes.first if picture.holes else (0.0, 0.0)
     numbers = (item.at[0] - x, item.at[1] - y, item.at[2])
     lengths = (figure(value, 1, picture.decimal) for value in numbers)
-    facing = figure(item.facing_deg % 360.0, 2, picture.decimal)
+    facing = figure(round(item.facing_deg, 1) % 360.0, 1, picture.decimal)
     return (item.name, item.kind, *lengths, facing)

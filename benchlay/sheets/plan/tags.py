@@ -89,6 +89,7 @@ def _place(tag: _Wanted, board: Board) -> Place | None:
         x, y = ((tag.within[n] + tag.within[n + 2]) / 2 for n in (0, 1))
         box = Window(x - size[0] / 2, y - size[1] / 2, x + size[0] / 2, y + size[1] / 2)
         if board.crowd.take(box):
+            board.crowd.add_box(tag.within)  # no other tag stands in the body
             return Place(box, None)
     return board.crowd.place(size, tag.anchors) if tag.anchors else None
 
@@ -186,7 +187,7 @@ def _item_tag(item: Item, picture: Picture, board: Board) -> _Wanted:
 def _leg_tags(picture: Picture, board: Board, *, stray: bool) -> Iterator[_Wanted]:
     for leg in picture.legs:
         if leg.words and leg.stray is stray:
-            lines = (("TAGS", plain(leg.words), SMALL_MM),)
+            lines = tuple(("TAGS", plain(part), SMALL_MM) for part in leg.words.split("\n"))
             border = "rounded" if stray else "square"
             anchors = tuple(_on_leg(leg, board))
             layer = layer_of(leg) if stray else "TAGS"

@@ -1,6 +1,5 @@
 """Plans drawn from layouts, read back by a reader of DXF that knows nothing of benchlay."""
 
-import os
 import re
 from pathlib import Path
 
@@ -33,15 +32,17 @@ def drawn(request):
 
 
 @pytest.fixture
-def entities(drawn, tmp_path, monkeypatch):
+def entities(drawn, tmp_path):
     """Layer, kind, words and geometry of every entity inside the view, as GDAL reads it."""
-    monkeypatch.setitem(os.environ, "DXF_ENCODING", "UTF-8")
-    monkeypatch.setitem(os.environ, "DXF_INLINE_BLOCKS", "FALSE")
     pyogrio = pytest.importorskip("pyogrio")
     file = tmp_path / "plan.dxf"
     file.write_bytes(dxf.write(drawn.sheet))
-    pyogrio.set_gdal_config_options({"DXF_ENCODING": "UTF-8", "DXF_INLINE_BLOCKS": "FALSE"})
-    meta, _, shapes, fields = pyogrio.raw.read(file, layer="entities")
+    options = {"DXF_ENCODING": "UTF-8", "DXF_INLINE_BLOCKS": "FALSE"}
+    pyogrio.set_gdal_config_options(options)
+    try:
+        meta, _, shapes, fields = pyogrio.raw.read(file, layer="entities")
+    finally:
+        pyogrio.set_gdal_config_options(dict.fromkeys(options))
     columns = dict(zip(meta["fields"], fields, strict=True))
     return [
         {"layer": layer, "kind": kind, "block": block, "shape": shapely.from_wkb(shape)}
