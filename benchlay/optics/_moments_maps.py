@@ -93,13 +93,11 @@ def scale_second(m: Floats, factor: ArrayLike) -> Floats:
     f = np.asarray(factor, dtype=np.float64)
     inverse = 1.0 / f
     out = np.empty((10, *np.broadcast_shapes(f.shape, m.shape[1:])))
-    out[XX], out[XU], out[YV], out[UU] = m[XX], m[XU], m[YV], m[UU]
-    out[XY] = m[XY] * f
-    out[YY] = m[YY] * (f * f)
-    out[XV] = m[XV] * inverse
-    out[YU] = m[YU] * f
-    out[UV] = m[UV] * inverse
-    out[VV] = m[VV] * (inverse * inverse)
+    out[:] = m
+    out[XY : YU + 1 : YU - XY] *= f  # of xy and yu
+    out[XV : UV + 1 : UV - XV] *= inverse
+    out[YY] *= f * f
+    out[VV] *= inverse * inverse
     return out
 
 

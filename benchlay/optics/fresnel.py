@@ -131,6 +131,38 @@ def amplitudes(n_in: ArrayLike, n_out: ArrayLike, cos_in: ArrayLike) -> Amplitud
     return Amplitudes(rs, rp, ts, tp, f.q.real / f.n1c1)
 
 
+def dielectric(n_in: Floats, n_out: Floats, cos_in: Floats) -> tuple[Floats, ...]:
+    """Field coefficients of faces between clear media below the critical angle.
+
+    Parameters
+    ----------
+    n_in, n_out : (N,) ndarray of float64
+        Real indices on both sides.
+    cos_in : (N,) ndarray of float64
+        Cosine of the angle of incidence, at which light is refracted on every row.
+
+    Returns
+    -------
+    rs, rp, ts, tp : (N,) ndarray of float64
+        As `amplitudes` gives them, in real numbers, and with ts and tp in units of power:
+        their squares are the transmitted shares.
+    """
+    c1 = np.maximum(cos_in, _GRAZING)
+    n1c1 = n_in * c1
+    contrast = (n_out - n_in) * (n_out + n_in)
+    q = np.sqrt(np.maximum(contrast + n1c1 * n1c1, 0.0))
+    n2n2, n1n1 = n_out * n_out, n_in * n_in
+    below_s, below_p = q + n1c1, n2n2 * c1 + n_in * q
+    brewster = n2n2 * (c1 * c1) - n1n1 * ((1.0 - c1) * (1.0 + c1))
+    across = 2.0 * np.sqrt(n1c1 * q)
+    return (
+        -contrast / (below_s * below_s),
+        contrast * brewster / (below_p * below_p),
+        across / below_s,
+        across * n_out / below_p,
+    )
+
+
 def powers(n_in: ArrayLike, n_out: ArrayLike, cos_in: ArrayLike) -> Powers:
     r"""Shares of power reflected at and transmitted into the second medium.
 

@@ -7,6 +7,7 @@ import numpy as np
 from benchlay.elements._kind import Acts, Inside
 from benchlay.optics import coherency, moments
 from benchlay.optics.rays import dot
+from benchlay.optics.turning import turn
 from benchlay.scene.tables import SINK, Floats, Ints, Scene
 from benchlay.tracing.faces import Meeting, divide, plane_of_incidence
 from benchlay.tracing.front import OUTSIDE, REFLECTED, SPILLED, TRANSMITTED, Front, join
@@ -86,14 +87,13 @@ def _from_solids(core: Front, hits: Hits, rows: Ints, state: RunState) -> list[F
 def _mirrored(beam: Front, normal: Floats, share: Floats) -> Front:
     """Return the specular share of light on an opaque surface: an ideal mirror's phases."""
     s, cos, sin = plane_of_incidence(beam.direction, normal, beam.axis)
-    j = coherency.rotate(beam.coherency, cos, sin)
-    m = moments.rotate(beam.moments, cos, sin)
+    light = turn(beam.light, cos, sin)
     root = np.sqrt(share)
     return beam.changed(
         direction=beam.direction - (2.0 * dot(beam.direction, normal))[:, None] * normal,
         axis=s,
-        coherency=coherency.diagonal(j, -root, root),
-        moments=moments.scale_second(m, -1.0),
+        coherency=coherency.diagonal(light[:4], -root, root),
+        moments=moments.scale_second(light[4:], -1.0),
         node=-1,
         splits=beam.splits + 1,
         event=REFLECTED,
@@ -159,28 +159,34 @@ def _divided(core: Front, face: Ints, rows: Ints, state: RunState, *, spilled: b
     both = core.twice()
     faces = np.concatenate((face, face))
     owner = f.owner[faces]
-    both.set(face=faces, body=-1, owner=owner, event=REFLECTED)
-    both.ints[6, count:] = TRANSMITTED
-    node = state.ways.follow(both.node, owner, f.name[faces], both.event)
-    if spilled:
-        node = np.full(2 * count, -1)
-    meant = (node >= 0) | state.ways.main[faces, both.event - REFLECTED]
+    event = np.full(2 * count, REFLECTED)
+    event[count:] = TRANSMITTED
+    node = np.full(2 * count, -1)
+    if not spilled and (core.node >= 0).any():
+        node = state.ways.follow(both.node, owner, f.name[faces], event)
+    meant = (node >= 0) | state.ways.main[faces, event - REFLECTED]
     through = (f.inside[face] == Inside.BEHIND).nonzero()[0]
     entering = core.within[through] == OUTSIDE
-    beyond = through + count
+    beyond, beyond_all = through + count, slice(count, None)
     within = both.within
     within[beyond] = np.where(entering, scene.bulk_of_face[face[through]], OUTSIDE)
     both.index[beyond] = meeting.n_out[through]
     both.set(
+        face=faces,
+        body=-1,
+        owner=owner,
+        event=SPILLED if spilled else event,
         node=node,
         splits=both.splits + ~meant,
-        direction=np.concatenate((parts.reflected.direction, parts.transmitted.direction)),
-        axis=np.concatenate((parts.reflected.axis, parts.transmitted.axis)),
-        coherency=np.concatenate((parts.reflected.coherency, parts.transmitted.coherency), axis=1),
-        moments=np.concatenate((parts.reflected.moments, parts.transmitted.moments), axis=1),
     )
-    if spilled:
-        both.set(event=SPILLED)
+    for child, columns in ((parts.reflected, slice(0, count)), (parts.transmitted, beyond_all)):
+        half = both.part(columns)
+        half.set(
+            direction=child.direction,
+            axis=child.axis,
+            coherency=child.coherency,
+            moments=child.moments,
+        )
     return both
 
 
@@ -191,6 +197,7 @@ def _meeting(core: Front, face: Ints, scene: Scene) -> Meeting:
     outward = slope < 0.0
     normal = np.where(outward, -1.0, 1.0)[:, None] * normal
     s, cos, sin = plane_of_incidence(direction, normal, core.axis)
+    light = turn(core.light, cos, sin)
     wave = core.wave
     beyond = np.where(
         core.within == OUTSIDE, scene.index_inside[face, wave], scene.index_outside[wave]
@@ -206,8 +213,8 @@ def _meeting(core: Front, face: Ints, scene: Scene) -> Meeting:
         outward,
         direction,
         core.position,
-        coherency.rotate(core.coherency, cos, sin),
-        moments.rotate(core.moments, cos, sin),
+        light[:4],
+        light[4:],
     )
 
 

@@ -19,6 +19,8 @@ from benchlay.scene.tables import Flags, Floats, Ints, Mode, Scene
 
 _NORMAL = 1e-12  # below this sine of incidence the plane of incidence is not defined
 
+_MIRRORED = moments.scale_second(np.ones((10, 1)), -1.0)  # the signs after a reflection
+
 
 class Meeting(NamedTuple):
     """Beams at their faces, in the basis (s, p)."""
@@ -90,10 +92,7 @@ def _amplitudes(
     mode = f.mode[at]
     cosine, n_in, n_out = meeting.cosine, meeting.n_in, meeting.n_out
     total = n_in * n_in * (1.0 - cosine * cosine) >= n_out * n_out
-    bare = fresnel.amplitudes(n_in, n_out, cosine)
-    root = np.sqrt(np.where(total, 0.0, bare.transmitted_flux.real))
-    r_s, r_p = bare.rs, bare.rp
-    t_s, t_p = bare.ts * root, bare.tp * root
+    r_s, r_p, t_s, t_p = _bare(n_in, n_out, cosine, total)
     if not mode.any():
         return r_s, r_p, t_s, t_p, None
     stated = mode == Mode.STATED
@@ -117,11 +116,19 @@ def _amplitudes(
     return r_s, r_p, t_s, t_p, (lost_s, lost_p)
 
 
+def _bare(n_in: Floats, n_out: Floats, cosine: Floats, total: Flags) -> tuple[Floats, ...]:
+    if not total.any():
+        return fresnel.dielectric(n_in, n_out, cosine)
+    bare = fresnel.amplitudes(n_in, n_out, cosine)
+    root = np.sqrt(np.where(total, 0.0, bare.transmitted_flux.real))
+    return bare.rs, bare.rp, (bare.ts * root).real, (bare.tp * root).real
+
+
 def _reflected(meeting: Meeting, scene: Scene, j: Floats) -> Child:
     k, n = meeting.direction, meeting.normal
     direction = k - (2.0 * dot(k, n))[:, None] * n
     axis = meeting.s
-    m = moments.scale_second(meeting.moments, -1.0)
+    m = meeting.moments * _MIRRORED
     lens = scene.faces.acts[meeting.row] == Acts.LENS
     if lens.any():
         bulge = scene.faces.lens_curvature[meeting.row, meeting.wave]

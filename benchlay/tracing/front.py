@@ -238,6 +238,12 @@ class Front:
         value: Floats = self.floats[16:26]
         return value
 
+    @property
+    def light(self) -> Floats:
+        """Coherency above moments (14, N)."""
+        value: Floats = self.floats[12:26]
+        return value
+
 
 def join(fronts: list[Front]) -> Front:
     """Return several sets of beams as one."""
