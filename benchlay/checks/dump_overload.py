@@ -48,6 +48,7 @@ import numpy as np
 
 from benchlay.checks._check import Context, above, irradiance_text, power_text, wavelength_text
 from benchlay.findings import Finding, Severity
+from benchlay.geometry.distinct import distinct
 from benchlay.layout.materials import Withstands
 from benchlay.scene.tables import SINK, Ints
 from benchlay.tracing.beams import FACE
@@ -92,7 +93,7 @@ def _held_against(
             figures = (total, rating.power_w, "W", power_text(total), power_text(rating.power_w))
             yield _finding(context, variant, name, strongest, figures)
     elif rating.irradiance_w_m2 is not None:
-        mine = np.unique(ledger.beam[rows])
+        mine = distinct(ledger.beam[rows])
         mine = mine[beams.end_kind[mine] == FACE]
         peaks = context.peak_w_m2(mine)
         if len(peaks) and above(float(peaks.max()), rating.irradiance_w_m2):
