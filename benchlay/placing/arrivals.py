@@ -58,9 +58,11 @@ class Arrivals:
             return None
         wanted = element.stand.wavelength_nm
         if wanted is not None:
-            choices = [
-                choice for choice in choices if choice.ray.wavelength_nm == wanted
-            ] or choices
+            everything = choices
+            choices = [choice for choice in choices if choice.ray.wavelength_nm == wanted]
+            if not choices:
+                self._report_no_line(element, wanted, everything)
+                raise Unplaceable(element.name)
         distinct = _distinct(choices)
         needs_one_line = element.stand.incidence == "brewster"
         lines = sorted({choice.ray.wavelength_nm for choice in choices})
@@ -172,6 +174,16 @@ class Arrivals:
         return all(
             a.name == b.name and self._branch(a.name, a.branch) == self._branch(b.name, b.branch)
             for a, b in pairs
+        )
+
+    def _report_no_line(self, element: Element, wanted: float, choices: Sequence[Choice]) -> None:
+        lines = sorted({choice.ray.wavelength_nm for choice in choices})
+        which = "; ".join(f"wavelength: {line:g}" for line in lines)
+        self._solver.problems.add(
+            _where(element, "wavelength"),
+            f"no light of {wanted:g} nm arrives at {element.name!r}",
+            expected=f"one of these: {which}",
+            remedy=f"write the line that is meant, such as `wavelength: {lines[0]:g}`",
         )
 
     def _report_ambiguous(

@@ -80,11 +80,16 @@ def _enters(ray: NominalRay, face: Face, standing: Standing, event: str) -> floa
     from_front = dot(ray.direction, normal) < 0.0
     if not -_BEHIND_MM <= distance < float("inf"):
         return None
-    if face.acts is not Acts.PASSES and not from_front:
-        return None
-    if face.acts is Acts.OPAQUE and event == "transmitted":
+    if event == "transmitted" and _opens(face):
+        return _reach(point, face, standing.pose)
+    if not from_front or (face.acts is Acts.OPAQUE and event == "transmitted"):
         return None
     return _reach(point, face, standing.pose)
+
+
+def _opens(face: Face) -> bool:
+    """Whether a face is an opening, if a closed one: for the nominal ray all is at rest."""
+    return face.acts is Acts.PASSES or (face.acts is Acts.OPAQUE and face.inside is Inside.NOWHERE)
 
 
 def _reach(point: Vector, face: Face, pose: Pose) -> float:
@@ -115,6 +120,8 @@ def _along(
         if not -_BEHIND_MM <= distance < float("inf"):
             return Lost(f"the beam inside {standing.name!r} does not reach its face {name!r}")
         behind = _other_index(face, index, outside, within)
+        if face.acts is Acts.OPAQUE and event == "transmitted" and not _opens(face):
+            return Lost(f"face {name!r} of {standing.name!r} is opaque")
         if face.acts is Acts.LENS and event == "transmitted":
             power = outside / (2.0 * face.focal_mm)
             direction = _lensed(ray.direction, point, (index, behind, power), face, standing.pose)
@@ -136,7 +143,7 @@ def _other_index(face: Face, index: float, outside: float, within: float) -> flo
 def _turned(
     direction: Vector, normal: Vector, event: str, indices: tuple[float, float], face: Face
 ) -> Vector | None:
-    if face.acts is Acts.PASSES:
+    if event == "transmitted" and _opens(face):
         return direction
     if event == "reflected":
         return _vector(reflect(direction, normal))
