@@ -187,10 +187,14 @@ def _strays(legs: DrawnLegs, decimal: str) -> str:
     out = f"Stray beams above the limit: {legs.strays}"
     out += ", each tagged." if legs.tags == legs.strays else f", under {legs.tags} tags."
     if legs.weak:
-        out += f" Below it, {legs.weak} legs from {percent} % of the limit up bear no tag."
+        out += f" Below it, {_legs(legs.weak)} from {percent} % of the limit up without tags."
     if legs.left_out:
-        out += f" Not drawn: {legs.left_out} legs below {percent} % of the limit."
+        out += f" Not drawn: {_legs(legs.left_out)} below {percent} % of the limit."
     return out
+
+
+def _legs(count: int) -> str:
+    return "1 leg" if count == 1 else f"{count} legs"
 
 
 def _findings(counts: Iterable[tuple[Severity, int]]) -> list[str]:
