@@ -180,6 +180,21 @@ def test_a_findings_beam_has_its_number_in_the_trace(files, capsys):
         assert finding["element"] in (beam["from"], None)
 
 
+def test_an_entry_as_printed_accepts_its_finding(files, capsys):
+    cli.run(["check", "escapes.yaml"])
+    out = capsys.readouterr().out
+    entries = [
+        line.removeprefix("  to accept: ") for line in out.splitlines() if "to accept" in line
+    ]
+    assert entries
+    filled = "\n".join(entries).replace("YYYY-MM-DD", "2027-06-30")
+    Path("accepted.yaml").write_text(f"{ESCAPES}accept:\n{filled}\n", encoding="utf-8")
+    assert cli.run(["check", "accepted.yaml", "--on", "2027-06-30", "--fail-on", "warn"]) == 0
+    assert f"{len(entries)} accepted" in capsys.readouterr().out
+    assert cli.run(["check", "accepted.yaml", "--on", "2027-07-01"]) == 1
+    assert "accept-expired" in capsys.readouterr().out
+
+
 def shuffled(text, seed):
     """Reorder every table of a layout whose order means nothing."""
     order = random.Random(seed)

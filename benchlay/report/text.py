@@ -6,6 +6,7 @@ The words of a finding are the finding's; this form adds none of its own but the
 from __future__ import annotations
 
 from collections.abc import Iterator, Sequence
+from math import ceil, floor, log10
 
 from benchlay.document.problems import Problem
 from benchlay.report.cautions import CAUTIONS
@@ -15,6 +16,8 @@ from benchlay.report.words import Ink, listed, quoted, tame
 
 PLAIN = Ink()
 _SEVERITIES = ("fail", "warn", "note")
+_WORTH_ACCEPTING = ("fail", "warn")
+_GROWING = ("W", "J", "W/m2", "J/m2", "W/cm2", "J/cm2")  # of values that are worse when larger
 
 
 def check_text(results: Sequence[Review | LayoutErrors], *, ink: Ink = PLAIN) -> str:
@@ -82,7 +85,26 @@ def _finding_lines(finding: Reported, review: Review, ink: Ink) -> Iterator[str]
         entry = finding.accepted
         yield f"  accepted by {tame(entry.by)} until {entry.until}: {tame(entry.reason)}"
     yield f"  id: {finding.id}"
+    if not finding.accepted and finding.severity in _WORTH_ACCEPTING:
+        yield f"  to accept: {accept_entry(finding)}"
     yield ""
+
+
+def accept_entry(finding: Reported) -> str:
+    """Return the entry that would accept a finding, to be pasted under ``accept:``.
+
+    What only a person can know is left in capitals, and is refused until it is filled in.
+    """
+    at_most = ""
+    if finding.value is not None and finding.value > 0.0 and finding.unit in _GROWING:
+        at_most = f", at_most: {_rounded_up(finding.value):.3g} {finding.unit}"
+    return f"- {{finding: {finding.id}, reason: WHY, by: WHO, until: YYYY-MM-DD{at_most}}}"
+
+
+def _rounded_up(value: float) -> float:
+    """Round up to three figures, so that the value itself is covered."""
+    step = 10.0 ** (floor(log10(value)) - 2)
+    return ceil(value / step * (1.0 - 1e-12)) * step
 
 
 def _worst(finding: Reported) -> str:

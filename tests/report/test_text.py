@@ -1,11 +1,13 @@
 """What a person reads on the terminal."""
 
+import pytest
+
 from benchlay.document.problems import Problem
 from benchlay.document.span import Span
 from benchlay.report.cautions import CAUTIONS
 from benchlay.report.details import Ledger, Sink, TraceResult
 from benchlay.report.model import Acceptance, CheckRun, Elsewhere, LayoutErrors
-from benchlay.report.text import check_text, errors_text, verdict_line
+from benchlay.report.text import accept_entry, check_text, errors_text, verdict_line
 from benchlay.report.trace_text import trace_text
 from benchlay.report.words import Ink, quoted, tame
 
@@ -18,6 +20,7 @@ x.yaml:2:3: fail escape: 6.1 mW of 532 nm leave over the south side
   x.yaml:1:1: panel 'south' stands here
   in: as drawn, alignment (the worst in alignment)
   id: escape/W1/g7f3
+  to accept: - {finding: escape/W1/g7f3, reason: WHY, by: WHO, until: YYYY-MM-DD, at_most: 0.0061 W}
 
 limit used: 0.000385 W through 7 mm at 532 nm for 100 s (IEC 60825-1:2014)
 x.yaml: verdict fail (1 fail); states: as drawn
@@ -50,6 +53,28 @@ def test_an_accepted_finding_stays_on_the_record(make_review, make_finding):
     assert "x.yaml:2:3: accepted escape:" in text
     assert "  accepted by safety officer until 2027-06-30: survey of May" in text
     assert "verdict none (1 accepted)" in text
+
+
+def test_only_what_weighs_and_is_not_accepted_says_how_to_accept_it(make_review, make_finding):
+    entry = Acceptance("survey of May", "safety officer", "2027-06-30")
+    found = [make_finding("note"), make_finding("warn", accepted=entry)]
+    assert "to accept:" not in check_text([make_review(findings=found)])
+
+
+@pytest.mark.parametrize(
+    ("value", "unit", "written"),
+    [
+        (0.0061, "W", ", at_most: 0.0061 W"),
+        (0.00610001, "W", ", at_most: 0.00611 W"),
+        (1234.0, "W/cm2", ", at_most: 1.24e+03 W/cm2"),
+        (4.0, "mm", ""),
+        (None, None, ""),
+        (0.0, "W", ""),
+    ],
+)
+def test_an_entry_to_paste_covers_the_value(make_finding, value, unit, written):
+    entry = accept_entry(make_finding(value=value, unit=unit))
+    assert entry.removesuffix("}").endswith(f"until: YYYY-MM-DD{written}")
 
 
 def test_a_limit_that_the_layout_sets_is_shown_as_such(make_review):
