@@ -12,12 +12,12 @@ from benchlay.sheets.tables import Column, Table, table
 
 # As wide as six figures and a point for places, four and a point for heights and angles.
 _COLUMNS = (
-    Column("Tag", 25.8),
-    Column("Kind", 21.0),
-    Column("X", 14.5),
-    Column("Y", 14.5),
+    Column("Tag", 25.6),
+    Column("Kind", 20.4),
+    Column("X", 14.6),
+    Column("Y", 14.6),
     Column("Z", 12.2),
-    Column("Facing", 13.0),
+    Column("Facing", 13.6),
 )
 assert math.isclose(sum(column.width_mm for column in _COLUMNS), BLOCK_MM)
 
