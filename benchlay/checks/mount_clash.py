@@ -88,7 +88,7 @@ def check(context: Context, variant: int) -> Iterator[Finding]:
     worst: dict[tuple[str, str], tuple[float, Body, Body]] = {}
     for first, second in context.bodies.near_pairs(rows, limit):
         a, b = context.bodies.body(first), context.bodies.body(second)
-        if a.name == b.name or _belong_together(context, variant, a, b):
+        if _belong_together(context, variant, a, b):
             continue
         if (a.part in _SHEETS, a.name) > (b.part in _SHEETS, b.name):
             a, b = b, a

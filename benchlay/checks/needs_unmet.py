@@ -77,7 +77,7 @@ def _power(context: Context, route: Route, beam: int) -> Iterator[Finding]:
             route,
             beam,
             (
-                f"{power_text(arriving)} arrive at the end of route '{route.name}'",
+                f"{power_text(arriving)} arrive by route '{route.name}'",
                 f"at least {power_text(needs.power_w)}",
                 "raise the power of the source, or lose less on the way",
             ),
@@ -92,7 +92,7 @@ def _power(context: Context, route: Route, beam: int) -> Iterator[Finding]:
             route,
             beam,
             (
-                f"{share_text(share)} of what is emitted arrives at the end of route '{route.name}'",
+                f"{share_text(share)} of what is emitted arrives by route '{route.name}'",
                 f"at least {share_text(needs.transmits)}",
                 "look where the route loses most: coatings, filters, apertures",
             ),

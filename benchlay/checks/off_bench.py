@@ -61,14 +61,21 @@ _ROUNDING_MM = 1e-6
 def check(context: Context, variant: int) -> Iterator[Finding]:
     """Report each item once, by the part that reaches out furthest."""
     bench = shapely.Polygon(context.layout(variant).bench.outline)
-    bodies = [context.bodies.body(row) for row in context.bodies.rows(variant)]
+    shapely.prepare(bench)
+    rows = context.bodies.rows(variant)
+    inside = shapely.covers(bench, context.bodies.outline[rows])
     standing: dict[str, list[Body]] = {}
-    for body in bodies:
+    for row, within in zip(rows.tolist(), inside.tolist(), strict=True):
+        body = context.bodies.body(row)
         on_bench = body.part == "body" and abs(body.low_mm) <= _LOWEST_MM
         if body.part in _STANDS or on_bench:
-            standing.setdefault(body.name, []).append(body)
+            outside = standing.setdefault(body.name, [])
+            if not within:
+                outside.append(body)
     for name, where in _items(context, variant):
         parts = standing.get(name, [])
+        if name in standing and not parts:
+            continue
         outlines = [body.outline for body in parts] or [shapely.Point(where[:2])]
         beyond = [_beyond(outline, bench) for outline in outlines]
         worst = max(range(len(outlines)), key=beyond.__getitem__)

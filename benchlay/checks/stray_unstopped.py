@@ -117,7 +117,16 @@ def _groups(context: Context, variant: int) -> dict[_Group, list[_Landing]]:
     mine &= ~np.isin(ledger.sink, list(_PROPER | _ELSEWHERE_TOLD)) & (ledger.power > 0.0)
     mine &= start.within[ledger.beam] == OUTSIDE
     rows = np.flatnonzero(mine)
-    power = np.minimum(ledger.power[rows], context.accessible_w[ledger.beam[rows]])
+    beams = ledger.beam[rows]
+    power = np.minimum(ledger.power[rows], context.accessible_w[beams])
+    with np.errstate(invalid="ignore"):
+        over = power > context.limit_w[beams]
+    if not over.any():
+        return {}
+    # Of the rest only what ends where something over the limit ends can belong to its sum.
+    places = np.stack((ledger.sink[rows], ledger.name[rows], start.wave[beams]), axis=1)
+    told = (places[:, None, :] == np.unique(places[over], axis=0)).all(axis=2).any(axis=1)
+    rows, power = rows[told], power[told]
     groups: dict[_Group, list[_Landing]] = {}
     since: dict[int, int] = {}
     columns = (ledger.beam[rows], ledger.sink[rows], ledger.name[rows], power)

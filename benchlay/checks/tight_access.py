@@ -58,7 +58,7 @@ from collections.abc import Iterator
 import numpy as np
 import shapely
 
-from benchlay.checks._check import Body, Context, distance_mm, length_text
+from benchlay.checks._check import Body, Context, length_text
 from benchlay.elements.mount import DEFAULT_MOUNT, Mount
 from benchlay.findings import Finding, Severity
 from benchlay.placing.placed import PlacedElement
@@ -70,28 +70,18 @@ NAME = "tight-access"
 SEVERITY = Severity.WARN
 
 _SHEETS = ("panel", "lid")
-_TOUCH_MM = 1e-6
 
 
 def check(context: Context, variant: int) -> Iterator[Finding]:
     """Report each mount whose corridor something stands in, with all that does."""
-    rows = context.bodies.rows(variant)
-    bodies = [body for body in map(context.bodies.body, rows) if body.part not in _SHEETS]
+    bodies = context.bodies
+    rows = bodies.rows(variant)
     for name, item in sorted(context.state(variant).elements.items()):
         corridor = None if item.out else _corridor(context, variant, item)
         if corridor is None:
             continue
-        inside = sorted(
-            {
-                body.name
-                for body in bodies
-                if body.name != name
-                and body.high_mm > corridor.low_mm + _TOUCH_MM
-                and body.low_mm < corridor.high_mm - _TOUCH_MM
-                and distance_mm(body, corridor) <= 0.0
-                and not shapely.touches(body.outline, corridor.outline)
-            }
-        )
+        met = map(bodies.body, bodies.overlapping(rows, corridor))
+        inside = sorted({b.name for b in met if b.part not in _SHEETS and b.name != name})
         if inside:
             yield _finding(context, variant, name, inside)
 
@@ -100,7 +90,8 @@ def _corridor(context: Context, variant: int, item: PlacedElement) -> Body | Non
     """Return the way that a driver needs, as a body; None where nothing is to be set."""
     box = item.holder.box
     mount = item.element.mount if isinstance(item.element.mount, Mount) else DEFAULT_MOUNT
-    steers = item.element.record.TURNS_FRONT or mount.written("adjusters")
+    # What has a branch of its own that goes straight on is not there to steer.
+    steers = item.element.record.DEFAULT_BRANCH != "transmitted" or mount.written("adjusters")
     if box is None or not steers:
         return None
     driver = context.layout(variant).limits.driver

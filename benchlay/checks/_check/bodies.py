@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
 from math import hypot
 from typing import NamedTuple
 
@@ -10,9 +9,10 @@ import numpy as np
 import shapely
 from shapely.geometry.base import BaseGeometry
 
-from benchlay.scene.tables import PARTS, Flags, Floats, Ints, Scene, Solids
+from benchlay.scene.tables import PARTS, Floats, Ints, Scene, Solids
 
 _ROUND = 32  # sides of the polygon round a circle: it is drawn round it, 0.5 % too wide at most
+_TOUCH_MM = 1e-6
 _SURROUNDINGS = ("bench", "floor", "wall", "ceiling")
 
 
@@ -27,47 +27,70 @@ class Body(NamedTuple):
 
 
 class Bodies:
-    """The solids of a scene as bodies; outlines are worked out when first asked for."""
+    """The solids of a scene as bodies, S of them; all outlines are worked out in one go."""
 
     def __init__(self, scene: Scene) -> None:
         self._scene = scene
-        self._known: dict[int, Body] = {}
-        self._low, self._high = _boxes(scene.solids)
-
-    def rows(self, variant: int, parts: Sequence[str] | None = None) -> list[int]:
-        """Return the rows of the solids of a state: all but bench and room, or some parts."""
-        s = self._scene.solids
-        wanted = (
-            ~np.isin(s.part, [PARTS.index(part) for part in _SURROUNDINGS])
-            if parts is None
-            else np.isin(s.part, [PARTS.index(part) for part in parts])
+        s = scene.solids
+        circles = _circles(s)
+        flat = s.patch_points.reshape(-1, 3)
+        points = np.concatenate((flat, circles.reshape(-1, 3)))
+        owner = np.concatenate(
+            (
+                np.repeat(s.patch_solid, s.patch_points.shape[1]),
+                np.repeat(s.disc_solid, circles.shape[1]),
+            )
         )
-        rows: list[int] = np.flatnonzero(s.present[variant] & wanted & (s.name >= 0)).tolist()
+        order = np.argsort(owner, kind="stable")
+        points, owner = points[order], owner[order]
+        first = np.searchsorted(owner, np.arange(len(s.owner)))
+        self.outline = shapely.convex_hull(shapely.multipoints(points[:, :2], indices=owner))
+        self.low_mm: Floats = np.minimum.reduceat(points, first, axis=0)  # (S, 3)
+        self.high_mm: Floats = np.maximum.reduceat(points, first, axis=0)  # (S, 3)
+
+    def rows(self, variant: int) -> Ints:
+        """Return the rows of the solids of a state, without bench and room."""
+        s = self._scene.solids
+        wanted = ~np.isin(s.part, [PARTS.index(part) for part in _SURROUNDINGS])
+        rows: Ints = np.flatnonzero(s.present[variant] & wanted & (s.name >= 0))
         return rows
 
     def body(self, row: int) -> Body:
         """Return a solid as a body."""
-        if row not in self._known:
-            s = self._scene.solids
-            points = _points(s, row)
-            self._known[row] = Body(
-                self._scene.names[s.name[row]],
-                PARTS[s.part[row]],
-                shapely.convex_hull(shapely.multipoints(points[:, :2])),
-                float(points[:, 2].min()),
-                float(points[:, 2].max()),
-            )
-        return self._known[row]
+        s = self._scene.solids
+        return Body(
+            self._scene.names[s.name[row]],
+            PARTS[s.part[row]],
+            self.outline[row],
+            float(self.low_mm[row, 2]),
+            float(self.high_mm[row, 2]),
+        )
 
-    def near_pairs(self, rows: list[int], within_mm: float) -> list[tuple[int, int]]:
-        """Return the pairs of rows whose upright boxes come as near as that."""
-        if not rows:
+    def near_pairs(self, rows: Ints, within_mm: float) -> list[tuple[int, int]]:
+        """Return the pairs of rows of different names that come nearer than that."""
+        if not len(rows):
             return []
-        low, high = self._low[rows] - 0.5 * within_mm, self._high[rows] + 0.5 * within_mm
+        low, high = self.low_mm[rows], self.high_mm[rows] + within_mm
         apart = (low[:, None] > high[None]).any(axis=2)
-        apart |= apart.T
-        first, second = np.nonzero(np.triu(~apart, k=1))
-        return [(rows[a], rows[b]) for a, b in zip(first.tolist(), second.tolist(), strict=True)]
+        names = self._scene.solids.name[rows]
+        near = ~(apart | apart.T) & (names[:, None] != names)
+        first, second = (rows[side] for side in np.nonzero(np.triu(near, k=1)))
+        gaps = shapely.distance(self.outline[first], self.outline[second])
+        low, high = self.low_mm[:, 2], self.high_mm[:, 2]
+        above = np.maximum(low[first] - high[second], low[second] - high[first])
+        close = np.hypot(gaps, np.maximum(above, 0.0)) < within_mm
+        return list(zip(first[close].tolist(), second[close].tolist(), strict=True))
+
+    def overlapping(self, rows: Ints, other: Body) -> list[int]:
+        """Return the rows whose bodies share room with another body (touching is none)."""
+        x0, y0, x1, y1 = shapely.bounds(other.outline).tolist()
+        low, high = self.low_mm[rows], self.high_mm[rows]
+        near = (low[:, 2] < other.high_mm - _TOUCH_MM) & (high[:, 2] > other.low_mm + _TOUCH_MM)
+        near &= (low[:, 0] < x1) & (high[:, 0] > x0) & (low[:, 1] < y1) & (high[:, 1] > y0)
+        rows = rows[near]
+        shared = shapely.intersection(self.outline[rows], other.outline)
+        found: list[int] = rows[shapely.area(shared) > _TOUCH_MM].tolist()
+        return found
 
 
 def distance_mm(a: Body, b: Body) -> float:
@@ -101,31 +124,10 @@ def middle_between(a: Body, b: Body) -> tuple[float, float, float]:
     return x, y, 0.5 * (heights[1] + heights[2])
 
 
-def _boxes(s: Solids) -> tuple[Floats, Floats]:
-    """Return the least and greatest coordinates of every solid (S, 3)."""
-    count = len(s.owner)
-    low, high = np.full((count, 3), np.inf), np.full((count, 3), -np.inf)
-    for solid, points in (
-        (s.patch_solid, s.patch_points),
-        (s.disc_solid, _circles(s, np.ones(len(s.disc_solid), dtype=np.bool_))),
-    ):
-        if len(solid):
-            np.minimum.at(low, solid, points.min(axis=1))
-            np.maximum.at(high, solid, points.max(axis=1))
-    return low, high
-
-
-def _circles(s: Solids, chosen: Flags | Ints) -> Floats:
+def _circles(s: Solids) -> Floats:
     """Return polygons (D, sides, 3) drawn round the round ends of solids."""
     angle = (np.arange(_ROUND) + 0.5) * (2.0 * np.pi / _ROUND)
     wider = 1.0 / np.cos(np.pi / _ROUND)
     unit = wider * np.stack((np.cos(angle), np.sin(angle)), axis=1)
-    circles: Floats = s.disc_centre[chosen][:, None, :] + np.einsum(
-        "ka,dai->dki", unit, s.disc_axes[chosen]
-    )
+    circles: Floats = s.disc_centre[:, None, :] + np.einsum("ka,dai->dki", unit, s.disc_axes)
     return circles
-
-
-def _points(s: Solids, row: int) -> Floats:
-    flat = s.patch_points[s.patch_solid == row].reshape(-1, 3)
-    return np.concatenate((flat, _circles(s, s.disc_solid == row).reshape(-1, 3)))
