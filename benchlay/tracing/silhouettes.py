@@ -68,7 +68,9 @@ class Outlines(NamedTuple):
         place[order] = np.arange(len(order))
         columns = [column[order] for column in columns]
         columns[7] = np.where(columns[7] >= 0, place[columns[7]], -1)
-        inside = scene.face_owner_name[np.where(part.within >= 0, part.face, 0)]
+        inside = np.full(len(part.within), -1)
+        within = np.flatnonzero(part.within >= 0)
+        inside[within] = scene.face_owner_name[part.face[within]]
         return Outlines(*columns, inside)
 
 
