@@ -82,7 +82,8 @@ def run(front: Front, scene: Scene, ways: Ways, floor_w: Floats) -> Traced:
         bounded[rest.variant] = True
         # The leg they would have been is not there: they are booked with their parents.
         state.book(rest.parent - state.count, SINK["below-floor"], -1, rest.power)
-    return Traced(*_finished(state), bounded)
+    traced = _finished(state) if state.legs else _dark(front)
+    return Traced(*traced, bounded)
 
 
 def _joined(parts: list[_Ready]) -> _Ready:
@@ -192,6 +193,15 @@ def _record(
             unstated,
         )
     )
+
+
+def _dark(front: Front) -> tuple[Beams, Ledger]:
+    """Return the trace of a bench on which nothing emits."""
+    none, nothing = np.zeros(0, dtype=np.int64), np.zeros(0)
+    no = np.zeros(0, dtype=np.bool_)
+    points, figures = np.zeros((0, 3)), (np.zeros((4, 0)), np.zeros((10, 0)))
+    beams = Beams(front, none, none, points, nothing, *figures, *(nothing,) * 5, no)
+    return beams, Ledger(none, none, none, nothing)
 
 
 def _finished(state: RunState) -> tuple[Beams, Ledger]:
