@@ -82,7 +82,7 @@ def run(front: Front, scene: Scene, ways: Ways, floor_w: Floats) -> Traced:
         bounded[rest.variant] = True
         # The leg they would have been is not there: they are booked with their parents.
         state.book(rest.parent - state.count, SINK["below-floor"], -1, rest.power)
-    traced = _finished(state) if state.legs else _dark(front)
+    traced = _finished(state) if state.fronts else _dark(front)
     return Traced(*traced, bounded)
 
 
