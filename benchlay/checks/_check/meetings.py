@@ -8,6 +8,7 @@ from typing import NamedTuple
 import numpy as np
 
 from benchlay.checks._check.routes import Routes
+from benchlay.elements._kind import Acts
 from benchlay.scene.tables import PARTS, SINK, SINKS, Ints
 from benchlay.tracing import Trace
 from benchlay.tracing.beams import FACE, SOLID
@@ -77,14 +78,14 @@ class Meetings:
         beams = self._trace.beams
         arriving = float(beams.end_coherency[0, beam] + beams.end_coherency[1, beam])
         sink = max(kept, key=lambda part: part[1])[0]
-        part, whole = self._chief(beam, name)
+        part, whole = self._chief(beam, name, own=own)
         return Loss(beam, name, SINKS[sink], part, power, min(power / arriving, 1.0), own, whole)
 
     def _is_loss(self, sink: int, name: str | None) -> bool:
         """Whether light on what it was meant for is lost: beside a face, not on it."""
         return sink in _OWN or (sink == SINK["panel"] and name is not None)
 
-    def _chief(self, beam: int, name: str | None) -> tuple[str | None, bool]:
+    def _chief(self, beam: int, name: str | None, *, own: bool) -> tuple[str | None, bool]:
         """Return the part that the chief ray meets, and whether it ends on that name."""
         beams, scene = self._trace.beams, self._trace.scene
         row = int(beams.end_row[beam])
@@ -94,7 +95,8 @@ class Meetings:
             return (PARTS[scene.solids.part[row]] if here else None), here
         if beams.end_kind[beam] == FACE:
             here = scene.elements[int(scene.faces.owner[row])] == name
-            return None, here and not bool(beams.end_core[beam] > 0.0)
+            stops = not own and scene.faces.acts[row] == Acts.OPAQUE
+            return None, here and bool(stops or not beams.end_core[beam] > 0.0)
         return None, False
 
     def aimed(self, beam: int) -> bool:
