@@ -10,9 +10,18 @@ from benchlay.elements.filter import Filter
 from benchlay.elements.lens import Lens
 from benchlay.elements.mirror import Mirror
 from benchlay.elements.obstacle import Obstacle
-from benchlay.elements.pending import PENDING_KINDS
+from benchlay.elements.pending import (
+    Cell,
+    Converter,
+    Grating,
+    Parabola,
+    Prism,
+    Retroreflector,
+    Tube,
+)
 from benchlay.elements.plate_polarizer import PlatePolarizer
 from benchlay.elements.polarizer import Polarizer
+from benchlay.elements.rotator import Rotator
 from benchlay.elements.screen import Screen
 from benchlay.elements.shutter import Shutter
 from benchlay.elements.splitter import Splitter
@@ -29,14 +38,21 @@ KINDS: dict[str, type[ElementKind]] = {
     "polarizer": Polarizer,
     "plate-polarizer": PlatePolarizer,
     "waveplate": Waveplate,
+    "rotator": Rotator,
     "lens": Lens,
     "aperture": Aperture,
+    "grating": Grating,
+    "prism": Prism,
+    "parabola": Parabola,
+    "retroreflector": Retroreflector,
+    "cell": Cell,
+    "converter": Converter,
     "dump": Dump,
     "target": Target,
     "screen": Screen,
     "shutter": Shutter,
+    "tube": Tube,
     "obstacle": Obstacle,
-    **{kind.KIND: kind for kind in PENDING_KINDS},
 }
 
 __all__ = ["KINDS", "ElementKind"]

@@ -69,11 +69,13 @@ class Face(NamedTuple):
 class Bulk(NamedTuple):
     """What the inside of an element does on every passage from face to face.
 
-    `kind` is ``clear``, ``absorber``, ``polarizer`` or ``retarder``. For an absorber,
+    `kind` is ``clear``, ``absorber``, ``polarizer``, ``retarder`` or ``rotator``. For an absorber,
     `bands` are (from nm, to nm, share passed at normal incidence over `thickness_mm`) and
     light outside every band does not pass; without bands `passes` holds everywhere. For a
     polarizer `passes` and `refused` are the shares along the axis and across it. For a
-    retarder `waves` is the retardance at `design_nm` (None: the wavelength of the route).
+    retarder `waves` is the retardance at `design_nm` (None: the wavelength of the route). A
+    rotator turns the field by `turns_rad` about the back's outward normal, whichever way the
+    light goes.
     """
 
     kind: str = "clear"
@@ -82,6 +84,7 @@ class Bulk(NamedTuple):
     refused: float = 1.0
     waves: float = 0.0
     design_nm: float | None = None
+    turns_rad: float = 0.0
     thickness_mm: float = 0.0
     bands: tuple[tuple[float, float, float], ...] = ()
 

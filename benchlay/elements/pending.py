@@ -5,7 +5,6 @@ Their keys are read and checked like all others; a layout that uses one is told 
 
 from __future__ import annotations
 
-from math import radians
 from typing import Any, ClassVar
 
 from benchlay.document.forms import (
@@ -27,33 +26,13 @@ from benchlay.elements._coating import COATING, METAL_NAMES, UNCOATED, Coating
 from benchlay.elements._glass import GLASS
 from benchlay.elements._kind import Branches, ElementKind, Glass
 from benchlay.elements._shares import SHARE, USABLE
-from benchlay.elements._sized import LENGTH, LENGTH_OR_ZERO, Sized
+from benchlay.elements._sized import LENGTH, Sized
 
 _ANGLE = Quantity(Dimension.ANGLE)
 _COORDINATE = Quantity(Dimension.LENGTH)
 _WAVELENGTH = Quantity(Dimension.WAVELENGTH, above=0.0)
 _POINT = Fixed(_COORDINATE, 2)
 _WHY = "this kind is read but cannot be traced by this version"
-
-
-class Rotator(Sized, ElementKind):
-    """A Faraday rotator: turns polarization by the same sense in space both ways."""
-
-    KIND = "rotator"
-    BRANCHES: ClassVar[Branches] = {"transmitted": _through.TRANSMITTED}
-    DEFAULT_BRANCH = "transmitted"
-    PENDING = _WHY
-
-    angle_rad: float = key(_ANGLE, default=radians(45.0), name="angle", meaning="by which it turns")
-    thickness_mm: float = key(
-        LENGTH_OR_ZERO,
-        default=0.0,
-        name="thickness",
-        meaning="thickness; 0 for a thin one",
-    )
-    glass: Glass = key(GLASS, default=Glass("BK7", None), meaning="what it is made of")
-    front: Coating = key(COATING, default=UNCOATED, meaning="coating of the front face")
-    back: Coating = key(COATING, default=UNCOATED, meaning="coating of the back face")
 
 
 class Grating(Sized, ElementKind):
@@ -208,15 +187,3 @@ class Tube(ElementKind):
     material: str | None = key(
         Text(), default=None, meaning="what it is made of (a name under `materials`)"
     )
-
-
-PENDING_KINDS: tuple[type[ElementKind], ...] = (
-    Rotator,
-    Grating,
-    Prism,
-    Parabola,
-    Retroreflector,
-    Cell,
-    Converter,
-    Tube,
-)

@@ -42,8 +42,11 @@ def _axis(item: PlacedElement) -> tuple[float, float, float]:
     """Return the axis in the plan frame.
 
     It is measured from horizontal, anticlockwise to a viewer who looks at the back face: at
-    angle 0 it lies to that viewer's right, which is the element's right (-y).
+    angle 0 it lies to that viewer's right, which is the element's right (-y). What a rotator
+    turns about points at that viewer.
     """
+    if item.geometry.bulk.kind == "rotator":
+        return item.pose.turn((-1.0, 0.0, 0.0))
     angle = item.geometry.bulk.axis_rad
     return item.pose.turn((0.0, -cos(angle), sin(angle)))
 
@@ -56,9 +59,13 @@ def _passes(bulk: Bulk, wavelength_nm: float) -> float:
 
 
 def _phase(bulk: Bulk, wavelength_nm: float, spoken_for: frozenset[float]) -> float:
-    """Return the retardance in rad; away from its design wavelength it goes with 1/wavelength."""
+    """Return the retardance in rad, or a rotator's angle.
+
+    Away from its design wavelength a retardance goes with 1/wavelength; a rotator's angle is
+    taken at its word.
+    """
     if bulk.kind != "retarder":
-        return 0.0
+        return bulk.turns_rad
     design = bulk.design_nm
     if design is None:
         design = wavelength_nm if wavelength_nm in spoken_for else min(spoken_for)

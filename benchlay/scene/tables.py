@@ -164,6 +164,9 @@ class Fixed(NamedTuple):
     centre_square: Floats  # (S,) mm²
     sphere: Floats  # (S,) radii with room for rounding, mm
     own_faces: Ints  # (E, K) face rows of each placed element, -1 where it has fewer
+    own_axes: Floats  # (E, K, 3, 3) their normals, lefts and ups
+    own_middles: Floats  # (E, K, 3) middles of their outlines, mm
+    own_both: Flags  # (E, K) whether optics stand on both sides
     pierced: Ints  # solids with holes
 
 

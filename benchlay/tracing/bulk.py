@@ -9,7 +9,7 @@ from benchlay.optics.rays import cross, dot
 from benchlay.scene.tables import BULKS, Floats, Scene
 from benchlay.tracing.front import Front
 
-_CLEAR, _ABSORBER, _POLARIZER, _RETARDER = range(len(BULKS))
+_CLEAR, _ABSORBER, _POLARIZER, _RETARDER, _ROTATOR = range(len(BULKS))
 
 
 def passage(front: Front, scene: Scene, length_mm: Floats) -> tuple[Floats, Floats]:
@@ -47,6 +47,13 @@ def passage(front: Front, scene: Scene, length_mm: Floats) -> tuple[Floats, Floa
         lost = lost + np.where(kind == _POLARIZER, swallowed[0] + swallowed[1], 0.0)
         retarded = coherency.retarder(j, angle, b.phase[front.within, front.wave])
         j = np.where(kind == _POLARIZER, polarized, np.where(kind == _RETARDER, retarded, j))
+    turning = kind == _ROTATOR
+    if turning.any():
+        # The same sense in space both ways. The path grows and the field along it shrinks by
+        # the same cosine, so the angle is that of normal incidence.
+        way = np.sign(dot(front.direction, b.axis[front.within]))
+        angle = np.where(turning, way * b.phase[front.within, front.wave], 0.0)
+        j = coherency.rotator(j, angle)
     return j, lost
 
 

@@ -16,9 +16,9 @@ CASES = [
             (
                 "b.yaml:5:7: error: elements.M1: 'kind' is missing\n"
                 "  expected: 'kind' with one of 'mirror', 'splitter', 'cube', 'window', "
-                "'filter', 'polarizer', 'plate-polarizer', 'waveplate', 'lens', 'aperture', "
-                "'dump', 'target', 'screen', 'shutter', 'obstacle', 'rotator', 'grating', "
-                "'prism', 'parabola', 'retroreflector', 'cell', 'converter' or 'tube'\n"
+                "'filter', 'polarizer', 'plate-polarizer', 'waveplate', 'rotator', 'lens', "
+                "'aperture', 'grating', 'prism', 'parabola', 'retroreflector', 'cell', "
+                "'converter', 'dump', 'target', 'screen', 'shutter', 'tube' or 'obstacle'\n"
                 "  to mend: add 'kind: mirror', with the kind that is meant"
             ),
         ],
@@ -37,9 +37,9 @@ CASES = [
             (
                 "b.yaml:5:14: error: elements.M1: 'miror' is not a kind of element\n"
                 "  expected: one of 'mirror', 'splitter', 'cube', 'window', 'filter', "
-                "'polarizer', 'plate-polarizer', 'waveplate', 'lens', 'aperture', 'dump', "
-                "'target', 'screen', 'shutter', 'obstacle', 'rotator', 'grating', 'prism', "
-                "'parabola', 'retroreflector', 'cell', 'converter' or 'tube'\n"
+                "'polarizer', 'plate-polarizer', 'waveplate', 'rotator', 'lens', 'aperture', "
+                "'grating', 'prism', 'parabola', 'retroreflector', 'cell', 'converter', "
+                "'dump', 'target', 'screen', 'shutter', 'tube' or 'obstacle'\n"
                 "  to mend: write 'mirror'"
             ),
         ],
@@ -163,7 +163,7 @@ CASES = [
             "  green: {wavelength: 532, power: 1 mW, beam: {waist_radius: 0.5}, at: [100,"
             " 450], heading: 0}\n"
             "elements:\n"
-            "  R1: {kind: rotator, diameter: 10, after: green, distance: 10}\n"
+            "  R1: {kind: grating, size: [9, 9], lines: 600, orders: {0: 1}, after: green, distance: 9}\n"
         ),
         [
             (

@@ -239,10 +239,10 @@ CASES = [
             (
                 "b.yaml:9:14: error: tolerances: there is no kind or element named 'mirrr'\n"
                 "  expected: the name of a kind or element: 'mirror', 'splitter', 'cube', "
-                "'window', 'filter', 'polarizer', 'plate-polarizer', 'waveplate', 'lens', "
-                "'aperture', 'dump', 'target', 'screen', 'shutter', 'obstacle', 'rotator', "
-                "'grating', 'prism', 'parabola', 'retroreflector', 'cell', 'converter', "
-                "'tube', 'M1', 'B', 'D' or 'T'\n"
+                "'window', 'filter', 'polarizer', 'plate-polarizer', 'waveplate', 'rotator', "
+                "'lens', 'aperture', 'grating', 'prism', 'parabola', 'retroreflector', "
+                "'cell', 'converter', 'dump', 'target', 'screen', 'shutter', 'tube', "
+                "'obstacle', 'M1', 'B', 'D' or 'T'\n"
                 "  to mend: write 'mirror'"
             ),
         ],

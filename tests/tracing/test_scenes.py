@@ -6,7 +6,7 @@ import pytest
 
 from tests.tracing.bench import SCENES
 
-for name in ("plates", "glasses", "states", "lenses", "cuts", "bodies", "landings"):
+for name in ("plates", "glasses", "states", "lenses", "cuts", "bodies", "landings", "rotators"):
     importlib.import_module(f"tests.tracing.scenes.{name}")
 
 

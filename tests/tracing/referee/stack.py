@@ -64,6 +64,13 @@ def retarder(waves, angle):
     return Layer(_turned(phases, angle), _turned(phases, -angle), _NOTHING, _NOTHING)
 
 
+def rotator(angle):
+    """The same sense in space both ways: the other one in the basis of light that returns."""
+    c, s = np.cos(angle), np.sin(angle)
+    on, back = mueller([[c, -s], [s, c]]), mueller([[c, s], [-s, c]])
+    return Layer(on, back, _NOTHING, _NOTHING)
+
+
 def sheet(inside, reflects_front=0.04, reflects_back=0.04):
     """A thin element: two faces with something between them."""
     return [face(reflects_front), inside, face(reflects_back)]
