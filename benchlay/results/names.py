@@ -18,13 +18,5 @@ def left(trace: Trace, beam: int) -> tuple[str, str]:
     if face >= 0:
         owner, name = scene.faces.owner[face], scene.faces.name[face]
         return scene.elements[int(owner)], scene.face_names[int(name)]
-    # A body throws back what its parent brought there.
-    solid = int(trace.beams.end_row[start.parent[beam]])
-    number = int(scene.solids.name[solid])
+    number = int(scene.solids.name[start.body[beam]])
     return (scene.names[number] if number >= 0 else BENCH), "front"
-
-
-def face_left(trace: Trace, beam: int) -> str:
-    """Return ``element.face`` of what a beam left, or the name alone of a source or body."""
-    name, face = left(trace, beam)
-    return name if trace.beams.start.face[beam] < 0 else f"{name}.{face}"
