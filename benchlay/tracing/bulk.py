@@ -13,7 +13,7 @@ _CLEAR, _ABSORBER, _POLARIZER, _RETARDER, _ROTATOR = range(len(BULKS))
 
 
 def passage(front: Front, scene: Scene, length_mm: Floats) -> tuple[Floats, Floats]:
-    """Return the coherency (4, N) at the end of each leg inside an optic, and what was absorbed (N,).
+    """Return coherency (4, N) at the end of legs inside an optic, and what was absorbed (N,).
 
     Parameters
     ----------

@@ -163,7 +163,8 @@ CASES = [
             "  green: {wavelength: 532, power: 1 mW, beam: {waist_radius: 0.5}, at: [100,"
             " 450], heading: 0}\n"
             "elements:\n"
-            "  R1: {kind: grating, size: [9, 9], lines: 600, orders: {0: 1}, after: green, distance: 9}\n"
+            "  R1: {kind: grating, size: [9, 9], lines: 600, orders: {0: 1}, after: green,"
+            " distance: 9}\n"
         ),
         [
             (
