@@ -55,7 +55,6 @@ from benchlay.checks._check import (
     above,
     power_text,
     unjudged,
-    wavelength_text,
 )
 from benchlay.findings import Finding, Severity
 from benchlay.geometry.polygon import Point
@@ -140,8 +139,7 @@ def _finding(context: Context, variant: int, beam: int, way: _Way, power: float)
         check=NAME,
         severity=SEVERITY,
         message=(
-            f"{power_text(power)} of {wavelength_text(context.wavelength_nm(beam))} from "
-            f"'{context.source_of(beam)}', last met by '{name}', reaches {way.what} '{way.name}'"
+            f"{power_text(power)} of {context.from_words(beam)} reaches {way.what} '{way.name}'"
         ),
         expected=f"at most {power_text(limit)} at doors and windows",
         remedy=f"end the beam on a dump or screen before it reaches {way.what} '{way.name}'",

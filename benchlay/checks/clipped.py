@@ -66,6 +66,8 @@ NAME = "clipped"
 # The bench does not do what it was drawn for.
 SEVERITY = Severity.FAIL
 
+_IN_THE_MIDDLE_MM = 1e-3  # nobody sets a beam to a micrometre
+
 
 def check(context: Context, variant: int) -> Iterator[Finding]:
     """Report each beam and optic at which more is lost than the layout allows."""
@@ -81,7 +83,7 @@ def _finding(context: Context, variant: int, loss: Loss, clip: float) -> Finding
     room = _room(context, loss, clip)
     routes = " and ".join(f"'{name}'" for name in context.routes.routes_of(beam))
     where = place_words(loss.sink, loss.name, loss.part)
-    off = "" if room is None else f", which it meets {length_text(room.off_mm)} from the middle"
+    off = "" if room is None else f", {_met(room)}"
     return Finding(
         check=NAME,
         severity=SEVERITY,
@@ -113,6 +115,12 @@ def _room(context: Context, loss: Loss, clip: float) -> Room | None:
         if off_face is not None:
             return room_at(context.trace, loss.beam, face, off_face, clip)
     return None
+
+
+def _met(room: Room) -> str:
+    if room.off_mm < _IN_THE_MIDDLE_MM:
+        return "met in the middle"
+    return f"met {length_text(room.off_mm)} from the middle"
 
 
 def _allowed(room: Room | None) -> str:

@@ -77,7 +77,6 @@ from benchlay.checks._check import (
     power_text,
     rounded_up,
     unjudged,
-    wavelength_text,
 )
 from benchlay.findings import Finding, KeyPart, Severity
 from benchlay.layout.enclosure import Opening
@@ -234,15 +233,14 @@ def _finding(
     beams = context.trace.beams
     at = context.point(beams.start.position[beam] + found.way_mm * beams.start.direction[beam])
     name = context.left_name(beam)
-    nm = context.wavelength_nm(beam)
     limit = float(context.limit_w[beam])
     how, remedy = _how(context, variant, line, found, at)
     return Finding(
         check=NAME,
         severity=SEVERITY,
         message=(
-            f"{power_text(power)} of {wavelength_text(nm)} from '{context.source_of(beam)}', "
-            f"last met by '{name}', {how} at a height of {length_text(at[2])}"
+            f"{power_text(power)} of {context.from_words(beam)} {how} at a height of "
+            f"{length_text(at[2])}"
         ),
         expected=f"at most {power_text(limit)} beyond {_limits_of_bench(line)}",
         remedy=remedy,

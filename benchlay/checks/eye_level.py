@@ -59,7 +59,6 @@ from benchlay.checks._check import (
     listed,
     power_text,
     unjudged,
-    wavelength_text,
 )
 from benchlay.findings import Finding, Severity
 from benchlay.layout.layout import Layout
@@ -148,8 +147,7 @@ def _finding(
         check=NAME,
         severity=SEVERITY,
         message=(
-            f"{power_text(power)} of {wavelength_text(context.wavelength_nm(beam))} from "
-            f"'{context.source_of(beam)}', last met by '{name}', runs {height / 1e3:.4g} m above "
+            f"{power_text(power)} of {context.from_words(beam)} runs {height / 1e3:.4g} m above "
             f"the floor, where {who} {'has' if len(band.who) == 1 else 'have'} their eyes"
         ),
         expected=(

@@ -195,7 +195,7 @@ def _finding(
         check=NAME,
         severity=SEVERITY,
         message=(
-            f"{power_text(total)} of {wavelength_text(nm)} from '{source}', sent aside by "
+            f"{power_text(total)} of {wavelength_text(nm)} from '{source}', sent back by "
             f"'{since}', comes back into '{name}', {length_text(worst.off_mm)} from its middle "
             f"and {angle_text(worst.turn_rad)} from its axis"
         ),

@@ -123,19 +123,17 @@ def _finding(
         told, other = (b, a) if a.part in _SHEETS else (a, b)
     else:
         told, other = b, a  # the later name
-    near = (
-        f"stands {length_text(gap)} from"
-        if gap > 0.0
-        else f"overlaps by {length_text(-gap)}"
-        if gap < 0.0
-        else "touches"
-    )
+    there = f"the {other.part} of '{other.name}'"
+    if gap > 0.0:
+        near = f"stands {length_text(gap)} from {there}"
+    else:
+        near = f"overlaps {there} by {length_text(-gap)}" if gap < 0.0 else f"touches {there}"
     move = limit - gap
     span = context.span_of(other.name, variant)
     return Finding(
         check=NAME,
         severity=SEVERITY,
-        message=f"the {told.part} of '{told.name}' {near} the {other.part} of '{other.name}'",
+        message=f"the {told.part} of '{told.name}' {near}",
         expected=f"a clearance of at least {length_text(limit)}",
         remedy=f"move '{told.name}' or '{other.name}' apart by {rounded_up(move, 3):g} mm or more",
         element=told.name,

@@ -50,7 +50,7 @@ import numpy as np
 
 from benchlay.checks._check import Context, above, power_text
 from benchlay.findings import Finding, Severity
-from benchlay.tracing.beams import FACE
+from benchlay.tracing.beams import FACE, NOTHING
 
 NAME = "route-broken"
 
@@ -109,6 +109,8 @@ def _finding(context: Context, beam: int, number: int, reached: int) -> Finding:
 
 def _instead(context: Context, beam: int, wanted: str) -> str:
     """Say where the light goes instead."""
+    if context.trace.beams.end_kind[beam] == NOTHING:
+        return "leaves the bench and meets nothing"
     if context.routes.met(beam) != wanted:
         return f"goes to {context.end_words(beam)} instead"
     if not _goes_on(context, beam):

@@ -14,7 +14,7 @@ from benchlay.checks._check.limits import LineLimit
 from benchlay.checks._check.meetings import Meetings
 from benchlay.checks._check.power import accessible_w, peak_irradiance_w_m2
 from benchlay.checks._check.routes import Routes
-from benchlay.checks._check.words import place_words
+from benchlay.checks._check.words import place_words, wavelength_text
 from benchlay.document.span import Span
 from benchlay.findings import KeyPart
 from benchlay.layout.layout import Layout
@@ -205,6 +205,16 @@ class Context:
         while parent[chain[-1]] >= 0:
             chain.append(int(parent[chain[-1]]))
         return chain
+
+    def from_words(self, beam: int) -> str:
+        """Say whose light a beam is and what it left last.
+
+        The wavelength comes first, as in "633 nm from 'red', last at 'M1'".
+        """
+        light = f"{wavelength_text(self.wavelength_nm(beam))} from '{self.source_of(beam)}'"
+        if self.trace.beams.start.event[beam] == EMITTED:
+            return f"{light} itself"
+        return f"{light}, last at '{self.left_name(beam)}',"
 
     def chain(self, beam: int) -> tuple[KeyPart, ...]:
         """Return source, wavelength and what was met in turn: the same from run to run."""

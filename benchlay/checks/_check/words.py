@@ -59,7 +59,7 @@ def angle_text(angle_rad: float) -> str:
     >>> angle_text(0.5)
     '28.648°'
     """
-    return f"{round(degrees(angle_rad), 3):g}°"
+    return f"{round(degrees(angle_rad), 3) + 0.0:g}°"
 
 
 def share_text(share: float) -> str:

@@ -1,0 +1,123 @@
+"""No mounting hole is within reach of what holds an element.
+
+Why it matters
+--------------
+What cannot be bolted or clamped down moves at the first touch.
+
+Fails
+-----
+.. code-block:: yaml
+
+   bench: {size: [800, 400], holes: {pitch: 100, first: [100, 100]}}
+   sources:
+     red: {wavelength: 633, power: 5 mW, beam: {waist_radius: 0.5}, at: [100, 200], heading: 0}
+   elements:
+     M1:  # <- hole-miss
+       {kind: mirror, after: red, distance: 250, turn: left 90, diameter: 25.4, metal: silver}
+
+Passes
+------
+.. code-block:: yaml
+
+   bench: {size: [800, 400], holes: {pitch: 25, first: [25, 25]}}
+   sources:
+     red: {wavelength: 633, power: 5 mW, beam: {waist_radius: 0.5}, at: [100, 200], heading: 0}
+   elements:
+     M1:
+       {kind: mirror, after: red, distance: 250, turn: left 90, diameter: 25.4, metal: silver}
+
+What it does not see
+--------------------
+Where in the foot its slots are: a hole anywhere under it counts. Holes that another foot
+covers. A post without a foot is taken to be held by a fork. Sources, and what stands on the
+bench by its own weight.
+
+Source
+------
+A clamping fork reaches some 40 mm from the axis of a post (common practice).
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+import numpy as np
+import shapely
+
+from benchlay.checks._check import Body, Context, length_text, rounded_up
+from benchlay.findings import Finding, Severity
+from benchlay.layout.bench import Bench
+from benchlay.scene.tables import Floats
+
+NAME = "hole-miss"
+
+# It can be set down, and with a clamp or a plate it can be held.
+SEVERITY = Severity.WARN
+
+_FORK_MM = 40.0  # from the axis of a bare post
+_UNDER_MM = 1e-6
+
+
+def check(context: Context, variant: int) -> Iterator[Finding]:
+    """Report each element whose foot covers no hole, or whose post has none in reach."""
+    bench = context.layout(variant).bench
+    holes = _holes(bench)
+    if holes is None:
+        return
+    points = shapely.points(holes)
+    for name, body in sorted(_held(context, variant).items()):
+        foot = body.part == "foot"
+        middle = shapely.centroid(body.outline)
+        reach = _UNDER_MM if foot else _FORK_MM
+        away = shapely.distance(points, body.outline if foot else middle)
+        nearest = float(away.min()) if len(away) else np.inf
+        if nearest > reach:
+            yield _finding(context, variant, name, body.part, nearest - (0.0 if foot else reach))
+
+
+def _holes(bench: Bench) -> Floats | None:
+    """Return the places of all holes on the bench (N, 2); None without a grid."""
+    if bench.holes is None:
+        return None
+    pitch, (x0, y0) = bench.holes.pitch_mm, bench.holes.first_mm
+    outline = np.array(bench.outline)
+    x = np.arange(x0, outline[:, 0].max() + _UNDER_MM, pitch)
+    y = np.arange(y0, outline[:, 1].max() + _UNDER_MM, pitch)
+    grid = np.stack(np.meshgrid(x, y), axis=-1).reshape(-1, 2)
+    inside = shapely.covers(shapely.Polygon(outline), shapely.points(grid))
+    holes: Floats = grid[inside]
+    return holes
+
+
+def _held(context: Context, variant: int) -> dict[str, Body]:
+    """Return what holds each element down: its foot, else its post."""
+    elements = context.state(variant).elements
+    found: dict[str, Body] = {}
+    for row in context.bodies.rows(variant).tolist():
+        body = context.bodies.body(row)
+        bare = body.part == "post" and body.name not in found
+        if body.name in elements and (body.part == "foot" or bare):
+            found[body.name] = body
+    return found
+
+
+def _finding(context: Context, variant: int, name: str, part: str, short: float) -> Finding:
+    item = context.state(variant).elements[name]
+    what = f"under the foot of '{name}'" if part == "foot" else f"in reach of the post of '{name}'"
+    return Finding(
+        check=NAME,
+        severity=SEVERITY,
+        message=f"no mounting hole is {what}; the next is {length_text(short)} out of reach",
+        expected=(
+            "a hole under the foot"
+            if part == "foot"
+            else f"a hole within {length_text(_FORK_MM)} of the post's axis"
+        ),
+        remedy=f"move '{name}' by {rounded_up(short, 3):g} mm, or give it a larger foot",
+        element=name,
+        at=item.pose.at,
+        span=context.span_of(name, variant),
+        value=short,
+        limit=0.0,
+        unit="mm",
+    )
