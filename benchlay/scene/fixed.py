@@ -4,8 +4,9 @@ from __future__ import annotations
 
 import numpy as np
 
+from benchlay.elements._kind import Inside
 from benchlay.geometry.distinct import distinct
-from benchlay.scene.tables import Faces, Fixed, Floats, Ints, Solids
+from benchlay.scene.tables import Faces, Fixed, Flags, Floats, Ints, Solids
 
 # Beams are met by their distance from a solid's middle, of which rounding takes this much.
 _ROUNDING = 1e-9
@@ -23,6 +24,7 @@ def fixed_products(faces: Faces, solids: Solids, item_of_face: Ints) -> Fixed:
         _products(f.origin, f.left) + f.middle[:, 0],
         _products(f.origin, f.up) + f.middle[:, 1],
     )
+    own = _own_faces(item_of_face)
     return Fixed(
         np.ascontiguousarray(np.concatenate((f.normal, f.left, f.up)).T),
         np.concatenate(offsets),
@@ -33,7 +35,8 @@ def fixed_products(faces: Faces, solids: Solids, item_of_face: Ints) -> Fixed:
         np.ascontiguousarray(s.centre.T),
         _products(s.centre, s.centre),
         s.reach * (1.0 + _ROUNDING) + _SLACK_MM,
-        _own_faces(item_of_face),
+        own,
+        *_own_figures(f, own),
         distinct(s.hole_solid),
     )
 
@@ -41,6 +44,14 @@ def fixed_products(faces: Faces, solids: Solids, item_of_face: Ints) -> Fixed:
 def _products(first: Floats, second: Floats) -> Floats:
     product: Floats = np.einsum("ij,ij->i", first, second)
     return product
+
+
+def _own_figures(f: Faces, own: Ints) -> tuple[Floats, Floats, Flags]:
+    if not len(f.owner):
+        return np.zeros((1, 1, 3, 3)), np.zeros((1, 1, 3)), np.zeros((1, 1), dtype=np.bool_)
+    axes = np.stack((f.normal, f.left, f.up), axis=1)
+    middle = f.origin + f.middle[:, :1] * f.left + f.middle[:, 1:] * f.up
+    return axes[own], middle[own], (f.inside == Inside.BOTH)[own]
 
 
 def _planes_of(s: Solids) -> Ints:

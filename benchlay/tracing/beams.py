@@ -49,10 +49,7 @@ class Ledger(NamedTuple):
 
 
 def gathered(
-    parts: list[tuple[np.ndarray, ...]], last_axis: tuple[int, ...] = ()
+    parts: list[tuple[Ints, Ints, Ints, Floats]],
 ) -> list[np.ndarray]:
-    """Return columns of several generations as one; those in `last_axis` join along it."""
-    return [
-        np.concatenate(values, axis=-1 if number in last_axis else 0)
-        for number, values in enumerate(zip(*parts, strict=True))
-    ]
+    """Return columns of several batches as one."""
+    return [np.concatenate(values) for values in zip(*parts, strict=True)]

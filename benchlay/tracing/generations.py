@@ -19,8 +19,8 @@ from benchlay.tracing.children import children
 from benchlay.tracing.coverage import covered, face_covers, near, radius_of, reach_of
 from benchlay.tracing.front import OUTSIDE, Front, join
 from benchlay.tracing.hits import FACE, Hits, inside_hits, nearest
-from benchlay.tracing.run_state import RunState
-from benchlay.tracing.section import Cut, cut, uncut
+from benchlay.tracing.run_state import Leg, RunState
+from benchlay.tracing.section import cut, uncut
 from benchlay.tracing.ways import Ways
 
 MOST_BATCHES = 12_000
@@ -82,7 +82,7 @@ def run(front: Front, scene: Scene, ways: Ways, floor_w: Floats) -> Traced:
         bounded[rest.variant] = True
         # The leg they would have been is not there: they are booked with their parents.
         state.book(rest.parent - state.count, SINK["below-floor"], -1, rest.power)
-    traced = _finished(state) if state.fronts else _dark(front)
+    traced = _finished(state) if state.legs else _dark(front)
     return Traced(*traced, bounded)
 
 
@@ -150,7 +150,9 @@ def _advance(ready: _Ready, state: RunState, *, cutting: bool) -> Front:
         coherency=coherent,
         parent=np.arange(len(power)) + state.count,
     )
-    _record(front, arrived, core, hits, divided, state)
+    state.legs.append(
+        Leg(front, hits, core.position, arrived.coherency, divided.kept, divided.core)
+    )
     born = children(core, hits, divided.spills, state)
     state.count += len(power)
     return born
@@ -169,32 +171,6 @@ def _after_passage(front: Front, length: Floats, state: RunState) -> Front:
     return front.changed(coherency=whole)
 
 
-def _record(
-    front: Front, arrived: Front, core: Front, hits: Hits, divided: Cut, state: RunState
-) -> None:
-    on_face = hits.kind == FACE
-    row = np.where(on_face, hits.row, 0)
-    table = state.scene.faces.unstated
-    unstated = on_face & table[row, front.wave] if len(table) else on_face
-    state.fronts.append(front)
-    state.ends.append(
-        (
-            hits.kind,
-            hits.row,
-            core.position,
-            hits.distance,
-            arrived.coherency,
-            core.moments,
-            divided.kept,
-            divided.core,
-            np.where(on_face, hits.left, np.nan),
-            np.where(on_face, hits.up, np.nan),
-            np.where(on_face, np.abs(hits.slope), np.nan),
-            unstated,
-        )
-    )
-
-
 def _dark(front: Front) -> tuple[Beams, Ledger]:
     """Return the trace of a bench on which nothing emits."""
     none, nothing = np.zeros(0, dtype=np.int64), np.zeros(0)
@@ -205,8 +181,26 @@ def _dark(front: Front) -> tuple[Beams, Ledger]:
 
 
 def _finished(state: RunState) -> tuple[Beams, Ledger]:
-    start = join(state.fronts)
-    ends = gathered(state.ends, last_axis=(4, 5))
+    fronts, hits, places, coherencies, kept, cores = zip(*state.legs, strict=True)
+    start, met = join(list(fronts)), Hits.joined(list(hits))
+    on_face = met.kind == FACE
+    row = np.where(on_face, met.row, 0)
+    table = state.scene.faces.unstated
+    beams = Beams(
+        start,
+        met.kind,
+        met.row,
+        np.concatenate(places),
+        met.distance,
+        np.concatenate(coherencies, axis=1),
+        moments.propagate(start.moments, met.distance, start.index),
+        np.concatenate(kept),
+        np.concatenate(cores),
+        np.where(on_face, met.left, np.nan),
+        np.where(on_face, met.up, np.nan),
+        np.where(on_face, np.abs(met.slope), np.nan),
+        on_face & table[row, start.wave] if len(table) else on_face,
+    )
     none = np.zeros(0, dtype=np.int64)
     ledger = gathered(state.landings) if state.landings else [none, none, none, np.zeros(0)]
-    return Beams(start, *ends), Ledger(*ledger)
+    return beams, Ledger(*ledger)

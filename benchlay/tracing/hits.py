@@ -107,24 +107,27 @@ class FacesMet(NamedTuple):
 
 def inside_hits(front: Front, scene: Scene) -> Hits:
     """Return which face of its own optic each beam inside glass meets."""
-    f = scene.faces
-    rows = scene.fixed.own_faces[front.within]  # (B, K)
-    normal, away = f.normal[rows], f.origin[rows] - front.position[:, None, :]
-    slope = np.einsum("bki,bi->bk", normal, front.direction)
-    gap = np.einsum("bki,bki->bk", normal, away)
-    leaving = (slope > PARALLEL) | ((f.inside[rows] == Inside.BOTH) & (np.abs(slope) > PARALLEL))
+    f, fixed = scene.faces, scene.fixed
+    rows = fixed.own_faces[front.within]  # (B, K)
+    axes = fixed.own_axes[front.within]
+    away = fixed.own_middles[front.within] - front.position[:, None, :]
+    onward = np.einsum("bkai,bi->abk", axes, front.direction)
+    gap, left, up = np.einsum("bkai,bki->abk", axes, away)
+    slope = onward[0]
+    leaving = (slope > PARALLEL) | (fixed.own_both[front.within] & (np.abs(slope) > PARALLEL))
     distance = np.where(leaving, gap, np.inf) / np.where(leaving, slope, 1.0)
-    to_face = front.direction[:, None, :] * np.where(leaving, distance, 0.0)[..., None] - away
-    left = np.einsum("bki,bki->bk", f.left[rows], to_face) - f.middle[rows, 0]
-    up = np.einsum("bki,bki->bk", f.up[rows], to_face) - f.middle[rows, 1]
+    along = np.where(leaving, distance, 0.0)
+    left = along * onward[1] - left
+    up = along * onward[2] - up
     valid = leaving & (rows >= 0) & (rows != front.face[:, None]) & (distance > -_TOUCH_MM)
     # A spilled lump runs on the chief ray's line wherever that is: no outline holds it.
     valid &= in_outline(left, up, f.radii[rows], f.round[rows]) | front.lump[:, None]
-    # Between the faces of an ideal lens, which stand in one place, light beyond the critical
-    # angle would go to and fro for ever: it is on its way to the edge and ends on the barrel.
-    tangential = front.index[:, None] ** 2 * (1.0 - slope * slope)
-    total = tangential >= scene.index_outside[front.wave][:, None] ** 2
-    valid &= ~((f.acts[rows] == Acts.LENS) & total)
+    lens = f.acts[rows] == Acts.LENS
+    if lens.any():
+        # Between the faces of an ideal lens, which stand in one place, light beyond the
+        # critical angle would go to and fro for ever: it ends on the barrel.
+        tangential = front.index[:, None] ** 2 * (1.0 - slope * slope)
+        valid &= ~(lens & (tangential >= scene.index_outside[front.wave][:, None] ** 2))
     distance = np.where(valid, distance, np.inf)
     best = distance.argmin(axis=1)
     at = (np.arange(len(best)), best)

@@ -2,11 +2,25 @@
 
 from __future__ import annotations
 
+from typing import NamedTuple
+
 import numpy as np
 
 from benchlay.scene.tables import Floats, Ints, Scene
 from benchlay.tracing.front import Front
+from benchlay.tracing.hits import Hits
 from benchlay.tracing.ways import Ways
+
+
+class Leg(NamedTuple):
+    """What one batch adds to the record of legs."""
+
+    front: Front  # at the start
+    hits: Hits
+    place: Floats  # (B, 3) of the end, mm
+    arrived: Floats  # (4, B) coherency at the end, before any cut
+    kept: Floats  # (B,) after the cut
+    core: Floats  # (B,) W
 
 
 class RunState:
@@ -16,8 +30,7 @@ class RunState:
         self.scene = scene
         self.ways = ways
         self.floor_w = floor_w  # (L,)
-        self.fronts: list[Front] = []
-        self.ends: list[tuple[np.ndarray, ...]] = []
+        self.legs: list[Leg] = []
         self.landings: list[tuple[Ints, Ints, Ints, Floats]] = []
         self.count = 0
 
