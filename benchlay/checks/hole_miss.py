@@ -43,6 +43,7 @@ from collections.abc import Iterator
 
 import numpy as np
 import shapely
+from shapely.geometry.base import BaseGeometry
 
 from benchlay.checks._check import Body, Context, length_text, rounded_up
 from benchlay.findings import Finding, Severity
@@ -64,15 +65,29 @@ def check(context: Context, variant: int) -> Iterator[Finding]:
     holes = _holes(bench)
     if holes is None:
         return
-    points = shapely.points(holes)
     for name, body in sorted(_held(context, variant).items()):
         foot = body.part == "foot"
-        middle = shapely.centroid(body.outline)
         reach = _UNDER_MM if foot else _FORK_MM
-        away = shapely.distance(points, body.outline if foot else middle)
-        nearest = float(away.min()) if len(away) else np.inf
+        nearest = _nearest(holes, body.outline if foot else shapely.centroid(body.outline), reach)
         if nearest > reach:
             yield _finding(context, variant, name, body.part, nearest - (0.0 if foot else reach))
+
+
+def _nearest(holes: Floats, place: BaseGeometry, reach: float) -> float:
+    """Return how far the nearest hole is; inf for no hole.
+
+    Only holes by the box round the place are measured: a bench has thousands.
+    """
+    low_x, low_y, high_x, high_y = shapely.bounds(place)
+    beside_x = np.maximum(low_x - holes[:, 0], holes[:, 0] - high_x)
+    beside_y = np.maximum(low_y - holes[:, 1], holes[:, 1] - high_y)
+    near = np.maximum(beside_x, beside_y) <= reach
+    if not near.any():
+        # No nearer than the nearest to the box, and the box no farther than its own size.
+        apart = np.hypot(np.maximum(beside_x, 0.0), np.maximum(beside_y, 0.0))
+        near = apart <= apart.min(initial=np.inf) + np.hypot(high_x - low_x, high_y - low_y)
+    away = shapely.distance(shapely.points(holes[near]), place)
+    return float(away.min(initial=np.inf))
 
 
 def _holes(bench: Bench) -> Floats | None:
@@ -84,6 +99,8 @@ def _holes(bench: Bench) -> Floats | None:
     x = np.arange(x0, outline[:, 0].max() + _UNDER_MM, pitch)
     y = np.arange(y0, outline[:, 1].max() + _UNDER_MM, pitch)
     grid = np.stack(np.meshgrid(x, y), axis=-1).reshape(-1, 2)
+    if bench.size_mm is not None:
+        return grid[(grid >= 0.0).all(axis=1)]
     inside = shapely.covers(shapely.Polygon(outline), shapely.points(grid))
     holes: Floats = grid[inside]
     return holes

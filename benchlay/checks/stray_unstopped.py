@@ -69,7 +69,7 @@ from benchlay.checks._check import (
 )
 from benchlay.elements._kind import Acts
 from benchlay.findings import Finding, Severity
-from benchlay.scene.tables import PARTS, SINKS
+from benchlay.scene.tables import PARTS, SINK, SINKS
 from benchlay.tracing.beams import SOLID
 from benchlay.tracing.front import EVENTS, OUTSIDE
 
@@ -113,7 +113,10 @@ def check(context: Context, variant: int) -> Iterator[Found]:
 def _groups(context: Context, variant: int) -> dict[_Group, list[_Landing]]:
     trace = context.trace
     ledger, start = trace.ledger, trace.beams.start
-    mine = (start.variant[ledger.beam] == variant) & (start.node[ledger.beam] < 0)
+    # Where a state cuts a route short on purpose, what goes on belongs to no route any more.
+    cut_short = np.isin(ledger.beam, context.routes.interrupted(variant))
+    stray = (start.node[ledger.beam] < 0) | (cut_short & (ledger.sink != SINK["rim"]))
+    mine = (start.variant[ledger.beam] == variant) & stray
     mine &= ~np.isin(ledger.sink, list(_PROPER | _ELSEWHERE_TOLD)) & (ledger.power > 0.0)
     mine &= start.within[ledger.beam] == OUTSIDE
     rows = np.flatnonzero(mine)

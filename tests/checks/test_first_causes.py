@@ -145,6 +145,26 @@ def test_a_flip_mirror_brought_in_by_a_state_is_not_excused_by_that(make_context
     assert in_states(make_context, text) == {("route-broken", "T2"): ("aside",)}
 
 
+def test_light_that_a_state_lets_go_on_has_to_be_stopped(make_context):
+    text = (SOURCE + ELEMENTS + ROUTE).replace("0.3 mW", "30 mW") + STATES.replace(
+        "{elements.M1.facing: 100}", "{elements.M2.out: yes}"
+    )
+    psu = """  psu:
+    kind: obstacle
+    at: [400, 550]
+    facing: 0
+    outline: [[-20, 0], [20, 0], [20, 20], [-20, 20]]
+    to_height: 200
+  T1:"""
+    found = in_states(make_context, text.replace("  T1:", psu))
+    assert found == {("stray-unstopped", "M1"): ("blocked",)}
+    found = in_states(
+        make_context,
+        text.replace("  T1:", "  D1: {kind: dump, at: [400, 550], facing: 270}\n  T1:"),
+    )
+    assert found == {}
+
+
 def test_dark_in_one_state_only_is_no_finding(make_context):
     text = SOURCE + FLIP.replace(
         "  straight: {elements.F1.out: yes}", "  none: {sources.red.power: 0.2 mW}"

@@ -99,6 +99,15 @@ class Routes:
         """Whether a beam is the last of routes which the state all cuts short on purpose."""
         return beam in self._ended and all(leg.excused for leg in self._ended[beam])
 
+    def interrupted(self, variant: int) -> list[int]:
+        """Return the beams of a state that go on where a state cuts all their routes short."""
+        start = self._trace.beams.start
+        return [
+            beam
+            for beam in sorted(self._ended)
+            if start.variant[beam] == variant and self.lost_on_purpose(beam)
+        ]
+
     @cached_property
     def _ended(self) -> dict[int, list[Leg]]:
         """The routes that end too early with a beam."""
