@@ -9,6 +9,7 @@ import numpy as np
 from benchlay.optics._shares_curves import (
     CUT_RADIUS,
     DEPTH_TIE_MM,
+    Bodies,
     Bools,
     Floats,
     Ints,
@@ -18,11 +19,14 @@ from benchlay.optics._shares_curves import (
     transform,
 )
 from benchlay.optics._shares_prepare import Section
+from benchlay.optics._shares_windows import ellipse_window, polygon_window
 
 _EMPTY = 1e-12  # a stretch thinner than this part of its radius is rounding
 # Not the middle: in a symmetric layout outlines that touch do so in the middle of an
 # interval, and the one ray on which they are one would stand for all.
 _PROBE = 0.4637
+_APART = 32.0  # keeps the angles of one problem from those of the next
+_MOST = 14.0  # no angle of a probing ray, nor of a window, is as large
 _ELEMENTS = 60_000  # of the largest table at a time: it should stay in the cache
 
 
@@ -30,6 +34,7 @@ class Intervals(NamedTuple):
     """Intervals of directions between break angles, a row an interval."""
 
     problem: Ints  # (I,)
+    angle: Floats  # (I,) rad, where it begins
     width: Floats  # (I,) rad, below pi
     begin: Floats  # (2, I) direction as a unit vector
     probe: Floats  # (2, I) the ray whose order stands for the interval
@@ -70,7 +75,7 @@ def intervals(problem: Ints, angle: Floats, problems: int) -> Intervals:
     follow = np.where(last, first[problem], follow)
     width = angle[follow] - angle + np.where(last, 2.0 * np.pi, 0.0)
     begin, probe = _unit(angle), _unit(angle + _PROBE * width)
-    return Intervals(problem, width, begin, probe, begin[:, follow], first)
+    return Intervals(problem, angle, width, begin, probe, begin[:, follow], first)
 
 
 def _unit(angle: Floats) -> Floats:
@@ -78,40 +83,61 @@ def _unit(angle: Floats) -> Floats:
 
 
 def cast(section: Section, sweep: Intervals) -> Rays:
-    """Send the probing ray of each interval through all bodies of its problem."""
+    """Send the probing ray of each interval through the bodies that may lie on it."""
     bodies = section.bodies
-    many = np.diff(bodies.first)[sweep.problem]
-    first = np.cumsum(many) - many
-    total = int(many.sum())
-    enter, leave = np.full(total, CUT_RADIUS), np.zeros(total)
-    row = np.zeros(total, dtype=np.intp)
-    which, interval = _members(section, sweep, section.polygons.body)
+    corner = section.polygons.corner
+    which, interval = _facing(section, sweep, section.polygons.body, polygon_window(corner))
     near, far, edge_radius = _through_polygons(section, which, sweep.probe[:, interval])
-    place = first[interval] + bodies.slot[section.polygons.body[which]]
-    enter[place], leave[place], row[place] = near, far, np.arange(len(place))
-    which, interval = _members(section, sweep, section.ellipses.body)
-    near, far = _through_ellipses(section, which, sweep.probe[:, interval])
-    place = first[interval] + bodies.slot[section.ellipses.body[which]]
-    enter[place], leave[place], row[place] = near, far, which
-    interval = np.repeat(np.arange(len(many)), many)
-    body = np.arange(total) - (first - bodies.first[sweep.problem])[interval]
-    met = (enter < leave) & (enter < CUT_RADIUS)
+    window = ellipse_window(section.ellipses)
+    round_, at = _facing(section, sweep, section.ellipses.body, window)
+    round_near, round_far = _through_ellipses(section, round_, sweep.probe[:, at])
+    enter, leave = np.concatenate((near, round_near)), np.concatenate((far, round_far))
+    row = np.concatenate((np.arange(len(which)), round_))
+    body = np.concatenate((section.polygons.body[which], section.ellipses.body[round_]))
+    interval = np.concatenate((interval, at))
+    met = np.flatnonzero((enter < leave) & (enter < CUT_RADIUS))
+    code = interval[met] * (int(bodies.slot.max(initial=0)) + 1) + bodies.slot[body[met]]
+    order = np.argsort(code)
+    code, met = code[order], met[order]
+    body, interval = body[met], interval[met]
+    host, kept = _hosts(bodies, body, interval, code)
+    met, body, host = met[kept], body[kept], host[kept]
+    begin = starts(interval[kept], len(sweep.problem))
+    leave = np.minimum(leave[met], CUT_RADIUS)
+    return Rays(begin, body, host, enter[met], leave, row[met], edge_radius)
+
+
+def _hosts(bodies: Bodies, body: Ints, interval: Ints, code: Ints) -> tuple[Ints, Bools]:
+    """Return where each hole's body stands in its interval, and which rows count.
+
+    A hole counts where its body is met; being last in the order, holes that do not count
+    move nobody's place.
+    """
+    host, kept = np.full(len(body), -1), np.ones(len(body), dtype=bool)
     hole = np.flatnonzero(bodies.host[body] >= 0)
-    around = first[interval[hole]] + bodies.host[body[hole]]
-    met[hole] &= met[around]
-    kept = np.flatnonzero(met)
-    begin = starts(interval[kept], len(many))
-    host = np.full(total, -1)
-    host[hole] = np.cumsum(met)[around] - 1 - begin[interval[hole]]
-    leave = np.minimum(leave, CUT_RADIUS)
-    return Rays(begin, body[kept], host[kept], enter[kept], leave[kept], row[kept], edge_radius)
+    if len(hole):
+        wanted = code[hole] - bodies.slot[body[hole]] + bodies.host[body[hole]]
+        place = np.minimum(np.searchsorted(code, wanted), len(code) - 1)
+        kept[hole] = code[place] == wanted
+        host[hole] = place - np.searchsorted(interval, interval[hole])
+    return host, kept
 
 
-def _members(section: Section, sweep: Intervals, body: Ints) -> tuple[Ints, Ints]:
-    """Pairs of a shape and an interval of its problem."""
-    problem = section.bodies.problem[body]
-    begin = sweep.first[problem]
-    return spans(begin, sweep.first[problem + 1] - begin)
+def _facing(
+    section: Section, sweep: Intervals, body: Ints, window: tuple[Floats, Floats]
+) -> tuple[Ints, Ints]:
+    """Pairs of a shape and an interval of its problem in whose direction the shape lies."""
+    probe = sweep.angle + _PROBE * sweep.width  # rising through less than a turn
+    key = sweep.problem * _APART + probe
+    problem = section.bodies.problem[body] * _APART
+    shape, member = [], []
+    for turn in (-2.0 * np.pi, 0.0, 2.0 * np.pi):
+        first = np.searchsorted(key, problem + np.maximum(window[0] + turn, -_MOST))
+        last = np.searchsorted(key, problem + np.minimum(window[1] + turn, _MOST))
+        a, b = spans(first, np.maximum(last - first, 0))
+        shape.append(a)
+        member.append(b)
+    return np.concatenate(shape), np.concatenate(member)
 
 
 def _through_polygons(section: Section, which: Ints, ray: Floats) -> tuple[Floats, Floats, Floats]:
