@@ -28,8 +28,6 @@ class Header(Record):
         RecordForm(Room),
         default=None,
         meaning="the room round it",
-        not_yet="walls, doors, windows and people take effect in a later version",
-        not_yet_is_note=True,
     )
     materials: Entries[Material] = key(
         Table(RecordForm(Material)), default=Entries(), meaning="materials by name"

@@ -186,8 +186,6 @@ class RouteKeys(Record):
         RecordForm(Needs),
         default=None,
         meaning="what must arrive",
-        not_yet="needs of routes are read; they are checked by a later version",
-        not_yet_is_note=True,
     )
 
 
