@@ -68,12 +68,12 @@ def check(context: Context, variant: int) -> Iterator[Finding]:
     for name, body in sorted(_held(context, variant).items()):
         foot = body.part == "foot"
         reach = _UNDER_MM if foot else _FORK_MM
-        nearest = _nearest(holes, body.outline if foot else shapely.centroid(body.outline), reach)
+        nearest = _nearest(holes, body.outline if foot else shapely.centroid(body.outline))
         if nearest > reach:
             yield _finding(context, variant, name, body.part, nearest - (0.0 if foot else reach))
 
 
-def _nearest(holes: Floats, place: BaseGeometry, reach: float) -> float:
+def _nearest(holes: Floats, place: BaseGeometry) -> float:
     """Return how far the nearest hole is; inf for no hole.
 
     Only holes by the box round the place are measured: a bench has thousands.
@@ -81,11 +81,11 @@ def _nearest(holes: Floats, place: BaseGeometry, reach: float) -> float:
     low_x, low_y, high_x, high_y = shapely.bounds(place)
     beside_x = np.maximum(low_x - holes[:, 0], holes[:, 0] - high_x)
     beside_y = np.maximum(low_y - holes[:, 1], holes[:, 1] - high_y)
-    near = np.maximum(beside_x, beside_y) <= reach
-    if not near.any():
-        # No nearer than the nearest to the box, and the box no farther than its own size.
-        apart = np.hypot(np.maximum(beside_x, 0.0), np.maximum(beside_y, 0.0))
-        near = apart <= apart.min(initial=np.inf) + np.hypot(high_x - low_x, high_y - low_y)
+    apart = np.hypot(np.maximum(beside_x, 0.0), np.maximum(beside_y, 0.0))
+    # The place touches its box, so no hole is farther from it than from the box by more
+    # than the box's diagonal.
+    diagonal = np.hypot(high_x - low_x, high_y - low_y)
+    near = apart <= apart.min(initial=np.inf) + diagonal + _UNDER_MM
     away = shapely.distance(shapely.points(holes[near]), place)
     return float(away.min(initial=np.inf))
 
