@@ -47,8 +47,9 @@ class Inside(IntEnum):
 class Face(NamedTuple):
     """A plane optical face.
 
-    `normal` points out of the element. `sink` is where light lands that an opaque face
-    ends, and `beside` where light lands that meets the outline outside the clear region.
+    `normal` points out of the element. `volumes` are the numbers of its volumes behind the
+    face and, where the element lies on both sides, before it. `sink` is where light lands
+    that an opaque face ends, and `beside` where light lands that meets the outline outside the clear region.
     """
 
     name: str
@@ -64,6 +65,7 @@ class Face(NamedTuple):
     specular: float = 0.0
     material: str | None = None
     focal_mm: float = 0.0
+    volumes: tuple[int, int] = (0, 0)
 
 
 class Bulk(NamedTuple):
@@ -100,6 +102,17 @@ class Glass(NamedTuple):
     span: Span | None = None
 
 
+class Volume(NamedTuple):
+    """A part of an element that light is inside of: its medium (None: the bench's own).
+
+    `barrel` is where light lands that meets none of the faces round it.
+    """
+
+    glass: Glass | None
+    bulk: Bulk = CLEAR
+    barrel: str = "rim"
+
+
 class Stroke(NamedTuple):
     """A line of the drawing of an element, in its own (x, y), mm.
 
@@ -129,6 +142,12 @@ class Geometry(NamedTuple):
     material: str | None = None
     post_at: tuple[float, float] | None = None
     post_top_mm: float | None = None
+    barrel: str = "rim"
+    further: tuple[Volume, ...] = ()
+
+    def volumes(self) -> tuple[Volume, ...]:
+        """Return what light can be inside of: number 0 is of `glass`, `bulk` and `barrel`."""
+        return (Volume(self.glass, self.bulk, self.barrel), *self.further)
 
 
 class ElementKind(Record):

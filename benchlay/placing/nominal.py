@@ -107,19 +107,20 @@ def _along(
     ray: NominalRay, way: tuple[Step, ...], standing: Standing, media: Media
 ) -> NominalRay | Lost:
     outside = media.index(None, ray.wavelength_nm)
-    glass = standing.geometry.glass
-    within = outside if glass is None else media.index(glass, ray.wavelength_nm)
-    if isnan(within):
+    insides = [media.index(v.glass, ray.wavelength_nm) for v in standing.geometry.volumes()]
+    if any(isnan(index) for index in insides):
         return Lost(
             f"the glass of {standing.name!r} has no known index at {ray.wavelength_nm:g} nm"
         )
+    within: int | None = None
     index = outside
     for name, event in way:
         face = _face(standing, name)
         distance, point, normal = _meet(ray, face, standing.pose)
         if not -_BEHIND_MM <= distance < float("inf"):
             return Lost(f"the beam inside {standing.name!r} does not reach its face {name!r}")
-        behind = _other_index(face, index, outside, within)
+        beyond = _beyond(face, within)
+        behind = outside if beyond is None else insides[beyond]
         if face.acts is Acts.OPAQUE and event == "transmitted" and not _opens(face):
             return Lost(f"face {name!r} of {standing.name!r} is opaque")
         if face.acts is Acts.LENS and event == "transmitted":
@@ -129,15 +130,18 @@ def _along(
             direction = _turned(ray.direction, normal, event, (index, behind), face)
         if direction is None:
             return Lost(f"the beam is totally reflected at face {name!r} of {standing.name!r}")
-        index = behind if event == "transmitted" else index
+        if event == "transmitted":
+            index, within = behind, beyond
         ray = NominalRay(point, direction, ray.wavelength_nm)
     return ray
 
 
-def _other_index(face: Face, index: float, outside: float, within: float) -> float:
-    if face.inside is not Inside.BEHIND:
-        return index
-    return within if index == outside else outside
+def _beyond(face: Face, within: int | None) -> int | None:
+    """Return the volume on the other side of a face, None outside the element."""
+    if face.inside is Inside.NOWHERE:
+        return within
+    before = face.volumes[1] if face.inside is Inside.BOTH else None
+    return face.volumes[0] if within == before else before
 
 
 def _turned(

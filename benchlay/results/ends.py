@@ -40,10 +40,12 @@ class Ends(NamedTuple):
 def ends_of(trace: Trace, rows: Ints) -> Ends:
     """Return how some beams of a trace (`rows`, ascending) end."""
     kind, row = trace.beams.end_kind[rows], trace.beams.end_row[rows]
-    inside = trace.beams.start.within[rows] != OUTSIDE
+    within = trace.beams.start.within[rows]
+    inside = within != OUTSIDE
     sink = np.full(len(rows), OPTIC)
     sink[kind == NOTHING] = SINK["escaped"]
-    sink[(kind == NOTHING) & inside] = SINK["rim"]
+    barrel = (kind == NOTHING) & inside
+    sink[barrel] = trace.scene.bulks.barrel[within[barrel]]
     solid = kind == SOLID
     sink[solid] = trace.scene.solids.sink[row[solid]]
     rims = _at_faces(trace, rows, inside, sink)

@@ -2,27 +2,28 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from math import cos, pi, sin
 
 import numpy as np
 
-from benchlay.elements._kind import Bulk
+from benchlay.elements._kind import Bulk, Volume
 from benchlay.placing.placed import PlacedElement
-from benchlay.scene.tables import BULKS, Bulks
+from benchlay.scene.tables import BULKS, SINK, Bulks
 
 
 def bulks_table(
-    items: list[PlacedElement],
+    items: list[tuple[PlacedElement, Volume]],
     wavelengths_nm: list[float],
-    spoken_for: dict[str, frozenset[float]],
+    spoken_for: Mapping[str, frozenset[float]],
 ) -> Bulks:
-    """Return the insides of distinct placed elements."""
-    bulks = [item.geometry.bulk for item in items]
-    axes = [_axis(item) for item in items]
+    """Return the insides of distinct placed elements, volume by volume."""
+    bulks = [volume.bulk for _, volume in items]
+    axes = [_axis(item, volume.bulk) for item, volume in items]
     shape = (len(items), len(wavelengths_nm))
     phases = [
-        _phase(item.geometry.bulk, nm, spoken_for[item.element.name])
-        for item in items
+        _phase(volume.bulk, nm, spoken_for[item.element.name])
+        for item, volume in items
         for nm in wavelengths_nm
     ]
     passes = [_passes(bulk, nm) for bulk in bulks for nm in wavelengths_nm]
@@ -35,19 +36,20 @@ def bulks_table(
         ),
         np.array(phases, dtype=np.float64).reshape(shape),
         np.array([bulk.thickness_mm for bulk in bulks], dtype=np.float64),
+        np.array([SINK[volume.barrel] for _, volume in items], dtype=np.int64),
     )
 
 
-def _axis(item: PlacedElement) -> tuple[float, float, float]:
+def _axis(item: PlacedElement, bulk: Bulk) -> tuple[float, float, float]:
     """Return the axis in the plan frame.
 
     It is measured from horizontal, anticlockwise to a viewer who looks at the back face: at
     angle 0 it lies to that viewer's right, which is the element's right (-y). What a rotator
     turns about points at that viewer.
     """
-    if item.geometry.bulk.kind == "rotator":
+    if bulk.kind == "rotator":
         return item.pose.turn((-1.0, 0.0, 0.0))
-    angle = item.geometry.bulk.axis_rad
+    angle = bulk.axis_rad
     return item.pose.turn((0.0, -cos(angle), sin(angle)))
 
 

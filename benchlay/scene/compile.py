@@ -6,15 +6,14 @@ from collections.abc import Sequence
 
 import numpy as np
 
-from benchlay.elements._kind import Acts, Face
+from benchlay.elements._kind import Acts, Face, Inside, Volume
 from benchlay.layout.layout import Layout
 from benchlay.layout.materials import BODY
 from benchlay.placing.media import Media
 from benchlay.placing.placed import Placed, PlacedElement, PlacedState
-
 from benchlay.scene.bulks import bulks_table
-from benchlay.scene.fixed import fixed_products
 from benchlay.scene.coatings import Figures, figures, spoken_for
+from benchlay.scene.fixed import fixed_products
 from benchlay.scene.rows import FaceRows, Frames, SolidRows
 from benchlay.scene.solids import solids_table
 from benchlay.scene.surroundings import (
@@ -27,6 +26,7 @@ from benchlay.scene.surroundings import (
 from benchlay.scene.tables import CLOSE_PARTS, PART, SINK, Faces, Flags, Floats, Scene
 
 _PLATE_SINK = {"plate": "rim"}
+OUTSIDE = -1
 
 
 class Compiler:
@@ -44,8 +44,8 @@ class Compiler:
         self.faces = FaceRows()
         self.solids = SolidRows()
         self.hole_names: list[int] = []
-        self.items: list[PlacedElement] = []  # distinct placed elements: rows of bulks
-        self.item_of_face: list[int] = []
+        self.volumes: list[tuple[PlacedElement, Volume]] = []  # rows of bulks
+        self.sides: list[tuple[int, int]] = []  # of each face: volumes behind and before it
         self.face_rows: list[set[int]] = [set() for _ in placed.states]
         self.solid_rows: list[set[int]] = [set() for _ in placed.states]
         self.wavelengths = sorted(
@@ -90,12 +90,12 @@ class Compiler:
         owner = self.number[item.element.name]
         self.name(item.element.name)  # what is thin and free has faces only; they book as well
         frame = self.frames.add(item.pose.axes(), item.pose.at)
-        number = len(self.items)
-        self.items.append(item)
+        first = len(self.volumes)
+        self.volumes += [(item, volume) for volume in item.geometry.volumes()]
         faces = []
         for face in item.geometry.faces:
             faces.append(self.faces.add(_with_material(face, layout), owner, frame))
-            self.item_of_face.append(number)
+            self.sides.append(_sides(face, first))
         x, y, _ = item.pose.at
         upright = self.frames.add(item.pose.upright_axes(), (x, y, 0.0))
         boxed = () if item.holder.box is None else (item.holder.box,)
@@ -117,7 +117,7 @@ class Compiler:
         return self.solids.add(item.solid, frame, label)
 
     def _owner(self, item: Surrounding) -> int:
-        """Number a source's body after the elements; what belongs to nobody comes last."""
+        """Return the number of an owner: a source's body after the elements; what belongs to nobody comes last."""
         if item.solid.part == "source":
             return len(self.elements) + self.sources.index(item.name or "")
         return len(self.elements) + len(self.sources)
@@ -128,6 +128,15 @@ class Compiler:
         for variant, owned in enumerate(rows):
             table[variant, list(owned)] = True
         return table
+
+
+def _sides(face: Face, first: int) -> tuple[int, int]:
+    """Return the volumes behind and before a face of an element whose first one is `first`."""
+    behind, before = (first + number for number in face.volumes)
+    return (
+        OUTSIDE if face.inside is Inside.NOWHERE else behind,
+        before if face.inside is Inside.BOTH else OUTSIDE,
+    )
 
 
 def _with_material(face: Face, layout: Layout) -> Face:
@@ -154,6 +163,10 @@ def compile_scene(placed: Placed) -> Scene:
     spoken = spoken_for(base, compiler.wavelengths)
     faces, inside = _faces_table(compiler, spoken)
     outside = np.array([placed.media.index(None, nm) for nm in compiler.wavelengths])
+    glasses = [volume.glass for _, volume in compiler.volumes]
+    index = [[placed.media.index(g, nm) for nm in compiler.wavelengths] for g in (*glasses, None)]
+    sides = np.array(compiler.sides, dtype=np.int64).reshape(-1, 2)
+    behind, before = sides[:, 0].copy(), sides[:, 1].copy()
     solids = solids_table(
         compiler.solids,
         compiler.frames,
@@ -169,21 +182,34 @@ def compile_scene(placed: Placed) -> Scene:
         waves,
         outside,
         inside,
+        np.array(index),
         faces,
         solids,
-        bulks_table(compiler.items, compiler.wavelengths, spoken),
-        np.array(compiler.item_of_face, dtype=np.int64),
+        bulks_table(compiler.volumes, compiler.wavelengths, spoken),
+        behind,
+        before,
         np.array(
             [compiler.name(compiler.elements[owner]) for owner in compiler.faces.owners],
             dtype=np.int64,
         ),
         np.isin(solids.part, [PART[part] for part in CLOSE_PARTS]),
         max(state.layout.limits.reach_mm for state in placed.states),
-        fixed_products(faces, solids, np.array(compiler.item_of_face, dtype=np.int64)),
+        fixed_products(faces, solids, (behind, before)),
     )
 
 
-FACE_NAMES = ("front", "back", "left", "right", "diagonal", "opening")
+FACE_NAMES = (
+    "front",
+    "back",
+    "left",
+    "right",
+    "diagonal",
+    "opening",
+    "entry.front",
+    "entry.back",
+    "exit.front",
+    "exit.back",
+)
 
 
 def _faces_table(compiler: Compiler, spoken: dict[str, frozenset[float]]) -> tuple[Faces, Floats]:
@@ -229,7 +255,8 @@ def _pairs(values: list[tuple[float, float]]) -> Floats:
 
 def _inside_indices(compiler: Compiler, row: int) -> list[float]:
     media: Media = compiler.placed.media
-    glass = compiler.items[compiler.item_of_face[row]].geometry.glass
+    behind = compiler.sides[row][0]
+    glass = None if behind == OUTSIDE else compiler.volumes[behind][1].glass
     return [media.index(glass, nm) for nm in compiler.wavelengths]
 
 

@@ -13,8 +13,8 @@ _ROUNDING = 1e-9
 _SLACK_MM = 1e-3
 
 
-def fixed_products(faces: Faces, solids: Solids, item_of_face: Ints) -> Fixed:
-    """Return products of the scene's own vectors."""
+def fixed_products(faces: Faces, solids: Solids, sides: tuple[Ints, Ints]) -> Fixed:
+    """Return products of the scene's own vectors; `sides` are volumes behind and before faces."""
     f, s = faces, solids
     plane_of = _planes_of(s)
     round_of = np.full(len(s.owner), -1)
@@ -24,7 +24,7 @@ def fixed_products(faces: Faces, solids: Solids, item_of_face: Ints) -> Fixed:
         _products(f.origin, f.left) + f.middle[:, 0],
         _products(f.origin, f.up) + f.middle[:, 1],
     )
-    own = _own_faces(item_of_face)
+    own = _own_faces(*sides)
     return Fixed(
         np.ascontiguousarray(np.concatenate((f.normal, f.left, f.up)).T),
         np.concatenate(offsets),
@@ -61,12 +61,17 @@ def _planes_of(s: Solids) -> Ints:
     return planes
 
 
-def _own_faces(item_of_face: Ints) -> Ints:
-    if not len(item_of_face):
+def _own_faces(behind: Ints, before: Ints) -> Ints:
+    """Return the faces (E, K) round each volume, which may lie behind them or before."""
+    every = np.arange(len(behind))
+    volume = np.concatenate((behind, np.where(before == behind, -1, before)))
+    face = np.concatenate((every, every))[volume >= 0]
+    volume = volume[volume >= 0]
+    if not len(volume):
         return np.full((1, 1), -1)
-    counts = np.bincount(item_of_face)
+    counts = np.bincount(volume)
     table = np.full((len(counts), int(counts.max())), -1)
-    order = np.argsort(item_of_face, kind="stable")
+    order = np.argsort(volume, kind="stable")
     starts = np.cumsum(counts) - counts
-    table[item_of_face[order], np.arange(len(order)) - starts[item_of_face[order]]] = order
+    table[volume[order], np.arange(len(order)) - starts[volume[order]]] = face[order]
     return table

@@ -138,7 +138,7 @@ class Emitter(NamedTuple):
 
 
 class Bulks(NamedTuple):
-    """What elements do inside, by element row (E rows: distinct elements)."""
+    """What elements do inside, by volume (E rows: volumes of distinct elements)."""
 
     kind: Ints  # (E,) number in BULKS
     axis: Floats  # (E, 3) unit vector, plan frame: fast axis, or that a rotator turns about
@@ -146,6 +146,7 @@ class Bulks(NamedTuple):
     refused: Floats  # (E, L)
     phase: Floats  # (E, L) rad: retardance, or the angle of a rotator
     thickness: Floats  # (E,)
+    barrel: Ints  # (E,) number in SINKS: of light that meets none of the faces round it
 
 
 BULKS = ("clear", "absorber", "polarizer", "retarder", "rotator")
@@ -163,7 +164,7 @@ class Fixed(NamedTuple):
     centres: Floats  # (3, S) middles of the spheres round solids
     centre_square: Floats  # (S,) mm²
     sphere: Floats  # (S,) radii with room for rounding, mm
-    own_faces: Ints  # (E, K) face rows of each placed element, -1 where it has fewer
+    own_faces: Ints  # (E, K) face rows round each volume, -1 where it has fewer
     own_axes: Floats  # (E, K, 3, 3) their normals, lefts and ups
     own_middles: Floats  # (E, K, 3) middles of their outlines, mm
     own_both: Flags  # (E, K) whether optics stand on both sides
@@ -180,11 +181,13 @@ class Scene(NamedTuple):
     face_names: tuple[str, ...]
     wavelengths_nm: Floats  # (L,)
     index_outside: Floats  # (L,)
-    index_inside: Floats  # (F, L) of the glass behind each face
+    index_inside: Floats  # (F, L) of what lies behind each face
+    index: Floats  # (E + 1, L) of each volume; the last row is the medium outside
     faces: Faces
     solids: Solids
     bulks: Bulks
-    bulk_of_face: Ints  # (F,) row in bulks
+    behind: Ints  # (F,) row in bulks of the volume behind each face, -1 outside
+    before: Ints  # (F,) of the volume before it
     face_owner_name: Ints  # (F,) number in names of the element
     close: Flags  # (S,) holds its optic so closely that the optic's own light passes it
     reach_mm: float

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import numpy as np
 
-from benchlay.elements._kind import Acts, Inside
+from benchlay.elements._kind import Acts
 from benchlay.optics import coherency, moments
 from benchlay.optics.rays import dot
 from benchlay.optics.turning import turn
@@ -37,13 +37,15 @@ def children(core: Front, hits: Hits, spills: Spills, state: RunState) -> Front:
 
 
 def _end_nowhere(core: Front, rows: Ints, state: RunState) -> None:
-    """Book what meets nothing: inside glass it ends on the barrel, outside it is gone."""
+    """Book what meets nothing: inside an optic it ends on the barrel, outside it is gone."""
     if not len(rows):
         return
     inside = core.within[rows] != OUTSIDE
     power = core.power
     barrel, free = rows[inside], rows[~inside]
-    state.book(barrel, SINK["rim"], state.scene.face_owner_name[core.face[barrel]], power[barrel])
+    scene = state.scene
+    sink = scene.bulks.barrel[core.within[barrel]]
+    state.book(barrel, sink, scene.face_owner_name[core.face[barrel]], power[barrel])
     state.book(free, SINK["escaped"], -1, power[free])
 
 
@@ -137,12 +139,13 @@ def _opaque(core: Front, face: Ints, rows: Ints, state: RunState, *, spilled: bo
 
 def _passed(core: Front, face: Ints, rows: Ints, state: RunState, *, spilled: bool) -> Front:
     del rows  # nothing is swallowed
-    f = state.scene.faces
+    f, beyond = state.scene.faces, _beyond(core, face, state.scene)
     node = state.ways.follow(core.node, f.owner[face], f.name[face], TRANSMITTED)
     return core.changed(
         face=face,
         body=-1,
         owner=f.owner[face],
+        within=beyond,
         node=-1 if spilled else node,
         event=SPILLED if spilled else TRANSMITTED,
     )
@@ -165,12 +168,9 @@ def _divided(core: Front, face: Ints, rows: Ints, state: RunState, *, spilled: b
     if not spilled and (core.node >= 0).any():
         node = state.ways.follow(both.node, owner, f.name[faces], event)
     meant = (node >= 0) | state.ways.main[faces, event - REFLECTED]
-    through = (f.inside[face] == Inside.BEHIND).nonzero()[0]
-    entering = core.within[through] == OUTSIDE
-    beyond, beyond_all = through + count, slice(count, None)
-    within = both.within
-    within[beyond] = np.where(entering, scene.bulk_of_face[face[through]], OUTSIDE)
-    both.index[beyond] = meeting.n_out[through]
+    beyond = slice(count, None)
+    both.within[beyond] = meeting.beyond
+    both.index[beyond] = meeting.n_out
     both.set(
         face=faces,
         body=-1,
@@ -179,7 +179,7 @@ def _divided(core: Front, face: Ints, rows: Ints, state: RunState, *, spilled: b
         node=node,
         splits=both.splits + ~meant,
     )
-    for child, columns in ((parts.reflected, slice(0, count)), (parts.transmitted, beyond_all)):
+    for child, columns in ((parts.reflected, slice(0, count)), (parts.transmitted, beyond)):
         half = both.part(columns)
         half.set(
             direction=child.direction,
@@ -188,6 +188,13 @@ def _divided(core: Front, face: Ints, rows: Ints, state: RunState, *, spilled: b
             moments=child.moments,
         )
     return both
+
+
+def _beyond(core: Front, face: Ints, scene: Scene) -> Ints:
+    """Return the volumes on the other sides of faces, `OUTSIDE` for none."""
+    before = scene.before[face]
+    beyond: Ints = np.where(core.within == before, scene.behind[face], before)
+    return beyond
 
 
 def _meeting(core: Front, face: Ints, scene: Scene) -> Meeting:
@@ -199,9 +206,7 @@ def _meeting(core: Front, face: Ints, scene: Scene) -> Meeting:
     s, cos, sin = plane_of_incidence(direction, normal, core.axis)
     light = turn(core.light, cos, sin)
     wave = core.wave
-    beyond = np.where(
-        core.within == OUTSIDE, scene.index_inside[face, wave], scene.index_outside[wave]
-    )
+    beyond = _beyond(core, face, scene)
     return Meeting(
         face,
         wave,
@@ -209,7 +214,8 @@ def _meeting(core: Front, face: Ints, scene: Scene) -> Meeting:
         np.abs(slope),
         s,
         core.index,
-        np.where(f.inside[face] == Inside.BOTH, core.index, beyond),
+        scene.index[beyond, wave],
+        beyond,
         outward,
         direction,
         core.position,

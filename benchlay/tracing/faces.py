@@ -32,6 +32,7 @@ class Meeting(NamedTuple):
     s: Floats  # (N, 3)
     n_in: Floats  # (N,)
     n_out: Floats  # (N,)
+    beyond: Ints  # (N,) volume on the other side
     outward: Flags  # (N,) the beam arrives from the side the face's own normal points to
     direction: Floats  # (N, 3)
     position: Floats  # (N, 3) where it meets the face, mm

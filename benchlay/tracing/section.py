@@ -15,6 +15,7 @@ from benchlay.elements._kind import Acts, Inside
 from benchlay.optics.shares import partition
 from benchlay.scene.tables import PART, SINK, Flags, Floats, Ints, Scene
 from benchlay.tracing.front import OUTSIDE, Front
+from benchlay.tracing.hidden import visible
 from benchlay.tracing.hits import FACE, NOTHING, SOLID, Hits
 from benchlay.tracing.silhouettes import (
     CORE,
@@ -93,7 +94,7 @@ def cut(front: Front, scene: Scene, hits: Hits, reach: Floats) -> Cut:
     kept = np.where(blocked > gone, mine, front.kept)
     power = share * (factor * whole)[outlines.problem]
     free = np.where(nothing_met, 0.0, divided.free * factor * whole)
-    landings = _landings(outlines, power, free, beside, front)
+    landings = _landings(outlines, power, free, beside, front, scene=scene)
     return Cut(kept * whole, kept, landings, _spills(outlines, power))
 
 
@@ -108,13 +109,14 @@ def _no_landings() -> Landings:
 
 
 def _landings(
-    outlines: Outlines, power: Floats, free: Floats, beside: Flags, front: Front
+    outlines: Outlines, power: Floats, free: Floats, beside: Flags, front: Front, *, scene: Scene
 ) -> Landings:
     rows = np.flatnonzero(beside & (outlines.role != OPTIC) & (power > 0.0))
     passing = np.flatnonzero(free > 0.0)
-    # Inside glass what misses the clear region meets the barrel; outside it goes on for good.
+    # Inside an optic what misses the clear region meets the barrel; outside it goes on for good.
     inside = front.within[passing] != OUTSIDE
-    sink = np.where(inside, SINK["rim"], SINK["escaped"])
+    sink = np.full(len(passing), SINK["escaped"])
+    sink[inside] = scene.bulks.barrel[front.within[passing[inside]]]
     name = np.where(inside, outlines.inside_name[passing], -1)
     return Landings(
         np.concatenate((outlines.problem[rows], passing)),
@@ -144,7 +146,8 @@ def gather(front: Front, scene: Scene, hits: Hits, reach: Floats) -> Outlines:
         face_outlines(front, scene, faces, on_face, hits.row, reach),
         *_solid_outlines(front, scene, solids, target, own, reach),
     ]
-    return Outlines.joined(pieces, 1, scene, front)  # the second piece: flat sides
+    outlines = Outlines.joined(pieces, 1, scene, front)  # the second piece: flat sides
+    return outlines.take(visible(outlines))
 
 
 def _radius_bound(part: Front, reach: Floats) -> Floats:
