@@ -200,7 +200,7 @@ def _finding(
             f"and {angle_text(worst.turn_rad)} from its axis"
         ),
         expected=f"at most {power_text(limit)} within its exit and acceptance",
-        remedy=f"tilt '{since.partition('.')[0]}', or put an isolator before it",
+        remedy=_remedy(context, variant, since.partition(".")[0]),
         element=name,
         beam=int(context.numbers[beam]),
         at=context.state(variant).sources[name].pose.at,
@@ -210,3 +210,9 @@ def _finding(
         unit="W",
         key=(source, nm, since),
     )
+
+
+def _remedy(context: Context, variant: int, back: str) -> str:
+    if back in context.state(variant).elements:
+        return f"tilt '{back}', or put an isolator before it"
+    return f"end the beam on a dump or screen before it meets '{back}'"

@@ -69,7 +69,8 @@ from benchlay.checks._check import (
 )
 from benchlay.elements._kind import Acts
 from benchlay.findings import Finding, Severity
-from benchlay.scene.tables import PARTS, SINK, SINKS
+from benchlay.optics.rays import dot
+from benchlay.scene.tables import PARTS, SINK, SINKS, Floats
 from benchlay.tracing.beams import SOLID
 from benchlay.tracing.front import EVENTS, OUTSIDE
 
@@ -82,6 +83,7 @@ _PROPER = frozenset(
     SINKS.index(name) for name in ("screen", "dump", "panel", "absorbed", "handed-over")
 )
 _ELSEWHERE_TOLD = frozenset((SINKS.index("below-floor"),))  # `unaccounted`
+_ROOM_MM = 15.0  # a small screen beside a beam: common practice
 _UPRIGHT = 1e-6  # plan part of a direction below which it has no heading worth telling
 
 
@@ -187,7 +189,7 @@ def _finding(
             f"at most {power_text(limit)} that ends elsewhere than on a dump, screen, closed "
             "shutter, panel, lid or tube"
         ),
-        remedy=f"stop it with a dump or screen, {_spot(context, worst.beam)}",
+        remedy=_remedy(context, variant, worst),
         element=element,
         beam=int(context.numbers[worst.beam]),
         at=context.end_at(worst.beam),
@@ -221,16 +223,33 @@ def _where(context: Context, group: _Group, beam: int, name: str | None) -> str:
     return f"ends on {place_words(sink, name, part)}{other}"
 
 
-def _spot(context: Context, beam: int) -> str:
-    """Say where on its last leg it can be stopped."""
-    beams = context.trace.beams
-    start, k = beams.start.position[beam], beams.start.direction[beam]
+def _remedy(context: Context, variant: int, worst: _Landing) -> str:
+    """Say how to stop it, and where on its last leg there is room for that."""
+    beams, beam = context.trace.beams, worst.beam
+    k = beams.start.direction[beam]
     length = min(float(beams.length[beam]), _near_enough(context))
-    x, y, z = context.point(start + 0.5 * length * k)
-    spot = f"for instance at [{x:.0f}, {y:.0f}, {z:.0f}]"
+    spot = beams.start.position[beam] + 0.5 * length * k
+    if _from_working_beams(context, variant, spot, beam) < _ROOM_MM:
+        back = context.left_name(worst.since)
+        return f"turn '{back}' so that the light leaves the way of the beams, and stop it there"
+    x, y, z = context.point(spot)
+    place = f"stop it with a dump or screen, for instance at [{x:.0f}, {y:.0f}, {z:.0f}]"
     if float(np.hypot(k[0], k[1])) < _UPRIGHT:
-        return f"{spot}, {'above' if k[2] > 0.0 else 'below'} '{context.left_name(beam)}'"
-    return f"{spot} with `facing: {round(degrees(atan2(-k[1], -k[0]))) % 360}`"
+        return f"{place}, {'above' if k[2] > 0.0 else 'below'} '{context.left_name(beam)}'"
+    return f"{place} with `facing: {round(degrees(atan2(-k[1], -k[0]))) % 360}`"
+
+
+def _from_working_beams(context: Context, variant: int, spot: Floats, beam: int) -> float:
+    """Return how far a place is from the nearest leg that a route needs, mm."""
+    beams = context.trace.beams
+    rows = context.beams_of(variant)
+    rows = rows[context.routes.working[rows] & (rows != beam)]
+    if not len(rows):
+        return float("inf")
+    away = spot - beams.start.position[rows]
+    along = np.clip(dot(away, beams.start.direction[rows]), 0.0, beams.length[rows])
+    off = away - along[:, None] * beams.start.direction[rows]
+    return float(np.sqrt(dot(off, off).min()))
 
 
 def _near_enough(context: Context) -> float:
