@@ -65,14 +65,15 @@ at the worst place beyond the line: IEC 60825-1:2014 for the limits and aperture
 from __future__ import annotations
 
 from collections.abc import Iterator
-from typing import NamedTuple
 
 import numpy as np
 
 from benchlay.checks._check import (
     Context,
+    Exit,
     Found,
     above,
+    exits_of,
     length_text,
     power_text,
     rounded_up,
@@ -81,46 +82,26 @@ from benchlay.checks._check import (
 from benchlay.findings import Finding, KeyPart, Severity
 from benchlay.layout.enclosure import Opening
 from benchlay.optics import moments
-from benchlay.scene.tables import SINKS
-from benchlay.tracing.beams import NOTHING, SOLID
-from benchlay.zones.enclosure_line import (
-    EnclosureLine,
-    Side,
-    bench_line,
-    enclosure_line,
-    inside,
-    leaving,
-)
+from benchlay.zones.enclosure_line import EnclosureLine, enclosure_line
 
 NAME = "escape"
 
 # A beam that can hurt an eye is where people are.
 SEVERITY = Severity.FAIL
 
-_LITTLE_MM = 1e-3  # above rounding, below any thickness
-
-
-class _Exit(NamedTuple):
-    """Where a beam goes beyond the line; no side where it goes upwards or starts beyond."""
-
-    beam: int
-    way_mm: float
-    side: Side | None
-    upwards: bool
-
 
 def check(context: Context, variant: int) -> Iterator[Found]:
     """Report each beam where it first leaves; what it does beyond is not told again."""
     yield from unjudged(context, variant)
     line = enclosure_line(context.layout(variant))
-    exits = list(_exits(context, variant, line))
+    exits = list(exits_of(context, variant, line))
     if not exits:
         return
     beams = np.array([found.beam for found in exits])
     powers = context.beyond_w(beams, np.array([found.way_mm for found in exits]))
     # Light sent to and fro between two faces leaves as many beams by one way: the strongest of
     # them is told.
-    strongest: dict[tuple[KeyPart, ...], tuple[float, _Exit]] = {}
+    strongest: dict[tuple[KeyPart, ...], tuple[float, Exit]] = {}
     for found, power in zip(exits, powers.tolist(), strict=True):
         if above(power, float(context.limit_w[found.beam])):
             way = _way_out(context, found)
@@ -130,7 +111,7 @@ def check(context: Context, variant: int) -> Iterator[Found]:
         yield _finding(context, variant, line, found, (power, way))
 
 
-def _way_out(context: Context, found: _Exit) -> tuple[KeyPart, ...]:
+def _way_out(context: Context, found: Exit) -> tuple[KeyPart, ...]:
     """Return what beams that leave alike have in common, the same from run to run."""
     beam = found.beam
     return (
@@ -142,91 +123,11 @@ def _way_out(context: Context, found: _Exit) -> tuple[KeyPart, ...]:
     )
 
 
-def _exits(context: Context, variant: int, line: EnclosureLine) -> Iterator[_Exit]:
-    rows = context.beams_of(variant)
-    bench = bench_line(context.layout(variant))
-    gone: set[int] = set()
-    for beam in rows[context.hazardous[rows]].tolist():
-        found = _exit(context, beam, line, bench, gone)
-        if found is None:
-            continue
-        gone.add(beam)
-        if not _handed_over(context, beam):
-            yield found
-
-
-def _exit(
-    context: Context, beam: int, line: EnclosureLine, bench: EnclosureLine, gone: set[int]
-) -> _Exit | None:
-    """Return where a beam leaves, unless what it came from has left before."""
-    crossing = _crossing(context, beam, line)
-    if crossing is not None:
-        return _Exit(beam, crossing[0], crossing[1], upwards=False)
-    if inside(line, _just_after(context, beam)):
-        way = _upwards(context, beam, line)
-        return None if way is None else _Exit(beam, way, None, upwards=True)
-    ancestors = context.ancestors(beam)
-    if gone.intersection(ancestors):
-        return None
-    if inside(line, _just_after(context, ancestors[-1])):
-        return _Exit(beam, 0.0, None, upwards=False)  # it left inside an optic on the line
-    crossing = _crossing(context, beam, bench)
-    return None if crossing is None else _Exit(beam, crossing[0], None, upwards=False)
-
-
-def _plan(context: Context, beam: int) -> tuple[float, float]:
-    x, y, _ = context.point(context.trace.beams.start.position[beam])
-    return x, y
-
-
-def _just_after(context: Context, beam: int) -> tuple[float, float]:
-    """Return a place a little along a leg: what starts on a panel is on the side it goes to."""
-    (x, y), k = _plan(context, beam), context.trace.beams.start.direction[beam]
-    return x + _LITTLE_MM * float(k[0]), y + _LITTLE_MM * float(k[1])
-
-
-def _crossing(context: Context, beam: int, line: EnclosureLine) -> tuple[float, Side | None] | None:
-    beams = context.trace.beams
-    x, y, _ = context.point(beams.start.direction[beam])
-    found = leaving(line, _plan(context, beam), (x, y), float(beams.length[beam]))
-    return None if found is None else (found.way_mm, found.side)
-
-
-def _upwards(context: Context, beam: int, line: EnclosureLine) -> float | None:
-    """Return where a beam that nothing on the bench stops rises above the enclosure."""
-    beams, s = context.trace.beams, context.trace.scene.solids
-    row = int(beams.end_row[beam])
-    lost = beams.end_kind[beam] == NOTHING or (
-        beams.end_kind[beam] == SOLID and SINKS[s.sink[row]] == "wall"
-    )
-    z, slope = float(beams.start.position[beam, 2]), float(beams.start.direction[beam, 2])
-    if not lost or slope <= 0.0:
-        return None
-    length = float(beams.length[beam])
-    if line.top_mm == np.inf:
-        return 0.0
-    return min(max((line.top_mm - z) / slope, 0.0), length)
-
-
-def _handed_over(context: Context, beam: int) -> bool:
-    """Whether the beam leaves by the opening that ends its route."""
-    start = context.trace.beams.start
-    if start.node[beam] < 0:
-        return False
-    place = context.trace.ways.places[int(start.node[beam])]
-    for number, leg in place.routes:
-        items = context.trace.ways.routes[number].items
-        last = items[-1]
-        if leg + 1 == len(items) - 1 and last.opening is not None:
-            return context.routes.passes_opening(beam, ".".join(last.opening))
-    return False
-
-
 def _finding(
     context: Context,
     variant: int,
     line: EnclosureLine,
-    found: _Exit,
+    found: Exit,
     what: tuple[float, tuple[KeyPart, ...]],
 ) -> Finding:
     beam, (power, key) = found.beam, what
@@ -263,7 +164,7 @@ def _how(
     context: Context,
     variant: int,
     line: EnclosureLine,
-    found: _Exit,
+    found: Exit,
     at: tuple[float, float, float],
 ) -> tuple[str, str]:
     """Say how a beam leaves, and what would keep it in."""
@@ -279,7 +180,7 @@ def _how(
 
 
 def _past_panel(
-    context: Context, variant: int, found: _Exit, at: tuple[float, float, float]
+    context: Context, variant: int, found: Exit, at: tuple[float, float, float]
 ) -> tuple[str, str]:
     """Say how a beam gets past the panel that stands on its side of the line."""
     enclosure = context.layout(variant).enclosure
@@ -305,7 +206,7 @@ def _past_panel(
     )
 
 
-def _radius(context: Context, found: _Exit) -> float:
+def _radius(context: Context, found: Exit) -> float:
     """Return the larger 1/e² radius where a beam leaves, mm."""
     start = context.trace.beams.start
     m = start.moments[:, found.beam]

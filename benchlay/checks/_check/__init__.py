@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from benchlay.checks._check.bodies import Body, distance_mm, middle_between, overlap_mm
 from benchlay.checks._check.context import Context
+from benchlay.checks._check.exits import Exit, exits_of
 from benchlay.checks._check.limits import LineLimit, floors_w, limits_of
 from benchlay.checks._check.meetings import Loss, Mark
 from benchlay.checks._check.openings import Room, room_at
@@ -27,6 +28,7 @@ __all__ = [
     "Body",
     "Check",
     "Context",
+    "Exit",
     "Found",
     "LineLimit",
     "Loss",
@@ -38,6 +40,7 @@ __all__ = [
     "angle_text",
     "distance_mm",
     "event_words",
+    "exits_of",
     "floors_w",
     "irradiance_text",
     "length_text",
