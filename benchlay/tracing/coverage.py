@@ -20,12 +20,26 @@ _GRAZING = 1e-3  # at flatter incidence a face's footprint test says nothing
 
 
 def reach_of(front: Front, floor_w: Floats) -> Floats:
-    """Return how far out, in w, a body may take a share that counts (B,)."""
+    """Return how far out, in w, a body may take a share that counts (B,).
+
+    Of a beam of which the share k is left a body takes at most its own share of the unclipped
+    beam times the smaller of 1/k and 1/(1 - k).
+    """
     tail = _TAIL * floor_w[front.wave]
-    whole = front.power / front.kept
+    whole = front.power / np.maximum(front.kept, 1.0 - front.kept)
     share = np.clip(tail / np.maximum(whole, tail), _LEAST_SHARE, 1.0)
     reach: Floats = np.maximum(np.sqrt(-0.5 * np.log(share)), _LEAST_REACH)
     return reach
+
+
+def unclipped_core(kept: Floats) -> Floats:
+    """Return the radius, in w, within which an unclipped beam has the share that is left (B,).
+
+    What takes at least that much out to there takes all that is left of a cut beam.
+    """
+    left = np.minimum(kept, 1.0 - 1e-15)
+    radius: Floats = np.where(kept < 1.0, np.sqrt(-0.5 * np.log1p(-left)), np.inf)
+    return radius
 
 
 def radius_of(m: Floats) -> Floats:

@@ -16,7 +16,14 @@ from benchlay.scene.tables import SINK, Flags, Floats, Ints, Scene
 from benchlay.tracing.beams import Beams, Ledger, gathered
 from benchlay.tracing.bulk import passage
 from benchlay.tracing.children import children
-from benchlay.tracing.coverage import covered, face_covers, near, radius_of, reach_of
+from benchlay.tracing.coverage import (
+    covered,
+    face_covers,
+    near,
+    radius_of,
+    reach_of,
+    unclipped_core,
+)
 from benchlay.tracing.front import OUTSIDE, Front, join
 from benchlay.tracing.hits import FACE, Hits, inside_hits, nearest
 from benchlay.tracing.run_state import Leg, RunState
@@ -118,13 +125,14 @@ def _meet(front: Front, state: RunState) -> tuple[_Ready, Flags]:
     reach = reach_of(front, state.floor_w)
     radius = radius_of(np.concatenate((front.moments[:3], end[:3]), axis=1))
     stop = radius[len(order) :]
-    wanted = ~face_covers(scene, hits, reach * stop)
+    looked_at = np.minimum(reach, unclipped_core(front.kept))
+    wanted = ~face_covers(scene, hits, looked_at * stop)
     wanted &= hits.kind == FACE
     if first < len(order):
         rest = slice(first, None)
-        widest = reach[rest] * np.maximum(radius[first : len(order)], stop[rest])
+        widest = looked_at[rest] * np.maximum(radius[first : len(order)], stop[rest])
         met = hits.take(rest)
-        wanted[rest] |= ~covered(free, scene, met, (reach * stop)[rest])
+        wanted[rest] |= ~covered(free, scene, met, (looked_at * stop)[rest])
         wanted[rest] |= near(free, scene, met, faces, passed, widest)
     return _Ready(front, hits, end, reach), wanted & ~front.lump
 

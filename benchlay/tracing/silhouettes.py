@@ -50,6 +50,15 @@ class Outlines(NamedTuple):
         """Return what is needed to divide the cross-sections."""
         return Shapes(*self[:8])
 
+    def take(self, kept: Flags) -> Outlines:
+        """Return some of the outlines; the hosts of all holes must be among them."""
+        if kept.all():
+            return self
+        place = np.cumsum(kept) - 1
+        columns = [column[kept] for column in self[:-1]]
+        columns[7] = np.where(columns[7] >= 0, place[columns[7]], -1)
+        return Outlines(*columns, self.inside_name)
+
     @staticmethod
     def joined(pieces: list[Outlines], hosts: int, scene: Scene, part: Front) -> Outlines:
         """Return pieces together, sorted by problem; piece number `hosts` has all holes in it."""

@@ -418,3 +418,13 @@ def test_a_plugged_hole_is_no_hole(seed):
     assert again[-2:].sum() == pytest.approx(share[-1], abs=1e-12)
     np.testing.assert_allclose(again[:-2], share[:-1], atol=1e-12)
     assert left == pytest.approx(free, abs=1e-12)
+
+
+def test_slivers_beyond_every_ray_take_nothing():
+    """Sides seen edge-on that pass the axis a hundred radii away: nothing is met, all is free."""
+    shares, free = divide(
+        Figure((0.0, 0.0, 0.0), corners=[(1e4, 4e4), (5.8e2, 2.3e3), (-3.6e2, -2.4e3)]),
+        Figure((0.0, 0.0, 0.0), corners=[(20.0, -60.0), (20.0, 60.0), (19.9, 0.0)]),
+    )
+    assert shares.tolist() == [0.0, 0.0]
+    assert free == 1.0
