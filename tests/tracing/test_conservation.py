@@ -2,7 +2,7 @@
 
 import numpy as np
 import pytest
-from hypothesis import given, settings
+from hypothesis import example, given, settings
 from hypothesis import strategies as st
 
 from benchlay.tracing import generations
@@ -97,8 +97,22 @@ def written(made, *, turn=0.0, shift=(0.0, 0.0), names=None, also=""):
 STATES = "states:\n  less: {elements.E0.out: yes}\n  aside: {elements.E1.offset: [0, 1, -0.5]}\n"
 
 
+PLATE = "diameter: 25, thickness: 5, glass: BK7"
+SLIVERS = (
+    [
+        ("window", PLATE, 150.0, 250.0, 95.0, 0, 0),
+        ("window", PLATE, 250.0, 251.2, 95.0, 154, 5),
+        ("window", PLATE + ", mount: none", 350.0, 235.1, 95.1, 2, 1),
+    ],
+    "waist_radius: 0.5",
+    "{angle: 30}",
+)
+"""Outlines come near enough to be looked at, and no ray of the cross-section meets any."""
+
+
 @settings(max_examples=40)
 @given(bench())
+@example(SLIVERS)
 def test_every_state_closes_without_nonsense(made):
     seen = Bench(written(made, also=STATES), floor=1e-7)
     for state in seen.states:
