@@ -84,8 +84,8 @@ def pairs(
 def planes_met(front: Front, scene: Scene, beam: Ints, solid: Ints) -> tuple[Floats, Floats]:
     """Return (N, K) direction . normal and offset - normal . position of solids' planes."""
     normal = scene.fixed.plane_normals[solid]
-    slope = np.einsum("nki,ni->nk", normal, front.direction[beam])
-    gap = scene.fixed.plane_offsets[solid] - np.einsum("nki,ni->nk", normal, front.position[beam])
+    slope = dot(normal, front.direction[beam][:, None])
+    gap = scene.fixed.plane_offsets[solid] - dot(normal, front.position[beam][:, None])
     return slope, gap
 
 

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import numpy as np
 
-from benchlay.scene.tables import Flags, Floats
+from benchlay.scene.tables import Flags, Floats, Ints
 
 _START_MM = 1e-6
 
@@ -51,3 +51,37 @@ def clip_behind(x: Floats, y: Floats, z: Floats) -> tuple[Floats, Floats, Floats
         for old, new in zip((x, y, z), cut, strict=True)
     ]
     return both[0], both[1], both[2], ahead
+
+
+def split_at(x: Floats, y: Floats, z: Floats, depth: Floats) -> tuple[Floats, Floats, Floats, Ints]:
+    """Return polygons (K, V) cut in two at a depth (K,), mm, where they reach to both sides.
+
+    Returns
+    -------
+    x, y, z : (L, W) ndarray of float64
+        First the polygons or their nearer parts, row by row, then the farther parts.
+    row : (L,) ndarray of int
+        Which polygon each is, or is part of.
+    """
+    rows = np.arange(len(depth))
+    both = np.flatnonzero((z.min(axis=1) < depth - _START_MM) & (z.max(axis=1) > depth + _START_MM))
+    if not len(both):
+        return x, y, z, rows
+    at = depth[both, None]
+    near = clip_behind(x[both], y[both], at - z[both])[:3]
+    far = clip_behind(x[both], y[both], z[both] - at)[:3]
+    near, far = (near[0], near[1], at - near[2]), (far[0], far[1], far[2] + at)
+    width = max(near[0].shape[1], far[0].shape[1])
+    columns = []
+    for whole, nearer, farther in zip((x, y, z), near, far, strict=True):
+        first = _padded(whole, width).copy()
+        first[both] = _padded(nearer, width)
+        columns.append(np.concatenate((first, _padded(farther, width))))
+    return columns[0], columns[1], columns[2], np.concatenate((rows, both))
+
+
+def _padded(values: Floats, width: int) -> Floats:
+    missing = width - values.shape[1]
+    if missing <= 0:
+        return values
+    return np.concatenate((values, np.repeat(values[:, -1:], missing, axis=1)), axis=1)

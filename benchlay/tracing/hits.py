@@ -11,6 +11,7 @@ from typing import NamedTuple
 import numpy as np
 
 from benchlay.elements._kind import Acts, Inside
+from benchlay.optics.rays import dot
 from benchlay.scene.tables import Flags, Floats, Ints, Scene
 from benchlay.tracing.bodies import PARALLEL, Passing, pairs, passing, planes_met, through_holes
 from benchlay.tracing.front import Front
@@ -111,14 +112,14 @@ def inside_hits(front: Front, scene: Scene) -> Hits:
     rows = fixed.own_faces[front.within]  # (B, K)
     axes = fixed.own_axes[front.within]
     away = fixed.own_middles[front.within] - front.position[:, None, :]
-    onward = np.einsum("bkai,bi->abk", axes, front.direction)
-    gap, left, up = np.einsum("bkai,bki->abk", axes, away)
-    slope = onward[0]
+    onward = dot(axes, front.direction[:, None, None])
+    start = dot(axes, away[:, :, None])
+    slope, gap = onward[..., 0], start[..., 0]
     leaving = (slope > PARALLEL) | (fixed.own_both[front.within] & (np.abs(slope) > PARALLEL))
     distance = np.where(leaving, gap, np.inf) / np.where(leaving, slope, 1.0)
     along = np.where(leaving, distance, 0.0)
-    left = along * onward[1] - left
-    up = along * onward[2] - up
+    left = along * onward[..., 1] - start[..., 1]
+    up = along * onward[..., 2] - start[..., 2]
     valid = leaving & (rows >= 0) & (rows != front.face[:, None]) & (distance > -_TOUCH_MM)
     # A spilled lump runs on the chief ray's line wherever that is: no outline holds it.
     valid &= in_outline(left, up, f.radii[rows], f.round[rows]) | front.lump[:, None]
@@ -211,7 +212,7 @@ def _first_solid(
     """Return the solid that each ray meets first, how far away, and where it would be entered."""
     beam, solid, enter, leave = pairs(front, scene, passed)
     blocked = (enter <= leave) & (leave > SKIN_MM)
-    if len(scene.fixed.pierced) and np.isin(solid[blocked], scene.fixed.pierced).any():
+    if len(scene.solids.hole_solid) and scene.fixed.pierced[solid[blocked]].any():
         blocked &= ~through_holes(front, scene)[beam, solid]
     beam, solid, enter = beam[blocked], solid[blocked], enter[blocked]
     table = np.full((len(beams), len(scene.solids.owner)), np.inf)

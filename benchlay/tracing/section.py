@@ -144,7 +144,7 @@ def gather(front: Front, scene: Scene, hits: Hits, reach: Floats) -> Outlines:
     own = np.where(hits.kind == SOLID, hits.row, -1)
     pieces = [
         face_outlines(front, scene, faces, on_face, hits.row, reach),
-        *_solid_outlines(front, scene, solids, target, own, reach),
+        *_solid_outlines(front, scene, solids, target, own, reach=reach, stop_mm=hits.distance),
     ]
     outlines = Outlines.joined(pieces, 1, scene, front)  # the second piece: flat sides
     return outlines.take(visible(outlines))
@@ -203,12 +203,21 @@ def _solids_in_reach(part: Front, scene: Scene, bound: Floats) -> Flags:
 
 
 def _solid_outlines(
-    part: Front, scene: Scene, solids: Flags, met: Ints, own: Ints, reach: Floats
+    part: Front,
+    scene: Scene,
+    solids: Flags,
+    met: Ints,
+    own: Ints,
+    *,
+    reach: Floats,
+    stop_mm: Floats,
 ) -> list[Outlines]:
     s = scene.solids
+    # The plate round the opening that the light goes to is that opening's own outline already.
+    solids = solids & ~((s.owner == met[:, None]) & (s.part == PART["plate"]))
     # Of the mount of the optic that the light goes to only the ring in the front plane counts.
     ringed = (s.owner == met[:, None]) & (s.part == PART["mount"])
-    patches = patch_outlines(part, scene, solids, ringed, own, reach)
+    patches = patch_outlines(part, scene, solids, ringed, own, reach=reach, stop_mm=stop_mm)
     return [
         patches,
         disc_outlines(part, scene, solids, own, reach),

@@ -17,7 +17,7 @@ from benchlay.geometry.distinct import distinct
 from benchlay.optics.rays import cross, dot
 from benchlay.optics.shares import Shapes
 from benchlay.scene.tables import PART, Flags, Floats, Ints, Scene, Solids
-from benchlay.tracing.clipping import clip_behind
+from benchlay.tracing.clipping import clip_behind, split_at
 from benchlay.tracing.front import Front
 from benchlay.tracing.spreading import growth, perspective, perspective_plate
 
@@ -25,6 +25,7 @@ CORE, BESIDE, OPTIC, BODY, HOLE = range(5)
 _GRAZING = 0.2  # sine of the angle between beam and plane below which it counts as lying along
 _CLEAR_ORDER, _OUTLINE_ORDER, _SOLID_ORDER = 0, 1, 2
 _FLAT = 1e-12
+_TOUCH_MM = 1e-6  # the two faces of a thin optic stand in one place, give or take rounding
 _EDGE_ON = 1e-6
 
 
@@ -208,7 +209,14 @@ def _plate_shapes(
     gradient[flat] = 0.0
     plane = np.concatenate((np.where(flat, z, crossing)[:, None], gradient), axis=1)
     corners = np.where(plates.round, 0, 4)
-    return vertices, centre, np.stack((first, second), axis=2), corners, plane, z + reach > 0.0
+    return (
+        vertices,
+        centre,
+        np.stack((first, second), axis=2),
+        corners,
+        plane,
+        z + reach > -_TOUCH_MM,
+    )
 
 
 def _unit(vectors: Floats) -> Floats:
@@ -313,9 +321,20 @@ def cylinder_sides(part: Front, scene: Scene, close: Flags, own: Ints, reach: Fl
 
 
 def patch_outlines(
-    part: Front, scene: Scene, close: Flags, ringed: Flags, own: Ints, reach: Floats
+    part: Front,
+    scene: Scene,
+    close: Flags,
+    ringed: Flags,
+    own: Ints,
+    *,
+    reach: Floats,
+    stop_mm: Floats,
 ) -> Outlines:
-    """Return the flat sides of solids that the beam sees."""
+    """Return the flat sides of solids that the beam sees.
+
+    Sides that lie along the beam are cut in two where the chief ray ends (`stop_mm`), since
+    they reach before and behind what stands there.
+    """
     s = scene.solids
     slopes = part.direction @ s.patch_normal.T
     seen = close[:, s.patch_solid] & (slopes < _GRAZING)
@@ -328,9 +347,12 @@ def patch_outlines(
     frame = frame_of(part, problem)
     x, y, z = _local(frame, points, point=True)
     x, y, z, ahead = clip_behind(x, y, z)
-    x, y, z, patch = x[ahead], y[ahead], z[ahead], patch[ahead]
-    frame = frame_of(part, problem[ahead])
-    vertices, depth = _flat_sides(frame, (x, y, z), points[ahead, 0], s.patch_normal[patch])
+    x, y, z, patch, problem = x[ahead], y[ahead], z[ahead], patch[ahead], problem[ahead]
+    along = np.abs(slopes[problem, patch]) < _GRAZING
+    x, y, z, row = split_at(x, y, z, np.where(along, stop_mm[problem], np.inf))
+    patch, problem = patch[row], problem[row]
+    frame = frame_of(part, problem)
+    vertices, depth = _flat_sides(frame, (x, y, z), s.patch_points[patch, 0], s.patch_normal[patch])
     near = _touches(vertices, reach[frame.problem])
     count = len(near)
     labels = _solid_labels(s, frame.problem, s.patch_solid[patch], own, patch)
