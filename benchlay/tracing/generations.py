@@ -32,6 +32,7 @@ from benchlay.tracing.ways import Ways
 
 MOST_BATCHES = 12_000
 MOST_BEAMS = 400_000
+_NO_LENGTH_MM = 1e-6
 
 
 class Traced(NamedTuple):
@@ -128,6 +129,8 @@ def _meet(front: Front, state: RunState) -> tuple[_Ready, Flags]:
     looked_at = np.minimum(reach, unclipped_core(front.kept))
     wanted = ~face_covers(scene, hits, looked_at * stop)
     wanted &= hits.kind == FACE
+    # Between the faces of a thin optic, in one place, there is nothing that the first left.
+    wanted[:first] &= hits.distance[:first] > _NO_LENGTH_MM
     if first < len(order):
         rest = slice(first, None)
         widest = looked_at[rest] * np.maximum(radius[first : len(order)], stop[rest])

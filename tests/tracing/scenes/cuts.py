@@ -254,3 +254,32 @@ def tilted_optics_off_the_middle_of_a_spreading_beam():
             lambda u, a=a: np.sqrt(a * a - u * u), epsabs=1e-12, epsrel=1e-10,
         )[0]  # fmt: skip
         yield power(f"{w0} {off}", bench.from_("M.front")[0].power, inside, 1e-7)
+
+
+@scene
+def thin_optics_that_a_beam_nearly_fills():
+    """Both faces stand in one place: what the first lets in, the second lets out."""
+    for kind, keys, passed in (
+        ("lens", "focal: 300", 1.0),
+        ("polarizer", "axis: 90, transmits: 80 %, extinction: 0", 0.8),
+        ("waveplate", "retardance: half, axis: 20, design_wavelength: 632.8", 1.0),
+    ):
+        for facing in (180, 0, 217):
+            text = (
+                f"  L: {{kind: {kind}, at: [300, 451, 1000], facing: {facing}, diameter: 20,"
+                f" {keys}, front: 0 %, back: 0 %, mount: none}}\n" + WALL
+            )
+            # At 37 degrees from square the outline is an ellipse.
+            tilt = np.cos(np.radians(min(facing % 180, 180 - facing % 180)))
+            bench = Bench(_high(text, beam="{waist_radius: 4}"), floor=1e-14)
+            w = gauss.radius(4, 200, NM)
+            clear, whole = (
+                gauss.strips(lambda y, a=a, b=a * tilt: gauss.ellipse_at(y, b, a, 1), w, w, (-a, a))
+                for a in (9, 10)
+            )
+            # A polarizer aslant passes by an axis that is no longer square to the beam.
+            share = passed if kind != "polarizer" or facing != 217 else None
+            yield power(f"{kind} {facing} rim", bench.sink("rim", "L"), whole - clear, 2e-6)
+            if share is not None:
+                got = bench.sink("target", "T") - (1 - whole)
+                yield power(f"{kind} {facing} through", got, share * clear, 2e-6)
