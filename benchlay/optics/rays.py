@@ -41,7 +41,7 @@ def dot(first: Floats, second: Floats) -> Floats:
     -------
     (...,) ndarray of float64
     """
-    product: Floats = np.einsum("...i,...i->...", first, second)
+    product: Floats = np.vecdot(first, second)
     return product
 
 

@@ -5,7 +5,6 @@ from __future__ import annotations
 import numpy as np
 
 from benchlay.elements._kind import Inside
-from benchlay.geometry.distinct import distinct
 from benchlay.scene.tables import Faces, Fixed, Flags, Floats, Ints, Solids
 
 # Beams are met by their distance from a solid's middle, of which rounding takes this much.
@@ -24,6 +23,8 @@ def fixed_products(faces: Faces, solids: Solids, sides: tuple[Ints, Ints]) -> Fi
         _products(f.origin, f.left) + f.middle[:, 0],
         _products(f.origin, f.up) + f.middle[:, 1],
     )
+    pierced = np.zeros(len(s.owner), dtype=np.bool_)
+    pierced[s.hole_solid] = True
     own = _own_faces(*sides)
     return Fixed(
         np.ascontiguousarray(np.concatenate((f.normal, f.left, f.up)).T),
@@ -37,7 +38,7 @@ def fixed_products(faces: Faces, solids: Solids, sides: tuple[Ints, Ints]) -> Fi
         s.reach * (1.0 + _ROUNDING) + _SLACK_MM,
         own,
         *_own_figures(f, own),
-        distinct(s.hole_solid),
+        pierced,
     )
 
 

@@ -168,7 +168,7 @@ class Fixed(NamedTuple):
     own_axes: Floats  # (E, K, 3, 3) their normals, lefts and ups
     own_middles: Floats  # (E, K, 3) middles of their outlines, mm
     own_both: Flags  # (E, K) whether optics stand on both sides
-    pierced: Ints  # solids with holes
+    pierced: Flags  # (S,) has holes
 
 
 class Scene(NamedTuple):
