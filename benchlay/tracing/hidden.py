@@ -14,8 +14,28 @@ from benchlay.tracing.silhouettes import HOLE, Outlines
 
 _WITHIN = 1e-12  # scaled units: a corner that much outside still counts as inside
 _QUADRANGLE = 4
+_NO_LIMIT = 700.0  # exponents above it overflow, and are far above what counts
 _FEW = 4  # below so many outlines in a problem there is nothing to gain
 _EQUAL_MM = 1e-9  # depths nearer than this are equal; the order then decides
+
+
+def counting(outlines: Outlines, reach: Floats) -> Flags:
+    """Tell which outlines (S,) may take a share that counts.
+
+    No more lands on an outline than its area times the density at its nearest point; what is
+    below the share beyond the reach (problems,) does not count. Bodies with holes are kept.
+    """
+    corners = _corners(outlines)
+    low, high = corners.min(axis=1), corners.max(axis=1)
+    nearest = np.clip(0.0, low, high)
+    after = np.roll(corners, -1, axis=1)
+    area = 0.5 * (corners[..., 0] * after[..., 1] - corners[..., 1] * after[..., 0]).sum(axis=1)
+    out = reach[outlines.problem]
+    ratio = 2.0 * (out * out - (nearest * nearest).sum(axis=1))
+    kept: Flags = (2.0 / np.pi) * np.abs(area) * np.exp(np.minimum(ratio, _NO_LIMIT)) >= 1.0
+    kept |= outlines.role == HOLE
+    kept[outlines.hole_of[outlines.hole_of >= 0]] = True
+    return kept
 
 
 def visible(outlines: Outlines) -> Flags:

@@ -15,7 +15,7 @@ from benchlay.elements._kind import Acts, Inside
 from benchlay.optics.shares import partition
 from benchlay.scene.tables import PART, SINK, Flags, Floats, Ints, Scene
 from benchlay.tracing.front import OUTSIDE, Front
-from benchlay.tracing.hidden import visible
+from benchlay.tracing.hidden import counting, visible
 from benchlay.tracing.hits import FACE, NOTHING, SOLID, Hits
 from benchlay.tracing.silhouettes import (
     CORE,
@@ -147,6 +147,7 @@ def gather(front: Front, scene: Scene, hits: Hits, reach: Floats) -> Outlines:
         *_solid_outlines(front, scene, solids, target, own, reach=reach, stop_mm=hits.distance),
     ]
     outlines = Outlines.joined(pieces, 1, scene, front)  # the second piece: flat sides
+    outlines = outlines.take(counting(outlines, reach))
     return outlines.take(visible(outlines))
 
 
