@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from benchlay.elements._kind import ElementKind
 from benchlay.elements.aperture import Aperture
+from benchlay.elements.cell import Cell
 from benchlay.elements.cube import Cube
 from benchlay.elements.dump import Dump
 from benchlay.elements.filter import Filter
@@ -11,13 +12,11 @@ from benchlay.elements.lens import Lens
 from benchlay.elements.mirror import Mirror
 from benchlay.elements.obstacle import Obstacle
 from benchlay.elements.pending import (
-    Cell,
     Converter,
     Grating,
     Parabola,
     Prism,
     Retroreflector,
-    Tube,
 )
 from benchlay.elements.plate_polarizer import PlatePolarizer
 from benchlay.elements.polarizer import Polarizer
@@ -26,6 +25,7 @@ from benchlay.elements.screen import Screen
 from benchlay.elements.shutter import Shutter
 from benchlay.elements.splitter import Splitter
 from benchlay.elements.target import Target
+from benchlay.elements.tube import Tube
 from benchlay.elements.waveplate import Waveplate
 from benchlay.elements.window import Window
 

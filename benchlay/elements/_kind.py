@@ -8,7 +8,7 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from enum import IntEnum
-from typing import ClassVar, NamedTuple, TypeAlias
+from typing import ClassVar, NamedTuple, Protocol, TypeAlias
 
 from benchlay.document.record import Record
 from benchlay.document.span import Span
@@ -49,7 +49,8 @@ class Face(NamedTuple):
 
     `normal` points out of the element. `volumes` are the numbers of its volumes behind the
     face and, where the element lies on both sides, before it. `sink` is where light lands
-    that an opaque face ends, and `beside` where light lands that meets the outline outside the clear region.
+    that an opaque face ends, and `beside` where light lands that meets the outline outside
+    the clear region.
     """
 
     name: str
@@ -150,6 +151,20 @@ class Geometry(NamedTuple):
         return (Volume(self.glass, self.bulk, self.barrel), *self.further)
 
 
+Goal: TypeAlias = tuple[float, float] | str
+"""Where something leads to: a point of the plan, at its own height, or the name of an item."""
+
+
+class Around(Protocol):
+    """What an element may ask of the bench that it stands on."""
+
+    def distance_mm(self, goal: Goal) -> float:
+        """Return how far it is from the element's reference point to its goal."""
+
+    def relative_index(self, glass: Glass) -> float:
+        """Return the index of a glass in the bench's medium, for the light that arrives."""
+
+
 class ElementKind(Record):
     """A kind of element: one class a kind, one file a class, one line in the registry."""
 
@@ -176,6 +191,19 @@ class ElementKind(Record):
     def geometry(self) -> Geometry:
         """Return faces, bodies and outline in the element's own frame."""
         raise NotImplementedError
+
+    def geometry_on(self, around: Around) -> Geometry:
+        """Return the geometry where it hangs on what stands around; `geometry` does not ask."""
+        del around
+        return self.geometry()
+
+    def leads_to(self) -> Goal | None:
+        """Return where it leads to, if its front faces away from there (a tube)."""
+        return None
+
+    def needs_line(self) -> bool:
+        """Whether its shape hangs on the wavelength that arrives."""
+        return False
 
     def is_round(self) -> bool:
         """Whether the default mount for round optics fits."""

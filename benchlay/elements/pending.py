@@ -13,11 +13,9 @@ from benchlay.document.forms import (
     Dimension,
     Fixed,
     ListOf,
-    OneOf,
     Pair,
     Quantity,
     RecordForm,
-    Text,
     YesNo,
 )
 from benchlay.document.record import Record, key
@@ -103,49 +101,6 @@ class Retroreflector(ElementKind):
     clear: float = key(USABLE, default=0.9, meaning="usable share of the diameter")
 
 
-class CellWindows(Record):
-    """The two windows of a cell."""
-
-    incidence: Any = key(
-        OneOf(Choice("brewster"), _ANGLE),
-        default=0.0,
-        meaning="angle, or `brewster`; tilted in plan",
-    )
-    glass: Glass = key(GLASS, default=Glass("fused-silica", None), meaning="their glass")
-    thickness_mm: float = key(LENGTH, default=3.0, name="thickness", meaning="of each")
-    diameter_mm: float | None = key(
-        LENGTH, default=None, name="diameter", meaning="of each; covers the bore"
-    )
-    front: Coating = key(COATING, default=UNCOATED, meaning="coating of the outer faces")
-    back: Coating = key(COATING, default=UNCOATED, meaning="coating of the inner faces")
-    set: str = key(
-        Choice("mirrored", "parallel"),
-        default="mirrored",
-        meaning="how the two are tilted",
-    )
-
-
-class Cell(ElementKind):
-    """A tube with two windows."""
-
-    KIND = "cell"
-    BRANCHES: ClassVar[Branches] = {"transmitted": ()}
-    DEFAULT_BRANCH = "transmitted"
-    PENDING = _WHY
-
-    length_mm: float = key(LENGTH, name="length", meaning="between the outer faces")
-    bore_mm: float = key(LENGTH, name="bore", meaning="inner diameter")
-    windows: CellWindows = key(
-        RecordForm(CellWindows), default=CellWindows(), meaning="the two windows"
-    )
-    fill: Glass | None = key(
-        GLASS,
-        default=None,
-        meaning="what it is filled with; the bench's medium without",
-    )
-    clear: float = key(USABLE, default=0.9, meaning="usable share of the windows")
-
-
 class Product(Record):
     """Light that a converter makes."""
 
@@ -167,23 +122,3 @@ class Converter(Sized, ElementKind):
     glass: Glass = key(GLASS, default=Glass(None, 1.6), meaning="its index")
     front: Coating = key(COATING, default=UNCOATED, meaning="coating of the entry")
     back: Coating = key(COATING, default=UNCOATED, meaning="coating of the exit")
-
-
-class Tube(ElementKind):
-    """An opaque beam tube between two points."""
-
-    KIND = "tube"
-    BRANCHES: ClassVar[Branches] = {"transmitted": ((("front", "transmitted"),),)}
-    DEFAULT_BRANCH = "transmitted"
-    PENDING = _WHY
-    MOUNTED = False
-    DARK_MATTERS = False
-
-    bore_mm: float = key(LENGTH, name="bore", meaning="inner diameter")
-    to: Any = key(
-        OneOf(_POINT, Text()),
-        meaning="where it ends: a point, or the name of an element",
-    )
-    material: str | None = key(
-        Text(), default=None, meaning="what it is made of (a name under `materials`)"
-    )

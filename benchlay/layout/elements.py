@@ -166,4 +166,13 @@ def _turns(record: ElementKind, shared: Shared, reader: Reader) -> bool:
             expected="'incidence', 'facing', or 'sends' where the kind has it",
             remedy=f"write 'incidence: 0' or 'facing' instead of '{name}'",
         )
+    fixed = [n for n in ("facing", "incidence", "pitch") if shared.written(n)]
+    for name in fixed if record.leads_to() is not None else ():
+        reader.complain(
+            shared.spans[name],
+            f"'{name}' turns an element, but a {record.KIND} lies along its own axis",
+            expected="only where it begins, and 'to'",
+            remedy=f"remove '{name}'",
+        )
+        wrong.append(name)
     return not wrong

@@ -59,6 +59,9 @@ class References:
         self._stand(element.name, element.stand)
         for item in element.stand.after:
             self._path_item(item)
+        goal = element.record.leads_to()
+        if isinstance(goal, str):
+            self._goal(element.name, Ref(goal, element.record.span_of("to")))
         material = getattr(element.record, "material", None)
         if isinstance(material, str):
             self._material(Ref(material, element.record.span_of("material")))
@@ -121,6 +124,17 @@ class References:
                 unknown(target.name, target.span, THING, self.names.things, self.reader)
         if stand.in_opening is not None:
             self._opening(*stand.in_opening)
+
+    def _goal(self, own: str, goal: Ref) -> None:
+        if goal.name == own:
+            self.reader.complain(
+                goal.span,
+                f"'to' names {quote(own)} itself",
+                expected=f"another {THING}, or a point",
+                remedy="name what it leads to",
+            )
+        elif goal.name not in self.names.things:
+            unknown(goal.name, goal.span, THING, self.names.things, self.reader)
 
     def _opening(self, panel: str, opening: str, span: Span) -> None:
         panels = self.names.panels

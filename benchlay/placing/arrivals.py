@@ -64,7 +64,7 @@ class Arrivals:
                 self._report_no_line(element, wanted, everything)
                 raise Unplaceable(element.name)
         distinct = _distinct(choices)
-        needs_one_line = element.stand.incidence == "brewster"
+        needs_one_line = element.stand.incidence == "brewster" or element.record.needs_line()
         lines = sorted({choice.ray.wavelength_nm for choice in choices})
         if len(distinct) > 1 or (needs_one_line and len(lines) > 1):
             self._report_ambiguous(element, choices, distinct)

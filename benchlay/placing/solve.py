@@ -13,6 +13,7 @@ from benchlay.placing.nominal import NominalRay
 from benchlay.placing.placed import Placed, PlacedElement, PlacedSource, PlacedState
 from benchlay.placing.pose import Pose
 from benchlay.placing.standing import stand_element, stand_source
+from benchlay.placing.surroundings import Surroundings
 
 POSE_KEYS = frozenset(
     (
@@ -53,7 +54,9 @@ class Solver:
         """Return the geometry of an element, made once."""
         found = self.geometries.get(name)
         if found is None:
-            found = self.geometries[name] = self.layout.elements[name].record.geometry()
+            element = self.layout.elements[name]
+            found = element.record.geometry_on(Surroundings(element, self))
+            self.geometries[name] = found
         return found
 
     def pose(self, name: str) -> Pose:
@@ -110,6 +113,8 @@ class Solver:
         for name in (*sorted(self.layout.sources), *sorted(self.layout.elements)):
             try:
                 self.pose(name)
+                if name in self.layout.elements:
+                    self.geometry(name)
             except Unplaceable:
                 self.failed.add(name)
 
@@ -158,10 +163,17 @@ def _state(name: str, layout: Layout, solver: Solver, base: PlacedState | None) 
             continue
         element = layout.elements[key]
         pose = _moved(_pose_in_state(element, touched, solver), element)
-        geometry = solver.geometry(key) if not touched else element.record.geometry()
+        geometry = solver.geometry(key) if not touched else _geometry(element, solver)
         held = holder(element.record, geometry, element.mount, pose.at[2])
         elements[key] = PlacedElement(element, pose, geometry, held)
     return PlacedState(name, layout, sources, elements)
+
+
+def _geometry(element: Element, solver: Solver) -> Geometry:
+    try:
+        return element.record.geometry_on(Surroundings(element, solver))
+    except Unplaceable:
+        return solver.geometry(element.name)  # the problem has been reported
 
 
 def _pose_in_state(item: Source | Element, touched: frozenset[str], solver: Solver) -> Pose:

@@ -5,6 +5,7 @@ from __future__ import annotations
 from math import isnan
 from typing import TYPE_CHECKING, NoReturn
 
+from benchlay.elements._kind import Glass, Goal
 from benchlay.layout._forms import Ref
 from benchlay.layout.stand import Stand
 from benchlay.optics.fresnel import brewster_angle_rad
@@ -47,7 +48,7 @@ def stand_source(source: Source, solver: Solver) -> Pose:
 def stand_element(element: Element, solver: Solver) -> Pose:
     """Return the nominal pose of an element."""
     stand = element.stand
-    ray = None if _needs_no_ray(stand) else solver.arrivals.at(element)
+    ray = None if _needs_no_ray(element) else solver.arrivals.at(element)
     at = _fixed_point(element, stand, solver)
     turned = _turned(element, ray, at, solver)
     if at is None and stand.hole is not None:
@@ -61,9 +62,10 @@ def stand_element(element: Element, solver: Solver) -> Pose:
     return pose
 
 
-def _needs_no_ray(stand: Stand) -> bool:
+def _needs_no_ray(element: Element) -> bool:
+    stand = element.stand
     fixed = stand.at_mm is not None or stand.hole is not None or stand.in_opening is not None
-    return fixed and stand.facing is not None
+    return fixed and (stand.facing is not None or element.record.leads_to() is not None)
 
 
 def _fixed_point(item: Source | Element, stand: Stand, solver: Solver) -> Vector | None:
@@ -94,6 +96,9 @@ def _turned(element: Element, ray: NominalRay | None, at: Vector | None, solver:
     """Return a pose of the right turn; its place counts only where `at` is given."""
     stand = element.stand
     pitch = stand.pitch_rad or 0.0
+    goal = element.record.leads_to()
+    if goal is not None:
+        return _leading(element, goal, ray, at, solver)
     if stand.facing is not None:
         centre = at if at is not None else ray.point if ray is not None else _ORIGIN
         if isinstance(stand.facing, float) or ray is None or at is not None:
@@ -104,12 +109,32 @@ def _turned(element: Element, ray: NominalRay | None, at: Vector | None, solver:
             panel = solver.layout.enclosure.panels[stand.in_opening.panel]  # type: ignore[union-attr]
             x, y = panel.outward
             return Pose(_ORIGIN, facing(_ORIGIN, (x, y, 0.0)).facing_rad, pitch)
-        _no_ray(element, solver)
+        no_ray(element, solver)
     result = _by_ray(element, ray, at, pitch, solver)
     if isinstance(result, Trouble):
         way = next((k for k in ("turn", "aim", "incidence") if k in element.spans), "after")
         _complain(element, way, result.message, result.expected, result.remedy, solver)
     return result
+
+
+def _leading(
+    element: Element, goal: Goal, ray: NominalRay | None, at: Vector | None, solver: Solver
+) -> Pose:
+    """Turn the front away from where the element leads to."""
+    if at is None and ray is None:
+        no_ray(element, solver)
+    centre = at if at is not None else _on_ray(ray, element.stand, Pose(_ORIGIN, 0.0, 0.0))  # type: ignore[arg-type]
+    back = unit(add(centre, goal_of(goal, centre, solver), -1.0))
+    if back is None:
+        _complain(
+            element, "to", "it would end where it begins", "another place", "lead it on", solver
+        )
+    return facing(centre, back)
+
+
+def goal_of(goal: Goal, own: Vector, solver: Solver) -> Vector:
+    """Return where something at a point leads to: level for a point, else the item's own height."""
+    return _reference_point(goal, solver) if isinstance(goal, str) else (*goal, own[2])
 
 
 def _by_ray(
@@ -179,6 +204,12 @@ def _brewster(element: Element, ray: NominalRay, solver: Solver) -> float:
             solver,
         )
     outside = solver.media.index(None, ray.wavelength_nm)
+    inside = index_of(glass, ray, element, solver)
+    return float(brewster_angle_rad(outside, inside))
+
+
+def index_of(glass: Glass, ray: NominalRay, element: Element, solver: Solver) -> float:
+    """Return the index of a glass for a ray, or say that it is not known."""
     inside = solver.media.index(glass, ray.wavelength_nm)
     if isnan(inside):
         _complain(
@@ -189,7 +220,7 @@ def _brewster(element: Element, ray: NominalRay, solver: Solver) -> float:
             "name another glass, or give its index: `glass: {index: 1.5}`",
             solver,
         )
-    return float(brewster_angle_rad(outside, inside))
+    return inside
 
 
 def _looking(
@@ -257,11 +288,12 @@ def _over_hole(element: Element, ray: NominalRay | None, turned: Pose, solver: S
 def _post_offset(element: Element, solver: Solver, height: float) -> tuple[float, float]:
     from benchlay.elements.mount import holder
 
-    held = holder(element.record, solver.geometry(element.name), element.mount, height)
+    held = holder(element.record, element.record.geometry(), element.mount, height)
     return held.post_mm or (0.0, 0.0)
 
 
-def _no_ray(element: Element, solver: Solver) -> NoReturn:
+def no_ray(element: Element, solver: Solver) -> NoReturn:
+    """Say that the ray that arrives is not known."""
     way = next((k for k in ("turn", "aim", "incidence") if k in element.spans), None)
     name = element.name
     if way is not None:

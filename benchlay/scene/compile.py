@@ -117,7 +117,7 @@ class Compiler:
         return self.solids.add(item.solid, frame, label)
 
     def _owner(self, item: Surrounding) -> int:
-        """Return the number of an owner: a source's body after the elements; what belongs to nobody comes last."""
+        """Return who owns it: sources come after the elements, nobody comes last."""
         if item.solid.part == "source":
             return len(self.elements) + self.sources.index(item.name or "")
         return len(self.elements) + len(self.sources)

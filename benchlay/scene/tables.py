@@ -182,7 +182,7 @@ class Scene(NamedTuple):
     wavelengths_nm: Floats  # (L,)
     index_outside: Floats  # (L,)
     index_inside: Floats  # (F, L) of what lies behind each face
-    index: Floats  # (E + 1, L) of each volume; the last row is the medium outside
+    indices: Floats  # (E + 1, L) of each volume; the last row is the medium outside
     faces: Faces
     solids: Solids
     bulks: Bulks

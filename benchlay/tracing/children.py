@@ -214,7 +214,7 @@ def _meeting(core: Front, face: Ints, scene: Scene) -> Meeting:
         np.abs(slope),
         s,
         core.index,
-        scene.index[beyond, wave],
+        scene.indices[beyond, wave],
         beyond,
         outward,
         direction,

@@ -6,7 +6,17 @@ import pytest
 
 from tests.tracing.bench import SCENES
 
-for name in ("plates", "glasses", "states", "lenses", "cuts", "bodies", "landings", "rotators"):
+for name in (
+    "plates",
+    "glasses",
+    "states",
+    "lenses",
+    "cuts",
+    "bodies",
+    "landings",
+    "rotators",
+    "tubes",
+):
     importlib.import_module(f"tests.tracing.scenes.{name}")
 
 
