@@ -150,13 +150,20 @@ def test_the_order_of_the_file_changes_nothing(made):
         assert (a == b).all()
 
 
+def _without_horizon(seen):
+    """Sinks, the floor counted as escaped: how far it reaches goes by the bench's box."""
+    sinks = seen.sinks()
+    sinks["escaped", None] = sinks.get(("escaped", None), 0.0) + sinks.pop(("wall", "floor"), 0.0)
+    return sinks
+
+
 @settings(max_examples=25)
 @given(bench(), st.sampled_from((90.0, 37.0, 200.0)), st.sampled_from(((0, 0), (331.5, -78.25))))
 def test_turning_and_shifting_the_bench_changes_no_power_and_no_length(made, turn, shift):
     plain = Bench(written(made), floor=1e-6)
     turned = Bench(written(made, turn=turn, shift=shift), floor=1e-6)
-    there = turned.sinks()
-    for key, watts in plain.sinks().items():
+    there = _without_horizon(turned)
+    for key, watts in _without_horizon(plain).items():
         assert there.get(key, 0.0) == pytest.approx(watts, rel=1e-6, abs=2e-6), key
     assert turned.trace.beams.length[:2] == pytest.approx(plain.trace.beams.length[:2], abs=1e-8)
 
