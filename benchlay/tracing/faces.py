@@ -13,7 +13,7 @@ import numpy as np
 
 from benchlay.elements._kind import Acts
 from benchlay.optics import coherency, fresnel, moments
-from benchlay.optics.rays import cross, dot
+from benchlay.optics.rays import bench_basis, cross, dot
 from benchlay.optics.thin_lens import bend, throw_back
 from benchlay.scene.tables import Flags, Floats, Ints, Mode, Scene
 
@@ -62,13 +62,15 @@ def plane_of_incidence(
 ) -> tuple[Floats, Floats, Floats]:
     """Return s, and cosine and sine of the turn from the beam's axis to s.
 
-    At normal incidence any s will do; the beam's own axis is taken.
+    At normal incidence any s will do for bare faces; for a coating that tells s from p it is
+    taken as for a plate turned in plan by next to nothing: s is up.
     """
     s = cross(direction, normal)
     length = np.sqrt(dot(s, s))
     flat = length < _NORMAL
     s /= np.where(flat, 1.0, length)[:, None]
-    s[flat] = axis[flat]
+    if flat.any():
+        s[flat] = bench_basis(direction[flat])[1]
     return s, dot(s, axis), dot(s, cross(direction, axis))
 
 

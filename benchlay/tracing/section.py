@@ -214,8 +214,10 @@ def _solid_outlines(
     stop_mm: Floats,
 ) -> list[Outlines]:
     s = scene.solids
-    # The plate round the opening that the light goes to is that opening's own outline already.
-    solids = solids & ~((s.owner == met[:, None]) & (s.part == PART["plate"]))
+    # Whether light passes the optic that it goes to is judged at its face: not at its edge, and
+    # of the plate round an opening the outline of the face tells all.
+    judged = (s.part == PART["plate"]) | (s.part == PART["edge"])
+    solids = solids & ~((s.owner == met[:, None]) & judged)
     # Of the mount of the optic that the light goes to only the ring in the front plane counts.
     ringed = (s.owner == met[:, None]) & (s.part == PART["mount"])
     patches = patch_outlines(part, scene, solids, ringed, own, reach=reach, stop_mm=stop_mm)
