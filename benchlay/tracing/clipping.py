@@ -19,8 +19,9 @@ def clip_behind(x: Floats, y: Floats, z: Floats) -> tuple[Floats, Floats, Floats
 
     Returns
     -------
-    x, y, z : (K, 2 V) or (K, V) ndarray of float64
-        The clipped polygons; the shape is unchanged where nothing was to be cut.
+    x, y, z : (K, W) ndarray of float64
+        The clipped polygons, as wide as the one with the most corners; unchanged where nothing
+        was to be cut.
     ahead : (K,) ndarray of bool
         Which polygons have anything left.
 
@@ -33,24 +34,24 @@ def clip_behind(x: Floats, y: Floats, z: Floats) -> tuple[Floats, Floats, Floats
     ahead: Flags = kept.any(axis=1)
     if kept[ahead].all():
         return x, y, z, ahead
-    after = np.roll(kept, -1, axis=1)
-    step = np.roll(z, -1, axis=1) - z
-    with np.errstate(divide="ignore", invalid="ignore"):
-        share = np.where(kept != after, (_START_MM - z) / step, 0.0)
-    cut = [value + share * (np.roll(value, -1, axis=1) - value) for value in (x, y, z)]
-    valid = np.stack((kept, kept != after), axis=2).reshape(len(z), -1)
-    order = np.argsort(~valid, axis=1, kind="stable")
-    last = np.maximum(valid.sum(axis=1) - 1, 0)
-    order = np.where(
-        np.arange(valid.shape[1]) > last[:, None],
-        np.take_along_axis(order, last[:, None], 1),
-        order,
-    )
-    both = [
-        np.take_along_axis(np.stack((old, new), axis=2).reshape(len(z), -1), order, 1)
-        for old, new in zip((x, y, z), cut, strict=True)
-    ]
-    return both[0], both[1], both[2], ahead
+    crossed = kept != _following(kept)
+    corner = np.array((x, y, z))
+    step = _following(corner) - corner
+    share = np.divide(_START_MM - z, step[2], out=np.zeros_like(z), where=crossed)
+    both = np.stack((corner, corner + share * step), axis=3).reshape(3, len(z), -1)
+    valid = np.stack((kept, crossed), axis=2).reshape(len(z), -1)
+    count = valid.sum(axis=1)
+    # A convex polygon gains one corner at most: what is never used is not carried along.
+    order = np.argsort(~valid, axis=1, kind="stable")[:, : int(count.max())]
+    last = order[np.arange(len(z)), np.maximum(count - 1, 0)]
+    order = np.where(np.arange(order.shape[1]) < count[:, None], order, last[:, None])
+    clipped = np.take_along_axis(both, order[None], axis=2)
+    return clipped[0], clipped[1], clipped[2], ahead
+
+
+def _following(values: np.ndarray) -> np.ndarray:
+    """Return for each corner (..., V) the value of the next."""
+    return np.concatenate((values[..., 1:], values[..., :1]), axis=-1)
 
 
 def split_at(x: Floats, y: Floats, z: Floats, depth: Floats) -> tuple[Floats, Floats, Floats, Ints]:

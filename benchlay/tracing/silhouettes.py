@@ -383,7 +383,8 @@ def _flat_sides(
     x, y, z = local
     crossing, slope = _plane_depth(frame, point, normal)
     along = np.abs(slope) < _GRAZING
-    depth = np.clip(crossing, z.min(axis=1), z.max(axis=1))
+    least, most = z.min(axis=1), z.max(axis=1)
+    depth = np.clip(crossing, least, most)
     vertices = _scaled(inverse_roots(frame, np.where(along[:, None], z, depth[:, None])), x, y)
     rate = growth(frame.moments, frame.index, depth)
     vertices = perspective(vertices, np.where(along, 0.0, rate)[:, None] * (z - depth[:, None]))
@@ -392,7 +393,9 @@ def _flat_sides(
     vertices[twice < 0.0] = vertices[twice < 0.0, ::-1]
     gradient = _gradient(frame, normal, slope, inverse_roots(frame, depth))
     plane = np.concatenate((crossing[:, None], gradient), axis=1)
-    plane[along] = np.stack((z.mean(axis=1), 0.0 * depth, 0.0 * depth), axis=1)[along]
+    # Halfway, not the mean of the corners: some are repeated to fill the row.
+    plane[along] = 0.0
+    plane[along, 0] = 0.5 * (least + most)[along]
     return vertices, plane
 
 
