@@ -23,7 +23,7 @@ is its rim.
 from __future__ import annotations
 
 from math import atan, cos, radians, sin, tan
-from typing import Any, ClassVar
+from typing import ClassVar
 
 from benchlay.document.form import Reader
 from benchlay.document.forms import Choice, OneOf, Quantity, RecordForm
@@ -63,7 +63,7 @@ _FORTH = (
 class CellWindows(Record):
     """The two windows of a cell."""
 
-    incidence: Any = key(
+    incidence: float | str = key(
         OneOf(Choice("brewster"), _TILT),
         default=0.0,
         meaning="angle, or `brewster`; tilted in plan",
@@ -110,8 +110,9 @@ class Cell(ElementKind):
     def after_read(self, reader: Reader) -> None:
         """Ask for windows that cover the bore, and for some room between them."""
         super().after_read(reader)
-        if not self.needs_line():
-            self._ask_for_room(self.windows.incidence, reader)
+        tilt = self._stated_tilt()
+        if tilt is not None:
+            self._ask_for_room(tilt, reader)
 
     def _ask_for_room(self, tilt: float, reader: Reader) -> None:
         w = self.windows
@@ -134,7 +135,12 @@ class Cell(ElementKind):
 
     def needs_line(self) -> bool:
         """Whether its windows stand at Brewster's angle."""
-        return self.windows.incidence == "brewster"
+        return self._stated_tilt() is None
+
+    def _stated_tilt(self) -> float | None:
+        """Return the angle of the windows; None for Brewster's, which hangs on the light."""
+        incidence = self.windows.incidence
+        return None if isinstance(incidence, str) else incidence
 
     def glass_of(self) -> Glass:
         """Return the glass of the windows."""
@@ -142,7 +148,8 @@ class Cell(ElementKind):
 
     def geometry(self) -> Geometry:
         """Return the cell, as if nobody asked for the very angle of Brewster windows."""
-        return self._tilted(_ANY_RAD if self.needs_line() else self.windows.incidence)
+        tilt = self._stated_tilt()
+        return self._tilted(_ANY_RAD if tilt is None else tilt)
 
     def geometry_on(self, around: Around) -> Geometry:
         """Return the cell with its windows at their angle for the light that arrives."""

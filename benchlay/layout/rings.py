@@ -24,7 +24,8 @@ def refuse_rings(elements: Mapping[str, Element], reader: Reader) -> None:
                 elements[ring[0]].span,
                 "these places hang on one another: " + " → ".join((*ring, ring[0])),
                 expected="places that lead back to a source, or to `at` with `facing`",
-                remedy=f"give one of them, such as {ring[0]!r}, a place of its own: `at` and `facing`",
+                remedy=f"give one of them, such as {ring[0]!r}, a place of its own: "
+                "`at` and `facing`",
             )
 
 

@@ -144,7 +144,10 @@ def diagonal(j: Floats, a: ArrayLike, b: ArrayLike) -> Floats:
     """
     if np.isrealobj(a) and np.isrealobj(b):
         along, across = np.asarray(a), np.asarray(b)
-        return j * np.array((along * along, across * across, along * across, along * across))
+        scaled: Floats = j * np.array(
+            (along * along, across * across, along * across, along * across)
+        )
+        return scaled
     first = np.asarray(a, dtype=np.complex128)
     second = np.asarray(b, dtype=np.complex128)
     j12 = (first * second.conj()) * (j[2] + 1j * j[3])

@@ -5,7 +5,8 @@ from __future__ import annotations
 from benchlay.document.problems import Problems
 from benchlay.elements._kind import Geometry
 from benchlay.elements.mount import holder
-from benchlay.layout.layout import Element, Layout, LayoutSource
+from benchlay.layout.elements import Element
+from benchlay.layout.layout import Layout, LayoutSource
 from benchlay.layout.sources import Source
 from benchlay.placing.arrivals import Arrivals, Unplaceable
 from benchlay.placing.media import Media

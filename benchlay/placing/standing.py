@@ -22,7 +22,7 @@ from benchlay.placing.orient import (
 from benchlay.placing.pose import Pose, Vector, add, dot, facing, unit
 
 if TYPE_CHECKING:
-    from benchlay.layout.layout import Element
+    from benchlay.layout.elements import Element
     from benchlay.layout.sources import Source
     from benchlay.placing.solve import Solver
 

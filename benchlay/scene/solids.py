@@ -15,36 +15,54 @@ def solids_table(rows: SolidRows, frames: Frames, hole_names: list[int], present
     """Return the table of all solids; `hole_names` are the names of all holes in order."""
     points, start = rows.points(frames)
     labels = np.array(rows.labels, dtype=np.float64).reshape(-1, 5)
-    patch_solid, patch_points, corners = _patches(rows, points, start)
+    owner, name, part, sink = labels[:, :4].astype(np.int64).T.copy()
+    patch_solid, patch_points, patch_corners = _patches(rows, points, start)
     disc_solid, disc_centre, disc_axes = _discs(rows, points, start)
     patch_normal = _unit(
         cross(patch_points[:, 1] - patch_points[:, 0], patch_points[:, 2] - patch_points[:, 1])
     )
     disc_normal = _unit(cross(disc_axes[:, 0], disc_axes[:, 1]))
-    planes = _planes(
+    plane_normal, plane_offset, plane_start, plane_solid = _planes(
         np.concatenate((patch_solid, disc_solid)),
         np.concatenate((patch_normal, disc_normal)),
         np.concatenate((patch_points[:, 0], disc_centre)),
         len(rows.solids),
     )
+    axis_point, axis, axis_radius, axis_length, axis_solid = _axes(rows, points, start)
     centre, reach = _spheres(rows, points, start)
+    hole_solid, hole_round, hole_centre, hole_axes, hole_through = _holes(rows, frames)
     return Solids(
-        *labels[:, :4].astype(np.int64).T.copy(),
-        labels[:, 4].copy(),
-        *planes,
-        *_axes(rows, points, start),
-        centre,
-        reach,
-        patch_solid,
-        patch_points,
-        corners,
-        patch_normal,
-        disc_solid,
-        disc_centre,
-        disc_axes,
-        disc_normal,
-        *_holes(rows, frames, hole_names),
-        present,
+        owner=owner,
+        name=name,
+        part=part,
+        sink=sink,
+        specular=labels[:, 4].copy(),
+        plane_normal=plane_normal,
+        plane_offset=plane_offset,
+        plane_start=plane_start,
+        plane_solid=plane_solid,
+        axis_point=axis_point,
+        axis=axis,
+        axis_radius=axis_radius,
+        axis_length=axis_length,
+        axis_solid=axis_solid,
+        centre=centre,
+        reach=reach,
+        patch_solid=patch_solid,
+        patch_points=patch_points,
+        patch_corners=patch_corners,
+        patch_normal=patch_normal,
+        disc_solid=disc_solid,
+        disc_centre=disc_centre,
+        disc_axes=disc_axes,
+        disc_normal=disc_normal,
+        hole_solid=hole_solid,
+        hole_name=np.array(hole_names, dtype=np.int64),
+        hole_round=hole_round,
+        hole_centre=hole_centre,
+        hole_axes=hole_axes,
+        hole_through=hole_through,
+        present=present,
     )
 
 
@@ -123,9 +141,7 @@ def _spheres(rows: SolidRows, points: Floats, start: Ints) -> tuple[Floats, Floa
     return centre, reach + radius
 
 
-def _holes(
-    rows: SolidRows, frames: Frames, names: list[int]
-) -> tuple[Ints, Ints, Flags, Floats, Floats, Floats]:
+def _holes(rows: SolidRows, frames: Frames) -> tuple[Ints, Flags, Floats, Floats, Floats]:
     found = [
         (number, frame, hole)
         for number, (solid, frame) in enumerate(zip(rows.solids, rows.frames, strict=True))
@@ -137,7 +153,6 @@ def _holes(
     second = frames.turn([hole.half_axes[1] for _, _, hole in found], frame_of)
     return (
         np.array([number for number, _, _ in found], dtype=np.int64),
-        np.array(names, dtype=np.int64),
         np.array([hole.round for _, _, hole in found], dtype=np.bool_),
         centre,
         np.stack((first, second), axis=1),

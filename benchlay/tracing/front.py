@@ -130,7 +130,7 @@ class Front:
 
     def __len__(self) -> int:
         """Count the beams."""
-        return self.ints.shape[1]
+        return int(self.ints.shape[1])
 
     @property
     def power(self) -> Floats:
