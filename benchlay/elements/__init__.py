@@ -5,6 +5,7 @@ from __future__ import annotations
 from benchlay.elements._kind import ElementKind
 from benchlay.elements.aperture import Aperture
 from benchlay.elements.cell import Cell
+from benchlay.elements.converter import Converter
 from benchlay.elements.cube import Cube
 from benchlay.elements.dump import Dump
 from benchlay.elements.filter import Filter
@@ -12,7 +13,6 @@ from benchlay.elements.lens import Lens
 from benchlay.elements.mirror import Mirror
 from benchlay.elements.obstacle import Obstacle
 from benchlay.elements.pending import (
-    Converter,
     Grating,
     Parabola,
     Prism,

@@ -13,6 +13,7 @@ from typing import ClassVar, NamedTuple, Protocol, TypeAlias
 from benchlay.document.record import Record
 from benchlay.document.span import Span
 from benchlay.elements._coating import UNCOATED, Coating
+from benchlay.elements._polarization import Polarization
 from benchlay.geometry.outline import Outline
 from benchlay.geometry.solid import Solid, Vector
 
@@ -69,16 +70,25 @@ class Face(NamedTuple):
     volumes: tuple[int, int] = (0, 0)
 
 
+class Made(NamedTuple):
+    """Light that a converter makes; its polarization is that of what makes it unless stated."""
+
+    wavelength_nm: float
+    share: float
+    polarization: Polarization | None = None
+
+
 class Bulk(NamedTuple):
     """What the inside of an element does on every passage from face to face.
 
-    `kind` is ``clear``, ``absorber``, ``polarizer``, ``retarder`` or ``rotator``. For an absorber,
+    `kind` is ``clear``, ``absorber``, ``polarizer``, ``retarder``, ``rotator`` or
+    ``converter``. For an absorber,
     `bands` are (from nm, to nm, share passed at normal incidence over `thickness_mm`) and
     light outside every band does not pass; without bands `passes` holds everywhere. For a
     polarizer `passes` and `refused` are the shares along the axis and across it. For a
     retarder `waves` is the retardance at `design_nm` (None: the wavelength of the route). A
     rotator turns the field by `turns_rad` about the back's outward normal, whichever way the
-    light goes.
+    light goes. A converter `makes` light of light that has entered from outside.
     """
 
     kind: str = "clear"
@@ -88,6 +98,7 @@ class Bulk(NamedTuple):
     waves: float = 0.0
     design_nm: float | None = None
     turns_rad: float = 0.0
+    makes: tuple[Made, ...] = ()
     thickness_mm: float = 0.0
     bands: tuple[tuple[float, float, float], ...] = ()
 
@@ -200,6 +211,10 @@ class ElementKind(Record):
     def leads_to(self) -> Goal | None:
         """Return where it leads to, if its front faces away from there (a tube)."""
         return None
+
+    def makes(self) -> tuple[Made, ...]:
+        """Return the light of other wavelengths that it makes."""
+        return ()
 
     def needs_line(self) -> bool:
         """Whether its shape hangs on the wavelength that arrives."""

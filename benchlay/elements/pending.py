@@ -15,15 +15,13 @@ from benchlay.document.forms import (
     ListOf,
     Pair,
     Quantity,
-    RecordForm,
     YesNo,
 )
-from benchlay.document.record import Record, key
-from benchlay.elements import _through
-from benchlay.elements._coating import COATING, METAL_NAMES, UNCOATED, Coating
+from benchlay.document.record import key
+from benchlay.elements._coating import COATING, METAL_NAMES, Coating
 from benchlay.elements._glass import GLASS
 from benchlay.elements._kind import Branches, ElementKind, Glass
-from benchlay.elements._shares import SHARE, USABLE
+from benchlay.elements._shares import USABLE
 from benchlay.elements._sized import LENGTH, Sized
 
 _ANGLE = Quantity(Dimension.ANGLE)
@@ -99,26 +97,3 @@ class Retroreflector(ElementKind):
     glass: Glass | None = key(GLASS, default=None, meaning="the glass; hollow without")
     reflectance: Coating | None = key(COATING, default=None, meaning="of its faces")
     clear: float = key(USABLE, default=0.9, meaning="usable share of the diameter")
-
-
-class Product(Record):
-    """Light that a converter makes."""
-
-    wavelength_nm: float = key(_WAVELENGTH, name="wavelength", meaning="of the light made")
-    share: float = key(SHARE, meaning="of the power that becomes this light")
-    polarization: Any = key(Deferred("a polarization"), default=None, meaning="of the light made")
-
-
-class Converter(Sized, ElementKind):
-    """A crystal that turns light of one wavelength into another."""
-
-    KIND = "converter"
-    BRANCHES: ClassVar[Branches] = {"transmitted": _through.TRANSMITTED}
-    DEFAULT_BRANCH = "transmitted"
-    PENDING = _WHY
-
-    produces: tuple[Product, ...] = key(ListOf(RecordForm(Product)), meaning="what it makes")
-    length_mm: float = key(LENGTH, name="length", meaning="of the crystal")
-    glass: Glass = key(GLASS, default=Glass(None, 1.6), meaning="its index")
-    front: Coating = key(COATING, default=UNCOATED, meaning="coating of the entry")
-    back: Coating = key(COATING, default=UNCOATED, meaning="coating of the exit")

@@ -2,84 +2,29 @@
 
 from __future__ import annotations
 
-from math import pi
-from typing import Any, NamedTuple
+from typing import NamedTuple
 
-from benchlay.document.form import Form, Reader
-from benchlay.document.forms import Choice, OneOf, Quantity, RecordForm, Words
-from benchlay.document.nodes import Node
+from benchlay.document.form import Reader
+from benchlay.document.forms import Quantity, RecordForm
 from benchlay.document.quantity import Dimension
 from benchlay.document.record import Record, key
 from benchlay.document.span import Span
-from benchlay.layout._forms import ANGLE, POWER, WAVELENGTH
+from benchlay.elements._polarization import UNPOLARIZED, Polarization, PolarizationForm
+from benchlay.layout._forms import POWER, WAVELENGTH
+
+__all__ = [
+    "UNPOLARIZED",
+    "Emits",
+    "Line",
+    "LineKeys",
+    "Polarization",
+    "PolarizationForm",
+    "PulseTrain",
+]
 
 _ENERGY = Quantity(Dimension.ENERGY, above=0.0)
 _DURATION = Quantity(Dimension.DURATION, above=0.0)
 _RATE = Quantity(Dimension.RATE, above=0.0)
-
-
-class Polarization(NamedTuple):
-    """`kind` is ``none``, ``angle`` (from horizontal) or ``circular`` (with its hand)."""
-
-    kind: str
-    angle_rad: float = 0.0
-    hand: str = ""
-
-
-UNPOLARIZED = Polarization("none")
-
-
-class _Inclined(Record):
-    angle_rad: float = key(
-        ANGLE,
-        name="angle",
-        meaning="from horizontal, anticlockwise to a viewer whom the beam approaches",
-    )
-
-
-class _Circular(Record):
-    circular: str = key(Choice("left", "right"), meaning="`right` turns clockwise to that viewer")
-
-
-class PolarizationForm(Form[Polarization]):
-    """Reads `horizontal`, `vertical`, `none`, `{angle: 30}` or `{circular: left}`."""
-
-    _form = OneOf(
-        Words(
-            {
-                "horizontal": Polarization("angle", 0.0),
-                "vertical": Polarization("angle", pi / 2),
-                "none": UNPOLARIZED,
-            }
-        ),
-        RecordForm(_Inclined),
-        RecordForm(_Circular),
-    )
-
-    def read(self, node: Node, reader: Reader) -> Polarization | None:
-        """Read a state of polarization."""
-        value = self._form.read(node, reader)
-        if isinstance(value, _Inclined):
-            return Polarization("angle", value.angle_rad)
-        if isinstance(value, _Circular):
-            return Polarization("circular", hand=value.circular)
-        return value if isinstance(value, Polarization) else None
-
-    def text(self) -> str:
-        """Say what may be written."""
-        return "'horizontal', 'vertical', 'none', '{angle: 30}' or '{circular: left|right}'"
-
-    def example(self) -> str:
-        """Give a sample."""
-        return "'vertical'"
-
-    def schema(self) -> dict[str, Any]:
-        """Allow all ways."""
-        return self._form.schema()
-
-    def show(self, value: object) -> str:
-        """Write a state as a user would."""
-        return "none" if value == UNPOLARIZED else str(value)
 
 
 class PulseTrain(Record):

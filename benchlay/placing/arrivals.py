@@ -9,7 +9,7 @@ from benchlay.document.span import Span
 from benchlay.placing.nominal import Lost, NominalRay, Standing, through
 
 if TYPE_CHECKING:
-    from benchlay.layout.layout import Element
+    from benchlay.layout.elements import Element
     from benchlay.placing.solve import Solver
 
 _SAME_MM = 1e-6  # nominal rays nearer than this, and as parallel, are one ray
@@ -146,9 +146,12 @@ class Arrivals:
         element = solver.layout.elements[last.name]
         standing = Standing(last.name, solver.pose(last.name), solver.geometry(last.name))
         ways = element.record.branches().get(self._branch(last.name, last.branch) or "", ())
+        made = [light.wavelength_nm for light in element.record.makes()]
         for choice in self._before(path):
-            ray = through(choice.ray, ways, standing, solver.media)
-            if not isinstance(ray, Lost):
+            for nm in (None, *made):
+                ray = through(choice.ray, ways, standing, solver.media, nm)
+                if isinstance(ray, Lost) or (made and not _leaves_as(last, ray)):
+                    continue
                 yield Choice((*choice.path, last), ray)
 
     def _before(self, path: tuple[Item, ...]) -> Iterator[Choice]:
@@ -211,7 +214,8 @@ class Arrivals:
             _where(element, "after"),
             f"no nominal beam leaves {_label(last)!r} towards {element.name!r}: {why}",
             expected="an item that a beam reaches and leaves by that branch",
-            remedy=f"name another item or branch in `after`, or see that a beam arrives at {last.name!r}",
+            remedy="name another item or branch in `after`, or see that a beam arrives at "
+            f"{last.name!r}",
         )
 
     def _why_lost(self, path: tuple[Item, ...]) -> str:
@@ -230,10 +234,17 @@ class Arrivals:
             through(choice.ray, ways, standing, self._solver.media) for choice in self._before(path)
         ]
         lost = next((reason.why for reason in reasons if isinstance(reason, Lost)), None)
+        if lost is not None:
+            return lost
         return (
-            lost
-            or f"nothing says which beam arrives at {last.name!r}: give it `after`, or name it in a route"
+            f"nothing says which beam arrives at {last.name!r}: "
+            "give it `after`, or name it in a route"
         )
+
+
+def _leaves_as(item: Item, ray: NominalRay) -> bool:
+    """Tell whether light of a converter is what a path goes on with."""
+    return item.wavelength_nm in (None, ray.wavelength_nm)
 
 
 def _distinct(choices: Sequence[Choice]) -> list[Choice]:

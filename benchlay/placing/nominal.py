@@ -2,8 +2,11 @@
 
 from __future__ import annotations
 
-from math import isnan
+from math import hypot, isnan
 from typing import NamedTuple
+
+import numpy as np
+from numpy.typing import NDArray
 
 from benchlay.elements._kind import Acts, Face, Geometry, Inside, Step
 from benchlay.geometry.axes import in_plane_axes
@@ -39,11 +42,16 @@ _BEHIND_MM = 1e-9  # a face met less than this behind the ray counts as touched
 
 
 def through(
-    ray: NominalRay, ways: tuple[tuple[Step, ...], ...], standing: Standing, media: Media
+    ray: NominalRay,
+    ways: tuple[tuple[Step, ...], ...],
+    standing: Standing,
+    media: Media,
+    made_nm: float | None = None,
 ) -> NominalRay | Lost:
     """Return the ray that leaves an element by one of its branches.
 
-    The way whose first face the ray enters nearest to its middle is the one taken.
+    Behind the first face it may become light of another wavelength, `made_nm`. The way
+    whose first face the ray enters nearest to its middle is the one taken.
     """
     best: tuple[float, tuple[Step, ...]] | None = None
     for way in ways:
@@ -56,7 +64,16 @@ def through(
         )
     if best[0] > 1.0:
         return Lost(f"the beam passes beside {standing.name!r}")
-    return _along(ray, best[1], standing, media)
+    if made_nm is None:
+        return _along(ray, best[1], standing, media)
+    if len(best[1]) == 1:
+        return Lost(f"{standing.name!r} makes no light where it only reflects")
+    inside = _along(ray, best[1][:1], standing, media)
+    if isinstance(inside, Lost):
+        return inside
+    made = inside._replace(wavelength_nm=made_nm)
+    entry = _face(standing, best[1][0][0])
+    return _along(made, best[1][1:], standing, media, within=_beyond(entry, None))
 
 
 def _face(standing: Standing, name: str) -> Face:
@@ -99,12 +116,17 @@ def _reach(point: Vector, face: Face, pose: Pose) -> float:
     v = dot(from_centre, up) - face.outline.centre[1]
     a, b = face.outline.radii
     if face.outline.round:
-        return ((u / a) ** 2 + (v / b) ** 2) ** 0.5
+        return hypot(u / a, v / b)
     return max(abs(u) / a, abs(v) / b)
 
 
 def _along(
-    ray: NominalRay, way: tuple[Step, ...], standing: Standing, media: Media
+    ray: NominalRay,
+    way: tuple[Step, ...],
+    standing: Standing,
+    media: Media,
+    *,
+    within: int | None = None,
 ) -> NominalRay | Lost:
     outside = media.index(None, ray.wavelength_nm)
     insides = [media.index(v.glass, ray.wavelength_nm) for v in standing.geometry.volumes()]
@@ -112,8 +134,7 @@ def _along(
         return Lost(
             f"the glass of {standing.name!r} has no known index at {ray.wavelength_nm:g} nm"
         )
-    within: int | None = None
-    index = outside
+    index = outside if within is None else insides[within]
     for name, event in way:
         face = _face(standing, name)
         distance, point, normal = _meet(ray, face, standing.pose)
@@ -123,6 +144,7 @@ def _along(
         behind = outside if beyond is None else insides[beyond]
         if face.acts is Acts.OPAQUE and event == "transmitted" and not _opens(face):
             return Lost(f"face {name!r} of {standing.name!r} is opaque")
+        direction: Vector | None
         if face.acts is Acts.LENS and event == "transmitted":
             power = outside / (2.0 * face.focal_mm)
             direction = _lensed(ray.direction, point, (index, behind, power), face, standing.pose)
@@ -180,6 +202,6 @@ def _lensed(
     return result
 
 
-def _vector(array: object) -> Vector:
-    x, y, z = array.tolist()  # type: ignore[attr-defined]  # numpy arrays of three
+def _vector(array: NDArray[np.float64]) -> Vector:
+    x, y, z = array.tolist()
     return (x, y, z)

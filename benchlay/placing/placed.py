@@ -7,7 +7,9 @@ from typing import NamedTuple
 
 from benchlay.elements._kind import Geometry
 from benchlay.elements.mount import Holder
-from benchlay.layout.layout import Element, Layout, LayoutSource
+from benchlay.layout.elements import Element
+from benchlay.layout.layout import Layout, LayoutSource
+from benchlay.layout.light import Line
 from benchlay.layout.sources import Source
 from benchlay.placing.media import Media
 from benchlay.placing.nominal import NominalRay
@@ -43,6 +45,27 @@ class PlacedState(NamedTuple):
     sources: Mapping[str, PlacedSource]
     elements: Mapping[str, PlacedElement]
 
+    def made_nm(self) -> frozenset[float]:
+        """Return the wavelengths that converters make."""
+        return frozenset(
+            made.wavelength_nm
+            for item in self.elements.values()
+            if not item.out
+            for made in item.element.record.makes()
+        )
+
+    def lines(self, source: str) -> tuple[Line, ...]:
+        """Return the lines of a source, and those that converters may make of its light.
+
+        The latter are emitted elsewhere, so with no power of their own, in the source's pulses.
+        """
+        own = self.sources[source].source.lines
+        missing = self.made_nm().difference(line.wavelength_nm for line in own)
+        if not missing:
+            return own
+        main = max(own, key=lambda line: line.power_w)
+        return (*own, *(Line(nm, 0.0, main.pulse, main.span) for nm in sorted(missing)))
+
 
 class Placed(NamedTuple):
     """The layout placed in every state; `arrivals` are nominal rays by element name."""
@@ -51,6 +74,20 @@ class Placed(NamedTuple):
     states: tuple[PlacedState, ...]
     arrivals: Mapping[str, NominalRay]
     media: Media
+
+    @property
+    def wavelengths_nm(self) -> tuple[float, ...]:
+        """All wavelengths of light in any state, emitted or made."""
+        return tuple(
+            sorted(
+                {
+                    line.wavelength_nm
+                    for state in self.states
+                    for name in state.sources
+                    for line in state.lines(name)
+                }
+            )
+        )
 
     @property
     def base(self) -> PlacedState:

@@ -127,11 +127,11 @@ def _places(beams: Beams) -> tuple[list[tuple[float, ...]], ...]:
 
 
 def _pulse_energies(trace: Trace, variant: int, start: Front) -> list[float | None]:
-    scene, sources = trace.scene, trace.placed.states[variant].sources
+    scene, state = trace.scene, trace.placed.states[variant]
     rates = {
         (number, line.wavelength_nm): line.pulse.rate_hz
         for number, name in enumerate(scene.sources)
-        for line in sources[name].source.lines
+        for line in state.lines(name)
         if line.pulse is not None and line.pulse.rate_hz > 0.0
     }
     if not rates:

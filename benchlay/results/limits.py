@@ -26,7 +26,7 @@ def limits_used(placed: Placed, limits: Limits, states: Collection[str]) -> tupl
         if state.name in states
         for name, item in state.sources.items()
         if not item.source.stand.out
-        for line in item.source.lines
+        for line in state.lines(name)
         if (limit := limits[variant, name, line.wavelength_nm].limit) is not None
     }
     return tuple(sorted(used, key=lambda u: (u.wavelength_nm, u.time_base_s, u.accessible_W)))

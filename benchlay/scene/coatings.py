@@ -65,11 +65,21 @@ def spoken_for(layout: Layout, all_nm: Sequence[float]) -> Mapping[str, frozense
         lines = _lines_of_route(route, layout)
         for item in route.items[1:]:
             found.setdefault(item.name, set()).update(lines)
+            made = _made_by(item.name, layout)
+            if made:
+                lines = lines | made if item.wavelength_nm is None else {item.wavelength_nm}
     everything = frozenset(all_nm)
     return {
-        name: frozenset(found[name]) if found.get(name) else _by_chain(name, layout, everything)
+        name: _made_by(name, layout)
+        | (found[name] if found.get(name) else _by_chain(name, layout, everything))
         for name in layout.elements
     }
+
+
+def _made_by(name: str, layout: Layout) -> frozenset[float]:
+    element = layout.elements.get(name)
+    made = () if element is None else element.record.makes()
+    return frozenset(light.wavelength_nm for light in made)
 
 
 def _lines_of_route(route: Route, layout: Layout) -> set[float]:
@@ -83,11 +93,17 @@ def _lines_of_route(route: Route, layout: Layout) -> set[float]:
 
 def _by_chain(name: str, layout: Layout, everything: frozenset[float]) -> frozenset[float]:
     seen: set[str] = set()
+    made: frozenset[float] = frozenset()
     while name in layout.elements and name not in seen:
         seen.add(name)
-        after = layout.elements[name].stand.after
-        if not after:
+        stand = layout.elements[name].stand
+        if stand.wavelength_nm is not None:
+            return made | {stand.wavelength_nm}
+        if not stand.after:
             return everything
-        name = after[0].item
+        name = stand.after[0].item
+        made |= _made_by(name, layout)
     source = layout.sources.get(name)
-    return everything if source is None else frozenset(line.wavelength_nm for line in source.lines)
+    if source is None:
+        return everything
+    return made.union(line.wavelength_nm for line in source.lines)

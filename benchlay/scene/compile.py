@@ -2,9 +2,10 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Mapping, Sequence
 
 import numpy as np
+from numpy.typing import NDArray
 
 from benchlay.elements._kind import Acts, Face, Inside, Volume
 from benchlay.layout.layout import Layout
@@ -13,6 +14,7 @@ from benchlay.placing.media import Media
 from benchlay.placing.placed import Placed, PlacedElement, PlacedState
 from benchlay.scene.bulks import bulks_table
 from benchlay.scene.coatings import Figures, figures, spoken_for
+from benchlay.scene.conversions import conversions
 from benchlay.scene.fixed import fixed_products
 from benchlay.scene.rows import FaceRows, Frames, SolidRows
 from benchlay.scene.solids import solids_table
@@ -23,7 +25,7 @@ from benchlay.scene.surroundings import (
     sheets,
     source_body,
 )
-from benchlay.scene.tables import CLOSE_PARTS, PART, SINK, Faces, Flags, Floats, Scene
+from benchlay.scene.tables import CLOSE_PARTS, PART, SINK, Faces, Flags, Floats, Ints, Scene
 
 _PLATE_SINK = {"plate": "rim"}
 OUTSIDE = -1
@@ -48,14 +50,7 @@ class Compiler:
         self.sides: list[tuple[int, int]] = []  # of each face: volumes behind and before it
         self.face_rows: list[set[int]] = [set() for _ in placed.states]
         self.solid_rows: list[set[int]] = [set() for _ in placed.states]
-        self.wavelengths = sorted(
-            {
-                line.wavelength_nm
-                for state in placed.states
-                for source in state.sources.values()
-                for line in source.source.lines
-            }
-        )
+        self.wavelengths = list(placed.wavelengths_nm)
 
     def name(self, name: str | None) -> int:
         """Return the number of a name; -1 for none."""
@@ -195,6 +190,7 @@ def compile_scene(placed: Placed) -> Scene:
         np.isin(solids.part, [PART[part] for part in CLOSE_PARTS]),
         max(state.layout.limits.reach_mm for state in placed.states),
         fixed_products(faces, solids, (behind, before)),
+        conversions(compiler.volumes, compiler.wavelengths, spoken),
     )
 
 
@@ -212,7 +208,9 @@ FACE_NAMES = (
 )
 
 
-def _faces_table(compiler: Compiler, spoken: dict[str, frozenset[float]]) -> tuple[Faces, Floats]:
+def _faces_table(
+    compiler: Compiler, spoken: Mapping[str, frozenset[float]]
+) -> tuple[Faces, Floats]:
     rows = compiler.faces
     origin, left, up, normal = rows.axes(compiler.frames)
     faces = rows.faces
@@ -243,7 +241,7 @@ def _faces_table(compiler: Compiler, spoken: dict[str, frozenset[float]]) -> tup
         np.array([face.specular for face in faces], dtype=np.float64),
         power,
         curvature,
-        *_figure_tables(per_wave, len(compiler.wavelengths)),
+        *_figure_tables(per_wave, (len(faces), len(compiler.wavelengths))),
         compiler.present(compiler.face_rows, len(faces)),
     )
     return table, inside
@@ -260,14 +258,23 @@ def _inside_indices(compiler: Compiler, row: int) -> list[float]:
     return [media.index(glass, nm) for nm in compiler.wavelengths]
 
 
-def _figure_tables(per_wave: list[list[Figures]], waves: int) -> list[np.ndarray]:
+def _figure_tables(
+    per_wave: list[list[Figures]], shape: tuple[int, int]
+) -> tuple[Ints, Floats, Floats, Floats, Floats, NDArray[np.complex128], Flags]:
     flat = [figure for row in per_wave for figure in row]
-    shape = (len(per_wave), waves)
-    kinds = (np.int64, np.float64, np.float64, np.float64, np.float64, np.complex128, np.bool_)
-    return [
-        np.array([figure[i] for figure in flat], dtype=kind).reshape(shape)
-        for i, kind in enumerate(kinds)
-    ]
+    share_s, share_p, loss_s, loss_p = (
+        np.array([figure[i] for figure in flat], dtype=np.float64).reshape(shape)
+        for i in range(1, 5)
+    )
+    return (
+        np.array([figure.mode for figure in flat], dtype=np.int64).reshape(shape),
+        share_s,
+        share_p,
+        loss_s,
+        loss_p,
+        np.array([figure.metal for figure in flat], dtype=np.complex128).reshape(shape),
+        np.array([figure.unstated for figure in flat], dtype=np.bool_).reshape(shape),
+    )
 
 
 def _lens_tables(compiler: Compiler, inside: Floats) -> tuple[Floats, Floats]:

@@ -11,6 +11,8 @@ from typing import NamedTuple, TypeAlias
 import numpy as np
 from numpy.typing import NDArray
 
+from benchlay.elements._polarization import Polarization
+
 Floats: TypeAlias = NDArray[np.float64]
 Ints: TypeAlias = NDArray[np.int64]
 Flags: TypeAlias = NDArray[np.bool_]
@@ -149,7 +151,18 @@ class Bulks(NamedTuple):
     barrel: Ints  # (E,) number in SINKS: of light that meets none of the faces round it
 
 
-BULKS = ("clear", "absorber", "polarizer", "retarder", "rotator")
+BULKS = ("clear", "absorber", "polarizer", "retarder", "rotator", "converter")
+
+
+class Conversions(NamedTuple):
+    """What converters make: one row a volume and product."""
+
+    volume: Ints  # (C,)
+    number: Ints  # (C,) of the product in its element's list
+    of: Flags  # (C, L) which wavelengths make it
+    wave: Ints  # (C,) the wavelength made
+    share: Floats  # (C,) of the power
+    polarization: tuple[Polarization | None, ...]  # None: that of the light that makes it
 
 
 class Fixed(NamedTuple):
@@ -192,3 +205,4 @@ class Scene(NamedTuple):
     close: Flags  # (S,) holds its optic so closely that the optic's own light passes it
     reach_mm: float
     fixed: Fixed
+    conversions: Conversions

@@ -9,7 +9,7 @@ from benchlay.optics.rays import cross, dot
 from benchlay.scene.tables import BULKS, Floats, Scene
 from benchlay.tracing.front import Front
 
-_CLEAR, _ABSORBER, _POLARIZER, _RETARDER, _ROTATOR = range(len(BULKS))
+_CLEAR, _ABSORBER, _POLARIZER, _RETARDER, _ROTATOR, _CONVERTER = range(len(BULKS))
 
 
 def passage(front: Front, scene: Scene, length_mm: Floats) -> tuple[Floats, Floats]:

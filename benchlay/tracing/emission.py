@@ -4,7 +4,8 @@ from __future__ import annotations
 
 import numpy as np
 
-from benchlay.layout.sources import Polarization, Source
+from benchlay.layout.light import Polarization
+from benchlay.layout.sources import Source
 from benchlay.optics import coherency, moments
 from benchlay.optics.rays import bench_basis
 from benchlay.placing.placed import Placed, PlacedSource
@@ -49,12 +50,13 @@ def emitted(placed: Placed, scene: Scene, ways: Ways) -> Front:
         position=np.array([item.pose.at for _, _, _, item, _ in found]).reshape(-1, 3),
         direction=direction,
         axis=bench_basis(direction)[0],
-        coherency=_coherency([(item.source.polarization, power) for *_, item, power in found]),
+        coherency=coherency_of([(item.source.polarization, power) for *_, item, power in found]),
         moments=_moments([item for *_, item, _ in found], scene.wavelengths_nm[wave], index),
     )
 
 
-def _coherency(states: list[tuple[Polarization, float]]) -> Floats:
+def coherency_of(states: list[tuple[Polarization, float]]) -> Floats:
+    """Return coherency (4, N) of states and powers in W, from horizontal."""
     columns = [_one(polarization, power) for polarization, power in states]
     return np.stack(columns, axis=1) if columns else np.zeros((4, 0))
 

@@ -16,6 +16,7 @@ from benchlay.scene.tables import SINK, Flags, Floats, Ints, Scene
 from benchlay.tracing.beams import Beams, Ledger, gathered
 from benchlay.tracing.bulk import passage
 from benchlay.tracing.children import children
+from benchlay.tracing.converting import converted
 from benchlay.tracing.coverage import (
     covered,
     face_covers,
@@ -143,7 +144,7 @@ def _meet(front: Front, state: RunState) -> tuple[_Ready, Flags]:
 def _advance(ready: _Ready, state: RunState, *, cutting: bool) -> Front:
     """Take beams to the end of their legs and return what leaves there."""
     front, hits, scene = ready.front, ready.hits, state.scene
-    arrived = _after_passage(front, hits.distance, state)
+    arrived, made = _after_passage(front, hits.distance, state)
     power = arrived.power
     if cutting:
         divided = cut(arrived, scene, hits, ready.reach)
@@ -166,20 +167,27 @@ def _advance(ready: _Ready, state: RunState, *, cutting: bool) -> Front:
     )
     born = children(core, hits, divided.spills, state)
     state.count += len(power)
-    return born
+    return born if made is None else join([born, made])
 
 
-def _after_passage(front: Front, length: Floats, state: RunState) -> Front:
-    """Return beams after what their optic does to them inside, booking what it absorbs."""
+def _after_passage(front: Front, length: Floats, state: RunState) -> tuple[Front, Front | None]:
+    """Return beams after what their optic does to them inside, and light it makes of them.
+
+    What it absorbs is booked.
+    """
     scene = state.scene
     rows = np.flatnonzero(front.within != OUTSIDE)
     if not len(rows) or not scene.bulks.kind[front.within[rows]].any():
-        return front
-    j, lost = passage(front.take(rows), scene, length[rows])
+        return front, None
+    inside, made = front.take(rows), None
+    j, lost = passage(inside, scene, length[rows])
+    if len(scene.conversions.volume):
+        kept, made = converted(inside, rows, length[rows], state)
+        j = j * kept
     state.book(rows, SINK["absorbed"], scene.face_owner_name[front.face[rows]], lost)
     whole = front.coherency.copy()
     whole[:, rows] = j
-    return front.changed(coherency=whole)
+    return front.changed(coherency=whole), made
 
 
 def _dark(front: Front) -> tuple[Beams, Ledger]:

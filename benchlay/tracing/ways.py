@@ -11,17 +11,19 @@ from typing import NamedTuple
 
 import numpy as np
 
+from benchlay.layout.elements import Element
 from benchlay.layout.layout import Layout
-from benchlay.layout.routes import Route
+from benchlay.layout.routes import Route, RouteItem
 from benchlay.scene.tables import Flags, Ints, Scene
-from benchlay.tracing.front import REFLECTED, TRANSMITTED
+from benchlay.tracing.front import CONVERTED, REFLECTED, TRANSMITTED
 
 _EVENT = {"reflected": REFLECTED, "transmitted": TRANSMITTED}
 
 
 class Place(NamedTuple):
     """A node: the routes that pass it, as (number of the route, leg), and whether it lies
-    inside an optic."""
+    inside an optic.
+    """
 
     routes: tuple[tuple[int, int], ...]
     inside: bool
@@ -135,19 +137,30 @@ def _grow(
         ways = element.record.branches().get(branch, ())
         if not ways:
             return
-        end = tree.ends.get((node, item.name, branch))
+        product = _product(element, item)
+        left = (node, item.name, branch if product is None else f"{branch} {product}")
+        end = tree.ends.get(left)
         if end is None:
-            end = tree.ends[node, item.name, branch] = tree.new(inside=False)
+            end = tree.ends[left] = tree.new(inside=False)
         for way in ways:
             at = node
-            for step, (face, event) in enumerate(way):
-                key = (at, number[item.name], scene.face_names.index(face), _EVENT[event])
-                last = step == len(way) - 1
+            steps = [(scene.face_names.index(face), _EVENT[event]) for face, event in way]
+            if product is not None:
+                steps.insert(1, (product, CONVERTED))  # between entry and exit
+            for step, (face, event) in enumerate(steps):
+                key = (at, number[item.name], face, event)
+                last = step == len(steps) - 1
                 at = tree.steps.setdefault(key, end if last else -1)
                 if at < 0:
                     at = tree.steps[key] = tree.new(inside=True)
                 tree.routes[at].setdefault(route, leg if last else leg - 1)
         node = end
+
+
+def _product(element: Element, item: RouteItem) -> int | None:
+    """Return the number of the product that a route goes on with, None for what passes."""
+    made = [light.wavelength_nm for light in element.record.makes()]
+    return made.index(item.wavelength_nm) if item.wavelength_nm in made else None
 
 
 def _main_events(layout: Layout, scene: Scene) -> Flags:

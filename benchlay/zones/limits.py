@@ -43,7 +43,7 @@ def limits_of(trace: Trace) -> LimitTable:
     for variant, state in enumerate(trace.placed.states):
         time_base = state.layout.limits.time_base_s
         for source, name in enumerate(scene.sources):
-            for line in state.sources[name].source.lines:
+            for line in state.lines(name):
                 at = (slice(None), variant, source, number[line.wavelength_nm])
                 tables[at], why = _limit(line, time_base)
                 if why:

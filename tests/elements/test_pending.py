@@ -11,7 +11,6 @@ GOOD = {
     "prism": "outline: [[0, 0], [20, 0], [0, 20]], glass: SF10",
     "parabola": "focal: 50, off_axis: 90, diameter: 25, metal: gold",
     "retroreflector": "diameter: 25",
-    "converter": "diameter: 5, length: 10, produces: [{wavelength: 532, share: 30 %}]",
 }
 NOT_YET = (
     "not yet: this kind is read but cannot be traced by this version",

@@ -64,7 +64,8 @@ def test_a_tube_leads_to_something_that_is_there(complaints, goal, said):
 def test_brewster_windows_are_tilted_in_plan_and_shift_the_beam(standing, n, way):
     windows = f"{{incidence: brewster, glass: {{index: {n}}}, thickness: 4, set: {way}}}"
     placed = standing(
-        f"  C: {{kind: cell, after: laser, distance: 200, length: 250, bore: 15, windows: {windows}}}\n"
+        "  C: {kind: cell, after: laser, distance: 200, length: 250, bore: 15,"
+        f" windows: {windows}}}\n"
         "  T: {kind: target, after: C, distance: 100}\n"
     )
     theta = np.arctan(n)

@@ -85,12 +85,7 @@ class Bench:
         problems = Problems()
         placed = place(source, problems)
         assert placed is not None, [str(p) for p in problems.sorted()]
-        waves = {
-            line.wavelength_nm
-            for layout in source.layouts.values()
-            for item in layout.sources.values()
-            for line in item.lines
-        }
+        waves = placed.wavelengths_nm
         self.placed = placed
         self.trace = trace(placed, dict.fromkeys(waves, floor))
         self.states = [state.name for state in placed.states]

@@ -16,6 +16,7 @@ for name in (
     "landings",
     "rotators",
     "tubes",
+    "converters",
 ):
     importlib.import_module(f"tests.tracing.scenes.{name}")
 

@@ -35,7 +35,7 @@ def limits_of(placed: Placed) -> Limits:
     A source has a limit at every wavelength of the layout, so that light which it makes
     elsewhere is judged too; there its own pulses count.
     """
-    waves = _wavelengths(placed)
+    waves = placed.wavelengths_nm
     known: dict[tuple[float, float | None, PulseTrain | None], LineLimit] = {}
     found: dict[LimitKey, LineLimit] = {}
     for variant, state in enumerate(placed.states):
@@ -48,17 +48,6 @@ def limits_of(placed: Placed) -> Limits:
                     known[question] = _limit(*question)
                 found[variant, name, nm] = known[question]
     return found
-
-
-def _wavelengths(placed: Placed) -> list[float]:
-    return sorted(
-        {
-            line.wavelength_nm
-            for state in placed.states
-            for item in state.sources.values()
-            for line in item.source.lines
-        }
-    )
 
 
 def _pulses(source: Source, wavelength_nm: float) -> PulseTrain | None:
@@ -86,7 +75,7 @@ def floors_w(placed: Placed, limits: Limits) -> dict[float, float]:
     for variant, state in enumerate(placed.states):
         for nm, floor in _floors_in(state, variant, limits):
             floors[nm] = min(floors.get(nm, floor), floor)
-    return {nm: floors.get(nm, _DARK_W) for nm in _wavelengths(placed)}
+    return {nm: floors.get(nm, _DARK_W) for nm in placed.wavelengths_nm}
 
 
 def _floors_in(state: PlacedState, variant: int, limits: Limits) -> list[tuple[float, float]]:
@@ -97,6 +86,8 @@ def _floors_in(state: PlacedState, variant: int, limits: Limits) -> list[tuple[f
         for line in item.source.lines
         if line.power_w > 0.0 and not item.source.stand.out
     ]
+    emitted = [power for _, power in found]
+    found += [(nm, min(emitted)) for nm in state.made_nm() if emitted]
     for (number, _, nm), line_limit in limits.items():
         if number == variant and line_limit.limit is not None:
             found.append((nm, share * line_limit.limit.accessible_w))
