@@ -31,7 +31,7 @@ def clip_behind(x: Floats, y: Floats, z: Floats) -> tuple[Floats, Floats, Floats
        Comm. ACM 17, 32-42: one plane at a time.
     """
     kept = z > _START_MM
-    ahead: Flags = kept.any(axis=1)
+    ahead: Flags = np.logical_or.reduce(kept, axis=1)
     if kept[ahead].all():
         return x, y, z, ahead
     crossed = kept != _following(kept)
@@ -75,13 +75,14 @@ def split_at(x: Floats, y: Floats, z: Floats, depth: Floats) -> tuple[Floats, Fl
     width = max(near[0].shape[1], far[0].shape[1])
     columns = []
     for whole, nearer, farther in zip((x, y, z), near, far, strict=True):
-        first = _padded(whole, width).copy()
-        first[both] = _padded(nearer, width)
-        columns.append(np.concatenate((first, _padded(farther, width))))
+        first = padded(whole, width).copy()
+        first[both] = padded(nearer, width)
+        columns.append(np.concatenate((first, padded(farther, width))))
     return columns[0], columns[1], columns[2], np.concatenate((rows, both))
 
 
-def _padded(values: Floats, width: int) -> Floats:
+def padded(values: Floats, width: int) -> Floats:
+    """Return polygons (K, V, ...) with `width` corners at least, the last one repeated."""
     missing = width - values.shape[1]
     if missing <= 0:
         return values

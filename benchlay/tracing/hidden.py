@@ -10,7 +10,7 @@ from __future__ import annotations
 import numpy as np
 
 from benchlay.scene.tables import Flags, Floats, Ints
-from benchlay.tracing.silhouettes import HOLE, Outlines
+from benchlay.tracing.outlines import HOLE, Outlines
 
 _WITHIN = 1e-12  # scaled units: a corner that much outside still counts as inside
 _QUADRANGLE = 4

@@ -17,11 +17,8 @@ from benchlay.scene.tables import PART, SINK, Flags, Floats, Ints, Scene
 from benchlay.tracing.front import OUTSIDE, Front
 from benchlay.tracing.hidden import counting, visible
 from benchlay.tracing.hits import FACE, NOTHING, SOLID, Hits
+from benchlay.tracing.outlines import CORE, HOLE, OPTIC, Outlines, joined
 from benchlay.tracing.silhouettes import (
-    CORE,
-    HOLE,
-    OPTIC,
-    Outlines,
     cylinder_sides,
     disc_outlines,
     face_outlines,
@@ -143,10 +140,10 @@ def gather(front: Front, scene: Scene, hits: Hits, reach: Floats) -> Outlines:
     solids = _solids_in_reach(front, scene, bound) & ~inside[:, None]
     own = np.where(hits.kind == SOLID, hits.row, -1)
     pieces = [
-        face_outlines(front, scene, faces, on_face, hits.row, reach),
+        face_outlines(front, scene, faces, hits, reach),
         *_solid_outlines(front, scene, solids, target, own, reach=reach, stop_mm=hits.distance),
     ]
-    outlines = Outlines.joined(pieces, 1, scene, front)  # the second piece: flat sides
+    outlines = joined(pieces, 1, scene, front)  # the second piece: flat sides
     outlines = outlines.take(counting(outlines, reach))
     return outlines.take(visible(outlines))
 

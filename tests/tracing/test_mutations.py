@@ -12,7 +12,7 @@ import pytest
 
 from benchlay.scene.tables import BULKS, SINK, Mode
 from benchlay.tracing import faces, section
-from benchlay.tracing.silhouettes import BESIDE, BODY, CORE, OPTIC
+from benchlay.tracing.outlines import BESIDE, BODY, CORE, OPTIC
 from tests.tracing.bench import SCENES, Bench
 
 for name in ("plates", "glasses", "states", "lenses", "cuts", "bodies", "landings"):

@@ -1,0 +1,100 @@
+"""Flat regions across and along beams, as outlines in the cross-section.
+
+One that stands across the beam takes W at the depth where its plane crosses the chief ray,
+and is seen in the perspective of W there.
+"""
+
+from __future__ import annotations
+
+from typing import NamedTuple
+
+import numpy as np
+
+from benchlay.optics.rays import cross
+from benchlay.scene.tables import Flags, Floats, Ints
+from benchlay.tracing.frames import (
+    Frame,
+    gradient,
+    inverse_roots,
+    local,
+    plane_depth,
+    scaled,
+    unit_vectors,
+)
+from benchlay.tracing.outlines import NO_OUTLINES, Labels, Outlines
+from benchlay.tracing.spreading import growth, perspective_plate
+
+GRAZING = 0.2  # sine of the angle between beam and plane below which it counts as lying along
+_TOUCH_MM = 1e-6  # the two faces of a thin optic stand in one place, give or take rounding
+
+
+class Plates(NamedTuple):
+    """Flat regions in space: centre and two half axes (mm), round or rectangular."""
+
+    centre: Floats  # (K, 3)
+    first: Floats  # (K, 3)
+    second: Floats  # (K, 3)
+    round: Flags  # (K,)
+
+
+def _plate_shapes(
+    frame: Frame, plates: Plates
+) -> tuple[Floats, Floats, Floats, Ints, Floats, Flags]:
+    """Return vertices, centre, axes, corners, depth, and which lie ahead of the beam's start."""
+    normal = unit_vectors(cross(plates.first, plates.second))
+    x, y, z = local(frame, plates.centre, point=True)
+    ax, ay, az = local(frame, plates.first, point=False)
+    bx, by, bz = local(frame, plates.second, point=False)
+    crossing, slope = plane_depth(frame, plates.centre, normal)
+    reach = np.where(plates.round, np.hypot(az, bz), np.abs(az) + np.abs(bz))
+    depth = np.maximum(np.clip(crossing, z - reach, z + reach), 0.0)
+    root = inverse_roots(frame, depth)
+    rate = growth(frame.moments, frame.medium, depth)
+    vertices, centre, first, second = perspective_plate(
+        scaled(root, x, y),
+        scaled(root, ax, ay),
+        scaled(root, bx, by),
+        (rate * (z - depth), rate * az, rate * bz),
+    )
+    clockwise = first[:, 0] * second[:, 1] - first[:, 1] * second[:, 0] < 0.0
+    vertices[clockwise] = vertices[clockwise, ::-1]
+    rise = gradient(frame, normal, slope, root)
+    flat = np.abs(slope) < GRAZING
+    rise[flat] = 0.0
+    plane = np.concatenate((np.where(flat, z, crossing)[:, None], rise), axis=1)
+    corners = np.where(plates.round, 0, 4)
+    return (
+        vertices,
+        centre,
+        np.stack((first, second), axis=2),
+        corners,
+        plane,
+        z + reach > -_TOUCH_MM,
+    )
+
+
+def plate_outlines(
+    frame: Frame, plates: Plates, order: Ints, labels: Labels, reach: Floats
+) -> Outlines:
+    """Return the outlines of those plates that come within reach of the axis (problems,)."""
+    vertices, centre, axes, corners, depth, ahead = _plate_shapes(frame, plates)
+    none = np.full(len(corners), -1)
+    return Outlines(
+        frame.problem,
+        corners,
+        vertices,
+        centre,
+        axes,
+        depth,
+        order,
+        none,
+        *labels,
+        inside_name=NO_OUTLINES.inside_name,
+    ).take(ahead & touching(vertices, reach[frame.problem]))
+
+
+def touching(vertices: Floats, reach: Floats) -> Flags:
+    """Tell which outlines' boxes come within the reach of the axis."""
+    low, high = vertices.min(axis=1), vertices.max(axis=1)
+    touches: Flags = ((low < reach[:, None]) & (high > -reach[:, None])).all(axis=1)
+    return touches
