@@ -24,12 +24,12 @@ from numpy.typing import ArrayLike
 
 from benchlay.geometry.distinct import ranked
 from benchlay.optics._shares_breaks import break_angles
-from benchlay.optics._shares_curves import Bools, Floats, Ints, Shapes, spans
+from benchlay.optics._shares_curves import Bools, Floats, Ints, Shapes
 from benchlay.optics._shares_integral import shares
 from benchlay.optics._shares_order import cast, intervals, stretches
 from benchlay.optics._shares_prepare import prepare, unusable
 
-__all__ = ["Partition", "Shapes", "inside", "pairs_of_problems", "partition"]
+__all__ = ["Partition", "Shapes", "inside", "partition"]
 
 _BLOCK = 2000  # shapes worked on at once: bounds the memory, not the result
 
@@ -182,11 +182,3 @@ def inside(shapes: Shapes, point: ArrayLike) -> Bools:
             unit = np.linalg.solve(shapes.axes[row], (xi - shapes.centre[row]).T)
             result[row] = np.sum(unit**2, axis=0) <= 1.0
     return result
-
-
-def pairs_of_problems(problem: Ints) -> tuple[Ints, Ints]:
-    """List all ordered pairs of different rows that belong to one problem (S,), in order."""
-    first = np.searchsorted(problem, problem)
-    one, other = spans(first, np.searchsorted(problem, problem, side="right") - first)
-    different = one != other
-    return one[different], other[different]

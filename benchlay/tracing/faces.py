@@ -119,7 +119,8 @@ def _amplitudes(
     return r_s, r_p, t_s, t_p, (lost_s, lost_p)
 
 
-def _bare(n_in: Floats, n_out: Floats, cosine: Floats, total: Flags) -> tuple[Floats, ...]:
+def _bare(n_in: Floats, n_out: Floats, cosine: Floats, total: Flags) -> tuple[np.ndarray, ...]:
+    """Return r_s, r_p (complex where light is totally reflected), t_s and t_p."""
     if not total.any():
         return fresnel.dielectric(n_in, n_out, cosine)
     bare = fresnel.amplitudes(n_in, n_out, cosine)

@@ -1,7 +1,7 @@
 """Traces in batches: all live beams meet what they meet together.
 
 A batch has a high price and a beam in it a low one, so all that live are advanced together,
-inside glass or outside, and those whose cross-sections must be divided wait until no others
+inside glass or outside, and those whose cross-sections must be divided wait until few others
 are left.
 """
 
@@ -33,6 +33,7 @@ from benchlay.tracing.ways import Ways
 
 MOST_BATCHES = 3000  # light between two mirrors of 99.5 % is down to a millionth by then
 MOST_BEAMS = 400_000
+_MANY = 4  # beams wait to be cut until there are this many for each that goes on
 _NO_LENGTH_MM = 1e-6
 
 
@@ -78,8 +79,9 @@ def run(front: Front, scene: Scene, ways: Ways, floor_w: Floats) -> Traced:
     for _ in range(MOST_BATCHES):
         if state.count > MOST_BEAMS or not (len(live) or waiting):
             break
-        if not len(live):
-            live, waiting = _advance(_joined(waiting), state, cutting=True), []
+        if sum(len(ready.reach) for ready in waiting) > _MANY * len(live):
+            born, waiting = _advance(_joined(waiting), state, cutting=True), []
+            live = join([live, born])
             continue
         ready, wanted = _meet(live, state)
         if wanted.any():
