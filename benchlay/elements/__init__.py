@@ -16,10 +16,10 @@ from benchlay.elements.pending import (
     Grating,
     Parabola,
     Prism,
-    Retroreflector,
 )
 from benchlay.elements.plate_polarizer import PlatePolarizer
 from benchlay.elements.polarizer import Polarizer
+from benchlay.elements.retroreflector import Retroreflector
 from benchlay.elements.rotator import Rotator
 from benchlay.elements.screen import Screen
 from benchlay.elements.shutter import Shutter

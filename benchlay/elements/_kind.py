@@ -35,6 +35,8 @@ class Acts(IntEnum):
     """Lets it through: an opening in a plate."""
     LENS = 3
     """An interface of an ideal thin lens: bends by position, not by slope."""
+    RETURNS = 4
+    """Sends it back the way it came, on the other side of the middle: a corner of mirrors."""
 
 
 class Inside(IntEnum):

@@ -83,17 +83,3 @@ class Parabola(ElementKind):
     reflectance: Coating | None = key(COATING, default=None, meaning="reflected share")
     metal: str | None = key(Choice(*METAL_NAMES), default=None, meaning="an opaque metal film")
     clear: float = key(USABLE, default=0.9, meaning="usable share of the diameter or sizes")
-
-
-class Retroreflector(ElementKind):
-    """A corner cube: sends light back the way it came."""
-
-    KIND = "retroreflector"
-    BRANCHES: ClassVar[Branches] = {"reflected": ()}
-    DEFAULT_BRANCH = "reflected"
-    PENDING = _WHY
-
-    diameter_mm: float = key(LENGTH, name="diameter", meaning="of its opening")
-    glass: Glass | None = key(GLASS, default=None, meaning="the glass; hollow without")
-    reflectance: Coating | None = key(COATING, default=None, meaning="of its faces")
-    clear: float = key(USABLE, default=0.9, meaning="usable share of the diameter")

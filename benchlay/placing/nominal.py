@@ -154,8 +154,15 @@ def _along(
             return Lost(f"the beam is totally reflected at face {name!r} of {standing.name!r}")
         if event == "transmitted":
             index, within = behind, beyond
+        if face.acts is Acts.RETURNS:
+            point = add(standing.pose.point(face.origin), _between(point, face, standing), -1.0)
         ray = NominalRay(point, direction, ray.wavelength_nm)
     return ray
+
+
+def _between(point: Vector, face: Face, standing: Standing) -> Vector:
+    """Return the way from the middle of a face to a point."""
+    return add(point, standing.pose.point(face.origin), -1.0)
 
 
 def _beyond(face: Face, within: int | None) -> int | None:
@@ -171,6 +178,8 @@ def _turned(
 ) -> Vector | None:
     if event == "transmitted" and _opens(face):
         return direction
+    if face.acts is Acts.RETURNS:
+        return (-direction[0], -direction[1], -direction[2])
     if event == "reflected":
         return _vector(reflect(direction, normal))
     bent, total = refract(direction, normal, *indices)

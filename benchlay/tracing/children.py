@@ -12,6 +12,7 @@ from benchlay.scene.tables import SINK, Floats, Ints, Scene
 from benchlay.tracing.faces import Meeting, divide, plane_of_incidence
 from benchlay.tracing.front import OUTSIDE, REFLECTED, SPILLED, TRANSMITTED, Front, join
 from benchlay.tracing.hits import FACE, NOTHING, SOLID, Hits
+from benchlay.tracing.returning import returned
 from benchlay.tracing.run_state import RunState
 from benchlay.tracing.section import Spills
 
@@ -114,6 +115,7 @@ def _from_faces(
     for kind, work in (
         (acts == Acts.OPAQUE, _opaque),
         (acts == Acts.PASSES, _passed),
+        (acts == Acts.RETURNS, returned),
         (optic, _divided),
     ):
         some = kind.nonzero()[0]

@@ -10,7 +10,6 @@ GOOD = {
     "grating": "size: [30, 30], lines: 1200, orders: {-1: 70 %, 0: 15 %}",
     "prism": "outline: [[0, 0], [20, 0], [0, 20]], glass: SF10",
     "parabola": "focal: 50, off_axis: 90, diameter: 25, metal: gold",
-    "retroreflector": "diameter: 25",
 }
 NOT_YET = (
     "not yet: this kind is read but cannot be traced by this version",

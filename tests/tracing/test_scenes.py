@@ -17,6 +17,7 @@ for name in (
     "rotators",
     "tubes",
     "converters",
+    "corners",
 ):
     importlib.import_module(f"tests.tracing.scenes.{name}")
 
