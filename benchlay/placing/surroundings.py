@@ -6,7 +6,9 @@ from math import dist
 from typing import TYPE_CHECKING
 
 from benchlay.elements._kind import Around, Glass, Goal
-from benchlay.placing.standing import goal_of, index_of, no_ray
+from benchlay.placing.complaints import no_ray
+from benchlay.placing.points import goal_of
+from benchlay.placing.standing import index_of
 
 if TYPE_CHECKING:
     from benchlay.layout.elements import Element

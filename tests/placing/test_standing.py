@@ -56,6 +56,18 @@ def test_a_hole_and_an_aim_hang_on_each_other_and_both_hold(standing):
     assert np.linalg.norm(np.cross(out, beyond)) < 1e-9
 
 
+def test_what_stands_over_a_hole_faces_a_point_from_there(standing):
+    s = standing("  T: {kind: target, hole: [16, 18], facing: [900, 700], size: [20, 20]}\n")
+    towards = np.array([900, 700, 100]) - s.at("T")
+    assert s.axes("T")[0] == pytest.approx(towards / np.linalg.norm(towards), **EXACT)
+
+
+def test_a_tube_over_a_hole_leads_to_its_goal(standing):
+    s = standing("  B: {kind: tube, hole: [16, 18], to: [900, 700], bore: 20}\n")
+    back = s.at("B") - np.array([900, 700, 100])
+    assert s.axes("B")[0] == pytest.approx(back / np.linalg.norm(back), **EXACT)
+
+
 def test_distance_counts_along_the_ray_from_the_last_face(standing):
     s = standing(
         "  M: {kind: mirror, after: laser, distance: 300, turn: left 90, diameter: 25.4,"
