@@ -78,7 +78,7 @@ def pairs(
     if limit is not None:
         close &= passed.along - size < limit[:, None]
     beam, solid = close.nonzero()
-    return _crossed(front, scene, beam, solid, None if margin is None else margin[beam])
+    return crossed(front, scene, beam, solid, None if margin is None else margin[beam])
 
 
 def planes_met(front: Front, scene: Scene, beam: Ints, solid: Ints) -> tuple[Floats, Floats]:
@@ -89,7 +89,8 @@ def planes_met(front: Front, scene: Scene, beam: Ints, solid: Ints) -> tuple[Flo
     return slope, gap
 
 
-def _crossed(front: Front, scene: Scene, beam: Ints, solid: Ints, margin: Floats | None) -> Pairs:
+def crossed(front: Front, scene: Scene, beam: Ints, solid: Ints, margin: Floats | None) -> Pairs:
+    """Return where the rays of pairs (N,) enter and leave solids grown by a margin (N,) in mm."""
     if not len(beam):
         none = np.zeros(0)
         return Pairs(beam, solid, none, none)

@@ -14,6 +14,7 @@ import numpy as np
 from benchlay.elements._kind import Acts, Inside
 from benchlay.optics.shares import partition
 from benchlay.scene.tables import PART, SINK, Flags, Floats, Ints, Scene
+from benchlay.tracing.bodies import crossed
 from benchlay.tracing.front import OUTSIDE, Front
 from benchlay.tracing.hidden import counting, visible
 from benchlay.tracing.hits import FACE, NOTHING, SOLID, Hits
@@ -162,7 +163,8 @@ def _radius_bound(part: Front, reach: Floats) -> Floats:
     )
 
 
-def _in_reach(part: Front, centre: Floats, size: Floats, bound: Floats) -> Flags:
+def _in_reach(part: Front, centre: Floats, size: Floats, bound: Floats) -> tuple[Flags, Floats]:
+    """Tell which spheres come within reach of which beams, and how far (mm) those reach there."""
     away = centre - part.position[:, None, :]
     z = np.einsum("nmi,ni->nm", away, part.direction)
     square = np.einsum("nmi,nmi->nm", away, away) - z * z
@@ -173,8 +175,8 @@ def _in_reach(part: Front, centre: Floats, size: Floats, bound: Floats) -> Flags
         bound[:, :1] + bound[:, 1:2] * near + bound[:, 2:] * near * near,
     )
     apart = np.sqrt(np.maximum(square, 0.0)) - size
-    close: Flags = (apart < np.sqrt(np.maximum(radius2, 0.0))) & (z + size > 0.0)
-    return close
+    radius = np.sqrt(np.maximum(radius2, 0.0))
+    return (apart < radius) & (z + size > 0.0), radius
 
 
 def _faces_in_reach(part: Front, scene: Scene, hits: Hits, bound: Floats, inside: Flags) -> Flags:
@@ -182,7 +184,7 @@ def _faces_in_reach(part: Front, scene: Scene, hits: Hits, bound: Floats, inside
     if not len(f.owner):
         return np.zeros((len(inside), 0), dtype=np.bool_)
     size = np.sqrt(np.einsum("ij,ij->i", f.radii, f.radii)) + np.abs(f.middle).sum(axis=1)
-    close = _in_reach(part, f.origin, size, bound) & f.present[part.variant]
+    close = _in_reach(part, f.origin, size, bound)[0] & f.present[part.variant]
     entering = (part.direction @ f.normal.T < 0.0) | (f.acts == Acts.PASSES)
     same = f.owner == part.owner[:, None]
     close &= entering & ~same & (f.inside != Inside.BOTH) & ~inside[:, None]
@@ -193,10 +195,15 @@ def _faces_in_reach(part: Front, scene: Scene, hits: Hits, bound: Floats, inside
 
 def _solids_in_reach(part: Front, scene: Scene, bound: Floats) -> Flags:
     s = scene.solids
-    close = _in_reach(part, s.centre, s.reach, bound) & s.present[part.variant]
+    close, radius = _in_reach(part, s.centre, s.reach, bound)
+    close &= s.present[part.variant]
     close &= ~(scene.close & (s.owner == part.owner[:, None]))
     left = np.flatnonzero(part.body >= 0)
     close[left, part.body[left]] = False
+    # Spheres round panels hold most of a bench: their planes tell more.
+    beam, solid = close.nonzero()
+    met = crossed(part, scene, beam, solid, radius[beam, solid])
+    close[beam, solid] = (met.enter <= met.leave) & (met.leave > 0.0)
     return close
 
 
