@@ -62,6 +62,7 @@ import numpy as np
 
 from benchlay.checks._check import Context, power_text, wavelength_text
 from benchlay.findings import Finding, Severity
+from benchlay.scene.tables import Mode
 
 NAME = "coating-unstated"
 
@@ -81,18 +82,27 @@ def check(context: Context, variant: int) -> Iterator[Finding]:
         name = scene.elements[int(scene.faces.owner[face])]
         power = float(beams.end_core[met].sum())
         side = scene.face_names[int(scene.faces.name[face])]
+        film = scene.faces.mode[face, wave] != Mode.BARE
         yield Finding(
             check=NAME,
             severity=SEVERITY,
             message=(
                 f"the {side} of '{name}' says nothing of {wavelength_text(nm)}, and "
                 f"{power_text(power)} of it from '{context.source_of(int(met[0]))}' meets it; "
-                "the bare material is assumed"
+                + (
+                    "its metal is not known there, and is assumed to send all back"
+                    if film
+                    else "the bare material is assumed"
+                )
             ),
             expected=f"a coating that states its reflectance at {wavelength_text(nm)}",
             remedy=(
-                f"add a band with {nm:g} nm to the coating of '{name}', such as "
-                f"`{{from: {nm - 10:g}, to: {nm + 10:g}, is: …}}` with the maker's figure"
+                (
+                    f"write the coating of '{name}' by its reflectance, not its metal, such as "
+                    if film
+                    else f"add a band with {nm:g} nm to the coating of '{name}', such as "
+                )
+                + f"`{{from: {nm - 10:g}, to: {nm + 10:g}, is: …}}` with the maker's figure"
             ),
             element=name,
             beam=int(context.numbers[met[0]]),

@@ -65,9 +65,11 @@ from math import fsum
 import numpy as np
 
 from benchlay.checks._check import Context, above, power_text, wavelength_text
+from benchlay.elements._kind import Acts
 from benchlay.findings import Finding, Severity
 from benchlay.geometry.distinct import distinct
-from benchlay.scene.tables import SINK, Ints
+from benchlay.scene.tables import SINK, Ints, Mode
+from benchlay.tracing.hits import FACE
 
 NAME = "unaccounted"
 
@@ -86,6 +88,7 @@ def check(context: Context, variant: int) -> Iterator[Finding]:
             mine = rows[sources == number]
             yield from _open(context, variant, name, emitted[name], mine)
             yield from _below_floor(context, variant, name, mine)
+    yield from _unknown(context, variant, rows)
     if trace.bounded[variant]:
         yield _bounded(context, variant)
 
@@ -148,6 +151,52 @@ def _below_floor(context: Context, variant: int, source: str, rows: Ints) -> Ite
                 unit="W",
                 key=(source, nm, "below-floor"),
             )
+
+
+def _unknown(context: Context, variant: int, rows: Ints) -> Iterator[Finding]:
+    """Report by optic and wavelength what went into glass whose index is not known there."""
+    trace, scene = context.trace, context.trace.scene
+    rows = rows[trace.ledger.sink[rows] == SINK["absorbed"]]
+    beams = trace.ledger.beam[rows]
+    at_face = trace.beams.end_kind[beams] == FACE
+    rows, beams = rows[at_face], beams[at_face]
+    face, wave = trace.beams.end_row[beams], trace.beams.start.wave[beams]
+    blind = np.isnan(scene.indices)
+    film = scene.faces.mode[face, wave] == Mode.METAL
+    # Behind the one open face of a mirror with a ground back all is swallowed in any case.
+    open_faces = np.bincount(scene.faces.owner[scene.faces.acts != Acts.OPAQUE])
+    through = open_faces[scene.faces.owner[face]] > 1
+    dark = ~film & through & (blind[scene.behind[face], wave] | blind[scene.before[face], wave])
+    met = np.stack((scene.faces.owner[face], wave))[:, dark].T.tolist()
+    power = trace.ledger.power[rows[dark]]
+    for owner, line in sorted(set(map(tuple, met))):
+        total = fsum(
+            p for p, pair in zip(power.tolist(), met, strict=True) if pair == [owner, line]
+        )
+        if total > 0.0:
+            yield _in_the_dark(context, variant, scene.elements[owner], line, total)
+
+
+def _in_the_dark(
+    context: Context, variant: int, element: str, wave: int, power_w: float
+) -> Finding:
+    nm = float(context.trace.scene.wavelengths_nm[wave])
+    return Finding(
+        check=NAME,
+        severity=Severity.FAIL,  # this light was not followed, nor what the faces send back
+        message=(
+            f"{power_text(power_w)} of {wavelength_text(nm)} meets the glass of '{element}', which "
+            "has no known index there; it is counted as absorbed, and where it goes was not checked"
+        ),
+        expected="glass whose formula covers the wavelengths that meet it",
+        remedy=f"name another glass for '{element}', or give its index: `glass: {{index: 1.5}}`",
+        element=element,
+        span=context.span_of(element, variant),
+        value=power_w,
+        limit=0.0,
+        unit="W",
+        key=(element, nm, "unknown index"),
+    )
 
 
 def _bounded(context: Context, variant: int) -> Finding:

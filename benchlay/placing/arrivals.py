@@ -209,34 +209,34 @@ class Arrivals:
 
     def _report_unreachable(self, element: Element, path: tuple[Item, ...]) -> None:
         last = path[-1]
-        why = self._why_lost(path)
+        lost = self._why_lost(path)
         self._solver.problems.add(
             _where(element, "after"),
-            f"no nominal beam leaves {_label(last)!r} towards {element.name!r}: {why}",
+            f"no nominal beam leaves {_label(last)!r} towards {element.name!r}: {lost.why}",
             expected="an item that a beam reaches and leaves by that branch",
-            remedy="name another item or branch in `after`, or see that a beam arrives at "
+            remedy=lost.mend
+            or "name another item or branch in `after`, or see that a beam arrives at "
             f"{last.name!r}",
         )
 
-    def _why_lost(self, path: tuple[Item, ...]) -> str:
+    def _why_lost(self, path: tuple[Item, ...]) -> Lost:
         last = path[-1]
         element = self._solver.layout.elements.get(last.name)
         if element is None:
-            return "it emits nothing of that wavelength"
+            return Lost("it emits nothing of that wavelength")
         standing = Standing(
             last.name, self._solver.pose(last.name), self._solver.geometry(last.name)
         )
         branch = self._branch(last.name, last.branch)
         ways = element.record.branches().get(branch or "", ())
         if not ways:
-            return f"it has no branch {branch!r}" if branch else "it does not say by which branch"
+            none = f"it has no branch {branch!r}" if branch else "it does not say by which branch"
+            return Lost(none)
         reasons = [
             through(choice.ray, ways, standing, self._solver.media) for choice in self._before(path)
         ]
-        lost = next((reason.why for reason in reasons if isinstance(reason, Lost)), None)
-        if lost is not None:
-            return lost
-        return (
+        lost = next((reason for reason in reasons if isinstance(reason, Lost)), None)
+        return lost or Lost(
             f"nothing says which beam arrives at {last.name!r}: "
             "give it `after`, or name it in a route"
         )

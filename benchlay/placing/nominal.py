@@ -25,9 +25,10 @@ class NominalRay(NamedTuple):
 
 
 class Lost(NamedTuple):
-    """Why a ray does not come through."""
+    """Why a ray does not come through, and the mend where `after` is not to blame."""
 
     why: str
+    mend: str = ""
 
 
 class Standing(NamedTuple):
@@ -130,10 +131,6 @@ def _along(
 ) -> NominalRay | Lost:
     outside = media.index(None, ray.wavelength_nm)
     insides = [media.index(v.glass, ray.wavelength_nm) for v in standing.geometry.volumes()]
-    if any(isnan(index) for index in insides):
-        return Lost(
-            f"the glass of {standing.name!r} has no known index at {ray.wavelength_nm:g} nm"
-        )
     index = outside if within is None else insides[within]
     for name, event in way:
         face = _face(standing, name)
@@ -142,6 +139,8 @@ def _along(
             return Lost(f"the beam inside {standing.name!r} does not reach its face {name!r}")
         beyond = _beyond(face, within)
         behind = outside if beyond is None else insides[beyond]
+        if isnan(index) or (event == "transmitted" and isnan(behind)):
+            return _dark(standing, ray)
         if face.acts is Acts.OPAQUE and event == "transmitted" and not _opens(face):
             return Lost(f"face {name!r} of {standing.name!r} is opaque")
         direction: Vector | None
@@ -158,6 +157,13 @@ def _along(
             point = add(standing.pose.point(face.origin), _between(point, face, standing), -1.0)
         ray = NominalRay(point, direction, ray.wavelength_nm)
     return ray
+
+
+def _dark(standing: Standing, ray: NominalRay) -> Lost:
+    return Lost(
+        f"the glass of {standing.name!r} has no known index at {ray.wavelength_nm:g} nm",
+        f"name another glass for {standing.name!r}, or give its index: `glass: {{index: 1.5}}`",
+    )
 
 
 def _between(point: Vector, face: Face, standing: Standing) -> Vector:

@@ -46,6 +46,17 @@ def figures(coating: Coating, wavelength_nm: float, spoken_for: frozenset[float]
     return Figures(Mode.STATED, band.s, band.p, loss_s, loss_p, 0j, unstated=False)
 
 
+def before_unknown(figures: Figures) -> Figures:
+    """Return what a face does before a medium of unknown index: it swallows what would go in.
+
+    A metal film lets nothing in, and a stated reflectance holds whatever lies behind.
+    """
+    if figures.mode == Mode.METAL:
+        return figures
+    lost_s, lost_p = 1.0 - figures.share_s, 1.0 - figures.share_p
+    return figures._replace(mode=Mode.STATED, loss_s=lost_s, loss_p=lost_p)
+
+
 def _metal(name: str, wavelength_nm: float) -> Figures:
     index = complex(METALS[name].index(wavelength_nm))
     if index != index:  # noqa: PLR0124 (NaN: the table does not cover this wavelength)

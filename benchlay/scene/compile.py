@@ -13,7 +13,7 @@ from benchlay.layout.materials import BODY
 from benchlay.placing.media import Media
 from benchlay.placing.placed import Placed, PlacedElement, PlacedState
 from benchlay.scene.bulks import bulks_table
-from benchlay.scene.coatings import Figures, figures, spoken_for
+from benchlay.scene.coatings import Figures, before_unknown, figures, spoken_for
 from benchlay.scene.conversions import conversions
 from benchlay.scene.fixed import fixed_products
 from benchlay.scene.rows import FaceRows, Frames, SolidRows
@@ -218,8 +218,8 @@ def _faces_table(
         [_inside_indices(compiler, i) for i in range(len(faces))], dtype=np.float64
     ).reshape(len(faces), len(compiler.wavelengths))
     per_wave = [
-        [figures(face.coating, nm, spoken[compiler.elements[owner]]) for nm in compiler.wavelengths]
-        for face, owner in zip(faces, rows.owners, strict=True)
+        [_figures(compiler, i, nm, spoken) for nm in compiler.wavelengths]
+        for i in range(len(faces))
     ]
     power, curvature = _lens_tables(compiler, inside)
     table = Faces(
@@ -249,6 +249,17 @@ def _faces_table(
 
 def _pairs(values: list[tuple[float, float]]) -> Floats:
     return np.array(values, dtype=np.float64).reshape(-1, 2)
+
+
+def _figures(
+    compiler: Compiler, row: int, wavelength_nm: float, spoken: Mapping[str, frozenset[float]]
+) -> Figures:
+    name = compiler.elements[compiler.faces.owners[row]]
+    stated = figures(compiler.faces.faces[row].coating, wavelength_nm, spoken[name])
+    glasses = [compiler.volumes[side][1].glass for side in compiler.sides[row] if side != OUTSIDE]
+    media: Media = compiler.placed.media
+    known = all(glass is None or media.known(glass, wavelength_nm) for glass in glasses)
+    return stated if known else before_unknown(stated)
 
 
 def _inside_indices(compiler: Compiler, row: int) -> list[float]:
@@ -284,6 +295,6 @@ def _lens_tables(compiler: Compiler, inside: Floats) -> tuple[Floats, Floats]:
         [face.focal_mm if face.acts is Acts.LENS else np.inf for face in compiler.faces.faces]
     )
     power = outside / (2.0 * focal[:, None])
-    step = inside - outside
+    step = np.nan_to_num(inside - outside)  # of glass of unknown index: bends nothing back
     curvature = np.divide(power, step, out=np.zeros_like(power), where=step != 0.0)
     return power, curvature
