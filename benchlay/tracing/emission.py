@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from typing import NamedTuple
+
 import numpy as np
 
 from benchlay.layout.light import Polarization
@@ -9,33 +11,65 @@ from benchlay.layout.sources import Source
 from benchlay.optics import coherency, moments
 from benchlay.optics.rays import bench_basis
 from benchlay.placing.placed import Placed, PlacedSource
+from benchlay.placing.pose import Vector
 from benchlay.scene.tables import Floats, Scene
 from benchlay.tracing.front import EMITTED, EXIT, OUTSIDE, Front
 from benchlay.tracing.ways import Ways
 
 
+class _Beam(NamedTuple):
+    """One beam that a source sends out, forwards or (its rear leak) backwards."""
+
+    variant: int
+    source: int
+    wave: int
+    item: PlacedSource
+    power_w: float
+    rear: bool = False
+
+    def direction(self) -> Vector:
+        """Return the way it goes."""
+        x, y, z = self.item.pose.axes()[0]
+        return (-x, -y, -z) if self.rear else (x, y, z)
+
+    def start(self) -> Vector:
+        """Return the middle of the front of the body, or of its back."""
+        body = self.item.source.body
+        if not self.rear or body is None:
+            return self.item.pose.at
+        return self.item.pose.point((-body.length_mm, 0.0, 0.0))
+
+    def polarization(self) -> Polarization:
+        """Return its state; the field of a rear leak is that of the main beam in space."""
+        stated = self.item.source.polarization
+        return reversed_(stated) if self.rear else stated
+
+
+def reversed_(state: Polarization) -> Polarization:
+    """Return the state of light that goes the other way with the same field in space."""
+    if state.kind == "circular":
+        return state._replace(hand="left" if state.hand == "right" else "right")
+    return state._replace(angle_rad=-state.angle_rad)
+
+
 def emitted(placed: Placed, scene: Scene, ways: Ways) -> Front:
-    """Return one beam a line, source and state, in that order of names."""
-    wave_of = {nm: i for i, nm in enumerate(scene.wavelengths_nm.tolist())}
-    found = [
-        (variant, number, wave_of[line.wavelength_nm], state.sources[name], line.power_w)
-        for variant, state in enumerate(placed.states)
-        for number, name in enumerate(scene.sources)
-        if not state.sources[name].source.stand.out
-        for line in sorted(state.sources[name].source.lines, key=lambda line: line.wavelength_nm)
-    ]
-    count = len(found)
-    wave = np.array([wave for _, _, wave, _, _ in found], dtype=np.int64)
-    source = np.array([number for _, number, _, _, _ in found], dtype=np.int64)
-    direction = np.array([item.pose.axes()[0] for _, _, _, item, _ in found]).reshape(-1, 3)
+    """Return one beam a line, source and state, in that order of names, then rear leaks.
+
+    A rear leak is shared by the lines as their powers are. Its beam has the shape of the main
+    one, as it would leave a source that is turned round where its back is.
+    """
+    found = _beams(placed, scene)
+    wave = np.array([beam.wave for beam in found], dtype=np.int64)
+    source = np.array([beam.source for beam in found], dtype=np.int64)
+    direction = np.array([beam.direction() for beam in found]).reshape(-1, 3)
     index = scene.index_outside[wave]
     node = [
-        ways.roots.get((scene.sources[s], scene.wavelengths_nm[w]), -1)
-        for s, w in zip(source, wave, strict=True)
+        -1 if beam.rear else ways.roots.get((scene.sources[beam.source], float(nm)), -1)
+        for beam, nm in zip(found, scene.wavelengths_nm[wave], strict=True)
     ]
     return Front.made(
-        count,
-        variant=np.array([variant for variant, *_ in found], dtype=np.int64),
+        len(found),
+        variant=np.array([beam.variant for beam in found], dtype=np.int64),
         source=source,
         wave=wave,
         parent=-1,
@@ -47,12 +81,32 @@ def emitted(placed: Placed, scene: Scene, ways: Ways) -> Front:
         within=OUTSIDE,
         index=index,
         kept=1.0,
-        position=np.array([item.pose.at for _, _, _, item, _ in found]).reshape(-1, 3),
+        position=np.array([beam.start() for beam in found]).reshape(-1, 3),
         direction=direction,
         axis=bench_basis(direction)[0],
-        coherency=coherency_of([(item.source.polarization, power) for *_, item, power in found]),
-        moments=_moments([item for *_, item, _ in found], scene.wavelengths_nm[wave], index),
+        coherency=coherency_of([(beam.polarization(), beam.power_w) for beam in found]),
+        moments=_moments([beam.item for beam in found], scene.wavelengths_nm[wave], index),
     )
+
+
+def _beams(placed: Placed, scene: Scene) -> list[_Beam]:
+    wave_of = {nm: i for i, nm in enumerate(scene.wavelengths_nm.tolist())}
+    main: list[_Beam] = []
+    leaks: list[_Beam] = []
+    for variant, state in enumerate(placed.states):
+        for number, name in enumerate(scene.sources):
+            item = state.sources[name]
+            if item.source.stand.out:
+                continue
+            lines = sorted(item.source.lines, key=lambda line: line.wavelength_nm)
+            total = sum(line.power_w for line in lines)
+            for line in lines:
+                beam = _Beam(variant, number, wave_of[line.wavelength_nm], item, line.power_w)
+                main.append(beam)
+                leak = item.source.rear_leak_w * (line.power_w / total if total else 1 / len(lines))
+                if leak > 0.0:
+                    leaks.append(beam._replace(power_w=leak, rear=True))
+    return main + leaks
 
 
 def coherency_of(states: list[tuple[Polarization, float]]) -> Floats:

@@ -42,10 +42,10 @@ class Trace(NamedTuple):
         return rows
 
     def emitted_w(self, variant: int) -> Mapping[str, float]:
-        """Return what each source emits in a variant, W."""
+        """Return what each source emits in a variant, its rear leak included, W."""
         state = self.placed.states[variant]
         return {
-            name: sum(line.power_w for line in item.source.lines)
+            name: sum(line.power_w for line in item.source.lines) + item.source.rear_leak_w
             for name, item in state.sources.items()
             if not item.source.stand.out
         }

@@ -18,6 +18,7 @@ for name in (
     "tubes",
     "converters",
     "corners",
+    "sources",
 ):
     importlib.import_module(f"tests.tracing.scenes.{name}")
 
