@@ -7,26 +7,26 @@ for good: from there on the light is stray.
 from __future__ import annotations
 
 from collections.abc import Mapping
-from typing import NamedTuple
+from typing import NamedTuple, TypeAlias
 
 import numpy as np
 
+from benchlay.elements._kind import Step
 from benchlay.layout.elements import Element
 from benchlay.layout.layout import Layout
 from benchlay.layout.routes import Route, RouteItem
 from benchlay.scene.tables import Flags, Ints, Scene
 from benchlay.tracing.front import CONVERTED, REFLECTED, TRANSMITTED
 
+_Step: TypeAlias = tuple[int, int, int, int]  # node, element, face, event
 _EVENT = {"reflected": REFLECTED, "transmitted": TRANSMITTED}
 
 
 class Place(NamedTuple):
-    """A node: the routes that pass it, as (number of the route, leg), and whether it lies
-    inside an optic.
-    """
+    """A node of the tree."""
 
-    routes: tuple[tuple[int, int], ...]
-    inside: bool
+    routes: tuple[tuple[int, int], ...]  # that pass it: number of the route, and leg
+    inside: bool  # whether it lies inside an optic
 
 
 class Ways(NamedTuple):
@@ -63,39 +63,91 @@ class Ways(NamedTuple):
 
 
 def _code(node: Ints, owner: Ints, face_name: Ints, event: Ints | int) -> Ints:
+    """Return one number (N,) for each step: elements below 4096, faces below 16, events below 8."""
     code: Ints = ((node * 4096 + owner) * 16 + face_name) * 8 + event
     return code
 
 
 class _Tree:
-    def __init__(self) -> None:
+    """Grows route by route: what routes share from their source on is one stem."""
+
+    def __init__(self, layout: Layout, scene: Scene) -> None:
+        self.layout = layout
+        self.face_names = scene.face_names
+        self.number = {name: i for i, name in enumerate(scene.elements)}
         self.routes: list[dict[int, int]] = []
         self.inside: list[bool] = []
-        self.steps: dict[tuple[int, int, int, int], int] = {}
+        self.steps: dict[_Step, int] = {}
         self.ends: dict[tuple[int, str, str], int] = {}
         self.roots: dict[tuple[str, float], int] = {}
 
     def new(self, *, inside: bool) -> int:
+        """Add a node."""
         self.routes.append({})
         self.inside.append(inside)
         return len(self.routes) - 1
 
+    def root(self, source: str, wavelength_nm: float) -> int:
+        """Return where the light of one line of a source begins."""
+        found = self.roots.get((source, wavelength_nm))
+        if found is None:
+            found = self.roots[source, wavelength_nm] = self.new(inside=False)
+        return found
+
+    def grow(self, root: int, number: int, route: Route) -> None:
+        """Add a route, leg by leg, as far as its items let light go on."""
+        node = root
+        self.routes[node][number] = 0
+        for leg, item in enumerate(route.items[1:-1], start=1):
+            element = self.layout.elements.get(item.name)
+            if element is None:
+                return
+            branch = item.branch or element.record.DEFAULT_BRANCH or ""
+            ways = element.record.branches().get(branch, ())
+            if not ways:
+                return
+            product = _product(element, item)
+            left = (node, item.name, branch if product is None else f"{branch} {product}")
+            end = self.ends.get(left)
+            if end is None:
+                end = self.ends[left] = self.new(inside=False)
+            for way in ways:
+                self._pass(node, self._steps(item.name, way, product), end, (number, leg))
+            node = end
+
+    def _steps(
+        self, name: str, way: tuple[Step, ...], product: int | None
+    ) -> list[tuple[int, int, int]]:
+        """Return element, face and event of each step of a way through an element."""
+        steps = [(self.face_names.index(face), _EVENT[event]) for face, event in way]
+        if product is not None:
+            steps.insert(1, (product, CONVERTED))  # between entry and exit
+        return [(self.number[name], face, event) for face, event in steps]
+
+    def _pass(
+        self, start: int, steps: list[tuple[int, int, int]], end: int, passing: tuple[int, int]
+    ) -> None:
+        """Add one way through an element; `passing` is the number of the route, and the leg."""
+        route, leg = passing
+        at = start
+        for count, step in enumerate(steps, start=1):
+            last = count == len(steps)
+            key = (at, *step)
+            at = self.steps.setdefault(key, end if last else -1)
+            if at < 0:
+                at = self.steps[key] = self.new(inside=True)
+            self.routes[at].setdefault(route, leg if last else leg - 1)
+
 
 def ways_of(layout: Layout, scene: Scene) -> Ways:
     """Return the tree of all routes of a layout, in name order."""
-    tree = _Tree()
+    tree = _Tree(layout, scene)
     names = tuple(sorted(layout.routes))
-    number = {name: i for i, name in enumerate(scene.elements)}
-    for i, name in enumerate(names):
-        for wavelength in _lines(layout.routes[name], layout):
-            root = tree.roots.setdefault((layout.routes[name].items[0].name, wavelength), -1)
-            if root < 0:
-                root = tree.new(inside=False)
-                tree.roots[layout.routes[name].items[0].name, wavelength] = root
-            _grow(tree, root, i, layout.routes[name], layout, number, scene)
-    steps = sorted(
-        (int(_code(*(np.int64(v) for v in key[:3]), key[3])), t) for key, t in tree.steps.items()
-    )
+    for number, name in enumerate(names):
+        route = layout.routes[name]
+        for wavelength in _lines(route, layout):
+            tree.grow(tree.root(route.items[0].name, wavelength), number, route)
+    codes, targets = _sorted_steps(tree.steps)
     return Ways(
         names,
         tuple(layout.routes[name] for name in names),
@@ -104,11 +156,19 @@ def ways_of(layout: Layout, scene: Scene) -> Ways:
             Place(tuple(sorted(routes.items())), inside)
             for routes, inside in zip(tree.routes, tree.inside, strict=True)
         ),
-        np.array([code for code, _ in steps], dtype=np.int64),
-        np.array([target for _, target in steps], dtype=np.int64),
+        codes,
+        targets,
         _main_events(layout, scene),
-        number,
+        tree.number,
     )
+
+
+def _sorted_steps(steps: Mapping[_Step, int]) -> tuple[Ints, Ints]:
+    """Return codes of steps in rising order, and the nodes that they lead to."""
+    node, owner, face, event = np.array(list(steps), dtype=np.int64).reshape(-1, 4).T
+    code = _code(node, owner, face, event)
+    order = np.argsort(code)
+    return code[order], np.array(list(steps.values()), dtype=np.int64)[order]
 
 
 def _lines(route: Route, layout: Layout) -> list[float]:
@@ -116,45 +176,6 @@ def _lines(route: Route, layout: Layout) -> list[float]:
     if first.wavelength_nm is not None:
         return [first.wavelength_nm]
     return [line.wavelength_nm for line in layout.sources[first.name].lines]
-
-
-def _grow(
-    tree: _Tree,
-    root: int,
-    route: int,
-    what: Route,
-    layout: Layout,
-    number: Mapping[str, int],
-    scene: Scene,
-) -> None:
-    node = root
-    tree.routes[node][route] = 0
-    for leg, item in enumerate(what.items[1:-1], start=1):
-        element = layout.elements.get(item.name)
-        if element is None:
-            return
-        branch = item.branch or element.record.DEFAULT_BRANCH or ""
-        ways = element.record.branches().get(branch, ())
-        if not ways:
-            return
-        product = _product(element, item)
-        left = (node, item.name, branch if product is None else f"{branch} {product}")
-        end = tree.ends.get(left)
-        if end is None:
-            end = tree.ends[left] = tree.new(inside=False)
-        for way in ways:
-            at = node
-            steps = [(scene.face_names.index(face), _EVENT[event]) for face, event in way]
-            if product is not None:
-                steps.insert(1, (product, CONVERTED))  # between entry and exit
-            for step, (face, event) in enumerate(steps):
-                key = (at, number[item.name], face, event)
-                last = step == len(steps) - 1
-                at = tree.steps.setdefault(key, end if last else -1)
-                if at < 0:
-                    at = tree.steps[key] = tree.new(inside=True)
-                tree.routes[at].setdefault(route, leg if last else leg - 1)
-        node = end
 
 
 def _product(element: Element, item: RouteItem) -> int | None:
