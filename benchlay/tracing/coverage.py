@@ -108,7 +108,7 @@ def _apart(point: Floats, centre: Floats) -> Floats:
 
 
 def near(
-    front: Front, scene: Scene, hits: Hits, faces: FacesMet, passed: Passing, radius: Floats
+    front: Front, scene: Scene, hits: Hits, faces: FacesMet, passed: Passing, *, radius: Floats
 ) -> Flags:
     """Tell beside which chief rays (B,) a body comes within a radius (mm) on their way.
 
@@ -116,10 +116,7 @@ def near(
     less than what lies within the radius.
     """
     s = scene.solids
-    on_face = hits.kind == FACE
-    target = np.full(len(radius), -2)
-    if len(scene.faces.owner):
-        target = np.where(on_face, scene.faces.owner[np.where(on_face, hits.row, 0)], -2)
+    target = hits.owner(scene)
     beam, solid, enter, leave = pairs(front, scene, passed, hits.distance, radius)
     close = (enter <= np.minimum(leave, hits.distance[beam])) & (leave > 0.0)
     close &= (hits.kind[beam] != SOLID) | (hits.row[beam] != solid)
@@ -127,21 +124,20 @@ def near(
     result = np.zeros(len(radius), dtype=np.bool_)
     result[beam[close]] = True
     if len(scene.faces.owner):
-        result |= _near_faces(front, scene, faces, radius, hits.distance[:, None], target)
+        result |= _near_faces(front, scene, faces, hits, radius)
     return result
 
 
-def _near_faces(
-    front: Front, scene: Scene, met: FacesMet, radius: Floats, limit: Floats, target: Ints
-) -> Flags:
+def _near_faces(front: Front, scene: Scene, met: FacesMet, hits: Hits, radius: Floats) -> Flags:
+    """Tell which beams pass the planes of others' faces within a radius of their outlines."""
     f = scene.faces
     steep = np.abs(met.slope)
     spread = radius[:, None] / np.maximum(steep, _GRAZING)
     touched = (np.abs(met.left) - f.radii[:, 0] < spread) & (
         np.abs(met.up) - f.radii[:, 1] < spread
     )
-    between = (met.distance > -SKIN_MM) & (met.distance < limit)
-    strange = (f.owner != front.owner[:, None]) & (f.owner != target[:, None])
+    between = (met.distance > -SKIN_MM) & (met.distance < hits.distance[:, None])
+    strange = (f.owner != front.owner[:, None]) & (f.owner != hits.owner(scene)[:, None])
     counts = f.present[front.variant] & (f.inside != Inside.BOTH) & (steep > _GRAZING)
     result: Flags = (touched & between & strange & counts).any(axis=1)
     return result

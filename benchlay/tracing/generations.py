@@ -139,7 +139,7 @@ def _meet(front: Front, state: RunState) -> tuple[_Ready, Flags]:
         widest = looked_at[rest] * np.maximum(radius[first : len(order)], stop[rest])
         met = hits.take(rest)
         wanted[rest] |= ~covered(free, scene, met, (looked_at * stop)[rest])
-        wanted[rest] |= near(free, scene, met, faces, passed, widest)
+        wanted[rest] |= near(free, scene, met, faces, passed, radius=widest)
     return _Ready(front, hits, end, reach), wanted & ~front.lump
 
 

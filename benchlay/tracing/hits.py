@@ -60,6 +60,13 @@ class Hits:
             np.concatenate([part.floats for part in parts], axis=1),
         )
 
+    def owner(self, scene: Scene) -> Ints:
+        """Return the elements (B,) whose faces are met, -2 where none is."""
+        owner = np.full(len(self.kind), -2)
+        on_face = self.kind == FACE
+        owner[on_face] = scene.faces.owner[self.row[on_face]]
+        return owner
+
     @property
     def kind(self) -> Ints:  # noqa: D102 (see the class)
         value: Ints = self.ints[0]

@@ -131,10 +131,7 @@ def _spills(outlines: Outlines, power: Floats) -> Spills:
 
 def gather(front: Front, scene: Scene, hits: Hits, reach: Floats) -> Outlines:
     """Return all outlines that matter in the cross-sections of beams."""
-    on_face = hits.kind == FACE
-    target = np.full(len(reach), -2)
-    if len(scene.faces.owner):
-        target = np.where(on_face, scene.faces.owner[np.where(on_face, hits.row, 0)], -2)
+    target = hits.owner(scene)
     inside = front.within != OUTSIDE
     bound = _radius_bound(front, reach)
     faces = _faces_in_reach(front, scene, hits, bound, inside)
