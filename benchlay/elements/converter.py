@@ -28,19 +28,18 @@ on, and `wavelength: 532` beside `after`.
 
 from __future__ import annotations
 
-from typing import Any, ClassVar
+from typing import Any
 
 from benchlay.document.form import Reader
 from benchlay.document.forms import ListOf, Quantity, RecordForm
 from benchlay.document.quantity import Dimension
 from benchlay.document.record import Record, key
-from benchlay.elements._coating import COATING, UNCOATED, Coating
+from benchlay.elements._acting import ActingPlate
 from benchlay.elements._glass import GLASS
-from benchlay.elements._kind import Branches, Bulk, ElementKind, Geometry, Glass, Made
+from benchlay.elements._kind import Bulk, Glass, Made
 from benchlay.elements._polarization import PolarizationForm
 from benchlay.elements._shares import SHARE
-from benchlay.elements._sized import LENGTH, PlateShape, Sized, plate_geometry
-from benchlay.elements._through import PASSING_PLATE
+from benchlay.elements._sized import LENGTH
 
 _WAVELENGTH = Quantity(Dimension.WAVELENGTH, above=0.0)
 
@@ -57,18 +56,14 @@ class Product(Record):
     )
 
 
-class Converter(Sized, ElementKind):
+class Converter(ActingPlate):
     """A crystal that turns light of one wavelength into another."""
 
     KIND = "converter"
-    BRANCHES: ClassVar[Branches] = PASSING_PLATE
-    DEFAULT_BRANCH = "transmitted"
 
     produces: tuple[Product, ...] = key(ListOf(RecordForm(Product), min=1), meaning="what it makes")
     length_mm: float = key(LENGTH, name="length", meaning="of the crystal")
     glass: Glass = key(GLASS, default=Glass(None, 1.6), meaning="its index")
-    front: Coating = key(COATING, default=UNCOATED, meaning="coating of the entry")
-    back: Coating = key(COATING, default=UNCOATED, meaning="coating of the exit")
 
     def after_read(self, reader: Reader) -> None:
         """Refuse a crystal that makes more than it gets, or one light twice."""
@@ -94,15 +89,10 @@ class Converter(Sized, ElementKind):
         """Return the light that it makes."""
         return tuple(Made(p.wavelength_nm, p.share, p.polarization) for p in self.produces)
 
-    def geometry(self) -> Geometry:
-        """Return front, back and edge, and what happens inside."""
-        outline = self.outline()
-        shape = PlateShape(outline, outline.scaled(self.clear), self.length_mm)
-        bulk = Bulk("converter", makes=self.makes())
-        return plate_geometry(
-            shape, shape.faces(self.front, self.back), self.glass, coated="", bulk=bulk
-        )
+    def depth_mm(self) -> float:
+        """Return the length of the crystal."""
+        return self.length_mm
 
-    def glass_of(self) -> Glass:
-        """Return what it is made of."""
-        return self.glass
+    def bulk(self) -> Bulk:
+        """Return what happens inside."""
+        return Bulk("converter", makes=self.makes())
