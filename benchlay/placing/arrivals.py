@@ -6,7 +6,8 @@ from collections.abc import Iterator, Sequence
 from typing import TYPE_CHECKING, NamedTuple
 
 from benchlay.document.span import Span
-from benchlay.placing.nominal import Lost, NominalRay, Standing, through
+from benchlay.placing.nominal import Lost, NominalRay, Standing, scattered, through
+from benchlay.placing.pose import add, unit
 
 if TYPE_CHECKING:
     from benchlay.layout.elements import Element
@@ -14,6 +15,7 @@ if TYPE_CHECKING:
 
 _SAME_MM = 1e-6  # nominal rays nearer than this, and as parallel, are one ray
 _SAME_DIRECTION = 1e-9
+SCATTERED = "scattered"
 _DEEPEST = 400  # items of a path looked back along; a longer chain is a fault in the layout
 
 
@@ -81,10 +83,24 @@ class Arrivals:
             if not found:
                 self._report_unreachable(element, path)
                 raise Unplaceable(element.name)
-            yield from found
+            for choice in found:
+                yield self._aimed(choice, element)
             return
         for prefix in self._prefixes(element.name, None):
-            yield from self._try(prefix)
+            for choice in self._try(prefix):
+                yield self._aimed(choice, element)
+
+    def _aimed(self, choice: Choice, element: Element) -> Choice:
+        """Send scattered light on to the reference point of what comes next."""
+        ray = choice.ray
+        if ray.aimed:
+            return choice
+        at = self._solver.place_of(element)
+        way = None if at is None else unit(add(at, ray.point, -1.0))
+        if way is None:
+            self._report_nowhere(element, choice.path[-1])
+            raise Unplaceable(element.name)
+        return choice._replace(ray=ray._replace(direction=way, aimed=True))
 
     def _try(self, path: tuple[Item, ...]) -> tuple[Choice, ...]:
         """Follow a route's path if it can be followed without what is being solved."""
@@ -146,6 +162,12 @@ class Arrivals:
         element = solver.layout.elements[last.name]
         standing = Standing(last.name, solver.pose(last.name), solver.geometry(last.name))
         ways = element.record.branches().get(self._branch(last.name, last.branch) or "", ())
+        if last.branch == SCATTERED:
+            for choice in self._before(path):
+                ray = scattered(choice.ray, standing)
+                if not isinstance(ray, Lost):
+                    yield Choice((*choice.path, last), ray)
+            return
         made = [light.wavelength_nm for light in element.record.makes()]
         for choice in self._before(path):
             for nm in (None, *made):
@@ -156,6 +178,11 @@ class Arrivals:
 
     def _before(self, path: tuple[Item, ...]) -> Iterator[Choice]:
         """Return the rays that arrive at the last item of a path."""
+        element = self._solver.layout.elements[path[-1].name]
+        for choice in self._to_last(path):
+            yield self._aimed(choice, element)
+
+    def _to_last(self, path: tuple[Item, ...]) -> Iterator[Choice]:
         if len(path) > 1:
             yield from self.leaving(path[:-1])
             return
@@ -205,6 +232,17 @@ class Arrivals:
             f"more than one beam could be meant to arrive at {element.name!r}",
             expected=f"one of these: {which}",
             remedy=remedy,
+        )
+
+    def _report_nowhere(self, element: Element, last: Item) -> None:
+        if self.trying:
+            return
+        self._solver.problems.add(
+            _where(element, "after"),
+            f"light scattered by {last.name!r} goes everywhere: it does not say where "
+            f"{element.name!r} stands",
+            expected="a place of its own, away from where the light is scattered",
+            remedy="give `at` beside `after`, instead of `distance`",
         )
 
     def _report_unreachable(self, element: Element, path: tuple[Item, ...]) -> None:

@@ -17,11 +17,16 @@ from benchlay.placing.pose import Pose, Vector, add, dot, unit
 
 
 class NominalRay(NamedTuple):
-    """Where a chief ray leaves an item, in the bench's medium, and its unit direction."""
+    """Where a chief ray leaves an item, in the bench's medium, and its unit direction.
+
+    Scattered light goes everywhere: until it is `aimed` at the next item, its direction is
+    that of the light that was scattered.
+    """
 
     point: Vector
     direction: Vector
     wavelength_nm: float
+    aimed: bool = True
 
 
 class Lost(NamedTuple):
@@ -75,6 +80,16 @@ def through(
     made = inside._replace(wavelength_nm=made_nm)
     entry = _face(standing, best[1][0][0])
     return _along(made, best[1][1:], standing, media, within=_beyond(entry, None))
+
+
+def scattered(ray: NominalRay, standing: Standing) -> NominalRay | Lost:
+    """Return the diffuse light of an element's front, not aimed at anything yet."""
+    front = _face(standing, "front")
+    reach = _enters(ray, front, standing, "reflected")
+    if reach is None or reach > 1.0:
+        return Lost(f"the beam does not meet the front of {standing.name!r}")
+    _, point, _ = _meet(ray, front, standing.pose)
+    return ray._replace(point=point, aimed=False)
 
 
 def _face(standing: Standing, name: str) -> Face:

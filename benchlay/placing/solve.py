@@ -12,7 +12,8 @@ from benchlay.placing.arrivals import Arrivals, Unplaceable
 from benchlay.placing.media import Media
 from benchlay.placing.nominal import NominalRay
 from benchlay.placing.placed import Placed, PlacedElement, PlacedSource, PlacedState
-from benchlay.placing.pose import Pose
+from benchlay.placing.points import fixed_point
+from benchlay.placing.pose import Pose, Vector
 from benchlay.placing.standing import stand_element, stand_source
 from benchlay.placing.surroundings import Surroundings
 
@@ -86,6 +87,11 @@ class Solver:
             self.busy.pop()
         self.poses[name] = solved
         return solved
+
+    def place_of(self, element: Element) -> Vector | None:
+        """Return where an element stands, if that does not hang on a ray; None otherwise."""
+        known = self.poses.get(element.name)
+        return known.at if known is not None else fixed_point(element.stand, self)
 
     def solve(self, name: str) -> Pose:
         """Solve one pose, whatever is known of it already."""

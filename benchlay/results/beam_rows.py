@@ -20,7 +20,7 @@ from benchlay.results.ends import Ends, ends_of
 from benchlay.results.frames import horizontals
 from benchlay.results.losses import losses
 from benchlay.results.names import left
-from benchlay.scene.tables import Floats, Ints, Scene
+from benchlay.scene.tables import Flags, Floats, Ints, Scene
 from benchlay.tracing import Trace
 from benchlay.tracing.beams import Beams
 from benchlay.tracing.front import EVENTS, Front
@@ -36,14 +36,15 @@ def beam_rows(trace: Trace, variant: int) -> tuple[BeamRow, ...]:
     parents = _renumbered(beams.start.parent, rows)
     level = horizontals(beams.start.direction, parents)
     ends = ends_of(trace, rows)
+    diffuse = trace.diffuse()[rows]
     columns = zip(
         range(len(rows)),
         (parent if parent >= 0 else None for parent in parents.tolist()),
         *_origin(trace, beams, rows, ends),
         *_places(beams),
         beams.start.index.tolist(),
-        beams.start.power.tolist(),
-        ends.power_w.tolist(),
+        _known(beams.start.power, diffuse),
+        _known(ends.power_w, diffuse),
         losses(trace, rows, ends),
         _pulse_energies(trace, variant, beams.start),
         *_shape(trace.scene, beams, level),
@@ -53,6 +54,12 @@ def beam_rows(trace: Trace, variant: int) -> tuple[BeamRow, ...]:
         strict=True,
     )
     return tuple(BeamRow(*values) for values in columns)
+
+
+def _known(power_w: Floats, diffuse: Flags) -> list[float | None]:
+    """Return powers; scattered light on a route has none of its own."""
+    pairs = zip(power_w.tolist(), diffuse.tolist(), strict=True)
+    return [None if scattered else power for power, scattered in pairs]
 
 
 def _take(beams: Beams, rows: Ints) -> Beams:

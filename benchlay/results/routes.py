@@ -19,11 +19,11 @@ from benchlay.tracing.beams import FACE
 def route_results(trace: Trace, variant: int) -> tuple[RouteResult, ...]:
     """Return one entry a route, in name order.
 
-    A route arrives where a beam that follows it meets its last item with any
-    power. Several beams may (lines of a source, two ways through an element): their powers
-    are added, and lengths and polarization are those of the someest. The transmission is
-    what arrives of what the source emits in the route's lines. Where nothing arrives,
-    lengths are not known and polarization is null.
+    A route arrives where a beam that follows it meets its last item with any power, or
+    scattered light does, of which no power is known. Several beams may (lines of a source,
+    two ways through an element): their powers are added, and lengths and polarization are
+    those of the strongest. The transmission is what arrives of what the source emits in the
+    route's lines. Where nothing arrives, lengths are not known and polarization is null.
     """
     return tuple(
         _result(trace, variant, route, last_legs(trace, variant, route))
@@ -59,7 +59,7 @@ def _result(trace: Trace, variant: int, route: int, legs: Ints) -> RouteResult:
     cos, sin = dot(axis, level), dot(cross(direction, axis), level)
     j = coherency.rotate(beams.end_coherency[:, last], cos, sin)
     emitted = _emitted_w(trace, variant, route)
-    total = float(power.sum())
+    total = nan if trace.diffuse()[best] else float(power.sum())
     return RouteResult(
         name,
         state,
@@ -75,7 +75,7 @@ def _result(trace: Trace, variant: int, route: int, legs: Ints) -> RouteResult:
 def _arrives(trace: Trace, route: int, legs: Ints) -> Flags:
     """Tell which beams meet the route's last item, an element or a panel's opening."""
     beams, last = trace.beams, trace.ways.routes[route].items[-1]
-    some = beams.end_core[legs] > 0.0
+    some = (beams.end_core[legs] > 0.0) | trace.diffuse()[legs]
     if last.opening is not None:
         return some & through_opening(trace, legs, last.opening)
     on_face = beams.end_kind[legs] == FACE

@@ -12,6 +12,7 @@ from typing import NamedTuple
 import numpy as np
 
 from benchlay.optics import moments
+from benchlay.placing.placed import Placed
 from benchlay.scene.tables import SINK, Flags, Floats, Ints, Scene
 from benchlay.tracing.beams import Beams, Ledger, gathered
 from benchlay.tracing.bulk import passage
@@ -28,6 +29,7 @@ from benchlay.tracing.coverage import (
 from benchlay.tracing.front import OUTSIDE, Front, join
 from benchlay.tracing.hits import FACE, Hits, inside_hits, nearest
 from benchlay.tracing.run_state import Leg, RunState
+from benchlay.tracing.scattering import follow_scattered
 from benchlay.tracing.section import cut, uncut
 from benchlay.tracing.ways import Ways
 
@@ -60,7 +62,7 @@ class _Ready(NamedTuple):
         )
 
 
-def run(front: Front, scene: Scene, ways: Ways, floor_w: Floats) -> Traced:
+def run(front: Front, scene: Scene, ways: Ways, floor_w: Floats, placed: Placed) -> Traced:
     """Trace beams until all power has landed or lies under the floor.
 
     Parameters
@@ -73,6 +75,8 @@ def run(front: Front, scene: Scene, ways: Ways, floor_w: Floats) -> Traced:
         What they are meant to do.
     floor_w : (L,) ndarray of float64
         Power below which a beam is booked and not followed, W, by wavelength.
+    placed : Placed
+        Says where the items stand that scattered light goes on to.
     """
     state = RunState(scene, ways, floor_w)
     live, waiting = front, list[_Ready]()
@@ -93,8 +97,19 @@ def run(front: Front, scene: Scene, ways: Ways, floor_w: Floats) -> Traced:
         bounded[rest.variant] = True
         # The leg they would have been is not there: they are booked with their parents.
         state.book(rest.parent - state.count, SINK["below-floor"], -1, rest.power)
+    if ways.scatterings:
+        follow_scattered(state, placed, lambda rays: _step(rays, state))
     traced = _finished(state) if state.legs else _dark(front)
     return Traced(*traced, bounded)
+
+
+def _step(front: Front, state: RunState) -> Front:
+    """Take rays without power to what they meet, and return what goes on from there."""
+    ready, _ = _meet(front, state)
+    floor_w, state.floor_w = state.floor_w, np.zeros_like(state.floor_w)
+    born = _advance(ready, state, cutting=False)
+    state.floor_w = floor_w
+    return born
 
 
 def _joined(parts: list[_Ready]) -> _Ready:

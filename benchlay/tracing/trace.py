@@ -12,6 +12,7 @@ from benchlay.scene.compile import compile_scene
 from benchlay.scene.tables import Flags, Floats, Ints, Scene
 from benchlay.tracing.beams import Beams, Ledger
 from benchlay.tracing.emission import emitted
+from benchlay.tracing.front import SCATTERED
 from benchlay.tracing.generations import run
 from benchlay.tracing.ways import Ways, ways_of
 
@@ -41,6 +42,16 @@ class Trace(NamedTuple):
         rows: Ints = np.flatnonzero(self.beams.start.variant[self.ledger.beam] == variant)
         return rows
 
+    def diffuse(self) -> Flags:
+        """Tell which beams are scattered light on a route: they carry no power of their own."""
+        event, parent = self.beams.start.event, self.beams.start.parent
+        found: Flags = event == SCATTERED
+        if not self.ways.scatterings:
+            return found
+        for beam in range(int(found.argmax()), len(found)):  # parents come first
+            found[beam] |= bool(parent[beam] >= 0 and found[parent[beam]])
+        return found
+
     def emitted_w(self, variant: int) -> Mapping[str, float]:
         """Return what each source emits in a variant, its rear leak included, W."""
         state = self.placed.states[variant]
@@ -64,5 +75,5 @@ def trace(placed: Placed, floor_w: Mapping[float, float]) -> Trace:
     scene = compile_scene(placed)
     ways = ways_of(placed.base.layout, scene)
     floors = np.array([floor_w[nm] for nm in scene.wavelengths_nm.tolist()])
-    traced = run(emitted(placed, scene, ways), scene, ways, floors)
+    traced = run(emitted(placed, scene, ways), scene, ways, floors, placed)
     return Trace(placed, scene, ways, traced.beams, traced.ledger, floors, traced.bounded)

@@ -19,6 +19,7 @@ from benchlay.scene.tables import Flags, Ints, Scene
 from benchlay.tracing.front import CONVERTED, REFLECTED, TRANSMITTED
 
 _Step: TypeAlias = tuple[int, int, int, int]  # node, element, face, event
+SCATTERED = "scattered"
 _EVENT = {"reflected": REFLECTED, "transmitted": TRANSMITTED}
 
 
@@ -27,6 +28,15 @@ class Place(NamedTuple):
 
     routes: tuple[tuple[int, int], ...]  # that pass it: number of the route, and leg
     inside: bool  # whether it lies inside an optic
+
+
+class Scattering(NamedTuple):
+    """A route goes on with the diffuse light of an element's face: a straight ray."""
+
+    node: int  # of the light that is scattered
+    owner: int  # number of the element
+    end: int  # node of the diffuse light
+    to: str  # the next item
 
 
 class Ways(NamedTuple):
@@ -43,6 +53,7 @@ class Ways(NamedTuple):
     targets: Ints
     main: Flags  # (F, 2) reflected, transmitted
     elements: Mapping[str, int]
+    scatterings: tuple[Scattering, ...] = ()
 
     def follow(self, node: Ints, owner: Ints, face_name: Ints, event: Ints | int) -> Ints:
         """Return the nodes after events at faces; -1 off the tree."""
@@ -80,6 +91,7 @@ class _Tree:
         self.steps: dict[_Step, int] = {}
         self.ends: dict[tuple[int, str, str], int] = {}
         self.roots: dict[tuple[str, float], int] = {}
+        self.scatterings: list[Scattering] = []
 
     def new(self, *, inside: bool) -> int:
         """Add a node."""
@@ -103,6 +115,9 @@ class _Tree:
             if element is None:
                 return
             branch = item.branch or element.record.DEFAULT_BRANCH or ""
+            if branch == SCATTERED:
+                node = self._scatter(node, item.name, route.items[leg + 1], (number, leg))
+                continue
             ways = element.record.branches().get(branch, ())
             if not ways:
                 return
@@ -114,6 +129,17 @@ class _Tree:
             for way in ways:
                 self._pass(node, self._steps(item.name, way, product), end, (number, leg))
             node = end
+
+    def _scatter(self, node: int, name: str, after: RouteItem, passing: tuple[int, int]) -> int:
+        """Add diffuse light on its way from an element to the next item."""
+        left = (node, name, f"{SCATTERED} {after.name}.{after.part}")
+        end = self.ends.get(left)
+        if end is None:
+            end = self.ends[left] = self.new(inside=False)
+            if after.opening is None:
+                self.scatterings.append(Scattering(node, self.number[name], end, after.name))
+        self.routes[end].setdefault(*passing)
+        return end
 
     def _steps(
         self, name: str, way: tuple[Step, ...], product: int | None
@@ -160,6 +186,7 @@ def ways_of(layout: Layout, scene: Scene) -> Ways:
         targets,
         _main_events(layout, scene),
         tree.number,
+        tuple(tree.scatterings),
     )
 
 

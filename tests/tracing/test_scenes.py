@@ -19,6 +19,7 @@ for name in (
     "converters",
     "corners",
     "sources",
+    "routes",
 ):
     importlib.import_module(f"tests.tracing.scenes.{name}")
 

@@ -59,6 +59,10 @@ class Routes:
         return [dict(place.routes) for place in self._trace.ways.places]
 
     @cached_property
+    def _diffuse(self) -> Flags:
+        return self._trace.diffuse()
+
+    @cached_property
     def working(self) -> Flags:
         """Which beams follow a route (N,)."""
         working: Flags = self._trace.beams.start.node >= 0
@@ -157,7 +161,8 @@ class Routes:
         item = self._trace.ways.routes[route].items[-1]
         if item.opening is not None:
             return self.passes_opening(beam, ".".join(item.opening))
-        return self.met(beam) == item.name and bool(self._trace.beams.end_core[beam] > 0.0)
+        some = self._trace.beams.end_core[beam] > 0.0 or self._diffuse[beam]
+        return self.met(beam) == item.name and bool(some)
 
     def met(self, beam: int) -> str | None:
         """Return the element whose optical face the chief ray of a beam meets."""
