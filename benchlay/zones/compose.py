@@ -12,7 +12,7 @@ from shapely.geometry.base import BaseGeometry
 from benchlay.tracing.beams import FACE, NOTHING
 from benchlay.tracing.trace import Trace
 from benchlay.zones.diffuse import Spot, spots
-from benchlay.zones.enclosing import Enclosing, enclosing_line
+from benchlay.zones.enclosing import Enclosing, enclosing_of
 from benchlay.zones.limits import LimitTable, limits_of
 from benchlay.zones.polygons import Ring, rings, united
 from benchlay.zones.swept import Leg, hazardous_legs
@@ -87,7 +87,7 @@ def zones_of(trace: Trace, states: Iterable[str] | None = None) -> Zones:
 
 def _of_state(trace: Trace, limits: LimitTable, variant: int) -> list[Zone]:
     s = trace.beams.start
-    enclosing = enclosing_line(trace.placed.states[variant].layout)
+    enclosing = enclosing_of(trace.placed.states[variant].layout)
     pieces: dict[tuple[int, str], list[_Piece]] = {}
     for leg in hazardous_legs(trace, limits, variant):
         for kind, area in _by_kind(leg, enclosing):

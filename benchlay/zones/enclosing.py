@@ -1,4 +1,4 @@
-"""The enclosure's line, and what passes over it."""
+"""What passes over the enclosure: its line as an area, and how high each panel stands."""
 
 from __future__ import annotations
 
@@ -8,19 +8,13 @@ import shapely
 from shapely.geometry.base import BaseGeometry
 
 from benchlay.layout.layout import Layout
-
-_FEWEST = 2  # panels that make an enclosure
-_CORNERS = 3
+from benchlay.zones.enclosure_line import enclosure_line
 
 Place = tuple[float, float, float]
 
 
 class Enclosing(NamedTuple):
-    """The area within the panels, and the upper edge of every closed one.
-
-    The area is the convex outline of the panels' ends, so that missing sides are closed by
-    straight lines and the order in the file does not matter.
-    """
+    """The area within the enclosure's line, and the upper edge of every closed panel."""
 
     area: BaseGeometry
     edges: tuple[tuple[BaseGeometry, float], ...]
@@ -46,19 +40,15 @@ class Enclosing(NamedTuple):
         return False
 
 
-def enclosing_line(layout: Layout) -> Enclosing | None:
-    """Return the line of a layout's enclosure; None with fewer than two panels."""
-    enclosure = layout.enclosure
-    if enclosure is None:
+def enclosing_of(layout: Layout) -> Enclosing | None:
+    """Return what a layout's panels enclose; None where they enclose nothing."""
+    enclosure, line = layout.enclosure, enclosure_line(layout)
+    if enclosure is None or not line.enclosed:
         return None
-    closed = [panel for panel in enclosure.panels.values() if not panel.open]
-    corners = [
-        point for panel in enclosure.panels.values() for point in (panel.from_mm, panel.to_mm)
-    ]
-    if len(enclosure.panels) < _FEWEST or len(set(corners)) < _CORNERS or not closed:
-        return None
+    area = shapely.Polygon(line.corners)
     edges = tuple(
         (shapely.LineString([panel.from_mm, panel.to_mm]), enclosure.heights_mm(panel)[1])
-        for panel in closed
+        for panel in enclosure.panels.values()
+        if not panel.open
     )
-    return Enclosing(shapely.convex_hull(shapely.MultiPoint(corners)), edges)
+    return Enclosing(area, edges) if edges and area.area > 0.0 else None

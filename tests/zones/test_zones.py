@@ -201,6 +201,23 @@ def test_a_beam_that_climbs_over_the_enclosure_is_divided_there():
     assert {zone.kind for zone in level.zones} == {"direct"}
 
 
+def test_beyond_the_enclosure_begins_at_its_line_where_that_has_a_notch():
+    """An enclosure like an L: over the panel of its notch light is outside at once."""
+    notch = """e: {from: [1000, 0], to: [1000, 200], material: black}
+            f: {from: [1000, 200], to: [500, 200], material: black}
+            g: {from: [500, 200], to: [500, 600], material: black}
+            n: {from: [500, 600], to: [0, 600], material: black}
+"""
+    ring = SURROUNDED.splitlines(keepends=True)
+    panels = "".join([*ring[:5], "            ", notch, ring[-1]])
+    text = straight("20 mW", 1, target=DARK).replace(
+        "            heading: 0", "            heading: 0\n            pitch: 10"
+    )
+    result = zones_of(traced(text + panels))
+    assert area_of(result, "direct").bounds[2] == pytest.approx(500.0, abs=1e-6)
+    assert area_of(result, "over").bounds[0] == pytest.approx(500.0, abs=1e-6)
+
+
 def test_a_beam_straight_up_is_a_disc():
     text = straight("20 mW", 1, target=DARK).replace(
         "            heading: 0", "            heading: 0\n            pitch: 90"
