@@ -84,5 +84,5 @@ def test_importing_the_package_loads_nothing_of_it():
 
 
 def test_an_unknown_public_name_is_refused():
-    with pytest.raises(AttributeError, match="has no attribute 'optimise'"):
-        _ = benchlay.optimise
+    with pytest.raises(AttributeError, match="has no attribute 'tune'"):
+        _ = benchlay.tune

@@ -33,11 +33,6 @@ class Outline(NamedTuple):
         corners = tuple((cx + fx * (x - cx), cy + fy * (y - cy)) for x, y in self.corners)
         return Outline(corners, self.centre, (fx * self.radii[0], fy * self.radii[1]))
 
-    @property
-    def half_size(self) -> Point:
-        """Half of width and height, in mm."""
-        return self.radii
-
 
 def circle(radius_mm: float) -> Outline:
     """Return a circle about the origin."""

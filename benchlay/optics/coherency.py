@@ -164,35 +164,6 @@ def _squared(value: NDArray[np.complex128]) -> Floats:
     return squared
 
 
-def jones(j: Floats, m11: ArrayLike, m12: ArrayLike, m21: ArrayLike, m22: ArrayLike) -> Floats:
-    """Coherency after any field matrix: M J M^+ .
-
-    Parameters
-    ----------
-    j : (4, ...) ndarray of float64
-        Coherency, W.
-    m11, m12, m21, m22 : (...,) array_like of complex or float
-        The matrix that acts on (E1, E2).
-
-    Returns
-    -------
-    (4, ...) ndarray of float64
-    """
-    a, b = np.asarray(m11, dtype=np.complex128), np.asarray(m12, dtype=np.complex128)
-    c, d = np.asarray(m21, dtype=np.complex128), np.asarray(m22, dtype=np.complex128)
-    j12 = j[2] + 1j * j[3]
-    # First M J, two rows of two; then its product with the adjoint of M.
-    top1, top2 = a * j[0] + b * j12.conj(), a * j12 + b * j[1]
-    low1, low2 = c * j[0] + d * j12.conj(), c * j12 + d * j[1]
-    across = top1 * c.conj() + top2 * d.conj()
-    out = np.empty((4, *across.shape))
-    out[0] = (top1 * a.conj() + top2 * b.conj()).real
-    out[1] = (low1 * c.conj() + low2 * d.conj()).real
-    out[2] = across.real
-    out[3] = across.imag
-    return out
-
-
 def retarder(j: Floats, axis_rad: ArrayLike, phase_rad: ArrayLike) -> Floats:
     """Coherency after a plate that delays one linear component.
 

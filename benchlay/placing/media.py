@@ -31,17 +31,11 @@ class Media:
         if glass is None:
             if isinstance(self._medium, float):
                 return self._medium
-            return 1.0 if self._medium == "vacuum" else _air(wavelength_nm)
+            return 1.0 if self._medium == "vacuum" else float(air_index(wavelength_nm))
         if glass.ratio is not None:
             return glass.ratio * self.index(None, wavelength_nm)
-        material = MATERIALS[glass.name or ""]
-        value = float(material.index(wavelength_nm))
-        return value * _air(wavelength_nm) if material.relative_to_air else value
+        return float(MATERIALS[glass.name or ""].absolute_index(wavelength_nm))
 
     def known(self, glass: Glass, wavelength_nm: float) -> bool:
         """Whether the catalogue covers a wavelength."""
         return not isnan(self.index(glass, wavelength_nm))
-
-
-def _air(wavelength_nm: float) -> float:
-    return float(air_index(wavelength_nm))

@@ -129,16 +129,6 @@ class Mode:
     METAL = 2
 
 
-class Emitter(NamedTuple):
-    """Where one line of one source starts, in one variant."""
-
-    variant: int
-    source: int
-    line: int
-    at: tuple[float, float, float]
-    direction: tuple[float, float, float]
-
-
 class Bulks(NamedTuple):
     """What elements do inside, by volume (E rows: volumes of distinct elements)."""
 

@@ -74,13 +74,6 @@ def _pieces(cut: NDArray[np.object_]) -> Iterator[tuple[Point, Point]]:
         yield (ax, ay), (bx, by)
 
 
-def rings_of(area: BaseGeometry) -> list[list[Point]]:
-    """Return every closed edge of an area, without the repeated last point."""
-    polygons = [p for p in shapely.get_parts(area) if p.geom_type == "Polygon"]
-    rings = [ring for p in polygons for ring in (p.exterior, *p.interiors)]
-    return [[(float(x), float(y)) for x, y in ring.coords[:-1]] for ring in rings]
-
-
 def ticks(layer: str, area: BaseGeometry, every: float, length: float) -> list[Line]:
     """Return short strokes along an area's edge that point to its inside."""
     out: list[Line] = []

@@ -6,7 +6,6 @@ import unicodedata
 from functools import cache
 
 from benchlay.sheets.letter_widths import CAP_HEIGHT, RUNS, UNITS_PER_EM, WIDEST
-from benchlay.sheets.primitives import Across, Point, Text, Up
 
 # ISO 3098-1: heights in steps of root 2; 2,5 for tables, tags and notes, 3,5 for headings,
 # 5 for titles. Nothing on our sheets is lower than the first.
@@ -19,7 +18,6 @@ FONT_FAMILY = "DejaVu Sans Condensed, DejaVu Sans, sans-serif"
 # Another font may be wider; a reader that lacks ours must still keep inside the boxes.
 SLACK = 1.1
 LINE_PITCH = 1.6  # of the height of capitals; ISO 3098 asks for at least 1.4
-_DESCENT = 0.33  # of the height of capitals, measured from the font: g, p, (
 
 _REPLACEMENT = "\N{REPLACEMENT CHARACTER}"
 # Cc control, Cf format (turns of direction hide what is written), Cs lone surrogates,
@@ -89,18 +87,6 @@ def width_mm(text: str, height_mm: float) -> float:
     widths = _widths()
     units = sum(widths.get(letter, WIDEST) for letter in text)
     return SLACK * units * height_mm / CAP_HEIGHT
-
-
-def box_of(text: Text) -> tuple[Point, Point]:
-    """Lower left and upper right corner of a line of lettering about its own place.
-
-    Unturned, relative to `text.at`, in mm on paper.
-    """
-    width, height = width_mm(text.text, text.height_mm), text.height_mm
-    left = {Across.LEFT: 0.0, Across.CENTRE: -width / 2, Across.RIGHT: -width}
-    base = {Up.BASELINE: 0.0, Up.MIDDLE: -height / 2, Up.TOP: -height}
-    x, y = left[text.across], base[text.up]
-    return (x, y - _DESCENT * height), (x + width, y + height)
 
 
 def shorten(text: str, room_mm: float, height_mm: float) -> str:

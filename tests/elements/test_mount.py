@@ -47,11 +47,11 @@ def test_the_default_round_mount(held):
         assert_convex_and_outward(solid)
 
 
-def test_a_thin_lens_is_held_about_its_middle(held):
+def test_the_mount_of_a_lens_begins_in_the_plane_where_the_lens_acts(held):
     box, _, at = held("kind: lens, diameter: 25.4, focal: 100, thickness: 4")
-    assert bounds(box)[0][0] == -14.0
-    assert bounds(box)[1][0] == 2.0
-    assert at == (-6.0, 0.0)
+    assert bounds(box)[0][0] == -16.0
+    assert bounds(box)[1][0] == 0.0
+    assert at == (-8.0, 0.0)
 
 
 @pytest.mark.parametrize(("diameter", "fits"), [(50, True), (50.01, False)])

@@ -8,7 +8,7 @@ def test_a_circle_has_radii_and_no_corners():
     outline = circle(12.7)
     assert outline.round
     assert outline.corners == ()
-    assert outline.radii == outline.half_size == (12.7, 12.7)
+    assert outline.radii == (12.7, 12.7)
     assert outline.centre == (0.0, 0.0)
 
 
@@ -17,13 +17,13 @@ def test_a_rectangle_goes_round_anticlockwise():
     assert not outline.round
     assert outline.corners == ((-10.0, -15.0), (10.0, -15.0), (10.0, 15.0), (-10.0, 15.0))
     assert signed_area(outline.corners) == 600.0
-    assert outline.half_size == (10.0, 15.0)
+    assert outline.radii == (10.0, 15.0)
 
 
 def test_a_rectangle_may_have_its_middle_elsewhere():
     outline = rectangle(2.0, 4.0, (5.0, -1.0))
     assert outline.corners == ((4.0, -3.0), (6.0, -3.0), (6.0, 1.0), (4.0, 1.0))
-    assert outline.half_size == (1.0, 2.0)
+    assert outline.radii == (1.0, 2.0)
 
 
 def test_scaling_keeps_the_middle():

@@ -11,7 +11,7 @@ from hypothesis import strategies as st
 from benchlay.sheets import hatching, letter_widths, lettering, scale, tables
 from benchlay.sheets.frame import frame
 from benchlay.sheets.placing_text import Crowd
-from benchlay.sheets.primitives import Across, Text, Up
+from benchlay.sheets.primitives import Text
 from benchlay.sheets.scale import Window, choose
 from benchlay.sheets.title_block import TitleFields, title_block
 
@@ -32,16 +32,6 @@ def test_widths_are_those_of_the_font():
 def test_a_line_is_as_wide_as_its_letters_with_slack():
     # From the font's file: H is 1540 · 0,9 = 1386 units wide, capitals are 1493 high.
     assert lettering.width_mm("HH", 2.5) == pytest.approx(1.1 * 2 * 1386 / 1493 * 2.5)
-
-
-def test_box_follows_the_anchor():
-    left = Text("TAGS", (0.0, 0.0), "M1", 2.5)
-    for across, share in ((Across.LEFT, 0.0), (Across.CENTRE, 0.5), (Across.RIGHT, 1.0)):
-        (x0, _), (x1, _) = lettering.box_of(left._replace(across=across))
-        assert -x0 == pytest.approx(share * (x1 - x0))
-    (_, low), (_, high) = lettering.box_of(left._replace(up=Up.MIDDLE))
-    assert high == pytest.approx(1.25)
-    assert low < -1.25
 
 
 @settings(max_examples=60, deadline=None)

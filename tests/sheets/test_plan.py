@@ -8,19 +8,22 @@ import trial_bench
 
 from benchlay.sheets.contents import Leg
 from benchlay.sheets.dimensions import figure_box
-from benchlay.sheets.lettering import box_of
+from benchlay.sheets.lettering import width_mm
 from benchlay.sheets.plan import compose
 from benchlay.sheets.primitives import (
+    Across,
     BlockUse,
     Dimension,
     Line,
     Polyline,
     Text,
+    Up,
     to_paper,
 )
 from benchlay.sheets.scale import NothingFitsError, frame_of
 from benchlay.writers import recorder
 
+DESCENT = 0.33  # of the height of capitals, measured from the font: g, p, (
 STRIP_MM = 5.0  # the zones' letters stand outside the frame
 SHEETS = {"A2": compose(trial_bench.picture()), "A3": compose(trial_bench.picture(sheet="A3"))}
 
@@ -28,6 +31,14 @@ SHEETS = {"A2": compose(trial_bench.picture()), "A3": compose(trial_bench.pictur
 @pytest.fixture(params=SHEETS)
 def sheet(request):
     return SHEETS[request.param]
+
+
+def box_of(text):
+    """Lower left and upper right corner of a line of lettering, from `text.at`, mm on paper."""
+    width, height = width_mm(text.text, text.height_mm), text.height_mm
+    x = {Across.LEFT: 0.0, Across.CENTRE: -width / 2, Across.RIGHT: -width}[text.across]
+    y = {Up.BASELINE: 0.0, Up.MIDDLE: -height / 2, Up.TOP: -height}[text.up]
+    return (x, y - DESCENT * height), (x + width, y + height)
 
 
 def boxes(sheet):
