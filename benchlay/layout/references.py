@@ -51,6 +51,14 @@ class References:
             target = source.fed_by.target
             if target.name not in self.names.elements:
                 unknown(target.name, target.span, "element", self.names.elements, self.reader)
+            elif target.name in self.elements and self.elements[target.name].kind != "target":
+                self.reader.complain(
+                    target.span,
+                    f"{quote(target.name)} is a {self.elements[target.name].kind}: no light is "
+                    "coupled in there",
+                    expected="the name of a target",
+                    remedy="put a target where the light is coupled in, and name that",
+                )
         self.reader.path = []
 
     def element(self, element: Element) -> None:

@@ -22,7 +22,11 @@ _LINEWIDTH = Quantity(Dimension.FREQUENCY, above=0.0)
 
 
 class FedBy(Record):
-    """The far end of a fibre or port: where its light was coupled in."""
+    """The far end of a fibre or port: where its light was coupled in.
+
+    A source that states no power emits the share of what lands on the target at its
+    wavelength; that light is booked at the target and emitted anew in a ledger of its own.
+    """
 
     target: Ref = key(RefForm("an element"), meaning="the target the light was coupled in at")
     share: float = key(SHARE, default=1.0, meaning="share of the target's light that comes out")
@@ -118,7 +122,8 @@ class SourceKeys(Emits, Place):
                     expected="'wavelength' with 'power' or 'pulse', or 'lines'",
                     remedy="add 'wavelength: 532'",
                 )
-            self.check_power(reader)
+            if self.fed_by is None or self.power_w is not None or self.pulse is not None:
+                self.check_power(reader)
         for name in ("wavelength", "power", "pulse") if self.several is not None else ():
             if self.written(name):
                 reader.complain(
@@ -174,6 +179,15 @@ class Source(NamedTuple):
     stand: Stand
     span: Span
     spans: dict[str, Span]
+
+    def emitted_w(self) -> float:
+        """Return what it states to emit, its rear leak included, W."""
+        return sum(line.power_w for line in self.lines) + self.rear_leak_w
+
+    def fed(self) -> FedBy | None:
+        """Return what gives it its power, where it states none itself."""
+        stated = any(line.power_w > 0.0 or line.pulse is not None for line in self.lines)
+        return None if stated or "power" in self.spans else self.fed_by
 
 
 def read_source(name: Scalar, node: Node, reader: Reader) -> Source | None:

@@ -9,7 +9,7 @@ from benchlay.elements._kind import Geometry
 from benchlay.elements.mount import Holder
 from benchlay.layout.elements import Element
 from benchlay.layout.layout import Layout, LayoutSource
-from benchlay.layout.light import Line
+from benchlay.layout.light import Line, PulseTrain
 from benchlay.layout.sources import Source
 from benchlay.placing.media import Media
 from benchlay.placing.nominal import NominalRay
@@ -54,12 +54,25 @@ class PlacedState(NamedTuple):
             for made in item.element.record.makes()
         )
 
+    def _pulse_at(self, wavelength_nm: float) -> PulseTrain | None:
+        """Return the strongest pulses of any source at a wavelength, for what is fed by them."""
+        pulses = [
+            line.pulse
+            for item in self.sources.values()
+            for line in item.source.lines
+            if line.pulse is not None and line.wavelength_nm == wavelength_nm
+        ]
+        return max(pulses, key=lambda pulse: pulse.energy_j, default=None)
+
     def lines(self, source: str) -> tuple[Line, ...]:
         """Return the lines of a source, and those that converters may make of its light.
 
         The latter are emitted elsewhere, so with no power of their own, in the source's pulses.
+        What is fed by other light has the pulses of that.
         """
         own = self.sources[source].source.lines
+        if self.sources[source].source.fed() is not None:
+            own = tuple(line._replace(pulse=self._pulse_at(line.wavelength_nm)) for line in own)
         missing = self.made_nm().difference(line.wavelength_nm for line in own)
         if not missing:
             return own

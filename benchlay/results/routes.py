@@ -94,7 +94,10 @@ def ancestry(parent: Ints, beam: int) -> Ints:
 
 def _emitted_w(trace: Trace, variant: int, route: int) -> float:
     first = trace.ways.routes[route].items[0]
-    lines = trace.placed.states[variant].sources[first.name].source.lines
+    source = trace.placed.states[variant].sources[first.name].source
+    if source.fed() is not None:
+        return trace.emitted_w(variant).get(first.name, 0.0)
+    lines = source.lines
     return sum(line.power_w for line in lines if first.wavelength_nm in (None, line.wavelength_nm))
 
 

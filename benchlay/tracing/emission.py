@@ -17,7 +17,7 @@ from benchlay.tracing.front import EMITTED, EXIT, OUTSIDE, Front
 from benchlay.tracing.ways import Ways
 
 
-class _Beam(NamedTuple):
+class Beam(NamedTuple):
     """One beam that a source sends out, forwards or (its rear leak) backwards."""
 
     variant: int
@@ -58,7 +58,11 @@ def emitted(placed: Placed, scene: Scene, ways: Ways) -> Front:
     A rear leak is shared by the lines as their powers are. Its beam has the shape of the main
     one, as it would leave a source that is turned round where its back is.
     """
-    found = _beams(placed, scene)
+    return front_of(_beams(placed, scene), scene, ways)
+
+
+def front_of(found: list[Beam], scene: Scene, ways: Ways) -> Front:
+    """Return beams that leave sources."""
     wave = np.array([beam.wave for beam in found], dtype=np.int64)
     source = np.array([beam.source for beam in found], dtype=np.int64)
     direction = np.array([beam.direction() for beam in found]).reshape(-1, 3)
@@ -89,10 +93,10 @@ def emitted(placed: Placed, scene: Scene, ways: Ways) -> Front:
     )
 
 
-def _beams(placed: Placed, scene: Scene) -> list[_Beam]:
+def _beams(placed: Placed, scene: Scene) -> list[Beam]:
     wave_of = {nm: i for i, nm in enumerate(scene.wavelengths_nm.tolist())}
-    main: list[_Beam] = []
-    leaks: list[_Beam] = []
+    main: list[Beam] = []
+    leaks: list[Beam] = []
     for variant, state in enumerate(placed.states):
         for number, name in enumerate(scene.sources):
             item = state.sources[name]
@@ -100,9 +104,11 @@ def _beams(placed: Placed, scene: Scene) -> list[_Beam]:
                 continue
             lines = sorted(item.source.lines, key=lambda line: line.wavelength_nm)
             total = sum(line.power_w for line in lines)
+            fed = item.source.fed() is not None
             for line in lines:
-                beam = _Beam(variant, number, wave_of[line.wavelength_nm], item, line.power_w)
-                main.append(beam)
+                beam = Beam(variant, number, wave_of[line.wavelength_nm], item, line.power_w)
+                if not fed:
+                    main.append(beam)
                 leak = item.source.rear_leak_w * (line.power_w / total if total else 1 / len(lines))
                 if leak > 0.0:
                     leaks.append(beam._replace(power_w=leak, rear=True))

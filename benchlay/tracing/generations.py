@@ -26,7 +26,8 @@ from benchlay.tracing.coverage import (
     reach_of,
     unclipped_core,
 )
-from benchlay.tracing.front import OUTSIDE, Front, join
+from benchlay.tracing.feeding import Feeding
+from benchlay.tracing.front import OUTSIDE, Front
 from benchlay.tracing.hits import FACE, Hits, inside_hits, nearest
 from benchlay.tracing.run_state import Leg, RunState
 from benchlay.tracing.scattering import follow_scattered
@@ -76,31 +77,40 @@ def run(front: Front, scene: Scene, ways: Ways, floor_w: Floats, placed: Placed)
     floor_w : (L,) ndarray of float64
         Power below which a beam is booked and not followed, W, by wavelength.
     placed : Placed
-        Says where the items stand that scattered light goes on to.
+        Says where items stand that scattered light goes on to, and what feeds sources.
     """
     state = RunState(scene, ways, floor_w)
-    live, waiting = front, list[_Ready]()
+    feeding = Feeding(state, placed)
+    bounded = np.zeros(len(scene.variants), dtype=np.bool_)
+    live: Front | None = front
+    while live is not None:
+        for rest in _exhaust(live, state):
+            bounded[rest.variant] = True
+            # The leg they would have been is not there: they are booked with their parents.
+            state.book(rest.parent - state.count, SINK["below-floor"], -1, rest.power)
+        live = None if bounded.any() else feeding.next()
+    if ways.scatterings:
+        follow_scattered(state, placed, lambda rays: _step(rays, state))
+    traced = _finished(state) if state.legs else _dark(front)
+    return Traced(*traced, bounded)
+
+
+def _exhaust(live: Front, state: RunState) -> list[Front]:
+    """Trace beams to their ends; return what is left where a bound was met."""
+    waiting = list[_Ready]()
     for _ in range(MOST_BATCHES):
         if state.count > MOST_BEAMS or not (len(live) or waiting):
             break
         if sum(len(ready.reach) for ready in waiting) > _MANY * len(live):
             born, waiting = _advance(_joined(waiting), state, cutting=True), []
-            live = join([live, born])
+            live = Front.joined([live, born])
             continue
         ready, wanted = _meet(live, state)
         if wanted.any():
             waiting.append(ready.take(wanted.nonzero()[0]))
             ready = ready.take((~wanted).nonzero()[0])
         live = _advance(ready, state, cutting=False)
-    bounded = np.zeros(len(scene.variants), dtype=np.bool_)
-    for rest in (live, *(ready.front for ready in waiting)):
-        bounded[rest.variant] = True
-        # The leg they would have been is not there: they are booked with their parents.
-        state.book(rest.parent - state.count, SINK["below-floor"], -1, rest.power)
-    if ways.scatterings:
-        follow_scattered(state, placed, lambda rays: _step(rays, state))
-    traced = _finished(state) if state.legs else _dark(front)
-    return Traced(*traced, bounded)
+    return [live, *(ready.front for ready in waiting)]
 
 
 def _step(front: Front, state: RunState) -> Front:
@@ -114,7 +124,7 @@ def _step(front: Front, state: RunState) -> Front:
 
 def _joined(parts: list[_Ready]) -> _Ready:
     return _Ready(
-        join([part.front for part in parts]),
+        Front.joined([part.front for part in parts]),
         Hits.joined([part.hits for part in parts]),
         np.concatenate([part.moments for part in parts], axis=1),
         np.concatenate([part.reach for part in parts]),
@@ -134,9 +144,9 @@ def _meet(front: Front, state: RunState) -> tuple[_Ready, Flags]:
     front = front.take(order) if first else front
     parts = []
     if first:
-        parts.append(inside_hits(front.part(slice(0, first)), scene))
+        parts.append(inside_hits(front.take(slice(0, first)), scene))
     if first < len(order):
-        free = front.part(slice(first, None))
+        free = front.take(slice(first, None))
         hits, faces, passed = nearest(free, scene)
         parts.append(hits)
     hits = Hits.joined(parts)
@@ -184,7 +194,7 @@ def _advance(ready: _Ready, state: RunState, *, cutting: bool) -> Front:
     )
     born = children(core, hits, divided.spills, state)
     state.count += len(power)
-    return born if made is None else join([born, made])
+    return born if made is None else Front.joined([born, made])
 
 
 def _after_passage(front: Front, length: Floats, state: RunState) -> tuple[Front, Front | None]:
@@ -218,7 +228,7 @@ def _dark(front: Front) -> tuple[Beams, Ledger]:
 
 def _finished(state: RunState) -> tuple[Beams, Ledger]:
     fronts, hits, places, coherencies, kept, cores = zip(*state.legs, strict=True)
-    start, met = join(list(fronts)), Hits.joined(list(hits))
+    start, met = Front.joined(list(fronts)), Hits.joined(list(hits))
     on_face = met.kind == FACE
     row = np.where(on_face, met.row, 0)
     table = state.scene.faces.unstated

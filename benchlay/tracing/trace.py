@@ -12,7 +12,7 @@ from benchlay.scene.compile import compile_scene
 from benchlay.scene.tables import Flags, Floats, Ints, Scene
 from benchlay.tracing.beams import Beams, Ledger
 from benchlay.tracing.emission import emitted
-from benchlay.tracing.front import SCATTERED
+from benchlay.tracing.front import EMITTED, SCATTERED
 from benchlay.tracing.generations import run
 from benchlay.tracing.ways import Ways, ways_of
 
@@ -56,10 +56,17 @@ class Trace(NamedTuple):
         """Return what each source emits in a variant, its rear leak included, W."""
         state = self.placed.states[variant]
         return {
-            name: sum(line.power_w for line in item.source.lines) + item.source.rear_leak_w
+            name: self._given_w(variant, name) if item.source.fed() else item.source.emitted_w()
             for name, item in state.sources.items()
             if not item.source.stand.out
         }
+
+    def _given_w(self, variant: int, source: str) -> float:
+        """Return what a source gave that other light feeds, W."""
+        start = self.beams.start
+        mine = (start.event == EMITTED) & (start.variant == variant)
+        mine &= start.source == self.scene.sources.index(source)
+        return float(start.power[mine].sum())
 
 
 def trace(placed: Placed, floor_w: Mapping[float, float]) -> Trace:

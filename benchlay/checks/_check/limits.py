@@ -2,12 +2,11 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 from typing import NamedTuple, TypeAlias
 
 from benchlay.exposure import AccessibleLimit, OutOfRange, Pulse, accessible_limit
-from benchlay.layout.light import PulseTrain
-from benchlay.layout.sources import Source
+from benchlay.layout.light import Line, PulseTrain
 from benchlay.placing.placed import Placed, PlacedState
 
 # Contract of the language: the floor is never more than this share of what a line emits.
@@ -41,20 +40,20 @@ def limits_of(placed: Placed) -> Limits:
     for variant, state in enumerate(placed.states):
         base_s = state.layout.limits.time_base_s
         for name in sorted(state.sources):
-            source = state.sources[name].source
+            lines = state.lines(name)
             for nm in waves:
-                question = (nm, base_s, _pulses(source, nm))
+                question = (nm, base_s, _pulses(lines, nm))
                 if question not in known:
                     known[question] = _limit(*question)
                 found[variant, name, nm] = known[question]
     return found
 
 
-def _pulses(source: Source, wavelength_nm: float) -> PulseTrain | None:
+def _pulses(lines: Sequence[Line], wavelength_nm: float) -> PulseTrain | None:
     """Return the pulses of a source's light at a wavelength; None for continuous light."""
-    own = [line for line in source.lines if line.wavelength_nm == wavelength_nm]
-    lines = own or sorted(source.lines, key=lambda line: -line.power_w)
-    return next((line.pulse for line in lines if line.pulse is not None), None)
+    own = [line for line in lines if line.wavelength_nm == wavelength_nm]
+    some = own or sorted(lines, key=lambda line: -line.power_w)
+    return next((line.pulse for line in some if line.pulse is not None), None)
 
 
 def _limit(wavelength_nm: float, base_s: float | None, pulse: PulseTrain | None) -> LineLimit:
