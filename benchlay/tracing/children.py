@@ -10,7 +10,7 @@ from benchlay.optics.rays import dot
 from benchlay.optics.turning import turn
 from benchlay.scene.tables import SINK, Floats, Ints, Scene
 from benchlay.tracing.faces import Meeting, divide, plane_of_incidence
-from benchlay.tracing.front import OUTSIDE, REFLECTED, SPILLED, TRANSMITTED, Front, join
+from benchlay.tracing.front import OUTSIDE, REFLECTED, SPILLED, TRANSMITTED, Front
 from benchlay.tracing.hits import FACE, NOTHING, SOLID, Hits
 from benchlay.tracing.returning import returned
 from benchlay.tracing.run_state import RunState
@@ -182,7 +182,7 @@ def _divided(core: Front, face: Ints, rows: Ints, state: RunState, *, spilled: b
         splits=both.splits + ~meant,
     )
     for child, columns in ((parts.reflected, slice(0, count)), (parts.transmitted, beyond)):
-        half = both.part(columns)
+        half = both.take(columns)
         half.set(
             direction=child.direction,
             axis=child.axis,
@@ -230,7 +230,7 @@ def _living(born: list[Front], core: Front, state: RunState) -> Front:
     """Book children under the floor; return the others."""
     if not born:
         return core.take(np.zeros(0, dtype=np.int64))
-    all_born = join(born)
+    all_born = Front.joined(born)
     power = all_born.power
     alive = power >= state.floor_w[all_born.wave]
     dead = (~alive & (power > 0.0)).nonzero()[0]

@@ -8,7 +8,7 @@ from benchlay.optics import moments
 from benchlay.optics.rays import bench_basis, dot
 from benchlay.scene.tables import SINK, Floats, Ints
 from benchlay.tracing.emission import coherency_of
-from benchlay.tracing.front import CONVERTED, TRANSMITTED, Front, join
+from benchlay.tracing.front import CONVERTED, TRANSMITTED, Front
 from benchlay.tracing.run_state import RunState
 
 
@@ -38,7 +38,7 @@ def converted(front: Front, rows: Ints, length_mm: Floats, state: RunState) -> t
         light = _light(front.take(mine), product, 0.5 * length_mm[mine], state)
         light.set(parent=rows[mine] + state.count)
         made.append(light)
-    return kept, _followed(join(made), state)
+    return kept, _followed(Front.joined(made), state)
 
 
 def _followed(light: Front, state: RunState) -> Front:

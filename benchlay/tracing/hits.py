@@ -15,6 +15,7 @@ from benchlay.optics.rays import dot
 from benchlay.scene.tables import Flags, Floats, Ints, Scene
 from benchlay.tracing.bodies import PARALLEL, Passing, pairs, passing, planes_met, through_holes
 from benchlay.tracing.front import Front
+from benchlay.tracing.packed import FloatColumn, IntColumn, Packed
 
 SKIN_MM = 1e-7  # an optic is not met again nearer than this to where it was left
 _TOUCH_MM = 1e-9
@@ -22,43 +23,18 @@ _TOUCH_MM = 1e-9
 NOTHING, FACE, SOLID = 0, 1, 2
 
 
-class Hits:
-    """What is met first by each of B beams, packed as `Front` is.
+class Hits(Packed):
+    """What is met first by each of B beams."""
 
-    Attributes
-    ----------
-    kind, row : (B,) ndarray of int
-        `NOTHING`, `FACE` or `SOLID`, and the row of the face or solid.
-    plane : (B,) ndarray of int
-        Bounding plane by which a solid is entered, -1 where it is round there or nothing of
-        the kind was met.
-    distance : (B,) ndarray of float64
-        mm.
-    slope : (B,) ndarray of float64
-        Direction . face normal.
-    left, up : (B,) ndarray of float64
-        On the face, from the middle of the outline, mm.
-    """
+    __slots__ = ()
 
-    __slots__ = ("floats", "ints")
-
-    def __init__(self, ints: Ints, floats: Floats) -> None:
-        self.ints = ints
-        self.floats = floats
-
-    def take(self, rows: Ints | slice) -> Hits:
-        """Return the hits of some beams."""
-        return Hits(self.ints[:, rows], self.floats[:, rows])
-
-    @staticmethod
-    def joined(parts: list[Hits]) -> Hits:
-        """Return the hits of several sets of beams as one."""
-        if len(parts) == 1:
-            return parts[0]
-        return Hits(
-            np.concatenate([part.ints for part in parts], axis=1),
-            np.concatenate([part.floats for part in parts], axis=1),
-        )
+    kind = IntColumn(0)  # `NOTHING`, `FACE` or `SOLID`
+    row = IntColumn(1)  # of the face or solid
+    plane = IntColumn(2)  # by which a solid is entered; -1 where it is round, or not one
+    distance = FloatColumn(0)  # mm
+    slope = FloatColumn(1)  # direction . face normal
+    left = FloatColumn(2)  # on the face, from the middle of the outline, mm
+    up = FloatColumn(3)
 
     def owner(self, scene: Scene) -> Ints:
         """Return the elements (B,) whose faces are met, -2 where none is."""
@@ -66,41 +42,6 @@ class Hits:
         on_face = self.kind == FACE
         owner[on_face] = scene.faces.owner[self.row[on_face]]
         return owner
-
-    @property
-    def kind(self) -> Ints:  # noqa: D102 (see the class)
-        value: Ints = self.ints[0]
-        return value
-
-    @property
-    def row(self) -> Ints:  # noqa: D102 (see the class)
-        value: Ints = self.ints[1]
-        return value
-
-    @property
-    def plane(self) -> Ints:  # noqa: D102 (see the class)
-        value: Ints = self.ints[2]
-        return value
-
-    @property
-    def distance(self) -> Floats:  # noqa: D102 (see the class)
-        value: Floats = self.floats[0]
-        return value
-
-    @property
-    def slope(self) -> Floats:  # noqa: D102 (see the class)
-        value: Floats = self.floats[1]
-        return value
-
-    @property
-    def left(self) -> Floats:  # noqa: D102 (see the class)
-        value: Floats = self.floats[2]
-        return value
-
-    @property
-    def up(self) -> Floats:  # noqa: D102 (see the class)
-        value: Floats = self.floats[3]
-        return value
 
 
 class FacesMet(NamedTuple):

@@ -14,7 +14,7 @@ import numpy as np
 from benchlay.optics.rays import bench_basis
 from benchlay.placing.placed import Placed
 from benchlay.scene.tables import Ints
-from benchlay.tracing.front import OUTSIDE, SCATTERED, Front, join
+from benchlay.tracing.front import OUTSIDE, SCATTERED, Front
 from benchlay.tracing.hits import FACE
 from benchlay.tracing.run_state import Leg, RunState
 from benchlay.tracing.ways import Scattering
@@ -40,7 +40,7 @@ def _scattered(leg: Leg, first: int, state: RunState, placed: Placed) -> Front |
         for scattering in state.ways.scatterings
         for rows in _where(leg, scattering, state)
     ]
-    return join(born) if born else None
+    return Front.joined(born) if born else None
 
 
 def _where(leg: Leg, scattering: Scattering, state: RunState) -> Iterator[Ints]:
