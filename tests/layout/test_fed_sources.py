@@ -17,7 +17,9 @@ elements:
 
 def _far(keys):
     source, problems = read_layout(TEXT.format(keys=keys), "b.yaml")
-    return source and source.layouts["as drawn"].sources["far"], [p.message for p in problems.sorted()]
+    return source and source.layouts["as drawn"].sources["far"], [
+        p.message for p in problems.sorted()
+    ]
 
 
 def test_it_need_not_state_its_power():
@@ -27,7 +29,9 @@ def test_it_need_not_state_its_power():
     assert far.fed().target.name == "T"
 
 
-@pytest.mark.parametrize("stated", ["power: 2 mW", "pulse: {energy: 1 mJ, duration: 8 ns, rate: 9 Hz}"])
+@pytest.mark.parametrize(
+    "stated", ["power: 2 mW", "pulse: {energy: 1 mJ, duration: 8 ns, rate: 9 Hz}"]
+)
 def test_what_it_states_holds(stated):
     far, problems = _far(f"{stated}, fed_by: {{target: T}}")
     assert problems == []
