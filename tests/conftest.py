@@ -62,14 +62,6 @@ def make_review():
             findings=tuple(findings),
             checks=(CheckRun("escape", "as drawn", True),),
             limits_used=(LimitUsed(532.0, 100.0, 10.0, 7.0, 0.000385, "IEC 60825-1:2014", False),),
-            routes=(),
-            ledger=(),
-            zones=(),
-            coverage=(),
-            panels=(),
-            cavities=(),
-            matched=(),
-            handed_over=(),
             lines=("elements:", "  W1: {kind: window}"),
         )
         return whole._replace(**fields)

@@ -6,7 +6,7 @@ import math
 import re
 from collections.abc import Mapping as AbstractMapping
 from enum import Enum
-from typing import Any, Generic, TypeVar
+from typing import Any, ClassVar, Generic, TypeVar
 
 from benchlay.document.form import Form, Reader, show_plainly
 from benchlay.document.nodes import Node, Scalar
@@ -239,7 +239,7 @@ class YesNo(Words[bool]):
     def __init__(self) -> None:
         super().__init__({"yes": True, "no": False})
 
-    _ALSO = {"true": True, "false": False, "on": True, "off": False}  # noqa: RUF012
+    _ALSO: ClassVar[dict[str, bool]] = {"true": True, "false": False, "on": True, "off": False}
 
     def value(self, node: Scalar, reader: Reader) -> bool | None:
         """Look the word up, whatever its case."""

@@ -69,7 +69,9 @@ class References:
             self._path_item(item)
         goal = element.record.leads_to()
         if isinstance(goal, str):
-            self._goal(element.name, Ref(goal, element.record.span_of("to")))
+            self._another(
+                "to", element.name, Ref(goal, element.record.span_of("to")), "name what it leads to"
+            )
         material = getattr(element.record, "material", None)
         if isinstance(material, str):
             self._material(Ref(material, element.record.span_of("material")))
@@ -119,30 +121,22 @@ class References:
 
     def _stand(self, own: str, stand: Stand) -> None:
         for key, target in (("facing", stand.facing), ("aim", stand.aim)):
-            if not isinstance(target, Ref):
-                continue
-            if target.name == own:
-                self.reader.complain(
-                    target.span,
-                    f"'{key}' names {quote(own)} itself",
-                    expected=f"another {THING}, or a point",
-                    remedy="name what it is to look at",
-                )
-            elif target.name not in self.names.things:
-                unknown(target.name, target.span, THING, self.names.things, self.reader)
+            if isinstance(target, Ref):
+                self._another(key, own, target, "name what it is to look at")
         if stand.in_opening is not None:
             self._opening(*stand.in_opening)
 
-    def _goal(self, own: str, goal: Ref) -> None:
-        if goal.name == own:
+    def _another(self, key: str, own: str, ref: Ref, remedy: str) -> None:
+        """Check the name of a source or element that may not be the item's own."""
+        if ref.name == own:
             self.reader.complain(
-                goal.span,
-                f"'to' names {quote(own)} itself",
+                ref.span,
+                f"'{key}' names {quote(own)} itself",
                 expected=f"another {THING}, or a point",
-                remedy="name what it leads to",
+                remedy=remedy,
             )
-        elif goal.name not in self.names.things:
-            unknown(goal.name, goal.span, THING, self.names.things, self.reader)
+        elif ref.name not in self.names.things:
+            unknown(ref.name, ref.span, THING, self.names.things, self.reader)
 
     def _opening(self, panel: str, opening: str, span: Span) -> None:
         panels = self.names.panels

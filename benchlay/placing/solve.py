@@ -7,6 +7,7 @@ from benchlay.elements._kind import Geometry
 from benchlay.elements.mount import holder
 from benchlay.layout.elements import Element
 from benchlay.layout.layout import Layout, LayoutSource
+from benchlay.layout.names import AS_DRAWN
 from benchlay.layout.sources import Source
 from benchlay.placing.arrivals import Arrivals, Unplaceable
 from benchlay.placing.media import Media
@@ -132,15 +133,15 @@ def place(layouts: LayoutSource, problems: Problems) -> Placed | None:
     Poses are solved once, for the bench as drawn and with offsets and errors at rest. A
     state that sets a pose key re-solves that item alone, from the nominal ray.
     """
-    base_layout = layouts.layouts["as drawn"]
+    base_layout = layouts.as_drawn
     solver = Solver(base_layout, problems)
     solver.solve_all()
     if problems:
         return None
-    base = _state("as drawn", base_layout, solver, None)
+    base = _state(AS_DRAWN, base_layout, solver, None)
     states = [base]
     for name, layout in layouts.layouts.items():
-        if name != "as drawn":
+        if name != AS_DRAWN:
             states.append(_state(name, layout, solver, base))
     if problems:
         return None

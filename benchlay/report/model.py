@@ -106,14 +106,14 @@ class Review(NamedTuple):
     findings: tuple[Reported, ...]
     checks: tuple[CheckRun, ...]
     limits_used: tuple[LimitUsed, ...]
-    routes: tuple[RouteResult, ...]
-    ledger: tuple[Ledger, ...]
-    zones: tuple[Zone, ...]
-    coverage: tuple[Coverage, ...]
-    panels: tuple[PanelLoad, ...]
-    cavities: tuple[Cavity, ...]
-    matched: tuple[Match, ...]
-    handed_over: tuple[HandedOver, ...]
+    routes: tuple[RouteResult, ...] = ()
+    ledger: tuple[Ledger, ...] = ()
+    zones: tuple[Zone, ...] = ()
+    coverage: tuple[Coverage, ...] = ()
+    panels: tuple[PanelLoad, ...] = ()
+    cavities: tuple[Cavity, ...] = ()
+    matched: tuple[Match, ...] = ()
+    handed_over: tuple[HandedOver, ...] = ()
     not_computed: tuple[str, ...] = ()
     lines: tuple[str, ...] = ()
 

@@ -83,14 +83,6 @@ def review(checked: Checked, paper: Paper, on: date, *, in_full: bool) -> Review
         findings=judged.findings,
         checks=judged.runs,
         limits_used=limits_used(trace.placed, checked.limits, checked.states),
-        routes=(),
-        ledger=(),
-        zones=(),
-        coverage=(),
-        panels=(),
-        cavities=(),
-        matched=(),
-        handed_over=(),
         lines=paper.lines,
     )
     if not in_full:

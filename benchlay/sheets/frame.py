@@ -31,7 +31,8 @@ def rectangle(layer: str, window: Window) -> Polyline:
 def frame(size_name: str, size_mm: Point) -> Iterator[Primitive]:
     """Draw the frame of a sheet, with the sheet's size in the lower margin."""
     inner = frame_of(size_mm)
-    strip = Window(*(_outwards(n, v) for n, v in enumerate(inner)))
+    left, low, right, high = inner
+    strip = Window(left - _STRIP_MM, low - _STRIP_MM, right + _STRIP_MM, high + _STRIP_MM)
     yield rectangle("SHEET", inner)
     yield rectangle("TITLE", strip)
     yield from _centring_marks(inner, size_mm)
@@ -39,10 +40,6 @@ def frame(size_name: str, size_mm: Point) -> Iterator[Primitive]:
     yield from _letters(inner, strip)
     at = (inner.right, strip.low - 1.0)
     yield Text("TITLE", at, size_name, SMALL_MM, Across.RIGHT, Up.TOP)
-
-
-def _outwards(side: int, value: float) -> float:
-    return value - _STRIP_MM if side < 2 else value + _STRIP_MM  # noqa: PLR2004
 
 
 def _centring_marks(inner: Window, size_mm: Point) -> Iterator[Line]:

@@ -15,6 +15,7 @@ from benchlay.sheets.primitives import (
     Point,
     Polyline,
     Primitive,
+    Shape,
     Sheet,
     Space,
     Text,
@@ -101,23 +102,30 @@ def _ranked(primitives: Iterable[Primitive], rank: dict[str, int]) -> list[Primi
 
 
 def _send_one(primitive: Primitive, backend: Backend) -> None:
-    match primitive:  # flat: one line a primitive
-        case Line():
-            backend.line(primitive)
-        case Arc():
-            backend.arc(primitive)
-        case Circle():
-            backend.circle(primitive)
-        case Polyline():
-            backend.polyline(primitive)
-        case Fill():
-            backend.fill(primitive)
+    match primitive:
         case Text():
             backend.text(primitive)
         case Dimension():
             backend.dimension(primitive)
         case BlockUse():
             backend.block_use(primitive)
+        case _:
+            send_shape(primitive, backend)
+
+
+def send_shape(shape: Shape, backend: Backend) -> None:
+    """Hand on one of the primitives that blocks are made of."""
+    match shape:
+        case Line():
+            backend.line(shape)
+        case Arc():
+            backend.arc(shape)
+        case Circle():
+            backend.circle(shape)
+        case Polyline():
+            backend.polyline(shape)
+        case Fill():
+            backend.fill(shape)
 
 
 def checked_polyline(polyline: Polyline) -> Polyline:
@@ -128,7 +136,7 @@ def checked_polyline(polyline: Polyline) -> Polyline:
     ValueError
         With fewer than two points, or with bulges that do not go with the points.
     """
-    if len(polyline.points) < 2:  # noqa: PLR2004
+    if len(polyline.points) < 2:  # noqa: PLR2004 (a line)
         msg = f"a polyline needs two points or more, got {len(polyline.points)}"
         raise ValueError(msg)
     if polyline.bulges and len(polyline.bulges) != len(polyline.points):

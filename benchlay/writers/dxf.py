@@ -43,7 +43,7 @@ from benchlay.sheets.primitives import (
     measured,
     to_model,
 )
-from benchlay.writers.backend import checked_fill, checked_polyline, send
+from benchlay.writers.backend import checked_fill, checked_polyline, send, send_shape
 from benchlay.writers.dimension_lines import take_apart
 from benchlay.writers.dxf_setup import DIMSTYLE, LETTERING, NAME, document
 from benchlay.writers.dxf_text import rounded, safe_markup, safe_text
@@ -135,7 +135,7 @@ class DxfBackend:
     def fill(self, fill: Fill) -> None:
         """See `Backend`."""
         corners = [self._at(point) for point in checked_fill(fill)]
-        if len(corners) > 3:  # noqa: PLR2004
+        if len(corners) > 3:  # noqa: PLR2004 (a quadrilateral)
             # SOLID takes its corners in the order of a bow tie.
             corners[2], corners[3] = corners[3], corners[2]
         self._into.add_solid(corners, {"layer": fill.layer})
@@ -197,17 +197,7 @@ class DxfBackend:
         self._into = self._doc.blocks.new(block.name)
         self._paper = False
         for shape in block.primitives:
-            match shape:
-                case Line():
-                    self.line(shape)
-                case Arc():
-                    self.arc(shape)
-                case Circle():
-                    self.circle(shape)
-                case Polyline():
-                    self.polyline(shape)
-                case Fill():
-                    self.fill(shape)
+            send_shape(shape, self)
         for tag in self._tags_of(block.name):
             definition = self._into.add_attdef(
                 tag, (0.0, 0.0), "", dxfattribs=self._data_look(block.primitives[0].layer)

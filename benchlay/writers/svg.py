@@ -31,7 +31,7 @@ from benchlay.sheets.primitives import (
     Text,
     Up,
 )
-from benchlay.writers.backend import checked_fill, checked_polyline, send
+from benchlay.writers.backend import checked_fill, checked_polyline, send, send_shape
 from benchlay.writers.dimension_lines import take_apart
 
 _DECIMALS = 4  # a tenth of a micrometre on paper
@@ -78,7 +78,7 @@ class SvgBackend:
         """See `Backend`."""
         start = _polar(arc.centre, arc.radius, arc.from_deg)
         end = _polar(arc.centre, arc.radius, arc.to_deg)
-        large = int((arc.to_deg - arc.from_deg) % 360.0 > 180.0)  # noqa: PLR2004
+        large = int((arc.to_deg - arc.from_deg) % 360.0 > 180.0)  # noqa: PLR2004 (half a turn)
         step = self._arc_to(end, arc.radius, large, anticlockwise=True)
         path = f"M{_pair(self._on_page(start))}{step}"
         self._add(arc.layer, self._drawing.path(d=path))
@@ -151,21 +151,10 @@ class SvgBackend:
 
     def _draw_shapes(self, block: Block, layer: str) -> None:
         for shape in block.primitives:
-            if shape.layer != layer:
-                continue
-            match shape:
-                case Line():
-                    self.line(shape)
-                case Arc():
-                    self.arc(shape)
-                case Circle():
-                    self.circle(shape)
-                case Polyline():
-                    self.polyline(shape)
-                case Fill():
-                    self.fill(shape)
+            if shape.layer == layer:
+                send_shape(shape, self)
 
-    def _add(self, layer: str, element: Any) -> None:  # noqa: ANN401
+    def _add(self, layer: str, element: Any) -> None:  # noqa: ANN401 - svgwrite has no types
         target = self._groups[layer] if self._target is None else self._target
         target.add(element)
 
@@ -199,7 +188,7 @@ class SvgBackend:
         return path + ("Z" if polyline.closed else "")
 
 
-def _page(sheet: Sheet) -> Any:  # noqa: ANN401
+def _page(sheet: Sheet) -> Any:  # noqa: ANN401 - svgwrite has no types
     width, height = (_number(side) for side in sheet.size_mm)
     drawing = svgwrite.Drawing(
         size=(f"{width}mm", f"{height}mm"),
@@ -231,7 +220,7 @@ def _style(width: str, height: str) -> str:
     )
 
 
-def _group(drawing: Any, layer: Layer) -> Any:  # noqa: ANN401
+def _group(drawing: Any, layer: Layer) -> Any:  # noqa: ANN401 - svgwrite has no types
     """Return the group of one layer; everything in it takes its looks from here."""
     group = drawing.g(id=layer.name)
     group.attribs.update(
@@ -252,7 +241,7 @@ def _group(drawing: Any, layer: Layer) -> Any:  # noqa: ANN401
     return group
 
 
-def _marked(group: Any, use: BlockUse) -> Any:  # noqa: ANN401
+def _marked(group: Any, use: BlockUse) -> Any:  # noqa: ANN401 - svgwrite has no types
     """Put a block's data on its group, for programs and for the pointer that rests on it."""
     for key, value in use.attributes:
         name = key.lower().replace("_", "-")

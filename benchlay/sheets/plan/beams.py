@@ -164,7 +164,7 @@ def _envelope(leg: Leg, field: Window) -> Iterator[Primitive]:
     """Draw the 1/e2 radius on either side of a leg, as far as it is on the sheet."""
     length = math.dist(leg.start[:2], leg.end[:2])
     space = math.dist(leg.start, leg.end)
-    if len(leg.radii_mm) < 2 or length == 0.0:  # noqa: PLR2004
+    if len(leg.radii_mm) < 2 or length == 0.0:  # noqa: PLR2004 (start and end)
         return
     ux, uy = _along((leg.start[:2], leg.end[:2]))
     flat = length / space  # a climbing leg is shorter from above
