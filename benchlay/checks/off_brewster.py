@@ -99,7 +99,8 @@ def check(context: Context, variant: int) -> Iterator[Finding]:
     for beam in rows[beams.end_kind[rows] == FACE].tolist():
         face = int(beams.end_row[beam])
         name = scene.elements[int(scene.faces.owner[face])]
-        meant = elements[name].element.stand.incidence == _BREWSTER
+        element = elements[name].element
+        meant = element.stand.incidence == _BREWSTER or element.record.needs_line()
         if meant and scene.faces.mode[face, beams.start.wave[beam]] == Mode.BARE:
             loss = _loss(context, beam, face)
             if above(loss, _LOSS):

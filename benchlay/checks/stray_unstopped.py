@@ -67,12 +67,11 @@ from benchlay.checks._check import (
     unjudged,
     wavelength_text,
 )
-from benchlay.elements._kind import Acts
 from benchlay.findings import Finding, Severity
 from benchlay.optics.rays import dot
 from benchlay.scene.tables import PARTS, SINK, SINKS, Floats
 from benchlay.tracing.beams import SOLID
-from benchlay.tracing.front import EVENTS, OUTSIDE
+from benchlay.tracing.front import EVENTS, OUTSIDE, REFLECTED
 
 NAME = "stray-unstopped"
 
@@ -155,9 +154,7 @@ def _stops(context: Context, variant: int, first: int, sink: int, name: int) -> 
     if item is None or not item.element.record.BLOCKS:
         return False
     # Of what stops strays only a tube has no face made for it: its body is what stops them.
-    return all(face.acts is Acts.PASSES for face in item.geometry.faces) and not any(
-        solid.part == "plate" for solid in item.geometry.solids
-    )
+    return item.geometry.barrel == "body"
 
 
 def _items_of_routes_left(context: Context, first: int) -> set[str]:
@@ -189,7 +186,7 @@ def _finding(
             f"at most {power_text(limit)} that ends elsewhere than on a dump, screen, closed "
             "shutter, panel, lid or tube"
         ),
-        remedy=_remedy(context, variant, worst),
+        remedy=_remedy(context, worst),
         element=element,
         beam=int(context.numbers[worst.beam]),
         at=context.end_at(worst.beam),
@@ -223,15 +220,13 @@ def _where(context: Context, group: _Group, beam: int, name: str | None) -> str:
     return f"ends on {place_words(sink, name, part)}{other}"
 
 
-def _remedy(context: Context, variant: int, worst: _Landing) -> str:
+def _remedy(context: Context, worst: _Landing) -> str:
     """Say how to stop it, and where on its last leg there is room for that."""
     beams, beam = context.trace.beams, worst.beam
+    spot = _free_spot(context, beam)
+    if spot is None:
+        return _out_of_the_way(context, worst)
     k = beams.start.direction[beam]
-    length = min(float(beams.length[beam]), _near_enough(context))
-    spot = beams.start.position[beam] + 0.5 * length * k
-    if _from_working_beams(context, variant, spot, beam) < _ROOM_MM:
-        back = context.left_name(worst.since)
-        return f"turn '{back}' so that the light leaves the way of the beams, and stop it there"
     x, y, z = context.point(spot)
     place = f"stop it with a dump or screen, for instance at [{x:.0f}, {y:.0f}, {z:.0f}]"
     if float(np.hypot(k[0], k[1])) < _UPRIGHT:
@@ -239,11 +234,36 @@ def _remedy(context: Context, variant: int, worst: _Landing) -> str:
     return f"{place} with `facing: {round(degrees(atan2(-k[1], -k[0]))) % 360}`"
 
 
-def _from_working_beams(context: Context, variant: int, spot: Floats, beam: int) -> float:
-    """Return how far a place is from the nearest leg that a route needs, mm."""
+def _out_of_the_way(context: Context, worst: _Landing) -> str:
+    """Say what to do where a stop would stand in a working beam all along the leg."""
+    start, first = context.trace.beams.start, worst.since
+    back = context.left_name(first)
+    turn = f"turn '{back}' so that the light leaves the way of the beams, and stop it there"
+    face = int(start.face[first])
+    ghost = face >= 0 and start.event[first] == REFLECTED
+    if not ghost or context.trace.ways.main[face, 0]:
+        return turn
+    side = context.trace.scene.face_names[context.trace.scene.faces.name[face]]
+    nm = wavelength_text(context.wavelength_nm(first))
+    return f"give the {side} of '{back}' a coating that reflects less at {nm}, or {turn}"
+
+
+def _free_spot(context: Context, beam: int) -> Floats | None:
+    """Return a place on a leg with room for a stop beside the working beams of all states."""
+    start, length = context.trace.beams.start, float(context.trace.beams.length[beam])
+    near = min(length, _near_enough(context))
+    for way in (0.5 * near, 0.75 * near, 0.9 * near, 0.25 * near):
+        spot: Floats = start.position[beam] + way * start.direction[beam]
+        if _from_working_beams(context, spot, beam) >= _ROOM_MM:
+            return spot
+    return None
+
+
+def _from_working_beams(context: Context, spot: Floats, beam: int) -> float:
+    """Return how far a place is from the nearest leg that a route needs in any state, mm."""
     beams = context.trace.beams
-    rows = context.beams_of(variant)
-    rows = rows[context.routes.working[rows] & (rows != beam)]
+    rows = np.flatnonzero(context.routes.working)
+    rows = rows[rows != beam]
     if not len(rows):
         return float("inf")
     away = spot - beams.start.position[rows]
