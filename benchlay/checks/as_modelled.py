@@ -66,6 +66,8 @@ def check(context: Context, variant: int) -> Iterator[Finding]:
                 "equal radii",
                 "know where they come to a focus only as far as the true radii agree",
             )
+        for what, remedy in item.element.record.simplified():
+            yield _note(context, variant, name, f"'{name}' {what}", remedy)
         glass = item.geometry.glass
         if glass is not None and glass.name in MATERIALS:
             known = MATERIALS[glass.name].note

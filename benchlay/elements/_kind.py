@@ -188,6 +188,8 @@ class ElementKind(Record):
     """For a kind that is read but not traced yet: what to tell the user."""
     TURNS_FRONT: ClassVar[bool] = False
     """Whether `turn` and `aim` make sense: the front reflects what is meant to go on."""
+    STEERS: ClassVar[bool] = True
+    """Whether turning it turns what it reflects (a corner cube's stays as it was)."""
     SQUARE: ClassVar[bool] = False
     """Whether it faces the ray squarely by default, pitch included (targets and dumps)."""
     MOUNTED: ClassVar[bool] = True
@@ -216,6 +218,10 @@ class ElementKind(Record):
 
     def makes(self) -> tuple[Made, ...]:
         """Return the light of other wavelengths that it makes."""
+        return ()
+
+    def simplified(self) -> tuple[tuple[str, str], ...]:
+        """Return what of it is modelled more simply than it is, each with what to do about it."""
         return ()
 
     def needs_line(self) -> bool:

@@ -47,6 +47,7 @@ class Retroreflector(ElementKind):
     KIND = "retroreflector"
     BRANCHES: ClassVar[Branches] = {"reflected": ((("front", "reflected"),),)}
     DEFAULT_BRANCH = "reflected"
+    STEERS = False
 
     diameter_mm: float = key(LENGTH, name="diameter", meaning="of its opening")
     glass: Glass | None = key(GLASS, default=None, meaning="the glass; hollow without")
@@ -78,6 +79,18 @@ class Retroreflector(ElementKind):
                 Stroke(roof, closed=False, role="coated"),
             ),
             (-depth, 0.0, half, half),
+        )
+
+    def simplified(self) -> tuple[tuple[str, str], ...]:
+        """Tell that a solid cube acts as a hollow one."""
+        if self.glass is None:
+            return ()
+        return (
+            (
+                "acts as a hollow corner cube: its entry reflects nothing, its glass makes no way "
+                "longer, and total reflection turns no polarization",
+                "end what its entry sends back, and judge path and polarization by hand",
+            ),
         )
 
     def is_round(self) -> bool:

@@ -71,3 +71,20 @@ def test_light_that_a_converter_makes_is_judged_by_its_own_limit(make_context):
     # IEC 60825-1:2014, tables A.1 and 1: 10 W/m2 through 7 mm; C4 = 5 at 1064 nm.
     assert green.limit == pytest.approx(10 * 3.14159 / 4 * 49e-6, rel=1e-5)
     assert infra.limit == pytest.approx(5 * green.limit)
+
+
+@pytest.mark.parametrize(
+    ("kind", "said"),
+    [
+        ("retroreflector, diameter: 20, glass: BK7", "acts as a hollow corner cube"),
+        ("retroreflector, diameter: 20", None),
+        (
+            "converter, diameter: 9, length: 5, produces: [{wavelength: 266, share: 1 %}]",
+            "makes the same share of weak light as of strong",
+        ),
+    ],
+)
+def test_what_is_modelled_simply_is_told(make_context, kind, said):
+    elements = f"  X: {{kind: {kind}, after: green, distance: 100}}\n"
+    notes = [finding.message for finding in found(make_context, "as-modelled", elements)]
+    assert [said in note for note in notes] == ([] if said is None else [True])
