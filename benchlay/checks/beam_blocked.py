@@ -82,9 +82,14 @@ def check(context: Context, variant: int) -> Iterator[Finding]:
 
 
 def _stands_in_the_way(context: Context, loss: Loss) -> bool:
-    """Whether the beam was on its way; one that goes astray is `route-broken`."""
-    on_its_way = context.meetings.aimed(loss.beam) or not loss.whole
-    return on_its_way and not (loss.whole and context.routes.lost_on_purpose(loss.beam))
+    """Whether the beam was on its way; one that goes astray is `route-broken`.
+
+    Where a state cuts all its routes short, no more is asked of it than to get there.
+    """
+    aimed = context.meetings.aimed(loss.beam)
+    if context.routes.lost_on_purpose(loss.beam):
+        return aimed and not loss.whole
+    return aimed or not loss.whole
 
 
 def _finding(context: Context, variant: int, loss: Loss, clip: float) -> Finding:

@@ -82,14 +82,13 @@ def _finding(context: Context, variant: int, loss: Loss, clip: float) -> Finding
     beam = loss.beam
     room = _room(context, loss, clip)
     routes = " and ".join(f"'{name}'" for name in context.routes.routes_of(beam))
-    where = place_words(loss.sink, loss.name, loss.part)
     off = "" if room is None else f", {_met(room)}"
     return Finding(
         check=NAME,
         severity=SEVERITY,
         message=(
             f"{share_text(loss.share)} ({power_text(loss.power_w)}) of the beam of {routes} "
-            f"ends on {where}{off}"
+            f"{_where(loss)}{off}"
         ),
         expected=f"a loss of at most {share_text(clip)}{_allowed(room)}",
         remedy=_remedy(room, loss),
@@ -115,6 +114,14 @@ def _room(context: Context, loss: Loss, clip: float) -> Room | None:
         if off_face is not None:
             return room_at(context.trace, loss.beam, face, off_face, clip)
     return None
+
+
+def _where(loss: Loss) -> str:
+    """Say where the light ends instead."""
+    if not loss.past_w < loss.power_w:
+        return f"goes past '{loss.name}'"
+    beyond = " or goes past it" if loss.past_w > 0.0 else ""
+    return f"ends on {place_words(loss.sink, loss.name, loss.part)}{beyond}"
 
 
 def _met(room: Room) -> str:

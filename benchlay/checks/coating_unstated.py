@@ -57,58 +57,118 @@ and alignment lasers included.
 from __future__ import annotations
 
 from collections.abc import Iterator
+from typing import NamedTuple
 
 import numpy as np
 
-from benchlay.checks._check import Context, power_text, wavelength_text
+from benchlay.checks._check import Context, listed, power_text, wavelength_text
 from benchlay.findings import Finding, Severity
-from benchlay.scene.tables import Mode
+from benchlay.scene.tables import Ints, Mode
 
 NAME = "coating-unstated"
 
-# The figures that follow are assumptions, but the larger hazard among plausible ones.
+# The figures that follow are assumptions, but the larger hazard among plausible ones. Where all
+# the light together is within the accessible limit it is a note.
 SEVERITY = Severity.WARN
 
 
+class _Meeting(NamedTuple):
+    """Light of one wavelength at one face that says nothing of it."""
+
+    face: int
+    wave: int
+    beams: Ints
+    power_w: float
+
+
 def check(context: Context, variant: int) -> Iterator[Finding]:
-    """Report each face and wavelength once, with all the power that meets it."""
-    beams, scene = context.trace.beams, context.trace.scene
+    """Report each face and wavelength, with all the power that meets it.
+
+    What is within the accessible limit all together makes one note an element.
+    """
+    weak: dict[int, list[_Meeting]] = {}
+    for meeting in _meetings(context, variant):
+        limit_w = float(context.limit_w[meeting.beams].min())
+        if meeting.power_w <= limit_w:
+            owner = int(context.trace.scene.faces.owner[meeting.face])
+            weak.setdefault(owner, []).append(meeting)
+        else:
+            yield _finding(context, variant, meeting)
+    for _, meetings in sorted(weak.items()):
+        yield _note(context, variant, meetings)
+
+
+def _meetings(context: Context, variant: int) -> Iterator[_Meeting]:
+    beams = context.trace.beams
     rows = context.beams_of(variant)
     rows = rows[beams.unstated[rows]]
     pairs = np.stack((beams.end_row[rows], beams.start.wave[rows]))
     for face, wave in sorted(set(zip(*pairs.tolist(), strict=True))):
         met = rows[(pairs[0] == face) & (pairs[1] == wave)]
-        nm = float(scene.wavelengths_nm[wave])
-        name = scene.elements[int(scene.faces.owner[face])]
-        power = float(beams.end_core[met].sum())
-        side = scene.face_names[int(scene.faces.name[face])]
-        film = scene.faces.mode[face, wave] != Mode.BARE
-        yield Finding(
-            check=NAME,
-            severity=SEVERITY,
-            message=(
-                f"the {side} of '{name}' says nothing of {wavelength_text(nm)}, and "
-                f"{power_text(power)} of it from '{context.source_of(int(met[0]))}' meets it; "
-                + (
-                    "its metal is not known there, and is assumed to send all back"
-                    if film
-                    else "the bare material is assumed"
-                )
-            ),
-            expected=f"a coating that states its reflectance at {wavelength_text(nm)}",
-            remedy=(
-                (
-                    f"write the coating of '{name}' by its reflectance, not its metal, such as "
-                    if film
-                    else f"add a band with {nm:g} nm to the coating of '{name}', such as "
-                )
-                + f"`{{from: {nm - 10:g}, to: {nm + 10:g}, is: …}}` with the maker's figure"
-            ),
-            element=name,
-            beam=int(context.numbers[met[0]]),
-            at=context.end_at(int(met[0])),
-            span=context.span_of(name, variant),
-            value=power,
-            unit="W",
-            key=(nm, context.face_text(face)),
-        )
+        yield _Meeting(face, wave, met, float(beams.end_core[met].sum()))
+
+
+def _finding(context: Context, variant: int, meeting: _Meeting) -> Finding:
+    scene, (face, wave, met, power) = context.trace.scene, meeting
+    nm = float(scene.wavelengths_nm[wave])
+    name = scene.elements[int(scene.faces.owner[face])]
+    side = scene.face_names[int(scene.faces.name[face])]
+    film = scene.faces.mode[face, wave] != Mode.BARE
+    return Finding(
+        check=NAME,
+        severity=SEVERITY,
+        message=(
+            f"the {side} of '{name}' says nothing of {wavelength_text(nm)}, and "
+            f"{power_text(power)} of it from '{context.source_of(int(met[0]))}' meets it; "
+            + (
+                "its metal is not known there, and is assumed to send all back"
+                if film
+                else "the bare material is assumed"
+            )
+        ),
+        expected=f"a coating that states its reflectance at {wavelength_text(nm)}",
+        remedy=(
+            (
+                f"write the coating of '{name}' by its reflectance, not its metal, such as "
+                if film
+                else f"add a band with {nm:g} nm to the coating of '{name}', such as "
+            )
+            + f"`{{from: {nm - 10:g}, to: {nm + 10:g}, is: …}}` with the maker's figure"
+        ),
+        element=name,
+        beam=int(context.numbers[met[0]]),
+        at=context.end_at(int(met[0])),
+        span=context.span_of(name, variant),
+        value=power,
+        unit="W",
+        key=(nm, context.face_text(face)),
+    )
+
+
+def _note(context: Context, variant: int, meetings: list[_Meeting]) -> Finding:
+    scene = context.trace.scene
+    first = meetings[0]
+    name = scene.elements[int(scene.faces.owner[first.face])]
+    found = {
+        float(scene.wavelengths_nm[m.wave]): None for m in sorted(meetings, key=lambda m: m.wave)
+    }
+    waves = listed([wavelength_text(nm) for nm in found])
+    power = max(m.power_w for m in meetings)
+    film = any(scene.faces.mode[m.face, m.wave] != Mode.BARE for m in meetings)
+    return Finding(
+        check=NAME,
+        severity=Severity.NOTE,
+        message=(
+            f"'{name}' says nothing of {waves}, of which at most {power_text(power)} meets a face; "
+            + ("metal is assumed to send all back" if film else "the bare material is assumed")
+        ),
+        expected=f"coatings that state their reflectance at {waves}, where it matters",
+        remedy=f"add bands for {waves} to the coatings of '{name}', if their figures are at hand",
+        element=name,
+        beam=int(context.numbers[first.beams[0]]),
+        at=context.end_at(int(first.beams[0])),
+        span=context.span_of(name, variant),
+        value=power,
+        unit="W",
+        key=("within the limit",),
+    )

@@ -48,7 +48,7 @@ from collections.abc import Iterator
 
 import numpy as np
 
-from benchlay.checks._check import Context, above, power_text
+from benchlay.checks._check import Context, Leg, above, power_text
 from benchlay.findings import Finding, Severity
 from benchlay.tracing.beams import FACE, NOTHING
 
@@ -69,7 +69,7 @@ def check(context: Context, variant: int) -> Iterator[Finding]:
         wanted = route.items[leg.reached + 1]
         if (leg.beam, wanted.name) not in told:
             told.add((leg.beam, wanted.name))
-            yield _finding(context, leg.beam, leg.route, leg.reached)
+            yield _finding(context, leg)
 
 
 def _explained(context: Context, variant: int) -> set[int]:
@@ -84,9 +84,10 @@ def _explained(context: Context, variant: int) -> set[int]:
     }
 
 
-def _finding(context: Context, beam: int, number: int, reached: int) -> Finding:
-    route = context.trace.ways.routes[number]
-    here, wanted = route.items[reached], route.items[reached + 1]
+def _finding(context: Context, leg: Leg) -> Finding:
+    assert leg.beam is not None
+    route, beam = context.trace.ways.routes[leg.route], leg.beam
+    here, wanted = route.items[leg.reached], route.items[leg.reached + 1]
     target = f"{wanted.name}.{wanted.part}" if wanted.part else wanted.name
     power = float(context.trace.beams.start.power[beam])
     return Finding(
@@ -97,7 +98,7 @@ def _finding(context: Context, beam: int, number: int, reached: int) -> Finding:
             f"({power_text(power)}) {_instead(context, beam, wanted.name)}"
         ),
         expected=f"the beam that leaves '{here.name}' meets '{target}' and goes on as named",
-        remedy=_remedy(context, beam, here.name, target),
+        remedy=_remedy(context, leg, target),
         element=wanted.name,
         beam=int(context.numbers[beam]),
         at=context.end_at(beam),
@@ -122,10 +123,24 @@ def _goes_on(context: Context, beam: int) -> bool:
     return bool(np.any(context.trace.beams.start.parent == beam))
 
 
-def _remedy(context: Context, beam: int, here: str, target: str) -> str:
-    met = context.routes.met(beam)
-    if met is None or context.trace.beams.end_kind[beam] != FACE:
-        return f"turn '{here}' so that the beam meets '{target}', or move '{target}' there"
+def _remedy(context: Context, leg: Leg, target: str) -> str:
+    assert leg.beam is not None
+    met = context.routes.met(leg.beam)
+    if met is None or context.trace.beams.end_kind[leg.beam] != FACE:
+        return f"turn '{_steering(context, leg)}' so that the beam meets '{target}', or move " + (
+            f"'{target}' there"
+        )
     if met == target.partition(".")[0]:
         return f"turn '{met}' the other way round, or name the branch that is meant in the route"
     return f"take '{met}' out of the way, or name it in the route before '{target}'"
+
+
+def _steering(context: Context, leg: Leg) -> str:
+    """Return the last item before a break that sends the beam elsewhere when it is turned."""
+    elements = context.layout(leg.variant).elements
+    items = context.trace.ways.routes[leg.route].items
+    for item in reversed(items[1 : leg.reached + 1]):
+        record = elements[item.name].record
+        if record.STEERS and (item.branch or record.DEFAULT_BRANCH) != "transmitted":
+            return item.name
+    return items[0].name

@@ -9,6 +9,7 @@ from benchlay.checks._check.limits import LineLimit, floors_w, limits_of
 from benchlay.checks._check.meetings import Loss, Mark
 from benchlay.checks._check.openings import Room, room_at
 from benchlay.checks._check.protocol import Check, Found, Run, Unevaluated
+from benchlay.checks._check.routes import Leg
 from benchlay.checks._check.without_limit import unjudged
 from benchlay.checks._check.words import (
     above,
@@ -30,6 +31,7 @@ __all__ = [
     "Context",
     "Exit",
     "Found",
+    "Leg",
     "LineLimit",
     "Loss",
     "Mark",

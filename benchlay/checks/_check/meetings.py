@@ -7,6 +7,7 @@ from typing import NamedTuple
 
 import numpy as np
 
+from benchlay.checks._check.behind import met_before_end
 from benchlay.checks._check.routes import Routes
 from benchlay.elements._kind import Acts
 from benchlay.scene.tables import PARTS, SINK, SINKS, Ints
@@ -16,13 +17,16 @@ from benchlay.tracing.front import OUTSIDE
 
 _OWN = (SINK["rim"], SINK["body"])
 _OPAQUE = (*_OWN, SINK["screen"], SINK["dump"], SINK["target"], SINK["panel"], SINK["bench"])
+_COUNTS = 1e-6  # share of a beam below which it does not matter which side of the end it lands
+_FAR_OFF = (SINK["wall"], SINK["escaped"])  # told of a beam only where its chief ray arrives
 
 
 class Loss(NamedTuple):
     """What a working beam loses on one leg to one thing.
 
     `own` tells whether the thing is what the beam goes to (or is inside of), `share` is of
-    what arrives, `whole` whether the chief ray itself ends there.
+    what arrives, `whole` whether the chief ray itself ends there. Of a beam that arrives, what
+    lands behind the thing it goes to has missed that thing: `past_w` of the power.
     """
 
     beam: int
@@ -33,6 +37,7 @@ class Loss(NamedTuple):
     share: float
     own: bool
     whole: bool
+    past_w: float = 0.0
 
 
 class Mark(NamedTuple):
@@ -54,32 +59,73 @@ class Meetings:
 
     def losses(self, rows: Ints) -> list[Loss]:
         """Return what the working ones of some beams lose, by beam and name."""
-        ledger, scene = self._trace.ledger, self._trace.scene
-        wanted = np.zeros(len(self._routes.working), dtype=np.bool_)
-        wanted[rows] = self._routes.working[rows]
-        found = np.flatnonzero(wanted[ledger.beam] & np.isin(ledger.sink, _OPAQUE))
-        groups: dict[tuple[int, int], list[tuple[int, float]]] = {}
-        columns = (ledger.beam[found], ledger.name[found], ledger.sink[found], ledger.power[found])
-        for beam, name, sink, power in zip(*(c.tolist() for c in columns), strict=True):
-            groups.setdefault((beam, name), []).append((sink, power))
         losses = []
-        for (beam, name), parts in sorted(groups.items()):
-            loss = self._loss(beam, scene.names[name] if name >= 0 else None, parts)
-            if loss is not None:
-                losses.append(loss)
+        for beam, groups in sorted(self._landings(rows).items()):
+            past_w = self._take_past(beam, groups) if len(groups) > 1 else 0.0
+            for number, parts in sorted(groups.items()):
+                found = self._loss(beam, self._name(number), parts, past_w)
+                if found is not None:
+                    losses.append(found)
         return losses
 
-    def _loss(self, beam: int, name: str | None, parts: list[tuple[int, float]]) -> Loss | None:
+    def _landings(self, rows: Ints) -> dict[int, dict[int, list[tuple[int, float]]]]:
+        """Return sinks and powers by working beam and name (its number, -1 for none)."""
+        ledger = self._trace.ledger
+        wanted = np.zeros(len(self._routes.working), dtype=np.bool_)
+        wanted[rows] = self._routes.working[rows]
+        found = np.flatnonzero(wanted[ledger.beam] & np.isin(ledger.sink, (*_OPAQUE, *_FAR_OFF)))
+        groups: dict[int, dict[int, list[tuple[int, float]]]] = {}
+        columns = (ledger.beam[found], ledger.name[found], ledger.sink[found], ledger.power[found])
+        for beam, name, sink, power in zip(*(c.tolist() for c in columns), strict=True):
+            groups.setdefault(beam, {}).setdefault(name, []).append((sink, power))
+        return groups
+
+    def _name(self, number: int) -> str | None:
+        return self._trace.scene.names[number] if number >= 0 else None
+
+    def _take_past(self, beam: int, groups: dict[int, list[tuple[int, float]]]) -> float:
+        """Take out of a beam's landings what lies behind what it comes to; return its power."""
+        met = self._routes.met(beam)
+        if met is None or met not in self._routes.wanted(beam):
+            return 0.0
+        past_w, least = 0.0, _COUNTS * self._arriving_w(beam)
+        if sum(power for parts in groups.values() for _, power in parts) < least:
+            return 0.0
+        for number in sorted(groups):
+            if self._name(number) != met and self._behind(beam, number, groups[number]):
+                past_w += sum(power for _, power in groups.pop(number))
+        own = self._trace.scene.names.index(met)
+        if past_w > 0.0:
+            groups.setdefault(own, [])
+        return past_w
+
+    def _behind(self, beam: int, number: int, parts: list[tuple[int, float]]) -> bool:
+        """Whether nothing of a name stands in a beam before its end."""
+        s = self._trace.scene.solids
+        here = s.present[self._trace.beams.start.variant[beam]] & (s.name == number)
+        if number < 0:  # the bench top, or nothing at all
+            here &= np.isin(s.sink, [sink for sink, _ in parts])
+        solids = np.flatnonzero(here)
+        return not len(solids) or not met_before_end(self._trace, beam, solids)
+
+    def _loss(
+        self, beam: int, name: str | None, parts: list[tuple[int, float]], past_w: float
+    ) -> Loss | None:
         own = name in self._routes.wanted(beam)
         kept = [(sink, power) for sink, power in parts if not own or self._is_loss(sink, name)]
-        power = sum(power for _, power in kept)
+        kept = [(sink, power) for sink, power in kept if sink not in _FAR_OFF]
+        past_w = past_w if own and name == self._routes.met(beam) else 0.0
+        power = sum(power for _, power in kept) + past_w
         if power <= 0.0:
             return None
-        beams = self._trace.beams
-        arriving = float(beams.end_coherency[0, beam] + beams.end_coherency[1, beam])
-        sink = max(kept, key=lambda part: part[1])[0]
+        sink = max(kept, key=lambda part: part[1])[0] if kept else SINK["rim"]
         part, whole = self._chief(beam, name, own=own)
-        return Loss(beam, name, SINKS[sink], part, power, min(power / arriving, 1.0), own, whole)
+        share = min(power / self._arriving_w(beam), 1.0)
+        return Loss(beam, name, SINKS[sink], part, power, share, own, whole, past_w)
+
+    def _arriving_w(self, beam: int) -> float:
+        coherency = self._trace.beams.end_coherency
+        return float(coherency[0, beam] + coherency[1, beam])
 
     def _is_loss(self, sink: int, name: str | None) -> bool:
         """Whether light on what it was meant for is lost: beside a face, not on it."""
