@@ -85,6 +85,15 @@ class Converter(ActingPlate):
                 remedy="put their shares together in one product",
             )
 
+    def simplified(self) -> tuple[tuple[str, str], ...]:
+        """Tell that its shares do not hang on how much light there is."""
+        return (
+            (
+                "makes the same share of weak light as of strong",
+                "expect less of the made light, and more left over, from weak returns and ghosts",
+            ),
+        )
+
     def makes(self) -> tuple[Made, ...]:
         """Return the light that it makes."""
         return tuple(Made(p.wavelength_nm, p.share, p.polarization) for p in self.produces)
