@@ -34,6 +34,7 @@ POSE_KEYS = frozenset(
         "side",
         "beam_at",
         "wavelength",
+        "to",
     )
 )
 """Keys that, set by a state, re-solve the pose of their item alone."""
@@ -170,16 +171,17 @@ def _state(name: str, layout: Layout, solver: Solver, base: PlacedState | None) 
             elements[key] = base.elements[key]
             continue
         element = layout.elements[key]
-        pose = _moved(_pose_in_state(element, touched, solver), element)
-        geometry = solver.geometry(key) if not touched else _geometry(element, solver)
+        nominal = _pose_in_state(element, touched, solver)
+        geometry = solver.geometry(key) if not touched else _geometry(element, nominal, solver)
+        pose = _moved(nominal, element)
         held = holder(element.record, geometry, element.mount, pose.at[2])
         elements[key] = PlacedElement(element, pose, geometry, held)
     return PlacedState(name, layout, sources, elements)
 
 
-def _geometry(element: Element, solver: Solver) -> Geometry:
+def _geometry(element: Element, nominal: Pose, solver: Solver) -> Geometry:
     try:
-        return element.record.geometry_on(Surroundings(element, solver))
+        return element.record.geometry_on(Surroundings(element, solver, nominal))
     except Unplaceable:
         return solver.geometry(element.name)  # the problem has been reported
 

@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING
 from benchlay.elements._kind import Around, Glass, Goal
 from benchlay.placing.complaints import no_ray
 from benchlay.placing.points import goal_of
+from benchlay.placing.pose import Pose
 from benchlay.placing.standing import index_of
 
 if TYPE_CHECKING:
@@ -16,17 +17,17 @@ if TYPE_CHECKING:
 
 
 class Surroundings(Around):
-    """Answers for one element from the nominal poses.
+    """Answers for one element from the nominal poses, its own being another in some states.
 
     All raise Unplaceable where they cannot answer; the problem has been reported.
     """
 
-    def __init__(self, element: Element, solver: Solver) -> None:
-        self._element, self._solver = element, solver
+    def __init__(self, element: Element, solver: Solver, own: Pose | None = None) -> None:
+        self._element, self._solver, self._own = element, solver, own
 
     def distance_mm(self, goal: Goal) -> float:
         """Return how far it is from the element's reference point to its goal."""
-        at = self._solver.pose(self._element.name).at
+        at = (self._own or self._solver.pose(self._element.name)).at
         return dist(at, goal_of(goal, at, self._solver))
 
     def relative_index(self, glass: Glass) -> float:

@@ -84,3 +84,18 @@ def test_brewster_windows_need_a_beam(complaints):
         " windows: {incidence: brewster}}\n"
     )
     assert "no beam is known to arrive" in problem
+
+
+def test_a_state_may_lead_a_tube_elsewhere_or_begin_it_elsewhere(standing):
+    placed = standing(
+        "  B: {kind: tube, at: [200, 450], to: [500, 450], bore: 20}\n"
+        "states: {turned: {elements.B.to: [200, 550]}, moved: {elements.B.at: [100, 450]}}\n"
+    )
+    for state, way, long in (
+        ("as drawn", [-1, 0, 0], 300),
+        ("turned", [0, -1, 0], 100),
+        ("moved", [-1, 0, 0], 400),
+    ):
+        np.testing.assert_allclose(placed.axes("B", state)[0], way, atol=1e-12)
+        leave = placed.states[state].elements["B"].geometry.faces[1]
+        assert leave.origin[0] == pytest.approx(-long, abs=1e-9)
