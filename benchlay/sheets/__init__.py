@@ -2,8 +2,8 @@
 
 from __future__ import annotations
 
-from collections.abc import Collection, Iterable
-from typing import TYPE_CHECKING
+from collections.abc import Callable, Collection, Iterable, Mapping
+from typing import TYPE_CHECKING, NamedTuple
 
 if TYPE_CHECKING:
     from benchlay.findings import Severity
@@ -11,8 +11,29 @@ if TYPE_CHECKING:
     from benchlay.tracing.trace import Trace
     from benchlay.zones import Zones
 
-SHEETS = ("plan",)
-"""The names of all sheets there are; a file's name starts with its sheet's."""
+
+class Subject(NamedTuple):
+    """What sheets are drawn from."""
+
+    trace: Trace
+    zones: Zones
+    counts: Iterable[tuple[Severity, int]]  # how many findings the review has, for the notes
+    sha256: str  # of the layout's bytes, to be written into the files
+
+
+def _plan(subject: Subject) -> Sheet:
+    from benchlay.sheets.drafting import plan_picture
+    from benchlay.sheets.plan import compose
+
+    trace, zones, counts, sha256 = subject
+    return compose(plan_picture(trace, zones, counts=counts, sha256=sha256))
+
+
+SHEETS: Mapping[str, Callable[[Subject], Sheet]] = {"plan": _plan}
+"""All sheets there are, by name; a file's name starts with its sheet's.
+
+Each loads what it draws with when it is called: a check draws nothing.
+"""
 
 
 def sheets_of(
@@ -25,8 +46,6 @@ def sheets_of(
 ) -> list[Sheet]:
     """Return the sheets of a traced layout, in its state as drawn.
 
-    Nothing of drawing is loaded before this is called.
-
     Parameters
     ----------
     trace : Trace
@@ -34,27 +53,24 @@ def sheets_of(
         The hazard zones, where they are known already.
     only : collection of str, optional
         Names of the sheets that are wanted; all of `SHEETS` by default.
-    counts : iterable of (Severity, int), optional
-        How many findings the review has, for the notes.
-    sha256 : str, optional
-        Of the layout's bytes, to be written into the files.
+    counts, sha256
+        See `Subject`.
 
     Raises
     ------
     ValueError
         For the name of a sheet that there is not.
     """
-    wanted = SHEETS if only is None else tuple(only)
+    wanted = tuple(SHEETS if only is None else only)
     unknown = sorted(set(wanted) - set(SHEETS))
     if unknown:
         msg = f"there is no sheet {unknown[0]!r}, but {', '.join(SHEETS)}"
         raise ValueError(msg)
-    from benchlay.sheets.drafting import plan_picture
-    from benchlay.sheets.plan import compose
-    from benchlay.zones import zones_of
-
     if not wanted:
         return []
     if zones is None:
+        from benchlay.zones import zones_of
+
         zones = zones_of(trace, states=(trace.scene.variants[0],))
-    return [compose(plan_picture(trace, zones, counts=counts, sha256=sha256))]
+    subject = Subject(trace, zones, tuple(counts), sha256)
+    return [SHEETS[name](subject) for name in wanted]
