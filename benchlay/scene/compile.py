@@ -156,7 +156,8 @@ def compile_scene(placed: Placed) -> Scene:
     base = placed.base.layout
     waves = np.array(compiler.wavelengths)
     spoken = spoken_for(base, compiler.wavelengths)
-    faces, inside = _faces_table(compiler, spoken)
+    face_names = _face_names(compiler)
+    faces, inside = _faces_table(compiler, spoken, face_names)
     outside = np.array([placed.media.index(None, nm) for nm in compiler.wavelengths])
     glasses = [volume.glass for _, volume in compiler.volumes]
     index = [[placed.media.index(g, nm) for nm in compiler.wavelengths] for g in (*glasses, None)]
@@ -173,7 +174,7 @@ def compile_scene(placed: Placed) -> Scene:
         tuple(compiler.names),
         compiler.elements,
         compiler.sources,
-        FACE_NAMES,
+        face_names,
         waves,
         outside,
         inside,
@@ -194,22 +195,16 @@ def compile_scene(placed: Placed) -> Scene:
     )
 
 
-FACE_NAMES = (
-    "front",
-    "back",
-    "left",
-    "right",
-    "diagonal",
-    "opening",
-    "entry.front",
-    "entry.back",
-    "exit.front",
-    "exit.back",
-)
+def _face_names(compiler: Compiler) -> tuple[str, ...]:
+    """Return the names of all faces there are, and of those that ways through elements name."""
+    records = (item.record for item in compiler.placed.base.layout.elements.values())
+    ways = (way for record in records for ways in record.branches().values() for way in ways)
+    named = {face for way in ways for face, _ in way}
+    return tuple(sorted(named.union(face.name for face in compiler.faces.faces)))
 
 
 def _faces_table(
-    compiler: Compiler, spoken: Mapping[str, frozenset[float]]
+    compiler: Compiler, spoken: Mapping[str, frozenset[float]], names: tuple[str, ...]
 ) -> tuple[Faces, Floats]:
     rows = compiler.faces
     origin, left, up, normal = rows.axes(compiler.frames)
@@ -224,7 +219,7 @@ def _faces_table(
     power, curvature = _lens_tables(compiler, inside)
     table = Faces(
         np.array(rows.owners, dtype=np.int64),
-        np.array([FACE_NAMES.index(face.name) for face in faces], dtype=np.int64),
+        np.array([names.index(face.name) for face in faces], dtype=np.int64),
         origin,
         left,
         up,
