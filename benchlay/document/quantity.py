@@ -14,6 +14,9 @@ from benchlay.document.words import format_choices, nearest, quote
 __all__ = ["Dimension", "QuantityError", "describe_dimension", "parse", "show"]
 
 _LONGEST = 64
+# No bench needs more; products of two such numbers are still finite.
+_LARGEST = {Dimension.LENGTH: 1e9, Dimension.WAVELENGTH: 1e9}
+_LARGEST_OF_OTHERS = 1e30
 _QUANTITY = re.compile(
     r"\s*([+-]?)([0-9]+\.?[0-9]*|\.[0-9]+)(?:[eE]([+-]?[0-9]{1,6}))?\s*([^0-9.\s].*)?"
 )
@@ -53,7 +56,7 @@ def parse(text: str, dimension: Dimension) -> float:
     Returns
     -------
     float
-        In the program's unit of that dimension; always finite.
+        In the program's unit of that dimension; finite, and of a size that can be reckoned with.
 
     Raises
     ------
@@ -80,7 +83,7 @@ def parse(text: str, dimension: Dimension) -> float:
     value = float(f"{sign}{digits}e{tens}") * unit.factor
     if unit.parts_of_degree:
         value = math.radians(value / unit.parts_of_degree)
-    if not math.isfinite(value):
+    if not abs(value) <= _LARGEST.get(dimension, _LARGEST_OF_OTHERS):
         message = f"{quote(text)} is too large a number"
         remedy = "check the exponent and the unit"
         raise QuantityError(message, describe_dimension(dimension), remedy)

@@ -74,22 +74,29 @@ def _pieces(cut: NDArray[np.object_]) -> Iterator[tuple[Point, Point]]:
         yield (ax, ay), (bx, by)
 
 
-def ticks(layer: str, area: BaseGeometry, every: float, length: float) -> list[Line]:
-    """Return short strokes along an area's edge that point to its inside."""
+def ticks(
+    layer: str, area: BaseGeometry, every: float, length: float, field: BaseGeometry
+) -> list[Line]:
+    """Return short strokes along an area's edge that point to its inside, near a field."""
+    near = field.buffer(length)
     out: list[Line] = []
     for polygon in shapely.get_parts(area):
         if polygon.geom_type != "Polygon":
             continue
         polygon = orient(polygon)  # inside on the left of every edge
         for ring in (polygon.exterior, *polygon.interiors):
-            out += _ring_ticks(layer, ring, every, length)
+            out += _ring_ticks(layer, ring, every, length, near)
     return out
 
 
-def _ring_ticks(layer: str, ring: BaseGeometry, every: float, length: float) -> Iterator[Line]:
+def _ring_ticks(
+    layer: str, ring: BaseGeometry, every: float, length: float, near: BaseGeometry
+) -> Iterator[Line]:
     places = np.arange(every / 2, ring.length, every)
     step = 1e-3 * every
     feet = shapely.get_coordinates(shapely.line_interpolate_point(ring, places))
+    drawn = shapely.contains_xy(near, feet)  # a zone may reach far beyond the sheet
+    places, feet = places[drawn], feet[drawn]
     ahead = np.minimum(places + step, ring.length)
     behind = np.maximum(places - step, 0.0)
     points = shapely.get_coordinates(shapely.line_interpolate_point(ring, ahead))

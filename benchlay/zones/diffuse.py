@@ -68,10 +68,10 @@ def spots(trace: Trace, limits: LimitTable, variant: int, wave: int) -> Iterator
         share = diffuse_share(state, first.sink, first.name)
         if power * share <= allowed:  # the eye's aperture cannot take more than all of it
             continue
+        radius = state.layout.limits.reach_mm  # as far as anything is followed
         if mpe > 0.0:
-            radius = _MM_PER_M * diffuse_distance_m(power, mpe, reflectance=share)
-        else:  # no limit exists: as far as anything is followed
-            radius = state.layout.limits.reach_mm
+            distance = _MM_PER_M * diffuse_distance_m(power, mpe, reflectance=share)
+            radius = min(radius, distance)
         normal = _normal(trace, first)
         area = _in_front(first.at, normal, radius)
         for shadow in _shadows(state, first.at, radius):

@@ -150,9 +150,16 @@ def test_hatching_of_nothing_is_nothing():
 @pytest.mark.parametrize("turn", [1, -1])
 def test_ticks_point_inside_whichever_way_the_ring_runs(turn):
     ring = shapely.Polygon([(0, 0), (50, 0), (50, 50), (0, 50)][::turn])
-    ticks = hatching.ticks("HAZARD", ring, 10.0, 2.0)
+    ticks = hatching.ticks("HAZARD", ring, 10.0, 2.0, field=ring)
     assert len(ticks) == 20
     assert all(ring.contains(shapely.Point(p.end)) for p in ticks)
+
+
+def test_ticks_far_from_the_sheet_are_not_made():
+    ring = shapely.box(0, 0, 50, 50)
+    field = shapely.box(-10, -10, 20, 20)
+    ticks = hatching.ticks("HAZARD", ring, 10.0, 2.0, field=field)
+    assert sorted(p.start for p in ticks) == [(0, 5), (0, 15), (5, 0), (15, 0)]
 
 
 WINDOW = Window(0.0, 0.0, 200.0, 100.0)

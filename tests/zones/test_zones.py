@@ -100,6 +100,12 @@ def test_light_that_leaves_is_followed_as_far_as_the_limits_say():
     assert zone.reach_m == pytest.approx(7.0, rel=1e-9)
 
 
+def test_scattered_light_is_followed_no_farther_either():
+    text = straight("1 kW", 1) + "limits: {reach: 3 m}\n"
+    (spot,) = (zone for zone in zones_of(traced(text)).zones if zone.kind == "diffuse")
+    assert spot.reach_m == pytest.approx(3.0, rel=1e-9)
+
+
 def test_a_zone_goes_through_glass_in_one_piece():
     glass = "W: {kind: window, at: [400, 300], facing: 180, diameter: 50, thickness: 10}"
     text = straight("20 mW", 1, target=DARK)

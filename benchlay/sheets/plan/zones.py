@@ -39,7 +39,7 @@ def limits(picture: Picture, board: Board) -> Iterator[Primitive]:
                 board.crowd_model_line(points)
                 yield Polyline("HAZARD", points)
         wide = _wide(whole, board)
-        for tick in ticks("HAZARD", whole, board.long(_EVERY_MM), board.long(_TICK_MM)):
+        for tick in ticks("HAZARD", whole, board.long(_EVERY_MM), board.long(_TICK_MM), field):
             yield from _inside(tick, wide, field)
 
 
