@@ -107,20 +107,21 @@ class BeamShape(Record):
                 remedy=f"add '{missing[0]}'",
             )
 
-    def measured_m2(self, wavelength_nm: float) -> float | None:
+    def measured_m2(self, wavelength_nm: float, index: float = 1.0) -> float | None:
         """Return M² as exit diameter and divergence fix it; None where they are not given.
 
-        M² = π d θ / (4 λ) with the full divergence θ and the waist at the exit (ISO 11146-1).
+        M² = π d n θ / (4 λ) with the full divergence θ in a medium of index n, the waist at
+        the exit and λ in vacuum (ISO 11146-1).
         """
         if self.diameter_mm is None or self.divergence_rad is None:
             return None
         product = self.diameter_mm * self.divergence_rad * self.to_1_e2**2
-        return pi * product / (4.0 * wavelength_nm * _NM_IN_MM)
+        return pi * index * product / (4.0 * wavelength_nm * _NM_IN_MM)
 
-    def waists(self, wavelength_nm: float) -> Waists:
-        """Return the waists of the line of a vacuum wavelength, in mm."""
+    def waists(self, wavelength_nm: float, index: float = 1.0) -> Waists:
+        """Return the waists of the line of a vacuum wavelength, in mm, in a medium of an index."""
         scale = self.to_1_e2
-        m2 = self.measured_m2(wavelength_nm)
+        m2 = self.measured_m2(wavelength_nm, index)
         if m2 is not None:
             w = scale * (self.diameter_mm or 0.0) / 2
             return Waists(w, w, 0.0, 0.0, max(m2, 1.0), max(m2, 1.0))

@@ -7,7 +7,6 @@ from typing import NamedTuple
 import numpy as np
 
 from benchlay.layout.light import Polarization
-from benchlay.layout.sources import Source
 from benchlay.optics import coherency, moments
 from benchlay.optics.rays import bench_basis
 from benchlay.placing.placed import Placed, PlacedSource
@@ -132,13 +131,10 @@ def _one(polarization: Polarization, power: float) -> Floats:
 
 def _moments(items: list[PlacedSource], wavelength_nm: Floats, index: Floats) -> Floats:
     shapes = [
-        _waists(item.source, float(nm)) for item, nm in zip(items, wavelength_nm, strict=True)
+        tuple(item.source.beam.waists(nm, n))
+        for item, nm, n in zip(items, wavelength_nm.tolist(), index.tolist(), strict=True)
     ]
     if not shapes:
         return np.zeros((10, 0))
     w1, w2, ahead1, ahead2, m2_1, m2_2 = np.array(shapes).T
     return moments.from_waists(wavelength_nm, index, w1, w2, ahead1, ahead2, m2_1, m2_2)
-
-
-def _waists(source: Source, wavelength_nm: float) -> tuple[float, ...]:
-    return tuple(source.beam.waists(wavelength_nm))

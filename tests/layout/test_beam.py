@@ -47,6 +47,12 @@ def test_exit_diameter_and_divergence_fix_m2_for_each_line(beam):
         assert waists.ahead_1_mm == 0.0
 
 
+def test_the_divergence_is_that_in_the_medium_of_the_bench(beam):
+    waists = beam("{diameter: 1, divergence: 3 mrad}").waists(532.0, 1.33)
+    half_angle = waists.m2_1 * 532e-6 / 1.33 / (pi * waists.radius_1_mm)
+    assert half_angle == pytest.approx(1.5e-3, rel=1e-12)
+
+
 def test_a_quotient_just_under_one_is_rounding_of_the_figures(beam):
     # 4 λ / (π d) is 0.80572 mrad at 632.8 nm; a data sheet rounds it to 0.80
     shape = beam("{diameter: 1, divergence: 0.80 mrad}")
