@@ -88,10 +88,10 @@ def _finding(context: Context, variant: int, loss: Loss, clip: float) -> Finding
         severity=SEVERITY,
         message=(
             f"{share_text(loss.share)} ({power_text(loss.power_w)}) of the beam of {routes} "
-            f"{_where(loss)}{off}"
+            f"{_where(context, loss)}{off}"
         ),
         expected=f"a loss of at most {share_text(clip)}{_allowed(room)}",
-        remedy=_remedy(room, loss),
+        remedy=_remedy(room, loss, _opening(context, loss)),
         element=loss.name,
         beam=int(context.numbers[beam]),
         at=context.end_at(beam),
@@ -116,8 +116,15 @@ def _room(context: Context, loss: Loss, clip: float) -> Room | None:
     return None
 
 
-def _where(loss: Loss) -> str:
+def _opening(context: Context, loss: Loss) -> str | None:
+    """Return the opening of the panel that takes the light, if that is where it should go."""
+    return context.routes.opening_wanted(loss.beam) if loss.sink == "panel" else None
+
+
+def _where(context: Context, loss: Loss) -> str:
     """Say where the light ends instead."""
+    if (opening := _opening(context, loss)) is not None:
+        return f"ends on panel '{loss.name}' beside '{opening}'"
     if not loss.past_w < loss.power_w:
         return f"goes past '{loss.name}'"
     beyond = " or goes past it" if loss.past_w > 0.0 else ""
@@ -138,7 +145,11 @@ def _allowed(room: Room | None) -> str:
     return f"; for that it may be off the middle by up to {length_text(room.may_be_off_mm)}"
 
 
-def _remedy(room: Room | None, loss: Loss) -> str:
+def _remedy(room: Room | None, loss: Loss, opening: str | None) -> str:
+    if opening is not None:
+        if loss.whole:
+            return f"bring '{opening}' and the beam together"
+        return f"widen '{opening}', or bring the beam to its middle"
     if room is None:
         return f"bring the beam into the clear region of '{loss.name}'"
     needed = rounded_up(room.needed_mm, 3)

@@ -9,7 +9,7 @@ import numpy as np
 from benchlay.elements._kind import Acts
 from benchlay.scene.tables import PART, SINK, SINKS, Flags, Floats, Ints, Scene
 from benchlay.tracing import Trace
-from benchlay.tracing.beams import FACE, NOTHING, SOLID
+from benchlay.tracing.beams import FACE, HANDED, NOTHING, SOLID
 from benchlay.tracing.front import OUTSIDE
 
 OPTIC = -1
@@ -44,6 +44,7 @@ def ends_of(trace: Trace, rows: Ints) -> Ends:
     inside = within != OUTSIDE
     sink = np.full(len(rows), OPTIC)
     sink[kind == NOTHING] = SINK["escaped"]
+    sink[kind == HANDED] = SINK["handed-over"]
     barrel = (kind == NOTHING) & inside
     sink[barrel] = trace.scene.bulks.barrel[within[barrel]]
     solid = kind == SOLID
@@ -128,6 +129,8 @@ def _named(
         return scene.elements[int(faces.owner[row])], scene.face_names[int(faces.name[row])]
     if kind == NOTHING:
         return (scene.elements[int(scene.faces.owner[left])], None) if inside else (None, None)
+    if kind == HANDED:
+        return scene.names[int(scene.solids.hole_name[row])], None
     name = int(scene.solids.name[row])
     if name < 0:
         return None, None

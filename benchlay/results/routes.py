@@ -13,7 +13,7 @@ from benchlay.results.beam_rows import polarizations
 from benchlay.results.frames import horizontals
 from benchlay.scene.tables import Flags, Ints
 from benchlay.tracing import Trace
-from benchlay.tracing.beams import FACE
+from benchlay.tracing.beams import FACE, HANDED
 
 
 def route_results(trace: Trace, variant: int) -> tuple[RouteResult, ...]:
@@ -77,7 +77,7 @@ def _arrives(trace: Trace, route: int, legs: Ints) -> Flags:
     beams, last = trace.beams, trace.ways.routes[route].items[-1]
     some = (beams.end_core[legs] > 0.0) | trace.diffuse()[legs]
     if last.opening is not None:
-        return some & through_opening(trace, legs, last.opening)
+        return some & handed_at(trace, legs, ".".join(last.opening))
     on_face = beams.end_kind[legs] == FACE
     owner = trace.scene.faces.owner[np.where(on_face, beams.end_row[legs], 0)]
     met: Flags = some & on_face & (owner == trace.ways.elements[last.name])
@@ -101,32 +101,14 @@ def _emitted_w(trace: Trace, variant: int, route: int) -> float:
     return sum(line.power_w for line in lines if first.wavelength_nm in (None, line.wavelength_nm))
 
 
-def through_opening(trace: Trace, legs: Ints, opening: tuple[str, str]) -> Flags:
-    """Tell which beams pass outwards through an opening, whether its panel stands or is open."""
-    s, scene = trace.scene.solids, trace.scene
-    name = ".".join(opening)
-    holes = [
-        hole for hole, number in enumerate(s.hole_name.tolist()) if scene.names[number] == name
-    ]
-    passed = np.zeros(len(legs), dtype=np.bool_)
-    for hole in holes:
-        passed |= _crosses(trace, legs, hole)
-    return passed
+def handed_at(trace: Trace, legs: Ints, opening: str) -> Flags:
+    """Tell which beams are handed over at an opening, whether its panel stands or is open."""
+    beams = trace.beams
+    there = [name == opening for name in _hole_names(trace)]
+    handed = beams.end_kind[legs] == HANDED
+    found: Flags = handed & np.array([*there, False])[np.where(handed, beams.end_row[legs], -1)]
+    return found
 
 
-def _crosses(trace: Trace, legs: Ints, hole: int) -> Flags:
-    """Tell which beams cross a hole's inner side between their ends, outwards."""
-    s, start = trace.scene.solids, trace.beams.start
-    through = s.hole_through[hole]
-    slope = start.direction[legs] @ through
-    gap = (s.hole_centre[hole] - start.position[legs]) @ through
-    with np.errstate(divide="ignore", invalid="ignore"):
-        distance = gap / slope
-    point = start.position[legs] + distance[:, None] * start.direction[legs]
-    away = point - s.hole_centre[hole]
-    halves = s.hole_axes[hole]
-    a, b = (np.abs(away @ half) / (half @ half) for half in halves)
-    within = (a * a + b * b if s.hole_round[hole] else np.maximum(a, b)) <= 1.0
-    ahead = (distance > 0.0) & (distance < trace.beams.length[legs])
-    crosses: Flags = within & ahead & (slope > 0.0)
-    return crosses
+def _hole_names(trace: Trace) -> list[str]:
+    return [trace.scene.names[number] for number in trace.scene.solids.hole_name.tolist()]

@@ -11,9 +11,9 @@ import numpy as np
 
 from benchlay.scene.tables import Flags, Floats, Ints
 from benchlay.tracing.front import Front
-from benchlay.tracing.hits import FACE, NOTHING, SOLID
+from benchlay.tracing.hits import FACE, HANDED, NOTHING, SOLID
 
-__all__ = ["FACE", "NOTHING", "SOLID", "Beams", "Ledger"]
+__all__ = ["FACE", "HANDED", "NOTHING", "SOLID", "Beams", "Ledger"]
 
 
 class Beams(NamedTuple):
@@ -25,8 +25,8 @@ class Beams(NamedTuple):
     """
 
     start: Front  # everything at the start
-    end_kind: Ints  # (N,) NOTHING, FACE or SOLID
-    end_row: Ints  # (N,) row of the face or solid met
+    end_kind: Ints  # (N,) NOTHING, FACE, SOLID or HANDED
+    end_row: Ints  # (N,) row of the face, solid or opening met
     end: Floats  # (N, 3) mm
     length: Floats  # (N,) mm
     end_coherency: Floats  # (4, N) of what arrives, before any cut

@@ -138,14 +138,15 @@ def through_holes(front: Front, scene: Scene) -> Flags:
     """Tell which solids (B, S) a ray passes through one of their openings."""
     s = scene.solids
     passed = np.zeros((len(front), len(s.owner)), dtype=np.bool_)
-    through = _in_hole(front, scene, s.hole_centre)
-    through &= _in_hole(front, scene, s.hole_centre + s.hole_through)
+    through = in_holes(front, scene, s.hole_centre)
+    through &= in_holes(front, scene, s.hole_centre + s.hole_through)
     for hole in np.flatnonzero(through.any(axis=0)):
         passed[:, s.hole_solid[hole]] |= through[:, hole]
     return passed
 
 
-def _in_hole(front: Front, scene: Scene, centre: Floats) -> Flags:
+def in_holes(front: Front, scene: Scene, centre: Floats) -> Flags:
+    """Tell which holes (B, H) rays pass inside the outline in the planes of points (H, 3)."""
     s = scene.solids
     slope = front.direction @ s.hole_through.T
     flat = np.abs(slope) < PARALLEL

@@ -11,6 +11,7 @@ from benchlay.optics.turning import turn
 from benchlay.scene.tables import SINK, Floats, Ints, Scene
 from benchlay.tracing.faces import Meeting, divide, plane_of_incidence
 from benchlay.tracing.front import OUTSIDE, REFLECTED, SPILLED, TRANSMITTED, Front
+from benchlay.tracing.handing import hand_over
 from benchlay.tracing.hits import FACE, NOTHING, SOLID, Hits
 from benchlay.tracing.returning import returned
 from benchlay.tracing.run_state import RunState
@@ -28,6 +29,7 @@ def children(core: Front, hits: Hits, spills: Spills, state: RunState) -> Front:
         born += _from_faces(core, hits.row, at_face, state)
     else:
         _end_nowhere(core, (kind == NOTHING).nonzero()[0], state)
+        hand_over(core, hits, state)
         born += _from_solids(core, hits, (kind == SOLID).nonzero()[0], state)
         if len(at_face):
             born += _from_faces(core.take(at_face), hits.row[at_face], at_face, state)

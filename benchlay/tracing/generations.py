@@ -28,6 +28,7 @@ from benchlay.tracing.coverage import (
 )
 from benchlay.tracing.feeding import Feeding
 from benchlay.tracing.front import OUTSIDE, Front
+from benchlay.tracing.handing import handing_of
 from benchlay.tracing.hits import FACE, Hits, inside_hits, nearest
 from benchlay.tracing.run_state import Leg, RunState
 from benchlay.tracing.scattering import follow_scattered
@@ -80,6 +81,7 @@ def run(front: Front, scene: Scene, ways: Ways, floor_w: Floats, placed: Placed)
         Says where items stand that scattered light goes on to, and what feeds sources.
     """
     state = RunState(scene, ways, floor_w)
+    state.handing = handing_of(ways, scene, placed)
     feeding = Feeding(state, placed)
     bounded = np.zeros(len(scene.variants), dtype=np.bool_)
     live: Front | None = front
@@ -148,6 +150,8 @@ def _meet(front: Front, state: RunState) -> tuple[_Ready, Flags]:
     if first < len(order):
         free = front.take(slice(first, None))
         hits, faces, passed = nearest(free, scene)
+        if state.handing is not None:
+            state.handing.end(free, hits, scene)
         parts.append(hits)
     hits = Hits.joined(parts)
     end = moments.propagate(front.moments, hits.distance, front.index)

@@ -21,6 +21,7 @@ SKIN_MM = 1e-7  # an optic is not met again nearer than this to where it was lef
 _TOUCH_MM = 1e-9
 
 NOTHING, FACE, SOLID = 0, 1, 2
+HANDED = 3  # no thing: the opening in which a route ends
 
 
 class Hits(Packed):
@@ -28,8 +29,8 @@ class Hits(Packed):
 
     __slots__ = ()
 
-    kind = IntColumn(0)  # `NOTHING`, `FACE` or `SOLID`
-    row = IntColumn(1)  # of the face or solid
+    kind = IntColumn(0)  # `NOTHING`, `FACE`, `SOLID` or `HANDED`
+    row = IntColumn(1)  # of the face, solid or opening
     plane = IntColumn(2)  # by which a solid is entered; -1 where it is round, or not one
     distance = FloatColumn(0)  # mm
     slope = FloatColumn(1)  # direction . face normal

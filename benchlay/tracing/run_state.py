@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from typing import NamedTuple
+from typing import TYPE_CHECKING, NamedTuple
 
 import numpy as np
 
@@ -10,6 +10,9 @@ from benchlay.scene.tables import Floats, Ints, Scene
 from benchlay.tracing.front import Front
 from benchlay.tracing.hits import Hits
 from benchlay.tracing.ways import Ways
+
+if TYPE_CHECKING:
+    from benchlay.tracing.handing import Handing
 
 
 class Leg(NamedTuple):
@@ -24,7 +27,10 @@ class Leg(NamedTuple):
 
 
 class RunState:
-    """Collects legs and landings; `count` is the number of legs that are done."""
+    """Collects legs and landings; `count` is the number of legs that are done.
+
+    `handing` tells which beams end in openings, where any route does.
+    """
 
     def __init__(self, scene: Scene, ways: Ways, floor_w: Floats) -> None:
         self.scene = scene
@@ -33,6 +39,7 @@ class RunState:
         self.legs: list[Leg] = []
         self.landings: list[tuple[Ints, Ints, Ints, Floats]] = []
         self.count = 0
+        self.handing: Handing | None = None
 
     def book(self, beam: Ints, sink: Ints | int, name: Ints | int, power: Floats) -> None:
         """Book power where it lands; beams are numbered from the first of the batch in hand."""

@@ -16,8 +16,9 @@ from benchlay.optics.shares import partition
 from benchlay.scene.tables import PART, SINK, Flags, Floats, Ints, Scene
 from benchlay.tracing.bodies import crossed
 from benchlay.tracing.front import OUTSIDE, Front
+from benchlay.tracing.handing import this_side
 from benchlay.tracing.hidden import counting, visible
-from benchlay.tracing.hits import FACE, NOTHING, SOLID, Hits
+from benchlay.tracing.hits import FACE, HANDED, NOTHING, SOLID, Hits
 from benchlay.tracing.outlines import CORE, HOLE, OPTIC, Outlines, joined
 from benchlay.tracing.silhouettes import (
     cylinder_sides,
@@ -80,7 +81,7 @@ def cut(front: Front, scene: Scene, hits: Hits, reach: Floats) -> Cut:
     whole = front.power / front.kept
     is_core = outlines.role == CORE
     mine = np.bincount(outlines.problem[is_core], share[is_core], minlength=count)
-    nothing_met = hits.kind == NOTHING
+    nothing_met = (hits.kind == NOTHING) | (hits.kind == HANDED)
     mine = np.where(nothing_met, mine + divided.free, mine)
     beside = ~is_core & (outlines.role != HOLE)
     blocked = np.bincount(outlines.problem[beside], share[beside], minlength=count)
@@ -142,6 +143,7 @@ def gather(front: Front, scene: Scene, hits: Hits, reach: Floats) -> Outlines:
         *_solid_outlines(front, scene, solids, target, own, reach=reach, stop_mm=hits.distance),
     ]
     outlines = joined(pieces, 1, scene, front)  # the second piece: flat sides
+    outlines = outlines.take(this_side(outlines, front, hits, scene))
     outlines = outlines.take(counting(outlines, reach))
     return outlines.take(visible(outlines))
 

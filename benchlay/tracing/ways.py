@@ -54,6 +54,7 @@ class Ways(NamedTuple):
     main: Flags  # (F, 2) reflected, transmitted
     elements: Mapping[str, int]
     scatterings: tuple[Scattering, ...] = ()
+    handing: tuple[tuple[int, str], ...] = ()  # node, and the opening in which it ends
 
     def follow(self, node: Ints, owner: Ints, face_name: Ints, event: Ints | int) -> Ints:
         """Return the nodes after events at faces; -1 off the tree."""
@@ -74,8 +75,8 @@ class Ways(NamedTuple):
 
 
 def _code(node: Ints, owner: Ints, face_name: Ints, event: Ints | int) -> Ints:
-    """Return one number (N,) for each step: elements below 4096, faces below 16, events below 8."""
-    code: Ints = ((node * 4096 + owner) * 16 + face_name) * 8 + event
+    """Return a number (N,) a step: elements below 2^20, faces below 2^8, events below 2^3."""
+    code: Ints = ((node << 20 | owner) << 8 | face_name) << 3 | event
     return code
 
 
@@ -92,6 +93,7 @@ class _Tree:
         self.ends: dict[tuple[int, str, str], int] = {}
         self.roots: dict[tuple[str, float], int] = {}
         self.scatterings: list[Scattering] = []
+        self.handing: dict[tuple[int, str], None] = {}
 
     def new(self, *, inside: bool) -> int:
         """Add a node."""
@@ -129,6 +131,8 @@ class _Tree:
             for way in ways:
                 self._pass(node, self._steps(item.name, way, product), end, (number, leg))
             node = end
+        if (opening := route.items[-1].opening) is not None:
+            self.handing[node, ".".join(opening)] = None
 
     def _scatter(self, node: int, name: str, after: RouteItem, passing: tuple[int, int]) -> int:
         """Add diffuse light on its way from an element to the next item."""
@@ -187,6 +191,7 @@ def ways_of(layout: Layout, scene: Scene) -> Ways:
         _main_events(layout, scene),
         tree.number,
         tuple(tree.scatterings),
+        tuple(tree.handing),
     )
 
 

@@ -9,7 +9,7 @@ import numpy as np
 import shapely
 from shapely.geometry.base import BaseGeometry
 
-from benchlay.tracing.beams import FACE, NOTHING
+from benchlay.tracing.beams import FACE, HANDED, NOTHING
 from benchlay.tracing.trace import Trace
 from benchlay.zones.diffuse import Spot, spots
 from benchlay.zones.enclosing import Enclosing, enclosing_of
@@ -223,7 +223,8 @@ def _beside(trace: Trace, limits: LimitTable, variant: int) -> list[str]:
         kind, met = int(b.end_kind[beam]), int(b.end_row[beam])
         if kind == NOTHING:
             continue
-        owner = int((scene.face_owner_name if kind == FACE else scene.solids.name)[met])
+        names = {FACE: scene.face_owner_name, HANDED: scene.solids.hole_name}
+        owner = int(names.get(kind, scene.solids.name)[met])
         name = int(ledger.name[row])
         if name == owner:
             continue

@@ -1,5 +1,7 @@
 """First causes speak: what explains a lost leg is told, and nothing that follows from it."""
 
+import math
+
 import pytest
 
 from benchlay.checks import run_checks
@@ -209,3 +211,58 @@ elements:
     assert names(make_context, text) == []
     found = names(make_context, text.replace("[red, east.port]", "[red, T9]"))
     assert ("escape", "red") in found
+
+
+PORT = """
+bench: {size: [900, 600], beam_height: 100}
+sources:
+  red: {wavelength: 633, power: 5 mW, beam: {waist_radius: 2}, polarization: vertical,
+        at: [100, 100], heading: 0}
+elements:
+  M1: {kind: mirror, after: red, distance: 200, turn: left 90, diameter: 25.4, metal: silver}
+routes:
+  out: [red, M1, north.port]
+enclosure:
+  panels:
+    south: {from: [0, 0], to: [900, 0]}
+    east: {from: [900, 0], to: [900, 600]}
+    north:
+      from: [900, 600]
+      to: [0, 600]
+      openings: {port: {along: 600, height: 100, diameter: 20}}
+    west: {from: [0, 600], to: [0, 0]}
+"""
+
+
+def of_checks(make_context, text, *checks):
+    findings, _ = run_checks(make_context(text))
+    return [f for f in findings if f.check in checks]
+
+
+def test_what_is_handed_over_neither_escapes_nor_strays_nor_breaks_its_route(make_context):
+    assert names(make_context, PORT) == []
+    (leg,) = make_context(PORT).routes.of_state(0)
+    assert leg.arrives
+
+
+def test_the_same_light_named_to_no_opening_escapes(make_context):
+    text = PORT.replace("  out: [red, M1, north.port]", "  out: [red, M1]")
+    assert ("escape", "M1") in names(make_context, text)
+
+
+def test_the_edge_of_an_opening_clips(make_context):
+    text = PORT.replace("diameter: 20", "diameter: 5")
+    (finding,) = of_checks(make_context, text, "clipped", "beam-blocked", "route-broken")
+    w = 2.0 * math.hypot(1.0, 700.0 * 633e-6 / (math.pi * 4.0))
+    assert finding.value == pytest.approx(math.exp(-2.0 * (2.5 / w) ** 2), rel=1e-3)
+    assert finding.message == (
+        "4.41 % (219 µW) of the beam of 'out' ends on panel 'north' beside 'north.port'"
+    )
+    assert finding.remedy == "widen 'north.port', or bring the beam to its middle"
+
+
+def test_a_beam_beside_its_opening_is_told_once(make_context):
+    text = PORT.replace("along: 600", "along: 500")
+    (finding,) = of_checks(make_context, text, "clipped", "beam-blocked", "route-broken")
+    assert finding.check == "clipped"
+    assert finding.remedy == "bring 'north.port' and the beam together"

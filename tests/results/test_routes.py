@@ -4,7 +4,9 @@ import math
 
 import pytest
 
+from benchlay.results.beam_rows import beam_rows
 from benchlay.results.handed_over import handed_over
+from benchlay.results.ledger import ledgers
 from benchlay.results.routes import route_results
 
 PORT = """
@@ -92,3 +94,16 @@ routes:
     (green,) = route_results(trace, 0)
     assert green.power_W == pytest.approx(3e-3)
     assert green.transmission == pytest.approx(1.0)
+
+
+def test_the_leg_ends_in_the_opening_and_nothing_goes_on(port):
+    rows = beam_rows(port, 0)
+    (leg,) = [row for row in rows if row.ends == "handed-over"]
+    assert (leg.to, leg.to_face, leg.route) == ("east.port", None, "b-port")
+    assert leg.end == pytest.approx((900.0, 100.0, 100.0))
+    assert leg.power_at_end_W == pytest.approx(4.8e-3)
+    assert [row for row in rows if row.parent == leg.beam] == []
+    (ledger,) = ledgers(port, 0)
+    (sink,) = [sink for sink in ledger.sinks if sink.kind == "handed-over"]
+    assert (sink.name, sink.power_W) == ("east.port", pytest.approx(4.8e-3))
+    assert ledger.unaccounted_W == pytest.approx(0.0, abs=1e-12)

@@ -20,6 +20,7 @@ for name in (
     "corners",
     "sources",
     "routes",
+    "openings",
 ):
     importlib.import_module(f"tests.tracing.scenes.{name}")
 

@@ -247,6 +247,8 @@ class Context:
         """Say what the chief ray of a beam meets."""
         beams, scene = self.trace.beams, self.trace.scene
         row = int(beams.end_row[beam])
+        if (opening := self.routes.handed_at(beam)) is not None:
+            return place_words("handed-over", opening)
         if beams.end_kind[beam] == FACE:
             face = scene.face_names[scene.faces.name[row]]
             name = scene.elements[scene.faces.owner[row]]

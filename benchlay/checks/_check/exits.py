@@ -34,7 +34,7 @@ def exits_of(context: Context, variant: int, line: EnclosureLine) -> Iterator[Ex
         if found is None:
             continue
         gone.add(beam)
-        if not _handed_over(context, beam):
+        if context.routes.handed_at(beam) is None:
             yield found
 
 
@@ -89,17 +89,3 @@ def _upwards(context: Context, beam: int, line: EnclosureLine) -> float | None:
     if line.top_mm == np.inf:
         return 0.0
     return min(max((line.top_mm - z) / slope, 0.0), length)
-
-
-def _handed_over(context: Context, beam: int) -> bool:
-    """Whether the beam leaves by the opening that ends its route."""
-    start = context.trace.beams.start
-    if start.node[beam] < 0:
-        return False
-    place = context.trace.ways.places[int(start.node[beam])]
-    for number, leg in place.routes:
-        items = context.trace.ways.routes[number].items
-        last = items[-1]
-        if leg + 1 == len(items) - 1 and last.opening is not None:
-            return context.routes.passes_opening(beam, ".".join(last.opening))
-    return False

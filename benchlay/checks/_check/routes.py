@@ -17,10 +17,9 @@ from benchlay.placing.placed import PlacedState
 from benchlay.placing.solve import POSE_KEYS
 from benchlay.scene.tables import Flags
 from benchlay.tracing import Trace
-from benchlay.tracing.beams import FACE, SOLID
+from benchlay.tracing.beams import FACE, HANDED, SOLID
 from benchlay.tracing.front import OUTSIDE
 
-_ROUNDING_MM = 1e-6  # a leg may begin or end in the very plane of an opening
 # Keys by which a state moves something; and by which it also takes it away, opens or closes it.
 _POSES = POSE_KEYS | {"offset", "yaw_error", "pitch_error"}
 _MOVING = _POSES | {"out", "closed", "open"}
@@ -160,7 +159,7 @@ class Routes:
         """Whether a beam on a route's last leg comes to the last item."""
         item = self._trace.ways.routes[route].items[-1]
         if item.opening is not None:
-            return self.passes_opening(beam, ".".join(item.opening))
+            return self.handed_at(beam) == ".".join(item.opening)
         some = self._trace.beams.end_core[beam] > 0.0 or self._diffuse[beam]
         return self.met(beam) == item.name and bool(some)
 
@@ -171,25 +170,20 @@ class Routes:
             return None
         return scene.elements[int(scene.faces.owner[beams.end_row[beam]])]
 
-    def passes_opening(self, beam: int, name: str) -> bool:
-        """Whether the chief ray of a beam passes an opening of a panel."""
-        s, beams = self._trace.scene.solids, self._trace.beams
-        for hole in np.flatnonzero(s.hole_name >= 0).tolist():
-            if self._trace.scene.names[s.hole_name[hole]] != name:
-                continue
-            through = s.hole_through[hole]
-            k, start = beams.start.direction[beam], beams.start.position[beam]
-            slope = float(k @ through)
-            if slope == 0.0:
-                continue
-            way = float((s.hole_centre[hole] - start) @ through) / slope
-            away = start + way * k - s.hole_centre[hole]
-            half = s.hole_axes[hole]
-            a, b = (float(away @ axis) / float(axis @ axis) for axis in half)
-            inside = a * a + b * b <= 1.0 if s.hole_round[hole] else max(abs(a), abs(b)) <= 1.0
-            if inside and -_ROUNDING_MM <= way <= beams.length[beam] + _ROUNDING_MM:
-                return True
-        return False
+    def opening_wanted(self, beam: int) -> str | None:
+        """Return the opening that a route of a working beam has next."""
+        for route, leg in sorted(self._of_node[int(self._trace.beams.start.node[beam])].items()):
+            items = self._trace.ways.routes[route].items
+            if leg + 2 == len(items) and items[-1].opening is not None:
+                return ".".join(items[-1].opening)
+        return None
+
+    def handed_at(self, beam: int) -> str | None:
+        """Return the opening at which a beam is handed over."""
+        beams, scene = self._trace.beams, self._trace.scene
+        if beams.end_kind[beam] != HANDED:
+            return None
+        return scene.names[int(scene.solids.hole_name[beams.end_row[beam]])]
 
     # ------------------------------------------------------------------ on purpose or not
 

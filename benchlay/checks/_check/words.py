@@ -120,6 +120,7 @@ _PARTS = {
     "plate": "the plate of",
     "source": "the body of source",
 }
+_BY_NAME = {"screen": "", "handed-over": "the opening "}
 _SINKS = {
     "target": "target",
     "dump": "dump",
@@ -147,8 +148,8 @@ def place_words(sink: str, name: str | None, part: str | None = None) -> str:
         return "the bench top"
     if sink == "escaped":
         return "nothing within reach"
-    if sink == "screen":
-        return f"'{name}'"
+    if sink in _BY_NAME:
+        return f"{_BY_NAME[sink]}'{name}'"
     words = _PARTS.get(part or "") if sink == "body" else None
     return f"{words or _SINKS.get(sink, sink)} '{name}'"
 

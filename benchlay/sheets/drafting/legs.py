@@ -10,7 +10,7 @@ from benchlay.elements._kind import Acts
 from benchlay.scene.tables import SINKS, Floats, Ints
 from benchlay.sheets.contents import Leg
 from benchlay.sheets.layers import wavelength_words
-from benchlay.tracing.beams import FACE, NOTHING
+from benchlay.tracing.beams import FACE, HANDED, NOTHING
 from benchlay.tracing.front import OUTSIDE, SPILLED
 from benchlay.tracing.trace import Trace
 from benchlay.zones.limits import LimitTable
@@ -251,6 +251,8 @@ def _ends(trace: Trace, beam: int) -> str:
     kind, row = int(b.end_kind[beam]), int(b.end_row[beam])
     if kind == NOTHING:
         return "escaped"
+    if kind == HANDED:
+        return "handed-over"
     if kind != FACE:
         return SINKS[int(scene.solids.sink[row])]
     if scene.faces.acts[row] == Acts.OPAQUE:
