@@ -146,6 +146,10 @@ HANDED_OVER = keys(
     {"through": TEXT, "axis": keys({"at": POINT, "direction": POINT}), "w_mm": PAIR,
      "power_W": NUMBER}
 )  # fmt: skip
+MATRIX = keys(
+    {"states": listed(TEXT),
+     "rows": listed(keys({"id": TEXT, "in": listed(YES_NO), "worst": TEXT}))}
+)  # fmt: skip
 REVIEW = keys(
     {
         "layout": TEXT, "sha256": TEXT, "title": maybe(TEXT), "revision": maybe(TEXT),
@@ -157,7 +161,7 @@ REVIEW = keys(
         "limits_used": listed(LIMIT), "routes": listed(ROUTE), "ledger": LEDGER,
         "zones": listed(ZONE), "coverage": listed(dict), "panels": listed(dict),
         "cavities": listed(dict), "matched": listed(dict), "handed_over": listed(HANDED_OVER),
-        "not_computed": listed(TEXT),
+        "not_computed": listed(TEXT), "matrix": MATRIX,
     }
 )  # fmt: skip
 BEAM = keys(
@@ -207,6 +211,8 @@ def test_check(printed):
     assert review["as_of"] == "2027-01-01"
     assert {route["state"] for route in review["routes"]} == {"as drawn", "glance", "off"}
     assert review["handed_over"][0]["through"] == "east.port"
+    assert review["matrix"]["states"] == ["as drawn", "glance", "off"]
+    assert [row["id"] for row in review["matrix"]["rows"]] == [f["id"] for f in review["findings"]]
     assert review["zones"]
     assert "accept-unmatched" in {finding["check"] for finding in review["findings"]}
 

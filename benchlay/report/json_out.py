@@ -10,6 +10,7 @@ from benchlay.document.problems import Problem
 from benchlay.exposure.cautions import CAUTIONS as EXPOSURE_CAUTIONS
 from benchlay.report.cautions import CAUTIONS
 from benchlay.report.details import Ledger, TraceResult
+from benchlay.report.matrix import matrix_of
 from benchlay.report.model import LayoutErrors, Review
 from benchlay.report.numbers import decimals_of, rounded, settled
 
@@ -36,6 +37,7 @@ def review_object(result: Review | LayoutErrors) -> dict[str, Json]:
     fields = result._asdict()
     del fields["lines"]
     written = {key: plain(value, key) for key, value in fields.items()}
+    written["matrix"] = plain(matrix_of(result), "matrix")
     written["ledger"] = [_ledger(entry) for entry in result.ledger]
     head = ("layout", "sha256", "title", "revision", "as_of")
     return {

@@ -10,6 +10,7 @@ from math import ceil, floor, log10
 
 from benchlay.document.problems import Problem
 from benchlay.report.cautions import CAUTIONS
+from benchlay.report.matrix import matrix_lines, matrix_of
 from benchlay.report.model import LayoutErrors, Reported, Review
 from benchlay.report.numbers import shown
 from benchlay.report.words import Ink, listed, quoted, tame
@@ -64,6 +65,7 @@ def _review_text(review: Review, ink: Ink) -> str:
     lines: list[str] = []
     for finding in review.findings:
         lines += _finding_lines(finding, review, ink)
+    lines += matrix_lines(matrix_of(review))
     lines += _not_evaluated(review)
     lines += _limit_lines(review)
     lines.append(verdict_line(review))

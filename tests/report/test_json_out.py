@@ -30,7 +30,7 @@ FINDING_KEYS = [
 REVIEW_KEYS = [
     "layout", "sha256", "title", "revision", "as_of", "verdict", "findings", "checks",
     "limits_used", "routes", "ledger", "zones", "coverage", "panels", "cavities", "matched",
-    "handed_over", "not_computed",
+    "handed_over", "not_computed", "matrix",
 ]  # fmt: skip
 BEAM_KEYS = [
     "beam", "parent", "source", "wavelength_nm", "splits", "route", "routes", "leg", "from",
