@@ -29,7 +29,8 @@ def children(core: Front, hits: Hits, spills: Spills, state: RunState) -> Front:
         born += _from_faces(core, hits.row, at_face, state)
     else:
         _end_nowhere(core, (kind == NOTHING).nonzero()[0], state)
-        hand_over(core, hits, state)
+        if state.handing is not None:
+            hand_over(core, hits, state)
         born += _from_solids(core, hits, (kind == SOLID).nonzero()[0], state)
         if len(at_face):
             born += _from_faces(core.take(at_face), hits.row[at_face], at_face, state)

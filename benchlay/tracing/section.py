@@ -143,7 +143,8 @@ def gather(front: Front, scene: Scene, hits: Hits, reach: Floats) -> Outlines:
         *_solid_outlines(front, scene, solids, target, own, reach=reach, stop_mm=hits.distance),
     ]
     outlines = joined(pieces, 1, scene, front)  # the second piece: flat sides
-    outlines = outlines.take(this_side(outlines, front, hits, scene))
+    if (hits.kind == HANDED).any():
+        outlines = outlines.take(this_side(outlines, front, hits, scene))
     outlines = outlines.take(counting(outlines, reach))
     return outlines.take(visible(outlines))
 
