@@ -1,6 +1,6 @@
 import numpy as np
 import pytest
-from hypothesis import given, settings
+from hypothesis import assume, given, settings
 from hypothesis import strategies as st
 
 from benchlay.optics import moments, rays
@@ -110,9 +110,14 @@ def test_a_train_run_backwards_returns_the_beam(m, train):
 def test_quality_is_conserved_by_every_train(case):
     w1, w2, ahead, q1, q2, train = case
     start = moments.from_waists(HENE_NM, 1.0, w1, w2, ahead, -ahead, q1, q2)
-    found = moments.m2(through(start, train), HENE_NM)
-    # In a coupled beam the difference of two like factors is a root of rounding.
-    assert np.sort(found) == pytest.approx(np.sort([q1, q2]), rel=1e-4)
+    after = through(start, train)
+    # Both factors are what is left of far larger products of the moments: beyond this ratio
+    # the rounding of the ten moments shows.
+    assume((after[0] + after[2]) * (after[7] + after[9]) < 1e5 * (WAVELENGTH_MM / (4 * np.pi)) ** 2)
+    found = moments.m2(after, HENE_NM)
+    # In a coupled beam the difference of two like factors is a root of rounding, so they are
+    # judged by what does not hang on it.
+    assert np.sum(found**2) == pytest.approx(q1**2 + q2**2, rel=1e-9)
     assert np.prod(found) == pytest.approx(q1 * q2, rel=1e-6)
 
 
