@@ -32,12 +32,13 @@ def nearest(word: str, choices: Iterable[str]) -> str | None:
     """Return the choice a slip of the hand away from `word`, or None.
 
     A slip is a letter left out, added, changed or swapped with its neighbour; one is allowed
-    for every three letters of the word. Case does not count. Of equals the first wins.
+    for every three letters of the word, and in a word of one letter none. Case does not count.
+    Of equals the first wins.
     """
     if not word or len(word) > _LONGEST_WORD:
         return None
     written = word.casefold()
-    best, bound = None, max(1, len(word) // 3) + 1
+    best, bound = None, min(max(1, len(word) // 3) + 1, len(word))
     for choice in choices:
         other = choice.casefold()
         if abs(len(other) - len(written)) >= bound:

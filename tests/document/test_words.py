@@ -26,6 +26,8 @@ def test_nearest_finds_slips_and_nothing_else():
     assert nearest("", kinds) is None
     assert nearest("M2", ["M1", "M3"]) == "M1"  # of equals the first
     assert nearest("ab", ["xy"]) is None
+    assert nearest("s", ["T", "r"]) is None  # one letter for another is no slip
+    assert nearest("s", ["T", "S"]) == "S"
 
 
 def test_nearest_is_cheap_on_long_words():

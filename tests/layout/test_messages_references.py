@@ -191,7 +191,7 @@ CASES = [
             (
                 "b.yaml:10:24: error: matched[1]: there is no route named 's'\n"
                 "  expected: the name of a route: 'r'\n"
-                "  to mend: write 'r'"
+                "  to mend: correct the name, or add the route"
             ),
         ],
         id="matched",
