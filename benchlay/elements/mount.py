@@ -18,6 +18,7 @@ _COORDINATE = Quantity(Dimension.LENGTH)
 # Common practice: what a plain mount of an optic up to 50 mm looks like.
 ROUND_UP_TO_MM = 50.0
 _RIM_MM = 14.0
+_ROUNDING_MM = 1e-9  # of sizes converted from inches
 _BEHIND_MM = 12.0
 FOOT_MM = (50.0, 75.0)
 FOOT_THICKNESS_MM = 10.0
@@ -85,6 +86,33 @@ class Mount(Record):
                 expected="'optic_height' below 'height'",
                 remedy=f"set 'optic_height' below {height:g}",
             )
+
+    def refuse_within(self, extent: tuple[float, float, float, float], reader: Reader) -> None:
+        """Refuse a box that does not go round its optic; `extent` is as in `Geometry`."""
+        _, _, half_width, half_height = extent
+        if self.width_mm is not None and self.width_mm < 2 * half_width - _ROUNDING_MM:
+            self._too_small("width", self.width_mm, 2 * half_width, reader)
+        if self.height_mm is not None and self.height_mm < 2 * half_height - _ROUNDING_MM:
+            self._too_small("height", self.height_mm, 2 * half_height, reader)
+        elif self.optic_height_mm is not None:
+            height = self.height_mm or 2 * half_height + _RIM_MM
+            low, high = half_height, height - half_height
+            if not low - _ROUNDING_MM <= self.optic_height_mm <= high + _ROUNDING_MM:
+                reader.complain(
+                    self.span_of("optic_height"),
+                    f"with its centre {self.optic_height_mm:g} mm up the optic sticks out of the "
+                    f"box of {height:g} mm",
+                    expected=f"'optic_height' from {low:g} to {high:g}",
+                    remedy=f"set 'optic_height' to {height / 2:g}, the middle, or raise 'height'",
+                )
+
+    def _too_small(self, name: str, got_mm: float, least_mm: float, reader: Reader) -> None:
+        reader.complain(
+            self.span_of(name),
+            f"the mount's {name} of {got_mm:g} mm is less than that of its optic, {least_mm:g} mm",
+            expected=f"'{name}' of at least {least_mm:g}",
+            remedy=f"set '{name}' to {least_mm + _RIM_MM:g}, or remove it: that is the default",
+        )
 
 
 class NoMount:

@@ -13,7 +13,7 @@ from benchlay.document.record import key, read_record
 from benchlay.document.span import Span
 from benchlay.document.words import format_choices, nearest, quote
 from benchlay.elements import KINDS, ElementKind
-from benchlay.elements.mount import MOUNT
+from benchlay.elements.mount import MOUNT, Mount
 from benchlay.layout.materials import Withstands
 from benchlay.layout.names import Later
 from benchlay.layout.stand import Stand
@@ -64,7 +64,7 @@ def read_element(name: Scalar, node: Node, reader: Reader) -> Element | None:
     record, shared = _read_both(cls, node, reader)
     if record is None or shared is None:
         return None
-    if not _turns(record, shared, reader):
+    if not all(fits(record, shared, reader) for fits in (_turns, _holds)):
         return None
     values = {attribute: getattr(shared, attribute) for attribute in _STAND_NAMES}
     stand = Stand(span=node.span, spans=shared.spans, **values)
@@ -72,6 +72,17 @@ def read_element(name: Scalar, node: Node, reader: Reader) -> Element | None:
     return Element(
         name.text, cls.KIND, record, stand, shared.mount, withstands, name.span, dict(shared.spans)
     )
+
+
+def _holds(record: ElementKind, shared: Shared, reader: Reader) -> bool:
+    """Refuse a mount that does not go round its optic, as far as that hangs on nothing else."""
+    mount, before = shared.mount, reader.failures
+    alone = type(record).geometry_on is ElementKind.geometry_on
+    if isinstance(mount, Mount) and record.MOUNTED and alone:
+        reader.path.append("mount")
+        mount.refuse_within(record.geometry().extent, reader)
+        reader.path.pop()
+    return reader.failures == before
 
 
 def _kind(node: Mapping, reader: Reader) -> type[ElementKind] | None:

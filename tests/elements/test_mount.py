@@ -200,7 +200,70 @@ def test_none_is_read_as_no_mount(read_text):
                 "write a value within the bounds, such as '25'",
             ),
         ),
+        (
+            "{width: 19.9}",
+            (
+                "mount: the mount's width of 19.9 mm is less than that of its optic, 20 mm",
+                "'width' of at least 20",
+                "set 'width' to 34, or remove it: that is the default",
+            ),
+        ),
+        (
+            "{height: 15}",
+            (
+                "mount: the mount's height of 15 mm is less than that of its optic, 20 mm",
+                "'height' of at least 20",
+                "set 'height' to 34, or remove it: that is the default",
+            ),
+        ),
+        (
+            "{optic_height: 9}",
+            (
+                "mount: with its centre 9 mm up the optic sticks out of the box of 34 mm",
+                "'optic_height' from 10 to 24",
+                "set 'optic_height' to 17, the middle, or raise 'height'",
+            ),
+        ),
+        (
+            "{height: 30, optic_height: 20.5}",
+            (
+                "mount: with its centre 20.5 mm up the optic sticks out of the box of 30 mm",
+                "'optic_height' from 10 to 20",
+                "set 'optic_height' to 15, the middle, or raise 'height'",
+            ),
+        ),
+        (
+            "nne",
+            (
+                "mount: 'nne' is not what is read here",
+                "'none'; or a table with the keys 'width', 'depth', 'height', 'post', "
+                "'post_diameter', 'foot', 'slots', 'optic_height', 'adjusters' and 'range'",
+                "write it in that form, such as 'none'",
+            ),
+        ),
     ],
 )
 def test_says_what_is_wrong(complaints, mount, problem):
     assert complaints(f"kind: mirror, diameter: 20, metal: gold, mount: {mount}") == [problem]
+
+
+@pytest.mark.parametrize(
+    "mount",
+    [
+        "{width: 20, height: 20, optic_height: 10}",
+        "{optic_height: 10}",
+        "{optic_height: 24}",
+        "none",
+    ],
+)
+def test_a_box_may_end_where_its_optic_does(complaints, mount):
+    assert complaints(f"kind: mirror, diameter: 20, metal: gold, mount: {mount}") == []
+
+
+def test_sizes_in_inches_are_no_smaller_for_it(complaints):
+    keys = "kind: mirror, diameter: 1 in, metal: gold, mount: {width: 25.4, height: 2.54 cm}"
+    assert complaints(keys) == []
+
+
+def test_what_has_no_box_needs_none_as_large(complaints):
+    assert complaints("kind: dump, mount: {width: 5}") == []
