@@ -4,7 +4,9 @@
 
    PBS: {kind: cube, after: laser, distance: 100, reflectance: {s: 99.5 %, p: 2 %}, sends: left}
 
-Its reference point is its centre. `sends` is where light that enters the front is reflected
+Its reference point is its centre. The length of its edges is `side`, or `edge`: a cube that is
+turned by `incidence` to a given `side` (a word, left or right) gives its length as `edge`.
+`sends` is where light that enters the front is reflected
 to, as that light sees it; faces are named in the element's own frame, where left is
 anticlockwise of the front normal seen from above. Top and bottom are ground and end what
 reaches them. Say `PBS.reflected` or `PBS.transmitted` where a beam goes on from it.
@@ -15,6 +17,7 @@ from __future__ import annotations
 from math import sqrt
 from typing import ClassVar
 
+from benchlay.document.form import Reader
 from benchlay.document.forms import Choice
 from benchlay.document.record import key
 from benchlay.elements._coating import COATING, REFLECTANCE, UNCOATED, Coating
@@ -58,6 +61,9 @@ class Cube(ElementKind):
     }
 
     side_mm: float = key(LENGTH, default=25.4, name="side", meaning="length of its edges")
+    edge_mm: float | None = key(
+        LENGTH, default=None, name="edge", meaning="the same, where `side` is that of `incidence`"
+    )
     reflectance: Coating = key(
         REFLECTANCE, meaning="reflected share of the diagonal; the rest goes straight on"
     )
@@ -70,14 +76,29 @@ class Cube(ElementKind):
     glass: Glass = key(GLASS, default=Glass("BK7", None), meaning="the two prisms")
     clear: float = key(USABLE, default=0.9, meaning="usable share of the outer faces")
 
+    def after_read(self, reader: Reader) -> None:
+        """Refuse two lengths."""
+        super().after_read(reader)
+        if self.written("side") and self.written("edge"):
+            reader.complain(
+                self.span_of("edge"),
+                "the length of the cube's edges is given twice",
+                expected="a number as 'side' or as 'edge'",
+                remedy="remove one of them",
+            )
+
+    def length_mm(self) -> float:
+        """Return the length of its edges."""
+        return self.side_mm if self.edge_mm is None else self.edge_mm
+
     def branches(self) -> Branches:
         """Return the ways through this cube, which hang on where it sends the light."""
         return {**self.BRANCHES, "reflected": _ways(_TURNED[self.sends], "reflected")}
 
     def geometry(self) -> Geometry:
         """Return four outer faces, the diagonal and the block."""
-        half = self.side_mm / 2
-        outline = rectangle(self.side_mm, self.side_mm)
+        edge = self.length_mm()
+        half, outline = edge / 2, rectangle(edge, edge)
         clear = outline.scaled(self.clear)
         outer = tuple(
             Face(
@@ -96,7 +117,7 @@ class Cube(ElementKind):
             )
         )
         slant = -1.0 if self.sends == "left" else 1.0
-        long = rectangle(self.side_mm * sqrt(2), self.side_mm)
+        long = rectangle(edge * sqrt(2), edge)
         diagonal = Face(
             "diagonal",
             (0.0, 0.0, 0.0),

@@ -102,3 +102,19 @@ def test_it_is_not_turned_by_its_front(complaints, way):
         == f"'{way.partition(':')[0]}' is for fronts that reflect the beam on; a cube does not"
     )
     assert expected == "'incidence', 'facing', or 'sends' where the kind has it"
+
+
+def test_its_length_may_be_given_as_edge(make):
+    cube = make("kind: cube, reflectance: 50 %, edge: 12.7")
+    assert cube.length_mm() == 12.7
+    assert cube.geometry().extent == (-6.35, 6.35, 6.35, 6.35)
+
+
+def test_two_lengths_are_refused(complaints):
+    assert complaints("kind: cube, reflectance: 50 %, side: 20, edge: 12.7") == [
+        (
+            "the length of the cube's edges is given twice",
+            "a number as 'side' or as 'edge'",
+            "remove one of them",
+        )
+    ]

@@ -90,6 +90,15 @@ def test_side_of_a_cube_and_side_of_a_reflection(layout_of, laser):
     assert (shared.record.side_mm, shared.stand.side) == (25.4, "right")
 
 
+def test_a_cube_with_both_gives_its_length_as_edge(layout_of, laser):
+    cube = laser + (
+        "elements:\n  C: {kind: cube, reflectance: 50 %, "
+        "after: green, distance: 9, incidence: 3, side: right, edge: 30}\n"
+    )
+    element = layout_of(cube).elements["C"]
+    assert (element.record.length_mm(), element.stand.side) == (30.0, "right")
+
+
 def test_side_of_a_cube_needs_no_incidence(layout_of, laser):
     text = (
         laser
