@@ -1,11 +1,11 @@
 """The benches of the museum's conservation workshop: read, placed, traced, and judged by hand.
 
-What arrives on the hologram bench is worked out here from the figures written in its layout:
-reflectances as products, bare faces by Fresnel's formula, the half-wave plate by its angle,
-beam widths by the propagation of a Gaussian beam. Nothing of that comes from benchlay.
+The gas cell, stone cleaning and the bad bench have files of their own in `layouts`. What arrives
+on the hologram bench is worked out here from the figures written in its layout: reflectances as
+products, bare faces by Fresnel's formula, the half-wave plate by its angle, beam widths by the
+propagation of a Gaussian beam. Nothing of that comes from benchlay.
 """
 
-import re
 from functools import cache
 from itertools import pairwise
 from math import asin, atan2, cos, degrees, dist, erf, pi, radians, sin, sqrt
@@ -20,20 +20,6 @@ from benchlay.results.routes import last_legs, route_results
 
 ROOT = Path(__file__).parents[1]
 BENCHES = sorted(path.stem for path in (ROOT / "layouts").glob("*.yaml"))
-CHECKS = {
-    "clipped",
-    "off-height",
-    "off-centre",
-    "route-broken",
-    "beam-blocked",
-    "stray-unstopped",
-    "escape",
-    "coating-unstated",
-    "dark-element",
-    "unaccounted",
-    "into-source",
-}
-
 # Index of BK7 at 632.8 nm against air at 20 °C; catalogues of several makers agree on the
 # digits given (from memory).
 BK7 = 1.51509
@@ -141,10 +127,39 @@ def test_each_bench_closes_its_ledger(bench):
         assert not trace.bounded[variant]
 
 
-def test_hologram_has_a_bench_and_a_size_as_real_ones_have():
-    bench = traced("hologram").placed.base.layout
-    assert 18 <= len(bench.elements) <= 40
-    assert set(traced("hologram").scene.variants) == {"as drawn", "alignment", "loading"}
+@pytest.mark.parametrize(
+    ("bench", "states"),
+    [
+        ("hologram", {"alignment", "loading"}),
+        ("fluorescence", {"blue-only", "green-only", "arms", "loading"}),
+        ("gas-cell", {"alignment"}),
+        ("stone-cleaning", {"alignment", "green", "service"}),
+    ],
+)
+def test_benches_have_sizes_and_states_as_real_ones_have(bench, states):
+    assert 12 <= len(traced(bench).placed.base.layout.elements) <= 40
+    assert set(traced(bench).scene.variants) == {"as drawn", *states}
+
+
+def test_every_bench_is_known_here():
+    assert set(BENCHES) == {"bad", "fluorescence", "gas-cell", "hologram", "stone-cleaning"}
+
+
+@pytest.mark.parametrize("bench", BENCHES)
+def test_every_check_can_be_judged_on_every_bench(bench):
+    told = [one.message for one in findings(bench) if one.message.startswith("not evaluated")]
+    assert not told
+
+
+@pytest.mark.parametrize("bench", BENCHES)
+def test_every_route_arrives_in_some_state(bench):
+    arrived, named = set(), set()
+    for variant in range(len(traced(bench).scene.variants)):
+        for one in route_results(traced(bench), variant):
+            named.add(one.route)
+            arrived |= {one.route} if one.arrives else set()
+    # On the bad bench a clamp stands before the camera, and a knocked mirror misses its target.
+    assert named - arrived == ({"pointer", "view"} if bench == "bad" else set())
 
 
 def test_hologram_sampler_sends_what_a_bare_face_sends():
@@ -243,39 +258,6 @@ def test_findings_are_those_the_drafter_states(bench):
     assert [one for one in findings(bench) if one.severity != "note"] == []
 
 
-def test_exactly_the_faults_of_the_bad_bench_are_found():
-    graver = [(one.check, one.element) for one in findings("bad") if one.check in CHECKS]
-    assert set(graver) == {
-        ("clipped", "A1"),
-        ("off-height", "W1"),
-        ("off-centre", "M1"),
-        ("route-broken", "T1"),
-        ("beam-blocked", "clamp"),
-        ("stray-unstopped", "W1"),
-        ("stray-unstopped", "F1"),
-        ("escape", "M2"),
-        ("coating-unstated", "M1"),
-        ("dark-element", "L1"),
-        ("unaccounted", "green"),
-        ("into-source", "green"),
-    }
-    assert {check for check, _ in graver} == CHECKS
-    # Each of two optics sends off a stray from either face, and both of F1 go home.
-    assert len(graver) == len(set(graver)) + 3
-
-
-def test_bad_bench_has_its_figures_right():
-    by_check = {one.check: one for one in findings("bad")}
-    # The opening is 1.2 times as wide as the beam, 50 mm from the waist (0.4 mm, 632.8 nm).
-    w = 0.4 * sqrt(1 + (50 / AIR * WAVELENGTH_MM / (pi * 0.4**2)) ** 2)
-    assert by_check["clipped"].value == pytest.approx(np.exp(-2 * (0.48 / w) ** 2), rel=1e-6)
-    assert by_check["off-height"].value == pytest.approx(2.0, abs=1e-9)
-    assert by_check["off-centre"].value == pytest.approx(4.0, abs=1e-9)
-    # Between two faces of reflectance R what comes out under the floor F is about F / (1 - R),
-    # with the floor at a millionth of 10 W.
-    assert by_check["unaccounted"].value == pytest.approx(1e-5 / 0.02, rel=0.03)
-
-
 def test_fluorescence_sends_each_laser_to_the_sample():
     # Blue: through DC1 (1 % and 0.5 % sent back), off DC2 (98 %), lens (0.5 % a face).
     blue = 20e-3 * 0.99 * 0.995 * 0.98 * 0.995**2
@@ -301,9 +283,3 @@ def trace_end(bench, name):
     trace = traced(bench)
     (beam,) = last_legs(trace, 0, trace.ways.names.index(name))
     return tuple(trace.beams.end[beam])
-
-
-def test_every_fault_is_told_beside_the_element_in_the_bad_layout():
-    text = (ROOT / "layouts/bad.yaml").read_text(encoding="utf-8")
-    for check in CHECKS:
-        assert re.search(rf"# (.+, )?{check}[,:]", text), check

@@ -20,6 +20,7 @@ BENCHES = sorted(path.stem for path in (ROOT / "layouts").glob("*.yaml"))
 NUMBER = re.compile(r"[-+]?(?:\d+\.\d*|\.\d+|\d+)(?:[eE][-+]?\d+)?")
 # Drawings carry three decimals of a millimetre; the last of them may be rounded otherwise.
 DRAWN_MM = 2e-3
+MOST_BYTES = 3_000_000
 
 
 def committed(bench):
@@ -97,6 +98,23 @@ def test_every_bench_has_its_exports_and_no_other():
 def test_exports_hold_the_files_of_a_review(bench):
     kept = {path.relative_to(committed(bench)).as_posix() for path in committed(bench).rglob("*")}
     assert kept == set(made(bench))
+
+
+@pytest.mark.parametrize("bench", BENCHES)
+def test_a_review_stays_small_enough_to_be_kept(bench):
+    # A change to a layout is read as a difference of these files.
+    assert sum(map(len, made(bench).values())) < MOST_BYTES
+
+
+@pytest.mark.parametrize("bench", BENCHES)
+def test_the_verdict_is_that_of_the_comment_at_the_top(bench):
+    text = " ".join((ROOT / f"layouts/{bench}.yaml").read_text(encoding="utf-8").split())
+    verdict = json.loads(made(bench)["findings.json"])["reviews"][0]["verdict"]
+    if "nothing that fails" in text:
+        assert verdict in ("none", "note")
+    else:
+        assert "everything wrong" in text
+        assert verdict == "fail"
 
 
 @pytest.mark.parametrize("bench", BENCHES)

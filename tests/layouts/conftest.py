@@ -21,9 +21,13 @@ class Bench:
         self.trace = pipeline.trace(pipeline.place(source))
         self.scene, self.beams = self.trace.scene, self.trace.beams
 
-    def findings(self, on=None):
+    def every(self, on=None):
+        """Tell all findings, notes among them."""
+        return pipeline.check(self.trace, on=on)
+
+    def findings(self):
         """Tell the findings that are more than a note."""
-        return [one for one in pipeline.check(self.trace, on=on) if one.severity != "note"]
+        return [one for one in self.every() if one.severity != "note"]
 
     def found(self):
         """Tell which check found something at which element."""
