@@ -16,6 +16,7 @@ from benchlay.layout.bench import Bench
 from benchlay.layout.drawing import Drawing, Revision
 from benchlay.layout.elements import Element, read_element
 from benchlay.layout.enclosure import Enclosure
+from benchlay.layout.facing import mentioned, refuse_faceless
 from benchlay.layout.header import SECTIONS, Header
 from benchlay.layout.limits import Limits
 from benchlay.layout.materials import Material
@@ -168,13 +169,13 @@ class _Document:
         self.reader.path = []
         return enclosure
 
-    @staticmethod
-    def _check(parts: _Parts, references: References) -> None:
+    def _check(self, parts: _Parts, references: References) -> None:
         for source in parts.sources.values():
             references.source(source)
         for element in parts.elements.values():
             references.element(element)
         refuse_rings(parts.elements, references.reader)
+        refuse_faceless(parts.elements, mentioned(self.root.get("routes")), references.reader)
         if parts.enclosure is not None:
             references.enclosure(parts.enclosure)
 

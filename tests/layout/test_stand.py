@@ -75,6 +75,7 @@ def test_an_element_that_only_a_route_names_may_be_turned(layout_of, laser):
     text = laser + (
         "elements:\n  M1: {kind: mirror, diameter: 25, "
         "metal: silver, at: [300, 450], turn: left 90}\n"
+        "routes: {a: [green, M1]}\n"
     )
     assert layout_of(text).elements["M1"].stand.after == ()
 
