@@ -153,7 +153,7 @@ def test_what_stands_wrong_does_so_by_as_much_as_drawn(by_check):
         (("at: [487, 200]", "at: [488.1, 200]"), ("mount-clash", "psu")),
         (("at: [640, 20]", "at: [440, 20]"), ("tight-access", "M2")),
         (("surface_height: 1000", "surface_height: 960"), ("eye-level", "M2")),
-        (("from: [3000, 1700]", "from: [3000, 2300]"), ("at-door", "M2")),
+        (("from: [4700, 3100]", "from: [4700, 3700]"), ("at-door", "M2")),
         (("access: tool", "access: interlocked"), ("no-interlock", "west")),
         (("at: [1190, 930]", "at: [1150, 930]"), ("off-bench", "L1")),
     ],
