@@ -33,7 +33,8 @@ Passes
 
 What it does not see
 --------------------
-Ripples from edges that take less than the limit: diffraction is not part of the trace. The
+Ripples from edges that take less than the limit: diffraction is not part of the trace. Light
+that passes an optic and meets a further one goes on from there, and is not counted as lost. The
 decentre that is allowed supposes an uncut Gaussian beam.
 
 Source

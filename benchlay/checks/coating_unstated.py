@@ -3,7 +3,8 @@
 Why it matters
 --------------
 A coating made for one wavelength may do anything at another: mirrors turn into windows, and
-windows into mirrors. The trace takes the bare material there, which a real coating is not.
+windows into mirrors. The trace takes the bare material there, which a real coating is not. Where
+all that meets a face is within the accessible limit this is a note, one for each element.
 
 Fails
 -----
