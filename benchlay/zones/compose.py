@@ -82,6 +82,7 @@ def zones_of(trace: Trace, states: Iterable[str] | None = None) -> Zones:
         if state in wanted:
             found += _of_state(trace, limits, variant)
             not_computed += _beside(trace, limits, variant)
+            not_computed += _beyond(trace, limits, variant)
     return Zones(tuple(found), tuple(dict.fromkeys(not_computed)))
 
 
@@ -209,6 +210,22 @@ def _listed(names: list[str]) -> str:
 
 def _spot_maker(spot: Spot) -> _Maker:
     return _Maker("scattered from", (spot.name or f"the {spot.sink}",))
+
+
+def _beyond(trace: Trace, limits: LimitTable, variant: int) -> list[str]:
+    """Name hazardous light that is handed over: it goes on where nothing is traced."""
+    b, scene = trace.beams, trace.scene
+    out = []
+    rows = trace.of_variant(variant)
+    for beam in rows[b.end_kind[rows] == HANDED].tolist():
+        power = float(b.end_core[beam])
+        if power > float(limits.of(trace, np.array([beam]))[0][0]):
+            opening = scene.names[int(scene.solids.hole_name[b.end_row[beam]])]
+            out.append(
+                f"{with_unit(power, 'W')} of {_makers([_maker(trace, beam)])[0]} is handed over at "
+                f"{opening}: no zone is drawn beyond it (state {scene.variants[variant]})"
+            )
+    return out
 
 
 def _beside(trace: Trace, limits: LimitTable, variant: int) -> list[str]:

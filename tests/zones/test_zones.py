@@ -269,6 +269,20 @@ def test_a_zone_says_what_makes_it_and_how_it_is_seen():
     )
 
 
+@pytest.mark.parametrize(("power", "told"), [("0.5 mW", True), ("0.3 mW", False)])
+def test_what_is_handed_over_goes_on_where_no_zone_is_drawn(power, told):
+    port = "openings: {port: {along: 300, height: 100, diameter: 40}}"
+    more = f"""enclosure: {{panels: {{e: {{from: [900, 0], to: [900, 600], {port}}}}}}}
+        routes: {{out: [green, e.port]}}"""
+    aside = "{kind: target, at: [100, 500], facing: 180}"
+    found = zones_of(traced(straight(power, 1, target=aside, more=more)))
+    said = (
+        "0.5 mW of green on out is handed over at e.port: no zone is drawn beyond it (state "
+        "as drawn)"
+    )
+    assert found.not_computed == ((said,) if told else ())
+
+
 def test_light_that_passes_beside_its_obstacle_is_named():
     edge = "{kind: target, at: [700, 301], facing: 180, size: [5, 5], diffuse: 0, mount: none}"
     text = straight("1 W", 3, target=edge)
