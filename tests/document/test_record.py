@@ -324,7 +324,6 @@ def test_schema():
 
 
 def test_schema_is_a_valid_one():
-    jsonschema = pytest.importorskip("jsonschema")
     jsonschema.Draft202012Validator.check_schema(schema_of(Mirror))
     validator = jsonschema.Draft202012Validator(schema_of(Mirror))
     assert validator.is_valid({"kind": "mirror", "width": "1 in"})
@@ -360,9 +359,7 @@ good.width_mm = 3.0
 """
 
 
-@pytest.mark.slow
 def test_type_checker_knows_the_constructor(tmp_path):
-    api = pytest.importorskip("mypy.api")
     file = tmp_path / "typed.py"
     file.write_text(TYPED)
     out, _, _ = api.run(

@@ -4,6 +4,7 @@ import re
 from pathlib import Path
 
 import numpy as np
+import pyogrio
 import pytest
 import shapely
 
@@ -34,7 +35,6 @@ def drawn(request):
 @pytest.fixture
 def entities(drawn, tmp_path):
     """Layer, kind, words and geometry of every entity inside the view, as GDAL reads it."""
-    pyogrio = pytest.importorskip("pyogrio")
     file = tmp_path / "plan.dxf"
     file.write_bytes(dxf.write(drawn.sheet))
     options = {"DXF_ENCODING": "UTF-8", "DXF_INLINE_BLOCKS": "FALSE"}
