@@ -4,7 +4,9 @@ import pickle
 import sys
 import textwrap
 
+import jsonschema
 import pytest
+from mypy import api
 
 from benchlay.document.describe import reference_text, schema_of
 from benchlay.document.forms import (
