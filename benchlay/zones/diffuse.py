@@ -20,6 +20,7 @@ import shapely
 from shapely.geometry.base import BaseGeometry
 
 from benchlay.exposure.distances import diffuse_distance_m
+from benchlay.layout.enclosure import Enclosure, Panel
 from benchlay.layout.materials import BODY, SHEET, Material
 from benchlay.placing.placed import PlacedState
 from benchlay.scene.tables import SINKS, Floats, Ints
@@ -182,7 +183,11 @@ def _in_front(
 def _shadows(
     state: PlacedState, at: tuple[float, float, float], radius: float
 ) -> Iterator[BaseGeometry]:
-    """Yield what lies behind panels that are closed, whole, and too high to be looked over."""
+    """Yield what lies behind panels that are closed, whole, and not to be looked over.
+
+    A panel is not where it is higher than the radius reaches, or where a lid keeps the light
+    from getting above its upper edge.
+    """
     enclosure = state.layout.enclosure
     if enclosure is None:
         return
@@ -190,8 +195,7 @@ def _shadows(
     for name in sorted(enclosure.panels):
         panel = enclosure.panels[name]
         low, high = enclosure.heights_mm(panel)
-        blocks = high >= z + radius and (low <= 0.0 or low <= z - radius)
-        if panel.open or panel.openings or not blocks:
+        if panel.open or panel.openings or (low > 0.0 and low > z - radius):
             continue
         ends = np.array([panel.from_mm, panel.to_mm])
         away = ends - (x, y)
@@ -199,7 +203,30 @@ def _shadows(
         beside = abs(away[0, 0] * away[1, 1] - away[0, 1] * away[1, 0])
         if beside < _ON_PLANE_MM * panel.length_mm or distances.min() <= 0.0:
             continue  # the spot lies on it, or in its line
+        if high < z + radius and not _lidded(enclosure, panel, at, high):
+            continue
         height = beside / panel.length_mm  # of the spot above the panel's line
         far = away * (2.0 * radius + height) / height
         behind = far[::-1] + np.array([x, y])
         yield shapely.Polygon([*ends, *behind])
+
+
+def _lidded(
+    enclosure: Enclosure, panel: Panel, at: tuple[float, float, float], top_mm: float
+) -> bool:
+    """Whether closed lids of one height cover all ways from a spot up over a panel.
+
+    A way that is above the panel's upper edge at its line has crossed every height between
+    that and the spot before it, somewhere over the triangle of spot and panel. A lid whose
+    lower face is higher than the upper edge leaves a gap, and lids of several heights leave
+    one between them: neither counts.
+    """
+    by_height: dict[float, list[BaseGeometry]] = {}
+    for lid in enclosure.lids.values():
+        if not lid.open and at[2] <= lid.height_mm <= top_mm + _ON_PLANE_MM:
+            by_height.setdefault(lid.height_mm, []).append(shapely.Polygon(lid.outline))
+    ways = shapely.Polygon([at[:2], panel.from_mm, panel.to_mm])
+    return any(
+        shapely.covers(shapely.buffer(shapely.union_all(lids), _ON_PLANE_MM), ways)
+        for lids in by_height.values()
+    )
