@@ -35,8 +35,9 @@ Passes
 
 What it does not see
 --------------------
-Screens, tubes, obstacles and dumps, which may stand in the dark. Elements behind a break or a
-closed shutter: what darkens them is told there. Light below the power floor does not count.
+Screens, tubes, obstacles and dumps, which may stand in the dark, and so may what stands in a
+panel's opening, like the glass of a viewing window. Elements behind a break or a closed
+shutter: what darkens them is told there. Light below the power floor does not count.
 
 Source
 ------
@@ -86,6 +87,7 @@ def _dark(context: Context) -> tuple[str, ...]:
         name
         for name, item in states[0].elements.items()
         if item.element.record.DARK_MATTERS
+        and item.element.stand.in_opening is None
         and name not in lit
         and name not in behind
         and not all(state.elements[name].out for state in states)

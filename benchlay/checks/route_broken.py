@@ -59,17 +59,17 @@ SEVERITY = Severity.FAIL
 
 
 def check(context: Context, variant: int) -> Iterator[Finding]:
-    """Report each beam with which a route ends too early, once for all its routes."""
+    """Report each beam with which routes end too early, once for all of them."""
     explained = _explained(context, variant)
-    told: set[tuple[int, str]] = set()
+    broken: dict[tuple[int, str], list[Leg]] = {}
     for leg in context.routes.of_state(variant):
         route = context.trace.ways.routes[leg.route]
         if not leg.broken or leg.beam is None or leg.beam in explained:
             continue
         wanted = route.items[leg.reached + 1]
-        if (leg.beam, wanted.name) not in told:
-            told.add((leg.beam, wanted.name))
-            yield _finding(context, leg)
+        broken.setdefault((leg.beam, wanted.name), []).append(leg)
+    for legs in broken.values():
+        yield _finding(context, legs)
 
 
 def _explained(context: Context, variant: int) -> set[int]:
@@ -84,31 +84,36 @@ def _explained(context: Context, variant: int) -> set[int]:
     }
 
 
-def _finding(context: Context, leg: Leg) -> Finding:
-    assert leg.beam is not None
-    route, beam = context.trace.ways.routes[leg.route], leg.beam
-    here, wanted = route.items[leg.reached], route.items[leg.reached + 1]
-    target = f"{wanted.name}.{wanted.part}" if wanted.part else wanted.name
-    power = float(context.trace.beams.start.power[beam])
+def _finding(context: Context, legs: list[Leg]) -> Finding:
+    first = legs[0]
+    assert first.beam is not None
+    routes = [context.trace.ways.routes[leg.route] for leg in legs]
+    here, wanted = routes[0].items[first.reached], routes[0].items[first.reached + 1]
+    parts = dict.fromkeys(route.items[first.reached + 1].part for route in routes)
+    targets = [f"{wanted.name}.{part}" if part else wanted.name for part in parts]
+    target = targets[0] if len(targets) == 1 else wanted.name
+    beam, power = first.beam, float(context.trace.beams.start.power[first.beam])
+    names = " and ".join(f"'{route.name}'" for route in routes)
+    breaks = f"route {names} breaks" if len(routes) == 1 else f"routes {names} break"
     return Finding(
         check=NAME,
         severity=SEVERITY,
         message=(
-            f"route '{route.name}' breaks between '{here.name}' and '{target}': the beam "
-            f"({power_text(power)}) {_instead(context, beam, wanted.name)}"
+            f"{breaks} between '{here.name}' and '{target}': the beam "
+            f"({power_text(power)}) {_instead(context, beam, wanted.name, len(routes))}"
         ),
         expected=f"the beam that leaves '{here.name}' meets '{target}' and goes on as named",
-        remedy=_remedy(context, leg, target),
+        remedy=_remedy(context, legs, target),
         element=wanted.name,
         beam=int(context.numbers[beam]),
         at=context.end_at(beam),
         span=wanted.span,
-        related=((route.span, f"route '{route.name}'"),),
-        key=(*context.chain(beam), target),
+        related=tuple((route.span, f"route '{route.name}'") for route in routes),
+        key=(*context.chain(beam), targets[0]),
     )
 
 
-def _instead(context: Context, beam: int, wanted: str) -> str:
+def _instead(context: Context, beam: int, wanted: str, routes: int) -> str:
     """Say where the light goes instead."""
     if context.trace.beams.end_kind[beam] == NOTHING:
         return "leaves the bench and meets nothing"
@@ -116,23 +121,26 @@ def _instead(context: Context, beam: int, wanted: str) -> str:
         return f"goes to {context.end_words(beam)} instead"
     if not _goes_on(context, beam):
         return f"ends at {context.end_words(beam)}"
-    return f"meets {context.end_words(beam)} but does not leave it as the route says"
+    say = "route says" if routes == 1 else "routes say"
+    return f"meets {context.end_words(beam)} but does not leave it as the {say}"
 
 
 def _goes_on(context: Context, beam: int) -> bool:
     return bool(np.any(context.trace.beams.start.parent == beam))
 
 
-def _remedy(context: Context, leg: Leg, target: str) -> str:
+def _remedy(context: Context, legs: list[Leg], target: str) -> str:
+    leg = legs[0]
     assert leg.beam is not None
     met = context.routes.met(leg.beam)
     if met is None or context.trace.beams.end_kind[leg.beam] != FACE:
         return f"turn '{_steering(context, leg)}' so that the beam meets '{target}', or move " + (
             f"'{target}' there"
         )
+    where = "the route" if len(legs) == 1 else "these routes"
     if met == target.partition(".")[0]:
-        return f"turn '{met}' the other way round, or name the branch that is meant in the route"
-    return f"take '{met}' out of the way, or name it in the route before '{target}'"
+        return f"turn '{met}' the other way round, or name the branch that is meant in {where}"
+    return f"take '{met}' out of the way, or name it in {where} before '{target}'"
 
 
 def _steering(context: Context, leg: Leg) -> str:
