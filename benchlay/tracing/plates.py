@@ -58,7 +58,9 @@ def _plate_shapes(
     )
     clockwise = first[:, 0] * second[:, 1] - first[:, 1] * second[:, 0] < 0.0
     vertices[clockwise] = vertices[clockwise, ::-1]
-    rise = gradient(frame, normal, slope, root)
+    # From where the plane crosses the chief ray, if outside the plate: plates of one plane must
+    # lie at one depth, so that their order decides between them.
+    rise = gradient(frame, normal, slope, inverse_roots(frame, np.maximum(crossing, 0.0)))
     flat = np.abs(slope) < GRAZING
     rise[flat] = 0.0
     plane = np.concatenate((np.where(flat, z, crossing)[:, None], rise), axis=1)

@@ -172,7 +172,8 @@ def _flat_sides(
     area = np.roll(vertices, -1, axis=1)
     twice = (vertices[..., 0] * area[..., 1] - vertices[..., 1] * area[..., 0]).sum(axis=1)
     vertices[twice < 0.0] = vertices[twice < 0.0, ::-1]
-    rise = gradient(frame, normal, slope, inverse_roots(frame, depth))
+    # As for plates: an optic's front and its mount's lie in one plane, so at one depth.
+    rise = gradient(frame, normal, slope, inverse_roots(frame, np.maximum(crossing, 0.0)))
     plane = np.concatenate((crossing[:, None], rise), axis=1)
     # Halfway, not the mean of the corners: some are repeated to fill the row.
     plane[along] = 0.0

@@ -1,5 +1,7 @@
 """Several bodies in one cross-section: rims, mounts, posts, spill, panels, openings, states."""
 
+from itertools import product
+
 import numpy as np
 
 from tests.tracing.bench import Bench, layout, length, power, scene, vectors
@@ -8,6 +10,14 @@ from tests.tracing.referee.fresnel import powers
 from tests.tracing.scenes.cuts import NM, WALL, _high
 
 C45 = np.cos(np.radians(45))
+CONVERGING = "{waist_radius: 0.02, waist_ahead: 800}"
+
+
+def _width_at(beam, z):
+    """Radius of a round beam z behind its source."""
+    if "ahead" not in beam:
+        return gauss.radius(4, z, NM)
+    return gauss.radius(0.02, z + 600 if "-" in beam else 800 - z, NM)
 
 
 class Overfilled:
@@ -65,6 +75,35 @@ def an_overfilled_mirror_in_its_mount():
         yield power(f"{beam} rim", bench.sink("rim", "M"), rim)
         yield power(f"{beam} mount and post", bench.sink("body", "M"), body)
         yield power(f"{beam} past it", bench.sink("target", "T"), 1 - clear - rim - body)
+
+
+def _along_flow_lines(beam, radius, off):
+    """Share of a beam on a disc at 45 degrees, 300 from the source and `off` from its axis."""
+    nodes, weights = np.polynomial.legendre.leggauss(120)
+    turn = np.arange(256) * 2 * np.pi / 256
+    r = radius * (nodes[:, None] + 1) / 2
+    a, b = r * np.cos(turn), r * np.sin(turn)
+    w, step = _width_at(beam, 300 - a * C45), 1e-3
+    slope = (_width_at(beam, 300 - a * C45 + step) - _width_at(beam, 300 - a * C45 - step)) / 2e-3
+    y = off - a * C45
+    scaled = C45 * np.abs(w - y * slope) / w**3  # of d(y/w) d(z/w) to da db
+    density = 2 / np.pi * np.exp(-2 * (y * y + b * b) / w**2)
+    return float((weights[:, None] * r * radius / 2 * density * scaled).sum() * 2 * np.pi / 256)
+
+
+@scene
+def a_tilted_mirror_that_the_chief_ray_passes():
+    """Its clear region still mirrors what falls there: neither rim nor mount lies before it."""
+    mounted = "{width: 26.7, depth: 18, height: 26.7}"
+    beams = ("{waist_radius: 4}", "{waist_radius: 0.02, waist_ahead: -600}", CONVERGING)
+    for beam, off, mount in product(beams, (6, 14, -14), ("none", mounted)):
+        text = _mirror(400, off, mount=mount).replace("25.4", "12.7") + WALL
+        bench = Bench(_high(text, beam=beam), floor=1e-15)
+        clear = _along_flow_lines(beam, 0.9 * 6.35, off)
+        ring = _along_flow_lines(beam, 6.35, off) - clear
+        spilled = sum(b.power for b in bench.from_("M.front") if b.event == "spilled")
+        yield power(f"{beam} {off} {mount} mirrored", spilled, clear, 1e-8)
+        yield power(f"{beam} {off} {mount} rim", bench.sink("rim", "M"), ring, 1e-8)
 
 
 @scene
