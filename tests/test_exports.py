@@ -68,6 +68,16 @@ def same(kept, new):
     return type(kept) is type(new) and kept == new
 
 
+def own_part(name, text):
+    """What benchlay has drawn in a file; the rest of a DXF goes by the library's version."""
+    if not name.endswith(".dxf"):
+        return text
+    head, tables, rest = text.partition("\n  2\nTABLES\n")
+    drawn, objects, _ = rest.partition("\n  2\nOBJECTS\n")
+    assert head and tables and drawn and objects
+    return drawn
+
+
 def drawing_differences(kept, new):
     """Tell in which lines two drawings differ by more than the rounding of a number."""
     kept, new = kept.splitlines(), new.splitlines()
@@ -128,7 +138,7 @@ def test_exports_are_current(bench, ending):
         if ending == "json":
             found = list(differences(json.loads(kept), json.loads(new)))
         else:
-            found = list(drawing_differences(kept, new))
+            found = list(drawing_differences(own_part(name, kept), own_part(name, new)))
         assert not found, "\n".join([f"{name}: run `benchlay review` again", *found[:5]])
 
 

@@ -25,6 +25,7 @@ _MOST_WEAK = 80
 _MOST_TAGS = 24  # on strays: with more, a sheet says less
 _MOST_FULL_TAGS = 6  # that also say where the light comes from
 _TOGETHER_MM = 10.0  # strays that start and end nearer to each other than this share a tag
+_NO_LENGTH_MM = 1e-6  # the faces of a thin optic stand in one place, give or take rounding
 _SAMPLES = 13
 _DEPTHS = 5  # at which a stray's power through the aperture is looked at
 _OFF_CLEAR = 0.01  # of the light reaches a face's clear region: it ends on the rim
@@ -51,7 +52,7 @@ def legs_of(trace: Trace, limits: LimitTable, variant: int, decimal: str) -> Dra
     """
     s = trace.beams.start
     rows = trace.of_variant(variant)
-    rows = rows[trace.beams.length[rows] > 0.0]
+    rows = rows[trace.beams.length[rows] > _NO_LENGTH_MM]
     working = rows[s.node[rows] >= 0]
     strays = rows[(s.node[rows] < 0) & (s.within[rows] == OUTSIDE) & (s.power[rows] > 0.0)]
     share = _share_of_limit(trace, limits, strays)

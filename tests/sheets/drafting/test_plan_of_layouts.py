@@ -83,7 +83,7 @@ def state_has_outline(item):
 
 def test_every_working_leg_is_one_line_true_to_size(drawn, entities):
     s, b = drawn.trace.beams.start, drawn.trace.beams
-    rows = np.flatnonzero((s.variant == 0) & (s.node >= 0) & (b.length > 0.0))
+    rows = np.flatnonzero((s.variant == 0) & (s.node >= 0) & (b.length > 1e-6))
     for wave, nm in enumerate(drawn.trace.scene.wavelengths_nm.tolist()):
         layer = "BEAM_" + re.sub(r"\.", "_", f"{nm:g}")
         lines = [
