@@ -68,8 +68,7 @@ from benchlay.checks._check import Context, above, power_text, wavelength_text
 from benchlay.elements._kind import Acts
 from benchlay.findings import Finding, Severity
 from benchlay.geometry.distinct import distinct
-from benchlay.scene.tables import SINK, Ints, Mode
-from benchlay.tracing.hits import FACE
+from benchlay.scene.tables import SINK, Flags, Ints, Scene
 
 NAME = "unaccounted"
 
@@ -156,25 +155,33 @@ def _below_floor(context: Context, variant: int, source: str, rows: Ints) -> Ite
 def _unknown(context: Context, variant: int, rows: Ints) -> Iterator[Finding]:
     """Report by optic and wavelength what went into glass whose index is not known there."""
     trace, scene = context.trace, context.trace.scene
+    dark = _dark_faces(scene) & scene.faces.present[variant][:, None]
+    if not dark.any():
+        return
     rows = rows[trace.ledger.sink[rows] == SINK["absorbed"]]
-    beams = trace.ledger.beam[rows]
-    at_face = trace.beams.end_kind[beams] == FACE
-    rows, beams = rows[at_face], beams[at_face]
-    face, wave = trace.beams.end_row[beams], trace.beams.start.wave[beams]
-    blind = np.isnan(scene.indices)
-    film = scene.faces.mode[face, wave] == Mode.METAL
+    beams, name = trace.ledger.beam[rows], trace.ledger.name[rows]
+    wave = trace.beams.start.wave[beams]
+    found: dict[tuple[int, int], list[float]] = {}
+    for face, line in np.argwhere(dark).tolist():
+        # By name: what falls beside the beam's own end is booked with the same beam.
+        mine = (name == scene.face_owner_name[face]) & (wave == line)
+        power = trace.ledger.power[rows[mine]].tolist()
+        found[int(scene.faces.owner[face]), line] = power
+    for (owner, line), power in sorted(found.items()):
+        if fsum(power) > 0.0:
+            yield _in_the_dark(context, variant, scene.elements[owner], line, fsum(power))
+
+
+def _dark_faces(scene: Scene) -> Flags:
+    """Tell which faces (F, L) would let light into glass, or out of it, of unknown index."""
+    f = scene.faces
     # Behind the one open face of a mirror with a ground back all is swallowed in any case.
-    open_faces = np.bincount(scene.faces.owner[scene.faces.acts != Acts.OPAQUE])
-    through = open_faces[scene.faces.owner[face]] > 1
-    dark = ~film & through & (blind[scene.behind[face], wave] | blind[scene.before[face], wave])
-    met = np.stack((scene.faces.owner[face], wave))[:, dark].T.tolist()
-    power = trace.ledger.power[rows[dark]]
-    for owner, line in sorted(set(map(tuple, met))):
-        total = fsum(
-            p for p, pair in zip(power.tolist(), met, strict=True) if pair == [owner, line]
-        )
-        if total > 0.0:
-            yield _in_the_dark(context, variant, scene.elements[owner], line, total)
+    open_ = f.acts != Acts.OPAQUE
+    open_faces = np.bincount(f.owner[open_], minlength=len(scene.elements))
+    through = open_ & (open_faces[f.owner] > 1)
+    unknown = np.isnan(scene.indices)
+    dark: Flags = through[:, None] & (unknown[scene.behind] | unknown[scene.before])
+    return dark
 
 
 def _in_the_dark(

@@ -60,3 +60,11 @@ def test_a_metal_beyond_its_table_is_told_as_such(make_context):
     (finding,) = (f for f in findings if f.check == "coating-unstated")
     assert "assumed to send all back" in finding.message
     assert "not its metal" in finding.remedy
+
+
+def test_what_falls_on_glass_beside_the_chief_ray_is_told_as_well(make_context):
+    text = (SOURCE % 200).replace("0.4", "5") + TARGET
+    text += "  X: {kind: window, at: [400, 208], facing: 180, diameter: 12.7, mount: none}\n"
+    findings, _ = run_checks(make_context(text))
+    (finding,) = (f for f in findings if f.check == "unaccounted")
+    assert finding.element == "X"
