@@ -34,8 +34,8 @@ Passes
 
 What it does not see
 --------------------
-Beams that no route names. Where an optic is met twice, each meeting is held against the same
-mark.
+Beams that no route names. Where a route meets an optic more than once, as in a folded path,
+the meetings after the first: they are meant to lie elsewhere.
 
 Source
 ------

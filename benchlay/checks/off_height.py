@@ -47,7 +47,9 @@ Passes
 
 What it does not see
 --------------------
-Beams that no route names. On a tilted face the distance is measured up the face, not upright.
+Beams that no route names. Where a route meets an optic more than once, as in a folded path,
+the meetings after the first: they are meant to lie elsewhere. On a tilted face the distance is
+measured up the face, not upright.
 
 Source
 ------

@@ -10,6 +10,7 @@ import numpy as np
 from benchlay.checks._check.behind import met_before_end
 from benchlay.checks._check.routes import Routes
 from benchlay.elements._kind import Acts
+from benchlay.placing.placed import PlacedElement
 from benchlay.scene.tables import PARTS, SINK, SINKS, Ints
 from benchlay.tracing import Trace
 from benchlay.tracing.beams import FACE, SOLID
@@ -174,22 +175,25 @@ class Meetings:
         return (left, up) if inside and way >= 0.0 else None
 
     def marks(self, variant: int, rows: Ints) -> Iterator[Mark]:
-        """Yield where working beams meet optics, each optic once a passage.
+        """Yield where working beams meet optics, each optic once.
 
         The mark is on the front, so that is where it is measured, from whichever side the
-        light comes; light that never meets the front is measured where it enters.
+        light comes; light that never meets the front is measured where it enters. Of the
+        meetings of a route with one optic, the first is held against the mark: the others of
+        a folded path are meant to lie elsewhere.
         """
         beams, scene = self._trace.beams, self._trace.scene
         state = self._trace.placed.states[variant]
         for beam in rows[self._routes.working[rows] & (beams.end_kind[rows] == FACE)].tolist():
             face = int(beams.end_row[beam])
             name = scene.elements[int(scene.faces.owner[face])]
-            if name not in self._routes.wanted(beam):
+            if name not in self._routes.wanted(beam) or not self._routes.comes_first(beam, name):
                 continue
             front = scene.face_names[int(scene.faces.name[face])] in ("front", "opening")
             if not front and (beams.start.within[beam] != OUTSIDE or self._meets_front(beam)):
                 continue
-            mark = state.elements[name].element.stand.beam_at_mm if front else (0.0, 0.0)
+            entry = front or scene.face_names[int(scene.faces.name[face])] == "entry.front"
+            mark = self._mark(state.elements[name], face) if entry else (0.0, 0.0)
             yield Mark(
                 beam,
                 name,
@@ -197,6 +201,17 @@ class Meetings:
                 float(beams.off_left[beam] + scene.faces.middle[face, 0]) - mark[0],
                 float(beams.off_up[beam] + scene.faces.middle[face, 1]) - mark[1],
             )
+
+    def _mark(self, item: PlacedElement, face: int) -> tuple[float, float]:
+        """Return where on a face (left, up from its middle) its element wants the beam, mm.
+
+        `beam_at` is given in the element's frame, in which the windows of a cell are turned:
+        there the mark is where a line along the element's axis meets the face.
+        """
+        f = self._trace.scene.faces
+        left, up = item.element.stand.beam_at_mm
+        _, leftwards, upwards = (np.array(axis) for axis in item.pose.axes())
+        return left / float(f.left[face] @ leftwards), up / float(f.up[face] @ upwards)
 
     def _meets_front(self, beam: int) -> bool:
         """Whether light that enters an optic elsewhere meets its front on its way."""

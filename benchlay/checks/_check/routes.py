@@ -84,6 +84,14 @@ class Routes:
         node = int(self._trace.beams.start.node[beam])
         return tuple(self._trace.ways.names[route] for route in sorted(self._of_node[node]))
 
+    def comes_first(self, beam: int, name: str) -> bool:
+        """Whether a working beam meets an item (or is in it) for the first time on some route."""
+        for route, leg in self._of_node[int(self._trace.beams.start.node[beam])].items():
+            items = self._trace.ways.routes[route].items
+            if not any(item.name == name for item in items[: leg + 1]):
+                return True
+        return False
+
     @cached_property
     def legs(self) -> dict[tuple[int, int], Leg]:
         """What became of every route, by state and route."""
