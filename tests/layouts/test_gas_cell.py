@@ -195,6 +195,13 @@ def test_mirrors_one_wider_by_the_beam_cut_it(bench):
     assert ("beam-blocked", "NEAR") in moved.found()
 
 
-def test_without_its_own_limit_the_fold_is_off_its_marks(bench):
-    strict = bench("gas-cell", ("off_centre: 26 ", "off_centre: 0.5 "))
-    assert {("off-centre", name) for name in ("C1", "NEAR", "FAR")} <= strict.found()
+def test_without_its_mark_the_first_hit_is_off_it(bench):
+    """Each of the three by itself: the others are where they are meant to be."""
+    for name, mark in (("C1", "[14, 0]"), ("NEAR", "[-11.5, 0]"), ("FAR", "[5.3, 0]")):
+        unmarked = bench("gas-cell", (f"    beam_at: {mark}\n", ""))
+        assert unmarked.found() == {("off-centre", name)}
+
+
+def test_red_leaves_the_fold_beside_the_infrared(bench):
+    strict = bench("gas-cell", ("    limits.off_centre: 3\n", ""))
+    assert strict.found() == {("off-centre", name) for name in ("A2", "M3", "detector")}
