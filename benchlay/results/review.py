@@ -82,7 +82,7 @@ def review(checked: Checked, paper: Paper, on: date, *, in_full: bool) -> Review
         as_of=on.isoformat() if layout.accept else None,
         findings=judged.findings,
         checks=judged.runs,
-        limits_used=limits_used(trace.placed, checked.limits, checked.states),
+        limits_used=limits_used(trace, checked.limits, checked.states),
         lines=paper.lines,
     )
     if not in_full:

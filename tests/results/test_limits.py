@@ -20,8 +20,8 @@ states:
 
 @pytest.fixture(scope="module")
 def used(traced):
-    placed = traced(TWO).placed
-    return lambda *states: limits_used(placed, limits_of(placed), states)
+    trace = traced(TWO)
+    return lambda *states: limits_used(trace, limits_of(trace.placed), states)
 
 
 def test_each_limit_once_by_wavelength_and_time(used):
@@ -39,3 +39,38 @@ def test_only_of_the_states_spoken_of(used):
     green = used("as drawn")[0]
     assert (green.mpe_W_m2, green.aperture_mm) == (10.0, 7.0)
     assert green.accessible_W == pytest.approx(10.0 * 0.00003848451, rel=1e-6)
+
+
+MADE = """
+bench: {size: [800, 400]}
+sources:
+  ir: {wavelength: 1064, pulse: {energy: 1 mJ, duration: 8 ns, rate: 10 Hz},
+       beam: {waist_radius: 1}, at: [100, 200], heading: 0}
+  red: {wavelength: 633, power: 1 mW, beam: {waist_radius: 0.5}, at: [100, 50], heading: 0}
+elements:
+  C: {kind: converter, after: ir, distance: 200, incidence: 2, diameter: 10, length: 10,
+      produces: [{wavelength: 532, share: 30 %, polarization: vertical}]}
+  D1: {kind: dump, after: C, wavelength: 532, distance: 200}
+  T1: {kind: target, after: red, distance: 300}
+routes: {main: [ir, C.532, D1], pilot: [red, T1]}
+states:
+  pilot: {sources.ir.out: yes}
+  bare: {elements.C.out: yes}
+"""
+
+
+def test_light_that_is_made_has_the_limit_of_the_pulses_it_is_made_of(traced):
+    trace = traced(MADE)
+    limits = limits_of(trace.placed)
+
+    def told(state):
+        used = limits_used(trace, limits, [state])
+        return [(u.wavelength_nm, pytest.approx(u.accessible_W, rel=1e-3)) for u in used]
+
+    # Ten pulses a second: 2 mJ/m2 each in the visible, 20 mJ/m2 at 1064 nm, through 7 mm;
+    # continuous red 10 W/m2.
+    area = 0.00003848451
+    green, infrared, red = 10 * 2e-3 * area, 10 * 20e-3 * area, 10 * area
+    assert told("as drawn") == [(532.0, green), (633.0, red), (1064.0, infrared)]
+    assert told("pilot") == [(633.0, red)]
+    assert told("bare") == [(633.0, red), (1064.0, infrared)]
