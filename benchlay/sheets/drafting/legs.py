@@ -140,6 +140,7 @@ class _Names:
         self.strays = 0
         self._named: dict[int, tuple[str, float]] = {}  # by beam: name, power at its tag
         self._continued: set[int] = set()  # beams whose name went on to a leg outside
+        self._scattered = trace.diffuse()
         # An element may be called S1: no beam is then, in the field or on the sheet.
         owners = (*trace.scene.elements, *trace.scene.sources)
         self._taken = {name.upper() for name in owners}
@@ -219,6 +220,8 @@ class _Names:
     def _words(self, beam: int, *, first: bool) -> str:
         s, scene = self.trace.beams.start, self.trace.scene
         power = with_unit(float(s.power[beam]), "W", decimal=self.decimal)
+        if self._scattered[beam]:  # how much of it goes that way nobody knows
+            power = "scattered"
         several = len(scene.wavelengths_nm) > 1
         nm = wavelength_words(float(scene.wavelengths_nm[s.wave[beam]]), self.decimal)
         if first:

@@ -16,6 +16,7 @@ from benchlay.sheets.drafting.surroundings import holes_of, lids_of, panels_of
 from benchlay.sheets.layers import WIDTHS_MM, wavelength_words
 from benchlay.sheets.scale import SCALES, SIZES_MM
 from benchlay.sheets.title_block import TitleFields
+from benchlay.tracing.front import CONVERTED
 from benchlay.tracing.trace import Trace
 from benchlay.zones import LimitTable, Zones, limits_of
 from benchlay.zones.words import number, with_unit
@@ -133,6 +134,7 @@ def _legend(
     trace: Trace, limits: LimitTable, variant: int, legs: DrawnLegs, decimal: str
 ) -> list[BeamEntry]:
     state, scene = trace.placed.states[variant], trace.scene
+    made = _made(trace, limits, variant)
     out = []
     for wave, nm in enumerate(scene.wavelengths_nm.tolist()):
         emits = [
@@ -145,12 +147,31 @@ def _legend(
         span = (
             f": {names[0]} to {names[-1]}" if len(names) > 1 else "".join(f": {n}" for n in names)
         )
+        emits += made.get(wave, [])
         who = ", ".join(f"{name} {with_unit(p, 'W', decimal=decimal)}" for name, p, _ in emits)
         words = f"{wavelength_words(nm, decimal)}, {who or 'not emitted'}{span}"
         out.append(
             BeamEntry(nm, max((_width(p, lim) for _, p, lim in emits), default=_THIN), words)
         )
     return out
+
+
+def _made(
+    trace: Trace, limits: LimitTable, variant: int
+) -> dict[int, list[tuple[str, float, float]]]:
+    """Return by number of a wavelength what makes it, how much of it, and the lowest limit."""
+    s, scene = trace.beams.start, trace.scene
+    rows = trace.of_variant(variant)
+    rows = rows[s.event[rows] == CONVERTED]
+    sums: dict[tuple[int, int], tuple[float, float]] = {}
+    for beam, allowed in zip(rows.tolist(), limits.of(trace, rows)[0].tolist(), strict=True):
+        key = int(s.wave[beam]), int(s.owner[beam])
+        power, least = sums.get(key, (0.0, allowed))
+        sums[key] = power + float(s.power[beam]), min(least, allowed)
+    found: dict[int, list[tuple[str, float, float]]] = {}
+    for (wave, owner), (power, least) in sorted(sums.items()):
+        found.setdefault(wave, []).append((f"made by {scene.elements[owner]}", power, least))
+    return found
 
 
 _THIN = WIDTHS_MM[0]
