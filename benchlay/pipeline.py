@@ -170,7 +170,9 @@ def review_files(
 
     try:
         reviewed, checked = _reviewed(data, file, on=on, state=state, in_full=True)
-        drawings = _drawn(checked.trace, reviewed.findings, checked.zones, reviewed.sha256)
+        drawings = _drawn(
+            checked.trace, reviewed.findings, checked.zones, reviewed.sha256, state=state
+        )
     except LayoutError as error:
         return LayoutErrors(file, error.problems, _lines(data))
     documents = {
@@ -198,6 +200,7 @@ def _drawn(
     zones: Zones | None = None,
     digest: str = "",
     *,
+    state: str | None = None,
     sheet: str | None = None,
     form: str | None = None,
 ) -> dict[str, bytes]:
@@ -206,7 +209,7 @@ def _drawn(
     problems = refusals(traced.placed.base.layout, sheet, form)
     if problems:
         raise LayoutError(problems)
-    made = drawings(traced, judged, zones, digest, sheet=sheet, form=form)
+    made = drawings(traced, judged, zones, digest, state=state, sheet=sheet, form=form)
     if isinstance(made, Problem):
         raise LayoutError((made,))
     return made

@@ -53,6 +53,7 @@ def drawings(
     zones: Zones | None = None,
     sha256: str = "",
     *,
+    state: str | None = None,
     sheet: str | None = None,
     form: str | None = None,
 ) -> dict[str, bytes] | Problem:
@@ -60,12 +61,15 @@ def drawings(
 
     A sheet that fits on no paper is a problem of the layout. Findings and zones are what the
     review has of them: the findings are counted in the sheets' notes, and zones that are not
-    known yet are worked out. `sha256` is that of the layout's bytes.
+    known yet are worked out. `sha256` is that of the layout's bytes. `state` is the one that
+    the review speaks of, where it is of one alone: it is drawn, else the one as drawn.
     """
     only = None if sheet is None else (sheet,)
     counts = Counter(Severity[finding.severity.upper()] for finding in judged)
     try:
-        composed = sheets_of(trace, zones, only=only, counts=sorted(counts.items()), sha256=sha256)
+        composed = sheets_of(
+            trace, zones, only=only, counts=sorted(counts.items()), sha256=sha256, state=state
+        )
     except NothingFitsError as error:
         return _too_large(trace.placed.base.layout, error)
     return {

@@ -19,14 +19,23 @@ class Subject(NamedTuple):
     zones: Zones
     counts: Iterable[tuple[Severity, int]]  # how many findings the review has, for the notes
     sha256: str  # of the layout's bytes, to be written into the files
+    state: str | None = None  # the only one that the review speaks of, and so the one drawn
 
 
 def _plan(subject: Subject) -> Sheet:
     from benchlay.sheets.drafting import plan_picture
     from benchlay.sheets.plan import compose
 
-    trace, zones, counts, sha256 = subject
-    return compose(plan_picture(trace, zones, counts=counts, sha256=sha256))
+    trace, zones, counts, sha256, state = subject
+    picture = plan_picture(
+        trace,
+        zones,
+        variant=0 if state is None else trace.scene.variants.index(state),
+        counts=counts,
+        of_all_states=state is None,
+        sha256=sha256,
+    )
+    return compose(picture)
 
 
 SHEETS: Mapping[str, Callable[[Subject], Sheet]] = {"plan": _plan}
@@ -43,17 +52,18 @@ def sheets_of(
     only: Collection[str] | None = None,
     counts: Iterable[tuple[Severity, int]] = (),
     sha256: str = "",
+    state: str | None = None,
 ) -> list[Sheet]:
-    """Return the sheets of a traced layout, in its state as drawn.
+    """Return the sheets of a traced layout, in its state as drawn or in the one named.
 
     Parameters
     ----------
     trace : Trace
     zones : Zones, optional
-        The hazard zones, where they are known already.
+        The hazard zones, where they are known already: of the state drawn at least.
     only : collection of str, optional
         Names of the sheets that are wanted; all of `SHEETS` by default.
-    counts, sha256
+    counts, sha256, state
         See `Subject`.
 
     Raises
@@ -71,6 +81,6 @@ def sheets_of(
     if zones is None:
         from benchlay.zones import zones_of
 
-        zones = zones_of(trace, states=(trace.scene.variants[0],))
-    subject = Subject(trace, zones, tuple(counts), sha256)
+        zones = zones_of(trace, states=(state or trace.scene.variants[0],))
+    subject = Subject(trace, zones, tuple(counts), sha256, state)
     return [SHEETS[name](subject) for name in wanted]

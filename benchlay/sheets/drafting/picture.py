@@ -33,6 +33,7 @@ def plan_picture(
     *,
     variant: int = 0,
     counts: Iterable[tuple[Severity, int]] = (),
+    of_all_states: bool = True,
     sha256: str = "",
 ) -> Picture:
     """Return what the plan of a state shows.
@@ -47,6 +48,8 @@ def plan_picture(
     counts : iterable of (Severity, int)
         How many findings of each severity a review of the layout has, for the notes; none
         are written if it is empty.
+    of_all_states : bool
+        Whether these are of all states; if not, of this one.
     sha256 : str
         Of the layout's bytes: which text the sheet was drawn from.
     """
@@ -73,7 +76,7 @@ def plan_picture(
         notes=(
             _CAUTION,
             *_assumptions(state, zones, legs, decimal),
-            *_findings(counts),
+            *_findings(counts, "all states" if of_all_states else f"state {state.name} alone"),
             *drawing.notes,
             *unmet,
         ),
@@ -218,9 +221,9 @@ def _legs(count: int) -> str:
     return "1 leg" if count == 1 else f"{count} legs"
 
 
-def _findings(counts: Iterable[tuple[Severity, int]]) -> list[str]:
+def _findings(counts: Iterable[tuple[Severity, int]], states: str) -> list[str]:
     known = dict(counts)
     if not known:
         return []
     words = ", ".join(f"{known.get(s, 0)} {s.word}" for s in sorted(Severity, reverse=True))
-    return [f"Findings of the review, all states: {words}; each stands in the report."]
+    return [f"Findings of the review, {states}: {words}; each stands in the report."]
