@@ -31,7 +31,7 @@ from benchlay.optics._shares_prepare import prepare, unusable
 
 __all__ = ["Partition", "Shapes", "inside", "partition"]
 
-_BLOCK = 2000  # shapes worked on at once: bounds the memory, not the result
+_BLOCK = 100_000  # pairs of shapes worked on at once: bounds the memory, not the result
 
 
 class Partition(NamedTuple):
@@ -131,11 +131,14 @@ def _checked(shapes: Shapes, problems: int) -> Shapes:
 
 
 def _blocks(problem: Ints) -> list[slice]:
-    """Cut into runs of whole problems of about `_BLOCK` rows."""
+    """Cut into runs of whole problems with about `_BLOCK` pairs of rows."""
+    many = np.bincount(problem)[problem]  # of each row's own problem: partners to pair with
+    pairs = np.cumsum(many)
     cuts = [0]
     while cuts[-1] < len(problem):
-        last = problem[min(cuts[-1] + _BLOCK, len(problem)) - 1]
-        cuts.append(int(np.searchsorted(problem, last, side="right")))
+        done = pairs[cuts[-1] - 1] if cuts[-1] else 0
+        reach = min(int(np.searchsorted(pairs, done + _BLOCK)), len(problem) - 1)
+        cuts.append(int(np.searchsorted(problem, problem[reach], side="right")))
     return [slice(a, b) for a, b in pairwise(cuts)]
 
 
