@@ -140,6 +140,7 @@ LIMIT = keys(
     {
         "wavelength_nm": NUMBER, "time_base_s": NUMBER, "mpe_W_m2": NUMBER,
         "aperture_mm": NUMBER, "accessible_W": NUMBER, "edition": TEXT, "overridden": YES_NO,
+        "accessible_J": maybe(NUMBER),
     }
 )  # fmt: skip
 HANDED_OVER = keys(

@@ -89,6 +89,7 @@ class LimitUsed(NamedTuple):
     accessible_W: float
     edition: str
     overridden: bool
+    accessible_J: float | None = None  # of each pulse; the power is their mean
 
 
 class Review(NamedTuple):

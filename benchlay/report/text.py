@@ -11,7 +11,7 @@ from math import ceil, floor, log10
 from benchlay.document.problems import Problem
 from benchlay.report.cautions import CAUTIONS
 from benchlay.report.matrix import matrix_lines, matrix_of
-from benchlay.report.model import LayoutErrors, Reported, Review
+from benchlay.report.model import LayoutErrors, LimitUsed, Reported, Review
 from benchlay.report.numbers import shown
 from benchlay.report.words import Ink, listed, quoted, tame
 
@@ -135,11 +135,18 @@ def _not_evaluated(review: Review) -> list[str]:
 
 def _limit_lines(review: Review) -> list[str]:
     return [
-        f"limit used: {shown(limit.accessible_W, 'W')} through {shown(limit.aperture_mm, 'mm')} "
+        f"limit used: {_power(limit)} through {shown(limit.aperture_mm, 'mm')} "
         f"at {shown(limit.wavelength_nm, 'nm')} for {shown(limit.time_base_s, 's')} "
         f"({limit.edition}{'; set by the layout' if limit.overridden else ''})"
         for limit in review.limits_used
     ]
+
+
+def _power(limit: LimitUsed) -> str:
+    power = shown(limit.accessible_W, "W")
+    if limit.accessible_J is None:
+        return power
+    return f"{power} in the mean, {shown(limit.accessible_J, 'J')} a pulse,"
 
 
 def _cautions() -> str:

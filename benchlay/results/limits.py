@@ -59,4 +59,5 @@ def _used(limit: AccessibleLimit, *, overridden: bool) -> LimitUsed:
         limit.accessible_w,
         limit.edition,
         overridden,
+        limit.accessible_j,
     )

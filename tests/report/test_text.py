@@ -6,7 +6,7 @@ from benchlay.document.problems import Problem
 from benchlay.document.span import Span
 from benchlay.report.cautions import CAUTIONS
 from benchlay.report.details import Ledger, Sink, TraceResult
-from benchlay.report.model import Acceptance, CheckRun, Elsewhere, LayoutErrors
+from benchlay.report.model import Acceptance, CheckRun, Elsewhere, LayoutErrors, LimitUsed
 from benchlay.report.text import accept_entry, check_text, errors_text, verdict_line
 from benchlay.report.trace_text import trace_text
 from benchlay.report.words import Ink, quoted, tame
@@ -82,6 +82,15 @@ def test_a_limit_that_the_layout_sets_is_shown_as_such(make_review):
     (limit,) = review.limits_used
     text = check_text([review._replace(limits_used=(limit._replace(overridden=True),))])
     assert "(IEC 60825-1:2014; set by the layout)" in text
+
+
+def test_a_limit_of_pulses_says_what_each_may_have(make_review):
+    told = LimitUsed(1064.0, 100.0, 0.2, 7.0, 7.7e-6, "IEC 60825-1:2014", False, 7.7e-7)
+    text = check_text([make_review(limits_used=(told,))])
+    assert (
+        "limit used: 7.7e-06 W in the mean, 7.7e-07 J a pulse, through 7 mm at 1064 nm for 100 s "
+        "(IEC 60825-1:2014)\n"
+    ) in text
 
 
 def test_errors_count_and_say_that_nothing_was_done():

@@ -71,6 +71,12 @@ def test_light_that_is_made_has_the_limit_of_the_pulses_it_is_made_of(traced):
     # continuous red 10 W/m2.
     area = 0.00003848451
     green, infrared, red = 10 * 2e-3 * area, 10 * 20e-3 * area, 10 * area
+    each = {u.wavelength_nm: u.accessible_J for u in limits_used(trace, limits, ["as drawn"])}
+    assert each == {
+        532.0: pytest.approx(green / 10, rel=1e-3),
+        633.0: None,
+        1064.0: pytest.approx(infrared / 10, rel=1e-3),
+    }
     assert told("as drawn") == [(532.0, green), (633.0, red), (1064.0, infrared)]
     assert told("pilot") == [(633.0, red)]
     assert told("bare") == [(633.0, red), (1064.0, infrared)]
