@@ -16,7 +16,7 @@ from benchlay.layout.bench import Bench
 from benchlay.layout.drawing import Drawing, Revision
 from benchlay.layout.elements import Element, read_element
 from benchlay.layout.enclosure import Enclosure
-from benchlay.layout.facing import mentioned, refuse_faceless
+from benchlay.layout.facing import refuse_faceless
 from benchlay.layout.header import SECTIONS, Header
 from benchlay.layout.limits import Limits
 from benchlay.layout.materials import Material
@@ -175,7 +175,7 @@ class _Document:
         for element in parts.elements.values():
             references.element(element)
         refuse_rings(parts.elements, references.reader)
-        refuse_faceless(parts.elements, mentioned(self.root.get("routes")), references.reader)
+        refuse_faceless(parts.elements, references.reader)
         if parts.enclosure is not None:
             references.enclosure(parts.enclosure)
 

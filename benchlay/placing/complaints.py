@@ -27,12 +27,10 @@ def no_ray(element: Element, solver: Solver) -> NoReturn:
     name = element.name
     if way is not None:
         what = f"`{way}` needs to know which beam arrives at {name!r}"
-        expected = "`after` with the item the beam comes from, or a route that names it"
+        expected = "`after` with the item the beam comes from"
         remedy = "add `after`, or use `facing`"
     else:
         what = f"nothing says which way {name!r} faces, and no beam is known to arrive"
-        expected = (
-            "`facing`, or `after` with the item the beam comes from, or a route that names it"
-        )
+        expected = "`facing`, or `after` with the item the beam comes from"
         remedy = "add `facing: 90`, or `after`"
     complain(element, way or "kind", what, expected=expected, remedy=remedy, solver=solver)

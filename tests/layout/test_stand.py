@@ -71,15 +71,6 @@ def test_what_moves_it_from_its_pose(stand):
     assert found.pitch_rad == pytest.approx(radians(5))
 
 
-def test_an_element_that_only_a_route_names_may_be_turned(layout_of, laser):
-    text = laser + (
-        "elements:\n  M1: {kind: mirror, diameter: 25, "
-        "metal: silver, at: [300, 450], turn: left 90}\n"
-        "routes: {a: [green, M1]}\n"
-    )
-    assert layout_of(text).elements["M1"].stand.after == ()
-
-
 def test_side_of_a_cube_and_side_of_a_reflection(layout_of, laser):
     cube = laser + (
         "elements:\n  C: {kind: cube, reflectance: 50 %, "

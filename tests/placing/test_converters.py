@@ -21,10 +21,3 @@ def test_the_one_that_is_meant_is_chosen(standing, nm, bends):
     _, direction = placed.ray("T")
     assert (abs(direction[1]) > 1e-3) == bends
     assert placed.placed.arrivals["T"].wavelength_nm == nm
-
-
-def test_a_route_says_which_line_arrives(standing):
-    text = CRYSTAL + "  T: {kind: target, at: [600, 450], turn_}\nroutes: {a: [laser, X.422, T]}\n"
-    placed = standing(text.replace(", turn_", ""))
-    assert placed.placed.arrivals["T"].wavelength_nm == 422
-    np.testing.assert_allclose(np.linalg.norm(placed.ray("T")[1]), 1.0, atol=1e-12)

@@ -24,14 +24,6 @@ def test_the_next_item_is_what_it_is_aimed_at(standing):
     assert placed.facing("L")[0] == pytest.approx(heading)
 
 
-def test_a_route_may_bring_it(standing):
-    placed = standing(
-        SAMPLE + "  C: {kind: target, at: [300, 650]}\nroutes: {a: [laser, S.scattered, C]}\n"
-    )
-    way = np.array([-100.0, 200.0, 0.0]) / np.hypot(100, 200)
-    np.testing.assert_allclose(placed.axes("C")[0], -way, atol=1e-12)
-
-
 def test_it_says_no_distance(complaints):
     (problem,) = complaints(SAMPLE + "  C: {kind: target, after: S.scattered, distance: 90}\n")
     assert "light scattered by 'S' goes everywhere" in problem
