@@ -1,6 +1,5 @@
 """Behind a crystal the line that is meant is named."""
 
-import numpy as np
 import pytest
 
 CRYSTAL = (
