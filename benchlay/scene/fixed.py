@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import numpy as np
 
-from benchlay.elements._kind import Inside
+from benchlay.elements._kind import Acts, Inside
 from benchlay.scene.tables import Faces, Fixed, Flags, Floats, Ints, Solids
 
 # Beams are met by their distance from a solid's middle, of which rounding takes this much.
@@ -39,12 +39,31 @@ def fixed_products(faces: Faces, solids: Solids, sides: tuple[Ints, Ints]) -> Fi
         own,
         *_own_figures(f, own),
         pierced,
+        *_hole_figures(s),
+        1.0 - np.einsum("pki,pi->pk", s.plane_normal[plane_of[s.plane_solid]], s.plane_normal) ** 2,
+        f.present & (f.inside != Inside.BOTH),
+        f.acts == Acts.LENS,
+        f.acts == Acts.PASSES,
     )
 
 
 def _products(first: Floats, second: Floats) -> Floats:
     product: Floats = np.einsum("ij,ij->i", first, second)
     return product
+
+
+def _hole_figures(s: Solids) -> tuple[Floats, Floats]:
+    first, second = s.hole_axes[:, 0], s.hole_axes[:, 1]
+    axes = np.stack(
+        (
+            s.hole_through,
+            first / _products(first, first)[:, None],
+            second / _products(second, second)[:, None],
+        )
+    )
+    middles = np.stack((s.hole_centre, s.hole_centre + s.hole_through))
+    offsets = np.einsum("phi,ahi->pah", middles, axes)
+    return np.ascontiguousarray(axes.reshape(-1, 3).T), offsets
 
 
 def _own_figures(f: Faces, own: Ints) -> tuple[Floats, Floats, Flags]:

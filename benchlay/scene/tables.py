@@ -172,6 +172,12 @@ class Fixed(NamedTuple):
     own_middles: Floats  # (E, K, 3) middles of their outlines, mm
     own_both: Flags  # (E, K) whether optics stand on both sides
     pierced: Flags  # (S,) has holes
+    hole_axes: Floats  # (3, 3 H) columns: ways through, and half axes over their squared lengths
+    hole_offsets: Floats  # (2, 3, H) of their near and far planes: middle . those columns
+    plane_sines2: Floats  # (P, K) squared sines of planes with those of their own solid
+    enterable: Flags  # (V, F) faces that stand there and can be met from outside
+    lens: Flags  # (F,) acts as an ideal lens
+    passes: Flags  # (F,) acts on light from both sides
 
 
 class Scene(NamedTuple):

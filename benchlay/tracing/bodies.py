@@ -100,8 +100,8 @@ def crossed(front: Front, scene: Scene, beam: Ints, solid: Ints, margin: Floats 
     slope[np.abs(slope) < PARALLEL] = _STEEP
     distance = gap / slope
     inward = slope < 0.0
-    enter = np.where(inward, distance, -np.inf).max(axis=1)
-    leave = np.where(inward, np.inf, distance).min(axis=1)
+    enter = np.maximum.reduce(np.where(inward, distance, -np.inf), axis=1)
+    leave = np.minimum.reduce(np.where(inward, np.inf, distance), axis=1)
     axis = scene.fixed.round_of[solid]
     rows = (axis >= 0).nonzero()[0]
     if len(rows):
@@ -134,30 +134,25 @@ def _through_round(
     return np.where(missed, np.inf, first), np.where(missed, -np.inf, last)
 
 
-def through_holes(front: Front, scene: Scene) -> Flags:
-    """Tell which solids (B, S) a ray passes through one of their openings."""
-    s = scene.solids
-    passed = np.zeros((len(front), len(s.owner)), dtype=np.bool_)
-    through = in_holes(front, scene, s.hole_centre)
-    through &= in_holes(front, scene, s.hole_centre + s.hole_through)
-    for hole in np.flatnonzero(through.any(axis=0)):
-        passed[:, s.hole_solid[hole]] |= through[:, hole]
+def through_holes(front: Front, scene: Scene, beam: Ints, solid: Ints) -> Flags:
+    """Tell for pairs (N,) whether the ray passes the solid through one of its openings."""
+    through = in_holes(front, scene)[beam]
+    through &= scene.solids.hole_solid == solid[:, None]
+    passed: Flags = np.logical_or.reduce(through, axis=1)
     return passed
 
 
-def in_holes(front: Front, scene: Scene, centre: Floats) -> Flags:
-    """Tell which holes (B, H) rays pass inside the outline in the planes of points (H, 3)."""
-    s = scene.solids
-    slope = front.direction @ s.hole_through.T
+def in_holes(front: Front, scene: Scene) -> Flags:
+    """Tell which holes (B, H) rays pass inside the outline, in the near plane and in the far."""
+    s, fixed = scene.solids, scene.fixed
+    shape = (len(front), 3, len(s.hole_solid))
+    onward = (front.direction @ fixed.hole_axes).reshape(shape)
+    start = fixed.hole_offsets[:, None] - (front.position @ fixed.hole_axes).reshape(shape)
+    slope = onward[:, 0]
     flat = np.abs(slope) < PARALLEL
-    gap = dot(centre, s.hole_through) - front.position @ s.hole_through.T
-    distance = np.where(flat, 0.0, gap) / np.where(flat, 1.0, slope)
-    places = []
-    for k in (0, 1):
-        axis = s.hole_axes[:, k]
-        start = front.position @ axis.T - dot(centre, axis)
-        along = start + distance * (front.direction @ axis.T)
-        places.append(np.abs(along) / dot(axis, axis))
-    a, b = places
-    inside: Flags = ~flat & (np.where(s.hole_round, a * a + b * b, np.maximum(a, b)) <= 1.0)
+    distance = start[:, :, 0] / np.where(flat, 1.0, slope)
+    place = np.abs(distance[:, :, None] * onward[:, 1:] - start[:, :, 1:])
+    a, b = place[:, :, 0], place[:, :, 1]
+    within = np.where(s.hole_round, a * a + b * b, np.maximum(a, b)) <= 1.0
+    inside: Flags = np.logical_and.reduce(within, axis=0) & ~flat
     return inside

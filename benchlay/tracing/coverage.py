@@ -4,7 +4,6 @@ from __future__ import annotations
 
 import numpy as np
 
-from benchlay.elements._kind import Inside
 from benchlay.optics.rays import dot
 from benchlay.scene.tables import Flags, Floats, Ints, Scene
 from benchlay.tracing.bodies import Passing, pairs, planes_met
@@ -81,23 +80,24 @@ def _solid_covers(front: Front, scene: Scene, hits: Hits, rows: Ints, radius: Fl
     """
     s = scene.solids
     solid, plane = hits.row[rows], np.maximum(hits.plane[rows], 0)
-    normal = s.plane_normal[plane]
-    sine2 = 1.0 - np.einsum("nki,ni->nk", scene.fixed.plane_normals[solid], normal) ** 2
+    sine2 = scene.fixed.plane_sines2[plane]
     depth = hits.distance[rows]
     slope, gap = planes_met(front, scene, rows, solid)
     gap -= depth[:, None] * slope
     bounds = sine2 > _PARALLEL
     room2 = np.where(bounds, gap * np.abs(gap), np.inf) / np.where(bounds, sine2, 1.0)
-    steep = np.abs(dot(front.direction[rows], normal))
+    steep = np.abs(dot(front.direction[rows], s.plane_normal[plane]))
     spread = radius / np.maximum(steep, SKIN_MM)
     covers: Flags = (hits.plane[rows] >= 0) & (room2.min(axis=1) >= spread * spread)
     covers &= scene.fixed.round_of[solid] < 0
-    if len(s.hole_solid):
-        point = front.position[rows] + depth[:, None] * front.direction[rows]
+    pierced = scene.fixed.pierced[solid].nonzero()[0]
+    if len(pierced):
+        some, solid = rows[pierced], solid[pierced]
+        point = front.position[some] + depth[pierced, None] * front.direction[some]
         size = np.sqrt(np.einsum("hki,hki->h", s.hole_axes, s.hole_axes))
         sides = _apart(point, s.hole_centre), _apart(point, s.hole_centre + s.hole_through)
-        touched = np.minimum(*sides) < size + spread[:, None]
-        covers &= ~(touched & (s.hole_solid == solid[:, None])).any(axis=1)
+        touched = np.minimum(*sides) < size + spread[pierced, None]
+        covers[pierced] &= ~(touched & (s.hole_solid == solid[:, None])).any(axis=1)
     return covers
 
 
@@ -124,20 +124,21 @@ def near(
     result = np.zeros(len(radius), dtype=np.bool_)
     result[beam[close]] = True
     if len(scene.faces.owner):
-        result |= _near_faces(front, scene, faces, hits, radius)
+        result |= _near_faces(front, scene, faces, hits, target=target, radius=radius)
     return result
 
 
-def _near_faces(front: Front, scene: Scene, met: FacesMet, hits: Hits, radius: Floats) -> Flags:
+def _near_faces(
+    front: Front, scene: Scene, met: FacesMet, hits: Hits, *, target: Ints, radius: Floats
+) -> Flags:
     """Tell which beams pass the planes of others' faces within a radius of their outlines."""
     f = scene.faces
     steep = np.abs(met.slope)
     spread = radius[:, None] / np.maximum(steep, _GRAZING)
-    touched = (np.abs(met.left) - f.radii[:, 0] < spread) & (
-        np.abs(met.up) - f.radii[:, 1] < spread
-    )
-    between = (met.distance > -SKIN_MM) & (met.distance < hits.distance[:, None])
-    strange = (f.owner != front.owner[:, None]) & (f.owner != hits.owner(scene)[:, None])
-    counts = f.present[front.variant] & (f.inside != Inside.BOTH) & (steep > _GRAZING)
-    result: Flags = (touched & between & strange & counts).any(axis=1)
+    touched = np.abs(met.place) - f.radii.T < spread[:, None]
+    counts = touched[:, 0] & touched[:, 1] & (steep > _GRAZING)
+    counts &= (met.distance > -SKIN_MM) & (met.distance < hits.distance[:, None])
+    counts &= (f.owner != front.owner[:, None]) & (f.owner != target[:, None])
+    counts &= scene.fixed.enterable[front.variant]
+    result: Flags = np.logical_or.reduce(counts, axis=1)
     return result

@@ -92,9 +92,7 @@ def _crossing(front: Front, scene: Scene, hole: int) -> tuple[Floats, Flags]:
     outwards = onward > 0.0
     gap = (s.hole_centre[hole] - front.position) @ through
     distance = np.where(outwards, gap, np.inf) / np.where(outwards, onward, 1.0)
-    both = in_holes(front, scene, s.hole_centre)
-    both &= in_holes(front, scene, s.hole_centre + s.hole_through)
-    return distance, outwards & both[:, hole]
+    return distance, outwards & in_holes(front, scene)[:, hole]
 
 
 def hand_over(core: Front, hits: Hits, state: RunState) -> None:

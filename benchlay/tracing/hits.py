@@ -10,7 +10,6 @@ from typing import NamedTuple
 
 import numpy as np
 
-from benchlay.elements._kind import Acts, Inside
 from benchlay.optics.rays import dot
 from benchlay.scene.tables import Flags, Floats, Ints, Scene
 from benchlay.tracing.bodies import PARALLEL, Passing, pairs, passing, planes_met, through_holes
@@ -50,8 +49,7 @@ class FacesMet(NamedTuple):
 
     distance: Floats
     slope: Floats
-    left: Floats
-    up: Floats
+    place: Floats  # (B, 2, F) left and up, from the middles of the outlines
     valid: Flags  # inside the outline, from a side that counts
 
 
@@ -72,7 +70,7 @@ def inside_hits(front: Front, scene: Scene) -> Hits:
     valid = leaving & (rows >= 0) & (rows != front.face[:, None]) & (distance > -_TOUCH_MM)
     # A spilled lump runs on the chief ray's line wherever that is: no outline holds it.
     valid &= in_outline(left, up, f.radii[rows], f.round[rows]) | front.lump[:, None]
-    lens = f.acts[rows] == Acts.LENS
+    lens = fixed.lens[rows]
     if lens.any():
         # Between the faces of an ideal lens, which stand in one place, light beyond the
         # critical angle would go to and fro for ever: it ends on the barrel.
@@ -97,21 +95,21 @@ def in_outline(left: Floats, up: Floats, radii: Floats, is_round: Flags) -> Flag
 
 def faces_met(front: Front, scene: Scene) -> FacesMet:
     """Meet the planes of all faces from outside."""
-    f, count = scene.faces, len(scene.faces.owner)
-    onward = front.direction @ scene.fixed.face_axes
-    start = scene.fixed.face_offsets - front.position @ scene.fixed.face_axes
-    slope = onward[:, :count]
+    f, fixed = scene.faces, scene.fixed
+    shape = (len(front), 3, len(f.owner))
+    onward = (front.direction @ fixed.face_axes).reshape(shape)
+    start = (fixed.face_offsets - front.position @ fixed.face_axes).reshape(shape)
+    slope = onward[:, 0]
     flat = np.abs(slope) < PARALLEL
-    distance = np.where(flat, np.inf, start[:, :count]) / np.where(flat, 1.0, slope)
-    along = np.where(flat, 0.0, distance)
-    left = along * onward[:, count : 2 * count] - start[:, count : 2 * count]
-    up = along * onward[:, 2 * count :] - start[:, 2 * count :]
-    entering = (slope < 0.0) | (f.acts == Acts.PASSES)
+    distance = start[:, 0] / np.where(flat, 1.0, slope)
+    place = distance[:, None] * onward[:, 1:] - start[:, 1:]
     same = f.owner == front.owner[:, None]
-    ahead = distance > np.where(same, SKIN_MM, -SKIN_MM)
-    valid = f.present[front.variant] & entering & (f.inside != Inside.BOTH) & ahead & ~flat
-    valid &= in_outline(left, up, f.radii, f.round)
-    return FacesMet(distance, slope, left, up, valid)
+    valid = distance > np.where(same, SKIN_MM, -SKIN_MM)
+    valid &= ((slope < 0.0) | fixed.passes) & ~flat & fixed.enterable[front.variant]
+    size = np.abs(place) / f.radii.T
+    a, b = size[:, 0], size[:, 1]
+    valid &= np.where(f.round, a * a + b * b, np.maximum(a, b)) <= 1.0
+    return FacesMet(distance, slope, place, valid)
 
 
 def nearest(front: Front, scene: Scene) -> tuple[Hits, FacesMet, Passing]:
@@ -131,7 +129,7 @@ def nearest(front: Front, scene: Scene) -> tuple[Hits, FacesMet, Passing]:
     at = (beams, face)
     nothing = np.zeros(len(beams))
     there = len(scene.faces.owner) > 0
-    on_face = (faces.slope[at], faces.left[at], faces.up[at]) if there else (nothing,) * 3
+    on_face = (faces.slope[at], *faces.place[beams, :, face].T) if there else (nothing,) * 3
     hits = Hits(
         np.array((kind, np.where(kind == FACE, face, solid), plane)),
         np.array((np.where(kind == NOTHING, scene.reach_mm, distance), *on_face)),
@@ -161,8 +159,9 @@ def _first_solid(
     """Return the solid that each ray meets first, how far away, and where it would be entered."""
     beam, solid, enter, leave = pairs(front, scene, passed)
     blocked = (enter <= leave) & (leave > SKIN_MM)
-    if len(scene.solids.hole_solid) and scene.fixed.pierced[solid[blocked]].any():
-        blocked &= ~through_holes(front, scene)[beam, solid]
+    at = (blocked & scene.fixed.pierced[solid]).nonzero()[0]
+    if len(at):
+        blocked[at] = ~through_holes(front, scene, beam[at], solid[at])
     beam, solid, enter = beam[blocked], solid[blocked], enter[blocked]
     table = np.full((len(beams), len(scene.solids.owner)), np.inf)
     table[beam, solid] = np.maximum(enter, 0.0)
