@@ -14,6 +14,7 @@ from benchlay.optics.rays import cross
 from benchlay.scene.tables import Flags, Floats, Ints
 from benchlay.tracing.frames import (
     Frame,
+    frame_of,
     gradient,
     inverse_roots,
     local,
@@ -21,7 +22,8 @@ from benchlay.tracing.frames import (
     scaled,
     unit_vectors,
 )
-from benchlay.tracing.outlines import NO_OUTLINES, Labels, Outlines
+from benchlay.tracing.front import Front
+from benchlay.tracing.outlines import HOLE, NO_OUTLINES, Labels, Outlines
 from benchlay.tracing.spreading import growth, perspective_plate
 
 GRAZING = 0.2  # sine of the angle between beam and plane below which it counts as lying along
@@ -75,24 +77,43 @@ def _plate_shapes(
     )
 
 
-def plate_outlines(
-    frame: Frame, plates: Plates, order: Ints, labels: Labels, reach: Floats
-) -> Outlines:
-    """Return the outlines of those plates that come within reach of the axis (problems,)."""
+class Labelled(NamedTuple):
+    """Flat regions beside beams (`problem`), and what they stand for."""
+
+    problem: Ints  # (K,)
+    plates: Plates
+    order: Ints  # (K,)
+    labels: Labels
+
+
+def plate_outlines(part: Front, sets: list[Labelled], reach: Floats) -> list[Outlines]:
+    """Return the outlines of those plates that come within reach of the axis (problems,).
+
+    All sets are worked out together; what is left of the first comes back first, all others
+    as a second piece. Holes name the rows of their hosts.
+    """
+    problem = np.concatenate([one.problem for one in sets])
+    order = np.concatenate([one.order for one in sets])
+    plates = Plates._make(map(np.concatenate, zip(*(one.plates for one in sets), strict=True)))
+    labels = Labels._make(map(np.concatenate, zip(*(one.labels for one in sets), strict=True)))
+    frame = frame_of(part, problem)
     vertices, centre, axes, corners, depth, ahead = _plate_shapes(frame, plates)
-    none = np.full(len(corners), -1)
-    return Outlines(
-        frame.problem,
+    kept = ahead & touching(vertices, reach[problem])
+    outlines = Outlines(
+        problem,
         corners,
         vertices,
         centre,
         axes,
         depth,
         order,
-        none,
+        np.where(labels.role == HOLE, labels.row, -1),
         *labels,
         inside_name=NO_OUTLINES.inside_name,
-    ).take(ahead & touching(vertices, reach[frame.problem]))
+    )
+    first = len(sets[0].problem)
+    pieces = (kept[:first].nonzero()[0], first + kept[first:].nonzero()[0])
+    return [Outlines._make((*(c[rows] for c in outlines[:-1]), outlines[-1])) for rows in pieces]
 
 
 def touching(vertices: Floats, reach: Floats) -> Flags:

@@ -20,11 +20,12 @@ from benchlay.tracing.handing import this_side
 from benchlay.tracing.hidden import counting, visible
 from benchlay.tracing.hits import FACE, HANDED, NOTHING, SOLID, Hits
 from benchlay.tracing.outlines import CORE, HOLE, OPTIC, Outlines, joined
+from benchlay.tracing.plates import plate_outlines
 from benchlay.tracing.silhouettes import (
     cylinder_sides,
-    disc_outlines,
-    face_outlines,
-    hole_outlines,
+    disc_plates,
+    face_plates,
+    hole_plates,
     patch_outlines,
 )
 
@@ -138,11 +139,14 @@ def gather(front: Front, scene: Scene, hits: Hits, reach: Floats) -> Outlines:
     faces = _faces_in_reach(front, scene, hits, bound, inside)
     solids = _solids_in_reach(front, scene, bound) & ~inside[:, None]
     own = np.where(hits.kind == SOLID, hits.row, -1)
-    pieces = [
-        face_outlines(front, scene, faces, hits, reach),
-        *_solid_outlines(front, scene, solids, target, own, reach=reach, stop_mm=hits.distance),
-    ]
-    outlines = joined(pieces, 1, scene, front)  # the second piece: flat sides
+    solids, ringed = _counted(scene, solids, target)
+    patches = patch_outlines(front, scene, solids, ringed, own, reach=reach, stop_mm=hits.distance)
+    sets = [face_plates(front, scene, faces, hits), disc_plates(front, scene, solids, own)]
+    sets.append(cylinder_sides(front, scene, solids, own))
+    if len(scene.solids.hole_solid) and len(patches.row):
+        sets.append(hole_plates(scene, patches))
+    on_faces, others = plate_outlines(front, sets, reach)
+    outlines = joined([on_faces, patches, others], 1, scene, front)
     if (hits.kind == HANDED).any():
         outlines = outlines.take(this_side(outlines, front, hits, scene))
     outlines = outlines.take(counting(outlines, reach))
@@ -207,27 +211,12 @@ def _solids_in_reach(part: Front, scene: Scene, bound: Floats) -> Flags:
     return close
 
 
-def _solid_outlines(
-    part: Front,
-    scene: Scene,
-    solids: Flags,
-    met: Ints,
-    own: Ints,
-    *,
-    reach: Floats,
-    stop_mm: Floats,
-) -> list[Outlines]:
+def _counted(scene: Scene, solids: Flags, met: Ints) -> tuple[Flags, Flags]:
+    """Return which solids (B, S) count beside what is met (B,), and of which only the ring."""
     s = scene.solids
+    mine = s.owner == met[:, None]
     # Whether light passes the optic that it goes to is judged at its face: not at its edge, and
     # of the plate round an opening the outline of the face tells all.
     judged = (s.part == PART["plate"]) | (s.part == PART["edge"])
-    solids = solids & ~((s.owner == met[:, None]) & judged)
     # Of the mount of the optic that the light goes to only the ring in the front plane counts.
-    ringed = (s.owner == met[:, None]) & (s.part == PART["mount"])
-    patches = patch_outlines(part, scene, solids, ringed, own, reach=reach, stop_mm=stop_mm)
-    return [
-        patches,
-        disc_outlines(part, scene, solids, own, reach),
-        cylinder_sides(part, scene, solids, own, reach),
-        hole_outlines(part, scene, patches, reach),
-    ]
+    return solids & ~(mine & judged), mine & (s.part == PART["mount"])

@@ -28,14 +28,14 @@ from benchlay.tracing.frames import (
 from benchlay.tracing.front import Front
 from benchlay.tracing.hits import FACE, Hits
 from benchlay.tracing.outlines import BESIDE, BODY, CORE, HOLE, NO_OUTLINES, OPTIC, Labels, Outlines
-from benchlay.tracing.plates import GRAZING, Plates, plate_outlines, touching
+from benchlay.tracing.plates import GRAZING, Labelled, Plates, touching
 from benchlay.tracing.spreading import growth, perspective
 
 _CLEAR_ORDER, _OUTLINE_ORDER, _SOLID_ORDER = 0, 1, 2
 _EDGE_ON = 1e-6
 
 
-def face_outlines(part: Front, scene: Scene, close: Flags, hits: Hits, reach: Floats) -> Outlines:
+def face_plates(part: Front, scene: Scene, close: Flags, hits: Hits) -> Labelled:
     """Return clear regions and, where they are larger, whole outlines of faces."""
     f = scene.faces
     problem, face = np.nonzero(close)
@@ -60,7 +60,7 @@ def face_outlines(part: Front, scene: Scene, close: Flags, hits: Hits, reach: Fl
         np.full(len(face), -1),
     )
     order = np.where(is_ring, _OUTLINE_ORDER, _CLEAR_ORDER)
-    return plate_outlines(frame_of(part, problem), plates, order, labels, reach)
+    return Labelled(problem, plates, order, labels)
 
 
 def _solid_labels(s: Solids, problem: Ints, solid: Ints, own: Ints, row: Ints) -> Labels:
@@ -68,7 +68,7 @@ def _solid_labels(s: Solids, problem: Ints, solid: Ints, own: Ints, row: Ints) -
     return Labels(role, s.sink[solid], s.name[solid], np.full(len(solid), -1), row)
 
 
-def disc_outlines(part: Front, scene: Scene, close: Flags, own: Ints, reach: Floats) -> Outlines:
+def disc_plates(part: Front, scene: Scene, close: Flags, own: Ints) -> Labelled:
     """Return the round ends of solids, both of them: together with the sides they make the body."""
     s = scene.solids
     slopes = part.direction @ s.disc_normal.T
@@ -85,10 +85,10 @@ def disc_outlines(part: Front, scene: Scene, close: Flags, own: Ints, reach: Flo
     )
     labels = _solid_labels(s, problem, s.disc_solid[disc], own, np.full(len(disc), -1))
     order = np.full(len(disc), _SOLID_ORDER)
-    return plate_outlines(frame_of(part, problem), plates, order, labels, reach)
+    return Labelled(problem, plates, order, labels)
 
 
-def cylinder_sides(part: Front, scene: Scene, close: Flags, own: Ints, reach: Floats) -> Outlines:
+def cylinder_sides(part: Front, scene: Scene, close: Flags, own: Ints) -> Labelled:
     """Return the sides of round solids as the rectangles in which the beam sees them."""
     s = scene.solids
     problem, number = np.nonzero(close[:, s.axis_solid])
@@ -105,7 +105,7 @@ def cylinder_sides(part: Front, scene: Scene, close: Flags, own: Ints, reach: Fl
     )
     labels = _solid_labels(s, problem, s.axis_solid[number], own, np.full(len(number), -1))
     order = np.full(len(number), _SOLID_ORDER)
-    return plate_outlines(frame_of(part, problem), plates, order, labels, reach)
+    return Labelled(problem, plates, order, labels)
 
 
 def patch_outlines(
@@ -181,11 +181,9 @@ def _flat_sides(
     return vertices, plane
 
 
-def hole_outlines(part: Front, scene: Scene, patches: Outlines, reach: Floats) -> Outlines:
+def hole_plates(scene: Scene, patches: Outlines) -> Labelled:
     """Return the openings of panels as holes in the sides that are seen."""
     s = scene.solids
-    if not len(s.hole_solid) or not len(patches.row):
-        return NO_OUTLINES
     through = unit_vectors(s.hole_through)
     facing = np.abs(s.patch_normal[patches.row] @ through.T) > 1.0 - GRAZING
     same = s.patch_solid[patches.row][:, None] == s.hole_solid
@@ -196,5 +194,4 @@ def hole_outlines(part: Front, scene: Scene, patches: Outlines, reach: Floats) -
     )
     none = np.full(len(hole), -1)
     labels = Labels(np.full(len(hole), HOLE), none, none, none, host)
-    found = plate_outlines(frame_of(part, problem), plates, none, labels, reach)
-    return found._replace(hole_of=found.row)
+    return Labelled(problem, plates, none, labels)
