@@ -42,11 +42,10 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 import numpy as np
-import shapely
-from shapely.geometry.base import BaseGeometry
 
-from benchlay.checks._check import Body, Context, length_text, rounded_up
+from benchlay.checks._check import Context, length_text, rounded_up
 from benchlay.findings import Finding, Severity
+from benchlay.geometry import convex
 from benchlay.layout.bench import Bench
 from benchlay.scene.tables import Floats
 
@@ -65,28 +64,30 @@ def check(context: Context, variant: int) -> Iterator[Finding]:
     holes = _holes(bench)
     if holes is None:
         return
-    for name, body in sorted(_held(context, variant).items()):
-        foot = body.part == "foot"
-        reach = _UNDER_MM if foot else _FORK_MM
-        nearest = _nearest(holes, body.outline if foot else shapely.centroid(body.outline))
+    bodies = context.bodies
+    for name, row in sorted(_held(context, variant).items()):
+        _, part = bodies.label(row)
+        reach = _UNDER_MM if part == "foot" else _FORK_MM
+        outline = bodies.body(row).outline
+        place = outline if part == "foot" else np.array([convex.centroid(outline)])
+        nearest = _nearest(holes, place)
         if nearest > reach:
-            yield _finding(context, variant, name, body.part, nearest - (0.0 if foot else reach))
+            short = nearest - (0.0 if part == "foot" else reach)
+            yield _finding(context, variant, name, part, short)
 
 
-def _nearest(holes: Floats, place: BaseGeometry) -> float:
-    """Return how far the nearest hole is; inf for no hole.
+def _nearest(holes: Floats, place: Floats) -> float:
+    """Return how far the nearest hole is from a convex outline or a point; inf for no hole.
 
     Only holes by the box round the place are measured: a bench has thousands.
     """
-    low_x, low_y, high_x, high_y = shapely.bounds(place)
-    beside_x = np.maximum(low_x - holes[:, 0], holes[:, 0] - high_x)
-    beside_y = np.maximum(low_y - holes[:, 1], holes[:, 1] - high_y)
-    apart = np.hypot(np.maximum(beside_x, 0.0), np.maximum(beside_y, 0.0))
+    low, high = place.min(axis=0), place.max(axis=0)
+    beside = np.maximum(np.maximum(low - holes, holes - high), 0.0)
+    apart = np.hypot(beside[:, 0], beside[:, 1])
     # The place touches its box, so no hole is farther from it than from the box by more
     # than the box's diagonal.
-    diagonal = np.hypot(high_x - low_x, high_y - low_y)
-    near = apart <= apart.min(initial=np.inf) + diagonal + _UNDER_MM
-    away = shapely.distance(shapely.points(holes[near]), place)
+    near = holes[apart <= apart.min(initial=np.inf) + np.hypot(*(high - low)) + _UNDER_MM]
+    away = np.hypot(*(near - place).T) if len(place) == 1 else convex.distances(near, place)
     return float(away.min(initial=np.inf))
 
 
@@ -101,20 +102,23 @@ def _holes(bench: Bench) -> Floats | None:
     grid = np.stack(np.meshgrid(x, y), axis=-1).reshape(-1, 2)
     if bench.size_mm is not None:
         return grid[(grid >= 0.0).all(axis=1)]
+    # Loaded here: polygons take longer to load than a plain check has other things to do.
+    import shapely
+
     inside = shapely.covers(shapely.Polygon(outline), shapely.points(grid))
     holes: Floats = grid[inside]
     return holes
 
 
-def _held(context: Context, variant: int) -> dict[str, Body]:
-    """Return what holds each element down: its foot, else its post."""
+def _held(context: Context, variant: int) -> dict[str, int]:
+    """Return the row of what holds each element down: of its foot, else of its post."""
     elements = context.state(variant).elements
-    found: dict[str, Body] = {}
+    found: dict[str, int] = {}
     for row in context.bodies.rows(variant).tolist():
-        body = context.bodies.body(row)
-        bare = body.part == "post" and body.name not in found
-        if body.name in elements and (body.part == "foot" or bare):
-            found[body.name] = body
+        name, part = context.bodies.label(row)
+        bare = part == "post" and name not in found
+        if name in elements and (part == "foot" or bare):
+            found[name] = row
     return found
 
 

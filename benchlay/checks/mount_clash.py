@@ -87,9 +87,9 @@ def check(context: Context, variant: int) -> Iterator[Finding]:
     rows = context.bodies.rows(variant)
     worst: dict[tuple[str, str], tuple[float, Body, Body]] = {}
     for first, second in context.bodies.near_pairs(rows, limit):
-        a, b = context.bodies.body(first), context.bodies.body(second)
-        if _belong_together(context, variant, a, b):
+        if _belong_together(context, variant, first, second):
             continue
+        a, b = context.bodies.body(first), context.bodies.body(second)
         if (a.part in _SHEETS, a.name) > (b.part in _SHEETS, b.name):
             a, b = b, a
         gap = distance_mm(a, b)
@@ -101,16 +101,17 @@ def check(context: Context, variant: int) -> Iterator[Finding]:
         yield _finding(context, variant, limit, found)
 
 
-def _belong_together(context: Context, variant: int, a: Body, b: Body) -> bool:
-    if a.part in _SHEETS and b.part in _SHEETS:
+def _belong_together(context: Context, variant: int, first: int, second: int) -> bool:
+    (a, part), (b, other_part) = context.bodies.label(first), context.bodies.label(second)
+    if part in _SHEETS and other_part in _SHEETS:
         return True
     state = context.state(variant)
-    for body, other in ((a, b), (b, a)):
-        held = state.elements.get(body.name)
-        source = state.sources.get(body.name)
+    for name, other in ((a, b), (b, a)):
+        held = state.elements.get(name)
+        source = state.sources.get(name)
         stand = held.element.stand if held else source.source.stand if source else None
         opening = None if stand is None else stand.in_opening
-        if opening is not None and opening.panel == other.name:
+        if opening is not None and opening.panel == other:
             return True
     return False
 

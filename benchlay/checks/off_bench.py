@@ -41,12 +41,13 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-import shapely
-from shapely.geometry.base import BaseGeometry
+import numpy as np
 
-from benchlay.checks._check import Body, Context, length_text, rounded_up
+from benchlay.checks._check import Context, length_text, rounded_up
 from benchlay.findings import Finding, Severity
+from benchlay.layout.bench import Bench
 from benchlay.layout.stand import Place
+from benchlay.scene.tables import Floats
 
 NAME = "off-bench"
 
@@ -60,28 +61,25 @@ _ROUNDING_MM = 1e-6
 
 def check(context: Context, variant: int) -> Iterator[Finding]:
     """Report each item once, by the part that reaches out furthest."""
-    bench = shapely.Polygon(context.layout(variant).bench.outline)
-    shapely.prepare(bench)
-    rows = context.bodies.rows(variant)
-    inside = shapely.covers(bench, context.bodies.outline[rows])
-    standing: dict[str, list[Body]] = {}
-    for row, within in zip(rows.tolist(), inside.tolist(), strict=True):
-        body = context.bodies.body(row)
-        on_bench = body.part == "body" and abs(body.low_mm) <= _LOWEST_MM
-        if body.part in _STANDS or on_bench:
-            outside = standing.setdefault(body.name, [])
-            if not within:
-                outside.append(body)
+    bench = context.layout(variant).bench
+    standing = _standing(context, variant)
     for name, where in _items(context, variant):
-        parts = standing.get(name, [])
-        if name in standing and not parts:
-            continue
-        outlines = [body.outline for body in parts] or [shapely.Point(where[:2])]
-        beyond = [_beyond(outline, bench) for outline in outlines]
-        worst = max(range(len(outlines)), key=beyond.__getitem__)
+        parts = standing.get(name) or [("middle", np.array([where[:2]]))]
+        beyond = [_beyond(corners, bench) for _, corners in parts]
+        worst = max(range(len(parts)), key=beyond.__getitem__)
         if beyond[worst] > _ROUNDING_MM:
-            part = parts[worst].part if parts else "middle"
-            yield _finding(context, variant, name, (part, where), beyond[worst])
+            yield _finding(context, variant, name, (parts[worst][0], where), beyond[worst])
+
+
+def _standing(context: Context, variant: int) -> dict[str, list[tuple[str, Floats]]]:
+    """Return, by item, the parts of it that stand on the bench, with their corners in plan."""
+    bodies = context.bodies
+    found: dict[str, list[tuple[str, Floats]]] = {}
+    for row in bodies.rows(variant).tolist():
+        name, part = bodies.label(row)
+        if part in _STANDS or (part == "body" and abs(bodies.low_mm[row, 2]) <= _LOWEST_MM):
+            found.setdefault(name, []).append((part, bodies.corners(row)[:, :2]))
+    return found
 
 
 def _items(context: Context, variant: int) -> Iterator[tuple[str, tuple[float, float, float]]]:
@@ -98,13 +96,28 @@ def _on_bench(stand: Place) -> bool:
     return not stand.out and stand.in_opening is None
 
 
-def _beyond(outline: BaseGeometry, bench: BaseGeometry) -> float:
-    """Return how far an outline reaches beyond the bench, mm."""
-    outside = shapely.difference(outline, bench)
+def _beyond(corners: Floats, bench: Bench) -> float:
+    """Return how far the hull of corners (N, 2) reaches beyond the bench, mm.
+
+    Over a convex bench the distance from it is greatest at a corner.
+    """
+    if bench.size_mm is None:
+        return _beyond_outline(corners, bench)
+    over = np.maximum(np.maximum(-corners, corners - np.array(bench.size_mm)), 0.0)
+    return float(np.hypot(over[:, 0], over[:, 1]).max())
+
+
+def _beyond_outline(corners: Floats, bench: Bench) -> float:
+    """Return the same for a bench of any other outline, which may have inward corners."""
+    # Loaded here: polygons take longer to load than a plain check has other things to do.
+    import shapely
+
+    top = shapely.Polygon(bench.outline)
+    outside = shapely.difference(shapely.convex_hull(shapely.multipoints(corners)), top)
     if shapely.is_empty(outside):
         return 0.0
-    corners = shapely.points(shapely.get_coordinates(outside))
-    return float(shapely.distance(corners, bench).max())
+    ends = shapely.points(shapely.get_coordinates(outside))
+    return float(shapely.distance(ends, top).max())
 
 
 def _finding(

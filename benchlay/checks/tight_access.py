@@ -56,11 +56,11 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 import numpy as np
-import shapely
 
-from benchlay.checks._check import Body, Context, length_text
+from benchlay.checks._check import Bodies, Body, Context, length_text, overlapping
 from benchlay.elements.mount import DEFAULT_MOUNT, Mount
 from benchlay.findings import Finding, Severity
+from benchlay.geometry.convex import hull
 from benchlay.placing.placed import PlacedElement
 from benchlay.placing.pose import add
 
@@ -80,10 +80,21 @@ def check(context: Context, variant: int) -> Iterator[Finding]:
         corridor = None if item.out else _corridor(context, variant, item)
         if corridor is None:
             continue
-        met = map(bodies.body, bodies.overlapping(rows, corridor))
-        inside = sorted({b.name for b in met if b.part not in _SHEETS and b.name != name})
+        inside = sorted(
+            {
+                bodies.label(row)[0]
+                for row in bodies.in_box(rows, corridor).tolist()
+                if _in_the_way(bodies, row, corridor)
+            }
+        )
         if inside:
             yield _finding(context, variant, name, inside)
+
+
+def _in_the_way(bodies: Bodies, row: int, corridor: Body) -> bool:
+    name, part = bodies.label(row)
+    own = name == corridor.name or part in _SHEETS
+    return not own and overlapping(bodies.body(row), corridor)
 
 
 def _corridor(context: Context, variant: int, item: PlacedElement) -> Body | None:
@@ -109,7 +120,7 @@ def _corridor(context: Context, variant: int, item: PlacedElement) -> Body | Non
         (x, y, z) for x in (near[0], far[0]) for y in (near[1], far[1]) for z in (near[2], far[2])
     ]
     placed = np.array([add(item.pose.at, item.pose.turn(corner)) for corner in corners])
-    outline = shapely.convex_hull(shapely.multipoints(placed[:, :2]))
+    outline = hull(placed[:, :2])
     return Body(
         item.element.name, "corridor", outline, float(placed[:, 2].min()), float(placed[:, 2].max())
     )

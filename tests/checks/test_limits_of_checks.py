@@ -298,3 +298,24 @@ def test_dump_at_its_rating(make_context, rated, fires):
         f"withstands: {{power: {rated}}}}}\nroutes: {{main: [red, D1]}}\n"
     )
     assert bool(found(make_context, "dump-overload", text)) == fires
+
+
+def test_where_no_clearance_is_asked_for_bodies_may_touch_but_not_overlap(make_context):
+    text = (
+        "bench: {size: [800, 400]}\nlimits: {clearance: 0}\nsources:\n"
+        "  red: {wavelength: 633, power: 5 mW, beam: {waist_radius: 0.5}, at: [100, 200],"
+        " heading: 0}\nelements:\n"
+    )
+    box = (
+        "  %s: {kind: obstacle, at: [%s, 40], facing: 0, outline: [[0, 0], [50, 0], [50, 50], "
+        "[0, 50]], to_height: 60}\n"
+    )
+
+    def clashes(second_x):
+        context = make_context(text + box % ("A", 300) + box % ("B", second_x))
+        return [f for f in run_checks(context)[0] if f.check == "mount-clash"]
+
+    assert clashes(350) == []
+    (clash,) = clashes(348)
+    assert clash.value == pytest.approx(-2.0)
+    assert clash.message == "the body of 'B' overlaps the body of 'A' by 2 mm"

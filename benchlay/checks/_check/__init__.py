@@ -2,7 +2,14 @@
 
 from __future__ import annotations
 
-from benchlay.checks._check.bodies import Body, distance_mm, middle_between, overlap_mm
+from benchlay.checks._check.bodies import (
+    Bodies,
+    Body,
+    distance_mm,
+    middle_between,
+    overlap_mm,
+    overlapping,
+)
 from benchlay.checks._check.context import Context
 from benchlay.checks._check.exits import Exit, exits_of
 from benchlay.checks._check.limits import LineLimit, floors_w, limits_of
@@ -26,6 +33,7 @@ from benchlay.checks._check.words import (
 )
 
 __all__ = [
+    "Bodies",
     "Body",
     "Check",
     "Context",
@@ -50,6 +58,7 @@ __all__ = [
     "listed",
     "middle_between",
     "overlap_mm",
+    "overlapping",
     "place_words",
     "power_text",
     "room_at",
