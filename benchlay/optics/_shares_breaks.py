@@ -70,7 +70,7 @@ def break_angles(section: Section) -> tuple[Ints, Floats]:
 def _on_line(lines: Lines, place: Floats) -> Floats:
     """Points (2, L) at distance `place` from the foot of each line."""
     n = lines.normal
-    return np.stack((lines.distance * n[0] - place * n[1], lines.distance * n[1] + place * n[0]))
+    return np.array((lines.distance * n[0] - place * n[1], lines.distance * n[1] + place * n[0]))
 
 
 def _lines_with_lines(lines: Lines) -> tuple[Ints, Floats]:
@@ -122,10 +122,10 @@ def _tangents(ellipses: Ellipses, around: Ints) -> list[tuple[Ints, Floats]]:
     away2 = np.sum(ellipses.axis**2, axis=0)
     pick = np.flatnonzero(away2 > 1.0)
     axis, away2_out = ellipses.axis[:, pick], away2[pick]
-    side = np.sqrt(away2_out - 1.0) * np.stack((-axis[1], axis[0]))
+    side = np.sqrt(away2_out - 1.0) * np.array((-axis[1], axis[0]))
     centre, axes = ellipses.centre[:, pick], select(ellipses.axes, pick)
     on = np.flatnonzero(np.abs(away2 - 1.0) < _AT_OUTLINE)
-    along = np.stack((-ellipses.axis[1, on], ellipses.axis[0, on]))
+    along = np.array((-ellipses.axis[1, on], ellipses.axis[0, on]))
     along = transform(select(ellipses.axes, on), along)
     return [
         (around[pick], centre + transform(axes, (axis + side) / away2_out)),
@@ -149,10 +149,12 @@ def _ellipses_with_ellipses(ellipses: Ellipses, around: Ints, problems: int) -> 
     offset = select(centre, b) - select(centre, a)
     cross = _overlap(select(inverse, a), select(axes, b), offset)
     cross &= _overlap(select(inverse, b), select(axes, a), -offset)
+    if not cross.any():
+        return around[:0], centre[:, :0]
     a, b, offset = a[cross], b[cross], offset[:, cross]
     here, within = select(axes, b), select(inverse, a)
     pair, phi = _crossings(_product(within, here), transform(within, offset))
-    turn = np.stack((np.cos(phi), np.sin(phi)))
+    turn = np.array((np.cos(phi), np.sin(phi)))
     b = b[pair]
     return around[b], centre[:, b] + transform(select(axes, b), turn)
 
@@ -189,10 +191,12 @@ def _crossings(matrix: Floats, centre: Floats) -> tuple[Ints, Floats]:
     full = np.abs(lead) > least
     root = np.zeros((len(c), 4), dtype=np.complex128)
     quartic = np.stack((next_, level + 0j, next_.conj(), lead.conj()), axis=-1)
-    root[full] = _roots(quartic[full] / lead[full, None])
+    if full.any():
+        root[full] = _roots(quartic[full] / lead[full, None])
     simple = ~full & (np.abs(next_) > least)
-    quadratic = np.stack((level + 0j, next_.conj()), axis=-1)
-    root[simple, :2] = _roots(quadratic[simple] / next_[simple, None])
+    if simple.any():
+        quadratic = np.stack((level + 0j, next_.conj()), axis=-1)
+        root[simple, :2] = _roots(quadratic[simple] / next_[simple, None])
     pair, which = np.nonzero(np.abs(np.abs(root) - 1.0) < _ON_CIRCLE)
     phi = np.angle(root[pair, which])
     for _ in range(6):  # Newton; a double root halves its error at each step

@@ -138,7 +138,8 @@ def pick_ellipses(ellipses: Ellipses, index: Ints) -> Ellipses:
 def measure_polygons(vertices: Floats) -> tuple[Polygons, Floats, Bools]:
     """Edges, areas, and whether the axis lies inside, of polygons (P, V, 2)."""
     corner = np.ascontiguousarray(np.moveaxis(vertices, 0, -1).swapaxes(0, 1))
-    along = np.roll(corner, -1, axis=1) - corner
+    after = following(corner, 1)
+    along = after - corner
     arm = corner - corner[:, :1]
     area = 0.5 * np.sum(arm[0] * along[1] - arm[1] * along[0], axis=0)
     length = np.hypot(along[0], along[1])
@@ -146,11 +147,11 @@ def measure_polygons(vertices: Floats) -> tuple[Polygons, Floats, Bools]:
     offset = corner[0] * unit[1] - corner[1] * unit[0]  # > 0: axis to the left
     inside = np.all(offset * np.sign(area) >= 0.0, axis=0)
     sign = np.where(offset < 0.0, -1.0, 1.0)
-    normal = np.stack((unit[1] * sign, -unit[0] * sign))
+    normal = np.array((unit[1] * sign, -unit[0] * sign))
     distance = np.abs(offset)
     distance[distance < _ON_AXIS] = 0.0
     here = corner[1] * normal[0] - corner[0] * normal[1]
-    there = np.roll(corner[1], -1, 0) * normal[0] - np.roll(corner[0], -1, 0) * normal[1]
+    there = after[1] * normal[0] - after[0] * normal[1]
     half = np.sqrt(np.maximum(CUT_RADIUS**2 - distance**2, 0.0))
     start = np.maximum(np.minimum(here, there), -half)
     end = np.minimum(np.maximum(here, there), half)
@@ -176,14 +177,17 @@ def measure_ellipses(centre: Floats, axes: Floats) -> tuple[Ellipses, Floats]:
     return table, np.pi * det
 
 
+def following(values: Floats, axis: int) -> Floats:
+    """Return along an axis, for each corner of an outline, what the next one has."""
+    rows = list(range(1, values.shape[axis])) + [0] * min(1, values.shape[axis])
+    return values.take(rows, axis)
+
+
 def transform(matrix: Floats, point: Floats) -> Floats:
     """Apply matrices (2, 2, N) to points (2, N)."""
-    return np.stack(
-        (
-            matrix[0, 0] * point[0] + matrix[0, 1] * point[1],
-            matrix[1, 0] * point[0] + matrix[1, 1] * point[1],
-        )
-    )
+    image: Floats = matrix[:, 0] * point[0]
+    image += matrix[:, 1] * point[1]
+    return image
 
 
 def largest_stretch(matrix: Floats) -> Floats:

@@ -79,7 +79,7 @@ def intervals(problem: Ints, angle: Floats, problems: int) -> Intervals:
 
 
 def _unit(angle: Floats) -> Floats:
-    return np.stack((np.cos(angle), np.sin(angle)))
+    return np.array((np.cos(angle), np.sin(angle)))
 
 
 def cast(section: Section, sweep: Intervals) -> Rays:

@@ -37,7 +37,7 @@ def ellipse_window(table: Ellipses) -> tuple[Floats, Floats]:
     away2 = np.sum(table.axis**2, axis=0)
     around = away2 < 1.0 + _STRAIGHT
     away2 = np.where(around, 2.0, away2)
-    side = np.sqrt(away2 - 1.0) * np.stack((-table.axis[1], table.axis[0]))
+    side = np.sqrt(away2 - 1.0) * np.array((-table.axis[1], table.axis[0]))
     middle = np.arctan2(table.centre[1], table.centre[0])
     ends = []
     for sign in (1.0, -1.0):

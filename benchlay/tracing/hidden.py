@@ -19,16 +19,23 @@ _FEW = 4  # below so many outlines in a problem there is nothing to gain
 _EQUAL_MM = 1e-9  # depths nearer than this are equal; the order then decides
 
 
-def counting(outlines: Outlines, reach: Floats) -> Flags:
+def worthwhile(outlines: Outlines, reach: Floats) -> Outlines:
+    """Return the outlines that may take a share that counts and are not hidden."""
+    corners = _corners(outlines)
+    kept = counting(outlines, corners, reach)
+    outlines = outlines.take(kept)
+    return outlines.take(visible(outlines, corners[kept]))
+
+
+def counting(outlines: Outlines, corners: Floats, reach: Floats) -> Flags:
     """Tell which outlines (S,) may take a share that counts.
 
     No more lands on an outline than its area times the density at its nearest point; what is
     below the share beyond the reach (problems,) does not count. Bodies with holes are kept.
     """
-    corners = _corners(outlines)
     low, high = corners.min(axis=1), corners.max(axis=1)
-    nearest = np.clip(0.0, low, high)
-    after = np.roll(corners, -1, axis=1)
+    nearest = np.minimum(np.maximum(0.0, low), high)
+    after = corners[:, (1, 2, 3, 0)]
     area = 0.5 * (corners[..., 0] * after[..., 1] - corners[..., 1] * after[..., 0]).sum(axis=1)
     out = reach[outlines.problem]
     ratio = 2.0 * (out * out - (nearest * nearest).sum(axis=1))
@@ -38,7 +45,7 @@ def counting(outlines: Outlines, reach: Floats) -> Flags:
     return kept
 
 
-def visible(outlines: Outlines) -> Flags:
+def visible(outlines: Outlines, corners: Floats) -> Flags:
     """Tell which outlines (S,) are not wholly hidden behind a single nearer one.
 
     Holes, and bodies that have holes, are kept; only whole bodies hide others.
@@ -49,7 +56,6 @@ def visible(outlines: Outlines) -> Flags:
         return kept
     whole = outlines.role != HOLE
     whole[outlines.hole_of[outlines.hole_of >= 0]] = False
-    corners = _corners(outlines)
     front, back = _pairs(counts, whole, corners)
     if not len(front):
         return kept
@@ -87,20 +93,17 @@ def _pairs(counts: Ints, whole: Flags, corners: Floats) -> tuple[Ints, Ints]:
     fronts, backs = [], []
     first = 0
     for count in counts.tolist():
-        rows = first + np.flatnonzero(whole[first : first + count])
+        # Each body with each: of a crowded cross-section a table as large as the square.
+        if count >= _FEW:
+            a, b = low[first : first + count], high[first : first + count]
+            holds = (a[:, None] <= a).all(axis=2) & (b[:, None] >= b).all(axis=2)
+            i, j = holds.nonzero()
+            fronts.append(i + first)
+            backs.append(j + first)
         first += count
-        if len(rows) < _FEW:
-            continue
-        a, b = low[rows], high[rows]
-        holds = (a[:, None] <= a).all(axis=2) & (b[:, None] >= b).all(axis=2)
-        np.fill_diagonal(holds, val=False)
-        i, j = holds.nonzero()
-        fronts.append(rows[i])
-        backs.append(rows[j])
-    if not fronts:
-        none = np.zeros(0, dtype=np.int64)
-        return none, none
-    return np.concatenate(fronts), np.concatenate(backs)
+    front, back = np.concatenate(fronts), np.concatenate(backs)
+    both = whole[front] & whole[back] & (front != back)
+    return front[both], back[both]
 
 
 def _ahead(outlines: Outlines, front: Ints, back: Ints, points: Floats) -> Flags:

@@ -17,7 +17,7 @@ from benchlay.scene.tables import PART, SINK, Flags, Floats, Ints, Scene
 from benchlay.tracing.bodies import crossed
 from benchlay.tracing.front import OUTSIDE, Front
 from benchlay.tracing.handing import this_side
-from benchlay.tracing.hidden import counting, visible
+from benchlay.tracing.hidden import worthwhile
 from benchlay.tracing.hits import FACE, HANDED, NOTHING, SOLID, Hits
 from benchlay.tracing.outlines import CORE, HOLE, OPTIC, Outlines, joined
 from benchlay.tracing.plates import plate_outlines
@@ -149,8 +149,7 @@ def gather(front: Front, scene: Scene, hits: Hits, reach: Floats) -> Outlines:
     outlines = joined([on_faces, patches, others], 1, scene, front)
     if (hits.kind == HANDED).any():
         outlines = outlines.take(this_side(outlines, front, hits, scene))
-    outlines = outlines.take(counting(outlines, reach))
-    return outlines.take(visible(outlines))
+    return worthwhile(outlines, reach)
 
 
 def _radius_bound(part: Front, reach: Floats) -> Floats:
