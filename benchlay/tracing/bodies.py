@@ -53,7 +53,7 @@ def passing(front: Front, scene: Scene, aimed: Flags) -> Passing:
     apart2 += dot(position, position)[:, None]
     apart2 -= along * along
     aimed[np.arange(len(aimed)), front.owner] = True
-    candidate = s.present[front.variant] & ~(aimed[:, s.owner] & scene.close)
+    candidate = s.present.take(front.variant, 0) & ~(aimed.take(s.owner, 1) & scene.close)
     left = (front.body >= 0).nonzero()[0]
     candidate[left, front.body[left]] = False
     return Passing(along, apart2, candidate)
@@ -83,9 +83,11 @@ def pairs(
 
 def planes_met(front: Front, scene: Scene, beam: Ints, solid: Ints) -> tuple[Floats, Floats]:
     """Return (N, K) direction . normal and offset - normal . position of solids' planes."""
-    normal = scene.fixed.plane_normals[solid]
-    slope = dot(normal, front.direction[beam][:, None])
-    gap = scene.fixed.plane_offsets[solid] - dot(normal, front.position[beam][:, None])
+    normal = scene.fixed.plane_normals.take(solid, 0)
+    slope = dot(normal, front.direction.take(beam, 0)[:, None])
+    gap = scene.fixed.plane_offsets.take(solid, 0) - dot(
+        normal, front.position.take(beam, 0)[:, None]
+    )
     return slope, gap
 
 
@@ -117,8 +119,8 @@ def _through_round(
 ) -> tuple[Floats, Floats]:
     """Return where rays enter and leave endless cylinders; a missed one is left before entered."""
     s = scene.solids
-    direction, axis = front.direction[beam], s.axis[number]
-    away = front.position[beam] - s.axis_point[number]
+    direction, axis = front.direction.take(beam, 0), s.axis.take(number, 0)
+    away = front.position.take(beam, 0) - s.axis_point.take(number, 0)
     lean, mixed = dot(direction, axis), dot(away, axis)
     a = 1.0 - lean * lean
     b = dot(away, direction) - mixed * lean
@@ -136,7 +138,7 @@ def _through_round(
 
 def through_holes(front: Front, scene: Scene, beam: Ints, solid: Ints) -> Flags:
     """Tell for pairs (N,) whether the ray passes the solid through one of its openings."""
-    through = in_holes(front, scene)[beam]
+    through = in_holes(front, scene).take(beam, 0)
     through &= scene.solids.hole_solid == solid[:, None]
     passed: Flags = np.logical_or.reduce(through, axis=1)
     return passed

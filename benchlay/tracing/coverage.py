@@ -56,7 +56,7 @@ def face_covers(scene: Scene, hits: Hits, radius: Floats) -> Flags:
     face = np.where(hits.kind == FACE, hits.row, 0)
     spread = radius / np.maximum(np.abs(hits.slope), SKIN_MM)
     left, up = np.abs(hits.left), np.abs(hits.up)
-    a, b = f.clear[face, 0], f.clear[face, 1]
+    a, b = f.clear.take(face, 0).T
     as_round = np.hypot(left, up) + spread <= np.minimum(a, b)
     as_box = (left + spread <= a) & (up + spread <= b)
     covers: Flags = np.where(f.clear_round[face], as_round, as_box)
@@ -80,13 +80,13 @@ def _solid_covers(front: Front, scene: Scene, hits: Hits, rows: Ints, radius: Fl
     """
     s = scene.solids
     solid, plane = hits.row[rows], np.maximum(hits.plane[rows], 0)
-    sine2 = scene.fixed.plane_sines2[plane]
+    sine2 = scene.fixed.plane_sines2.take(plane, 0)
     depth = hits.distance[rows]
     slope, gap = planes_met(front, scene, rows, solid)
     gap -= depth[:, None] * slope
     bounds = sine2 > _PARALLEL
     room2 = np.where(bounds, gap * np.abs(gap), np.inf) / np.where(bounds, sine2, 1.0)
-    steep = np.abs(dot(front.direction[rows], s.plane_normal[plane]))
+    steep = np.abs(dot(front.direction.take(rows, 0), s.plane_normal.take(plane, 0)))
     spread = radius / np.maximum(steep, SKIN_MM)
     covers: Flags = (hits.plane[rows] >= 0) & (room2.min(axis=1) >= spread * spread)
     covers &= scene.fixed.round_of[solid] < 0
@@ -139,6 +139,6 @@ def _near_faces(
     counts = touched[:, 0] & touched[:, 1] & (steep > _GRAZING)
     counts &= (met.distance > -SKIN_MM) & (met.distance < hits.distance[:, None])
     counts &= (f.owner != front.owner[:, None]) & (f.owner != target[:, None])
-    counts &= scene.fixed.enterable[front.variant]
+    counts &= scene.fixed.enterable.take(front.variant, 0)
     result: Flags = np.logical_or.reduce(counts, axis=1)
     return result

@@ -11,7 +11,6 @@ from typing import NamedTuple
 
 import numpy as np
 
-from benchlay.elements._kind import Acts
 from benchlay.optics import coherency, fresnel, moments
 from benchlay.optics.rays import bench_basis, cross, dot
 from benchlay.optics.thin_lens import bend, throw_back
@@ -19,7 +18,7 @@ from benchlay.scene.tables import Flags, Floats, Ints, Mode, Scene
 
 _NORMAL = 1e-12  # below this sine of incidence the plane of incidence is not defined
 
-_MIRRORED = moments.scale_second(np.ones((10, 1)), -1.0)  # the signs after a reflection
+MIRRORED = moments.scale_second(np.ones((10, 1)), -1.0)  # the signs after a reflection
 
 
 class Meeting(NamedTuple):
@@ -132,8 +131,8 @@ def _reflected(meeting: Meeting, scene: Scene, j: Floats) -> Child:
     k, n = meeting.direction, meeting.normal
     direction = k - (2.0 * dot(k, n))[:, None] * n
     axis = meeting.s
-    m = meeting.moments * _MIRRORED
-    lens = scene.faces.acts[meeting.row] == Acts.LENS
+    m = meeting.moments * MIRRORED
+    lens = scene.fixed.lens.take(meeting.row)
     if lens.any():
         bulge = scene.faces.lens_curvature[meeting.row, meeting.wave]
         bulge = np.where(meeting.outward, bulge, -bulge)
@@ -151,7 +150,7 @@ def _transmitted(meeting: Meeting, scene: Scene, j: Floats) -> Child:
     beyond = np.sqrt(np.maximum(1.0 - ratio * ratio * (1.0 - cosine * cosine), 0.0))
     direction = ratio[:, None] * k + (beyond - ratio * cosine)[:, None] * n
     axis = meeting.s
-    lens = scene.faces.acts[meeting.row] == Acts.LENS
+    lens = scene.fixed.lens.take(meeting.row)
     if lens.any():
         power = np.where(lens, scene.faces.lens_power[meeting.row, meeting.wave], 0.0)
         slope, offset = _slopes(meeting, scene)

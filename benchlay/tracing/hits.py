@@ -56,21 +56,23 @@ class FacesMet(NamedTuple):
 def inside_hits(front: Front, scene: Scene) -> Hits:
     """Return which face of its own optic each beam inside glass meets."""
     f, fixed = scene.faces, scene.fixed
-    rows = fixed.own_faces[front.within]  # (B, K)
-    axes = fixed.own_axes[front.within]
-    away = fixed.own_middles[front.within] - front.position[:, None, :]
+    rows = fixed.own_faces.take(front.within, 0)  # (B, K)
+    axes = fixed.own_axes.take(front.within, 0)
+    away = fixed.own_middles.take(front.within, 0) - front.position[:, None, :]
     onward = dot(axes, front.direction[:, None, None])
     start = dot(axes, away[:, :, None])
     slope, gap = onward[..., 0], start[..., 0]
-    leaving = (slope > PARALLEL) | (fixed.own_both[front.within] & (np.abs(slope) > PARALLEL))
+    leaving = (slope > PARALLEL) | (
+        fixed.own_both.take(front.within, 0) & (np.abs(slope) > PARALLEL)
+    )
     distance = np.where(leaving, gap, np.inf) / np.where(leaving, slope, 1.0)
     along = np.where(leaving, distance, 0.0)
     left = along * onward[..., 1] - start[..., 1]
     up = along * onward[..., 2] - start[..., 2]
     valid = leaving & (rows >= 0) & (rows != front.face[:, None]) & (distance > -_TOUCH_MM)
     # A spilled lump runs on the chief ray's line wherever that is: no outline holds it.
-    valid &= in_outline(left, up, f.radii[rows], f.round[rows]) | front.lump[:, None]
-    lens = fixed.lens[rows]
+    valid &= in_outline(left, up, f.radii.take(rows, 0), f.round.take(rows)) | front.lump[:, None]
+    lens = fixed.lens.take(rows)
     if lens.any():
         # Between the faces of an ideal lens, which stand in one place, light beyond the
         # critical angle would go to and fro for ever: it ends on the barrel.
@@ -105,7 +107,7 @@ def faces_met(front: Front, scene: Scene) -> FacesMet:
     place = distance[:, None] * onward[:, 1:] - start[:, 1:]
     same = f.owner == front.owner[:, None]
     valid = distance > np.where(same, SKIN_MM, -SKIN_MM)
-    valid &= ((slope < 0.0) | fixed.passes) & ~flat & fixed.enterable[front.variant]
+    valid &= ((slope < 0.0) | fixed.passes) & ~flat & fixed.enterable.take(front.variant, 0)
     size = np.abs(place) / f.radii.T
     a, b = size[:, 0], size[:, 1]
     valid &= np.where(f.round, a * a + b * b, np.maximum(a, b)) <= 1.0

@@ -35,7 +35,11 @@ class Packed:
 
     def take(self, rows: Ints | Flags | slice) -> Self:
         """Return some of the beams; of neighbouring ones (a slice) a view."""
-        return type(self)(self.ints[:, rows], self.floats[:, rows])
+        if isinstance(rows, slice):
+            return type(self)(self.ints[:, rows], self.floats[:, rows])
+        # `take` is several times quicker than an index, but counts where an index chooses.
+        numbers = rows.nonzero()[0] if rows.dtype == np.bool_ else rows
+        return type(self)(self.ints.take(numbers, 1), self.floats.take(numbers, 1))
 
     def set(self, **columns: ArrayLike) -> None:
         """Overwrite quantities of beams that nobody else holds."""

@@ -11,7 +11,6 @@ from typing import NamedTuple
 
 import numpy as np
 
-from benchlay.elements._kind import Acts, Inside
 from benchlay.optics.shares import partition
 from benchlay.scene.tables import PART, SINK, Flags, Floats, Ints, Scene
 from benchlay.tracing.bodies import crossed
@@ -187,10 +186,10 @@ def _faces_in_reach(part: Front, scene: Scene, hits: Hits, bound: Floats, inside
     if not len(f.owner):
         return np.zeros((len(inside), 0), dtype=np.bool_)
     size = np.sqrt(np.einsum("ij,ij->i", f.radii, f.radii)) + np.abs(f.middle).sum(axis=1)
-    close = _in_reach(part, f.origin, size, bound)[0] & f.present[part.variant]
-    entering = (part.direction @ f.normal.T < 0.0) | (f.acts == Acts.PASSES)
+    close = _in_reach(part, f.origin, size, bound)[0] & scene.fixed.enterable[part.variant]
+    entering = (part.direction @ f.normal.T < 0.0) | scene.fixed.passes
     same = f.owner == part.owner[:, None]
-    close &= entering & ~same & (f.inside != Inside.BOTH) & ~inside[:, None]
+    close &= entering & ~same & ~inside[:, None]
     chosen = np.flatnonzero(hits.kind == FACE)
     close[chosen, hits.row[chosen]] = True
     return close

@@ -41,7 +41,7 @@ def face_plates(part: Front, scene: Scene, close: Flags, hits: Hits) -> Labelled
     problem, face = np.nonzero(close)
     own = (hits.kind == FACE)[problem] & (face == hits.row[problem])
     inside = part.within[problem] >= 0
-    opaque = f.acts[face] == Acts.OPAQUE
+    opaque = f.acts[face] == int(Acts.OPAQUE)
     ring = ~opaque & ~inside & (f.clear[face] < f.radii[face]).any(axis=1)
     role = np.where(own, CORE, np.where(opaque, BODY, OPTIC))
     both = np.concatenate((np.arange(len(face)), np.flatnonzero(ring)))
