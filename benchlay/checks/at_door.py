@@ -52,6 +52,7 @@ from typing import NamedTuple
 from benchlay.checks._check import (
     Context,
     Found,
+    Unevaluated,
     above,
     power_text,
     unjudged,
@@ -89,6 +90,7 @@ def check(context: Context, variant: int) -> Iterator[Found]:
     if not ways:
         return
     yield from unjudged(context, variant)
+    yield from _off_the_walls(layout, ways)
     beams, s = context.trace.beams, context.trace.scene.solids
     rows = context.beams_of(variant)
     rows = rows[context.hazardous[rows] & (beams.end_kind[rows] == SOLID)]
@@ -116,6 +118,33 @@ def _ways(layout: Layout) -> Iterator[_Way]:
             window.from_height_mm,
             window.to_height_mm,
         )
+
+
+def _off_the_walls(layout: Layout, ways: list[_Way]) -> Iterator[Unevaluated]:
+    """Say of what lies in no wall that nothing can reach it: walls stop the light elsewhere."""
+    assert layout.room is not None
+    corners = layout.room.outline
+    walls = list(zip(corners, (*corners[1:], corners[0]), strict=True))
+    for way in ways:
+        if not any(_off_wall(wall, way) <= _IN_WALL_MM for wall in walls):
+            places = layout.room.doors if way.what == "door" else layout.room.windows
+            yield Unevaluated(
+                f"{way.what} '{way.name}' does not lie in a wall of the room",
+                "set both its ends on one side of the room's outline",
+                span=places.spans.get(way.name),
+            )
+
+
+def _off_wall(wall: tuple[Point, Point], way: _Way) -> float:
+    """Return how far the ends of a door or window are from a wall at most, mm."""
+    (ax, ay), (bx, by) = wall
+    length = hypot(bx - ax, by - ay)
+    off = 0.0
+    for x, y in (way.start, way.end):
+        along = ((x - ax) * (bx - ax) + (y - ay) * (by - ay)) / length**2
+        t = min(max(along, 0.0), 1.0)
+        off = max(off, hypot(x - ax - t * (bx - ax), y - ay - t * (by - ay)))
+    return off
 
 
 def _reaches(context: Context, beam: int, way: _Way, floor_mm: float) -> bool:

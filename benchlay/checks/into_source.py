@@ -147,8 +147,11 @@ def _exit(context: Context, own: Ints, item: PlacedSource) -> tuple[float, float
 def _returning(context: Context, variant: int, item: PlacedSource) -> tuple[Ints, Floats, Floats]:
     """Return beams that cross the exit's plane from in front: offset (mm) and angle (rad)."""
     beams = context.trace.beams
+    number = context.trace.scene.sources.index(item.source.name)
     rows = context.beams_of(variant)
-    rows = rows[context.outside[rows] & (beams.start.parent[rows] >= 0)]
+    # What a source has just emitted does not come back; what another one shines into it counts.
+    away_again = (beams.start.parent[rows] >= 0) | (beams.start.source[rows] != number)
+    rows = rows[context.outside[rows] & away_again]
     normal = np.array(item.pose.axes()[0])
     away = np.array(item.pose.at) - beams.start.position[rows]
     slope = -(beams.start.direction[rows] @ normal)
@@ -191,16 +194,19 @@ def _finding(
     beam = worst.beam
     total = float(sum(one.power_w for one in returns))
     source, nm = context.source_of(beam), context.wavelength_nm(beam)
+    # Of light that no route names, the source itself is where it left its way.
+    last = since if since != source else context.left_at(beam)
+    last = "" if last == source else last
     return Finding(
         check=NAME,
         severity=SEVERITY,
         message=(
-            f"{power_text(total)} of {wavelength_text(nm)} from '{source}', sent back by "
-            f"'{since}', comes back into '{name}', {length_text(worst.off_mm)} from its middle "
+            f"{power_text(total)} of {wavelength_text(nm)} from '{source}'{_way_back(last)} into "
+            f"'{name}', {length_text(worst.off_mm)} from its middle "
             f"and {angle_text(worst.turn_rad)} from its axis"
         ),
         expected=f"at most {power_text(limit)} within its exit and acceptance",
-        remedy=_remedy(context, variant, since.partition(".")[0]),
+        remedy=_remedy(context, variant, name, last),
         element=name,
         beam=int(context.numbers[beam]),
         at=context.state(variant).sources[name].pose.at,
@@ -212,7 +218,12 @@ def _finding(
     )
 
 
-def _remedy(context: Context, variant: int, back: str) -> str:
+def _way_back(last: str) -> str:
+    return f", sent back by '{last}', comes back" if last else " shines"
+
+
+def _remedy(context: Context, variant: int, name: str, last: str) -> str:
+    back = last.partition(".")[0]
     if back in context.state(variant).elements:
         return f"tilt '{back}', or put an isolator before it"
-    return f"end the beam on a dump or screen before it meets '{back}'"
+    return f"end the beam on a dump or screen before it meets '{back or name}'"

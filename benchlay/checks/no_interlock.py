@@ -62,7 +62,7 @@ from benchlay.checks._check import Context, Found, power_text, unjudged, wavelen
 from benchlay.document.span import Span
 from benchlay.findings import Finding, Severity
 from benchlay.layout.layout import Layout
-from benchlay.zones.enclosure_line import enclosure_line, inside
+from benchlay.zones.enclosure_line import EnclosureLine, enclosure_line, inside, passes
 
 NAME = "no-interlock"
 
@@ -110,9 +110,16 @@ def _strongest_inside(context: Context, variant: int) -> int | None:
     line = enclosure_line(context.layout(variant))
     rows = context.beams_of(variant)
     rows = rows[context.hazardous[rows]]
-    starts = context.trace.beams.start.position
-    within = [b for b in rows.tolist() if inside(line, (float(starts[b, 0]), float(starts[b, 1])))]
+    within = [b for b in rows.tolist() if _runs_inside(context, line, b)]
     return max(within, key=lambda b: (float(context.accessible_w[b]), -b), default=None)
+
+
+def _runs_inside(context: Context, line: EnclosureLine, beam: int) -> bool:
+    """Whether some part of a beam runs within the line, wherever it comes from."""
+    start, length = context.trace.beams.start, float(context.trace.beams.length[beam])
+    x, y, _ = context.point(start.position[beam])
+    kx, ky, _ = context.point(start.direction[beam])
+    return inside(line, (x, y)) or passes(line, (x, y), (kx, ky), length)
 
 
 def _finding(context: Context, beam: int, sheet: _Sheet) -> Finding:

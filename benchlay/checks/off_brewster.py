@@ -134,9 +134,9 @@ def _finding(context: Context, variant: int, beam: int, face: int, loss: float) 
         check=NAME,
         severity=SEVERITY,
         message=(
-            f"'{name}' is meant to stand at Brewster's angle and sends {share_text(loss)} of "
-            f"{wavelength_text(nm)} light aside on every pass; it is met at {angle_text(angle)}, "
-            f"Brewster's angle there is {angle_text(wanted)}"
+            f"{_what(context, beam, face)} is meant to stand at Brewster's angle and sends "
+            f"{share_text(loss)} of {wavelength_text(nm)} light aside on every pass; it is met "
+            f"at {angle_text(angle)}, Brewster's angle there is {angle_text(wanted)}"
         ),
         expected=f"at most {share_text(_LOSS)} a pass",
         remedy=_remedy(name, abs(angle - wanted)),
@@ -148,6 +148,16 @@ def _finding(context: Context, variant: int, beam: int, face: int, loss: float) 
         limit=_LOSS,
         key=(*context.chain(beam), context.face_text(face)),
     )
+
+
+def _what(context: Context, beam: int, face: int) -> str:
+    """Name the plate that is judged: of a cell, which has two, the window that is met."""
+    scene = context.trace.scene
+    name = scene.elements[int(scene.faces.owner[face])]
+    variant = int(context.trace.beams.start.variant[beam])
+    window, dot_, _ = scene.face_names[scene.faces.name[face]].partition(".")
+    several = context.state(variant).elements[name].element.record.needs_line() and dot_
+    return f"the {window} window of '{name}'" if several else f"'{name}'"
 
 
 def _remedy(name: str, off_rad: float) -> str:

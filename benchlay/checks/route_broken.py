@@ -48,7 +48,7 @@ from collections.abc import Iterator
 
 import numpy as np
 
-from benchlay.checks._check import Context, Leg, above, power_text
+from benchlay.checks._check import Context, Leg, Loss, above, power_text
 from benchlay.findings import Finding, Severity
 from benchlay.tracing.beams import FACE, NOTHING
 
@@ -56,6 +56,8 @@ NAME = "route-broken"
 
 # The bench does not do what it was drawn for.
 SEVERITY = Severity.FAIL
+
+_ALL = 1.0 - 1e-9  # a share that is the whole beam but for rounding
 
 
 def check(context: Context, variant: int) -> Iterator[Finding]:
@@ -78,10 +80,16 @@ def _explained(context: Context, variant: int) -> set[int]:
     return {
         loss.beam
         for loss in context.meetings.losses(context.beams_of(variant))
-        if loss.whole
+        if (loss.whole or _all_taken(context, loss))
         and above(loss.share, clip)
         and (loss.own or context.meetings.aimed(loss.beam))
     }
+
+
+def _all_taken(context: Context, loss: Loss) -> bool:
+    """Whether a barrel takes all of a beam, so that no chief ray comes to an end."""
+    nowhere = context.trace.beams.end_kind[loss.beam] == NOTHING
+    return bool(nowhere and loss.share >= _ALL)
 
 
 def _finding(context: Context, legs: list[Leg]) -> Finding:

@@ -87,7 +87,9 @@ def _finding_lines(finding: Reported, review: Review, ink: Ink) -> Iterator[str]
         entry = finding.accepted
         yield f"  accepted by {tame(entry.by)} until {entry.until}: {tame(entry.reason)}"
     yield f"  id: {finding.id}"
-    if not finding.accepted and finding.severity in _WORTH_ACCEPTING:
+    # What is wrong with an entry is mended there: no further entry covers it.
+    worth = finding.severity in _WORTH_ACCEPTING and not finding.check.startswith("accept-")
+    if worth and not finding.accepted:
         yield f"  to accept: {accept_entry(finding)}"
     yield ""
 

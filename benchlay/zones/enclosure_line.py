@@ -137,11 +137,7 @@ def leaving(
         None for a leg that does not leave. A leg that starts on the line and goes outwards
         leaves at once; one that ends on the line (on a panel's inner face) does not.
     """
-    ways = sorted(
-        (way, number)
-        for number, side in enumerate(line.sides)
-        if isfinite(way := _way(side, start, direction)) and -_SAME_MM <= way <= length_mm
-    )
+    ways = _ways(line, start, direction, length_mm)
     stops = [0.0, *(max(way, 0.0) for way, _ in ways), length_mm]
     before = True
     for number, (here, there) in enumerate(pairwise(stops)):
@@ -153,6 +149,30 @@ def leaving(
             return Crossing(here, line.sides[ways[number - 1][1]])
         before = now
     return None
+
+
+def passes(
+    line: EnclosureLine, start: Point, direction: tuple[float, float], length_mm: float
+) -> bool:
+    """Whether some part of a straight leg (as for `leaving`) lies within the line."""
+    ways = _ways(line, start, direction, length_mm)
+    stops = [0.0, *(max(way, 0.0) for way, _ in ways), length_mm]
+    middles = (0.5 * (a + b) for a, b in pairwise(stops) if b - a >= _SAME_MM)
+    return any(
+        inside(line, (start[0] + way * direction[0], start[1] + way * direction[1]))
+        for way in middles
+    )
+
+
+def _ways(
+    line: EnclosureLine, start: Point, direction: tuple[float, float], length_mm: float
+) -> list[tuple[float, int]]:
+    """Return how far along a leg it meets the line, with the number of the side, in order."""
+    return sorted(
+        (way, number)
+        for number, side in enumerate(line.sides)
+        if isfinite(way := _way(side, start, direction)) and -_SAME_MM <= way <= length_mm
+    )
 
 
 def _way(side: Side, start: Point, direction: tuple[float, float]) -> float:

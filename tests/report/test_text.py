@@ -61,6 +61,12 @@ def test_only_what_weighs_and_is_not_accepted_says_how_to_accept_it(make_review,
     assert "to accept:" not in check_text([make_review(findings=found)])
 
 
+def test_what_is_wrong_with_an_entry_is_not_to_be_accepted(make_review, make_finding):
+    finding = make_finding("warn")._replace(check="accept-expired", id="accept-expired/-/b39a")
+    assert "to accept:" not in check_text([make_review(findings=[finding])])
+    assert "to accept:" in check_text([make_review(findings=[make_finding("warn")])])
+
+
 @pytest.mark.parametrize(
     ("value", "unit", "written"),
     [

@@ -1,0 +1,121 @@
+"""What a hostile reading found: what comes from outside, ends inside, or lies off the wall."""
+
+import pytest
+
+from benchlay.checks import CHECKS
+from benchlay.checks._check import Unevaluated
+
+BY_NAME = {module.NAME: module for module in CHECKS}
+RED = """\
+sources:
+  red: {wavelength: 633, power: 5 W, beam: {waist_radius: 0.5}, polarization: vertical,
+    at: [100, 200], heading: 0}
+"""
+
+
+def found(make_context, name, text):
+    return list(BY_NAME[name].check(make_context(text), 0))
+
+
+@pytest.mark.parametrize(("end", "lost"), [(202, False), (206, True), (220, True)])
+def test_a_skew_tube_is_told_once(make_context, end, lost):
+    """The wall of a tube takes the beam: `clipped` tells it, and no broken route besides."""
+    text = (
+        "bench: {size: [800, 400]}\n"
+        + RED
+        + f"""\
+elements:
+  B: {{kind: tube, after: red, distance: 100, bore: 10, to: [500, {end}]}}
+  T: {{kind: target, at: [600, 200], facing: 180}}
+routes: {{m: [red, B, T]}}
+"""
+    )
+    assert [one.element for one in found(make_context, "clipped", text)] == ["B"] * lost
+    assert not found(make_context, "route-broken", text)
+
+
+def _shone_into(height):
+    return (
+        "bench: {outline: [[-500, 0], [800, 0], [800, 400], [-500, 400]]}\n"
+        + RED.replace("[100, 200]", "[-300, 200]")
+        + f"""\
+enclosure:
+  material: black
+  panels:
+    south: {{from: [0, 0], to: [800, 0], access: tool}}
+    east: {{from: [800, 0], to: [800, 400]}}
+    north: {{from: [800, 400], to: [0, 400]}}
+    west:
+      from: [0, 400]
+      to: [0, 0]
+      openings: {{port: {{along: 200, height: {height}, diameter: 30}}}}
+materials: {{black: {{thickness: 2, diffuse: 0.01, specular: 0}}}}
+"""
+    )
+
+
+@pytest.mark.parametrize(("height", "count"), [(100, 1), (150, 0)])
+def test_a_beam_that_comes_in_from_outside_wants_an_interlock(make_context, height, count):
+    findings = found(make_context, "no-interlock", _shone_into(height))
+    assert [finding.element for finding in findings] == ["south"] * count
+
+
+@pytest.mark.parametrize(("x", "count"), [(2000, 0), (1900, 1)])
+def test_a_door_off_the_walls_is_not_passed(make_context, x, count):
+    text = (
+        "bench: {size: [800, 400]}\n"
+        + RED
+        + f"""\
+room:
+  outline: [[-1000, -1500], [2000, -1500], [2000, 1500], [-1000, 1500]]
+  doors: {{side: {{from: [{x}, 800], to: [{x}, 1400]}}}}
+"""
+    )
+    said = found(make_context, "at-door", text)
+    assert [isinstance(one, Unevaluated) for one in said] == [True] * count
+    assert all("'side'" in one.reason for one in said)
+
+
+FACING = """\
+  blue: {{wavelength: 450, power: 5 mW, beam: {{waist_radius: 0.5}}, at: [700, {y}], heading: 180,
+    body: {{length: 60, width: 40, height: 40}}}}
+"""
+
+
+@pytest.mark.parametrize(("y", "count"), [(200, 1), (203, 0)])
+def test_a_source_that_shines_into_another_is_told(make_context, y, count):
+    text = "bench: {size: [800, 400]}\n" + RED + FACING.format(y=y)
+    findings = found(make_context, "into-source", text)
+    into_blue = [finding for finding in findings if finding.element == "blue"]
+    assert len(into_blue) == count
+    for finding in into_blue:
+        assert "from 'red' shines into 'blue'" in finding.message
+        assert "before it meets 'blue'" in finding.remedy
+
+
+def test_what_sends_light_back_is_named_where_no_route_is(make_context):
+    text = (
+        "bench: {size: [800, 400]}\n"
+        + RED
+        + "elements:\n  M: {kind: mirror, after: red, distance: 200, diameter: 25.4, "
+        "metal: silver}\n"
+    )
+    (finding,) = found(make_context, "into-source", text)
+    assert "sent back by 'M.front'" in finding.message
+    assert finding.remedy.startswith("tilt 'M'")
+
+
+def test_of_a_cell_the_window_is_named(make_context):
+    text = (
+        "bench: {size: [800, 400]}\n"
+        + RED
+        + """\
+elements:
+  C: {kind: cell, after: red, distance: 100, length: 200, bore: 20,
+    windows: {incidence: brewster, glass: BK7}, mount: none}
+  T: {kind: target, after: C, distance: 100}
+routes: {m: [red, C, T]}
+"""
+    )
+    (finding,) = found(make_context, "off-brewster", text)
+    assert finding.message.startswith("the entry window of 'C' is meant to")
