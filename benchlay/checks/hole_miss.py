@@ -79,15 +79,17 @@ def check(context: Context, variant: int) -> Iterator[Finding]:
 def _nearest(holes: Floats, place: Floats) -> float:
     """Return how far the nearest hole is from a convex outline or a point; inf for no hole.
 
-    Only holes by the box round the place are measured: a bench has thousands.
+    A bench has thousands of holes: those about the place are measured first, the others only
+    where none of these is so near that no other can be nearer.
     """
-    low, high = place.min(axis=0), place.max(axis=0)
-    beside = np.maximum(np.maximum(low - holes, holes - high), 0.0)
-    apart = np.hypot(beside[:, 0], beside[:, 1])
-    # The place touches its box, so no hole is farther from it than from the box by more
-    # than the box's diagonal.
-    near = holes[apart <= apart.min(initial=np.inf) + np.hypot(*(high - low)) + _UNDER_MM]
-    away = np.hypot(*(near - place).T) if len(place) == 1 else convex.distances(near, place)
+    (x0, y0), (x1, y1) = (place.min(axis=0) - _FORK_MM).tolist(), (place.max(axis=0) + _FORK_MM)
+    x, y = holes.T
+    about = _least(holes[(x >= x0) & (x <= x1) & (y >= y0) & (y <= y1)], place)
+    return about if about <= _FORK_MM else _least(holes, place)
+
+
+def _least(holes: Floats, place: Floats) -> float:
+    away = np.hypot(*(holes - place).T) if len(place) == 1 else convex.distances(holes, place)
     return float(away.min(initial=np.inf))
 
 

@@ -8,7 +8,7 @@ of a train of such pulses; the energy of one pulse is given beside it.
 from __future__ import annotations
 
 import math
-from dataclasses import dataclass
+from typing import NamedTuple
 
 from benchlay.exposure.apertures import circle_area_m2
 from benchlay.exposure.errors import OutOfRange
@@ -27,8 +27,7 @@ _LONG_ULTRAVIOLET_S = 3e4
 _SHORTEST_INVISIBLE_S = 10.0
 
 
-@dataclass(frozen=True, slots=True)
-class Pulse:
+class Pulse(NamedTuple):
     """Pulses of a source; a rate of zero is one single pulse.
 
     Attributes
@@ -53,8 +52,7 @@ class Pulse:
         return self.energy_j * (self.rate_hz or 1.0 / time_base_s)
 
 
-@dataclass(frozen=True, slots=True)
-class AccessibleLimit:
+class AccessibleLimit(NamedTuple):
     """The eye's limit through its aperture.
 
     Attributes

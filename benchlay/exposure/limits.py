@@ -11,7 +11,7 @@ dangerous; the standard, local rules and the laser safety officer decide.
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from typing import NamedTuple
 
 from benchlay.exposure.apertures import eye_aperture_mm, skin_aperture_mm
 from benchlay.exposure.errors import OutOfRange
@@ -41,8 +41,7 @@ _ANTERIOR_FROM_NM = 1250.0
 _LARGE_AREA_FROM_S = 10.0
 
 
-@dataclass(frozen=True, slots=True)
-class Limit:
+class Limit(NamedTuple):
     """A limit and what it rests on.
 
     Attributes

@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
-from dataclasses import dataclass
 from functools import cached_property
 from math import nan
 
@@ -25,7 +24,6 @@ from benchlay.tracing.beams import FACE, SOLID
 from benchlay.tracing.front import EMITTED, EVENTS, OUTSIDE
 
 
-@dataclass(frozen=True)
 class Context:
     """A trace of all states with the limits it is held against; never changed.
 
@@ -33,8 +31,9 @@ class Context:
     `limits` are by state (number), source (name) and wavelength (nm), from `limits_of`.
     """
 
-    trace: Trace
-    limits: Mapping[tuple[int, str, float], LineLimit]
+    def __init__(self, trace: Trace, limits: Mapping[tuple[int, str, float], LineLimit]) -> None:
+        self.trace = trace
+        self.limits = limits
 
     # ------------------------------------------------------------------ states
 
