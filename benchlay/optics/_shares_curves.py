@@ -103,7 +103,7 @@ def starts(problem: Ints, problems: int) -> Ints:
 
 def select(table: Table, index: Ints) -> Table:
     """Columns of a table whose last axis is the row of a body, line or problem."""
-    return np.take(table, index, axis=-1)
+    return table.take(index, -1)
 
 
 def pick_lines(lines: Lines, index: Ints) -> Lines:
@@ -112,7 +112,7 @@ def pick_lines(lines: Lines, index: Ints) -> Lines:
         lines.problem[index],
         lines.body[index],
         lines.distance[index],
-        lines.normal[:, index],
+        lines.normal.take(index, 1),
         lines.start[index],
         lines.end[index],
     )
@@ -132,7 +132,7 @@ def join_lines(first: Lines, second: Lines) -> Lines:
 
 def pick_ellipses(ellipses: Ellipses, index: Ints) -> Ellipses:
     """Rows of a table of ellipses."""
-    return Ellipses(ellipses.body[index], *(x[..., index] for x in ellipses[1:]))
+    return Ellipses(ellipses.body[index], *(x.take(index, -1) for x in ellipses[1:]))
 
 
 def measure_polygons(vertices: Floats) -> tuple[Polygons, Floats, Bools]:

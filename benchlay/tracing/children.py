@@ -88,7 +88,7 @@ def _from_solids(core: Front, hits: Hits, rows: Ints, state: RunState) -> list[F
     if not len(shiny):
         return []
     at = rows[shiny]
-    mirrored = _mirrored(core.take(at), s.plane_normal[hits.plane[at]], specular[shiny])
+    mirrored = _mirrored(core.take(at), s.plane_normal.take(hits.plane[at], 0), specular[shiny])
     mirrored.set(face=-1, body=solid[shiny], owner=s.owner[solid[shiny]])
     return [mirrored]
 
@@ -138,7 +138,7 @@ def _opaque(core: Front, face: Ints, rows: Ints, state: RunState, *, spilled: bo
     state.book(rows, sink, state.scene.face_owner_name[face], core.power * (1.0 - specular))
     shiny = specular.nonzero()[0]
     at = face[shiny]
-    mirrored = _mirrored(core.take(shiny), f.normal[at], specular[shiny])
+    mirrored = _mirrored(core.take(shiny), f.normal.take(at, 0), specular[shiny])
     mirrored.set(face=at, body=-1, owner=f.owner[at])
     if spilled:
         mirrored.set(event=SPILLED)

@@ -31,14 +31,14 @@ class Frame(NamedTuple):
 
 def frame_of(part: Front, problem: Ints) -> Frame:
     """Return the frames of the beams of some outlines."""
-    direction, first = part.direction[problem], part.axis[problem]
+    direction, first = part.direction.take(problem, 0), part.axis.take(problem, 0)
     return Frame(
         problem,
-        part.position[problem],
+        part.position.take(problem, 0),
         direction,
         first,
         cross(direction, first),
-        part.moments[:, problem],
+        part.moments.take(problem, 1),
         part.index[problem],
     )
 

@@ -60,7 +60,10 @@ class _Ready(NamedTuple):
     def take(self, rows: Ints) -> _Ready:
         """Return some of them."""
         return _Ready(
-            self.front.take(rows), self.hits.take(rows), self.moments[:, rows], self.reach[rows]
+            self.front.take(rows),
+            self.hits.take(rows),
+            self.moments.take(rows, 1),
+            self.reach.take(rows),
         )
 
 

@@ -40,11 +40,11 @@ class Outlines(NamedTuple):
         """Return some of the outlines; the hosts of all holes must be among them."""
         if kept.all():
             return self
-        return self._picked(kept, np.cumsum(kept) - 1)
+        return self._picked(kept.nonzero()[0], np.cumsum(kept) - 1)
 
-    def _picked(self, rows: Ints | Flags, place: Ints) -> Outlines:
+    def _picked(self, rows: Ints, place: Ints) -> Outlines:
         """Return rows in a new order; `place` tells where each old row has gone."""
-        picked = Outlines._make((*(column[rows] for column in self[:-1]), self.inside_name))
+        picked = Outlines._make((*(column.take(rows, 0) for column in self[:-1]), self.inside_name))
         hosts = np.where(picked.hole_of >= 0, place[picked.hole_of], -1)
         return picked._replace(hole_of=hosts)
 

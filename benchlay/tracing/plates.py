@@ -113,7 +113,9 @@ def plate_outlines(part: Front, sets: list[Labelled], reach: Floats) -> list[Out
     )
     first = len(sets[0].problem)
     pieces = (kept[:first].nonzero()[0], first + kept[first:].nonzero()[0])
-    return [Outlines._make((*(c[rows] for c in outlines[:-1]), outlines[-1])) for rows in pieces]
+    return [
+        Outlines._make((*(c.take(rows, 0) for c in outlines[:-1]), outlines[-1])) for rows in pieces
+    ]
 
 
 def touching(vertices: Floats, reach: Floats) -> Flags:

@@ -42,14 +42,15 @@ def face_plates(part: Front, scene: Scene, close: Flags, hits: Hits) -> Labelled
     own = (hits.kind == FACE)[problem] & (face == hits.row[problem])
     inside = part.within[problem] >= 0
     opaque = f.acts[face] == int(Acts.OPAQUE)
-    ring = ~opaque & ~inside & (f.clear[face] < f.radii[face]).any(axis=1)
+    ring = ~opaque & ~inside & (f.clear.take(face, 0) < f.radii.take(face, 0)).any(axis=1)
     role = np.where(own, CORE, np.where(opaque, BODY, OPTIC))
     both = np.concatenate((np.arange(len(face)), np.flatnonzero(ring)))
     is_ring = np.arange(len(both)) >= len(face)
     face, problem = face[both], problem[both]
-    half = np.where(is_ring[:, None], f.radii[face], f.clear[face])
-    left, up = f.left[face], f.up[face]
-    centre = f.origin[face] + f.middle[face, :1] * left + f.middle[face, 1:] * up
+    half = np.where(is_ring[:, None], f.radii.take(face, 0), f.clear.take(face, 0))
+    left, up = f.left.take(face, 0), f.up.take(face, 0)
+    middle = f.middle.take(face, 0)
+    centre = f.origin.take(face, 0) + middle[:, :1] * left + middle[:, 1:] * up
     shape = np.where(is_ring, f.round[face], f.clear_round[face])
     plates = Plates(centre, left * half[:, :1], up * half[:, 1:], shape)
     labels = Labels(
@@ -75,10 +76,10 @@ def disc_plates(part: Front, scene: Scene, close: Flags, own: Ints) -> Labelled:
     # An end that faces the light is the optic's own face, which is an outline already; ends
     # seen edge-on have no area.
     facing = (slopes < -GRAZING) & (s.part[s.disc_solid] == PART["edge"])
-    seen = close[:, s.disc_solid] & ~facing & (np.abs(slopes) > _EDGE_ON)
+    seen = close.take(s.disc_solid, 1) & ~facing & (np.abs(slopes) > _EDGE_ON)
     problem, disc = np.nonzero(seen)
     plates = Plates(
-        s.disc_centre[disc],
+        s.disc_centre.take(disc, 0),
         s.disc_axes[disc, 0],
         s.disc_axes[disc, 1],
         np.ones(len(disc), dtype=np.bool_),
@@ -91,14 +92,14 @@ def disc_plates(part: Front, scene: Scene, close: Flags, own: Ints) -> Labelled:
 def cylinder_sides(part: Front, scene: Scene, close: Flags, own: Ints) -> Labelled:
     """Return the sides of round solids as the rectangles in which the beam sees them."""
     s = scene.solids
-    problem, number = np.nonzero(close[:, s.axis_solid])
-    direction, axis = part.direction[problem], s.axis[number]
+    problem, number = np.nonzero(close.take(s.axis_solid, 1))
+    direction, axis = part.direction.take(problem, 0), s.axis.take(number, 0)
     across = cross(direction, axis)
     seen = dot(across, across) > _EDGE_ON**2
     problem, number, axis, across = problem[seen], number[seen], axis[seen], across[seen]
     half = 0.5 * s.axis_length[number]
     plates = Plates(
-        s.axis_point[number] + half[:, None] * axis,
+        s.axis_point.take(number, 0) + half[:, None] * axis,
         half[:, None] * axis,
         s.axis_radius[number][:, None] * unit_vectors(across),
         np.zeros(len(number), dtype=np.bool_),
@@ -125,13 +126,13 @@ def patch_outlines(
     """
     s = scene.solids
     slopes = part.direction @ s.patch_normal.T
-    seen = close[:, s.patch_solid] & (slopes < GRAZING)
+    seen = close.take(s.patch_solid, 1) & (slopes < GRAZING)
     first = np.zeros(len(s.patch_solid), dtype=np.bool_)
     first[np.searchsorted(s.patch_solid, distinct(s.patch_solid))] = True
-    only_front = ringed[:, s.patch_solid]
-    seen = np.where(only_front, close[:, s.patch_solid] & first, seen)
+    only_front = ringed.take(s.patch_solid, 1)
+    seen = np.where(only_front, close.take(s.patch_solid, 1) & first, seen)
     problem, patch = np.nonzero(seen)
-    points = s.patch_points[patch]
+    points = s.patch_points.take(patch, 0)
     frame = frame_of(part, problem)
     x, y, z = local(frame, points, point=True)
     x, y, z, ahead = clip_behind(x, y, z)
@@ -140,7 +141,9 @@ def patch_outlines(
     x, y, z, row = split_at(x, y, z, np.where(along, stop_mm[problem], np.inf))
     patch, problem = patch[row], problem[row]
     frame = frame_of(part, problem)
-    vertices, depth = _flat_sides(frame, (x, y, z), s.patch_points[patch, 0], s.patch_normal[patch])
+    vertices, depth = _flat_sides(
+        frame, (x, y, z), s.patch_points[patch, 0], s.patch_normal.take(patch, 0)
+    )
     near = touching(vertices, reach[frame.problem])
     count = len(near)
     labels = _solid_labels(s, frame.problem, s.patch_solid[patch], own, patch)
@@ -169,7 +172,7 @@ def _flat_sides(
     vertices = scaled(inverse_roots(frame, np.where(along[:, None], z, depth[:, None])), x, y)
     rate = growth(frame.moments, frame.medium, depth)
     vertices = perspective(vertices, np.where(along, 0.0, rate)[:, None] * (z - depth[:, None]))
-    area = np.roll(vertices, -1, axis=1)
+    area = np.concatenate((vertices[:, 1:], vertices[:, :1]), axis=1)
     twice = (vertices[..., 0] * area[..., 1] - vertices[..., 1] * area[..., 0]).sum(axis=1)
     vertices[twice < 0.0] = vertices[twice < 0.0, ::-1]
     # As for plates: an optic's front and its mount's lie in one plane, so at one depth.
