@@ -79,13 +79,22 @@ def check(context: Context, variant: int) -> Iterator[Finding]:
 def _nearest(holes: Floats, place: Floats) -> float:
     """Return how far the nearest hole is from a convex outline or a point; inf for no hole.
 
-    A bench has thousands of holes: those about the place are measured first, the others only
-    where none of these is so near that no other can be nearer.
+    A bench has thousands of holes: those about the place are measured, and where none of them
+    is so near that no other can be nearer, those that its box lets be the nearest.
     """
-    (x0, y0), (x1, y1) = (place.min(axis=0) - _FORK_MM).tolist(), (place.max(axis=0) + _FORK_MM)
+    low, high = place.min(axis=0), place.max(axis=0)
+    (x0, y0), (x1, y1) = (low - _FORK_MM).tolist(), (high + _FORK_MM).tolist()
     x, y = holes.T
-    about = _least(holes[(x >= x0) & (x <= x1) & (y >= y0) & (y <= y1)], place)
-    return about if about <= _FORK_MM else _least(holes, place)
+    about = holes[(x >= x0) & (x <= x1) & (y >= y0) & (y <= y1)]
+    nearest = _least(about, place)
+    if nearest <= _FORK_MM:
+        return nearest
+    beside = np.maximum(np.maximum(low - holes, holes - high), 0.0)
+    apart = np.hypot(beside[:, 0], beside[:, 1])
+    # The place touches its box, so no hole is farther from it than from the box by more
+    # than the box's diagonal.
+    far = apart.min(initial=np.inf) + np.hypot(*(high - low)) + _UNDER_MM
+    return _least(holes[apart <= far], place)
 
 
 def _least(holes: Floats, place: Floats) -> float:
