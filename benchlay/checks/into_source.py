@@ -194,9 +194,7 @@ def _finding(
     beam = worst.beam
     total = float(sum(one.power_w for one in returns))
     source, nm = context.source_of(beam), context.wavelength_nm(beam)
-    # Of light that no route names, the source itself is where it left its way.
-    last = since if since != source else context.left_at(beam)
-    last = "" if last == source else last
+    last = _turned_by(context, beam)
     return Finding(
         check=NAME,
         severity=SEVERITY,
@@ -216,6 +214,19 @@ def _finding(
         unit="W",
         key=(source, nm, since),
     )
+
+
+def _turned_by(context: Context, beam: int) -> str:
+    """Return what turned a beam back most since it went astray; empty if nothing did."""
+    start = context.trace.beams.start
+    astray = context.astray_since(beam)
+    line = context.ancestors(beam)
+    later = [b for b in reversed(line[: line.index(astray) + 1]) if start.parent[b] >= 0]
+    if not later:
+        return ""
+    rows = np.array(later, dtype=np.int64)
+    onwards = dot(start.direction[rows], start.direction[start.parent[rows]])
+    return context.left_at(later[int(np.argmin(np.round(onwards, 9)))])
 
 
 def _way_back(last: str) -> str:

@@ -56,7 +56,8 @@ Stress in windows and lenses. Routes that break are told by other checks.
 Source
 ------
 Where a route names no tolerance, at least 99 % of the power must be in the wanted state: two
-linear states 5.7 degrees apart share that much (law of Malus, cos squared).
+linear states 5.7 degrees apart share that much (law of Malus, cos squared). Where it names an
+angle, as much must be linear at all.
 """
 
 from __future__ import annotations
@@ -116,6 +117,16 @@ def _by_angle(
     context: Context, route: Route, beam: int, j: Floats, wanted: tuple[float, float]
 ) -> Iterator[Finding]:
     s1, s2, s3 = _stokes(j)
+    linear = 0.5 * (1.0 + float(np.hypot(s1, s2)))
+    if above(_SHARE, linear):  # light that is round or unpolarized has no angle to speak of
+        yield _finding(
+            context,
+            route,
+            beam,
+            f"arrives with {share_text(linear)} of its power linear ({_ellipse(s1, s2, s3)})",
+            f"at least {share_text(_SHARE)} of it linear, at {angle_text(wanted[0] % pi)}",
+        )._replace(value=linear, limit=_SHARE, smaller_is_worse=True)
+        return
     angle = 0.5 * float(np.arctan2(s2, s1)) % pi
     off = abs((angle - wanted[0] + pi / 2) % pi - pi / 2)
     if above(off, wanted[1]):

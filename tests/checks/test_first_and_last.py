@@ -119,3 +119,49 @@ routes: {m: [red, C, T]}
     )
     (finding,) = found(make_context, "off-brewster", text)
     assert finding.message.startswith("the entry window of 'C' is meant to")
+
+
+@pytest.mark.parametrize(
+    ("state", "retardance", "lost"),
+    [
+        ("horizontal", "1", False),
+        ("horizontal", "0.015", False),  # 2.7 degrees of ellipticity: 99.8 % linear
+        ("horizontal", "0.04", True),  # 7.2 degrees: sin(7.2)^2 = 1.57 % of it is not
+        ("horizontal", "quarter", True),
+        ("none", "1", True),
+        ("{circular: right}", "1", True),
+    ],
+)
+def test_a_wanted_angle_wants_linear_light(make_context, state, retardance, lost):
+    """A plate at 45 degrees turns no main direction: it makes the light round."""
+    text = (
+        "bench: {size: [800, 400]}\n"
+        + RED.replace("vertical", state)
+        + f"""\
+elements:
+  H: {{kind: waveplate, after: red, distance: 200, diameter: 25.4, retardance: {retardance},
+    axis: 45}}
+  T: {{kind: target, after: H, distance: 100}}
+routes: {{m: {{path: [red, H, T], needs: {{polarization: {{angle: 0, within: 2}}}}}}}}
+"""
+    )
+    assert bool(found(make_context, "polarization-lost", text)) == lost
+
+
+def test_the_mirror_that_sends_light_back_is_named_beyond_a_fold(make_context):
+    """The window lets a little pass; the mirror behind it sends it back."""
+    text = (
+        "bench: {size: [800, 400]}\n"
+        + RED
+        + """\
+elements:
+  W: {kind: splitter, after: red, distance: 200, turn: left 90, diameter: 25.4,
+    reflectance: 90 %, back: 0 %, mount: none}
+  E: {kind: mirror, after: W.transmitted, distance: 100, diameter: 25.4, metal: silver}
+  T: {kind: target, after: W.reflected, distance: 100}
+routes: {m: [red, W.reflected, T]}
+"""
+    )
+    (finding,) = found(make_context, "into-source", text)
+    assert "sent back by 'E.front'" in finding.message
+    assert finding.remedy.startswith("tilt 'E'")
