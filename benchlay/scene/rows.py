@@ -21,6 +21,7 @@ class Frames:
 
     def __init__(self) -> None:
         self._axes: list[Axes] = [_LEVEL_AXES]
+        self._turns: Floats = np.zeros((0, 3, 3))  # the same as an array, made when first asked for
         self._origins: list[Vector] = [_ORIGIN]
 
     def add(self, axes: Axes, origin: Vector) -> int:
@@ -33,7 +34,9 @@ class Frames:
         """Return directions (N, 3) in the plan frame."""
         if not vectors:
             return np.zeros((0, 3))
-        axes = np.array(self._axes)[np.asarray(frames)]
+        if len(self._turns) < len(self._axes):
+            self._turns = np.array(self._axes)
+        axes = self._turns[np.asarray(frames)]
         turned: Floats = np.matmul(np.array(vectors)[:, None, :], axes)[:, 0, :]
         return turned
 

@@ -74,19 +74,14 @@ def _unit(vectors: Floats) -> Floats:
 
 def _patches(rows: SolidRows, points: Floats, start: Ints) -> tuple[Ints, Floats, Ints]:
     widest = max((len(patch) for solid in rows.solids for patch in solid.patches), default=3)
-    owners: list[int] = []
-    index: list[tuple[int, ...]] = []
-    corners: list[int] = []
-    for number, solid in enumerate(rows.solids):
-        first = int(start[number])
-        for patch in solid.patches:
-            owners.append(number)
-            corners.append(len(patch))
-            padded = patch + (patch[-1],) * (widest - len(patch))
-            index.append(tuple(first + i for i in padded))
-    if not index:
+    patches = [patch for solid in rows.solids for patch in solid.patches]
+    if not patches:
         return np.zeros(0, dtype=np.int64), np.zeros((0, 3, 3)), np.zeros(0, dtype=np.int64)
-    return np.array(owners), points[np.array(index)], np.array(corners)
+    counts = [len(solid.patches) for solid in rows.solids]
+    owners = np.repeat(np.arange(len(counts)), counts)
+    index = np.array([patch + (patch[-1],) * (widest - len(patch)) for patch in patches])
+    index += start[owners, None]
+    return owners, points[index], np.array([len(patch) for patch in patches])
 
 
 def _discs(rows: SolidRows, points: Floats, start: Ints) -> tuple[Ints, Floats, Floats]:

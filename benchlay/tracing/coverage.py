@@ -26,7 +26,7 @@ def reach_of(front: Front, floor_w: Floats) -> Floats:
     """
     tail = _TAIL * floor_w[front.wave]
     whole = front.power / np.maximum(front.kept, 1.0 - front.kept)
-    share = np.clip(tail / np.maximum(whole, tail), _LEAST_SHARE, 1.0)
+    share = np.minimum(np.maximum(tail / np.maximum(whole, tail), _LEAST_SHARE), 1.0)
     reach: Floats = np.maximum(np.sqrt(-0.5 * np.log(share)), _LEAST_REACH)
     return reach
 

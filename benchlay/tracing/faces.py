@@ -90,18 +90,18 @@ def _amplitudes(
 ) -> tuple[Floats, Floats, Floats, Floats, tuple[Floats, Floats] | None]:
     """Return r_s, r_p, t_s, t_p (t in units of power: |t|² is the share) and the two losses."""
     f = scene.faces
-    at = (meeting.row, meeting.wave)
-    mode = f.mode[at]
+    at = meeting.row * f.mode.shape[1] + meeting.wave
+    mode = f.mode.ravel().take(at)
     cosine, n_in, n_out = meeting.cosine, meeting.n_in, meeting.n_out
     total = n_in * n_in * (1.0 - cosine * cosine) >= n_out * n_out
     r_s, r_p, t_s, t_p = _bare(n_in, n_out, cosine, total)
     if not mode.any():
         return r_s, r_p, t_s, t_p, None
     stated = mode == Mode.STATED
-    loss_s, loss_p = f.loss_s[at], f.loss_p[at]
+    loss_s, loss_p = f.loss_s.ravel().take(at), f.loss_p.ravel().take(at)
     # Beyond the critical angle nothing passes: what a coating would pass is sent back.
-    share_s = np.where(total, 1.0 - loss_s, f.share_s[at])
-    share_p = np.where(total, 1.0 - loss_p, f.share_p[at])
+    share_s = np.where(total, 1.0 - loss_s, f.share_s.ravel().take(at))
+    share_p = np.where(total, 1.0 - loss_p, f.share_p.ravel().take(at))
     r_s = np.where(stated, -np.sqrt(share_s), r_s)
     r_p = np.where(stated, np.sqrt(share_p), r_p)
     t_s = np.where(stated, np.sqrt(np.maximum(1.0 - share_s - loss_s, 0.0)), t_s)
@@ -109,7 +109,7 @@ def _amplitudes(
     lost_s, lost_p = np.where(stated, loss_s, 0.0), np.where(stated, loss_p, 0.0)
     metal = mode == Mode.METAL
     if metal.any():
-        index = np.where(metal, f.metal[at], n_out)
+        index = np.where(metal, f.metal.ravel().take(at), n_out)
         film = fresnel.amplitudes(n_in, index, cosine)
         shares = fresnel.powers(n_in, index, cosine)
         r_s, r_p = np.where(metal, film.rs, r_s), np.where(metal, film.rp, r_p)
