@@ -59,7 +59,7 @@ NAME = "dump-overload"
 SEVERITY = Severity.FAIL
 
 _STOPS = (SINK["dump"], SINK["screen"])
-_W_CM2 = 1e-4  # per W/m2
+_PER_CM2 = 1e-4  # of what is told by the m²
 
 
 def check(context: Context, variant: int) -> Iterator[Finding]:
@@ -92,15 +92,28 @@ def _held_against(
         if above(total, rating.power_w):
             figures = (total, rating.power_w, "W", power_text(total), power_text(rating.power_w))
             yield _finding(context, variant, name, strongest, figures)
-    elif rating.irradiance_w_m2 is not None:
-        mine = distinct(ledger.beam[rows])
-        mine = mine[beams.end_kind[mine] == FACE]
-        peaks = context.peak_w_m2(mine)
-        if len(peaks) and above(float(peaks.max()), rating.irradiance_w_m2):
-            worst, limit = float(peaks.max()), rating.irradiance_w_m2
-            texts = irradiance_text(worst), irradiance_text(limit)
-            figures = (worst * _W_CM2, limit * _W_CM2, "W/cm2", *texts)
-            yield _finding(context, variant, name, int(mine[np.argmax(peaks)]), figures)
+        return
+    mine = distinct(ledger.beam[rows])
+    mine = mine[beams.end_kind[mine] == FACE]
+    if not len(mine):
+        return
+    peaks = context.peak_w_m2(mine)
+    limit = rating.irradiance_w_m2
+    if rating.fluence_j_m2 is not None:  # of one pulse; continuous light has none
+        peaks = peaks / np.array([context.pulse_rate_hz(b) or np.inf for b in mine.tolist()])
+        limit = rating.fluence_j_m2
+    worst = float(peaks.max())
+    if limit is not None and above(worst, limit):
+        texts = (_fluence_text(worst), _fluence_text(limit))
+        unit = "J/cm2"
+        if rating.fluence_j_m2 is None:
+            texts, unit = (irradiance_text(worst), irradiance_text(limit)), "W/cm2"
+        figures = (worst * _PER_CM2, limit * _PER_CM2, unit, *texts)
+        yield _finding(context, variant, name, int(mine[np.argmax(peaks)]), figures)
+
+
+def _fluence_text(fluence_j_m2: float) -> str:
+    return f"{fluence_j_m2 * _PER_CM2:.3g} J/cm2"
 
 
 def _finding(

@@ -99,12 +99,26 @@ def check(context: Context, variant: int) -> Iterator[Found]:
     for name in sorted({context.end_name(beam) or "" for beam in rows.tolist()}):
         mine = np.array([b for b in rows.tolist() if context.end_name(b) == name], dtype=np.int64)
         rating = _rating(layout, name)
-        if rating is not None:
-            load = _load(context, mine, rating)
-            if load is not None and above(load.value, load.limit):
-                yield _overloaded(context, variant, name, load)
-        elif context.hazardous[mine].any():
-            yield _not_shown(context, variant, name, mine[context.hazardous[mine]])
+        load = None if rating is None else _load(context, mine, rating)
+        if load is not None and above(load.value, load.limit):
+            yield _overloaded(context, variant, name, load)
+            continue
+        unrated = _unrated(context, mine, rating)
+        if len(unrated):
+            yield _not_shown(context, variant, name, unrated)
+
+
+def _unrated(context: Context, rows: Ints, rating: Withstands | None) -> Ints:
+    """Return the hazardous beams that a rating does not speak of.
+
+    A rating by fluence is one for pulses, and says nothing of continuous light.
+    """
+    rows = rows[context.hazardous[rows]]
+    if rating is not None and rating.fluence_j_m2 is None:
+        return rows[:0]
+    steady = [rating is None or context.pulse_rate_hz(beam) is None for beam in rows.tolist()]
+    unrated: Ints = rows[np.array(steady, dtype=np.bool_)]
+    return unrated
 
 
 def _rating(layout: Layout, name: str) -> Withstands | None:
@@ -168,7 +182,7 @@ def _not_shown(context: Context, variant: int, name: str, rows: Ints) -> Finding
         message=(
             f"not shown: '{name}' takes {irradiance_text(worst)} of "
             f"{wavelength_text(context.wavelength_nm(beam))} from '{context.source_of(beam)}' "
-            "and states no rating"
+            "and states no rating for it"
         ),
         expected="a rating of whatever takes a beam above the accessible limit",
         remedy=(

@@ -165,3 +165,43 @@ routes: {m: [red, W.reflected, T]}
     (finding,) = found(make_context, "into-source", text)
     assert "sent back by 'E.front'" in finding.message
     assert finding.remedy.startswith("tilt 'E'")
+
+
+PULSED = "pulse: {energy: 50 mJ, duration: 8 ns, rate: 10 Hz}"
+
+
+@pytest.mark.parametrize(
+    ("light", "rated_j_cm2", "fires"),
+    [(PULSED, 3.17, True), (PULSED, 3.20, False), ("power: 5 W", 3.17, False)],
+)
+def test_a_dump_may_be_rated_for_the_fluence_of_a_pulse(make_context, light, rated_j_cm2, fires):
+    """2 E / (pi w2) with w = 1.00057 mm after 200 mm: 3.1794 J/cm2."""
+    text = f"""\
+bench: {{size: [800, 400]}}
+sources:
+  a: {{wavelength: 532, {light}, beam: {{waist_radius: 1}}, at: [100, 200], heading: 0}}
+elements:
+  D: {{kind: dump, after: a, distance: 200, withstands: {{fluence: {rated_j_cm2} J/cm2, at: 8 ns}}}}
+routes: {{m: [a, D]}}
+"""
+    findings = found(make_context, "dump-overload", text)
+    assert len(findings) == fires
+    for finding in findings:
+        assert finding.value == pytest.approx(3.1794, rel=1e-4)
+        assert finding.unit == "J/cm2"
+
+
+@pytest.mark.parametrize(
+    ("light", "unit"), [("power: 5 W", "W/cm2"), (PULSED.replace("50", "90"), "J/cm2")]
+)
+def test_a_panel_rated_for_pulses_is_not_shown_to_bear_continuous_light(make_context, light, unit):
+    text = f"""\
+bench: {{size: [800, 400]}}
+sources:
+  a: {{wavelength: 532, {light}, beam: {{waist_radius: 1}}, at: [100, 200], heading: 0}}
+materials: {{m: {{thickness: 2, specular: 0, withstands: {{fluence: 3.2 J/cm2, at: 8 ns}}}}}}
+enclosure: {{material: m, panels: {{east: {{from: [800, 0], to: [800, 400]}}}}}}
+"""
+    (finding,) = found(make_context, "panel-overload", text)
+    assert (finding.element, finding.unit) == ("east", unit)
+    assert finding.message.startswith("not shown") == (unit == "W/cm2")
