@@ -32,7 +32,7 @@ from benchlay.tracing.handing import handing_of
 from benchlay.tracing.hits import FACE, Hits, inside_hits, nearest
 from benchlay.tracing.run_state import Leg, RunState
 from benchlay.tracing.scattering import follow_scattered
-from benchlay.tracing.section import cut, uncut
+from benchlay.tracing.section import cut_after, uncut
 from benchlay.tracing.ways import Ways
 
 MOST_BATCHES = 3000  # light between two mirrors of 99.5 % is down to a millionth by then
@@ -106,15 +106,16 @@ def _exhaust(live: Front, state: RunState) -> list[Front]:
     for _ in range(MOST_BATCHES):
         if state.count > MOST_BEAMS or not (len(live) or waiting):
             break
-        if sum(len(ready.reach) for ready in waiting) > _MANY * len(live):
-            born, waiting = _advance(_joined(waiting), state, cutting=True), []
-            live = Front.joined([live, born])
-            continue
-        ready, wanted = _meet(live, state)
-        if wanted.any():
-            waiting.append(ready.take(wanted.nonzero()[0]))
-            ready = ready.take((~wanted).nonzero()[0])
-        live = _advance(ready, state, cutting=False)
+        parts, whole = list[_Ready](), 0
+        if len(live):
+            ready, wanted = _meet(live, state)
+            if wanted.any():
+                waiting.append(ready.take(wanted.nonzero()[0]))
+                ready = ready.take((~wanted).nonzero()[0])
+            parts, whole = [ready], len(ready.reach)
+        if sum(len(ready.reach) for ready in waiting) > _MANY * whole:
+            parts, waiting = parts + waiting, []
+        live = _advance(_joined(parts), state, whole)
     return [live, *(ready.front for ready in waiting)]
 
 
@@ -122,12 +123,14 @@ def _step(front: Front, state: RunState) -> Front:
     """Take rays without power to what they meet, and return what goes on from there."""
     ready, _ = _meet(front, state)
     floor_w, state.floor_w = state.floor_w, np.zeros_like(state.floor_w)
-    born = _advance(ready, state, cutting=False)
+    born = _advance(ready, state, len(ready.reach))
     state.floor_w = floor_w
     return born
 
 
 def _joined(parts: list[_Ready]) -> _Ready:
+    if len(parts) == 1:
+        return parts[0]
     return _Ready(
         Front.joined([part.front for part in parts]),
         Hits.joined([part.hits for part in parts]),
@@ -175,13 +178,16 @@ def _meet(front: Front, state: RunState) -> tuple[_Ready, Flags]:
     return _Ready(front, hits, end, reach), wanted & ~front.lump
 
 
-def _advance(ready: _Ready, state: RunState, *, cutting: bool) -> Front:
-    """Take beams to the end of their legs and return what leaves there."""
+def _advance(ready: _Ready, state: RunState, whole: int) -> Front:
+    """Take beams to the end of their legs and return what leaves there.
+
+    All but the first so many are cut by what stands in their cross-sections.
+    """
     front, hits, scene = ready.front, ready.hits, state.scene
     arrived, made = _after_passage(front, hits.distance, state)
     power = arrived.power
-    if cutting:
-        divided = cut(arrived, scene, hits, ready.reach)
+    if whole < len(power):
+        divided = cut_after(whole, arrived, scene, hits, ready.reach)
         landed = divided.landings
         state.book(landed.beam, landed.sink, landed.name, landed.power)
         left = np.divide(divided.core, power, out=np.zeros_like(power), where=power > 0.0)

@@ -64,6 +64,20 @@ def uncut(power: Floats, kept: Floats) -> Cut:
     return Cut(power, kept, _no_landings(), Spills(*_nothing()))
 
 
+def cut_after(whole: int, front: Front, scene: Scene, hits: Hits, reach: Floats) -> Cut:
+    """Share out the power of all beams but the first so many, of which nothing is cut away."""
+    if not whole:
+        return cut(front, scene, hits, reach)
+    rest = slice(whole, None)
+    core, kept, landings, spills = cut(front.take(rest), scene, hits.take(rest), reach[rest])
+    return Cut(
+        np.concatenate((front.power[:whole], core)),
+        np.concatenate((front.kept[:whole], kept)),
+        landings._replace(beam=landings.beam + whole),
+        spills._replace(beam=spills.beam + whole),
+    )
+
+
 def cut(front: Front, scene: Scene, hits: Hits, reach: Floats) -> Cut:
     """Share out the power of beams among all that stands in their cross-sections.
 
