@@ -49,6 +49,8 @@ import numpy as np
 from benchlay.checks._check import Context, above, irradiance_text, power_text, wavelength_text
 from benchlay.findings import Finding, Severity
 from benchlay.geometry.distinct import distinct
+from benchlay.layout.elements import Element
+from benchlay.layout.layout import Layout
 from benchlay.layout.materials import Withstands
 from benchlay.scene.tables import SINK, Ints
 from benchlay.tracing.beams import FACE
@@ -65,12 +67,20 @@ _PER_CM2 = 1e-4  # of what is told by the m²
 def check(context: Context, variant: int) -> Iterator[Finding]:
     """Report each dump and screen with a rating, by all that lands on it."""
     for name, item in sorted(context.state(variant).elements.items()):
-        rating = item.element.withstands
+        rating = _rating(context.layout(variant), item.element)
         if rating is None or item.out:
             continue
         rows = _landings(context, variant, name)
         if len(rows):
             yield from _held_against(context, variant, name, rating, rows)
+
+
+def _rating(layout: Layout, element: Element) -> Withstands | None:
+    """Return what an element is rated for: its own figure, else that of its material."""
+    material = getattr(element.record, "material", None)
+    if element.withstands is not None or material is None:
+        return element.withstands
+    return layout.materials[material].withstands
 
 
 def _landings(context: Context, variant: int, name: str) -> Ints:

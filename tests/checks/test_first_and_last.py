@@ -205,3 +205,17 @@ enclosure: {{material: m, panels: {{east: {{from: [800, 0], to: [800, 400]}}}}}}
     (finding,) = found(make_context, "panel-overload", text)
     assert (finding.element, finding.unit) == ("east", unit)
     assert finding.message.startswith("not shown") == (unit == "W/cm2")
+
+
+@pytest.mark.parametrize(("own", "fires"), [("", True), (", withstands: {power: 6 W}", False)])
+def test_a_screen_bears_what_its_material_does_unless_it_says_otherwise(make_context, own, fires):
+    text = (
+        "bench: {size: [800, 400]}\n"
+        + RED
+        + f"""\
+materials: {{card: {{thickness: 2, specular: 0, withstands: {{power: 4.9 W}}}}}}
+elements:
+  S: {{kind: screen, after: red, distance: 200, material: card{own}}}
+"""
+    )
+    assert bool(found(make_context, "dump-overload", text)) == fires
