@@ -35,6 +35,8 @@ class Pairs(NamedTuple):
     solid: Ints  # (N,)
     enter: Floats  # (N,)
     leave: Floats  # (N,)
+    slope: Floats  # (N, K) direction . normal of the solid's planes
+    gap: Floats  # (N, K) offset - normal . position, grown by the margin, mm
 
 
 def passing(front: Front, scene: Scene, aimed: Flags) -> Passing:
@@ -95,7 +97,7 @@ def crossed(front: Front, scene: Scene, beam: Ints, solid: Ints, margin: Floats 
     """Return where the rays of pairs (N,) enter and leave solids grown by a margin (N,) in mm."""
     if not len(beam):
         none = np.zeros(0)
-        return Pairs(beam, solid, none, none)
+        return Pairs(beam, solid, none, none, *np.zeros((2, 0, 1)))
     slope, gap = planes_met(front, scene, beam, solid)
     if margin is not None:
         gap += margin[:, None]
@@ -111,7 +113,7 @@ def crossed(front: Front, scene: Scene, beam: Ints, solid: Ints, margin: Floats 
         first, last = _through_round(front, scene, beam[rows], axis[rows], grown)
         enter[rows] = np.maximum(enter[rows], first)
         leave[rows] = np.minimum(leave[rows], last)
-    return Pairs(beam, solid, enter, leave)
+    return Pairs(beam, solid, enter, leave, slope, gap)
 
 
 def _through_round(

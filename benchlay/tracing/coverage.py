@@ -6,9 +6,9 @@ import numpy as np
 
 from benchlay.optics.rays import dot
 from benchlay.scene.tables import Flags, Floats, Ints, Scene
-from benchlay.tracing.bodies import Passing, pairs, planes_met
+from benchlay.tracing.bodies import Passing, pairs
 from benchlay.tracing.front import Front
-from benchlay.tracing.hits import FACE, SKIN_MM, SOLID, FacesMet, Hits
+from benchlay.tracing.hits import FACE, SKIN_MM, SOLID, FacesMet, Hits, SolidsMet
 
 # Bodies are looked for out to where what lies beyond is this share of the power floor.
 _TAIL = 0.01
@@ -63,37 +63,42 @@ def face_covers(scene: Scene, hits: Hits, radius: Floats) -> Flags:
     return covers
 
 
-def covered(front: Front, scene: Scene, hits: Hits, radius: Floats) -> Flags:
+def covered(front: Front, scene: Scene, hits: Hits, met: SolidsMet, radius: Floats) -> Flags:
     """Tell which chief hits take the whole beam out to a radius (mm), if they are of solids."""
     whole = np.ones(len(radius), dtype=np.bool_)
     rows = (hits.kind == SOLID).nonzero()[0]
     if len(rows):
-        whole[rows] = _solid_covers(front, scene, hits, rows, radius[rows])
+        pair = met.pair[rows]
+        planes = met.pairs.slope.take(pair, 0), met.pairs.gap.take(pair, 0)
+        whole[rows] = _solid_covers(
+            front.take(rows), scene, hits.take(rows), planes=planes, radius=radius[rows]
+        )
     return whole
 
 
-def _solid_covers(front: Front, scene: Scene, hits: Hits, rows: Ints, radius: Floats) -> Flags:
+def _solid_covers(
+    front: Front, scene: Scene, hits: Hits, *, planes: tuple[Floats, Floats], radius: Floats
+) -> Flags:
     """Tell which beams land wholly on the flat side of the solid that their chief ray meets.
 
     On that side the distance to another bounding plane is the gap to it over the sine of the
     angle between the two; planes parallel to the side bound nothing of it.
     """
     s = scene.solids
-    solid, plane = hits.row[rows], np.maximum(hits.plane[rows], 0)
+    solid, plane = hits.row, np.maximum(hits.plane, 0)
     sine2 = scene.fixed.plane_sines2.take(plane, 0)
-    depth = hits.distance[rows]
-    slope, gap = planes_met(front, scene, rows, solid)
-    gap -= depth[:, None] * slope
+    slope, gap = planes
+    gap = gap - hits.distance[:, None] * slope
     bounds = sine2 > _PARALLEL
     room2 = np.where(bounds, gap * np.abs(gap), np.inf) / np.where(bounds, sine2, 1.0)
-    steep = np.abs(dot(front.direction.take(rows, 0), s.plane_normal.take(plane, 0)))
+    steep = np.abs(dot(front.direction, s.plane_normal.take(plane, 0)))
     spread = radius / np.maximum(steep, SKIN_MM)
-    covers: Flags = (hits.plane[rows] >= 0) & (room2.min(axis=1) >= spread * spread)
+    covers: Flags = (hits.plane >= 0) & (room2.min(axis=1) >= spread * spread)
     covers &= scene.fixed.round_of[solid] < 0
     pierced = scene.fixed.pierced[solid].nonzero()[0]
     if len(pierced):
-        some, solid = rows[pierced], solid[pierced]
-        point = front.position[some] + depth[pierced, None] * front.direction[some]
+        solid = solid[pierced]
+        point = (front.position + hits.distance[:, None] * front.direction)[pierced]
         size = np.sqrt(np.einsum("hki,hki->h", s.hole_axes, s.hole_axes))
         sides = _apart(point, s.hole_centre), _apart(point, s.hole_centre + s.hole_through)
         touched = np.minimum(*sides) < size + spread[pierced, None]
@@ -117,7 +122,7 @@ def near(
     """
     s = scene.solids
     target = hits.owner(scene)
-    beam, solid, enter, leave = pairs(front, scene, passed, hits.distance, radius)
+    beam, solid, enter, leave = pairs(front, scene, passed, hits.distance, radius)[:4]
     close = (enter <= np.minimum(leave, hits.distance[beam])) & (leave > 0.0)
     close &= (hits.kind[beam] != SOLID) | (hits.row[beam] != solid)
     close &= ~(scene.close[solid] & (s.owner[solid] == target[beam]))

@@ -155,7 +155,7 @@ def _meet(front: Front, state: RunState) -> tuple[_Ready, Flags]:
         parts.append(inside_hits(front.take(slice(0, first)), scene))
     if first < len(order):
         free = front.take(slice(first, None))
-        hits, faces, passed = nearest(free, scene)
+        hits, faces, passed, solids = nearest(free, scene)
         if state.handing is not None:
             state.handing.end(free, hits, scene)
         parts.append(hits)
@@ -173,7 +173,7 @@ def _meet(front: Front, state: RunState) -> tuple[_Ready, Flags]:
         rest = slice(first, None)
         widest = looked_at[rest] * np.maximum(radius[first : len(order)], stop[rest])
         met = hits.take(rest)
-        wanted[rest] |= ~covered(free, scene, met, (looked_at * stop)[rest])
+        wanted[rest] |= ~covered(free, scene, met, solids, (looked_at * stop)[rest])
         wanted[rest] |= near(free, scene, met, faces, passed, radius=widest)
     return _Ready(front, hits, end, reach), wanted & ~front.lump
 

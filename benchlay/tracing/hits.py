@@ -12,7 +12,7 @@ import numpy as np
 
 from benchlay.optics.rays import dot
 from benchlay.scene.tables import Flags, Floats, Ints, Scene
-from benchlay.tracing.bodies import PARALLEL, Passing, pairs, passing, planes_met, through_holes
+from benchlay.tracing.bodies import PARALLEL, Pairs, Passing, pairs, passing, through_holes
 from benchlay.tracing.front import Front
 from benchlay.tracing.packed import FloatColumn, IntColumn, Packed
 
@@ -42,6 +42,15 @@ class Hits(Packed):
         on_face = self.kind == FACE
         owner[on_face] = scene.faces.owner[self.row[on_face]]
         return owner
+
+
+class SolidsMet(NamedTuple):
+    """The solids that chief rays (B,) meet first."""
+
+    solid: Ints  # (B,)
+    distance: Floats  # (B,) mm; infinite where none is met
+    pair: Ints  # (B,) row in `pairs`
+    pairs: Pairs
 
 
 class FacesMet(NamedTuple):
@@ -114,20 +123,21 @@ def faces_met(front: Front, scene: Scene) -> FacesMet:
     return FacesMet(distance, slope, place, valid)
 
 
-def nearest(front: Front, scene: Scene) -> tuple[Hits, FacesMet, Passing]:
+def nearest(front: Front, scene: Scene) -> tuple[Hits, FacesMet, Passing, SolidsMet]:
     """Return what each beam outside glass meets first: a face, a solid, or nothing."""
     faces = faces_met(front, scene)
     beams = np.arange(len(front))
     face, to_face = _first(np.where(faces.valid, faces.distance, np.inf), beams)
     passed = passing(front, scene, _aimed(faces, scene))
-    solid, to_solid, enter = _first_solid(front, scene, passed, beams)
+    solids = _first_solid(front, scene, passed, beams)
+    solid, to_solid = solids.solid, solids.distance
     at_face = to_face <= to_solid + SKIN_MM
     distance = np.where(at_face, to_face, to_solid)
     kind = np.where(np.isfinite(distance), np.where(at_face, FACE, SOLID), NOTHING)
     plane = np.full(len(beams), -1)
     rows = (kind == SOLID).nonzero()[0]
     if len(rows):
-        plane[rows] = _plane_entered(front, scene, rows, solid[rows], enter[rows])
+        plane[rows] = _plane_entered(scene, solids, rows)
     at = (beams, face)
     nothing = np.zeros(len(beams))
     there = len(scene.faces.owner) > 0
@@ -136,7 +146,7 @@ def nearest(front: Front, scene: Scene) -> tuple[Hits, FacesMet, Passing]:
         np.array((kind, np.where(kind == FACE, face, solid), plane)),
         np.array((np.where(kind == NOTHING, scene.reach_mm, distance), *on_face)),
     )
-    return hits, faces, passed
+    return hits, faces, passed, solids
 
 
 def _aimed(faces: FacesMet, scene: Scene) -> Flags:
@@ -155,31 +165,34 @@ def _first(distance: Floats, beams: Ints) -> tuple[Ints, Floats]:
     return row, distance[beams, row]
 
 
-def _first_solid(
-    front: Front, scene: Scene, passed: Passing, beams: Ints
-) -> tuple[Ints, Floats, Floats]:
-    """Return the solid that each ray meets first, how far away, and where it would be entered."""
-    beam, solid, enter, leave = pairs(front, scene, passed)
+def _first_solid(front: Front, scene: Scene, passed: Passing, beams: Ints) -> SolidsMet:
+    """Return the solid that each ray meets first, how far away, and what it would enter by."""
+    found = pairs(front, scene, passed)
+    beam, solid, enter, leave = found[:4]
     blocked = (enter <= leave) & (leave > SKIN_MM)
     at = (blocked & scene.fixed.pierced[solid]).nonzero()[0]
     if len(at):
         blocked[at] = ~through_holes(front, scene, beam[at], solid[at])
-    beam, solid, enter = beam[blocked], solid[blocked], enter[blocked]
-    table = np.full((len(beams), len(scene.solids.owner)), np.inf)
-    table[beam, solid] = np.maximum(enter, 0.0)
+    count = len(scene.solids.owner)
+    some = blocked.nonzero()[0]
+    place = beam[some] * count + solid[some]
+    table = np.full((len(beams), count), np.inf)
+    table.ravel()[place] = np.maximum(enter[some], 0.0)
     first, distance = _first(table, beams)
-    entered = np.zeros_like(table)
-    entered[beam, solid] = enter
-    return first, distance, entered[beams, first] if table.shape[1] else distance
+    number = np.zeros(table.size, dtype=np.int64)
+    number[place] = some
+    pair = number[beams * count + first] if count else first
+    return SolidsMet(first, distance, pair, found)
 
 
-def _plane_entered(front: Front, scene: Scene, rows: Ints, solid: Ints, enter: Floats) -> Ints:
+def _plane_entered(scene: Scene, met: SolidsMet, rows: Ints) -> Ints:
     """Return the plane by which each beam enters its solid; -1 where it is round there."""
-    slope, gap = planes_met(front, scene, rows, solid)
+    pair, solid = met.pair[rows], met.solid[rows]
+    slope, gap, enter = met.pairs.slope.take(pair, 0), met.pairs.gap.take(pair, 0), met.pairs.enter
     inward = slope < -PARALLEL
     distance = np.where(inward, gap, -np.inf) / np.where(inward, slope, 1.0)
     distance[~inward] = -np.inf
     place = distance.argmax(axis=1)
     every = np.arange(len(rows))
-    flat = np.abs(distance[every, place] - enter) <= SKIN_MM
+    flat = np.abs(distance[every, place] - enter[pair]) <= SKIN_MM
     return np.where(flat, scene.fixed.plane_of[solid, place], -1)
