@@ -48,7 +48,15 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from benchlay.checks._check import Context, above, length_text, power_text, share_text
+from benchlay.checks._check import (
+    Context,
+    Found,
+    Unevaluated,
+    above,
+    length_text,
+    power_text,
+    share_text,
+)
 from benchlay.findings import Finding, Severity
 from benchlay.layout.routes import Route
 
@@ -58,13 +66,29 @@ NAME = "needs-unmet"
 SEVERITY = Severity.FAIL
 
 
-def check(context: Context, variant: int) -> Iterator[Finding]:
+def check(context: Context, variant: int) -> Iterator[Found]:
     """Report each need of each route that arrives."""
     for leg in context.routes.of_state(variant):
         route = context.trace.ways.routes[leg.route]
         if leg.arrives and leg.beam is not None and route.needs is not None:
-            yield from _power(context, route, leg.beam)
+            if bool(context.trace.diffuse()[leg.beam]):
+                yield from _unknown_power(route)
+            else:
+                yield from _power(context, route, leg.beam)
             yield from _path(context, route, leg.beam)
+
+
+def _unknown_power(route: Route) -> Iterator[Unevaluated]:
+    """Say that the power of light that a target scatters is not followed."""
+    needs = route.needs
+    assert needs is not None
+    if needs.power_w is not None or needs.transmits is not None:
+        yield Unevaluated(
+            f"route '{route.name}' goes by scattered light, whose power is not followed",
+            "need a path only, and measure the power",
+            element=route.items[-1].name,
+            span=route.span,
+        )
 
 
 def _power(context: Context, route: Route, beam: int) -> Iterator[Finding]:

@@ -67,7 +67,7 @@ from math import degrees, pi
 
 import numpy as np
 
-from benchlay.checks._check import Context, above, angle_text, share_text
+from benchlay.checks._check import Context, Found, Unevaluated, above, angle_text, share_text
 from benchlay.findings import Finding, Severity
 from benchlay.layout.light import Polarization
 from benchlay.layout.routes import Route
@@ -84,12 +84,20 @@ _SHARE = 0.99
 _MOST_UNPOLARIZED = 0.1  # degree of polarization that still passes for `none`: 55 to 45
 
 
-def check(context: Context, variant: int) -> Iterator[Finding]:
+def check(context: Context, variant: int) -> Iterator[Found]:
     """Report each route that arrives in another state than it needs."""
     for leg in context.routes.of_state(variant):
         route = context.trace.ways.routes[leg.route]
         wanted = None if route.needs is None else route.needs.polarization
         if not leg.arrives or leg.beam is None or wanted is None:
+            continue
+        if bool(context.trace.diffuse()[leg.beam]):
+            yield Unevaluated(
+                f"route '{route.name}' goes by scattered light, whose polarization is not followed",
+                "need no polarization of it, or measure it",
+                element=route.items[-1].name,
+                span=route.span,
+            )
             continue
         j = _arriving(context, leg.beam)
         if isinstance(wanted, Polarization):

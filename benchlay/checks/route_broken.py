@@ -100,15 +100,17 @@ def _finding(context: Context, legs: list[Leg]) -> Finding:
     parts = dict.fromkeys(route.items[first.reached + 1].part for route in routes)
     targets = [f"{wanted.name}.{part}" if part else wanted.name for part in parts]
     target = targets[0] if len(targets) == 1 else wanted.name
-    beam, power = first.beam, float(context.trace.beams.start.power[first.beam])
+    beam = first.beam
+    scattered = bool(context.trace.diffuse()[beam])  # its power is not followed
+    power = "" if scattered else f" ({power_text(float(context.trace.beams.start.power[beam]))})"
     names = " and ".join(f"'{route.name}'" for route in routes)
     breaks = f"route {names} breaks" if len(routes) == 1 else f"routes {names} break"
     return Finding(
         check=NAME,
         severity=SEVERITY,
         message=(
-            f"{breaks} between '{here.name}' and '{target}': the beam "
-            f"({power_text(power)}) {_instead(context, beam, wanted.name, len(routes))}"
+            f"{breaks} between '{here.name}' and '{target}': the beam"
+            f"{power} {_instead(context, beam, wanted.name, len(routes))}"
         ),
         expected=f"the beam that leaves '{here.name}' meets '{target}' and goes on as named",
         remedy=_remedy(context, legs, target),

@@ -219,3 +219,43 @@ elements:
 """
     )
     assert bool(found(make_context, "dump-overload", text)) == fires
+
+
+def _scattered(needs, screen=""):
+    return (
+        "bench: {size: [800, 400]}\n"
+        + RED
+        + f"""\
+elements:
+  T: {{kind: target, after: red, distance: 200, incidence: 30, side: left}}
+  C: {{kind: target, at: [200, 340], facing: T, mount: none}}
+{screen}routes: {{m: [red, T], cam: {{path: [red, T.scattered, C], needs: {needs}}}}}
+"""
+    )
+
+
+@pytest.mark.parametrize(
+    ("name", "needs"),
+    [
+        ("needs-unmet", "{power: 1 uW}"),
+        ("needs-unmet", "{transmits: 1 %}"),
+        ("polarization-lost", "{polarization: vertical}"),
+    ],
+)
+def test_what_scattered_light_brings_is_not_known(make_context, name, needs):
+    (said,) = found(make_context, name, _scattered(needs))
+    assert isinstance(said, Unevaluated)
+    assert "route 'cam'" in said.reason
+
+
+@pytest.mark.parametrize(("way", "count"), [(372, 0), (375, 1)])
+def test_the_path_of_scattered_light_is(make_context, way, count):
+    """200 mm there and hypot(100, 140) = 172.05 mm on, in air: 372.15 mm."""
+    text = _scattered(f"{{path: {{is: {way}, within: 1}}}}")
+    assert len(found(make_context, "needs-unmet", text)) == count
+
+
+def test_a_break_of_scattered_light_names_no_power(make_context):
+    screen = "  X: {kind: screen, at: [250, 270], facing: 306, mount: none}\n"
+    (broken,) = found(make_context, "route-broken", _scattered("{}", screen))
+    assert "the beam goes to 'X' instead" in broken.message
