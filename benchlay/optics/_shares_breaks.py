@@ -204,7 +204,7 @@ def _crossings(matrix: Floats, centre: Floats) -> tuple[Ints, Floats]:
         value = 2.0 * (lead[pair] * z * z + next_[pair] * z)
         slope = 2.0j * (2.0 * lead[pair] * z * z + next_[pair] * z)
         safe = np.where(np.abs(slope.real) > 0.0, slope.real, 1.0)
-        phi -= np.clip((value.real + level[pair]) / safe, -0.05, 0.05)
+        phi -= np.minimum(np.maximum((value.real + level[pair]) / safe, -0.05), 0.05)
     return pair, phi
 
 

@@ -91,14 +91,14 @@ def spans(first: Ints, count: Ints) -> tuple[Ints, Ints]:
     -------
     row, member : (sum(count),) ndarray of intp
     """
-    row = np.repeat(np.arange(len(count)), count)
-    before = np.cumsum(count) - count
-    return row, np.arange(len(row)) - (before - first)[row]
+    row = np.arange(len(count)).repeat(count)
+    before = count.cumsum() - count
+    return row, np.arange(len(row)) - (before - first).take(row)
 
 
 def starts(problem: Ints, problems: int) -> Ints:
     """First row of each problem in a sorted table, with the end as a last entry."""
-    return np.searchsorted(problem, np.arange(problems + 1))
+    return problem.searchsorted(np.arange(problems + 1))
 
 
 def select(table: Table, index: Ints) -> Table:

@@ -239,7 +239,7 @@ def _integrate(pieces: Pieces, outline: Outline) -> Floats:
     many = np.maximum(np.ceil(panels[16]), 1.0).astype(np.intp)
     for nodes, chosen in ((8, short), (16, ~short)):
         for near in (False, True):
-            rows = np.flatnonzero(chosen & (pieces.near == near))
+            rows = (chosen & (pieces.near == near)).nonzero()[0]
             if len(rows):
                 count = np.where(short[rows], 1, many[rows])
                 total[rows] = _sum(pieces, rows, count, _Rule(nodes, outline, near))
@@ -255,7 +255,7 @@ def _sum(pieces: Pieces, rows: Ints, count: Ints, rule: _Rule) -> Floats:
     value = np.empty(len(row))
     for start in range(0, len(row), _TOGETHER):
         some = slice(start, start + _TOGETHER)
-        shape = tuple(column[row[some]] for column in pieces.shape)
+        shape = tuple(column.take(row[some]) for column in pieces.shape)
         value[some] = _panels(shape, middle[some], half[some], rule)
     return _collect(piece, value, len(rows))
 

@@ -69,10 +69,12 @@ def split_at(x: Floats, y: Floats, z: Floats, depth: Floats) -> tuple[Floats, Fl
     if not len(both):
         return x, y, z, rows
     at = depth[both, None]
-    near = clip_behind(x[both], y[both], at - z[both])[:3]
-    far = clip_behind(x[both], y[both], z[both] - at)[:3]
-    near, far = (near[0], near[1], at - near[2]), (far[0], far[1], far[2] + at)
-    width = max(near[0].shape[1], far[0].shape[1])
+    count, deep = len(both), z[both] - at
+    twice = np.concatenate((both, both))
+    parts = clip_behind(x[twice], y[twice], np.concatenate((-deep, deep)))[:3]
+    near = (parts[0][:count], parts[1][:count], at - parts[2][:count])
+    far = (parts[0][count:], parts[1][count:], parts[2][count:] + at)
+    width = parts[0].shape[1]
     columns = []
     for whole, nearer, farther in zip((x, y, z), near, far, strict=True):
         first = padded(whole, width).copy()
