@@ -51,6 +51,7 @@ import numpy as np
 from benchlay.checks._check import Context, Leg, Loss, above, power_text
 from benchlay.findings import Finding, Severity
 from benchlay.tracing.beams import FACE, NOTHING
+from benchlay.tracing.front import SCATTERED
 
 NAME = "route-broken"
 
@@ -72,6 +73,37 @@ def check(context: Context, variant: int) -> Iterator[Finding]:
         broken.setdefault((leg.beam, wanted.name), []).append(leg)
     for legs in broken.values():
         yield _finding(context, legs)
+    yield from _seen_from_behind(context, variant)
+
+
+def _seen_from_behind(context: Context, variant: int) -> Iterator[Finding]:
+    """Report scattered light that a route takes from behind the face that scatters it."""
+    start, f = context.trace.beams.start, context.trace.scene.faces
+    rows = context.beams_of(variant)
+    rows = rows[context.routes.working[rows] & (start.event[rows] == SCATTERED)]
+    over = context.layout(variant).overridden
+    for beam in rows.tolist():
+        face, name = int(start.face[beam]), context.left_name(beam)
+        wanted = context.routes.wanted(beam)
+        turned = any(over.get(f"elements.{item}") for item in (name, *wanted))
+        if float(start.direction[beam] @ f.normal[face]) > 0.0 or turned or not wanted:
+            continue
+        route = context.layout(variant).routes[context.routes.routes_of(beam)[0]]
+        yield Finding(
+            check=NAME,
+            severity=SEVERITY,
+            message=(
+                f"route '{route.name}' breaks between '{name}' and '{wanted[0]}': "
+                f"'{wanted[0]}' stands behind the face of '{name}' that scatters the light"
+            ),
+            expected=f"'{wanted[0]}' before that face",
+            remedy=f"move '{wanted[0]}' to the side of '{name}' that is lit, or turn '{name}'",
+            element=wanted[0],
+            beam=int(context.numbers[beam]),
+            at=context.point(start.position[beam]),
+            span=route.span,
+            key=(*context.chain(beam), wanted[0]),
+        )
 
 
 def _explained(context: Context, variant: int) -> set[int]:

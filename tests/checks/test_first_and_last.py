@@ -259,3 +259,9 @@ def test_a_break_of_scattered_light_names_no_power(make_context):
     screen = "  X: {kind: screen, at: [250, 270], facing: 306, mount: none}\n"
     (broken,) = found(make_context, "route-broken", _scattered("{}", screen))
     assert "the beam goes to 'X' instead" in broken.message
+
+
+@pytest.mark.parametrize(("at", "count"), [("[200, 340]", 0), ("[400, 100]", 1)])
+def test_light_is_scattered_from_the_front_only(make_context, at, count):
+    text = _scattered("{}").replace("[200, 340]", at)
+    assert [one.element for one in found(make_context, "route-broken", text)] == ["C"] * count
