@@ -63,7 +63,7 @@ def break_angles(section: Section) -> tuple[Ints, Floats]:
     sequence = np.lexsort((angle, problem))
     problem, angle = problem[sequence], angle[sequence]
     keep = np.ones(len(angle), dtype=bool)
-    keep[1:] = (np.diff(angle) > _SAME_ANGLE) | (np.diff(problem) > 0)
+    keep[1:] = (angle[1:] - angle[:-1] > _SAME_ANGLE) | (problem[1:] > problem[:-1])
     return problem[keep], angle[keep]
 
 
@@ -76,7 +76,7 @@ def _on_line(lines: Lines, place: Floats) -> Floats:
 def _lines_with_lines(lines: Lines) -> tuple[Ints, Floats]:
     """Crossings of straight pieces of different bodies."""
     row = np.arange(len(lines.problem))
-    last = np.searchsorted(lines.problem, lines.problem, side="right")
+    last = lines.problem.searchsorted(lines.problem, side="right")
     a, b = spans(row + 1, last - row - 1)
     other = (lines.body[a] != lines.body[b]) | (lines.body[a] < 0)
     a, b = a[other], b[other]
@@ -89,7 +89,7 @@ def _lines_with_lines(lines: Lines) -> tuple[Ints, Floats]:
         sb = (hb * aligned - ha) / turned
     hit = (sa >= lines.start[a] - _END) & (sa <= lines.end[a] + _END)
     hit &= (sb >= lines.start[b] - _END) & (sb <= lines.end[b] + _END)
-    pick = np.flatnonzero(hit)
+    pick = hit.nonzero()[0]
     a = a[pick]
     return lines.problem[a], _on_line(pick_lines(lines, a), sa[pick])
 

@@ -95,9 +95,9 @@ def cast(section: Section, sweep: Intervals) -> Rays:
     row = np.concatenate((np.arange(len(which)), round_))
     body = np.concatenate((section.polygons.body[which], section.ellipses.body[round_]))
     interval = np.concatenate((interval, at))
-    met = np.flatnonzero((enter < leave) & (enter < CUT_RADIUS))
+    met = ((enter < leave) & (enter < CUT_RADIUS)).nonzero()[0]
     code = interval[met] * (int(bodies.slot.max(initial=0)) + 1) + bodies.slot[body[met]]
-    order = np.argsort(code)
+    order = code.argsort()
     code, met = code[order], met[order]
     body, interval = body[met], interval[met]
     host, kept = _hosts(bodies, body, interval, code)
@@ -130,21 +130,18 @@ def _facing(
     probe = sweep.angle + _PROBE * sweep.width  # rising through less than a turn
     key = sweep.problem * _APART + probe
     problem = section.bodies.problem[body] * _APART
-    shape, member = [], []
-    for turn in (-2.0 * np.pi, 0.0, 2.0 * np.pi):
-        first = np.searchsorted(key, problem + np.maximum(window[0] + turn, -_MOST))
-        last = np.searchsorted(key, problem + np.minimum(window[1] + turn, _MOST))
-        a, b = spans(first, np.maximum(last - first, 0))
-        shape.append(a)
-        member.append(b)
-    return np.concatenate(shape), np.concatenate(member)
+    turn = np.array([[-2.0 * np.pi], [0.0], [2.0 * np.pi]])
+    first = key.searchsorted((problem + np.maximum(window[0] + turn, -_MOST)).ravel())
+    last = key.searchsorted((problem + np.minimum(window[1] + turn, _MOST)).ravel())
+    which, member = spans(first, np.maximum(last - first, 0))
+    return which % max(len(body), 1), member
 
 
 def _through_polygons(section: Section, which: Ints, ray: Floats) -> tuple[Floats, Floats, Floats]:
     """Enter, leave and the radius at each edge (NaN: not met)."""
     table = section.polygons
     side = ray[0] * select(table.corner[1], which) > ray[1] * select(table.corner[0], which)
-    met = side != np.roll(side, -1, axis=0)
+    met = side != np.concatenate((side[1:], side[:1]))
     normal = select(table.normal, which)
     toward = ray[0] * normal[0] + ray[1] * normal[1]
     met &= toward > 0.0
@@ -203,7 +200,7 @@ def _levels(section: Section, sweep: Intervals, base: int) -> tuple[Ints, Floats
     toward = normal[0] * ray[0] + normal[1] * ray[1]
     hit = section.lines.distance[line] < CUT_RADIUS * toward
     line, interval, toward = line[hit], interval[hit], toward[hit]
-    sequence = np.argsort(interval, kind="stable")
+    sequence = interval.argsort(kind="stable")
     line, interval, toward = line[sequence], interval[sequence], toward[sequence]
     radius = section.lines.distance[line] / toward
     return line + base, radius, starts(interval, len(sweep.problem))
@@ -230,12 +227,12 @@ def _divide(
     depth = section.bodies.depth[rays.body[ray]]
     owner = _foremost(cover, depth, sweep.probe[:, chunk], middle)
     real_stretch = radius[:, 1:] - radius[:, :-1] > _EMPTY * radius[:, 1:]
-    which, place = np.nonzero(real_stretch)
+    which, place = real_stretch.nonzero()
     owner = owner[place, which]
     change = np.ones(len(which), dtype=bool)
     opens = change.copy()
-    opens[1:] = np.diff(which) > 0
-    change[1:] = opens[1:] | (np.diff(owner) != 0)
+    opens[1:] = which[1:] > which[:-1]
+    change[1:] = opens[1:] | (owner[1:] != owner[:-1])
     inner = np.where(opens, -1, bound[which, place])[change]
     which, owner = which[change], owner[change]
     ray = ray[np.minimum(owner, len(slot) - 1), which]
@@ -264,12 +261,10 @@ def _bounds(
         bound.append(line[place])
     whole = np.concatenate(radius, axis=1)
     whole[:, 1:][whole[:, 1:] <= 0.0] = CUT_RADIUS  # the axis is inside: nothing begins
-    sequence = np.argsort(whole, axis=1)
+    sequence = whole.argsort(axis=1)
     sequence = sequence[:, : int((whole < CUT_RADIUS).sum(axis=1).max()) + 1]
-    return (
-        np.take_along_axis(whole, sequence, axis=1),
-        np.take_along_axis(np.concatenate(bound, axis=1), sequence, axis=1),
-    )
+    place = sequence + whole.shape[1] * np.arange(n)[:, None]
+    return whole.take(place), np.concatenate(bound, axis=1).take(place)
 
 
 def _pierce(cover: Bools, host: Ints) -> None:

@@ -87,14 +87,14 @@ def _rank(shapes: Shapes, kept: Ints, problems: int) -> tuple[Bodies, Ints]:
 
 
 def _polygons(table: Polygons, body: Ints) -> Polygons:
-    keep = np.flatnonzero(body >= 0)
-    keep = keep[np.argsort(body[keep], kind="stable")]
+    keep = (body >= 0).nonzero()[0]
+    keep = keep[body[keep].argsort(kind="stable")]
     return Polygons(body[keep], *(select(column, keep) for column in table[1:]))
 
 
 def _ellipses(table: Ellipses, body: Ints) -> Ellipses:
-    keep = np.flatnonzero(body >= 0)
-    keep = keep[np.argsort(body[keep], kind="stable")]
+    keep = (body >= 0).nonzero()[0]
+    keep = keep[body[keep].argsort(kind="stable")]
     return pick_ellipses(table._replace(body=body), keep)
 
 
@@ -138,7 +138,7 @@ def _depth_lines(bodies: Bodies, polygons: Polygons, ellipses: Ellipses) -> Line
     slope = np.hypot(gap[1], gap[2])
     cross = (left < right).all(axis=0) & (np.abs(middle) < swing)
     cross &= np.abs(offset) < CUT_RADIUS * slope
-    pick = np.flatnonzero(cross)
+    pick = cross.nonzero()[0]
     sign = np.where(offset[pick] > 0.0, -1.0, 1.0)
     distance = np.abs(offset[pick]) / slope[pick]
     half = np.sqrt(CUT_RADIUS**2 - distance**2)

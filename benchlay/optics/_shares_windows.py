@@ -23,9 +23,9 @@ def polygon_window(corner: Floats) -> tuple[Floats, Floats]:
     if not corner.size:
         return np.zeros(corner.shape[2]), np.zeros(corner.shape[2])
     angle = np.arctan2(corner[1], corner[0])
-    step = np.roll(angle, -1, axis=0) - angle
+    step = np.concatenate((angle[1:], angle[:1])) - angle
     step -= _TURN * np.round(step / _TURN)
-    along = angle[0] + np.cumsum(step, axis=0)
+    along = angle[0] + step.cumsum(axis=0)
     around = np.abs(along[-1] - angle[0]) > 1.0
     around |= (np.abs(step) > np.pi - _STRAIGHT).any(axis=0)
     around |= (np.abs(corner).max(axis=0) < _NEAR_AXIS).any(axis=0)
