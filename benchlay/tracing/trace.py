@@ -80,7 +80,7 @@ def trace(placed: Placed, floor_w: Mapping[float, float]) -> Trace:
         By wavelength in nm, the power in W under which beams are booked and not followed.
     """
     scene = compile_scene(placed)
-    ways = ways_of(placed.base.layout, scene)
+    ways = ways_of(placed, scene)
     floors = np.array([floor_w[nm] for nm in scene.wavelengths_nm.tolist()])
     traced = run(emitted(placed, scene, ways), scene, ways, floors, placed)
     return Trace(placed, scene, ways, traced.beams, traced.ledger, floors, traced.bounded)

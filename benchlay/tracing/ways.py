@@ -15,6 +15,7 @@ from benchlay.elements._kind import Step
 from benchlay.layout.elements import Element
 from benchlay.layout.layout import Layout
 from benchlay.layout.routes import Route, RouteItem
+from benchlay.placing.placed import Placed
 from benchlay.scene.tables import Flags, Ints, Scene
 from benchlay.tracing.front import CONVERTED, REFLECTED, TRANSMITTED
 
@@ -169,13 +170,17 @@ class _Tree:
             self.routes[at].setdefault(route, leg if last else leg - 1)
 
 
-def ways_of(layout: Layout, scene: Scene) -> Ways:
-    """Return the tree of all routes of a layout, in name order."""
+def ways_of(placed: Placed, scene: Scene) -> Ways:
+    """Return the tree of all routes of a layout, in name order.
+
+    A state may give a source other wavelengths: routes are meant for those too.
+    """
+    layout = placed.base.layout
     tree = _Tree(layout, scene)
     names = tuple(sorted(layout.routes))
     for number, name in enumerate(names):
         route = layout.routes[name]
-        for wavelength in _lines(route, layout):
+        for wavelength in _lines(route, placed):
             tree.grow(tree.root(route.items[0].name, wavelength), number, route)
     codes, targets = _sorted_steps(tree.steps)
     return Ways(
@@ -203,11 +208,12 @@ def _sorted_steps(steps: Mapping[_Step, int]) -> tuple[Ints, Ints]:
     return code[order], np.array(list(steps.values()), dtype=np.int64)[order]
 
 
-def _lines(route: Route, layout: Layout) -> list[float]:
+def _lines(route: Route, placed: Placed) -> list[float]:
     first = route.items[0]
     if first.wavelength_nm is not None:
         return [first.wavelength_nm]
-    return [line.wavelength_nm for line in layout.sources[first.name].lines]
+    sources = (state.layout.sources[first.name] for state in placed.states)
+    return sorted({line.wavelength_nm for source in sources for line in source.lines})
 
 
 def _product(element: Element, item: RouteItem) -> int | None:

@@ -259,7 +259,7 @@ def main() -> None:
     text = Path(name).read_text(encoding="utf-8") if len(sys.argv) > 2 else bench()
     placed = place(read(name, text))
     scene = compile_scene(placed)
-    ways = ways_of(placed.base.layout, scene)
+    ways = ways_of(placed, scene)
     floor_w = 2e-8
     floors = dict.fromkeys(scene.wavelengths_nm.tolist(), floor_w)
     ratios = []
