@@ -145,7 +145,7 @@ LIMIT = keys(
 )  # fmt: skip
 HANDED_OVER = keys(
     {"through": TEXT, "axis": keys({"at": POINT, "direction": POINT}), "w_mm": PAIR,
-     "power_W": NUMBER}
+     "power_W": NUMBER, "state": TEXT}
 )  # fmt: skip
 MATRIX = keys(
     {"states": listed(TEXT),
@@ -212,6 +212,7 @@ def test_check(printed):
     assert review["as_of"] == "2027-01-01"
     assert {route["state"] for route in review["routes"]} == {"as drawn", "glance", "off"}
     assert review["handed_over"][0]["through"] == "east.port"
+    assert {beam["state"] for beam in review["handed_over"]} <= {"as drawn", "glance", "off"}
     assert review["matrix"]["states"] == ["as drawn", "glance", "off"]
     assert [row["id"] for row in review["matrix"]["rows"]] == [f["id"] for f in review["findings"]]
     assert review["zones"]

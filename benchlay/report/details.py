@@ -127,12 +127,13 @@ class Axis(NamedTuple):
 
 
 class HandedOver(NamedTuple):
-    """A beam that leaves through a port on purpose."""
+    """A beam that leaves through a port on purpose, in a state."""
 
     through: str
     axis: Axis
     w_mm: tuple[float, float]
     power_W: float
+    state: str
 
 
 class BeamRow(NamedTuple):

@@ -41,4 +41,5 @@ def _row(trace: Trace, name: str, beam: int) -> HandedOver:
         Axis((x, y, z), (dx, dy, dz)),
         (float(w1[0]), float(w2[0])),
         float(beams.end_core[beam]),
+        trace.scene.variants[int(beams.start.variant[beam])],
     )

@@ -66,11 +66,13 @@ def test_a_beam_is_handed_over_in_the_opening(port):
     w = 0.5 * math.hypot(1.0, 800.0 * 633e-6 / (1.2 * math.pi * 0.25))
     assert beam.w_mm == pytest.approx((w, w), rel=1e-9)
     assert beam.power_W == pytest.approx(4.8e-3)
+    assert beam.state == "as drawn"
 
 
 def test_it_is_handed_over_through_a_panel_that_stands_open_too(port):
     (beam,) = handed_over(port, port.scene.variants.index("shut"))
     assert beam.power_W == pytest.approx(4.8e-3)
+    assert beam.state == "shut"
 
 
 def test_no_beam_is_handed_over_that_misses_the_opening(traced):
