@@ -12,11 +12,12 @@ from argparse import Namespace
 from collections.abc import Callable, Iterator, Mapping
 from datetime import date
 from enum import IntEnum
-from typing import TYPE_CHECKING, NamedTuple, Protocol, TypeAlias, TypeVar
+from typing import TYPE_CHECKING, Protocol, TypeAlias, TypeVar
 
 from benchlay.document.problems import Problem
 from benchlay.document.span import Span
 from benchlay.findings import Severity
+from benchlay.named import NamedTuple
 from benchlay.report.model import LayoutErrors, Review
 from benchlay.report.words import Ink
 

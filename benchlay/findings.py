@@ -9,9 +9,10 @@ from __future__ import annotations
 import math
 from collections.abc import Iterable, Sequence
 from enum import IntEnum
-from typing import NamedTuple, TypeAlias
+from typing import TypeAlias
 
 from benchlay.document.span import Span
+from benchlay.named import NamedTuple
 
 _SHORTEST = 4
 _LONGEST = 32

@@ -28,7 +28,8 @@ def rooms():
 
 def below(room):
     (level,) = (n for n, layer in enumerate(LAYERS) if room in layer)
-    return {name for layer in LAYERS[level + 1 :] for name in layer} & rooms()
+    lower = {name for layer in LAYERS[level + 1 :] for name in layer} & rooms()
+    return lower - {"named"}  # the base of values, free to all
 
 
 def forbidden(name):

@@ -47,7 +47,6 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 from math import hypot
-from typing import NamedTuple
 
 from benchlay.checks._check import (
     Context,
@@ -60,6 +59,7 @@ from benchlay.checks._check import (
 from benchlay.findings import Finding, Severity
 from benchlay.geometry.polygon import Point
 from benchlay.layout.layout import Layout
+from benchlay.named import NamedTuple
 from benchlay.optics import moments
 from benchlay.scene.tables import SINKS
 from benchlay.tracing.beams import SOLID

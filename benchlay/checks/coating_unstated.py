@@ -58,12 +58,12 @@ and alignment lasers included.
 from __future__ import annotations
 
 from collections.abc import Iterator
-from typing import NamedTuple
 
 import numpy as np
 
 from benchlay.checks._check import Context, listed, power_text, wavelength_text
 from benchlay.findings import Finding, Severity
+from benchlay.named import NamedTuple
 from benchlay.scene.tables import Ints, Mode
 
 NAME = "coating-unstated"

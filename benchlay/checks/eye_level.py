@@ -51,7 +51,6 @@ an ordinary chair (common practice).
 from __future__ import annotations
 
 from collections.abc import Iterator
-from typing import NamedTuple
 
 from benchlay.checks._check import (
     Context,
@@ -62,6 +61,7 @@ from benchlay.checks._check import (
 )
 from benchlay.findings import Finding, Severity
 from benchlay.layout.layout import Layout
+from benchlay.named import NamedTuple
 from benchlay.zones.enclosure_line import EnclosureLine, enclosure_line, leaving
 
 NAME = "eye-level"

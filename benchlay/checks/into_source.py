@@ -49,7 +49,6 @@ practice: 40 dB is what is asked of isolators at most). An opening of half width
 from __future__ import annotations
 
 from collections.abc import Iterator
-from typing import NamedTuple
 
 import numpy as np
 
@@ -62,6 +61,7 @@ from benchlay.checks._check import (
     wavelength_text,
 )
 from benchlay.findings import Finding, Severity
+from benchlay.named import NamedTuple
 from benchlay.optics import moments
 from benchlay.optics.rays import cross, dot
 from benchlay.optics.special import circle_share

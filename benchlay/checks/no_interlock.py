@@ -56,12 +56,12 @@ the safe side (IEC 60825-1:2014, protective housing and safety interlocks; cited
 from __future__ import annotations
 
 from collections.abc import Iterator
-from typing import NamedTuple
 
 from benchlay.checks._check import Context, Found, power_text, unjudged, wavelength_text
 from benchlay.document.span import Span
 from benchlay.findings import Finding, Severity
 from benchlay.layout.layout import Layout
+from benchlay.named import NamedTuple
 from benchlay.zones.enclosure_line import EnclosureLine, enclosure_line, inside, passes
 
 NAME = "no-interlock"

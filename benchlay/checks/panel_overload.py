@@ -51,7 +51,6 @@ from memory; written for machines that process, the method is borrowed).
 from __future__ import annotations
 
 from collections.abc import Iterator
-from typing import NamedTuple
 
 import numpy as np
 
@@ -67,6 +66,7 @@ from benchlay.checks._check import (
 from benchlay.findings import Finding, Severity
 from benchlay.layout.layout import Layout
 from benchlay.layout.materials import Withstands
+from benchlay.named import NamedTuple
 from benchlay.scene.tables import SINK, Ints
 from benchlay.tracing.beams import SOLID
 

@@ -53,7 +53,6 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 from math import atan2, degrees
-from typing import NamedTuple
 
 import numpy as np
 
@@ -68,6 +67,7 @@ from benchlay.checks._check import (
     wavelength_text,
 )
 from benchlay.findings import Finding, Severity
+from benchlay.named import NamedTuple
 from benchlay.optics.rays import dot
 from benchlay.scene.tables import PARTS, SINK, SINKS, Floats
 from benchlay.tracing.beams import SOLID

@@ -2,10 +2,9 @@
 
 from __future__ import annotations
 
-from typing import NamedTuple
-
 from benchlay.document.span import Span
 from benchlay.document.words import format_choices, nearest
+from benchlay.named import NamedTuple
 
 __all__ = ["Problem", "Problems", "format_choices", "nearest"]
 

@@ -3,7 +3,8 @@
 from __future__ import annotations
 
 from enum import Enum
-from typing import NamedTuple
+
+from benchlay.named import NamedTuple
 
 
 class Unit(NamedTuple):

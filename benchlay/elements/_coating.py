@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from itertools import pairwise
-from typing import Any, NamedTuple
+from typing import Any
 
 from benchlay.document.form import Reader
 from benchlay.document.forms import Choice, ListOf, OneOf, Quantity, RecordForm, Words
@@ -11,6 +11,7 @@ from benchlay.document.nodes import Mapping, Node, Scalar, describe
 from benchlay.document.quantity import Dimension
 from benchlay.document.record import Record, key
 from benchlay.elements._shares import SHARE
+from benchlay.named import NamedTuple
 
 METAL_NAMES = ("silver", "gold", "aluminium")
 

@@ -8,7 +8,7 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from enum import IntEnum
-from typing import ClassVar, NamedTuple, Protocol, TypeAlias
+from typing import ClassVar, Protocol, TypeAlias
 
 from benchlay.document.record import Record
 from benchlay.document.span import Span
@@ -16,6 +16,7 @@ from benchlay.elements._coating import UNCOATED, Coating
 from benchlay.elements._polarization import Polarization
 from benchlay.geometry.outline import Outline
 from benchlay.geometry.solid import Solid, Vector
+from benchlay.named import NamedTuple
 
 Step: TypeAlias = tuple[str, str]
 """A face and what happens there: ``("front", "reflected")``."""

@@ -3,13 +3,14 @@
 from __future__ import annotations
 
 from math import pi
-from typing import Any, NamedTuple
+from typing import Any
 
 from benchlay.document.form import Form, Reader
 from benchlay.document.forms import Choice, OneOf, Quantity, RecordForm, Words
 from benchlay.document.nodes import Node
 from benchlay.document.quantity import Dimension
 from benchlay.document.record import Record, key
+from benchlay.named import NamedTuple
 
 _ANGLE = Quantity(Dimension.ANGLE)
 

@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from math import ceil, hypot, radians, tan
-from typing import NamedTuple
 
 from benchlay.document.form import Reader
 from benchlay.document.forms import Choice, Pair, Quantity
@@ -14,6 +13,7 @@ from benchlay.elements._kind import CLEAR, Acts, Bulk, Face, Geometry, Glass, In
 from benchlay.elements._shares import USABLE
 from benchlay.geometry.outline import Outline, circle, rectangle
 from benchlay.geometry.solid import Solid, Vector, disc, slab
+from benchlay.named import NamedTuple
 
 LENGTH = Quantity(Dimension.LENGTH, above=0.0)
 LENGTH_OR_ZERO = Quantity(Dimension.LENGTH, at_least=0.0)

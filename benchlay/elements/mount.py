@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from math import radians
-from typing import Any, NamedTuple
+from typing import Any
 
 from benchlay.document.form import Reader
 from benchlay.document.forms import Choice, Fixed, ListOf, OneOf, Quantity, Words
@@ -11,6 +11,7 @@ from benchlay.document.quantity import Dimension
 from benchlay.document.record import Record, RecordForm, key
 from benchlay.elements._kind import ElementKind, Geometry
 from benchlay.geometry.solid import Solid, box, post
+from benchlay.named import NamedTuple
 
 _LENGTH = Quantity(Dimension.LENGTH, above=0.0)
 _COORDINATE = Quantity(Dimension.LENGTH)

@@ -8,7 +8,6 @@ of a train of such pulses; the energy of one pulse is given beside it.
 from __future__ import annotations
 
 import math
-from typing import NamedTuple
 
 from benchlay.exposure.apertures import circle_area_m2
 from benchlay.exposure.errors import OutOfRange
@@ -20,6 +19,7 @@ from benchlay.exposure.factors import (
 )
 from benchlay.exposure.limits import EDITION, Limit, eye_limit
 from benchlay.exposure.trains import Train, as_limit, eye_rules
+from benchlay.named import NamedTuple
 
 _LONG_VISIBLE_S = 100.0
 _LONG_ULTRAVIOLET_S = 3e4

@@ -18,10 +18,10 @@ References
 from __future__ import annotations
 
 import math
-from typing import NamedTuple
 
 from benchlay.exposure.apertures import circle_area_m2
 from benchlay.exposure.errors import OutOfRange
+from benchlay.named import NamedTuple
 
 
 class Span(NamedTuple):

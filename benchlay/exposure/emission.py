@@ -14,7 +14,7 @@ from __future__ import annotations
 
 import math
 from enum import StrEnum
-from typing import Literal, NamedTuple
+from typing import Literal
 
 from benchlay.exposure.apertures import circle_area_m2, eye_aperture_mm
 from benchlay.exposure.errors import OutOfRange
@@ -36,6 +36,7 @@ from benchlay.exposure.factors import (
     ti_s,
 )
 from benchlay.exposure.tables import infrared
+from benchlay.named import NamedTuple
 
 
 class Level(StrEnum):

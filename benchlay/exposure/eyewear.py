@@ -15,10 +15,11 @@ from __future__ import annotations
 
 import math
 from enum import StrEnum
-from typing import Literal, NamedTuple
+from typing import Literal
 
 from benchlay.exposure.errors import OutOfRange
 from benchlay.exposure.factors import check_wavelength
+from benchlay.named import NamedTuple
 
 HIGHEST_LEVEL = 10
 _TRAIN_S = 5.0  # pulses are counted over 5 s (10 s before 2017)

@@ -11,8 +11,6 @@ dangerous; the standard, local rules and the laser safety officer decide.
 
 from __future__ import annotations
 
-from typing import NamedTuple
-
 from benchlay.exposure.apertures import eye_aperture_mm, skin_aperture_mm
 from benchlay.exposure.errors import OutOfRange
 from benchlay.exposure.factors import (
@@ -35,6 +33,7 @@ from benchlay.exposure.tables import (
     skin,
     ultraviolet,
 )
+from benchlay.named import NamedTuple
 
 EDITION = "IEC 60825-1:2014"
 _ANTERIOR_FROM_NM = 1250.0

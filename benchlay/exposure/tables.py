@@ -17,7 +17,7 @@ References
 
 from __future__ import annotations
 
-from typing import Final, Literal, NamedTuple
+from typing import Final, Literal
 
 from benchlay.exposure.factors import (
     ALPHA_MIN_MRAD,
@@ -31,6 +31,7 @@ from benchlay.exposure.factors import (
     t2_s,
     ti_s,
 )
+from benchlay.named import NamedTuple
 
 Unit = Literal["W/m2", "J/m2"]
 IRRADIANCE: Final = "W/m2"

@@ -12,7 +12,6 @@ from __future__ import annotations
 import math
 from collections.abc import Callable, Iterator
 from dataclasses import dataclass
-from typing import NamedTuple
 
 from benchlay.exposure.errors import OutOfRange
 from benchlay.exposure.factors import ALPHA_MIN_MRAD, c5, is_retinal, t2_s, ti_s
@@ -22,6 +21,7 @@ from benchlay.exposure.limits import (
     eye_thermal_limit_j_m2,
     skin_limit,
 )
+from benchlay.named import NamedTuple
 
 DoseOf = Callable[[float], float]
 

@@ -2,7 +2,9 @@
 
 from __future__ import annotations
 
-from typing import NamedTuple, TypeAlias
+from typing import TypeAlias
+
+from benchlay.named import NamedTuple
 
 Point: TypeAlias = tuple[float, float]
 

@@ -7,7 +7,9 @@ is round, by the cylinder that bounds it.
 
 from __future__ import annotations
 
-from typing import NamedTuple, TypeAlias
+from typing import TypeAlias
+
+from benchlay.named import NamedTuple
 
 Vector: TypeAlias = tuple[float, float, float]
 

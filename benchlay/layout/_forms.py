@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from typing import Any, NamedTuple
+from typing import Any
 
 from benchlay.document.form import Form, Reader
 from benchlay.document.forms import Fixed, ListOf, Pair, Quantity
@@ -12,6 +12,7 @@ from benchlay.document.span import Span
 from benchlay.document.texts import NAME_PATTERN
 from benchlay.document.words import format_choices, quote
 from benchlay.geometry.polygon import Polygon, signed_area, simple
+from benchlay.named import NamedTuple
 
 LENGTH = Quantity(Dimension.LENGTH)
 POSITIVE = Quantity(Dimension.LENGTH, above=0.0)

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import re
-from typing import Any, NamedTuple
+from typing import Any
 
 from benchlay.document.form import Form, Reader
 from benchlay.document.forms import Date, Entries, Quantity, RecordForm, Table, Text
@@ -11,6 +11,7 @@ from benchlay.document.nodes import Node, Scalar
 from benchlay.document.quantity import Dimension, QuantityError, parse
 from benchlay.document.record import Record, key
 from benchlay.layout._forms import NOT_NEGATIVE, PLACE
+from benchlay.named import NamedTuple
 
 _MEASURED = (
     Dimension.POWER,

@@ -3,13 +3,14 @@
 from __future__ import annotations
 
 from math import log, pi, sqrt
-from typing import Any, NamedTuple
+from typing import Any
 
 from benchlay.document.form import Reader
 from benchlay.document.forms import Quantity, Words
 from benchlay.document.quantity import Dimension
 from benchlay.document.record import Record, key
 from benchlay.layout._forms import LENGTH, POSITIVE
+from benchlay.named import NamedTuple
 
 _M2 = Quantity(Dimension.RATIO, at_least=1.0, at_most=1e6)
 _DIVERGENCE = Quantity(Dimension.ANGLE, above=0.0, below=pi / 2)

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Set as AbstractSet
-from typing import Any, NamedTuple
+from typing import Any
 
 from benchlay.document.form import Form, Reader
 from benchlay.document.forms import RecordForm, Text
@@ -17,6 +17,7 @@ from benchlay.elements.mount import MOUNT, Mount
 from benchlay.layout.materials import Withstands
 from benchlay.layout.names import Later
 from benchlay.layout.stand import Stand
+from benchlay.named import NamedTuple
 
 
 class Shared(Stand):

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Callable
-from typing import NamedTuple, TypeVar
+from typing import TypeVar
 
 from benchlay.document.form import Form, Reader
 from benchlay.document.forms import Entries, RecordForm, Table
@@ -29,6 +29,7 @@ from benchlay.layout.routes import Route, read_route
 from benchlay.layout.sources import Source, read_source
 from benchlay.layout.states import Item, State, read_states, replaced
 from benchlay.layout.tolerances import Tolerances
+from benchlay.named import NamedTuple
 
 T = TypeVar("T")
 _SOURCES: Form[object] = Table(Later("its keys", "{wavelength: 532}"))

@@ -2,8 +2,6 @@
 
 from __future__ import annotations
 
-from typing import NamedTuple
-
 from benchlay.document.form import Reader
 from benchlay.document.forms import Quantity, RecordForm
 from benchlay.document.quantity import Dimension
@@ -11,6 +9,7 @@ from benchlay.document.record import Record, key
 from benchlay.document.span import Span
 from benchlay.elements._polarization import UNPOLARIZED, Polarization, PolarizationForm
 from benchlay.layout._forms import POWER, WAVELENGTH
+from benchlay.named import NamedTuple
 
 __all__ = [
     "UNPOLARIZED",

@@ -3,13 +3,14 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Iterable
-from typing import NamedTuple, TypeVar
+from typing import TypeVar
 
 from benchlay.document.form import Form, Reader
 from benchlay.document.nodes import Mapping, Node, Scalar
 from benchlay.document.span import Span
 from benchlay.document.texts import Deferred, Name
 from benchlay.document.words import format_choices, nearest, quote
+from benchlay.named import NamedTuple
 
 T = TypeVar("T")
 AS_DRAWN = "as drawn"

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import re
 from math import radians
-from typing import Any, NamedTuple
+from typing import Any
 
 from benchlay.document.form import Form, Reader
 from benchlay.document.forms import ListOf, Quantity
@@ -13,6 +13,7 @@ from benchlay.document.quantity import Dimension
 from benchlay.document.span import Span
 from benchlay.geometry.polygon import Point
 from benchlay.layout._forms import ANGLE, POINT, DottedForm, Ref, RefForm
+from benchlay.named import NamedTuple
 
 _TURN = Quantity(Dimension.ANGLE, above=0.0, at_most=radians(180))
 _NUMBER = re.compile(r"[+-]?\.?[0-9]")

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from typing import Any, NamedTuple
+from typing import Any
 
 from benchlay.document.form import Failed, Form, Reader
 from benchlay.document.forms import OneOf, RecordForm, Whole
@@ -11,6 +11,7 @@ from benchlay.document.record import Record, key
 from benchlay.document.span import Span
 from benchlay.layout._forms import ANGLE, LENGTH, NOT_NEGATIVE, POWER, SHARE, SPREAD, DottedForm
 from benchlay.layout.light import PolarizationForm
+from benchlay.named import NamedTuple
 
 _MAX_TIMES = 1_000
 _MAX_ITEMS = 10_000

@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from math import pi
-from typing import NamedTuple
 
 from benchlay.document.form import Reader
 from benchlay.document.forms import Choice, ListOf, OneOf, Quantity, RecordForm, Words
@@ -15,6 +14,7 @@ from benchlay.layout._forms import ANGLE, POSITIVE, SHARE, WAVELENGTH, Ref, RefF
 from benchlay.layout.beam import BeamShape
 from benchlay.layout.light import UNPOLARIZED, Emits, Line, LineKeys, Polarization, PolarizationForm
 from benchlay.layout.stand import Place, Stand, check_one_place
+from benchlay.named import NamedTuple
 
 _FULL_ANGLE = Quantity(Dimension.ANGLE, above=0.0, at_most=pi)
 _HALF_ANGLE = Quantity(Dimension.ANGLE, at_least=0.0, below=pi / 2)

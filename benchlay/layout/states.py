@@ -2,14 +2,13 @@
 
 from __future__ import annotations
 
-from typing import NamedTuple
-
 from benchlay.document.form import Form, Reader
 from benchlay.document.forms import Table
 from benchlay.document.nodes import Mapping, Node, PathError, Scalar, replace_at
 from benchlay.document.span import Span
 from benchlay.document.words import format_choices, nearest, quote
 from benchlay.layout.names import AS_DRAWN, Later, Names, claim, unknown
+from benchlay.named import NamedTuple
 
 ROOTS = ("sources", "elements", "enclosure", "limits")
 _SHEETS = ("panels", "lids")

@@ -2,13 +2,14 @@
 
 from __future__ import annotations
 
-from typing import Any, NamedTuple
+from typing import Any
 
 from benchlay.document.form import Failed, Form, Reader
 from benchlay.document.forms import Choice, Entries
 from benchlay.document.nodes import Mapping, Node
 from benchlay.document.record import Record, RecordForm, key
 from benchlay.layout._forms import NOT_NEGATIVE, SPREAD, RefForm
+from benchlay.named import NamedTuple
 
 
 class Tolerance(Record):

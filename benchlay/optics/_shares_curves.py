@@ -6,10 +6,12 @@ call with forty problems costs hardly more than a call with one.
 
 from __future__ import annotations
 
-from typing import NamedTuple, TypeVar
+from typing import TypeVar
 
 import numpy as np
 from numpy.typing import NDArray
+
+from benchlay.named import NamedTuple
 
 Floats = NDArray[np.float64]
 Ints = NDArray[np.intp]

@@ -16,10 +16,10 @@ digits. Each piece takes the one that suits it and has the other from the width.
 from __future__ import annotations
 
 from collections.abc import Callable
-from typing import NamedTuple
 
 import numpy as np
 
+from benchlay.named import NamedTuple
 from benchlay.optics import _gauss
 from benchlay.optics._shares_curves import (
     Bools,

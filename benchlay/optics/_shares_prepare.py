@@ -2,10 +2,9 @@
 
 from __future__ import annotations
 
-from typing import NamedTuple
-
 import numpy as np
 
+from benchlay.named import NamedTuple
 from benchlay.optics._shares_curves import (
     CUT_RADIUS,
     DEPTH_TIE_MM,

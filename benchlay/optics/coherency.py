@@ -12,10 +12,12 @@ All functions return new arrays and leave their arguments alone.
 
 from __future__ import annotations
 
-from typing import NamedTuple, TypeAlias
+from typing import TypeAlias
 
 import numpy as np
 from numpy.typing import ArrayLike, NDArray
+
+from benchlay.named import NamedTuple
 
 Floats: TypeAlias = NDArray[np.float64]
 

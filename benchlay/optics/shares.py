@@ -17,12 +17,12 @@ stretch of outline (`_shares_integral`).
 from __future__ import annotations
 
 from itertools import pairwise
-from typing import NamedTuple
 
 import numpy as np
 from numpy.typing import ArrayLike
 
 from benchlay.geometry.distinct import ranked
+from benchlay.named import NamedTuple
 from benchlay.optics._shares_breaks import break_angles
 from benchlay.optics._shares_curves import Bools, Floats, Ints, Shapes
 from benchlay.optics._shares_integral import shares

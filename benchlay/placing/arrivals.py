@@ -3,9 +3,10 @@
 from __future__ import annotations
 
 from collections.abc import Iterator, Sequence
-from typing import TYPE_CHECKING, NamedTuple
+from typing import TYPE_CHECKING
 
 from benchlay.document.span import Span
+from benchlay.named import NamedTuple
 from benchlay.placing.nominal import Lost, NominalRay, Standing, scattered, through
 from benchlay.placing.pose import add, unit
 

@@ -3,13 +3,13 @@
 from __future__ import annotations
 
 from math import hypot, isnan
-from typing import NamedTuple
 
 import numpy as np
 from numpy.typing import NDArray
 
 from benchlay.elements._kind import Acts, Face, Geometry, Inside, Step
 from benchlay.geometry.axes import in_plane_axes
+from benchlay.named import NamedTuple
 from benchlay.optics.rays import reflect, refract
 from benchlay.optics.thin_lens import bend
 from benchlay.placing.media import Media

@@ -3,8 +3,8 @@
 from __future__ import annotations
 
 from math import asin, atan2, cos, pi, sin
-from typing import NamedTuple
 
+from benchlay.named import NamedTuple
 from benchlay.placing.pose import Pose, Vector, add, cross, dot, facing, unit
 
 STEEP_RAD = 80 * pi / 180

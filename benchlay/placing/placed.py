@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
-from typing import NamedTuple
 
 from benchlay.elements._kind import Geometry
 from benchlay.elements.mount import Holder
@@ -11,6 +10,7 @@ from benchlay.layout.elements import Element
 from benchlay.layout.layout import Layout, LayoutSource
 from benchlay.layout.light import Line, PulseTrain
 from benchlay.layout.sources import Source
+from benchlay.named import NamedTuple
 from benchlay.placing.media import Media
 from benchlay.placing.nominal import NominalRay
 from benchlay.placing.pose import Pose

@@ -3,7 +3,9 @@
 from __future__ import annotations
 
 from math import asin, atan2, cos, sin
-from typing import NamedTuple, TypeAlias
+from typing import TypeAlias
+
+from benchlay.named import NamedTuple
 
 Vector: TypeAlias = tuple[float, float, float]
 Axes: TypeAlias = tuple[Vector, Vector, Vector]

@@ -6,8 +6,9 @@ A plain check needs none of it, so it stands apart from the findings.
 from __future__ import annotations
 
 from collections.abc import Mapping
-from typing import NamedTuple, TypeAlias
+from typing import TypeAlias
 
+from benchlay.named import NamedTuple
 from benchlay.report.model import Point
 
 Ring: TypeAlias = tuple[tuple[float, float], ...]

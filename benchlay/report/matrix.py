@@ -7,8 +7,8 @@ from __future__ import annotations
 
 import textwrap
 from collections.abc import Iterator, Sequence
-from typing import NamedTuple
 
+from benchlay.named import NamedTuple
 from benchlay.report.model import Reported, Review
 
 _HOLDS, _WORST, _NOT = "x", "X", "."

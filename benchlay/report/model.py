@@ -8,10 +8,11 @@ and mm are written as users of the JSON see them.
 
 from __future__ import annotations
 
-from typing import TYPE_CHECKING, NamedTuple, TypeAlias
+from typing import TYPE_CHECKING, TypeAlias
 
 from benchlay.document.problems import Problem
 from benchlay.findings import MergedFinding, Severity
+from benchlay.named import NamedTuple
 
 if TYPE_CHECKING:
     from benchlay.report.details import (

@@ -4,7 +4,8 @@ from __future__ import annotations
 
 import unicodedata
 from collections.abc import Sequence
-from typing import NamedTuple
+
+from benchlay.named import NamedTuple
 
 _QUOTE_AT_MOST = 100
 """Characters of a layout's line that are quoted; longer ones are cut round the place."""

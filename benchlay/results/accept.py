@@ -10,12 +10,12 @@ from __future__ import annotations
 from collections.abc import Iterable, Iterator, Mapping, Sequence
 from datetime import date
 from math import dist, isnan, pi
-from typing import NamedTuple
 
 from benchlay.document.quantity import Dimension
 from benchlay.findings import Finding, MergedFinding, Severity
 from benchlay.layout import AS_DRAWN
 from benchlay.layout.accept import Accept
+from benchlay.named import NamedTuple
 from benchlay.placing.placed import Placed
 from benchlay.report.model import Acceptance, CheckRun
 from benchlay.report.numbers import shown

@@ -9,10 +9,11 @@ optic, its mount, post and foot.
 
 from __future__ import annotations
 
-from typing import Any, NamedTuple
+from typing import Any
 
 import numpy as np
 
+from benchlay.named import NamedTuple
 from benchlay.optics import coherency, moments
 from benchlay.optics.rays import cross, dot
 from benchlay.report.details import BeamRow, Polarization

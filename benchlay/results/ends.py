@@ -2,11 +2,10 @@
 
 from __future__ import annotations
 
-from typing import NamedTuple
-
 import numpy as np
 
 from benchlay.elements._kind import Acts
+from benchlay.named import NamedTuple
 from benchlay.scene.tables import PART, SINK, SINKS, Flags, Floats, Ints, Scene
 from benchlay.tracing import Trace
 from benchlay.tracing.beams import FACE, HANDED, NOTHING, SOLID

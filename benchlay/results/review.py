@@ -4,10 +4,11 @@ from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
 from datetime import date
-from typing import TYPE_CHECKING, NamedTuple
+from typing import TYPE_CHECKING
 
 from benchlay.checks import Run
 from benchlay.findings import Finding, MergedFinding, identify, merge_states, sort_key
+from benchlay.named import NamedTuple
 from benchlay.report.model import Acceptance, CheckRun, Reported, Review, reported
 from benchlay.results.accept import hold
 from benchlay.results.limits import Limits, limits_used

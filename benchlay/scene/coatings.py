@@ -3,11 +3,11 @@
 from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
-from typing import NamedTuple
 
 from benchlay.elements._coating import Coating
 from benchlay.layout.layout import Layout
 from benchlay.layout.routes import Route
+from benchlay.named import NamedTuple
 from benchlay.optics.metals import METALS
 from benchlay.scene.tables import Mode
 

@@ -3,13 +3,13 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
-from typing import NamedTuple
 
 from benchlay.geometry.polygon import convex_pieces
 from benchlay.geometry.solid import Hole, Solid, Vector, box, prism
 from benchlay.layout.enclosure import Enclosure, Opening, Panel
 from benchlay.layout.layout import Layout
 from benchlay.layout.materials import SHEET, Material
+from benchlay.named import NamedTuple
 from benchlay.placing.placed import PlacedSource
 from benchlay.placing.pose import Axes
 

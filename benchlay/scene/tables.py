@@ -6,12 +6,13 @@ Lengths are in mm, in the plan frame.
 
 from __future__ import annotations
 
-from typing import NamedTuple, TypeAlias
+from typing import TypeAlias
 
 import numpy as np
 from numpy.typing import NDArray
 
 from benchlay.elements._polarization import Polarization
+from benchlay.named import NamedTuple
 
 Floats: TypeAlias = NDArray[np.float64]
 Ints: TypeAlias = NDArray[np.int64]

@@ -3,7 +3,9 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Collection, Iterable, Mapping
-from typing import TYPE_CHECKING, NamedTuple
+from typing import TYPE_CHECKING
+
+from benchlay.named import NamedTuple
 
 if TYPE_CHECKING:
     from benchlay.findings import Severity

@@ -7,8 +7,7 @@ frame, x along the front normal.
 
 from __future__ import annotations
 
-from typing import NamedTuple
-
+from benchlay.named import NamedTuple
 from benchlay.sheets.primitives import Point
 from benchlay.sheets.title_block import TitleFields
 

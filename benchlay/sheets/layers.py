@@ -9,8 +9,8 @@ about 11 mm that shows on short legs whatever the width.
 from __future__ import annotations
 
 from collections.abc import Iterable
-from typing import NamedTuple
 
+from benchlay.named import NamedTuple
 from benchlay.sheets.primitives import Layer
 
 # Names are those that CAD programs have always used: some know patterns by name alone and

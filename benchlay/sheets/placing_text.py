@@ -9,11 +9,11 @@ from __future__ import annotations
 
 import math
 from collections.abc import Iterable, Sequence
-from typing import NamedTuple
 
 import numpy as np
 from numpy.typing import NDArray
 
+from benchlay.named import NamedTuple
 from benchlay.sheets.primitives import Point
 from benchlay.sheets.scale import Window
 

@@ -17,7 +17,8 @@ from __future__ import annotations
 
 import math
 from enum import StrEnum
-from typing import NamedTuple
+
+from benchlay.named import NamedTuple
 
 Point = tuple[float, float]
 

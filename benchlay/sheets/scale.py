@@ -5,8 +5,7 @@ Sizes follow ISO 5457 (trimmed, landscape), scales ISO 5455, both from memory.
 
 from __future__ import annotations
 
-from typing import NamedTuple
-
+from benchlay.named import NamedTuple
 from benchlay.sheets.primitives import Point
 
 SIZES_MM: dict[str, Point] = {

@@ -7,8 +7,8 @@ says how much is missing and where it can be read.
 from __future__ import annotations
 
 from collections.abc import Iterator, Sequence
-from typing import NamedTuple
 
+from benchlay.named import NamedTuple
 from benchlay.sheets.frame import rectangle
 from benchlay.sheets.lettering import LINE_PITCH, MIDDLE_MM, SMALL_MM, shorten, wrap
 from benchlay.sheets.primitives import Line, Primitive, Text

@@ -7,8 +7,8 @@ the line of the supplementary title. What still does not fit is cut, and three p
 from __future__ import annotations
 
 from collections.abc import Iterator
-from typing import NamedTuple
 
+from benchlay.named import NamedTuple
 from benchlay.sheets.frame import rectangle
 from benchlay.sheets.lettering import (
     MIDDLE_MM,

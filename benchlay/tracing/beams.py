@@ -5,10 +5,9 @@ N beams in the order of their making (a parent before its children), K landings.
 
 from __future__ import annotations
 
-from typing import NamedTuple
-
 import numpy as np
 
+from benchlay.named import NamedTuple
 from benchlay.scene.tables import Flags, Floats, Ints
 from benchlay.tracing.front import Front
 from benchlay.tracing.hits import FACE, HANDED, NOTHING, SOLID

@@ -8,10 +8,9 @@ direction.
 
 from __future__ import annotations
 
-from typing import NamedTuple
-
 import numpy as np
 
+from benchlay.named import NamedTuple
 from benchlay.optics.rays import dot
 from benchlay.scene.tables import Flags, Floats, Ints, Scene
 from benchlay.tracing.front import Front

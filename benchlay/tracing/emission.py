@@ -2,11 +2,10 @@
 
 from __future__ import annotations
 
-from typing import NamedTuple
-
 import numpy as np
 
 from benchlay.layout.light import Polarization
+from benchlay.named import NamedTuple
 from benchlay.optics import coherency, moments
 from benchlay.optics.rays import bench_basis
 from benchlay.placing.placed import Placed, PlacedSource

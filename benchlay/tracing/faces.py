@@ -7,10 +7,9 @@ new beam's own: s = k x N is the axis, p = k x s.
 
 from __future__ import annotations
 
-from typing import NamedTuple
-
 import numpy as np
 
+from benchlay.named import NamedTuple
 from benchlay.optics import coherency, fresnel, moments
 from benchlay.optics.rays import bench_basis, cross, dot
 from benchlay.optics.thin_lens import bend, throw_back

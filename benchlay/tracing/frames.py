@@ -6,10 +6,9 @@ Scaled coordinates are x/w: W(z)^-1 times the transverse place, W the symmetric 
 
 from __future__ import annotations
 
-from typing import NamedTuple
-
 import numpy as np
 
+from benchlay.named import NamedTuple
 from benchlay.optics.rays import cross, dot
 from benchlay.scene.tables import Floats, Ints
 from benchlay.tracing.front import Front

@@ -7,10 +7,9 @@ are left.
 
 from __future__ import annotations
 
-from typing import NamedTuple
-
 import numpy as np
 
+from benchlay.named import NamedTuple
 from benchlay.optics import moments
 from benchlay.placing.placed import Placed
 from benchlay.scene.tables import SINK, Flags, Floats, Ints, Scene

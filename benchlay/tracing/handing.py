@@ -6,10 +6,9 @@ its line takes nothing, since the beam ends before it.
 
 from __future__ import annotations
 
-from typing import NamedTuple
-
 import numpy as np
 
+from benchlay.named import NamedTuple
 from benchlay.optics.rays import dot
 from benchlay.placing.placed import Placed
 from benchlay.scene.tables import SINK, Flags, Floats, Ints, Scene

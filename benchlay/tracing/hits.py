@@ -6,10 +6,9 @@ the faces of their own optic; all others meet everything.
 
 from __future__ import annotations
 
-from typing import NamedTuple
-
 import numpy as np
 
+from benchlay.named import NamedTuple
 from benchlay.optics.rays import dot
 from benchlay.scene.tables import Flags, Floats, Ints, Scene
 from benchlay.tracing.bodies import PARALLEL, Pairs, Passing, pairs, passing, through_holes

@@ -2,10 +2,9 @@
 
 from __future__ import annotations
 
-from typing import NamedTuple
-
 import numpy as np
 
+from benchlay.named import NamedTuple
 from benchlay.optics.shares import Shapes
 from benchlay.scene.tables import Flags, Floats, Ints, Scene
 from benchlay.tracing.clipping import padded

@@ -6,10 +6,9 @@ and is seen in the perspective of W there.
 
 from __future__ import annotations
 
-from typing import NamedTuple
-
 import numpy as np
 
+from benchlay.named import NamedTuple
 from benchlay.optics.rays import cross
 from benchlay.scene.tables import Flags, Floats, Ints
 from benchlay.tracing.frames import (

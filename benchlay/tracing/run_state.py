@@ -2,10 +2,11 @@
 
 from __future__ import annotations
 
-from typing import TYPE_CHECKING, NamedTuple
+from typing import TYPE_CHECKING
 
 import numpy as np
 
+from benchlay.named import NamedTuple
 from benchlay.scene.tables import Floats, Ints, Scene
 from benchlay.tracing.front import Front
 from benchlay.tracing.hits import Hits

@@ -3,10 +3,10 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
-from typing import NamedTuple
 
 import numpy as np
 
+from benchlay.named import NamedTuple
 from benchlay.placing.placed import Placed
 from benchlay.scene.compile import compile_scene
 from benchlay.scene.tables import Flags, Floats, Ints, Scene

@@ -7,7 +7,7 @@ for good: from there on the light is stray.
 from __future__ import annotations
 
 from collections.abc import Mapping
-from typing import NamedTuple, TypeAlias
+from typing import TypeAlias
 
 import numpy as np
 
@@ -15,6 +15,7 @@ from benchlay.elements._kind import Step
 from benchlay.layout.elements import Element
 from benchlay.layout.layout import Layout
 from benchlay.layout.routes import Route, RouteItem
+from benchlay.named import NamedTuple
 from benchlay.placing.placed import Placed
 from benchlay.scene.tables import Flags, Ints, Scene
 from benchlay.tracing.front import CONVERTED, REFLECTED, TRANSMITTED

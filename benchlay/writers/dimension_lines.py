@@ -8,8 +8,8 @@ and overshoot by 2 mm; arrowheads are filled, 3 mm long at about 20 degrees; the
 from __future__ import annotations
 
 import math
-from typing import NamedTuple
 
+from benchlay.named import NamedTuple
 from benchlay.sheets.lettering import width_mm
 from benchlay.sheets.primitives import (
     Across,

@@ -3,8 +3,8 @@
 from __future__ import annotations
 
 import json
-from typing import NamedTuple
 
+from benchlay.named import NamedTuple
 from benchlay.sheets.primitives import (
     Arc,
     BlockUse,

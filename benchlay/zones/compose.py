@@ -3,12 +3,12 @@
 from __future__ import annotations
 
 from collections.abc import Iterable
-from typing import NamedTuple
 
 import numpy as np
 import shapely
 from shapely.geometry.base import BaseGeometry
 
+from benchlay.named import NamedTuple
 from benchlay.tracing.beams import FACE, HANDED, NOTHING
 from benchlay.tracing.trace import Trace
 from benchlay.zones.diffuse import Spot, spots

@@ -13,7 +13,6 @@ from __future__ import annotations
 
 import math
 from collections.abc import Iterator
-from typing import NamedTuple
 
 import numpy as np
 import shapely
@@ -22,6 +21,7 @@ from shapely.geometry.base import BaseGeometry
 from benchlay.exposure.distances import diffuse_distance_m
 from benchlay.layout.enclosure import Enclosure, Panel
 from benchlay.layout.materials import BODY, SHEET, Material
+from benchlay.named import NamedTuple
 from benchlay.placing.placed import PlacedState
 from benchlay.scene.tables import SINKS, Floats, Ints
 from benchlay.tracing.beams import FACE, SOLID

@@ -2,12 +2,11 @@
 
 from __future__ import annotations
 
-from typing import NamedTuple
-
 import shapely
 from shapely.geometry.base import BaseGeometry
 
 from benchlay.layout.layout import Layout
+from benchlay.named import NamedTuple
 from benchlay.zones.enclosure_line import enclosure_line
 
 Place = tuple[float, float, float]

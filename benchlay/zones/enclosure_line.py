@@ -5,11 +5,11 @@ from __future__ import annotations
 from collections.abc import Mapping
 from itertools import pairwise
 from math import dist, inf, isfinite
-from typing import NamedTuple
 
 from benchlay.geometry.polygon import Point, Polygon, simple
 from benchlay.layout.enclosure import Panel
 from benchlay.layout.layout import Layout
+from benchlay.named import NamedTuple
 
 _SAME_MM = 1e-6  # ends of neighbouring panels nearer than this are one corner
 _FEWEST = 2  # panels; below that the bench's outline is the line

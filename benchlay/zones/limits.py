@@ -2,12 +2,11 @@
 
 from __future__ import annotations
 
-from typing import NamedTuple
-
 import numpy as np
 
 from benchlay.exposure import EDITION, OutOfRange, Pulse, accessible_limit
 from benchlay.layout.light import Line
+from benchlay.named import NamedTuple
 from benchlay.scene.tables import Floats, Ints
 from benchlay.tracing.trace import Trace
 

@@ -13,12 +13,11 @@ A strip is at least as wide as the 1/e^2 radius and the aperture.
 
 from __future__ import annotations
 
-from typing import NamedTuple
-
 import numpy as np
 import shapely
 from shapely.geometry.base import BaseGeometry
 
+from benchlay.named import NamedTuple
 from benchlay.optics import moments
 from benchlay.optics.special import circle_share
 from benchlay.scene.tables import Flags, Floats, Ints

@@ -3,11 +3,11 @@
 from __future__ import annotations
 
 from math import hypot
-from typing import NamedTuple
 
 import numpy as np
 
 from benchlay.geometry import convex
+from benchlay.named import NamedTuple
 from benchlay.scene.tables import PARTS, Floats, Ints, Scene, Solids
 
 _ROUND = 32  # sides of the polygon round a circle: it is drawn round it, 0.5 % too wide at most

@@ -3,11 +3,11 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
-from typing import NamedTuple
 
 import numpy as np
 
 from benchlay.checks._check.context import Context
+from benchlay.named import NamedTuple
 from benchlay.scene.tables import SINKS
 from benchlay.tracing.beams import NOTHING, SOLID
 from benchlay.zones.enclosure_line import EnclosureLine, Side, bench_line, inside, leaving

@@ -3,10 +3,11 @@
 from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
-from typing import NamedTuple, TypeAlias
+from typing import TypeAlias
 
 from benchlay.exposure import AccessibleLimit, OutOfRange, Pulse, accessible_limit
 from benchlay.layout.light import Line, PulseTrain
+from benchlay.named import NamedTuple
 from benchlay.placing.placed import Placed, PlacedState
 
 # Contract of the language: the floor is never more than this share of what a line emits.

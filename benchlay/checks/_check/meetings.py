@@ -3,13 +3,13 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
-from typing import NamedTuple
 
 import numpy as np
 
 from benchlay.checks._check.behind import met_before_end
 from benchlay.checks._check.routes import Routes
 from benchlay.elements._kind import Acts
+from benchlay.named import NamedTuple
 from benchlay.placing.placed import PlacedElement
 from benchlay.scene.tables import PARTS, SINK, SINKS, Ints
 from benchlay.tracing import Trace

@@ -3,10 +3,10 @@
 from __future__ import annotations
 
 from collections.abc import Callable
-from typing import NamedTuple
 
 import numpy as np
 
+from benchlay.named import NamedTuple
 from benchlay.optics import moments
 from benchlay.optics.rays import cross
 from benchlay.optics.shares import Shapes, partition

@@ -3,11 +3,12 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
-from typing import NamedTuple, Protocol, TypeAlias
+from typing import Protocol, TypeAlias
 
 from benchlay.checks._check.context import Context
 from benchlay.document.span import Span
 from benchlay.findings import Finding
+from benchlay.named import NamedTuple
 
 
 class Unevaluated(NamedTuple):

@@ -9,10 +9,10 @@ from __future__ import annotations
 
 from collections.abc import Set
 from functools import cached_property
-from typing import NamedTuple
 
 import numpy as np
 
+from benchlay.named import NamedTuple
 from benchlay.placing.placed import PlacedState
 from benchlay.placing.solve import POSE_KEYS
 from benchlay.scene.tables import Flags

@@ -2,11 +2,10 @@
 
 from __future__ import annotations
 
-from typing import NamedTuple
-
 import numpy as np
 
 from benchlay.elements._kind import Acts
+from benchlay.named import NamedTuple
 from benchlay.scene.tables import SINKS, Floats, Ints
 from benchlay.sheets.contents import Leg
 from benchlay.sheets.layers import wavelength_words

@@ -4,8 +4,8 @@ from __future__ import annotations
 
 import math
 from collections.abc import Iterable, Sequence
-from typing import NamedTuple
 
+from benchlay.named import NamedTuple
 from benchlay.sheets.contents import Picture
 from benchlay.sheets.placing_text import Crowd
 from benchlay.sheets.primitives import Point

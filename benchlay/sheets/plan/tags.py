@@ -4,11 +4,11 @@ from __future__ import annotations
 
 import math
 from collections.abc import Iterable, Iterator, Mapping, Sequence
-from typing import NamedTuple
 
 import shapely
 from shapely.geometry.base import BaseGeometry
 
+from benchlay.named import NamedTuple
 from benchlay.sheets.contents import SOURCE, Item, Leg, LidOutline, PanelLine, Picture, Zone
 from benchlay.sheets.frame import rectangle
 from benchlay.sheets.lettering import LINE_PITCH, MIDDLE_MM, SMALL_MM, plain, width_mm
