@@ -13,7 +13,7 @@ from benchlay.document.span import Span
 from benchlay.findings import Severity
 from benchlay.layout.layout import Layout
 from benchlay.report.model import Reported
-from benchlay.sheets import SHEETS, sheets_of
+from benchlay.sheets import SHEETS, UnknownSheetError, sheets_of
 from benchlay.sheets.primitives import Sheet
 from benchlay.sheets.scale import SIZES_MM, NothingFitsError
 from benchlay.tracing import Trace
@@ -28,9 +28,8 @@ def refusals(layout: Layout, sheet: str | None, form: str | None) -> tuple[Probl
     """Return what speaks against drawing what is asked for."""
     place = Span(layout.file, 1, 1)
     found = []
-    if sheet is not None and sheet not in SHEETS:
-        what = f"there is no sheet {sheet!r}"
-        found.append(Problem(place, what, f"--sheet {format_choices(SHEETS)}", "name another"))
+    if sheet is not None and sheet.partition("-")[0] not in {k.partition("-")[0] for k in SHEETS}:
+        found.append(_unknown(layout, UnknownSheetError(sheet, SHEETS)))
     if form is not None and form not in FORMS:
         what = f"not yet: sheets are not written as {form}"
         found.append(Problem(place, what, f"--format {format_choices(FORMS)}", "name another"))
@@ -64,20 +63,27 @@ def drawings(
     known yet are worked out. `sha256` is that of the layout's bytes. `state` is the one that
     the review speaks of, where it is of one alone: it is drawn, else the one as drawn.
     """
-    only = None if sheet is None else (sheet,)
     counts = Counter(Severity[finding.severity.upper()] for finding in judged)
     try:
         composed = sheets_of(
-            trace, zones, only=only, counts=sorted(counts.items()), sha256=sha256, state=state
+            trace, zones, only=sheet, counts=sorted(counts.items()), sha256=sha256, state=state
         )
+    except UnknownSheetError as error:
+        return _unknown(trace.placed.base.layout, error)
     except NothingFitsError as error:
         return _too_large(trace.placed.base.layout, error)
     return {
         f"{drawn.name}.{ending}": write(drawn)
-        for drawn in composed
+        for drawn, planned in composed
         for ending, write in FORMS.items()
-        if form in (None, ending)
+        if form in (None, ending) and (planned.forms is None or ending in planned.forms)
     }
+
+
+def _unknown(layout: Layout, error: UnknownSheetError) -> Problem:
+    what = f"there is no sheet {error.name!r}"
+    expected = f"--sheet {format_choices(error.known)}"
+    return Problem(Span(layout.file, 1, 1), what, expected, "name another")
 
 
 def _too_large(layout: Layout, error: NothingFitsError) -> Problem:

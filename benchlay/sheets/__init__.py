@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Collection, Iterable, Mapping
+from collections.abc import Callable, Collection, Iterable, Iterator, Mapping
 from typing import TYPE_CHECKING
 
 from benchlay.named import NamedTuple
@@ -23,39 +23,98 @@ class Subject(NamedTuple):
     sha256: str  # of the layout's bytes, to be written into the files
     state: str | None = None  # the only one that the review speaks of, and so the one drawn
 
+    @property
+    def variant(self) -> int:
+        """The number of the state that is drawn."""
+        return 0 if self.state is None else self.trace.scene.variants.index(self.state)
 
-def _plan(subject: Subject) -> Sheet:
+
+class Planned(NamedTuple):
+    """A sheet that is going to be composed once its number in the set is known."""
+
+    name: str  # the file's stem: that of its kind, or kind-NAME
+    compose: Callable[[str], Sheet]  # from what the title block says of its number, as "2/7"
+    numbered: bool = True  # a sheet of the set; cutting files have no title block, no number
+    forms: Collection[str] | None = None  # endings of the files it is written as; None: all
+
+
+class UnknownSheetError(ValueError):
+    """A sheet was asked for by a name that none has."""
+
+    def __init__(self, name: str, known: Iterable[str]) -> None:
+        self.name, self.known = name, tuple(known)
+        super().__init__(f"there is no sheet {name!r}, but {', '.join(self.known)}")
+
+
+def _plan(subject: Subject) -> Iterator[Planned]:
     from benchlay.sheets.drafting import plan_picture
     from benchlay.sheets.plan import compose
 
-    trace, zones, counts, sha256, state = subject
-    picture = plan_picture(
-        trace,
-        zones,
-        variant=0 if state is None else trace.scene.variants.index(state),
-        counts=counts,
-        of_all_states=state is None,
-        sha256=sha256,
-    )
-    return compose(picture)
+    def plan(number: str) -> Sheet:
+        trace, zones, counts, sha256, state = subject
+        picture = plan_picture(
+            trace,
+            zones,
+            variant=subject.variant,
+            counts=counts,
+            of_all_states=state is None,
+            sha256=sha256,
+        )
+        return compose(picture._replace(fields=picture.fields._replace(sheet=number)))
+
+    yield Planned("plan", plan)
 
 
-SHEETS: Mapping[str, Callable[[Subject], Sheet]] = {"plan": _plan}
-"""All sheets there are, by name; a file's name starts with its sheet's.
+SHEETS: Mapping[str, Callable[[Subject], Iterable[Planned]]] = {"plan": _plan}
+"""All kinds of sheet there are, by name, in the order of the set.
 
-Each loads what it draws with when it is called: a check draws nothing.
+Each gives the sheets of its kind: one, several (`panel-NAME`), or none where the layout has
+nothing for it. Each loads what it draws with when it is called: a check draws nothing.
 """
+
+
+class Composed(NamedTuple):
+    """A sheet with what is known of it in the set."""
+
+    sheet: Sheet
+    planned: Planned
+
+
+def composed_sheets(subject: Subject, only: str | None = None) -> list[Composed]:
+    """Compose the sheets of a set, or those that one name stands for.
+
+    Parameters
+    ----------
+    subject : Subject
+    only : str, optional
+        The name of one sheet, or of a kind of sheet; all by default. Their numbers are those
+        that they have in the whole set.
+
+    Raises
+    ------
+    UnknownSheetError
+        For the name of a sheet that there is not.
+    NothingFitsError
+        If a sheet fits on no paper.
+    """
+    planned = [(kind, one) for kind, plan in SHEETS.items() for one in plan(subject)]
+    wanted = [pair for pair in planned if only is None or only in (pair[0], pair[1].name)]
+    if only is not None and not wanted and only not in SHEETS:
+        raise UnknownSheetError(only, dict.fromkeys([*SHEETS, *(one.name for _, one in planned)]))
+    numbered = [one.name for _, one in planned if one.numbered]
+    numbers = {name: f"{n}/{len(numbered)}" for n, name in enumerate(numbered, start=1)}
+    return [Composed(one.compose(numbers.get(one.name, "")), one) for _, one in wanted]
 
 
 def sheets_of(
     trace: Trace,
     zones: Zones | None = None,
     *,
-    only: Collection[str] | None = None,
+    only: str | None = None,
     counts: Iterable[tuple[Severity, int]] = (),
     sha256: str = "",
     state: str | None = None,
-) -> list[Sheet]:
+) -> list[Composed]:
     """Return the sheets of a traced layout, in its state as drawn or in the one named.
 
     Parameters
@@ -63,26 +122,16 @@ def sheets_of(
     trace : Trace
     zones : Zones, optional
         The hazard zones, where they are known already: of the state drawn at least.
-    only : collection of str, optional
-        Names of the sheets that are wanted; all of `SHEETS` by default.
-    counts, sha256, state
-        See `Subject`.
+    only, counts, sha256, state
+        See `composed_sheets` and `Subject`.
 
     Raises
     ------
-    ValueError
-        For the name of a sheet that there is not.
+    UnknownSheetError, NothingFitsError
+        See `composed_sheets`.
     """
-    wanted = tuple(SHEETS if only is None else only)
-    unknown = sorted(set(wanted) - set(SHEETS))
-    if unknown:
-        msg = f"there is no sheet {unknown[0]!r}, but {', '.join(SHEETS)}"
-        raise ValueError(msg)
-    if not wanted:
-        return []
     if zones is None:
         from benchlay.zones import zones_of
 
         zones = zones_of(trace, states=(state or trace.scene.variants[0],))
-    subject = Subject(trace, zones, tuple(counts), sha256, state)
-    return [SHEETS[name](subject) for name in wanted]
+    return composed_sheets(Subject(trace, zones, tuple(counts), sha256, state), only)

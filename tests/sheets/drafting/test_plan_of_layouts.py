@@ -9,7 +9,7 @@ import pytest
 import shapely
 
 from benchlay.pipeline import place, read, trace
-from benchlay.sheets import SHEETS, sheets_of
+from benchlay.sheets import Planned, UnknownSheetError, composed_sheets, sheets_of
 from benchlay.sheets.drafting import plan_picture
 from benchlay.tracing.front import OUTSIDE
 from benchlay.writers import dxf, svg
@@ -24,7 +24,7 @@ class Drawn:
         self.trace = trace(place(read(LAYOUTS / f"{name}.yaml")))
         self.zones = zones_of(self.trace, states=["as drawn"])
         self.picture = plan_picture(self.trace, self.zones)
-        (self.sheet,) = sheets_of(self.trace, self.zones)
+        ((self.sheet, _),) = sheets_of(self.trace, self.zones, only="plan")
 
 
 @pytest.fixture(scope="module", params=NAMES)
@@ -147,13 +147,37 @@ def test_no_note_is_lost_on_the_demo_sheets(drawn):
 
 
 def test_sheets_come_out_byte_by_byte_alike(drawn):
-    (again,) = sheets_of(drawn.trace, drawn.zones)
+    ((again, _),) = sheets_of(drawn.trace, drawn.zones, only="plan")
     assert svg.write(again) == svg.write(drawn.sheet)
     assert dxf.write(again) == dxf.write(drawn.sheet)
 
 
-def test_what_there_is_no_sheet_of_is_refused():
-    with pytest.raises(ValueError, match="no sheet 'room'"):
-        sheets_of(None, only=["room"])
-    assert sheets_of(None, only=[]) == []
-    assert tuple(SHEETS) == ("plan",)
+def test_what_there_is_no_sheet_of_is_refused(drawn):
+    with pytest.raises(UnknownSheetError, match="no sheet 'attic'"):
+        sheets_of(drawn.trace, drawn.zones, only="attic")
+
+
+def test_sheets_are_numbered_in_the_order_of_the_set_and_cutting_files_are_not(monkeypatch):
+    def shown(name, numbered=True):
+        return Planned(name, lambda number: (name, number), numbered)
+
+    kinds = {
+        "plan": lambda _: [shown("plan")],
+        "cut": lambda _: [shown("cut-east", numbered=False), shown("cut-west", numbered=False)],
+        "panel": lambda _: [shown("panel-east"), shown("panel-west")],
+        "room": lambda _: [],
+    }
+    monkeypatch.setattr("benchlay.sheets.SHEETS", kinds)
+    of = lambda only: [one.sheet for one in composed_sheets(None, only)]  # noqa: E731
+    assert of(None) == [
+        ("plan", "1/3"),
+        ("cut-east", ""),
+        ("cut-west", ""),
+        ("panel-east", "2/3"),
+        ("panel-west", "3/3"),
+    ]
+    assert of("panel") == [("panel-east", "2/3"), ("panel-west", "3/3")]
+    assert of("panel-west") == [("panel-west", "3/3")]
+    assert of("room") == []
+    with pytest.raises(UnknownSheetError, match="panel-east"):
+        of("panel-north")
