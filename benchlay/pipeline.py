@@ -23,6 +23,7 @@ from benchlay.report.model import LayoutErrors, Reported, Review
 
 if TYPE_CHECKING:
     from benchlay.report.details import TraceResult
+    from benchlay.report.model import Remedies
     from benchlay.results.review import Checked
     from benchlay.tracing import Trace
     from benchlay.zones import Zones
@@ -175,12 +176,30 @@ def review_files(
         )
     except LayoutError as error:
         return LayoutErrors(file, error.problems, _lines(data))
+    reviewed = reviewed._replace(remedies=_remedies(data, file, checked, reviewed, on))
     documents = {
         "findings.json": check_document([reviewed], version=__version__),
         "beams.json": trace_document(_traced(checked.trace, file, checked.states[0])),
     }
     files = {name: dumps(document).encode("ascii") for name, document in documents.items()}
     return reviewed, files | drawings
+
+
+def _remedies(data: bytes, file: str, checked: Checked, reviewed: Review, on: date) -> Remedies:
+    """Return what would clear escapes and strays, each tried out on the layout's text."""
+    from benchlay.checks import Context
+    from benchlay.remedies import Judged, offers
+    from benchlay.results.review import judge
+
+    def again(text: str) -> Judged | None:
+        try:
+            other = _checked(trace(place(read(file, text))), checked.states)
+        except LayoutError:
+            return None
+        return Judged(judge(other, on).findings, Context(other.trace, other.limits))
+
+    own = Judged(reviewed.findings, Context(checked.trace, checked.limits))
+    return offers(data.decode("utf-8-sig"), own, again)
 
 
 def draw_files(

@@ -36,6 +36,8 @@ def review_object(result: Review | LayoutErrors) -> dict[str, Json]:
         }
     fields = result._asdict()
     del fields["lines"]
+    if fields["remedies"] is None:  # they were not asked for
+        del fields["remedies"]
     written = {key: plain(value, key) for key, value in fields.items()}
     written["matrix"] = plain(matrix_of(result), "matrix")
     written["ledger"] = [_ledger(entry) for entry in result.ledger]

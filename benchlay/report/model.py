@@ -93,6 +93,28 @@ class LimitUsed(NamedTuple):
     accessible_J: float | None = None  # of each pulse; the power is their mean
 
 
+class Remedy(NamedTuple):
+    """A change that was tried out: it clears a finding and raises no other.
+
+    `kind` is screen, dump, panel, lid, coating, tilt or wedge, `yaml` what is to be pasted into
+    the layout, `clears_too` the other findings that it clears.
+    """
+
+    finding: str
+    kind: str
+    words: str
+    yaml: str
+    clears_too: tuple[str, ...] = ()
+
+
+class Remedies(NamedTuple):
+    """What would clear escapes and strays, what nothing clears, and how many were tried."""
+
+    offered: tuple[Remedy, ...] = ()
+    without: tuple[str, ...] = ()
+    tried: int = 0
+
+
 class Review(NamedTuple):
     """Everything that is said of one layout.
 
@@ -117,6 +139,7 @@ class Review(NamedTuple):
     matched: tuple[Match, ...] = ()
     handed_over: tuple[HandedOver, ...] = ()
     not_computed: tuple[str, ...] = ()
+    remedies: Remedies | None = None  # where they were asked for
     lines: tuple[str, ...] = ()
 
     @property

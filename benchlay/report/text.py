@@ -65,6 +65,7 @@ def _review_text(review: Review, ink: Ink) -> str:
     lines: list[str] = []
     for finding in review.findings:
         lines += _finding_lines(finding, review, ink)
+    lines += _remedy_lines(review)
     lines += matrix_lines(matrix_of(review))
     lines += _not_evaluated(review)
     lines += _limit_lines(review)
@@ -91,6 +92,22 @@ def _finding_lines(finding: Reported, review: Review, ink: Ink) -> Iterator[str]
     worth = finding.severity in _WORTH_ACCEPTING and not finding.check.startswith("accept-")
     if worth and not finding.accepted:
         yield f"  to accept: {accept_entry(finding)}"
+    yield ""
+
+
+def _remedy_lines(review: Review) -> Iterator[str]:
+    """Write the changes that were tried out, each with what is to be pasted."""
+    remedies = review.remedies
+    if remedies is None or not (remedies.offered or remedies.without):
+        return
+    if remedies.offered:
+        yield "tried out: each of these clears its finding and raises no other"
+    for remedy in remedies.offered:
+        too = f" (and {', '.join(remedy.clears_too)})" if remedy.clears_too else ""
+        yield f"  {remedy.finding}{too}: {tame(remedy.words)}"
+        yield from (f"      {tame(line)}" for line in remedy.yaml.split("\n"))
+    for finding in remedies.without:
+        yield f"  {finding}: no stop, panel, coating, tilt or wedge that was tried clears it alone"
     yield ""
 
 
