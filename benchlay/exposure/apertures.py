@@ -11,9 +11,11 @@ from __future__ import annotations
 
 import math
 
+from benchlay.exposure.broadcast import broadcast
 from benchlay.exposure.factors import check_duration, check_wavelength
 
 
+@broadcast
 def eye_aperture_mm(wavelength_nm: float, duration_s: float) -> float:
     """Diameter of the eye's limiting aperture, in mm.
 
@@ -42,11 +44,13 @@ def eye_aperture_mm(wavelength_nm: float, duration_s: float) -> float:
     return 1.5 * t**0.375 if t < 10.0 else 3.5
 
 
+@broadcast
 def skin_aperture_mm(wavelength_nm: float) -> float:
     """Diameter of the skin's limiting aperture, in mm."""
     return 3.5 if check_wavelength(wavelength_nm) < 1e5 else 11.0
 
 
+@broadcast
 def circle_area_m2(diameter_mm: float) -> float:
     """Area of a circle, in m2, from its diameter in mm.
 

@@ -10,6 +10,7 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import dataclass
 from types import MappingProxyType
+from typing import Protocol
 
 from benchlay.exposure.accessible import Pulse, default_time_base_s
 from benchlay.exposure.apertures import eye_aperture_mm
@@ -25,6 +26,7 @@ from benchlay.exposure.errors import OutOfRange
 from benchlay.exposure.factors import check_wavelength, is_retinal, is_visible
 from benchlay.exposure.limits import EDITION
 from benchlay.exposure.trains import Train, rules
+from benchlay.named import NamedTuple
 
 _GLANCE_S = 0.25
 # Where the standard's two conditions of measurement apply, nm (from memory).
@@ -78,7 +80,7 @@ class Classification:
     naked_eye, binoculars : float
         What conditions 3 and 1 of the standard collect, in `unit`.
     source : str
-        Edition and tables.
+        Edition, tables, and which limits were recalled.
     assumptions, cautions : tuple of str
         To be printed with the result.
     """
@@ -100,8 +102,15 @@ class Classification:
         return f"within the limit of class {self.name} as modelled"
 
 
+class Beam(Protocol):
+    """What a classification asks of a beam: any form of beam that can answer will do."""
+
+    def share(self, aperture_mm: float, distance_m: float) -> float:
+        """Share of the power through a circle at its worst place, at a distance from the exit."""
+
+
 def classify_continuous(
-    wavelength_nm: float, power_w: float, beam: GaussianExit | None = None
+    wavelength_nm: float, power_w: float, beam: Beam | None = None
 ) -> Classification:
     """Classify continuous light.
 
@@ -109,8 +118,8 @@ def classify_continuous(
     ----------
     wavelength_nm, power_w : float
         Vacuum wavelength, nm, and power, W.
-    beam : GaussianExit, optional
-        Without it all power is taken through the apertures.
+    beam : Beam, optional
+        Such as `GaussianExit`. Without it all power is taken through the apertures.
 
     Raises
     ------
@@ -122,13 +131,11 @@ def classify_continuous(
     >>> classify_continuous(532.0, 4e-3).name
     '3R'
     """
-    limits = {str(level): _continuous_limit(level, wavelength_nm) for level in Level}
+    limits = {level: _continuous_limit(level, wavelength_nm) for level in Level}
     return _classified(wavelength_nm, power_w, "W", limits, beam)
 
 
-def classify_pulsed(
-    wavelength_nm: float, pulse: Pulse, beam: GaussianExit | None = None
-) -> Classification:
+def classify_pulsed(wavelength_nm: float, pulse: Pulse, beam: Beam | None = None) -> Classification:
     """Classify pulses: a train, or one single pulse at a rate of zero.
 
     Parameters are those of `classify_continuous`, with the pulses for the power.
@@ -138,7 +145,7 @@ def classify_pulsed(
     OutOfRange
         If no limit exists, or the pulses overlap.
     """
-    limits = {str(level): _pulsed_limit(level, wavelength_nm, pulse) for level in Level}
+    limits = {level: _pulsed_limit(level, wavelength_nm, pulse) for level in Level}
     return _classified(wavelength_nm, pulse.energy_j, "J", limits, beam)
 
 
@@ -150,23 +157,28 @@ def time_base_s(level: Level, wavelength_nm: float) -> float:
     return default_time_base_s(wavelength_nm)
 
 
-def _continuous_limit(level: Level, wavelength_nm: float) -> float | None:
+class _Found(NamedTuple):
+    value: float
+    from_memory: bool
+
+
+def _continuous_limit(level: Level, wavelength_nm: float) -> _Found | None:
     base_s = time_base_s(level, wavelength_nm)
     limit = emission_limit(level, wavelength_nm, base_s)
-    return None if limit is None else limit.power_w(base_s)
+    return None if limit is None else _Found(limit.power_w(base_s), limit.from_memory)
 
 
-def _pulsed_limit(level: Level, wavelength_nm: float, pulse: Pulse) -> float | None:
+def _pulsed_limit(level: Level, wavelength_nm: float, pulse: Pulse) -> _Found | None:
     base_s = time_base_s(level, wavelength_nm)
     train = Train(pulse.duration_s, pulse.rate_hz)
     whole = emission_limit(level, wavelength_nm, base_s)
     if whole is None:
         return None
     if train.pulse_s >= base_s:
-        return whole.power_w(base_s) * train.pulse_s
+        return _Found(whole.power_w(base_s) * train.pulse_s, whole.from_memory)
 
-    def energy_j(duration_s: float) -> float:
-        return _present(emission_limit(level, wavelength_nm, duration_s)).energy_j(duration_s)
+    def limit(duration_s: float) -> Emission:
+        return _present(emission_limit(level, wavelength_nm, duration_s))
 
     def thermal_j(duration_s: float) -> float:
         return thermal_emission_j(level, wavelength_nm, duration_s)
@@ -175,11 +187,12 @@ def _pulsed_limit(level: Level, wavelength_nm: float, pulse: Pulse) -> float | N
     found = rules(
         train,
         base_s,
-        energy_j,
+        lambda t: limit(t).energy_j(t),
         wavelength_nm=wavelength_nm,
         thermal_of=thermal_j if lowered else None,
     )
-    return min(rule.per_pulse for rule in found)
+    least = min(found, key=lambda rule: rule.per_pulse)
+    return _Found(least.per_pulse, least.c5 != 1.0 or limit(least.duration_s).from_memory)
 
 
 def _present(limit: Emission | None) -> Emission:
@@ -193,12 +206,14 @@ def _classified(
     wavelength_nm: float,
     emitted: float,
     unit: str,
-    limits: dict[str, float | None],
-    beam: GaussianExit | None,
+    found: dict[Level, _Found | None],
+    beam: Beam | None,
 ) -> Classification:
     if not 0.0 <= emitted < float("inf"):
         msg = f"what is emitted must be finite and not negative, got {emitted:g} {unit}"
         raise OutOfRange(msg)
+    limits = {str(k): None if one is None else one.value for k, one in found.items()}
+    recalled = [str(k) for k, one in found.items() if one is not None and one.from_memory]
     notes = _ASSUMPTIONS
     naked = binoculars = emitted
     if beam is None:
@@ -213,12 +228,16 @@ def _classified(
         limits=MappingProxyType(limits),
         naked_eye=naked,
         binoculars=binoculars,
-        source=f"{EDITION}, tables 3 to 8 (numbers of tables from memory)",
+        source=f"{EDITION}, tables 3 to 8 (numbers of tables from memory{_told(recalled)})",
         assumptions=notes,
     )
 
 
-def _shares(wavelength_nm: float, beam: GaussianExit) -> tuple[float, float]:
+def _told(recalled: list[str]) -> str:
+    return f"; limits of class {', '.join(recalled)} from memory" if recalled else ""
+
+
+def _shares(wavelength_nm: float, beam: Beam) -> tuple[float, float]:
     """Share that conditions 3 and 1 collect; without a condition 1, that of 3 twice."""
     wl = check_wavelength(wavelength_nm)
     # The aperture of the longest exposure is the largest, so it never collects less

@@ -20,6 +20,7 @@ from __future__ import annotations
 import math
 
 from benchlay.exposure.apertures import circle_area_m2
+from benchlay.exposure.broadcast import broadcast
 from benchlay.exposure.errors import OutOfRange
 from benchlay.named import NamedTuple
 
@@ -52,6 +53,7 @@ def _finite(name: str, value: float) -> float:
     return value
 
 
+@broadcast
 def gaussian_fraction(aperture_radius: float, w: float) -> float:
     """Share of a Gaussian beam's power through a centred circle, 1 - exp(-2 a^2/w^2).
 
@@ -67,11 +69,13 @@ def gaussian_fraction(aperture_radius: float, w: float) -> float:
     return -math.expm1(-2.0 * ratio * ratio)
 
 
+@broadcast
 def mean_irradiance_w_m2(power_w: float, diameter_mm: float) -> float:
     """Power over the area of a circle, W/m2."""
     return power_w / circle_area_m2(_positive("the diameter", diameter_mm))
 
 
+@broadcast
 def nohd_linear_m(
     power_w: float,
     mpe_w_m2: float,
@@ -99,6 +103,7 @@ def nohd_linear_m(
     return (wide - start) / phi if phi > 0.0 else math.inf
 
 
+@broadcast
 def nohd_quadratic_m(
     power_w: float,
     mpe_w_m2: float,
@@ -177,6 +182,7 @@ def hazardous_span(
     return Span(max(0.0, waist_at - reach), waist_at + reach)
 
 
+@broadcast
 def nohd_exact_m(
     power_w: float,
     mpe_w_m2: float,
@@ -198,6 +204,7 @@ def nohd_exact_m(
     return 0.0 if span is None else span.end_m
 
 
+@broadcast
 def diffuse_distance_m(
     power_w: float,
     mpe_w_m2: float,

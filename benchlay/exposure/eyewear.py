@@ -17,6 +17,7 @@ import math
 from enum import StrEnum
 from typing import Literal
 
+from benchlay.exposure.broadcast import broadcast
 from benchlay.exposure.errors import OutOfRange
 from benchlay.exposure.factors import check_wavelength
 from benchlay.named import NamedTuple
@@ -78,6 +79,7 @@ def mode_for(duration_s: float) -> Mode:
     return Mode.I if duration_s <= 0.25 else Mode.D  # noqa: PLR2004 - the standard's
 
 
+@broadcast
 def optical_density(exposure: float, limit: float) -> float:
     """Density that weakens an exposure to the limit; 0 if it is already below.
 
@@ -158,6 +160,7 @@ def scale_level(wavelength_nm: float, mode: Mode, load: float) -> int | None:
     return None
 
 
+@broadcast
 def diameter_factor(d63_mm: float) -> float:
     """Factor F = d^1.7 for what a filter bears over a large spot (from memory).
 
@@ -177,6 +180,7 @@ def diameter_factor(d63_mm: float) -> float:
     return math.pow(d63_mm, 1.7) if d63_mm > 1.0 else 1.0
 
 
+@broadcast
 def continuous_load_w_m2(power_w: float, d63_mm: float) -> float:
     """Irradiance to look up for continuous light, the diameter's factor applied, W/m2.
 
@@ -193,6 +197,7 @@ def continuous_load_w_m2(power_w: float, d63_mm: float) -> float:
     return irradiance * (factor if strong else 1.0)
 
 
+@broadcast
 def train_factor(rate_hz: float) -> float:
     """Factor N^(1/4) for repeated pulses, N counted over 5 s, at least 1."""
     return math.pow(max(1.0, rate_hz * _TRAIN_S), 0.25)

@@ -1,7 +1,8 @@
 """Correction factors and time breakpoints of IEC 60825-1:2014.
 
 Every interval is [low, high): a value at a boundary belongs to the row that begins there.
-Wavelengths are vacuum wavelengths in nm, durations in s, angles in mrad.
+Wavelengths are vacuum wavelengths in nm, durations in s, angles in mrad. The factors take
+arrays as well, which broadcast (`benchlay.exposure.broadcast`).
 Factors marked "from memory" were recalled from table 9 and clause 4.3 of the 2014
 edition; the others stand in public texts as well.
 
@@ -20,6 +21,7 @@ from __future__ import annotations
 
 import math
 
+from benchlay.exposure.broadcast import broadcast
 from benchlay.exposure.errors import OutOfRange
 
 SHORTEST_NM = 180.0
@@ -113,29 +115,34 @@ def is_visible(wavelength_nm: float) -> bool:
     return VISIBLE_NM[0] <= wavelength_nm < VISIBLE_NM[1]
 
 
+@broadcast
 def c1_j_m2(duration_s: float) -> float:
     """Thermal dose of the ultraviolet, C1 = 5600 t^(1/4), in J/m2."""
     return 5.6e3 * math.pow(duration_s, 0.25)
 
 
+@broadcast
 def c2_j_m2(wavelength_nm: float) -> float:
     """Photochemical dose C2 from 180 to 315 nm, in J/m2 (from memory)."""
     _inside(wavelength_nm, 180.0, 315.0, "C2")
     return 30.0 if wavelength_nm < 302.5 else math.pow(10.0, 0.2 * (wavelength_nm - 295.0))
 
 
+@broadcast
 def t1_s(wavelength_nm: float) -> float:
     """Time at which C1 reaches C2, 302.5 to 315 nm, in s (from memory)."""
     _inside(wavelength_nm, 302.5, 315.0, "T1")
     return 1e-15 * math.pow(10.0, 0.8 * (wavelength_nm - 295.0))
 
 
+@broadcast
 def c3(wavelength_nm: float) -> float:
     """Photochemical factor C3 from 400 to 600 nm."""
     _inside(wavelength_nm, 400.0, 600.0, "C3")
     return 1.0 if wavelength_nm < 450.0 else math.pow(10.0, 0.02 * (wavelength_nm - 450.0))
 
 
+@broadcast
 def c4(wavelength_nm: float) -> float:
     """Absorption factor C4 from 400 to 1400 nm."""
     _inside(wavelength_nm, *RETINA_NM, "C4")
@@ -144,6 +151,7 @@ def c4(wavelength_nm: float) -> float:
     return math.pow(10.0, 0.002 * (wavelength_nm - 700.0)) if wavelength_nm < 1050.0 else 5.0
 
 
+@broadcast
 def c7(wavelength_nm: float) -> float:
     """Factor C7 for absorption before the retina, 400 to 1400 nm (from memory)."""
     _inside(wavelength_nm, *RETINA_NM, "C7")
@@ -154,6 +162,7 @@ def c7(wavelength_nm: float) -> float:
     return 8.0 + math.pow(10.0, 0.04 * (wavelength_nm - 1250.0))
 
 
+@broadcast
 def alpha_max_mrad(duration_s: float) -> float:
     """Angle beyond which a larger source brings no relief, in mrad (from memory)."""
     if duration_s < 625e-6:
@@ -161,6 +170,7 @@ def alpha_max_mrad(duration_s: float) -> float:
     return 200.0 * math.sqrt(duration_s) if duration_s < 0.25 else _ALPHA_LARGEST_MRAD
 
 
+@broadcast
 def c6(alpha_mrad: float, duration_s: float) -> float:
     """Extended-source factor C6; 1 for a source of 1.5 mrad or less.
 
@@ -176,6 +186,7 @@ def c6(alpha_mrad: float, duration_s: float) -> float:
     return min(alpha_mrad, alpha_max_mrad(duration_s)) / ALPHA_MIN_MRAD
 
 
+@broadcast
 def t2_s(alpha_mrad: float) -> float:
     """Time T2 from which eye movements keep the thermal limit constant, in s."""
     if alpha_mrad <= ALPHA_MIN_MRAD:
@@ -185,6 +196,7 @@ def t2_s(alpha_mrad: float) -> float:
     return 10.0 * math.pow(10.0, (alpha_mrad - ALPHA_MIN_MRAD) / 98.5)
 
 
+@broadcast
 def gamma_ph_mrad(duration_s: float) -> float:
     """Return the acceptance angle of the photochemical limit, in mrad."""
     if duration_s < 100.0:
@@ -192,6 +204,7 @@ def gamma_ph_mrad(duration_s: float) -> float:
     return 1.1 * math.sqrt(duration_s) if duration_s < 1e4 else 110.0
 
 
+@broadcast
 def ti_s(wavelength_nm: float) -> float:
     """Time Ti within which pulses act as one, 400 nm to 1 mm, in s (from memory)."""
     if not RETINA_NM[0] <= wavelength_nm <= LONGEST_NM:
@@ -203,6 +216,7 @@ def ti_s(wavelength_nm: float) -> float:
     return 1e-7
 
 
+@broadcast
 def c5(
     pulses: float,
     pulse_s: float,

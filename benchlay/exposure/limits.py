@@ -11,7 +11,10 @@ dangerous; the standard, local rules and the laser safety officer decide.
 
 from __future__ import annotations
 
+from typing import TYPE_CHECKING
+
 from benchlay.exposure.apertures import eye_aperture_mm, skin_aperture_mm
+from benchlay.exposure.broadcast import broadcast, broadcast_as
 from benchlay.exposure.errors import OutOfRange
 from benchlay.exposure.factors import (
     ALPHA_MIN_MRAD,
@@ -34,6 +37,9 @@ from benchlay.exposure.tables import (
     ultraviolet,
 )
 from benchlay.named import NamedTuple
+
+if TYPE_CHECKING:
+    from benchlay.exposure.broadcast import Floats, Words
 
 EDITION = "IEC 60825-1:2014"
 _ANTERIOR_FROM_NM = 1250.0
@@ -82,11 +88,39 @@ class Limit(NamedTuple):
         return self.value if self.unit == IRRADIANCE else self.value / self.duration_s
 
 
+class Limits(NamedTuple):
+    """Limits of arrays of questions: the fields of `Limit` as arrays of one shape.
+
+    `assumptions` lists what applies to any of them.
+    """
+
+    value: Floats
+    unit: Words
+    governs: Words
+    wavelength_nm: Floats
+    duration_s: Floats
+    aperture_mm: Floats
+    source: Words
+    assumptions: tuple[str, ...]
+
+    @property
+    def dose_j_m2(self) -> Floats:
+        """The limits as radiant exposures over their durations, J/m2."""
+        over_time: Floats = 1.0 * (self.unit == IRRADIANCE)
+        return self.value * self.duration_s**over_time
+
+    @property
+    def irradiance_w_m2(self) -> Floats:
+        """The limits as irradiances, even over their durations, W/m2."""
+        return self.dose_j_m2 / self.duration_s
+
+
 def _source(table: str, cell: Cell) -> str:
     number = "this value from memory" if cell.from_memory else "value as in public texts"
     return f"{EDITION}, table {table} (table number from memory; {number})"
 
 
+@broadcast_as(Limits)
 def eye_limit(
     wavelength_nm: float, duration_s: float, *, alpha_mrad: float = ALPHA_MIN_MRAD
 ) -> Limit:
@@ -165,6 +199,7 @@ def _governing(wl: float, t: float, alpha: float) -> tuple[Cell, tuple[str, ...]
     return min(candidates, key=lambda c: c.dose_j_m2(t)), tuple(notes)
 
 
+@broadcast
 def eye_thermal_limit_j_m2(
     wavelength_nm: float, duration_s: float, *, alpha_mrad: float = ALPHA_MIN_MRAD
 ) -> float:
@@ -179,6 +214,7 @@ def eye_thermal_limit_j_m2(
     return retina_thermal(wl, t, check_alpha(alpha_mrad)).dose_j_m2(t)
 
 
+@broadcast_as(Limits)
 def skin_limit(
     wavelength_nm: float, duration_s: float, *, exposed_area_m2: float | None = None
 ) -> Limit:

@@ -158,11 +158,12 @@ def _shorter_groups(
     """Yield groups of n pulses that last T_n = (n - 1)/rate + pulse.
 
     Between two breakpoints the limit is c t^p, so the share of a pulse has no minimum
-    inside (for p < 1 it rises then falls, for p >= 1 it rises): the ends suffice.
+    inside (for p < 1 it rises then falls, for p >= 1 it rises): the ends suffice. The
+    end of the exposure is one: its last pulse may end sooner than it does.
     """
     breaks_s = (ti_s(wavelength_nm), 625e-6, 0.25, 1.0, 10.0, t2_s(alpha_mrad), 100.0)
-    for end_s in breaks_s:
-        if not train.pulse_s < end_s < exposure_s:
+    for end_s in (*breaks_s, exposure_s):
+        if not train.pulse_s < end_s <= exposure_s:
             continue
         below = max(1.0, math.ceil((end_s - train.pulse_s) * train.rate_hz))
         for pulses in (below, below + 1.0):

@@ -179,3 +179,22 @@ def test_more_power_never_gives_a_lower_class(wl, power, more, w):
         weak = classify_continuous(wl, power, given_beam).name
         strong = classify_continuous(wl, power * more, given_beam).name
         assert ORDER.index(strong) >= ORDER.index(weak)
+
+
+def test_limits_that_rest_on_memory_are_named():
+    # 0.5 W, 5 mW and 1 mW stand in public texts, the limit of class 1 was recalled.
+    assert "limits of class 1 from memory" in classify_continuous(633.0, 1e-3).source
+    assert "limits of class 1, 3R from memory" in classify_continuous(1064.0, 1e-3).source
+    # From 400 to 450 nm the long limit of class 1 is published as 0.039 mW.
+    assert "limits of class" not in classify_continuous(440.0, 1e-3).source
+    # C5 is from memory, so is what it lowers; 0.5 W among 10 000 pulses is not.
+    fast = classify_pulsed(633.0, Pulse(1e-9, 1e-8, 1e4))
+    assert "limits of class 1, 2, 3R from memory" in fast.source
+
+
+def test_any_form_of_beam_is_classified():
+    class Half:
+        def share(self, aperture_mm, distance_m):
+            return 0.5
+
+    assert classify_continuous(633.0, 7.5e-4, Half()).name == "1"
