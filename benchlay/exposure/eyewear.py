@@ -17,6 +17,7 @@ import math
 from enum import StrEnum
 from typing import Literal
 
+from benchlay.exposure.apertures import circle_area_m2
 from benchlay.exposure.broadcast import broadcast
 from benchlay.exposure.errors import OutOfRange
 from benchlay.exposure.factors import check_wavelength
@@ -192,9 +193,78 @@ def continuous_load_w_m2(power_w: float, d63_mm: float) -> float:
         If the diameter is not positive.
     """
     factor = diameter_factor(d63_mm)
-    irradiance = power_w / (math.pi / 4.0 * (d63_mm * 1e-3) ** 2)
+    irradiance = power_w / circle_area_m2(d63_mm)
     strong = power_w > _FACTOR_POWER_W or irradiance > _FACTOR_IRRADIANCE_W_M2
     return irradiance * (factor if strong else 1.0)
+
+
+class Scale(NamedTuple):
+    """Scale numbers that eyewear must bear, one for every mode that is asked of it.
+
+    A level is None where nothing up to LB10 suffices.
+    """
+
+    levels: tuple[tuple[Mode, int | None], ...]
+
+    @property
+    def text(self) -> str | None:
+        """As it is marked, such as ``D LB2 + R LB6``; None where no marking suffices."""
+        if any(level is None for _, level in self.levels):
+            return None
+        return " + ".join(f"{mode} LB{level}" for mode, level in self.levels)
+
+
+def continuous_scale(wavelength_nm: float, power_w: float, d63_mm: float) -> Scale:
+    """Scale number for continuous light.
+
+    Parameters
+    ----------
+    wavelength_nm, power_w : float
+        Vacuum wavelength, nm, and power, W.
+    d63_mm : float
+        Diameter that holds 63 % of the power, mm.
+
+    Examples
+    --------
+    >>> continuous_scale(532.0, 1.0, 2.0).text
+    'D LB6'
+    """
+    load = continuous_load_w_m2(power_w, d63_mm)
+    return Scale(((Mode.D, scale_level(wavelength_nm, Mode.D, load)),))
+
+
+def pulsed_scale(
+    wavelength_nm: float, energy_j: float, pulse_s: float, rate_hz: float, d63_mm: float
+) -> Scale:
+    """Scale numbers for pulses: one for the pulse, and one for the average power.
+
+    Parameters
+    ----------
+    wavelength_nm : float
+        Vacuum wavelength, nm.
+    energy_j, pulse_s, rate_hz : float
+        Energy of a pulse, J, its duration, s, and the rate, Hz; 0 for a single pulse.
+    d63_mm : float
+        Diameter that holds 63 % of the energy, mm.
+
+    Notes
+    -----
+    The pulse's load is multiplied by N^(1/4), N its number in 5 s. A pulse of more than
+    0.25 s is continuous light of its own power.
+
+    Examples
+    --------
+    >>> pulsed_scale(1064.0, 1e-3, 1e-8, 10.0, 2.0).text
+    'D LB3 + R LB6'
+    """
+    mode = mode_for(pulse_s)
+    if mode is Mode.D:
+        return continuous_scale(wavelength_nm, energy_j / pulse_s, d63_mm)
+    mean = continuous_scale(wavelength_nm, energy_j * rate_hz, d63_mm)
+    load = energy_j / circle_area_m2(d63_mm) * train_factor(rate_hz)
+    if scale_limit(wavelength_nm, mode, 1).unit == "W/m2":
+        load /= pulse_s
+    return Scale((*mean.levels, (mode, scale_level(wavelength_nm, mode, load))))
 
 
 @broadcast

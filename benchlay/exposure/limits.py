@@ -11,6 +11,7 @@ dangerous; the standard, local rules and the laser safety officer decide.
 
 from __future__ import annotations
 
+import math
 from typing import TYPE_CHECKING
 
 from benchlay.exposure.apertures import eye_aperture_mm, skin_aperture_mm
@@ -42,7 +43,7 @@ if TYPE_CHECKING:
     from benchlay.exposure.broadcast import Floats, Words
 
 EDITION = "IEC 60825-1:2014"
-_ANTERIOR_FROM_NM = 1250.0
+ANTERIOR_FROM_NM = 1250.0
 _LARGE_AREA_FROM_S = 10.0
 
 
@@ -189,7 +190,7 @@ def _governing(wl: float, t: float, alpha: float) -> tuple[Cell, tuple[str, ...]
                 f"the photochemical limit counts all light, not only that inside "
                 f"{gamma_ph_mrad(t):g} mrad"
             )
-    if wl >= _ANTERIOR_FROM_NM:
+    if wl >= ANTERIOR_FROM_NM:
         candidates.append(skin(wl, t)._replace(governs="anterior"))
         notes.append(
             "the front of the eye is held to the limit of the skin, averaged over 7 mm "
@@ -212,6 +213,22 @@ def eye_thermal_limit_j_m2(
     """
     wl, t = check_wavelength(wavelength_nm), check_duration(duration_s)
     return retina_thermal(wl, t, check_alpha(alpha_mrad)).dose_j_m2(t)
+
+
+@broadcast
+def eye_photochemical_limit_j_m2(
+    wavelength_nm: float, duration_s: float, *, alpha_mrad: float = ALPHA_MIN_MRAD
+) -> float:
+    """Photochemical limit of the retina alone, as a dose, J/m2; infinite where there is none.
+
+    Raises
+    ------
+    OutOfRange
+        If no limit of any kind exists.
+    """
+    wl, t = check_wavelength(wavelength_nm), check_duration(duration_s)
+    cell = retina_photochemical(wl, t, check_alpha(alpha_mrad))
+    return math.inf if cell is None else cell.dose_j_m2(t)
 
 
 @broadcast_as(Limits)

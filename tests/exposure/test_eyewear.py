@@ -10,9 +10,11 @@ from benchlay.exposure.errors import OutOfRange
 from benchlay.exposure.eyewear import (
     Mode,
     continuous_load_w_m2,
+    continuous_scale,
     diameter_factor,
     mode_for,
     optical_density,
+    pulsed_scale,
     scale_level,
     scale_limit,
     train_factor,
@@ -125,3 +127,34 @@ def test_the_level_is_the_smallest_that_bears_the_load(wl, mode, load):
         return
     assert load <= scale_limit(wl, mode, level).value
     assert level == 1 or load > scale_limit(wl, mode, level - 1).value
+
+
+def test_scale_of_continuous_light():
+    # 600 W, 40 mm: 4.8e5 W/m2 times 100 lies between LB6 and LB7 (a published example).
+    assert continuous_scale(1064.0, 600.0, 40.0).text == "D LB7"
+    assert continuous_scale(1064.0, 1e9, 1.0).text is None
+
+
+@pytest.mark.parametrize(
+    ("pulse_s", "letter"), [(1e-12, "M"), (1e-8, "R"), (1e-4, "I"), (0.25, "I")]
+)
+def test_pulses_have_a_level_for_themselves_and_one_for_their_mean(pulse_s, letter):
+    found = pulsed_scale(532.0, 1e-6, pulse_s, 1.0, 1.0)
+    assert [str(mode) for mode, _ in found.levels] == ["D", letter]
+
+
+def test_levels_of_a_train_by_hand():
+    # 1 mJ, 10 ns, 10 Hz in 2 mm: 318 J/m2, times 50^(1/4) = 846 J/m2; 10 mW are 3183 W/m2.
+    # LB6 bears 5000 J/m2 and LB5 500; LB3 bears 1e4 W/m2.
+    assert pulsed_scale(1064.0, 1e-3, 1e-8, 10.0, 2.0).text == "D LB3 + R LB6"
+
+
+def test_a_single_short_pulse_in_the_ultraviolet_is_judged_by_its_peak():
+    # 1 nJ in 100 fs over 1 mm2 (d = 1.128 mm): 1e-3 J/m2, 1e10 W/m2: LB1 bears 3e11 W/m2.
+    d63 = 2.0 / math.sqrt(math.pi)
+    assert pulsed_scale(248.0, 1e-9, 1e-13, 0.0, d63).levels[1] == (Mode.M, 1)
+    assert pulsed_scale(248.0, 1e-7, 1e-13, 0.0, d63).levels[1] == (Mode.M, 2)
+
+
+def test_a_long_pulse_is_continuous_light_of_its_own_power():
+    assert pulsed_scale(532.0, 1.0, 0.5, 0.1, 2.0) == continuous_scale(532.0, 2.0, 2.0)
