@@ -28,8 +28,6 @@ _LATER = {
     "compare": "what changed between two revisions",
     "watch": "a local page that follows a layout while it is edited",
     "new": "a first layout to start from",
-    "explain": "what a check or a kind of element means",
-    "schema": "JSON Schema of the layout language, for editors",
 }
 
 
@@ -75,6 +73,8 @@ def _run(arguments: Sequence[str]) -> int:
         "check": commands.run_check,
         "trace": commands.run_trace,
         "draw": commands.run_draw,
+        "explain": commands.run_explain,
+        "schema": commands.run_schema,
     }[options.command]
     if getattr(options, "on", date.min) is None:
         options.on = date.today()  # the one clock of the program
@@ -161,6 +161,8 @@ def _parser(first: str) -> argparse.ArgumentParser:
         "check": (_add_check, "findings only; writes nothing else"),
         "trace": (_add_trace, "the beams and where their power goes"),
         "draw": (_add_draw, "drawings only"),
+        "explain": (_add_explain, "what a check or a kind of element means"),
+        "schema": (_add_nothing, "JSON Schema of the layout language, for editors"),
     }
     later = _LATER
     if first in declared:
@@ -206,6 +208,14 @@ def _add_draw(parser: argparse.ArgumentParser) -> None:
     _add_output(parser)
     parser.add_argument("--sheet", metavar="NAME", help="one sheet only, such as plan")
     parser.add_argument("--format", choices=("dxf", "svg", "pdf"), help="one format only")
+
+
+def _add_explain(parser: argparse.ArgumentParser) -> None:
+    parser.add_argument("name", nargs="?", help="a check or a kind (all of them)")
+
+
+def _add_nothing(parser: argparse.ArgumentParser) -> None:
+    """Declare a command that takes no arguments."""
 
 
 def _add_layouts(parser: argparse.ArgumentParser) -> None:

@@ -126,6 +126,26 @@ def run_draw(options: Namespace, ink: Ink) -> Outcome:
     return Outcome(Status.NOTHING, "".join(f"{path}\n" for path in written))
 
 
+def run_explain(options: Namespace, ink: Ink) -> Outcome:
+    """Say what a check or a kind means; list them all where none is named."""
+    from benchlay.report.explain import explain, listing, unknown
+
+    if options.name is None:
+        return Outcome(Status.NOTHING, listing())
+    page = explain(options.name)
+    if page is None:
+        return Outcome(Status.WRONG, err=unknown(options.name))
+    return Outcome(Status.NOTHING, page)
+
+
+def run_schema(options: Namespace, ink: Ink) -> Outcome:
+    """Write the JSON Schema of the layout language."""
+    from benchlay.layout.schema import schema
+    from benchlay.report.json_out import dumps
+
+    return Outcome(Status.NOTHING, dumps(schema()))
+
+
 def run_review(options: Namespace, ink: Ink) -> Outcome:
     """Do the main job: everything of every layout, one folder each."""
     folders = _folders(options.layouts, options.output)
