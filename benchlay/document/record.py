@@ -10,7 +10,6 @@ from collections.abc import Collection
 from collections.abc import Mapping as AbstractMapping
 from typing import Any, ClassVar, NoReturn, Self, TypeVar, dataclass_transform
 
-from benchlay.document.describe import schema_of
 from benchlay.document.form import Failed, Form, Reader, show_plainly
 from benchlay.document.keys import REQUIRED, Key, key
 from benchlay.document.nodes import Mapping, Node, Scalar
@@ -257,4 +256,6 @@ class RecordForm(Form[R]):
 
     def schema(self) -> dict[str, Any]:
         """Give the schema of the record."""
+        from benchlay.document.describe import schema_of
+
         return schema_of(self.cls, extra=self.extra)

@@ -16,7 +16,6 @@ from benchlay.document.span import Span
 from benchlay.document.tree import Broken, Mapping, Node, Scalar, Sequence
 from benchlay.document.unseen import UNSEEN, has_tabs, place, without_unseen
 from benchlay.document.words import quote
-from benchlay.document.yaml_errors import explain, too_deep
 
 MAX_DEPTH = 50
 MAX_NODES = 200_000
@@ -78,6 +77,8 @@ def parse(text: str, file: str, problems: Problems) -> Node | None:
     try:
         builder.run(yaml.parse(text, Loader=_LOADER))
     except yaml.YAMLError as error:
+        from benchlay.document.yaml_errors import explain
+
         explain(error, file, problems, MAX_DEPTH)
         return None
     if builder.stopped:
@@ -216,6 +217,8 @@ class _Builder:
     def _open(self, event: yaml.CollectionStartEvent) -> None:
         span = self._counted(event)
         if len(self._stack) >= MAX_DEPTH:
+            from benchlay.document.yaml_errors import too_deep
+
             self._stop(span, *too_deep(MAX_DEPTH))
             return
         frame = self._stack[-1] if self._stack else None

@@ -12,22 +12,17 @@ from benchlay.exposure.accessible import (
     accessible_limit,
     default_time_base_s,
 )
-from benchlay.exposure.cautions import CAUTIONS
 from benchlay.exposure.errors import OutOfRange
 from benchlay.exposure.limits import EDITION, Limit, eye_limit, skin_limit
-from benchlay.exposure.trains import Train, pulse_limit
 
 __all__ = [
-    "CAUTIONS",
     "EDITION",
     "AccessibleLimit",
     "Limit",
     "OutOfRange",
     "Pulse",
-    "Train",
     "accessible_limit",
     "default_time_base_s",
     "eye_limit",
-    "pulse_limit",
     "skin_limit",
 ]

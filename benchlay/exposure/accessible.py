@@ -8,6 +8,7 @@ of a train of such pulses; the energy of one pulse is given beside it.
 from __future__ import annotations
 
 import math
+from typing import TYPE_CHECKING
 
 from benchlay.exposure.apertures import circle_area_m2
 from benchlay.exposure.errors import OutOfRange
@@ -18,8 +19,10 @@ from benchlay.exposure.factors import (
     is_visible,
 )
 from benchlay.exposure.limits import EDITION, Limit, eye_limit
-from benchlay.exposure.trains import Train, as_limit, eye_rules
 from benchlay.named import NamedTuple
+
+if TYPE_CHECKING:
+    from benchlay.exposure.trains import Train
 
 _LONG_VISIBLE_S = 100.0
 _LONG_ULTRAVIOLET_S = 3e4
@@ -185,6 +188,8 @@ def _pulsed(wl: float, exposure_s: float, pulse: Pulse, notes: tuple[str, ...]) 
     if not 0.0 <= pulse.energy_j < math.inf:
         msg = f"a pulse's energy must be 0 J or more, got {pulse.energy_j:g} J"
         raise OutOfRange(msg)
+    from benchlay.exposure.trains import Train
+
     train = Train(pulse.duration_s, pulse.rate_hz)
     if pulse.duration_s >= exposure_s:
         limit = eye_limit(wl, exposure_s)
@@ -211,6 +216,8 @@ def _pulsed(wl: float, exposure_s: float, pulse: Pulse, notes: tuple[str, ...]) 
 
 
 def _strictest(wl: float, exposure_s: float, train: Train) -> Limit:
+    from benchlay.exposure.trains import as_limit, eye_rules
+
     limits = [
         as_limit(eye_limit(wl, rule.duration_s), rule) for rule in eye_rules(wl, exposure_s, train)
     ]

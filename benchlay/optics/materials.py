@@ -18,23 +18,19 @@ collection of such formulas, release of 2026.
 
 from __future__ import annotations
 
-from dataclasses import dataclass
 from typing import TypeAlias
 
 import numpy as np
 from numpy.typing import ArrayLike, NDArray
 
-from benchlay.optics.metals import METALS, Metal
-
-__all__ = ["AIR_RANGE_NM", "MATERIALS", "METALS", "Material", "Metal", "air_index"]
+from benchlay.named import NamedTuple
 
 Floats: TypeAlias = NDArray[np.float64]
 
 _UM_PER_NM = 1e-3
 
 
-@dataclass(frozen=True, slots=True)
-class Material:
+class Material(NamedTuple):
     """A transparent material with its dispersion formula and where it comes from."""
 
     name: str
@@ -46,7 +42,7 @@ class Material:
     relative_to_air: bool = True
     note: str = ""
 
-    def index(self, wavelength_nm: ArrayLike) -> Floats:
+    def index_at(self, wavelength_nm: ArrayLike) -> Floats:
         """Index at vacuum wavelengths, relative to air if `relative_to_air`.
 
         Parameters
@@ -61,7 +57,7 @@ class Material:
 
         Examples
         --------
-        >>> round(float(MATERIALS["BK7"].index(632.8)), 5)
+        >>> round(float(MATERIALS["BK7"].index_at(632.8)), 5)
         1.51509
         """
         wavelength = np.asarray(wavelength_nm, dtype=np.float64)
@@ -80,7 +76,7 @@ class Material:
         A formula that is relative to air is multiplied by the index of air at
         20 degrees C. NaN outside `range_nm`.
         """
-        index = self.index(wavelength_nm)
+        index = self.index_at(wavelength_nm)
         return index * air_index(wavelength_nm) if self.relative_to_air else index
 
 

@@ -9,19 +9,19 @@ mirrors differ more.
 
 from __future__ import annotations
 
-from dataclasses import dataclass
 from typing import TypeAlias
 
 import numpy as np
 from numpy.typing import ArrayLike, NDArray
+
+from benchlay.named import NamedTuple
 
 Complexes: TypeAlias = NDArray[np.complex128]
 
 _NM_PER_UM = 1e3
 
 
-@dataclass(frozen=True, slots=True)
-class Metal:
+class Metal(NamedTuple):
     """A metal by its table of optical constants."""
 
     name: str
@@ -30,7 +30,7 @@ class Metal:
     table: tuple[tuple[float, float, float], ...]  # wavelength in um, n, k
     note: str = ""
 
-    def index(self, wavelength_nm: ArrayLike) -> Complexes:
+    def index_at(self, wavelength_nm: ArrayLike) -> Complexes:
         """Complex index n + ik at vacuum wavelengths.
 
         Parameters
@@ -45,7 +45,7 @@ class Metal:
 
         Examples
         --------
-        >>> complex(METALS["gold"].index(616.8).round(9))
+        >>> complex(METALS["gold"].index_at(616.8).round(9))
         (0.21+3.272j)
         """
         nodes = np.array(self.table).T

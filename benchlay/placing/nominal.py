@@ -11,7 +11,6 @@ from benchlay.elements._kind import Acts, Face, Geometry, Inside, Step
 from benchlay.geometry.axes import in_plane_axes
 from benchlay.named import NamedTuple
 from benchlay.optics.rays import reflect, refract
-from benchlay.optics.thin_lens import bend
 from benchlay.placing.media import Media
 from benchlay.placing.pose import Pose, Vector, add, dot, unit
 
@@ -215,6 +214,8 @@ def _lensed(
     pose: Pose,
 ) -> Vector:
     """Bend by one face of the ideal thin lens: indices before and behind, and its power."""
+    from benchlay.optics.thin_lens import bend
+
     forward, left, up = pose.axes()
     along = dot(direction, forward)
     from_centre = add(point, pose.point(face.origin), -1.0)

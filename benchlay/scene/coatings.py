@@ -8,7 +8,6 @@ from benchlay.elements._coating import Coating
 from benchlay.layout.layout import Layout
 from benchlay.layout.routes import Route
 from benchlay.named import NamedTuple
-from benchlay.optics.metals import METALS
 from benchlay.scene.tables import Mode
 
 
@@ -58,7 +57,9 @@ def before_unknown(figures: Figures) -> Figures:
 
 
 def _metal(name: str, wavelength_nm: float) -> Figures:
-    index = complex(METALS[name].index(wavelength_nm))
+    from benchlay.optics.metals import METALS
+
+    index = complex(METALS[name].index_at(wavelength_nm))
     if index != index:  # noqa: PLR0124 (NaN: the table does not cover this wavelength)
         # What the film does is not known: the larger hazard is that it reflects everything.
         return Figures(Mode.STATED, 1.0, 1.0, 0.0, 0.0, 0j, unstated=True)

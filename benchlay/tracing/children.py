@@ -13,7 +13,6 @@ from benchlay.tracing.faces import MIRRORED, Meeting, divide, plane_of_incidence
 from benchlay.tracing.front import OUTSIDE, REFLECTED, SPILLED, TRANSMITTED, Front
 from benchlay.tracing.handing import hand_over
 from benchlay.tracing.hits import FACE, NOTHING, SOLID, Hits
-from benchlay.tracing.returning import returned
 from benchlay.tracing.run_state import RunState
 from benchlay.tracing.section import Spills
 
@@ -121,7 +120,7 @@ def _from_faces(
     for kind, work in (
         (acts == _OPAQUE, _opaque),
         (acts == _PASSES, _passed),
-        (acts == _RETURNS, returned),
+        (acts == _RETURNS, _returned),
         (optic, _divided),
     ):
         some = kind.nonzero()[0]
@@ -157,6 +156,12 @@ def _passed(core: Front, face: Ints, rows: Ints, state: RunState, *, spilled: bo
         node=-1 if spilled else node,
         event=SPILLED if spilled else TRANSMITTED,
     )
+
+
+def _returned(core: Front, face: Ints, rows: Ints, state: RunState, *, spilled: bool) -> Front:
+    from benchlay.tracing.returning import returned
+
+    return returned(core, face, rows, state, spilled=spilled)
 
 
 def _divided(core: Front, face: Ints, rows: Ints, state: RunState, *, spilled: bool) -> Front:

@@ -12,7 +12,6 @@ import numpy as np
 from benchlay.named import NamedTuple
 from benchlay.optics import coherency, fresnel, moments
 from benchlay.optics.rays import bench_basis, cross, dot
-from benchlay.optics.thin_lens import bend, throw_back
 from benchlay.scene.tables import Flags, Floats, Ints, Mode, Scene
 
 _NORMAL = 1e-12  # below this sine of incidence the plane of incidence is not defined
@@ -133,6 +132,8 @@ def _reflected(meeting: Meeting, scene: Scene, j: Floats) -> Child:
     m = meeting.moments * MIRRORED
     lens = scene.fixed.lens.take(meeting.row)
     if lens.any():
+        from benchlay.optics.thin_lens import throw_back
+
         bulge = scene.faces.lens_curvature[meeting.row, meeting.wave]
         bulge = np.where(meeting.outward, bulge, -bulge)
         curved = _by_slope(meeting, scene, throw_back(*_slopes(meeting, scene), bulge), back=True)
@@ -151,6 +152,8 @@ def _transmitted(meeting: Meeting, scene: Scene, j: Floats) -> Child:
     axis = meeting.s
     lens = scene.fixed.lens.take(meeting.row)
     if lens.any():
+        from benchlay.optics.thin_lens import bend
+
         power = np.where(lens, scene.faces.lens_power[meeting.row, meeting.wave], 0.0)
         slope, offset = _slopes(meeting, scene)
         bent = bend(slope, offset, power, meeting.n_in, meeting.n_out)

@@ -14,9 +14,7 @@ from benchlay.optics import moments
 from benchlay.placing.placed import Placed
 from benchlay.scene.tables import SINK, Flags, Floats, Ints, Scene
 from benchlay.tracing.beams import Beams, Ledger, gathered
-from benchlay.tracing.bulk import passage
 from benchlay.tracing.children import children
-from benchlay.tracing.converting import converted
 from benchlay.tracing.coverage import (
     covered,
     face_covers,
@@ -30,7 +28,6 @@ from benchlay.tracing.front import OUTSIDE, Front
 from benchlay.tracing.handing import handing_of
 from benchlay.tracing.hits import FACE, Hits, inside_hits, nearest
 from benchlay.tracing.run_state import Leg, RunState
-from benchlay.tracing.scattering import follow_scattered
 from benchlay.tracing.section import cut_after, uncut
 from benchlay.tracing.ways import Ways
 
@@ -94,6 +91,8 @@ def run(front: Front, scene: Scene, ways: Ways, floor_w: Floats, placed: Placed)
             state.book(rest.parent - state.count, SINK["below-floor"], -1, rest.power)
         live = None if bounded.any() else feeding.next()
     if ways.scatterings:
+        from benchlay.tracing.scattering import follow_scattered
+
         follow_scattered(state, placed, lambda rays: _step(rays, state))
     traced = _finished(state) if state.legs else _dark(front)
     return Traced(*traced, bounded)
@@ -218,9 +217,13 @@ def _after_passage(front: Front, length: Floats, state: RunState) -> tuple[Front
     rows = np.flatnonzero(front.within != OUTSIDE)
     if not len(rows) or not scene.bulks.kind[front.within[rows]].any():
         return front, None
+    from benchlay.tracing.bulk import passage
+
     inside, made = front.take(rows), None
     j, lost = passage(inside, scene, length[rows])
     if len(scene.conversions.volume):
+        from benchlay.tracing.converting import converted
+
         kept, made = converted(inside, rows, length[rows], state)
         j = j * kept
     state.book(rows, SINK["absorbed"], scene.face_owner_name[front.face[rows]], lost)

@@ -2,7 +2,8 @@ import numpy as np
 import pytest
 
 from benchlay.optics import fresnel
-from benchlay.optics.materials import MATERIALS, METALS, air_index
+from benchlay.optics.materials import MATERIALS, air_index
+from benchlay.optics.metals import METALS
 
 NAMED = ["fused-silica", "BK7", "SF10", "SF11", "CaF2", "MgF2", "sapphire", "ZnSe"]
 NAMED += ["quartz", "calcite", "water"]
@@ -32,17 +33,17 @@ def test_every_name_of_the_layout_language_is_there():
     ],
 )
 def test_remembered_index(name, wavelength_nm, index, bound):
-    assert MATERIALS[name].index(wavelength_nm) == pytest.approx(index, abs=bound)
+    assert MATERIALS[name].index_at(wavelength_nm) == pytest.approx(index, abs=bound)
 
 
 @pytest.mark.parametrize("material", MATERIALS.values(), ids=MATERIALS)
 def test_index_is_sound_over_the_whole_range_and_refused_outside(material):
     low, high = material.range_nm
-    index = material.index(np.linspace(low, high, 500))
+    index = material.index_at(np.linspace(low, high, 500))
     assert (index > 1.0).all()
     assert (np.diff(index) < 0.0).all()  # normal dispersion: no resonance inside
-    assert np.isnan(material.index([low - 0.1, high + 0.1, np.nan])).all()
-    assert material.index(low) == index[0]
+    assert np.isnan(material.index_at([low - 0.1, high + 0.1, np.nan])).all()
+    assert material.index_at(low) == index[0]
 
 
 def test_only_water_is_absolute_and_birefringence_is_said():
@@ -53,8 +54,8 @@ def test_only_water_is_absolute_and_birefringence_is_said():
 
 def test_absolute_index_counts_air_once():
     glass, water = MATERIALS["BK7"], MATERIALS["water"]
-    assert glass.absolute_index(632.8) == glass.index(632.8) * air_index(632.8)
-    assert water.absolute_index(632.8) == water.index(632.8)
+    assert glass.absolute_index(632.8) == glass.index_at(632.8) * air_index(632.8)
+    assert water.absolute_index(632.8) == water.index_at(632.8)
 
 
 def test_air_is_held_beyond_its_formula_and_rises_towards_the_blue():
@@ -80,7 +81,7 @@ def test_air_is_held_beyond_its_formula_and_rises_towards_the_blue():
     ],
 )
 def test_mirror_lies_within_the_spread_of_sources(name, wavelength_nm, low, high):
-    index = METALS[name].index(wavelength_nm)
+    index = METALS[name].index_at(wavelength_nm)
     assert low <= fresnel.powers(1.0, index, 1.0).rs <= high
 
 
@@ -91,15 +92,15 @@ def test_metal_table_is_in_order_and_refused_outside(metal):
     assert (n > 0.0).all()
     assert (k > 0.0).all()
     low, high = metal.range_nm
-    assert np.isfinite(metal.index([low, high])).all()
-    outside = metal.index([low - 1.0, high + 1.0])
+    assert np.isfinite(metal.index_at([low, high])).all()
+    outside = metal.index_at([low - 1.0, high + 1.0])
     assert np.isnan(outside.real).all()
     assert np.isnan(outside.imag).all()
 
 
 @pytest.mark.parametrize("name", ["silver", "gold"])
 def test_joined_tables_differ_by_less_than_films_do(name):
-    ends = METALS[name].index(np.array([1937.0, 2066.0]))
+    ends = METALS[name].index_at(np.array([1937.0, 2066.0]))
     shares = fresnel.powers(1.0, ends, 1.0).rs
     assert np.ptp(shares) < 0.016
     assert shares.min() > 0.97
@@ -108,6 +109,6 @@ def test_joined_tables_differ_by_less_than_films_do(name):
 @pytest.mark.parametrize("shape", [(), (0,), (3,), (2, 2)])
 def test_any_shape_of_wavelengths(shape):
     wavelength = np.full(shape, 600.0)
-    assert MATERIALS["BK7"].index(wavelength).shape == shape
-    assert METALS["gold"].index(wavelength).shape == shape
+    assert MATERIALS["BK7"].index_at(wavelength).shape == shape
+    assert METALS["gold"].index_at(wavelength).shape == shape
     assert air_index(wavelength).shape == shape

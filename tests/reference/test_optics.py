@@ -12,7 +12,8 @@ import numpy as np
 import pytest
 
 from benchlay.optics import coherency, fresnel, moments, rays
-from benchlay.optics.materials import MATERIALS, METALS, air_index
+from benchlay.optics.materials import MATERIALS, air_index
+from benchlay.optics.metals import METALS
 
 ENTRIES = {
     entry["id"]: entry
@@ -28,17 +29,17 @@ F_LINE, D_LINE, C_LINE = 486.1327, 587.5618, 656.2725
 
 def index(i):
     material = MATERIALS[NAMES[i["material"]]]
-    return material.index(1e3 * i["wavelength_um"])
+    return material.index_at(1e3 * i["wavelength_um"])
 
 
 def abbe(i):
-    f, d, c = MATERIALS[NAMES[i["material"]]].index([F_LINE, D_LINE, C_LINE])
+    f, d, c = MATERIALS[NAMES[i["material"]]].index_at([F_LINE, D_LINE, C_LINE])
     return (d - 1.0) / (f - c)
 
 
 def water_in_air(i):
     wavelength_nm = 1e3 * i["wavelength_um"]
-    return MATERIALS["water"].index(wavelength_nm) / air_index(wavelength_nm)
+    return MATERIALS["water"].index_at(wavelength_nm) / air_index(wavelength_nm)
 
 
 def air(i):
@@ -86,7 +87,7 @@ def rhomb(i):
 
 
 def metal_index(i):
-    n = METALS[SYMBOLS[i["metal"]]].index(1e3 * i["wavelength_um"])
+    n = METALS[SYMBOLS[i["metal"]]].index_at(1e3 * i["wavelength_um"])
     return n.real if i["part"] == "n" else n.imag
 
 
@@ -97,7 +98,7 @@ def tabulated_k(i):
 
 
 def metal_mirror(i):
-    n = METALS[SYMBOLS[i["metal"]]].index(1e3 * i["wavelength_um"])
+    n = METALS[SYMBOLS[i["metal"]]].index_at(1e3 * i["wavelength_um"])
     return fresnel.powers(1.0, n, 1.0).rs
 
 

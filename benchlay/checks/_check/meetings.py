@@ -6,7 +6,6 @@ from collections.abc import Iterator
 
 import numpy as np
 
-from benchlay.checks._check.behind import met_before_end
 from benchlay.checks._check.routes import Routes
 from benchlay.elements._kind import Acts
 from benchlay.named import NamedTuple
@@ -107,7 +106,11 @@ class Meetings:
         if number < 0:  # the bench top, or nothing at all
             here &= np.isin(s.sink, [sink for sink, _ in parts])
         solids = np.flatnonzero(here)
-        return not len(solids) or not met_before_end(self._trace, beam, solids)
+        if not len(solids):
+            return True
+        from benchlay.checks._check.behind import met_before_end
+
+        return not met_before_end(self._trace, beam, solids)
 
     def _loss(
         self, beam: int, name: str | None, parts: list[tuple[int, float]], past_w: float

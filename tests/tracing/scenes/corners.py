@@ -92,6 +92,6 @@ def beside_its_clear_opening_is_its_rim():
 @scene
 def a_metal_film_is_met_at_the_corner_s_angle():
     bench = Bench(layout(_corner(", reflectance: {metal: aluminium}")))
-    index = complex(METALS["aluminium"].index(NM))
+    index = complex(METALS["aluminium"].index_at(NM))
     r_s, r_p = powers(1.0, index, np.arccos(1 / np.sqrt(3)))
     yield power("back", bench.sink("escaped"), (0.5 * (r_s + r_p)) ** 3)
