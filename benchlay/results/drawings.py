@@ -15,7 +15,7 @@ from benchlay.layout.layout import Layout
 from benchlay.report.model import Reported
 from benchlay.sheets import SHEETS, UnknownSheetError, sheets_of
 from benchlay.sheets.primitives import Sheet
-from benchlay.sheets.scale import SIZES_MM, NothingFitsError
+from benchlay.sheets.scale import PLAN_SIZES, NothingFitsError
 from benchlay.tracing import Trace
 from benchlay.writers import dxf, svg
 from benchlay.zones import Zones
@@ -34,12 +34,12 @@ def refusals(layout: Layout, sheet: str | None, form: str | None) -> tuple[Probl
         what = f"not yet: sheets are not written as {form}"
         found.append(Problem(place, what, f"--format {format_choices(FORMS)}", "name another"))
     asked = layout.drawing.sheet
-    if asked not in ("auto", *SIZES_MM):
+    if asked not in ("auto", *PLAN_SIZES):
         found.append(
             Problem(
                 layout.drawing.span_of("sheet"),
                 f"a plan has no room on {asked} beside its tables and title block",
-                f"auto, or one of {format_choices(SIZES_MM)}",
+                f"auto, or one of {format_choices(PLAN_SIZES)}",
                 "write 'sheet: auto'",
             )
         )

@@ -1,6 +1,7 @@
 """Sheet sizes, scales, and which of them a view is drawn on.
 
-Sizes follow ISO 5457 (trimmed, landscape), scales ISO 5455, both from memory.
+Sizes follow ISO 5457 (trimmed; A4 stands upright, the others lie), scales ISO 5455, both from
+memory.
 """
 
 from __future__ import annotations
@@ -9,12 +10,15 @@ from benchlay.named import NamedTuple
 from benchlay.sheets.primitives import Point
 
 SIZES_MM: dict[str, Point] = {
+    "A4": (210.0, 297.0),
     "A3": (420.0, 297.0),
     "A2": (594.0, 420.0),
     "A1": (841.0, 594.0),
     "A0": (1189.0, 841.0),
 }
 SCALES = (1, 2, 5, 10, 20, 50, 100, 200, 500)
+
+PLAN_SIZES = tuple(SIZES_MM)[1:]  # beside its tables a plan has no room on A4
 
 LEFT_MARGIN_MM = 20.0  # for filing; the others
 MARGIN_MM = 10.0
@@ -33,8 +37,8 @@ _PREFERENCES = (
 )
 
 COLUMN_MM = 112.0  # tables at the right
-BELOW_MM = 72.0  # title block, and two rows of dimensions under the view
-ABOVE_MM = 24.0  # title of the view
+BELOW_MM = 76.0  # title block, and two rows of dimensions under the view
+ABOVE_MM = 20.0  # title of the view
 BESIDE_MM = 28.0  # a row of dimensions at the left
 
 

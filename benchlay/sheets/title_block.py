@@ -22,11 +22,12 @@ from benchlay.sheets.primitives import Circle, Line, Point, Polyline, Primitive,
 from benchlay.sheets.scale import Window, frame_of
 
 WIDTH_MM = 180.0
-ROW_MM = 10.0
-HEIGHT_MM = 4 * ROW_MM
+ROW_MM = 8.8
+HEIGHT_MM = 5 * ROW_MM
 _INSET_MM = 1.2
-_CAPTION_MM = 6.5  # base line of a cell's caption above its foot
-_VALUE_MM = 1.9
+_CAPTION_MM = 5.7  # base line of a cell's caption above its foot
+_VALUE_MM = 1.3
+DIGITS = 16  # of the layout's SHA-256 that are written out: enough to tell two layouts apart
 NOTHING = "-"  # a field that the layout leaves out is seen to be empty
 
 
@@ -44,6 +45,8 @@ class TitleFields(NamedTuple):
     scale: str = ""
     sheet: str = "1/1"
     projection: str = "first"  # or third
+    tolerance: str = "as stated at the dimension"  # where a dimension states none
+    sha256: str = ""  # of the layout's bytes; its first digits are written
 
 
 class _Cell(NamedTuple):
@@ -62,7 +65,7 @@ def title_block(fields: TitleFields, size_mm: Point) -> Iterator[Primitive]:
         if row:
             yield Line("TITLE", (left, foot), (inner.right, foot))
         yield from _row(cells, left, foot)
-    yield from _projection(fields.projection, (inner.right - 10.0, low + 3 * ROW_MM + 3.0))
+    yield from _projection(fields.projection, (inner.right - 8.0, low + 3.5 * ROW_MM))
 
 
 def _rows(fields: TitleFields) -> list[list[_Cell]]:
@@ -70,6 +73,11 @@ def _rows(fields: TitleFields) -> list[list[_Cell]]:
     lines = wrap(fields.title, width - 2 * _INSET_MM, MIDDLE_MM, most=2)
     title, more = lines[0], (lines[1] if len(lines) > 1 else "")
     return [
+        [
+            _Cell("General tolerance", fields.tolerance, 70.0),
+            _Cell("Layout, SHA-256 begins", fields.sha256[:DIGITS], 60.0),
+            _Cell("Do not scale", "print at 100 %", 50.0),
+        ],
         [
             _Cell("Owner", fields.owner, 90.0),
             _Cell("Document type", fields.document_type, 60.0),

@@ -2,6 +2,6 @@
 
 from __future__ import annotations
 
-from benchlay.sheets.drafting.picture import plan_picture
+from benchlay.sheets.drafting.picture import plan_picture, title_fields
 
-__all__ = ["plan_picture"]
+__all__ = ["plan_picture", "title_fields"]

@@ -14,7 +14,7 @@ from benchlay.sheets.drafting.outlines import items_of
 from benchlay.sheets.drafting.schedule import zones_drawn
 from benchlay.sheets.drafting.surroundings import holes_of, lids_of, panels_of
 from benchlay.sheets.layers import WIDTHS_MM, wavelength_words
-from benchlay.sheets.scale import SCALES, SIZES_MM
+from benchlay.sheets.scale import PLAN_SIZES, SCALES
 from benchlay.sheets.title_block import TitleFields
 from benchlay.tracing.front import CONVERTED
 from benchlay.tracing.trace import Trace
@@ -61,7 +61,7 @@ def plan_picture(
     sheet, scale, unmet = _wishes(layout)
     return Picture(
         name="plan",
-        fields=_fields(layout),
+        fields=title_fields(layout, "Bench layout, plan", sha256),
         outline=tuple(layout.bench.outline),
         state=state.name,
         holes=holes_of(layout),
@@ -93,18 +93,20 @@ _CAUTION = (
 )
 
 
-def _fields(layout: Layout) -> TitleFields:
+def title_fields(layout: Layout, document_type: str, sha256: str = "") -> TitleFields:
+    """Return what the title block of a sheet says, but for its scale and its number in the set."""
     d = layout.drawing
     return TitleFields(
         owner=d.owner,
         title=layout.title,
-        document_type="Bench layout, plan",
+        document_type=document_type,
         number=d.number,
         revision=layout.revision,
         date=d.date,
         drawn_by=d.drawn_by,
         approved_by=d.approved_by,
         projection=d.projection,
+        sha256=sha256,
     )
 
 
@@ -121,8 +123,8 @@ def _wishes(layout: Layout) -> tuple[str | None, int | None, list[str]]:
     """Return the sheet and scale that were asked for, and which of it is not to be had."""
     d, unmet = layout.drawing, []
     sheet = None if d.sheet == "auto" else d.sheet
-    if sheet is not None and sheet not in SIZES_MM:
-        unmet.append(f"Sheet {sheet} was asked for; plans are drawn on {', '.join(SIZES_MM)}.")
+    if sheet is not None and sheet not in PLAN_SIZES:
+        unmet.append(f"Sheet {sheet} was asked for; plans are drawn on {', '.join(PLAN_SIZES)}.")
         sheet = None
     scale = None
     if d.scale != "auto":
