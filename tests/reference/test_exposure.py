@@ -60,6 +60,7 @@ COMPUTE = {
     "circle_area": lambda x: circle_area_m2(x["diameter_m"] * 1e3),
     "aperture_skin_mm": lambda x: skin_aperture_mm(x["wavelength_nm"]),
     "aperture_eye_mm": lambda x: eye_aperture_mm(x["wavelength_nm"], x["t_s"]),
+    "C3": lambda x: factors.c3(x["wavelength_nm"]),
     "C4": lambda x: factors.c4(x["wavelength_nm"]),
     "C5": lambda x: factors.c5(x["N"], x["t_pulse_s"], x["wavelength_nm"], x["T_s"]),
     "C6": lambda x: factors.c6(x["alpha_mrad"], x["t_s"]),
@@ -84,3 +85,28 @@ def test_every_value_names_its_source():
     assert len({e["id"] for e in VALUES}) == len(VALUES)
     assert all(e["source"] and e["edition"] for e in VALUES)
     assert set(NOT_COMPUTED) <= {e["id"] for e in VALUES}
+
+
+def test_most_values_are_not_from_memory():
+    recalled = [e for e in VALUES if e["source_kind"] == "memory"]
+    assert len(VALUES) >= 50
+    assert len(recalled) <= len(VALUES) / 5
+    # What is recalled says so in its source too, and the other way round.
+    assert all("recalled" in e["source"] for e in recalled)
+    assert not any("recalled" in e["source"] for e in VALUES if e not in recalled)
+
+
+@pytest.mark.parametrize("entry", VALUES, ids=lambda e: e["id"])
+def test_a_limit_from_memory_alone_says_so(entry):
+    """What the program says of a limit's source agrees with what is known of it."""
+    x, recalled = entry["inputs"], entry["source_kind"] == "memory"
+    if entry["quantity"] in {"mpe_eye_H", "mpe_eye_E"}:
+        said = eye_limit(x["wavelength_nm"], x["t_s"]).source
+        known = "this value from memory" in said
+    elif entry["quantity"] in {"ael_P", "ael_Q"}:
+        known = _emission(x).from_memory
+    else:
+        return
+    # A number that was recalled must say so; one that was read may be recalled elsewhere in
+    # its row, and then the row says so.
+    assert known or not recalled or entry["edition"].startswith("unchanged")
