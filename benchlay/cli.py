@@ -24,7 +24,6 @@ _NARROWEST = 20
 
 _LATER = {
     "faults": "every credible single fault, and random misalignment",
-    "exposure": "exposure limits of one beam, without a layout",
     "compare": "what changed between two revisions",
     "watch": "a local page that follows a layout while it is edited",
     "new": "a first layout to start from",
@@ -75,6 +74,7 @@ def _run(arguments: Sequence[str]) -> int:
         "draw": commands.run_draw,
         "explain": commands.run_explain,
         "schema": commands.run_schema,
+        "exposure": commands.run_exposure,
     }[options.command]
     if getattr(options, "on", date.min) is None:
         options.on = date.today()  # the one clock of the program
@@ -163,6 +163,7 @@ def _parser(first: str) -> argparse.ArgumentParser:
         "draw": (_add_draw, "drawings only"),
         "explain": (_add_explain, "what a check or a kind of element means"),
         "schema": (_add_nothing, "JSON Schema of the layout language, for editors"),
+        "exposure": (_add_exposure, "limits, class, distances and eyewear of one beam"),
     }
     later = _LATER
     if first in declared:
@@ -216,6 +217,21 @@ def _add_explain(parser: argparse.ArgumentParser) -> None:
 
 def _add_nothing(parser: argparse.ArgumentParser) -> None:
     """Declare a command that takes no arguments."""
+
+
+def _add_exposure(parser: argparse.ArgumentParser) -> None:
+    from benchlay.results.one_beam import FORMS, flag
+
+    for name, form in FORMS.items():
+        # A figure may be written as two words; one that is given twice is refused later.
+        parser.add_argument(
+            flag(name),
+            nargs="+",
+            action="append",
+            metavar=(form.metavar, "UNIT"),
+            help=form.meaning,
+        )
+    parser.add_argument("--json", action="store_true", help="one JSON document, nothing else")
 
 
 def _add_layouts(parser: argparse.ArgumentParser) -> None:

@@ -168,6 +168,24 @@ def run_review(options: Namespace, ink: Ink) -> Outcome:
     )
 
 
+def run_exposure(options: Namespace, _ink: Ink) -> Outcome:
+    """Say of one beam what limits, class, distances and eyewear follow, without a layout."""
+    from benchlay.exposure.assessment import Question, assess
+    from benchlay.results.one_beam import read
+
+    asked = read(options)
+    if not isinstance(asked, Question):
+        return Outcome(Status.WRONG, err="".join(f"{mistake}\n" for mistake in asked))
+    from benchlay.report.one_beam import beam_document, beam_text
+
+    found = assess(asked)
+    if options.json:
+        from benchlay.report.json_out import dumps
+
+        return Outcome(Status.NOTHING, dumps(beam_document(found)))
+    return Outcome(Status.NOTHING, beam_text(found))
+
+
 def _review_one(name: str, folder: Path, options: Namespace, ink: Ink) -> Outcome:
     from benchlay.report.files import refusal, write_all
     from benchlay.report.text import check_text

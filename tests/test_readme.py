@@ -51,6 +51,18 @@ def test_a_layout_is_read_and_says_what_is_shown(name, tmp_path, monkeypatch, ca
     assert not missing, printed
 
 
+@pytest.mark.parametrize("name", sorted(marked("command")))
+def test_a_command_prints_what_is_shown(name, capsys):
+    (line,) = marked("command")[name].splitlines()
+    program, *arguments = line.split()
+    assert program == "benchlay"
+    assert cli.run(arguments) == 0
+    printed = capsys.readouterr().out.splitlines()
+    shown = marked("prints")[name].splitlines()
+    assert shown
+    assert [line for line in shown if not any(_agrees(line, p) for p in printed)] == []
+
+
 def _agrees(shown, printed):
     """Compare a line; an ellipsis in the README stands for anything."""
     pattern = ".*".join(re.escape(part) for part in shown.split("…"))

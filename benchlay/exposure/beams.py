@@ -21,7 +21,7 @@ _MM_PER_M = 1e3
 # rise and fall; halved towards each focus, at which it is highest.
 _EVEN_SAMPLES = 48
 _HALVINGS = 24
-_BISECTIONS = 100  # below the last bit of a double
+_BISECTIONS = 60  # below the last bit of a double
 _FARTHEST_M = 1e12  # no lamp of the earth is dangerous there: the beam does not spread
 _PARALLEL = 1e-14
 

@@ -192,19 +192,33 @@ def continuous_load_w_m2(power_w: float, d63_mm: float) -> float:
     OutOfRange
         If the diameter is not positive.
     """
-    factor = diameter_factor(d63_mm)
+    factor = diameter_factor(d63_mm) if diameter_factor_applies(power_w, d63_mm) else 1.0
+    return power_w / circle_area_m2(d63_mm) * factor
+
+
+def diameter_factor_applies(power_w: float, d63_mm: float) -> bool:
+    """Tell whether the factor for wide beams raises the load of continuous light.
+
+    Raises
+    ------
+    OutOfRange
+        If the diameter is not positive.
+    """
+    if diameter_factor(d63_mm) == 1.0:
+        return False
     irradiance = power_w / circle_area_m2(d63_mm)
-    strong = power_w > _FACTOR_POWER_W or irradiance > _FACTOR_IRRADIANCE_W_M2
-    return irradiance * (factor if strong else 1.0)
+    return power_w > _FACTOR_POWER_W or irradiance > _FACTOR_IRRADIANCE_W_M2
 
 
 class Scale(NamedTuple):
     """Scale numbers that eyewear must bear, one for every mode that is asked of it.
 
-    A level is None where nothing up to LB10 suffices.
+    A level is None where nothing up to LB10 suffices. `d63_mm` is the diameter that they
+    were found for.
     """
 
     levels: tuple[tuple[Mode, int | None], ...]
+    d63_mm: float
 
     @property
     def text(self) -> str | None:
@@ -230,7 +244,7 @@ def continuous_scale(wavelength_nm: float, power_w: float, d63_mm: float) -> Sca
     'D LB6'
     """
     load = continuous_load_w_m2(power_w, d63_mm)
-    return Scale(((Mode.D, scale_level(wavelength_nm, Mode.D, load)),))
+    return Scale(((Mode.D, scale_level(wavelength_nm, Mode.D, load)),), d63_mm)
 
 
 def pulsed_scale(
@@ -264,7 +278,7 @@ def pulsed_scale(
     load = energy_j / circle_area_m2(d63_mm) * train_factor(rate_hz)
     if scale_limit(wavelength_nm, mode, 1).unit == "W/m2":
         load /= pulse_s
-    return Scale((*mean.levels, (mode, scale_level(wavelength_nm, mode, load))))
+    return Scale((*mean.levels, (mode, scale_level(wavelength_nm, mode, load))), d63_mm)
 
 
 @broadcast

@@ -2,6 +2,7 @@
 
 import itertools
 import math
+import random
 
 import numpy as np
 import pytest
@@ -12,6 +13,7 @@ from scipy import integrate, special
 from benchlay.exposure import OutOfRange
 from benchlay.exposure.averaging import averaged_exposure, elliptical_fraction
 from benchlay.exposure.distances import gaussian_fraction
+from benchlay.optics.special import circle_share
 
 
 def strips(a, w1, w2):
@@ -36,6 +38,14 @@ def strips(a, w1, w2):
 @pytest.mark.parametrize("w2", [0.05, 1.0, 3.0000001, 10.0, 200.0])
 def test_against_strips(a, w1, w2):
     assert elliptical_fraction(a, w1, w2) == pytest.approx(strips(a, w1, w2), rel=1e-8, abs=1e-11)
+
+
+def test_it_is_what_the_tracer_takes():
+    dice = random.Random(1)
+    w1, w2 = np.array([[10 ** dice.uniform(-2, 2.5) for _ in range(100)] for _ in range(2)])
+    np.testing.assert_allclose(
+        elliptical_fraction(3.5, w1, w2), circle_share(w1, w2, 3.5), rtol=1e-10
+    )
 
 
 def test_a_line_of_light_is_an_error_function():
