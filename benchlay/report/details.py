@@ -69,6 +69,16 @@ class Zone(NamedTuple):
     polygon: tuple[Ring, ...]
 
 
+class ControlledArea(NamedTuple):
+    """A polygon of the union of a state's zones, whatever the wavelength; rings as a zone's."""
+
+    state: str
+    area_m2: float
+    wavelengths_nm: tuple[float, ...]
+    kinds: tuple[str, ...]
+    polygon: tuple[Ring, ...]
+
+
 class Gap(NamedTuple):
     """Directions in which nothing would stop a beam; angles in degrees."""
 

@@ -17,6 +17,7 @@ from benchlay.named import NamedTuple
 if TYPE_CHECKING:
     from benchlay.report.details import (
         Cavity,
+        ControlledArea,
         Coverage,
         HandedOver,
         Ledger,
@@ -133,6 +134,7 @@ class Review(NamedTuple):
     routes: tuple[RouteResult, ...] = ()
     ledger: tuple[Ledger, ...] = ()
     zones: tuple[Zone, ...] = ()
+    controlled_areas: tuple[ControlledArea, ...] = ()
     coverage: tuple[Coverage, ...] = ()
     panels: tuple[PanelLoad, ...] = ()
     cavities: tuple[Cavity, ...] = ()

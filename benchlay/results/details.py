@@ -4,14 +4,14 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Sequence
 
-from benchlay.report.details import Zone
+from benchlay.report.details import ControlledArea, Zone
 from benchlay.report.model import Review
 from benchlay.results.handed_over import handed_over
 from benchlay.results.ledger import ledgers
 from benchlay.results.routes import route_results
 from benchlay.tracing import Trace
 from benchlay.zones import Zone as DrawnZone
-from benchlay.zones import Zones
+from benchlay.zones import Zones, controlled_areas
 
 
 def with_details(
@@ -23,6 +23,7 @@ def with_details(
         routes=tuple(row for variant in variants for row in route_results(trace, variant)),
         ledger=tuple(row for variant in variants for row in ledgers(trace, variant)),
         zones=tuple(_zones(zones.zones if zones else ())),
+        controlled_areas=tuple(_controlled(zones)),
         handed_over=tuple(row for variant in variants for row in handed_over(trace, variant)),
         not_computed=zones.not_computed if zones else (),
     )
@@ -31,3 +32,8 @@ def with_details(
 def _zones(zones: Iterable[DrawnZone]) -> Iterable[Zone]:
     for z in zones:
         yield Zone(z.state, z.kind, z.wavelength_nm, z.reason, z.area_m2, z.reach_m, z.polygon)
+
+
+def _controlled(zones: Zones | None) -> Iterable[ControlledArea]:
+    for a in controlled_areas(zones) if zones else ():
+        yield ControlledArea(a.state, a.area_m2, a.wavelengths_nm, a.kinds, a.polygon)

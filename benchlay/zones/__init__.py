@@ -10,9 +10,18 @@ from typing import TYPE_CHECKING, Any
 
 if TYPE_CHECKING:
     from benchlay.zones.compose import Zone, Zones, zones_of
+    from benchlay.zones.controlled import ControlledArea, controlled_areas
     from benchlay.zones.limits import LimitTable, limits_of
 
-__all__ = ["LimitTable", "Zone", "Zones", "limits_of", "zones_of"]
+__all__ = [
+    "ControlledArea",
+    "LimitTable",
+    "Zone",
+    "Zones",
+    "controlled_areas",
+    "limits_of",
+    "zones_of",
+]
 
 
 def __getattr__(name: str) -> Any:  # noqa: ANN401 - whatever the rooms offer
@@ -21,6 +30,10 @@ def __getattr__(name: str) -> Any:  # noqa: ANN401 - whatever the rooms offer
         from benchlay.zones import limits
 
         return getattr(limits, name)
+    if name in ("ControlledArea", "controlled_areas"):
+        from benchlay.zones import controlled
+
+        return getattr(controlled, name)
     if name in __all__:
         from benchlay.zones import compose
 

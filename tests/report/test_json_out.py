@@ -29,7 +29,8 @@ FINDING_KEYS = [
 ]  # fmt: skip
 REVIEW_KEYS = [
     "layout", "sha256", "title", "revision", "as_of", "verdict", "findings", "checks",
-    "limits_used", "routes", "ledger", "zones", "coverage", "panels", "cavities", "matched",
+    "limits_used", "routes", "ledger", "zones",
+    "controlled_areas", "coverage", "panels", "cavities", "matched",
     "handed_over", "not_computed", "matrix",
 ]  # fmt: skip
 BEAM_KEYS = [
