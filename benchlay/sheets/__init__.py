@@ -9,6 +9,7 @@ from benchlay.named import NamedTuple
 
 if TYPE_CHECKING:
     from benchlay.findings import Severity
+    from benchlay.sheets.elevation.contents import Elevation
     from benchlay.sheets.primitives import Sheet
     from benchlay.tracing.trace import Trace
     from benchlay.zones import Zones
@@ -65,7 +66,25 @@ def _plan(subject: Subject) -> Iterator[Planned]:
     yield Planned("plan", plan)
 
 
-SHEETS: Mapping[str, Callable[[Subject], Iterable[Planned]]] = {"plan": _plan}
+def _elevations(subject: Subject) -> Iterator[Planned]:
+    from benchlay.sheets.drafting.elevations import elevation_of
+    from benchlay.sheets.elevation import compose
+
+    for route, name in enumerate(subject.trace.ways.names):
+        picture = elevation_of(subject.trace, subject.variant, route, subject.sha256)
+        if picture is None:
+            continue
+
+        def elevation(number: str, picture: Elevation = picture) -> Sheet:
+            return compose(picture._replace(fields=picture.fields._replace(sheet=number)))
+
+        yield Planned(f"elevation-{name}", elevation)
+
+
+SHEETS: Mapping[str, Callable[[Subject], Iterable[Planned]]] = {
+    "plan": _plan,
+    "elevation": _elevations,
+}
 """All kinds of sheet there are, by name, in the order of the set.
 
 Each gives the sheets of its kind: one, several (`panel-NAME`), or none where the layout has

@@ -12,8 +12,8 @@ from benchlay.optics import moments
 from benchlay.optics.rays import cross, dot
 from benchlay.placing.placed import PlacedElement, PlacedState
 from benchlay.scene.tables import Floats
+from benchlay.sheets.drafting.picture import properties, title_fields
 from benchlay.sheets.elevation.contents import Band, Elevation, Level, Station, Stretch
-from benchlay.sheets.title_block import TitleFields
 from benchlay.tracing.beams import FACE, HANDED, SOLID
 from benchlay.tracing.front import EMITTED, OUTSIDE
 from benchlay.tracing.trace import Trace
@@ -47,16 +47,17 @@ def chain_of(trace: Trace, variant: int, route: int) -> list[int]:
     return chain[::-1]
 
 
-def elevation_of(
-    trace: Trace,
-    variant: int,
-    route: int,
-    fields: TitleFields,
-    *,
-    looks: tuple[tuple[float, float], ...],
-    properties: tuple[tuple[str, str], ...],
-) -> Elevation | None:
-    """Return the elevation of a route in a state; None where no light follows it."""
+def elevation_of(trace: Trace, variant: int, route: int, sha256: str) -> Elevation | None:
+    """Return the elevation of a route in a state; None where no light follows it.
+
+    Parameters
+    ----------
+    trace : Trace
+    variant, route : int
+        Numbers of the state and of the route (in `Trace.ways.names`).
+    sha256 : str
+        Of the layout's bytes.
+    """
     chain = chain_of(trace, variant, route)
     lengths = [float(trace.beams.length[beam]) for beam in chain]
     if not chain or sum(lengths) <= _NO_LENGTH_MM:
@@ -69,17 +70,17 @@ def elevation_of(
         if length > _NO_LENGTH_MM
     )
     layout = state.layout
+    name = trace.ways.names[route]
     return Elevation(
-        route=trace.ways.names[route],
+        route=name,
         state=state.name,
-        fields=fields,
+        fields=title_fields(layout, f"Elevation of route {name}", sha256),
         stations=tuple(_merged(list(_stations(trace, state, chain, ways)))),
         stretches=stretches,
         levels=tuple(_levels(layout)),
         bands=_bands(layout),
-        looks=looks,
         notes=tuple(_notes(trace, route, chain, state)),
-        properties=properties,
+        properties=tuple(properties(layout, sha256)),
         decimal="." if layout.drawing.decimal == "point" else ",",
     )
 
@@ -108,7 +109,9 @@ def _upright(axis: Floats, direction: Floats, m: Floats) -> Floats:
     across = up - dot(up, direction) * direction
     size = float(np.sqrt(dot(across, across)))
     if size < 1e-9:  # noqa: PLR2004 (a beam that goes straight up has no upright plane)
-        return np.maximum(*moments.radii(m)[:2])
+        first, second, _ = moments.radii(m)
+        largest: Floats = np.maximum(first, second)
+        return largest
     across = across / size
     a, b = float(dot(across, axis)), float(dot(across, cross(direction, axis)))
     variance = a * a * m[moments.XX] + 2.0 * a * b * m[moments.XY] + b * b * m[moments.YY]
@@ -234,9 +237,7 @@ def _bands(layout: Layout) -> tuple[Band, ...]:
     return tuple(Band(words, low - floor, high - floor) for words, (low, high) in bands)
 
 
-def _notes(
-    trace: Trace, route: int, chain: list[int], state: PlacedState
-) -> Iterator[str]:
+def _notes(trace: Trace, route: int, chain: list[int], state: PlacedState) -> Iterator[str]:
     yield (
         f"Route {trace.ways.names[route]} laid out straight along its chief ray, in the state "
         f"{state.name}. Heights and lengths are true to scale; widths of posts and mounts along "
@@ -252,8 +253,12 @@ def _notes(
         met = trace.scene.names[int(trace.scene.solids.hole_name[beams.end_row[end]])]
     meant = ".".join(last.opening) if last.opening is not None else last.name
     if met != meant:
-        yield f"In this state its light does not reach {meant}: what is shown ends before."
+        yield (
+            f"In this state its light does not reach {meant}; shown is where it goes, beyond the "
+            "edge of the bench too."
+        )
     yield (
-        "Radii are 1/e2, from second moments of the beam as if nothing cut it. The clear "
-        "half-width is the smaller way across, as the beam sees it."
+        "Radii are 1/e2, from second moments of the beam as if nothing cut it; in the profile the "
+        "larger one, and thin the smaller where they differ. The clear half-width is the smaller "
+        "way across, as the beam sees it."
     )

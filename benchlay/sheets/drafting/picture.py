@@ -80,7 +80,7 @@ def plan_picture(
             *drawing.notes,
             *unmet,
         ),
-        properties=tuple(_properties(layout, sha256)),
+        properties=tuple(properties(layout, sha256)),
         sheet=sheet,
         scale=scale,
         decimal=decimal,
@@ -110,7 +110,8 @@ def title_fields(layout: Layout, document_type: str, sha256: str = "") -> TitleF
     )
 
 
-def _properties(layout: Layout, sha256: str) -> list[tuple[str, str]]:
+def properties(layout: Layout, sha256: str) -> list[tuple[str, str]]:
+    """Return what is written into the file beside the drawing."""
     known = {
         "drawing number": layout.drawing.number,
         "revision": layout.revision,

@@ -9,11 +9,7 @@ from benchlay.sheets.elevation.view import margin, model
 from benchlay.sheets.layers import BeamLook
 from benchlay.sheets.lettering import LARGE_MM, shorten
 from benchlay.sheets.primitives import Primitive, Sheet, Text
-from benchlay.sheets.scale import Window, frame_of
 from benchlay.sheets.tables import notes
-from benchlay.sheets.title_block import WIDTH_MM
-
-_LEFT_OF_TITLE_MM = 6.0
 
 
 def compose(picture: Elevation) -> Sheet:
@@ -25,7 +21,7 @@ def compose(picture: Elevation) -> Sheet:
         If no listed sheet and scale hold it.
     """
     board = lay_out(picture)
-    form = board.form._replace(fields=picture.fields._replace(scale=f"1:{board.scale}"))
+    form = board.form
     true_size: list[Primitive] = []
     paper: list[Primitive] = []
     for strip in board.strips:
@@ -35,14 +31,8 @@ def compose(picture: Elevation) -> Sheet:
     heading = f"ELEVATION OF ROUTE {picture.route}, 1:{board.scale}, STATE: {picture.state}"
     at = (form.window.left + 2.0, form.window.high - LARGE_MM - 1.0)
     paper.append(Text("NOTES", at, shorten(heading, form.window.width - 8.0, LARGE_MM), LARGE_MM))
-    inner = frame_of(form.size_mm)
-    room = Window(
-        inner.left + 3.0,
-        inner.low + 3.0,
-        inner.right - WIDTH_MM - _LEFT_OF_TITLE_MM,
-        form.window.low - 2.0,
-    )
-    paper += notes("NOTES", picture.notes, room, "the plan").primitives
+    if form.beside is not None:
+        paper += notes("NOTES", picture.notes, form.beside, "the plan").primitives
     return form.sheet(
         f"elevation-{picture.route}",
         f"Elevation of route {picture.route} at 1:{board.scale}, state {picture.state}: "
@@ -51,7 +41,7 @@ def compose(picture: Elevation) -> Sheet:
         paper=paper,
         scale=board.scale,
         origin_mm=board.origin_mm,
-        beams=[BeamLook(*look) for look in picture.looks],
+        beams=[BeamLook(nm) for nm in sorted({s.wavelength_nm for s in picture.stretches})],
         properties=picture.properties,
         decimal=picture.decimal,
     )

@@ -15,13 +15,13 @@ from benchlay.sheets.primitives import Point
 from benchlay.sheets.scale import NothingFitsError
 
 LEFT_MM = 30.0  # of the view: headings of rows, and dimensions
-RIGHT_MM = 46.0  # names of levels, and the bands of eyes
+RIGHT_MM = 52.0  # names of levels, and the bands of eyes
 ABOVE_MM = 3.0
 HEADING_MM = 8.0  # above the first strip
 RULER_MM = 10.0
-PROFILE_MM = 28.0
-BELOW_PROFILE_MM = 9.0  # leaders to the stations' columns
-ROWS_MM = (("element", 24.0), ("path", 13.0), ("height", 11.0), ("radius", 11.0), ("clear", 19.0))
+PROFILE_MM = 34.0
+BELOW_PROFILE_MM = 8.0  # leaders to the stations' columns
+ROWS_MM = (24.0, 13.0, 11.0, 12.0, 12.0, 12.0)  # of a station's column, see `profile.HEADINGS`
 PITCH_MM = 4.6  # of the stations' columns
 BENCH_MM = 25.0  # shown of what lies under the bench top, true size
 HEADROOM_MM = 25.0  # above the highest, true size
@@ -88,7 +88,7 @@ def lay_out(picture: Elevation) -> Board:
     """
     height = picture.top + HEADROOM_MM
     for size, scale in _PREFERENCES:
-        form = form_for(picture.fields, size=size)
+        form = form_for(picture.fields._replace(scale=f"1:{scale}"), size=size)
         window = form.window
         long = (window.width - LEFT_MM - RIGHT_MM) * scale
         each = depth_mm(height, scale)
@@ -102,14 +102,13 @@ def lay_out(picture: Elevation) -> Board:
 
 def depth_mm(height: float, scale: int) -> float:
     """Return how much of the paper a strip takes, upwards."""
-    rows = sum(depth for _, depth in ROWS_MM)
     view = (height + BENCH_MM) / scale
-    return ABOVE_MM + view + RULER_MM + PROFILE_MM + BELOW_PROFILE_MM + rows
+    return ABOVE_MM + view + RULER_MM + PROFILE_MM + BELOW_PROFILE_MM + sum(ROWS_MM)
 
 
 def stations_of(picture: Elevation, strip: Strip) -> list[Station]:
     """Return the stations of a strip; one on a border belongs to the strip that it begins."""
-    last = strip.s_out >= picture.length - 1e-6  # noqa: PLR2004 (rounding of the path)
+    last = strip.s_out >= picture.length - 1e-6
     return [
         one
         for one in picture.stations

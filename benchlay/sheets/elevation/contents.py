@@ -64,7 +64,6 @@ class Elevation(NamedTuple):
     stretches: tuple[Stretch, ...]
     levels: tuple[Level, ...]
     bands: tuple[Band, ...]
-    looks: tuple[tuple[float, float], ...]  # wavelength, width of its lines on paper
     notes: tuple[str, ...]
     properties: tuple[tuple[str, str], ...]
     decimal: str

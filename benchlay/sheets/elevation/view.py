@@ -23,6 +23,7 @@ from benchlay.sheets.primitives import (
 )
 
 _THINNEST_MM = 0.9  # of an optic on paper
+_THICKEST_MM = 12.0  # of what the path does not run through: it stands askew to the path
 _MARK_MM = 1.8  # of the ends of a clear region, beyond the optic on paper
 _ARROW_MM = (4.0, 1.2)
 _SHORTEST_ARROW_MM = 14.0
@@ -38,12 +39,18 @@ def model(picture: Elevation, board: Board, strip: Strip) -> Iterator[Primitive]
     for level in picture.levels:
         start = board.model(strip, strip.s, level.z)
         yield Line("PANELS", start, (start[0] + long, start[1]))
-    for station in stations_of(picture, strip):
+    for station in _standing(picture, strip):
         yield from _station(station, board, strip)
     for stretch in picture.stretches:
         yield from _beam(stretch, board, strip)
     if strip is board.strips[0]:
         yield from _dimensions(picture, board, strip)
+
+
+def _standing(picture: Elevation, strip: Strip) -> list[Station]:
+    """Return the stations that stand in a strip, those too that began before it."""
+    before = [one for one in picture.stations if one.s < strip.s < one.s_out]
+    return [*(one._replace(holders=()) for one in before), *stations_of(picture, strip)]
 
 
 def _station(station: Station, board: Board, strip: Strip) -> Iterator[Primitive]:
@@ -53,8 +60,11 @@ def _station(station: Station, board: Board, strip: Strip) -> Iterator[Primitive
         yield _box("BODIES", board, strip, (middle - width / 2, middle + width / 2), (low, high))
     if station.centre_z is None:
         return
-    half = max(station.thickness, _THINNEST_MM * board.scale) / 2
-    across = (station.s - half, max(station.s_out, station.s) + half)
+    half = max(min(station.thickness, _THICKEST_MM), _THINNEST_MM * board.scale) / 2
+    long = station.s_out - station.s
+    across = (station.s - half, station.s + half)
+    if long > 2.0 * half:  # what the path runs through is as long as that
+        across = (max(station.s, strip.s), min(station.s_out, strip.s_out))
     z, tall = station.centre_z, station.half_height
     clear = station.clear_half
     if clear is None or clear >= tall:
@@ -101,9 +111,7 @@ def _beam(stretch: Stretch, board: Board, strip: Strip) -> Iterator[Primitive]:
         yield _arrow(layer, start, end, board.scale)
     if stretch.inside:
         return
-    points = [
-        (s, radius) for s, radius in _samples(stretch, stretch.up_mm) if low <= s <= high
-    ]
+    points = [(s, radius) for s, radius in _samples(stretch, stretch.up_mm) if low <= s <= high]
     points = [(low, _at(stretch, stretch.up_mm, low)), *points]
     points.append((high, _at(stretch, stretch.up_mm, high)))
     for sign in (1.0, -1.0):
@@ -174,9 +182,9 @@ def _dimensions(picture: Elevation, board: Board, strip: Strip) -> Iterator[Dime
 def margin(picture: Elevation, board: Board, strip: Strip) -> Iterator[Primitive]:
     """Name the levels and draw the bands of eyes at the right of a strip, on paper."""
     right = board.paper(strip, strip.s_out)
-    heights: list[tuple[float, str]] = [(0.0, "bench top \u00b10")]
+    heights: list[tuple[float, str]] = [(0.0, "\u00b10 bench top")]
     for level in picture.levels:
-        heights.append((level.z, f"{level.words} +{figure(level.z, 1, picture.decimal)}"))
+        heights.append((level.z, f"+{figure(level.z, 1, picture.decimal)} {level.words}"))
     lowest = strip.ground - 2.0 * SMALL_MM
     for z, words in sorted(heights):
         y = max(strip.ground + z / board.scale, lowest + 1.5 * SMALL_MM)
