@@ -7,34 +7,36 @@ beams need: many rays, few wavelengths and durations. Numbers alone never load n
 
 from __future__ import annotations
 
-from collections.abc import Callable, Sequence
 from functools import wraps
-from typing import TYPE_CHECKING, Any, Generic, ParamSpec, Protocol, TypeAlias, TypeVar, cast
+from typing import TYPE_CHECKING, cast
 
 if TYPE_CHECKING:
+    # Only a type checker needs the shapes of these; a plain check must not pay for them.
+    from collections.abc import Callable, Sequence
+    from typing import Any, Generic, ParamSpec, Protocol, TypeAlias, TypeVar
+
     import numpy as np
     from numpy.typing import ArrayLike, NDArray
 
     Floats: TypeAlias = NDArray[np.float64]
     Words: TypeAlias = NDArray[np.str_]
 
-_Given = ParamSpec("_Given")
-_One = TypeVar("_One", covariant=True)
-_Many = TypeVar("_Many", covariant=True)
+    _Given = ParamSpec("_Given")
+    _One = TypeVar("_One", covariant=True)
+    _Many = TypeVar("_Many", covariant=True)
 
+    class Broadcast(Protocol, Generic[_Given, _One, _Many]):
+        """A function of numbers that gives arrays for arrays.
 
-class Broadcast(Protocol, Generic[_Given, _One, _Many]):
-    """A function of numbers that gives arrays for arrays.
+        For a type checker it is the function of numbers; arrays go in by `over`, which is
+        the same call.
+        """
 
-    For a type checker it is the function of numbers; arrays go in by `over`, which is the
-    same call.
-    """
+        def __call__(self, *args: _Given.args, **kwargs: _Given.kwargs) -> _One:
+            """Return what the function gives for these numbers; arrays for arrays."""
 
-    def __call__(self, *args: _Given.args, **kwargs: _Given.kwargs) -> _One:
-        """Return what the function gives for these numbers; arrays for arrays."""
-
-    def over(self, *args: ArrayLike, **kwargs: ArrayLike | None) -> _Many:
-        """Return the same for arguments of which any may be arrays."""
+        def over(self, *args: ArrayLike, **kwargs: ArrayLike | None) -> _Many:
+            """Return the same for arguments of which any may be arrays."""
 
 
 def broadcast(function: Callable[_Given, float]) -> Broadcast[_Given, float, Floats]:
