@@ -2,6 +2,11 @@
 
 A calculation aid, not a certificate: see the cautions of each result, the standard,
 local rules and the laser safety officer.
+
+What is where: single exposures in `limits`, pulses in `trains`, several wavelengths in
+`together`, averages over apertures in `averaging`, beams in the open in `distances` (round)
+and `beams` (any), scattering surfaces in `viewing`, classes in `classes`, eyewear in
+`eyewear`, and the whole of one beam in `assessment`. Functions of numbers take arrays.
 """
 
 from __future__ import annotations

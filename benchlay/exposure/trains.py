@@ -13,6 +13,7 @@ import math
 from collections.abc import Callable, Iterator
 from dataclasses import dataclass
 
+from benchlay.exposure.broadcast import broadcast
 from benchlay.exposure.errors import OutOfRange
 from benchlay.exposure.factors import ALPHA_MIN_MRAD, c5, is_retinal, t2_s, ti_s
 from benchlay.exposure.limits import (
@@ -246,6 +247,38 @@ def pulse_limit(
     )
     base = eye_limit(wavelength_nm, rule.duration_s, alpha_mrad=alpha_mrad)
     return as_limit(base, rule), rule
+
+
+@broadcast
+def eye_pulse_limit_j_m2(
+    wavelength_nm: float,
+    exposure_s: float,
+    pulse_s: float,
+    rate_hz: float,
+    *,
+    alpha_mrad: float = ALPHA_MIN_MRAD,
+) -> float:
+    """Eye's limit for one pulse of a train, J/m2; all arguments may be arrays.
+
+    Parameters are those of `pulse_limit`, the train by its pulse, s, and rate, Hz.
+
+    Examples
+    --------
+    >>> eye_pulse_limit_j_m2(1064.0, 10.0, 1e-8, [0.0, 1000.0]).round(6).tolist()
+    [0.02, 0.01]
+    """
+    train = Train(pulse_s, rate_hz)
+    found = eye_rules(wavelength_nm, exposure_s, train, alpha_mrad=alpha_mrad)
+    return min(rule.per_pulse for rule in found)
+
+
+@broadcast
+def skin_pulse_limit_j_m2(
+    wavelength_nm: float, exposure_s: float, pulse_s: float, rate_hz: float
+) -> float:
+    """Skin's limit for one pulse of a train, J/m2. Parameters as of `eye_pulse_limit_j_m2`."""
+    found = skin_rules(wavelength_nm, exposure_s, Train(pulse_s, rate_hz))
+    return min(rule.per_pulse for rule in found)
 
 
 def as_limit(base: Limit, rule: Rule) -> Limit:

@@ -198,3 +198,76 @@ def test_any_form_of_beam_is_classified():
             return 0.5
 
     assert classify_continuous(633.0, 7.5e-4, Half()).name == "1"
+
+
+def below(x):
+    return math.nextafter(x, 0.0)
+
+
+@pytest.mark.parametrize(
+    ("wavelength", "naked_mm", "naked_m", "wide_mm", "wide_m"),
+    [
+        (below(302.5), 1.0, 0.0, 1.0, 0.0),
+        (302.5, 1.0, 0.1, 7.0, 2.0),
+        (below(400.0), 1.0, 0.1, 7.0, 2.0),
+        (400.0, 7.0, 0.1, 50.0, 2.0),
+        (below(1400.0), 7.0, 0.1, 50.0, 2.0),
+        (1400.0, 3.5, 0.1, 24.5, 2.0),
+        (below(4000.0), 3.5, 0.1, 24.5, 2.0),
+        (4000.0, 3.5, 0.0, 3.5, 0.0),
+        (below(1e5), 3.5, 0.0, 3.5, 0.0),
+        (1e5, 11.0, 0.0, 11.0, 0.0),
+    ],
+)
+def test_both_conditions_on_both_sides_of_their_edges(
+    wavelength, naked_mm, naked_m, wide_mm, wide_m
+):
+    asked = []
+
+    class Listening:
+        def share(self, aperture_mm, distance_m):
+            asked.append((aperture_mm, distance_m))
+            return 1.0
+
+    classify_continuous(wavelength, 1e-3, Listening())
+    assert set(asked) == {(naked_mm, naked_m), (wide_mm, wide_m)}
+
+
+@pytest.mark.parametrize(
+    ("level", "wavelength", "seconds"),
+    [
+        (Level.THREE_R, below(400.0), 3e4),
+        (Level.THREE_R, 400.0, 0.25),
+        (Level.THREE_R, below(700.0), 0.25),
+        (Level.THREE_R, 700.0, 100.0),
+        (Level.ONE, below(400.0), 3e4),
+        (Level.ONE, 400.0, 100.0),
+        (Level.THREE_B, 400.0, 100.0),
+    ],
+)
+def test_time_bases_on_both_sides_of_their_edges(level, wavelength, seconds):
+    assert time_base_s(level, wavelength) == seconds
+
+
+@pytest.mark.parametrize(("wavelength", "exists"), [(below(302.5), False), (302.5, True)])
+def test_class_3r_begins_at_302_5_nm(wavelength, exists):
+    assert (classify_continuous(wavelength, 1e-9).limits["3R"] is not None) is exists
+
+
+@pytest.mark.parametrize(
+    ("wavelength", "exists"),
+    [(below(400.0), False), (400.0, True), (below(700.0), True), (700.0, False)],
+)
+def test_class_2_is_for_visible_light(wavelength, exists):
+    assert (classify_continuous(wavelength, 1e-9).limits["2"] is not None) is exists
+
+
+def test_each_class_ends_at_its_limit_and_not_before():
+    # One by one at the limit and a hair above: the two sides of every class.
+    for wavelength in (355.0, 532.0, 1064.0, 1550.0):
+        limits = classify_continuous(wavelength, 0.0).limits
+        order = [name for name in ("1", "2", "3R", "3B") if limits[name] is not None]
+        for name, after in zip(order, [*order[1:], "4"], strict=True):
+            assert classify_continuous(wavelength, limits[name]).name == name
+            above = math.nextafter(limits[name], math.inf)
+            assert classify_continuous(wavelength, above).name == after

@@ -11,7 +11,7 @@ from benchlay.exposure import factors
 from benchlay.exposure.apertures import eye_aperture_mm, skin_aperture_mm
 from benchlay.exposure.emission import Level, emission_limit
 from benchlay.exposure.limits import eye_limit, eye_thermal_limit_j_m2, skin_limit
-from benchlay.exposure.trains import Train, eye_rules, skin_rules
+from benchlay.exposure.trains import Train, eye_pulse_limit_j_m2, eye_rules, skin_pulse_limit_j_m2
 from tests.exposure import oracle
 
 # Both sides reckon in doubles, by other orders of the same few products and powers.
@@ -173,16 +173,15 @@ def trains(count, seed):
 
 
 def test_trains_to_the_eye():
-    for wl, whole, pulse, rate, alpha in trains(3000, 7):
-        rules = eye_rules(wl, whole, Train(pulse, rate), alpha_mrad=alpha)
-        found = min(rule.per_pulse for rule in rules)
-        expected = oracle.train(wl, whole, pulse, rate, alpha)
-        assert found == pytest.approx(expected, rel=1e-9), (wl, whole, pulse, rate, alpha)
+    wl, whole, pulse, rate, alpha = (np.array(c) for c in zip(*trains(3000, 7), strict=True))
+    found = eye_pulse_limit_j_m2(wl, whole, pulse, rate, alpha_mrad=alpha)
+    expected = [oracle.train(*one) for one in zip(wl, whole, pulse, rate, alpha, strict=True)]
+    np.testing.assert_allclose(found, expected, rtol=1e-9)
 
 
 def test_trains_to_the_skin():
     for wl, whole, pulse, rate, _ in trains(1000, 9):
-        found = min(rule.per_pulse for rule in skin_rules(wl, whole, Train(pulse, rate)))
+        found = skin_pulse_limit_j_m2(wl, whole, pulse, rate)
         expected = oracle.train(wl, whole, pulse, rate, dose=oracle.skin, heat=None)
         assert found == pytest.approx(expected, rel=SAME)
 
