@@ -151,6 +151,79 @@ MATRIX = keys(
     {"states": listed(TEXT),
      "rows": listed(keys({"id": TEXT, "in": listed(YES_NO), "worst": TEXT}))}
 )  # fmt: skip
+PULSES = keys({"energy_J": NUMBER, "duration_s": NUMBER, "rate_Hz": NUMBER})
+SPAN = keys({"from_m": NUMBER, "to_m": maybe(NUMBER), "far_field_m": maybe(NUMBER)})
+SOURCE = keys(
+    {
+        "source": TEXT, "wavelength_nm": NUMBER, "power_W": NUMBER, "pulses": maybe(PULSES),
+        "class_as_modelled": maybe(TEXT), "statement": TEXT, "unit": one_of({"W", "J"}),
+        "limits": named(maybe(NUMBER)), "naked_eye": NUMBER, "binoculars": NUMBER,
+        "mpe_W_m2": maybe(NUMBER), "time_base_s": maybe(NUMBER), "span": maybe(SPAN),
+    }
+)  # fmt: skip
+REACHED = keys(
+    {
+        "class_as_modelled": maybe(TEXT), "statement": TEXT,
+        "lines": listed(
+            keys(
+                {"source": TEXT, "wavelength_nm": NUMBER, "class_as_modelled": maybe(TEXT),
+                 "statement": TEXT, "power_W": NUMBER, "limit_W": maybe(NUMBER),
+                 "ratio": maybe(NUMBER), "beam": maybe(INTEGER), "from": TEXT, "at": maybe(POINT)}
+            )
+        ),
+        "scattered": maybe(
+            keys(
+                {"surface": TEXT, "wavelength_nm": NUMBER, "distance_m": NUMBER,
+                 "power_W": NUMBER, "class_as_modelled": maybe(TEXT)}
+            )
+        ),
+    }
+)  # fmt: skip
+HAZARDS = keys(
+    {
+        "state": TEXT, "edition": TEXT, "time_base_s": maybe(NUMBER), "sources": listed(SOURCE),
+        "accessible": keys(
+            {"counts": one_of({"inside", "outside"}), "because": listed(TEXT),
+             "class_as_modelled": maybe(TEXT), "statement": TEXT, "outside": maybe(REACHED),
+             "inside": REACHED}
+        ),
+        "distances": listed(
+            keys(
+                {"source": TEXT, "wavelength_nm": NUMBER, "beam": INTEGER, "from": TEXT,
+                 "at": POINT, "power_W": NUMBER, "limit_W": NUMBER, "from_m": NUMBER,
+                 "to_m": maybe(NUMBER), "far_field_m": maybe(NUMBER), "stopped_m": maybe(NUMBER),
+                 "ends": TEXT, "alike": INTEGER}
+            )
+        ),
+        "eyewear": listed(
+            keys(
+                {"where": one_of({"inside", "outside"}), "wavelength_nm": NUMBER,
+                 "optical_density": maybe(NUMBER), "alone": maybe(NUMBER), "scale": maybe(TEXT),
+                 "beam_mm": maybe(NUMBER), "scale_1_mm": maybe(TEXT), "exposure_W_m2": NUMBER,
+                 "mpe_W_m2": maybe(NUMBER), "time_base_s": maybe(NUMBER), "source": maybe(TEXT),
+                 "beam": maybe(INTEGER), "from": maybe(TEXT), "at": maybe(POINT)}
+            )
+        ),
+        "diffuse": listed(
+            keys(
+                {"surface": TEXT, "wavelength_nm": NUMBER, "at": POINT, "power_W": NUMBER,
+                 "reflectance": NUMBER, "spot_mm": NUMBER, "angle_mrad": maybe(NUMBER),
+                 "distance_m": maybe(NUMBER), "point_source_m": maybe(NUMBER)}
+            )
+        ),
+        "controlled_area_m2": NUMBER,
+        "people": listed(
+            keys({"name": TEXT, "eyes": TEXT, "at": PAIR, "inside": YES_NO,
+                  "edge_m": maybe(NUMBER)})
+        ),
+        "passages": listed(keys({"kind": TEXT, "name": TEXT, "reached": YES_NO})),
+        "holds": listed(TEXT), "assumptions": listed(TEXT), "not_computed": listed(TEXT),
+    }
+)  # fmt: skip
+SIGN = keys(
+    {"number": TEXT, "kind": TEXT, "place": TEXT, "class_as_modelled": maybe(TEXT),
+     "words": listed(TEXT), "triangle_mm": NUMBER, "size_mm": PAIR}
+)  # fmt: skip
 REVIEW = keys(
     {
         "layout": TEXT, "sha256": TEXT, "title": maybe(TEXT), "revision": maybe(TEXT),
@@ -160,8 +233,10 @@ REVIEW = keys(
             keys({"check": TEXT, "state": TEXT, "ran": YES_NO, "reason": maybe(TEXT)})
         ),
         "limits_used": listed(LIMIT), "routes": listed(ROUTE), "ledger": LEDGER,
-        "zones": listed(ZONE), "coverage": listed(dict), "panels": listed(dict),
+        "zones": listed(ZONE), "controlled_areas": listed(dict), "coverage": listed(dict),
+        "panels": listed(dict),
         "cavities": listed(dict), "matched": listed(dict), "handed_over": listed(HANDED_OVER),
+        "hazards": listed(HAZARDS), "signs": listed(SIGN),
         "not_computed": listed(TEXT), "matrix": MATRIX,
     }
 )  # fmt: skip
@@ -216,6 +291,8 @@ def test_check(printed):
     assert review["matrix"]["states"] == ["as drawn", "glance", "off"]
     assert [row["id"] for row in review["matrix"]["rows"]] == [f["id"] for f in review["findings"]]
     assert review["zones"]
+    assert [found["state"] for found in review["hazards"]] == ["as drawn", "glance", "off"]
+    assert review["signs"]
     assert "accept-unmatched" in {finding["check"] for finding in review["findings"]}
 
 

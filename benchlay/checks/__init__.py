@@ -29,7 +29,15 @@ from benchlay.checks import (
     tight_access,
     unaccounted,
 )
-from benchlay.checks._check import Check, Context, LineLimit, Run, floors_w, limits_of
+from benchlay.checks._check import (
+    Check,
+    Context,
+    LineLimit,
+    Run,
+    accessible_w,
+    floors_w,
+    limits_of,
+)
 from benchlay.checks._run import run_checks as _run
 from benchlay.findings import Finding
 
@@ -68,4 +76,14 @@ def run_checks(context: Context) -> tuple[list[Finding], list[Run]]:
     return _run(context, CHECKS)
 
 
-__all__ = ["CHECKS", "Check", "Context", "LineLimit", "Run", "floors_w", "limits_of", "run_checks"]
+__all__ = [
+    "CHECKS",
+    "Check",
+    "Context",
+    "LineLimit",
+    "Run",
+    "accessible_w",
+    "floors_w",
+    "limits_of",
+    "run_checks",
+]

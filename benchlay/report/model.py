@@ -15,6 +15,7 @@ from benchlay.findings import MergedFinding, Severity
 from benchlay.named import NamedTuple
 
 if TYPE_CHECKING:
+    from benchlay.hazards.model import Sign, StateHazards
     from benchlay.report.details import (
         Cavity,
         ControlledArea,
@@ -119,6 +120,7 @@ class Remedies(NamedTuple):
 class Review(NamedTuple):
     """Everything that is said of one layout.
 
+    `hazards` says what each state asks of people, `signs` is the schedule of labels and signs,
     `not_computed` says in sentences what the zones leave out. `lines` are the layout's own
     lines, for quoting; they are no part of the JSON.
     """
@@ -140,6 +142,8 @@ class Review(NamedTuple):
     cavities: tuple[Cavity, ...] = ()
     matched: tuple[Match, ...] = ()
     handed_over: tuple[HandedOver, ...] = ()
+    hazards: tuple[StateHazards, ...] = ()
+    signs: tuple[Sign, ...] = ()
     not_computed: tuple[str, ...] = ()
     remedies: Remedies | None = None  # where they were asked for
     lines: tuple[str, ...] = ()

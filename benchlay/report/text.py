@@ -29,8 +29,9 @@ def check_text(results: Sequence[Review | LayoutErrors], *, ink: Ink = PLAIN) ->
         else _review_text(result, ink)
         for result in results
     ]
-    if any(isinstance(result, Review) for result in results):
-        parts.append(_cautions())
+    reviews = [result for result in results if isinstance(result, Review)]
+    if reviews:
+        parts.append(_cautions(of_exposure=any(review.hazards for review in reviews)))
     return "\n".join(parts)
 
 
@@ -70,6 +71,10 @@ def _review_text(review: Review, ink: Ink) -> str:
     lines += _not_evaluated(review)
     lines += _limit_lines(review)
     lines.append(verdict_line(review))
+    if review.hazards:
+        from benchlay.report.hazards_text import hazard_lines
+
+        lines += hazard_lines(review.hazards)
     return "\n".join(lines) + "\n"
 
 
@@ -168,5 +173,11 @@ def _power(limit: LimitUsed) -> str:
     return f"{power} in the mean, {shown(limit.accessible_J, 'J')} a pulse,"
 
 
-def _cautions() -> str:
-    return "\n".join(f"caution: {caution}" for caution in CAUTIONS) + "\n"
+def _cautions(*, of_exposure: bool) -> str:
+    """Write what all of it must be read with, and what figures of exposure must besides."""
+    words: tuple[str, ...] = CAUTIONS
+    if of_exposure:
+        from benchlay.exposure.cautions import CAUTIONS as OF_EXPOSURE
+
+        words += OF_EXPOSURE
+    return "\n".join(f"caution: {caution}" for caution in words) + "\n"

@@ -90,4 +90,9 @@ def review(checked: Checked, paper: Paper, on: date, *, in_full: bool) -> Review
         return short
     from benchlay.results.details import with_details
 
-    return with_details(short, trace, checked.states, checked.zones)
+    full = with_details(short, trace, checked.states, checked.zones)
+    if checked.zones is None:
+        return full
+    from benchlay.results.hazards import with_hazards
+
+    return with_hazards(full, trace, checked.limits, checked.states, checked.zones)

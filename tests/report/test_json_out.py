@@ -31,7 +31,7 @@ REVIEW_KEYS = [
     "layout", "sha256", "title", "revision", "as_of", "verdict", "findings", "checks",
     "limits_used", "routes", "ledger", "zones",
     "controlled_areas", "coverage", "panels", "cavities", "matched",
-    "handed_over", "not_computed", "matrix",
+    "handed_over", "hazards", "signs", "not_computed", "matrix",
 ]  # fmt: skip
 BEAM_KEYS = [
     "beam", "parent", "source", "wavelength_nm", "splits", "route", "routes", "leg", "from",

@@ -15,6 +15,7 @@ from benchlay.checks._check.exits import Exit, exits_of
 from benchlay.checks._check.limits import LineLimit, floors_w, limits_of
 from benchlay.checks._check.meetings import Loss, Mark
 from benchlay.checks._check.openings import Room, room_at
+from benchlay.checks._check.power import accessible_w
 from benchlay.checks._check.protocol import Check, Found, Run, Unevaluated
 from benchlay.checks._check.routes import Leg
 from benchlay.checks._check.without_limit import unjudged
@@ -47,6 +48,7 @@ __all__ = [
     "Run",
     "Unevaluated",
     "above",
+    "accessible_w",
     "angle_text",
     "distance_mm",
     "event_words",

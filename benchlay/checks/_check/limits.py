@@ -17,10 +17,11 @@ _DARK_W = 1e-9
 
 
 class LineLimit(NamedTuple):
-    """The accessible limit, or the sentence that says why there is none."""
+    """The accessible limit, or the sentence that says why there is none, and for what pulses."""
 
     limit: AccessibleLimit | None
     reason: str | None = None
+    pulse: Pulse | None = None
 
 
 LimitKey: TypeAlias = tuple[int, str, float]
@@ -60,9 +61,9 @@ def _pulses(lines: Sequence[Line], wavelength_nm: float) -> PulseTrain | None:
 def _limit(wavelength_nm: float, base_s: float | None, pulse: PulseTrain | None) -> LineLimit:
     train = None if pulse is None else Pulse(pulse.energy_j, pulse.duration_s, pulse.rate_hz)
     try:
-        return LineLimit(accessible_limit(wavelength_nm, base_s, train))
+        return LineLimit(accessible_limit(wavelength_nm, base_s, train), pulse=train)
     except OutOfRange as error:
-        return LineLimit(None, str(error))
+        return LineLimit(None, str(error), train)
 
 
 def floors_w(placed: Placed, limits: Limits) -> dict[float, float]:

@@ -1,0 +1,20 @@
+"""What a review says of hazards: per state, and the schedule of labels and signs."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+
+from benchlay.checks import Context
+from benchlay.hazards import hazards_of, signs_of
+from benchlay.report.model import Review
+from benchlay.results.limits import Limits
+from benchlay.tracing import Trace
+from benchlay.zones import Zones
+
+
+def with_hazards(
+    review: Review, trace: Trace, limits: Limits, states: Sequence[str], zones: Zones
+) -> Review:
+    """Return a review with the hazards of some states."""
+    found = hazards_of(Context(trace, limits), zones, states)
+    return review._replace(hazards=found, signs=signs_of(trace.placed.base.layout, found))

@@ -1,0 +1,6 @@
+"""Lets tests import what judges layouts, which lies beside them."""
+
+import sys
+from pathlib import Path
+
+sys.path.insert(0, str(Path(__file__).parent))
