@@ -69,7 +69,7 @@ def test_the_stages_from_python(files):
     findings = benchlay.check(trace)
     assert "escape" in {finding.check for finding in findings}
     assert [f.check for f in benchlay.check(trace, states=["warm-up"])] != []
-    assert sorted(benchlay.draw(trace)) == ["plan.dxf", "plan.svg"]
+    assert sorted(benchlay.draw(trace)) == ["plan.dxf", "plan.svg", "sheets.pdf"]
 
 
 def test_a_broken_layout_raises_all_its_problems():
@@ -114,7 +114,7 @@ def test_a_state_that_does_not_exist_names_those_that_do(files):
         (["trace", "clean.yaml"], 0),
         (["trace", "broken.yaml", "--json"], 2),
         (["trace", "escapes.yaml", "--state", "warm-up"], 0),
-        (["draw", "clean.yaml", "--format", "pdf"], 2),
+        (["draw", "clean.yaml", "--format", "pdf"], 0),
         (["draw", "clean.yaml", "--sheet", "room"], 2),
         (["review", "broken.yaml"], 2),
     ],
@@ -158,6 +158,7 @@ def test_a_review_writes_its_files(files, capsys):
         "findings.json",
         "plan.dxf",
         "plan.svg",
+        "sheets.pdf",
     ]
     record = json.loads((folder / "findings.json").read_text(encoding="ascii"))
     cli.run(["check", "--json", "escapes.yaml"])

@@ -13,15 +13,21 @@ from benchlay.document.span import Span
 from benchlay.findings import Severity
 from benchlay.layout.layout import Layout
 from benchlay.report.model import Reported
-from benchlay.sheets import SHEETS, UnknownSheetError, sheets_of
+from benchlay.sheets import SHEETS, Composed, UnknownSheetError, sheets_of
 from benchlay.sheets.primitives import Sheet
 from benchlay.sheets.scale import PLAN_SIZES, NothingFitsError
 from benchlay.tracing import Trace
-from benchlay.writers import dxf, svg
+from benchlay.writers import dxf, pdf, svg
 from benchlay.zones import Zones
 
-FORMS: Mapping[str, Callable[[Sheet], bytes]] = {"dxf": dxf.write, "svg": svg.write}
+FORMS: Mapping[str, Callable[[Sheet], bytes]] = {
+    "dxf": dxf.write,
+    "svg": svg.write,
+    "pdf": pdf.write,
+}
 """How a sheet is written, by the ending of its file."""
+
+SET = "sheets.pdf"  # all sheets of the set in one file
 
 
 def refusals(layout: Layout, sheet: str | None, form: str | None) -> tuple[Problem, ...]:
@@ -72,12 +78,27 @@ def drawings(
         return _unknown(trace.placed.base.layout, error)
     except NothingFitsError as error:
         return _too_large(trace.placed.base.layout, error)
-    return {
+    files = {
         f"{drawn.name}.{ending}": write(drawn)
         for drawn, planned in composed
         for ending, write in FORMS.items()
-        if form in (None, ending) and (planned.forms is None or ending in planned.forms)
+        if form in (None, ending)
+        and (planned.forms is None or ending in planned.forms)
+        and not (planned.within and ending == "pdf")
+        and not (sheet is None and planned.numbered and ending == "pdf")  # they are in the set
     }
+    return files | (_gathered(composed, whole=sheet is None) if form in (None, "pdf") else {})
+
+
+def _gathered(composed: Sequence[Composed], *, whole: bool) -> dict[str, bytes]:
+    """Return the PDFs of several pages: the whole set, and those that sheets ask for by name."""
+    pages: dict[str, list[Sheet]] = {}
+    for drawn, planned in composed:
+        if whole and planned.numbered:
+            pages.setdefault(SET, []).append(drawn)
+        if planned.within:
+            pages.setdefault(f"{planned.within}.pdf", []).append(drawn)
+    return {name: pdf.write_set(sheets) for name, sheets in pages.items()}
 
 
 def _unknown(layout: Layout, error: UnknownSheetError) -> Problem:

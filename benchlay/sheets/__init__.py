@@ -37,6 +37,7 @@ class Planned(NamedTuple):
     compose: Callable[[str], Sheet]  # from what the title block says of its number, as "2/7"
     numbered: bool = True  # a sheet of the set; cutting files have no title block, no number
     forms: Collection[str] | None = None  # endings of the files it is written as; None: all
+    within: str = ""  # the PDF of several pages that it belongs to, instead of one of its own
 
 
 class UnknownSheetError(ValueError):

@@ -25,13 +25,13 @@ from __future__ import annotations
 from collections.abc import Iterable
 
 from benchlay.named import NamedTuple
-from benchlay.sheets.frame import frame, rectangle
+from benchlay.sheets.frame import WIDTH_MM, frame, rectangle
 from benchlay.sheets.layers import BeamLook, sheet_layers
 from benchlay.sheets.lettering import LINE_PITCH, SMALL_MM, wrap
 from benchlay.sheets.primitives import Block, Layer, Point, Primitive, Sheet, Text
 from benchlay.sheets.scale import SCALES, SIZES_MM, NothingFitsError, Window, frame_of
 from benchlay.sheets.tables import Column, Drawn, Table, table
-from benchlay.sheets.title_block import HEIGHT_MM, WIDTH_MM, TitleFields, title_block
+from benchlay.sheets.title_block import HEIGHT_MM, TitleFields, title_block
 
 CAUTION = (
     "A calculation aid, not an approval: the standard in force, local rules and the laser safety "

@@ -18,6 +18,7 @@ from benchlay.sheets.scale import Window, frame_of
 _ZONE_MM = 50.0
 _STRIP_MM = 5.0
 _MARK_INSIDE_MM = 5.0
+WIDTH_MM = 180.0  # of the title block, at the right
 _LETTERS = "ABCDEFGHJKLMNPQRSTUVWXYZ"
 
 
@@ -46,7 +47,9 @@ def _centring_marks(inner: Window, size_mm: Point) -> Iterator[Line]:
     """Draw four marks at the middles of the sheet's sides, from the strip's outer edge."""
     x, y = size_mm[0] / 2, size_mm[1] / 2
     out, into = _STRIP_MM, _MARK_INSIDE_MM
-    yield Line("SHEET", (x, inner.low - out), (x, inner.low + into))
+    # On A4 the title block stands over the middle, and the mark would run into its lettering.
+    foot = into if inner.right - WIDTH_MM > x else 0.0
+    yield Line("SHEET", (x, inner.low - out), (x, inner.low + foot))
     yield Line("SHEET", (x, inner.high - into), (x, inner.high + out))
     yield Line("SHEET", (inner.left - out, y), (inner.left + into, y))
     yield Line("SHEET", (inner.right - into, y), (inner.right + out, y))

@@ -3,9 +3,8 @@
 from __future__ import annotations
 
 import unicodedata
-from functools import cache
 
-from benchlay.sheets.letter_widths import CAP_HEIGHT, RUNS, UNITS_PER_EM, WIDEST
+from benchlay.sheets.font import CAP_HEIGHT, UNITS_PER_EM, font
 
 # ISO 3098-1: heights in steps of root 2; 2,5 for tables, tags and notes, 3,5 for headings,
 # 5 for titles. Nothing on our sheets is lower than the first.
@@ -48,16 +47,6 @@ def _fit(letter: str) -> str:
     return _REPLACEMENT if unicodedata.category(letter) in _UNFIT else letter
 
 
-@cache
-def _widths() -> dict[str, int]:
-    """Width by letter, in units of the font's em."""
-    return {
-        chr(first + offset): int(width)
-        for first, run in RUNS.items()
-        for offset, width in enumerate(run.split())
-    }
-
-
 def font_size_mm(height_mm: float) -> float:
     """Size of the em for a height of capitals, as formats that speak of fonts want it.
 
@@ -82,11 +71,12 @@ def width_mm(text: str, height_mm: float) -> float:
     Returns
     -------
     float
-        mm on paper. Letters missing from the table count as the widest there is.
+        mm on paper. Letters that the font lacks count as twice as wide as they are high.
     """
-    widths = _widths()
-    units = sum(widths.get(letter, WIDEST) for letter in text)
-    return SLACK * units * height_mm / CAP_HEIGHT
+    known = font()
+    lacking = sum(letter not in known.glyphs for letter in text)
+    units = known.advance("".join(letter for letter in text if letter in known.glyphs))
+    return SLACK * (units * height_mm / CAP_HEIGHT + 2.0 * lacking * height_mm)
 
 
 def shorten(text: str, room_mm: float, height_mm: float) -> str:

@@ -9,7 +9,7 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from benchlay.named import NamedTuple
-from benchlay.sheets.frame import rectangle
+from benchlay.sheets.frame import WIDTH_MM, rectangle
 from benchlay.sheets.lettering import (
     MIDDLE_MM,
     SMALL_MM,
@@ -21,7 +21,6 @@ from benchlay.sheets.lettering import (
 from benchlay.sheets.primitives import Circle, Line, Point, Polyline, Primitive, Text
 from benchlay.sheets.scale import Window, frame_of
 
-WIDTH_MM = 180.0
 ROW_MM = 8.8
 HEIGHT_MM = 5 * ROW_MM
 _INSET_MM = 1.2
@@ -65,7 +64,7 @@ def title_block(fields: TitleFields, size_mm: Point) -> Iterator[Primitive]:
         if row:
             yield Line("TITLE", (left, foot), (inner.right, foot))
         yield from _row(cells, left, foot)
-    yield from _projection(fields.projection, (inner.right - 8.0, low + 3.5 * ROW_MM))
+    yield from _projection(fields.projection, (inner.right - 7.2, low + 3.4 * ROW_MM))
 
 
 def _rows(fields: TitleFields) -> list[list[_Cell]]:
@@ -123,7 +122,7 @@ def _projection(name: str, at: Point) -> Iterator[Primitive]:
     First angle has the circles at the right of the cone, third angle at its left.
     """
     x, y = at
-    cone, rings = (x - 4.0, x + 4.0) if name == "first" else (x + 4.0, x - 4.0)
+    cone, rings = (x - 3.4, x + 3.4) if name == "first" else (x + 3.4, x - 3.4)
     small, large, half = 1.1, 2.2, 2.2
     corners = (
         (cone - half, y - small),

@@ -1,21 +1,53 @@
 """Drawings as files, and what speaks against making one."""
 
 import xml.etree.ElementTree as ET
+from io import BytesIO
 
+import pypdf
 import pytest
 
+from benchlay import sheets
 from benchlay.results.drawings import drawings, refusals
+from benchlay.sheets import Planned
 
 
 def test_every_sheet_in_every_form(corner):
     files = drawings(corner, sha256="0" * 64)
-    assert sorted(files) == ["plan.dxf", "plan.svg"]
+    assert sorted(files) == ["plan.dxf", "plan.svg", "sheets.pdf"]
     assert ET.fromstring(files["plan.svg"]).tag.endswith("svg")
     assert b"0" * 64 in files["plan.dxf"]
 
 
 def test_one_form_alone(corner):
     assert list(drawings(corner, form="svg")) == ["plan.svg"]
+    assert list(drawings(corner, form="pdf")) == ["sheets.pdf"]
+
+
+def test_a_sheet_asked_for_by_name_is_a_file_of_its_own(corner):
+    assert list(drawings(corner, sheet="plan", form="pdf")) == ["plan.pdf"]
+    assert sorted(drawings(corner, sheet="plan")) == ["plan.dxf", "plan.pdf", "plan.svg"]
+
+
+def test_pages_that_belong_together_are_one_file(corner, monkeypatch):
+    def tiles(subject):
+        (plan,) = sheets.SHEETS["plan"](subject)
+        for n in (1, 2, 3):
+            name = f"template-{n}"
+            yield Planned(
+                name,
+                lambda number, name=name: plan.compose(number)._replace(name=name),
+                numbered=False,
+                forms=("pdf",),
+                within="template",
+            )
+
+    monkeypatch.setattr(sheets, "SHEETS", {**sheets.SHEETS, "template": tiles})
+    files = drawings(corner)
+    assert sorted(files) == ["plan.dxf", "plan.svg", "sheets.pdf", "template.pdf"]
+    count = {
+        name: len(pypdf.PdfReader(BytesIO(files[name])).pages) for name in files if "pdf" in name
+    }
+    assert count == {"sheets.pdf": 1, "template.pdf": 3}
 
 
 @pytest.mark.parametrize(
@@ -24,7 +56,8 @@ def test_one_form_alone(corner):
         ("plan", "svg", []),
         (None, None, []),
         ("pln", None, ["there is no sheet 'pln'"]),
-        (None, "pdf", ["not yet: sheets are not written as pdf"]),
+        (None, "pdf", []),
+        (None, "png", ["not yet: sheets are not written as png"]),
     ],
 )
 def test_what_cannot_be_drawn_is_refused(corner, sheet, form, said):

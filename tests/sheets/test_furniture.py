@@ -7,7 +7,7 @@ import shapely
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
-from benchlay.sheets import hatching, letter_widths, lettering, scale, tables
+from benchlay.sheets import font, hatching, lettering, scale, tables
 from benchlay.sheets.frame import frame
 from benchlay.sheets.placing_text import Crowd
 from benchlay.sheets.primitives import Text
@@ -17,20 +17,19 @@ from benchlay.sheets.title_block import TitleFields, title_block
 A3 = (420.0, 297.0)
 
 
-# Advance widths read with fontTools from the file of DejaVu Sans Condensed 2.37, letter by letter;
-# the whole table is made from that file by letter_widths_from_font.py.
+# Advance widths read with fontTools from the file of DejaVu Sans Condensed 2.37, letter by letter.
 FROM_THE_FONT = {" ": 585, "H": 1386, "i": 512, "W": 1822, "g": 1170, "µ": 1172, "Ω": 1408,
                  "²": 738, "−": 1544, "0": 1172}  # fmt: skip
 
 
 @pytest.mark.parametrize(("letter", "units"), FROM_THE_FONT.items())
 def test_widths_are_those_of_the_font(letter, units):
-    (width,) = (
-        int(run.split()[ord(letter) - first])
-        for first, run in letter_widths.RUNS.items()
-        if 0 <= ord(letter) - first < len(run.split())
-    )
-    assert width == units
+    assert font.font().advance(letter) == units
+
+
+def test_a_letter_that_the_font_lacks_is_taken_as_wide():
+    assert "世" not in font.font().glyphs
+    assert lettering.width_mm("世", 2.5) > lettering.width_mm("W", 2.5)
 
 
 def test_a_line_is_as_wide_as_its_letters_with_slack():

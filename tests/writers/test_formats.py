@@ -282,7 +282,8 @@ def test_recorder_keeps_the_order_of_inking():
 def test_same_sheet_same_bytes_whatever_the_hash_seed(tmp_path):
     code = (
         "import sys; sys.path.insert(0, sys.argv[1]); import test_formats as t, hashlib;"
-        "print([hashlib.sha256(w.write(t.EVERYTHING)).hexdigest() for w in (t.dxf, t.svg)])"
+        "from benchlay.writers import dxf, pdf, svg;"
+        "print([hashlib.sha256(w.write(t.EVERYTHING)).hexdigest() for w in (dxf, svg, pdf)])"
     )
     folder = __file__.rpartition("/")[0]
     seen = set()

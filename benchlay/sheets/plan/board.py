@@ -7,6 +7,7 @@ from collections.abc import Iterable, Sequence
 
 from benchlay.named import NamedTuple
 from benchlay.sheets.contents import Picture
+from benchlay.sheets.frame import WIDTH_MM
 from benchlay.sheets.placing_text import Crowd
 from benchlay.sheets.primitives import Point
 from benchlay.sheets.scale import (
@@ -18,7 +19,7 @@ from benchlay.sheets.scale import (
     frame_of,
     view_of,
 )
-from benchlay.sheets.title_block import HEIGHT_MM, WIDTH_MM
+from benchlay.sheets.title_block import HEIGHT_MM
 
 _CLEAR_MM = 2.0
 BLOCK_MM, BLOCK_GAP_MM = 101.0, 4.0  # of the table of elements
