@@ -222,6 +222,11 @@ def _add_nothing(parser: argparse.ArgumentParser) -> None:
 def _add_exposure(parser: argparse.ArgumentParser) -> None:
     from benchlay.results.one_beam import FORMS, flag
 
+    parser.description = (
+        "Say of one beam what exposure limits, class, hazard distances and eyewear follow. "
+        "Continuous light has a --power; pulses have energy, duration and rate. The beam's "
+        "--diameter and --divergence go together; without them no hazard distance follows."
+    )
     for name, form in FORMS.items():
         # A figure may be written as two words; one that is given twice is refused later.
         parser.add_argument(

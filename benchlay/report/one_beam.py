@@ -156,14 +156,23 @@ def _head(asked: Question) -> str:
     return f"{_nm(asked)}: {what}; {seen}\n{wide}"
 
 
+_HEADINGS: tuple[str, ...] = ("", "limit", "governed by", "over", "at the exit", "ratio")
+
+
 def _limits(found: Assessment) -> str:
-    lines = [f"exposure limits, {EDITION}"]
+    rows = [_HEADINGS]
     for name, rules in (("eye", found.eye), ("skin", found.skin)):
-        lines += _table([_rule_cells(name if i == 0 else "", r) for i, r in enumerate(rules)])
-        lines.append(f"    {rules[0].limit.source}")
+        rows += [_rule_cells(name if i == 0 else "", rule) for i, rule in enumerate(rules)]
     worst = found.strictest
-    lines.append(f"  at the exit: {number(worst.ratio, 4)} times the eye's limit ({worst.rule})")
-    return "\n".join(lines)
+    return "\n".join(
+        [
+            f"exposure limits, {EDITION}",
+            *_table(rows),
+            f"  at the exit: {number(worst.ratio, 4)} times the eye's limit ({worst.rule})",
+            f"    eye: {found.eye[0].limit.source}",
+            f"    skin: {found.skin[0].limit.source}",
+        ]
+    )
 
 
 def _rule_cells(name: str, held: Held) -> tuple[str, ...]:
@@ -172,9 +181,9 @@ def _rule_cells(name: str, held: Held) -> tuple[str, ...]:
         name,
         _per_area(limit.value, limit.unit),
         limit.governs,
-        f"over {number(limit.aperture_mm) + ' mm'}",
-        f"here {_per_area(held.exposure, limit.unit)}",
-        f"ratio {number(held.ratio, 4)}",
+        f"{number(limit.aperture_mm)} mm",
+        _per_area(held.exposure, limit.unit),
+        number(held.ratio, 4),
     )
 
 

@@ -140,6 +140,10 @@ def test_an_elliptical_beam_reaches_as_far_as_its_mean_angle_says():
     assert hazardous_stretch(beam, 1.0, MPE, 7.0).end_m == pytest.approx(expected, rel=2e-3)
 
 
+def test_a_waist_lies_at_the_exit_unless_it_is_said():
+    assert from_axes(Axis(0.5, 1e-3)).foci_m() == (0.0, 0.0)
+
+
 def test_one_parallel_axis():
     beam = from_axes(Axis(1.0, 0.0), Axis(1.0, 1e-3, 0.5))
     assert beam.foci_m() == pytest.approx((0.5, 0.5))
@@ -156,13 +160,24 @@ def test_a_beam_that_does_not_spread_has_no_end():
     assert hazardous_stretch(from_axes(Axis(1.0, 0.0)), 1.0, MPE, 7.0) == (0.0, math.inf)
 
 
-@pytest.mark.parametrize("axis", [Axis(0.0, 1e-3), Axis(1.0, -1e-3), Axis(1.0, 1e-3, math.nan)])
+@pytest.mark.parametrize(
+    "axis",
+    [
+        Axis(0.0, 1e-3),
+        Axis(math.inf, 1e-3),
+        Axis(1.0, -1e-3),
+        Axis(1.0, math.inf),
+        Axis(1.0, 1e-3, math.nan),
+    ],
+)
 def test_what_is_no_beam_is_refused(axis):
     with pytest.raises(OutOfRange, match="no beam"):
         from_axes(axis)
 
 
-@pytest.mark.parametrize(("power", "limit"), [(-1.0, 1.0), (1.0, 0.0), (math.nan, 1.0)])
+@pytest.mark.parametrize(
+    ("power", "limit"), [(-1.0, 1.0), (1.0, 0.0), (math.nan, 1.0), (math.inf, 1.0), (1.0, math.inf)]
+)
 def test_no_stretch_without_power_and_limit(power, limit):
     with pytest.raises(OutOfRange, match="no distance"):
         hazardous_stretch(from_axes(Axis(1.0, 1e-3)), power, limit, 7.0)

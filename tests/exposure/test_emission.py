@@ -229,3 +229,36 @@ def test_classes_are_ordered(wl, t):
     three_b = emission_limit(Level.THREE_B, wl, t).energy_j(t)
     assert one <= three_r
     assert one <= three_b
+
+
+def test_heat_of_class_2_on_both_sides_of_its_time_base():
+    short = 7e-4 * below(0.25) ** 0.75
+    assert thermal_emission_j(Level.TWO, 633.0, below(0.25)) == pytest.approx(short, rel=1e-9)
+    assert thermal_emission_j(Level.TWO, 633.0, 0.25) == pytest.approx(2.5e-4, rel=1e-9)
+
+
+@pytest.mark.parametrize(
+    ("level", "wavelength", "seconds", "recalled"),
+    [
+        (Level.ONE, 633.0, 100.0, True),
+        (Level.ONE, 440.0, below(100.0), True),
+        (Level.ONE, 440.0, 100.0, False),
+        (Level.ONE, 460.0, 100.0, True),
+        (Level.TWO, 633.0, 0.25, False),
+        (Level.TWO, 633.0, below(0.25), True),
+        (Level.THREE_R, 633.0, 0.25, False),
+        (Level.THREE_R, 633.0, below(0.25), True),
+        (Level.THREE_B, 532.0, 1e-8, False),
+        (Level.THREE_B, 1064.0, 1e-8, True),
+        (Level.THREE_B, 1064.0, 0.25, False),
+        (Level.THREE_B, 250.0, 0.25, True),
+    ],
+)
+def test_what_was_recalled_says_so(level, wavelength, seconds, recalled):
+    assert emission_limit(level, wavelength, seconds).from_memory is recalled
+
+
+def test_limits_of_large_sources_are_recalled():
+    for level in (Level.TWO, Level.THREE_R):
+        assert not emission_limit(level, 633.0, 0.25, alpha_mrad=1.5).from_memory
+        assert emission_limit(level, 633.0, 0.25, alpha_mrad=1.6).from_memory

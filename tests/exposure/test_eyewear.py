@@ -12,6 +12,7 @@ from benchlay.exposure.eyewear import (
     continuous_load_w_m2,
     continuous_scale,
     diameter_factor,
+    diameter_factor_applies,
     mode_for,
     optical_density,
     pulsed_scale,
@@ -158,3 +159,13 @@ def test_a_single_short_pulse_in_the_ultraviolet_is_judged_by_its_peak():
 
 def test_a_long_pulse_is_continuous_light_of_its_own_power():
     assert pulsed_scale(532.0, 1.0, 0.5, 0.1, 2.0) == continuous_scale(532.0, 2.0, 2.0)
+
+
+def test_the_factor_for_wide_beams_begins_above_its_bounds():
+    area = math.pi / 4.0 * 0.005**2
+    assert not diameter_factor_applies(1e5 * area, 5.0)
+    assert diameter_factor_applies(1e5 * area * (1.0 + 1e-9), 5.0)
+    assert not diameter_factor_applies(10.0, 50.0)
+    assert diameter_factor_applies(10.0 * (1.0 + 1e-9), 50.0)
+    assert not diameter_factor_applies(1e3, 1.0)
+    assert diameter_factor_applies(1e3, 1.001)
