@@ -1,6 +1,6 @@
 """Numbers with units, from text to a float in the program's own unit.
 
-Own units: mm, rad, nm, pure ratio, W, J, s, Hz, W/m², J/m².
+Own units: mm, rad, nm, pure ratio, W, J, s, Hz, W/m², J/m², kg/m³.
 """
 
 from __future__ import annotations

@@ -109,6 +109,13 @@ class Dimension(Enum):
         ("50 %", "1 %", "0.5", "1", "1.5", "2", "0"),
     )
     DENSITY = ("an optical density", "", "", dict[str, Unit](), ("2", "0.3", "0"))
+    MASS_DENSITY = (
+        "a density",
+        None,
+        "kg/m3",
+        {"kg/m3": Unit(), "g/cm3": Unit(3)},
+        ("2700 kg/m3", "7850 kg/m3"),
+    )
     POWER = ("a power", None, "W", _scaled("W", "m-kunpMG"), ("150 mW", "1 W", "1 kW"))
     ENERGY = ("an energy", None, "J", _scaled("J", "m-unpk"), ("2 mJ", "1 J", "1 nJ"))
     DURATION = ("a duration", None, "s", _DURATIONS, ("8 ns", "1 s", "100 s"))

@@ -13,7 +13,6 @@ from benchlay.layout._forms import LENGTH, NOT_NEGATIVE, OUTLINE, POINT, POSITIV
 
 ACCESS = Choice("none", "tool", "interlocked")
 MATERIAL = RefForm("a material")
-_SHOP_DRAWING = "it takes effect with the shop drawings of panels"
 # Ends of openings may coincide with edges; decimal lengths that should do so are apart by
 # rounding, which is below 1e-9 mm.
 _ROUNDING_MM = 1e-6
@@ -98,17 +97,25 @@ class Ends(Record):
 
 
 class Fix(Record):
-    """The row of fixing holes of a panel."""
+    """The rows of fixing holes of a panel: along its lower edge, and along each folded end."""
 
     hole_mm: float = key(POSITIVE, name="hole", meaning="diameter of the holes")
-    pitch_mm: float = key(POSITIVE, name="pitch", meaning="distance between them")
-    inset_mm: float = key(POSITIVE, name="inset", meaning="distance from the edge")
+    pitch_mm: float = key(
+        POSITIVE, name="pitch", meaning="distance between them; the row lies in the middle"
+    )
+    inset_mm: float = key(
+        POSITIVE,
+        name="inset",
+        meaning="distance from the edge (the free one of a flange), and the least from its ends",
+    )
 
 
 class Fold(Record):
-    """The flange a panel is folded to."""
+    """The flange along a panel's lower edge, and along each end that is folded."""
 
-    flange_mm: float = key(POSITIVE, name="flange", meaning="width of the flange")
+    flange_mm: float = key(
+        POSITIVE, name="flange", meaning="width of the flange over its outer faces"
+    )
     sense: str = key(Choice("in", "out"), default="in", meaning="to which side it is folded")
     radius_mm: float = key(POSITIVE, default=2.0, name="radius", meaning="inner bending radius")
 
@@ -134,22 +141,16 @@ class Panel(Record):
         RecordForm(Ends),
         default=None,
         meaning="how it meets its neighbours",
-        not_yet=_SHOP_DRAWING,
-        not_yet_is_note=True,
     )
     fix: Fix | None = key(
         RecordForm(Fix),
         default=None,
-        meaning="its row of fixing holes",
-        not_yet=_SHOP_DRAWING,
-        not_yet_is_note=True,
+        meaning="its rows of fixing holes",
     )
     fold: Fold | None = key(
         RecordForm(Fold),
         default=None,
-        meaning="its folded flange",
-        not_yet=_SHOP_DRAWING,
-        not_yet_is_note=True,
+        meaning="its folded flanges, at right angles",
     )
 
     @property

@@ -11,6 +11,7 @@ from benchlay.layout._forms import POSITIVE, SHARE
 _IRRADIANCE = Quantity(Dimension.IRRADIANCE, above=0.0)
 _FLUENCE = Quantity(Dimension.FLUENCE, above=0.0)
 _POWER = Quantity(Dimension.POWER, above=0.0)
+_MASS_DENSITY = Quantity(Dimension.MASS_DENSITY, above=0.0)
 _DURATION = Quantity(Dimension.DURATION, above=0.0)
 
 
@@ -65,6 +66,12 @@ class Material(Record):
     specular: float = key(SHARE, default=0.05, meaning="share reflected as by a mirror")
     withstands: Withstands | None = key(
         RecordForm(Withstands), default=None, meaning="its rating; without one none is assumed"
+    )
+    density_kg_m3: float | None = key(
+        _MASS_DENSITY,
+        default=None,
+        name="density",
+        meaning="its density, for what sheets of it weigh; without one that is not computed",
     )
 
     def after_read(self, reader: Reader) -> None:

@@ -9,6 +9,7 @@ from benchlay.named import NamedTuple
 
 if TYPE_CHECKING:
     from benchlay.findings import Severity
+    from benchlay.making.parts import Part
     from benchlay.sheets.elevation.contents import Elevation
     from benchlay.sheets.primitives import Sheet
     from benchlay.tracing.trace import Trace
@@ -82,9 +83,24 @@ def _elevations(subject: Subject) -> Iterator[Planned]:
         yield Planned(f"elevation-{name}", elevation)
 
 
+def _cuts(subject: Subject) -> Iterator[Planned]:
+    from benchlay.making.parts import parts_of
+    from benchlay.sheets.shop.cutting import cut_sheet
+
+    for part in parts_of(subject.trace.placed.base.layout):
+        if part.draft.lacks:
+            continue  # its shop drawing says what is missing; half of it is not to be cut
+
+        def cut(_: str, part: Part = part) -> Sheet:
+            return cut_sheet(part, (("layout sha256", subject.sha256),))
+
+        yield Planned(f"cut-{part.name}", cut, numbered=False, forms=("dxf",))
+
+
 SHEETS: Mapping[str, Callable[[Subject], Iterable[Planned]]] = {
     "plan": _plan,
     "elevation": _elevations,
+    "cut": _cuts,
 }
 """All kinds of sheet there are, by name, in the order of the set.
 

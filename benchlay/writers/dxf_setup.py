@@ -36,9 +36,10 @@ def document(sheet: Sheet) -> Drawing:
         doc.header.custom_vars.append(plain(key), plain(value))
     for layer in sheet.layers:
         _add_layer(doc, layer)
-    if VIEWPORT_LAYER not in doc.layers:
+    if sheet.paper and VIEWPORT_LAYER not in doc.layers:
         _add_layer(doc, Layer(VIEWPORT_LAYER, "edge of the view; not printed"))
-    doc.layers.get(VIEWPORT_LAYER).dxf.plot = 0
+    if VIEWPORT_LAYER in doc.layers:
+        doc.layers.get(VIEWPORT_LAYER).dxf.plot = 0
     doc.styles.add(LETTERING, font=_FONT)
     _add_dimension_style(doc, sheet)
     _set_views(doc, sheet)
@@ -128,7 +129,8 @@ def _set_views(doc: Drawing, sheet: Sheet) -> None:
             model.dxf.limmin, model.dxf.limmax = low, high
     middle = ((low[0] + high[0]) / 2, (low[1] + high[1]) / 2)
     doc.set_modelspace_vport(height=(high[1] - low[1]) * 1.02, center=middle)
-    _add_viewport(doc, sheet)
+    if sheet.paper:  # what goes to a machine has no view on paper, and no layer for one
+        _add_viewport(doc, sheet)
 
 
 def _add_viewport(doc: Drawing, sheet: Sheet) -> None:

@@ -52,13 +52,10 @@ def test_lids_run_anticlockwise(layout_of):
     assert layout_of(TEXT).enclosure.lids["top"].outline == ((100.0, 50.0), (0.0, 50.0), (0.0, 0.0))
 
 
-def test_shop_drawing_keys_are_noted(layout_of):
+def test_shop_drawing_keys_are_read(layout_of):
     text = TEXT.replace(
         "to_height: 90}", "to_height: 90, ends: {start: butt, end: folded}, fold: {flange: 20}}"
     )
     layout = layout_of(text)
     assert layout.enclosure.panels["east"].fold.radius_mm == 2.0
-    assert [text for _, text in layout.not_yet] == [
-        "enclosure.panels.east.ends: not yet: it takes effect with the shop drawings of panels",
-        "enclosure.panels.east.fold: not yet: it takes effect with the shop drawings of panels",
-    ]
+    assert (layout.enclosure.panels["east"].ends.end, layout.not_yet) == ("folded", ())

@@ -65,9 +65,6 @@ def test_what_is_not_acted_on_yet_is_noted():
         "limits.faults",
         "tolerances",
         "elements.M1.mount.slots",
-        "enclosure.panels.east.ends",
-        "enclosure.panels.east.fix",
-        "enclosure.panels.east.fold",
     ]
 
 
