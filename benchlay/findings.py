@@ -65,6 +65,8 @@ class Finding(NamedTuple):
         What stays the same from run to run: source, wavelength, sequence of faces.
     smaller_is_worse : bool
         Whether, between states, the smaller value counts as the worse.
+    weight : float
+        Of equal values between states, the one of larger weight counts as the worse.
     id : str
         Given by `identify`.
     """
@@ -85,6 +87,7 @@ class Finding(NamedTuple):
     related: tuple[tuple[Span, str], ...] = ()
     key: tuple[KeyPart, ...] = ()
     smaller_is_worse: bool = False
+    weight: float = 0.0
     id: str = ""
 
 
@@ -172,7 +175,8 @@ def merge_states(findings: Iterable[Finding]) -> list[MergedFinding]:
     """Make one finding of those with the same id, in the order in which ids first appear.
 
     States keep the order in which they appear. The worst has the largest severity, then the
-    worst value; of equals the first. Findings without an id are never merged.
+    worst value, then the largest weight; of equals the first. Findings without an id are never
+    merged.
     """
     groups: dict[str | int, list[Finding]] = {}
     for number, finding in enumerate(findings):
@@ -185,13 +189,13 @@ def merge_states(findings: Iterable[Finding]) -> list[MergedFinding]:
     return merged
 
 
-def _badness(finding: Finding) -> tuple[int, float]:
+def _badness(finding: Finding) -> tuple[int, float, float]:
     value = finding.value
     if value is None:
-        return finding.severity, -math.inf
+        return finding.severity, -math.inf, finding.weight
     if math.isnan(value):  # could not be computed: the worst is to be assumed
-        return finding.severity, math.inf
-    return finding.severity, -value if finding.smaller_is_worse else value
+        return finding.severity, math.inf, finding.weight
+    return finding.severity, -value if finding.smaller_is_worse else value, finding.weight
 
 
 def sort_key(finding: Finding) -> tuple[int, str, str, str, str]:

@@ -113,6 +113,18 @@ LEDGER = listed(
          "unaccounted_W": NUMBER}
     )
 )  # fmt: skip
+STRETCH = keys({"beam": INTEGER, "from": POINT, "to": POINT})
+COVERAGE = keys(
+    {
+        "state": TEXT, "from": TEXT, "covered": NUMBER,
+        "gaps": listed(
+            keys(
+                {"id": TEXT, "azimuth": PAIR, "elevation": PAIR, "solid_angle_sr": NUMBER,
+                 "through": TEXT, "width_mm": NUMBER}
+            )
+        ),
+    }
+)  # fmt: skip
 FINDING = keys(
     {
         "id": TEXT, "check": TEXT, "severity": one_of(SEVERITIES), "states": listed(TEXT),
@@ -120,7 +132,7 @@ FINDING = keys(
         "element": maybe(TEXT), "beam": maybe(INTEGER), "at": maybe(POINT), "file": maybe(TEXT),
         "line": maybe(INTEGER), "column": maybe(INTEGER), "value": maybe(NUMBER),
         "limit": maybe(NUMBER), "unit": maybe(TEXT), "accepted": maybe(dict),
-        "related": listed(dict),
+        "related": listed(dict), "stretch": maybe(listed(POINT)), "stretches": listed(STRETCH),
     }
 )  # fmt: skip
 ROUTE = keys(
@@ -233,7 +245,7 @@ REVIEW = keys(
             keys({"check": TEXT, "state": TEXT, "ran": YES_NO, "reason": maybe(TEXT)})
         ),
         "limits_used": listed(LIMIT), "routes": listed(ROUTE), "ledger": LEDGER,
-        "zones": listed(ZONE), "controlled_areas": listed(dict), "coverage": listed(dict),
+        "zones": listed(ZONE), "controlled_areas": listed(dict), "coverage": listed(COVERAGE),
         "panels": listed(dict),
         "cavities": listed(dict), "matched": listed(dict), "handed_over": listed(HANDED_OVER),
         "hazards": listed(HAZARDS), "signs": listed(SIGN),

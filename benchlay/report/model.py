@@ -49,8 +49,20 @@ class Elsewhere(NamedTuple):
     message: str
 
 
+class Stretch(NamedTuple):
+    """A part of a beam, from where to where."""
+
+    beam: int
+    from_: Point
+    to: Point
+
+
 class Reported(NamedTuple):
-    """A finding as it is reported: over all its states, with the data of the worst."""
+    """A finding as it is reported: over all its states, with the data of the worst.
+
+    `stretch` is the guilty part of its beam, start and end, and `stretches` that of every
+    guilty beam: of `opening-mirror`, where a review is asked for in full.
+    """
 
     id: str
     check: str
@@ -71,6 +83,8 @@ class Reported(NamedTuple):
     unit: str | None
     accepted: Acceptance | None
     related: tuple[Elsewhere, ...] = ()
+    stretch: tuple[Point, Point] | None = None
+    stretches: tuple[Stretch, ...] = ()
 
 
 class CheckRun(NamedTuple):

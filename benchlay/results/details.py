@@ -6,6 +6,7 @@ from collections.abc import Iterable, Sequence
 
 from benchlay.report.details import ControlledArea, Zone
 from benchlay.report.model import Review
+from benchlay.results.coverage import coverage_rows
 from benchlay.results.handed_over import handed_over
 from benchlay.results.ledger import ledgers
 from benchlay.results.routes import route_results
@@ -24,6 +25,9 @@ def with_details(
         ledger=tuple(row for variant in variants for row in ledgers(trace, variant)),
         zones=tuple(_zones(zones.zones if zones else ())),
         controlled_areas=tuple(_controlled(zones)),
+        coverage=tuple(
+            row for variant in variants for row in coverage_rows(trace, variant, review.findings)
+        ),
         handed_over=tuple(row for variant in variants for row in handed_over(trace, variant)),
         not_computed=zones.not_computed if zones else (),
     )

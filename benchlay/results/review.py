@@ -6,7 +6,7 @@ from collections.abc import Mapping, Sequence
 from datetime import date
 from typing import TYPE_CHECKING
 
-from benchlay.checks import Run
+from benchlay.checks import Context, Run
 from benchlay.findings import Finding, MergedFinding, identify, merge_states, sort_key
 from benchlay.named import NamedTuple
 from benchlay.report.model import Acceptance, CheckRun, Reported, Review, reported
@@ -89,8 +89,11 @@ def review(checked: Checked, paper: Paper, on: date, *, in_full: bool) -> Review
     if not in_full:
         return short
     from benchlay.results.details import with_details
+    from benchlay.results.stretches import with_stretches
 
     full = with_details(short, trace, checked.states, checked.zones)
+    context = Context(trace, checked.limits)
+    full = full._replace(findings=with_stretches(full.findings, context))
     if checked.zones is None:
         return full
     from benchlay.results.hazards import with_hazards

@@ -51,18 +51,23 @@ def enclosure_line(layout: Layout) -> EnclosureLine:
 
     With fewer than two panels it is the outline of the bench. Panels are put in order by
     going from each to the one that starts nearest to its end, begun where that leaves the
-    shortest missing sides, so the order of the file does not matter. Where baffles make every
-    such line cross itself, the outline of the bench is taken.
+    shortest missing sides, so the order of the file does not matter. Panels that meet short of
+    their ends have their corner where they meet. Where every such line crosses itself, the
+    panel without which the missing sides are shortest is taken for a baffle and left out, and
+    so on; where two panels are too few, the outline of the bench is taken.
     """
     enclosure = layout.enclosure
     if enclosure is None or len(enclosure.panels) < _FEWEST:
         return bench_line(layout)
     heights = [enclosure.heights_mm(panel)[1] for panel in enclosure.panels.values()]
     heights += [lid.height_mm for lid in enclosure.lids.values()]
-    for order in _orders(enclosure.panels):
-        sides = _sides(order, enclosure.panels)
-        if simple(tuple(side.start for side in sides)):
-            return EnclosureLine(sides, enclosed=True, top_mm=max(heights))
+    panels: Mapping[str, Panel] = enclosure.panels
+    while len(panels) >= _FEWEST:
+        for order in _orders(panels):
+            sides = _sides(order, panels)
+            if simple(tuple(side.start for side in sides)):
+                return EnclosureLine(sides, enclosed=True, top_mm=max(heights))
+        panels = _without_a_baffle(panels)
     return bench_line(layout)
 
 
@@ -71,6 +76,17 @@ def bench_line(layout: Layout) -> EnclosureLine:
     outline = layout.bench.outline
     pairs = zip(outline, outline[1:] + outline[:1], strict=True)
     return EnclosureLine(tuple(Side(a, b, None) for a, b in pairs), enclosed=False, top_mm=inf)
+
+
+def _without_a_baffle(panels: Mapping[str, Panel]) -> dict[str, Panel]:
+    """Leave out the panel without which the missing sides are shortest (of equals the last)."""
+
+    def missing(left_out: str) -> float:
+        rest = {name: panel for name, panel in panels.items() if name != left_out}
+        return min((_missing(order, rest) for order in _orders(rest)), default=inf)
+
+    baffle = min(sorted(panels, reverse=True), key=missing)
+    return {name: panel for name, panel in panels.items() if name != baffle}
 
 
 def _orders(panels: Mapping[str, Panel]) -> list[list[str]]:
@@ -97,13 +113,37 @@ def _missing(order: list[str], panels: Mapping[str, Panel]) -> float:
 
 
 def _sides(order: list[str], panels: Mapping[str, Panel]) -> tuple[Side, ...]:
+    following = order[1:] + order[:1]
+    corners = [_meeting(panels[a], panels[b]) for a, b in zip(order, following, strict=True)]
     sides: list[Side] = []
-    for name, following in zip(order, order[1:] + order[:1], strict=True):
-        panel = panels[name]
-        sides.append(Side(panel.from_mm, panel.to_mm, name))
-        if dist(panel.to_mm, panels[following].from_mm) > _SAME_MM:
-            sides.append(Side(panel.to_mm, panels[following].from_mm, None))
+    for number, name in enumerate(order):
+        panel, after = panels[name], panels[following[number]]
+        end = corners[number]
+        sides.append(Side(corners[number - 1] or panel.from_mm, end or panel.to_mm, name))
+        if end is None and dist(panel.to_mm, after.from_mm) > _SAME_MM:
+            sides.append(Side(panel.to_mm, after.from_mm, None))
     return tuple(sides)
+
+
+def _meeting(panel: Panel, following: Panel) -> Point | None:
+    """Return where a panel meets the following one short of an end of either; None if nowhere.
+
+    Only the latter half of the one and the former half of the other count: a panel that runs
+    into the far end of the next is no corner of the ring.
+    """
+    (ax, ay), (bx, by) = panel.from_mm, panel.to_mm
+    (cx, cy), (dx, dy) = following.from_mm, following.to_mm
+    turn = (bx - ax) * (dy - cy) - (by - ay) * (dx - cx)
+    if dist(panel.to_mm, following.from_mm) <= _SAME_MM or abs(turn) < (
+        1e-9 * panel.length_mm * following.length_mm
+    ):
+        return None
+    on_first = ((cx - ax) * (dy - cy) - (cy - ay) * (dx - cx)) / turn
+    on_second = ((cx - ax) * (by - ay) - (cy - ay) * (bx - ax)) / turn
+    slack = _SAME_MM / panel.length_mm, _SAME_MM / following.length_mm
+    if not (0.5 < on_first <= 1.0 + slack[0] and -slack[1] <= on_second < 0.5):  # noqa: PLR2004
+        return None
+    return ax + on_first * (bx - ax), ay + on_first * (by - ay)
 
 
 def inside(line: EnclosureLine, point: Point) -> bool:

@@ -34,7 +34,10 @@ GOOD = SOURCE + ELEMENTS + ROUTE
 def names(make_context, text):
     findings, runs = run_checks(make_context(text))
     assert all(run.ran for run in runs)
-    return sorted((f.check, f.element) for f in findings if f.state == "as drawn")
+    open_ = ("open-side", "opening-mirror", "probe-access")  # an open port, and no lid
+    return sorted(
+        (f.check, f.element) for f in findings if f.state == "as drawn" and f.check not in open_
+    )
 
 
 def in_states(make_context, text):

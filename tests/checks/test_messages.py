@@ -62,6 +62,36 @@ SAID = {
         "at most 385 µW beyond the enclosure",
         "end it on a dump or screen before, or raise 'north' to 205 mm",
     ),
+    "open-side": (
+        (
+            "the south/east corner is open, 12 mm wide; 5 mW of 633 nm from 'red' could be sent"
+            " there from 'T1'"
+        ),
+        "no gap wider than 0.1 mm round hazardous light",
+        "close it with a panel from [788, 0] to [800, 0], or let 'south' and 'east' meet",
+    ),
+    "opening-mirror": (
+        (
+            "one flat mirror between 'red' and 'T1' could throw 50 mW of 633 nm from 'red' out "
+            "through 'north.slot'"
+        ),
+        (
+            "no line of sight from a beam above 5 mW (class 3B or 4) to a gap, but where a tube"
+            " holds it"
+        ),
+        (
+            "close 'north.slot', put the beam in tubes, or cover 'north.slot' on the inside by "
+            "a labyrinth: a sheet 10 mm from 'north' that overlaps it by 11 mm on every side"
+        ),
+    ),
+    "probe-access": (
+        "a probe of 12 mm diameter reaches 5 mW of 633 nm from 'red', 52 mm inside 'north.slot'",
+        "no hazardous beam within 80 mm of a gap that admits 12 mm",
+        (
+            "make 'north.slot' narrower than 12 mm, lengthen its passage to 30.1 mm (`depth`), "
+            "or put the beam in a tube"
+        ),
+    ),
     "panel-overload": (
         "'east' takes 416 W/cm2 of 532 nm from 'green' and is rated for 20 W/cm2",
         "at most 20 W/cm2",

@@ -48,6 +48,10 @@ FAULTS = {
     ("as-modelled", "L1"),
     ("not-yet", None),
     ("no-interlock", "west"),
+    ("open-side", "south"),
+    ("open-side", None),
+    ("opening-mirror", "south"),
+    ("probe-access", "south"),
     ("accept-expired", None),
     ("accept-widened", None),
     ("accept-unmatched", None),
@@ -164,3 +168,14 @@ def test_a_fault_that_is_mended_is_gone_and_no_other(bench, mended, gone):
     without = FAULTS - found
     # What was accepted of it is accepted of nothing then.
     assert without - {("accept-widened", None)} == {gone}
+
+
+def test_what_the_missing_side_lets_out(by_check, bench):
+    sides = [one for one in bench("bad").every() if one.check == "open-side"]
+    assert {one.value for one in sides if one.element == "south"} == {1000.0}
+    assert all("10 W of 532 nm from 'green'" in one.message for one in sides)
+    # Class 3R ends at 5 mW in the visible; all of the laser runs before F1.
+    assert by_check["opening-mirror"].value == pytest.approx(10.0)
+    assert by_check["opening-mirror"].limit == pytest.approx(5e-3)
+    # The pilot crosses the gap itself, which is as deep as the sheets beside it.
+    assert by_check["probe-access"].value == pytest.approx(2.0, abs=1e-6)

@@ -25,7 +25,7 @@ from benchlay.report.model import Acceptance, LayoutErrors, reported
 FINDING_KEYS = [
     "id", "check", "severity", "states", "worst_state", "message", "expected", "remedy",
     "element", "beam", "at", "file", "line", "column", "value", "limit", "unit", "accepted",
-    "related",
+    "related", "stretch", "stretches",
 ]  # fmt: skip
 REVIEW_KEYS = [
     "layout", "sha256", "title", "revision", "as_of", "verdict", "findings", "checks",

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 from functools import cached_property
 from math import nan
+from typing import TYPE_CHECKING
 
 import numpy as np
 
@@ -22,6 +23,9 @@ from benchlay.scene.tables import PARTS, SINKS, Flags, Floats, Ints
 from benchlay.tracing import Trace
 from benchlay.tracing.beams import FACE, SOLID
 from benchlay.tracing.front import EMITTED, EVENTS, OUTSIDE
+
+if TYPE_CHECKING:
+    from benchlay.checks._check.gaps import Gaps
 
 
 class Context:
@@ -75,6 +79,13 @@ class Context:
     def bodies(self) -> Bodies:
         """What stands on the bench, seen from above."""
         return Bodies(self.trace.scene)
+
+    @cached_property
+    def gaps(self) -> Gaps:
+        """What the enclosure leaves open; loaded where there is one."""
+        from benchlay.checks._check.gaps import Gaps
+
+        return Gaps(self)
 
     # ------------------------------------------------------------------ limits
 

@@ -1,0 +1,147 @@
+"""The gaps of every state's enclosure, and the light that could be sent to them."""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING
+
+import numpy as np
+
+from benchlay.coverage.blockers import Place
+from benchlay.coverage.enclosed import Enclosed, enclosed_of
+from benchlay.coverage.filled import filled_openings
+from benchlay.coverage.gaps import EDGE, OPENING, OVER, SHEET, SIDE, UNDER, Gap, gaps_of
+from benchlay.coverage.places import standpoints
+from benchlay.document.span import Span
+from benchlay.named import NamedTuple
+from benchlay.tracing.beams import FACE
+from benchlay.tracing.front import EMITTED
+
+if TYPE_CHECKING:
+    from benchlay.checks._check.context import Context
+
+
+class Astray(NamedTuple):
+    """A place with the strongest hazardous beam that arrives there, or starts."""
+
+    name: str
+    at: Place
+    beam: int
+    power_w: float
+
+
+class Gaps:
+    """What is open in each state; worked out when first asked for."""
+
+    def __init__(self, context: Context) -> None:
+        self._context = context
+        self._known: dict[int, tuple[Enclosed | None, list[Gap]]] = {}
+
+    def of(self, variant: int) -> tuple[Enclosed | None, list[Gap]]:
+        """Return the enclosure of a state (None without one) and its gaps."""
+        if variant not in self._known:
+            layout, scene = self._context.layout(variant), self._context.trace.scene
+            enclosed = enclosed_of(layout, filled_openings(layout, scene, variant))
+            self._known[variant] = enclosed, [] if enclosed is None else gaps_of(enclosed)
+        return self._known[variant]
+
+    def among_bodies(self, variant: int) -> Enclosed:
+        """Return the enclosure of a state with the bodies on the bench; its sides if roofless."""
+        from benchlay.coverage.mirrors import among_bodies, upright_only
+
+        enclosed, _ = self.of(variant)
+        assert enclosed is not None
+        trace = self._context.trace
+        state = trace.placed.states[variant]
+        return among_bodies(upright_only(enclosed), state, trace.scene, variant)
+
+    def astray(self, variant: int) -> list[Astray]:
+        """Return the places of a state that hazardous light comes to, the strongest first."""
+        context = self._context
+        beams, scene = context.trace.beams, context.trace.scene
+        rows = context.beams_of(variant)
+        rows = rows[context.outside[rows]]
+        found: dict[str, tuple[float, int]] = {}
+        met = rows[beams.end_kind[rows] == FACE]
+        arriving = (beams.end_coherency[0] + beams.end_coherency[1])[met]
+        owners = scene.faces.owner[beams.end_row[met]]
+        made = rows[beams.start.event[rows] == EMITTED]
+        lists = (
+            (met, arriving, owners, scene.elements),
+            (made, beams.start.power[made], beams.start.source[made], scene.sources),
+        )
+        for row, power, owner, names in lists:
+            with np.errstate(invalid="ignore"):
+                over = power > context.limit_w[row]
+            for b, p, o in zip(*(a[over].tolist() for a in (row, power, owner)), strict=True):
+                if p > found.get(names[o], (0.0, 0))[0]:
+                    found[names[o]] = p, b
+        places = [p for p in standpoints(context.state(variant)) if p.name in found]
+        astray = [Astray(p.name, p.at, found[p.name][1], found[p.name][0]) for p in places]
+        return sorted(astray, key=lambda one: (-one.power_w, one.name))
+
+
+def span_of(gap: Gap, enclosed: Enclosed) -> Span | None:
+    """Return where the panel or lid of a gap is written, or the table of all panels."""
+    enclosure, one = enclosed.enclosure, gap.sheets[0]
+    if gap.roofless:
+        return enclosure.span_of("panels")
+    if one in enclosure.lids and (gap.through == f"lid {one}" or one not in enclosure.panels):
+        return enclosure.lids.spans.get(one)
+    return enclosure.panels.spans.get(one)
+
+
+def named(gap: Gap) -> str:
+    """Name a gap within a sentence."""
+    if gap.kind == SIDE:
+        return f"the {gap.through}"
+    if gap.kind in (OVER, UNDER):
+        return f"the gap {gap.through.split()[0]} '{gap.sheets[0]}'"
+    if gap.kind == SHEET:
+        lid = gap.through.startswith("lid ")
+        return f"the open {'lid' if lid else 'panel'} '{gap.sheets[0]}'"
+    return f"'{gap.through}'"
+
+
+def said(gap: Gap) -> str:
+    """Say what is open."""
+    width = f"{round(gap.width_mm, 2):.10g} mm"
+    one = gap.sheets[0]
+    if gap.roofless:
+        return "the enclosure has no lid"
+    if gap.kind == EDGE:
+        return "the bench has fewer than two panels and is open all round"
+    if gap.kind == OPENING:
+        return f"opening '{gap.through}' is open, {width} at its narrowest"
+    if gap.kind == SHEET:
+        return f"{'lid' if gap.through.startswith('lid ') else 'panel'} '{one}' stands open"
+    if gap.kind == SIDE:
+        return f"the {gap.through} is open, {width} wide"
+    return f"it is open {gap.through.split()[0]} panel '{one}', {width} wide"
+
+
+def closing(gap: Gap, enclosed: Enclosed) -> str:
+    """Say what would close a gap."""
+    one = gap.sheets[0]
+    if gap.kind == SIDE:
+        side = enclosed.line.sides[gap.sides[0]]
+        ends = " to ".join(f"[{x:.10g}, {y:.10g}]" for x, y in (side.start, side.end))
+        return f"close it with a panel from {ends}, or let '{one}' and '{gap.sheets[1]}' meet"
+    if gap.kind == OVER and not gap.roofless:
+        low, top = gap.heights_mm
+        raised = f"raise '{one}' to {top:.10g} mm" if top > low else ""
+        lid = _LID if enclosed.roofless else ""
+        return ", and ".join(filter(None, (raised, lid)))
+    known = {
+        EDGE: "put panels all round, and a lid on top",
+        OPENING: (
+            f"close '{gap.through}', stand an element in it that fills it (`in: {gap.through}`), "
+            "or put a sheet before it that overlaps it on every side"
+        ),
+        SHEET: f"keep '{one}' shut in this state, or bring no more than the limit there",
+        OVER: _LID,
+        UNDER: f"bring '{one}' down to the bench, and stand it on the bench top",
+    }
+    return known[gap.kind]
+
+
+_LID = "put a lid on it that reaches every panel"
