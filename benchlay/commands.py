@@ -25,8 +25,10 @@ if TYPE_CHECKING:
     from pathlib import Path
 
     from benchlay.report.details import TraceResult
+    from benchlay.report.faults import FaultsResult
 
 Result = TypeVar("Result")
+Progress: TypeAlias = Callable[[int, int], None]
 Files: TypeAlias = Mapping[str, bytes]
 
 
@@ -64,6 +66,11 @@ class Pipeline(Protocol):
         self, data: bytes, file: str, *, on: date, state: str | None
     ) -> tuple[Review, Files] | LayoutErrors:
         """Review in full; also every file of the review, by name."""
+
+    def faults_result(
+        self, data: bytes, file: str, *, state: str | None, progress: Progress | None
+    ) -> FaultsResult | LayoutErrors:
+        """Review every credible single fault, telling how far it is."""
 
     def draw_files(
         self, data: bytes, file: str, *, sheet: str | None, form: str | None
@@ -107,6 +114,38 @@ def run_trace(options: Namespace, ink: Ink) -> Outcome:
     from benchlay.report.trace_text import trace_text
 
     return Outcome(status, trace_text(result))
+
+
+def run_faults(options: Namespace, ink: Ink) -> Outcome:
+    """Report what every credible single fault would do."""
+    pipeline = _pipeline()
+
+    def review(data: bytes, file: str) -> FaultsResult | LayoutErrors:
+        return pipeline.faults_result(
+            data, file, state=options.state, progress=getattr(options, "progress", None)
+        )
+
+    result = _of_file(options.layout, review)
+    status = (
+        Status.WRONG if isinstance(result, LayoutErrors) else _fault_status(result, options.fail_on)
+    )
+    if options.json:
+        from benchlay import __version__
+        from benchlay.report.json_out import dumps, faults_document
+
+        return Outcome(status, dumps(faults_document(result, version=__version__)))
+    if isinstance(result, LayoutErrors):
+        return _errors(result, ink)
+    from benchlay.report.faults_text import faults_text
+
+    return Outcome(status, faults_text(result, ink=ink))
+
+
+def _fault_status(result: FaultsResult, fail_on: str) -> Status:
+    """Return the status: what gets out or could not be judged fails, a stray warns."""
+    counts = {"fail": ("escape", "not evaluated"), "warn": ("escape", "not evaluated", "stray")}
+    reached = any(result.count(outcome) for outcome in counts.get(fail_on, ()))
+    return Status.FINDINGS if reached else Status.NOTHING
 
 
 def run_draw(options: Namespace, ink: Ink) -> Outcome:

@@ -22,7 +22,9 @@ from benchlay.placing import Placed
 from benchlay.report.model import LayoutErrors, Reported, Review
 
 if TYPE_CHECKING:
+    from benchlay.faults.sweeps import Progress
     from benchlay.report.details import TraceResult
+    from benchlay.report.faults import FaultsResult
     from benchlay.report.model import Remedies
     from benchlay.results.review import Checked
     from benchlay.tracing import Trace
@@ -160,6 +162,32 @@ def trace_result(data: bytes, file: str, *, state: str | None) -> TraceResult | 
         return _traced(trace(place(_with_state(read(file, data), wanted))), file, wanted)
     except LayoutError as error:
         return LayoutErrors(file, error.problems, _lines(data))
+
+
+def faults_result(
+    data: bytes, file: str, *, state: str | None, progress: Progress | None
+) -> FaultsResult | LayoutErrors:
+    """Review every credible single fault of a layout given by its bytes; of one state if named."""
+    try:
+        return _faults(place(_with_state(read(file, data), state)), data, file, state, progress)
+    except LayoutError as error:
+        return LayoutErrors(file, error.problems, _lines(data))
+
+
+def _faults(
+    placed: Placed, data: bytes, file: str, state: str | None, progress: Progress | None
+) -> FaultsResult:
+    from benchlay.faults import review_faults
+    from benchlay.results.faults import faults_result as put_together
+
+    states = None if state is None else (state,)
+    reviewed = review_faults(placed, states, progress or _nobody)
+    return put_together(reviewed, placed, file, _digest(data))
+
+
+def _nobody(done: int, total: int) -> None:
+    """Tell nobody how far it is."""
+    del done, total
 
 
 def review_files(

@@ -133,7 +133,7 @@ def test_a_wrong_command_line_exits_2_and_prints_no_result(arguments, capsys):
     assert captured.err
 
 
-@pytest.mark.parametrize("command", ["faults", "compare", "watch", "new"])
+@pytest.mark.parametrize("command", ["compare", "watch", "new"])
 def test_what_comes_later_says_so(command, capsys):
     assert cli.run([command, "--anything", "x"]) == 2
     captured = capsys.readouterr()

@@ -35,11 +35,15 @@ from benchlay.checks import (
 from benchlay.checks._check import (
     Check,
     Context,
+    Exit,
     LineLimit,
     Run,
     accessible_w,
+    exits_of,
     floors_w,
     limits_of,
+    place_of,
+    way_out,
 )
 from benchlay.checks._run import run_checks as _run
 from benchlay.findings import Finding
@@ -86,10 +90,14 @@ __all__ = [
     "CHECKS",
     "Check",
     "Context",
+    "Exit",
     "LineLimit",
     "Run",
     "accessible_w",
+    "exits_of",
     "floors_w",
     "limits_of",
+    "place_of",
     "run_checks",
+    "way_out",
 ]

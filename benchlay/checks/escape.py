@@ -75,12 +75,13 @@ from benchlay.checks._check import (
     above,
     exits_of,
     length_text,
+    place_of,
     power_text,
     rounded_up,
     unjudged,
+    way_out,
 )
 from benchlay.findings import Finding, KeyPart, Severity
-from benchlay.layout.enclosure import Opening
 from benchlay.optics import moments
 from benchlay.zones.enclosure_line import EnclosureLine, enclosure_line
 
@@ -131,8 +132,7 @@ def _finding(
     what: tuple[float, tuple[KeyPart, ...]],
 ) -> Finding:
     beam, (power, key) = found.beam, what
-    beams = context.trace.beams
-    at = context.point(beams.start.position[beam] + found.way_mm * beams.start.direction[beam])
+    at = place_of(context, found)
     name = context.left_name(beam)
     limit = float(context.limit_w[beam])
     how, remedy = _how(context, variant, line, found, at)
@@ -168,42 +168,25 @@ def _how(
     at: tuple[float, float, float],
 ) -> tuple[str, str]:
     """Say how a beam leaves, and what would keep it in."""
-    stop = "end it on a dump or screen before"
-    if found.upwards:
-        return "leaves upwards", f"{stop}, or put a lid over it"
-    if not line.enclosed or found.side is None:
-        return "leaves the bench", f"{stop}, or enclose the bench with panels"
-    name = found.side.panel
-    if name is None:
-        return "leaves where no panel stands", f"{stop}, or close that side with a panel"
-    return _past_panel(context, variant, found, at)
-
-
-def _past_panel(
-    context: Context, variant: int, found: Exit, at: tuple[float, float, float]
-) -> tuple[str, str]:
-    """Say how a beam gets past the panel that stands on its side of the line."""
-    enclosure = context.layout(variant).enclosure
-    assert enclosure is not None
-    assert found.side is not None
-    name = found.side.panel or ""
-    stop = "end it on a dump or screen before"
-    panel = enclosure.panels[name]
-    low, high = enclosure.heights_mm(panel)
-    if at[2] >= high:
+    way = way_out(context, variant, line, found, at)
+    name, stop = way.panel, "end it on a dump or screen before"
+    if way.kind == "over":
         needed = rounded_up(at[2] + 3.0 * _radius(context, found), 3)
         return f"passes over panel '{name}'", f"{stop}, or raise '{name}' to {needed:g} mm"
-    if at[2] <= low:
-        return f"passes under panel '{name}'", f"{stop}, or bring '{name}' down to the bench"
-    along = float(np.hypot(at[0] - panel.from_mm[0], at[1] - panel.from_mm[1]))
-    openings = sorted(panel.openings.items())
-    opening = next((key for key, hole in openings if _is_in(hole, along, at[2])), "")
-    if panel.open or not opening:
-        return f"passes the open panel '{name}'", f"{stop}, or keep '{name}' shut in this state"
-    return (
-        f"leaves through '{name}.{opening}'",
-        f"{stop}, or name '{name}.{opening}' as the last item of its route if it is handed over",
-    )
+    if way.kind == "opening":
+        hole = f"{name}.{way.opening}"
+        return (
+            f"leaves through '{hole}'",
+            f"{stop}, or name '{hole}' as the last item of its route if it is handed over",
+        )
+    how, mend = {
+        "up": ("leaves upwards", "put a lid over it"),
+        "bench": ("leaves the bench", "enclose the bench with panels"),
+        "gap": ("leaves where no panel stands", "close that side with a panel"),
+        "under": (f"passes under panel '{name}'", f"bring '{name}' down to the bench"),
+        "open": (f"passes the open panel '{name}'", f"keep '{name}' shut in this state"),
+    }[way.kind]
+    return how, f"{stop}, or {mend}"
 
 
 def _radius(context: Context, found: Exit) -> float:
@@ -212,8 +195,3 @@ def _radius(context: Context, found: Exit) -> float:
     m = start.moments[:, found.beam]
     w1, w2, _ = moments.radii(moments.propagate(m, found.way_mm, start.index[found.beam]))
     return float(np.maximum(w1, w2))
-
-
-def _is_in(opening: Opening, along: float, height: float) -> bool:
-    start, end, low, high = opening.box_mm()
-    return start <= along <= end and low <= height <= high

@@ -11,8 +11,7 @@ Fails
    bench: {size: [800, 400]}
    sources:
      red: {wavelength: 633, power: 5 mW, beam: {waist_radius: 0.5}, at: [100, 200], heading: 0}
-   limits:
-     faults: {knocks: 2}  # <- not-yet
+   tolerances: {thickness: 0.1}  # <- not-yet
 
 Passes
 ------

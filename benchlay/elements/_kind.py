@@ -200,6 +200,18 @@ class ElementKind(Record):
     BLOCKS: ClassVar[bool] = False
     """Whether a stray is properly ended here."""
 
+    FAULTS: ClassVar[frozenset[str]] = frozenset(("out", "reversed", "wavelength"))
+    """What may credibly go wrong with one of this kind by itself, beside a knock to its mount.
+
+    ``out`` (fallen out or forgotten), ``missing`` (taken away: of what stops light),
+    ``reversed``, ``turned`` (about its axis, in its holder), ``rolled`` (about the beam),
+    ``stuck`` (see `stuck`), ``wavelength`` (its coatings are not for the light that comes).
+    """
+
+    def stuck(self) -> tuple[tuple[str, Geometry], ...]:
+        """Return the shapes in which what moves of it may stick, each with a word for it."""
+        return ()
+
     def branches(self) -> Branches:
         """Return the ways through this very element (a cube's depend on how it is turned)."""
         return self.BRANCHES

@@ -24,6 +24,7 @@ class Aperture(ElementKind):
     """An opening in an opaque plate."""
 
     KIND = "aperture"
+    FAULTS: ClassVar[frozenset[str]] = frozenset(("out",))
     BRANCHES: ClassVar[Branches] = _through.OPENING
     DEFAULT_BRANCH = "transmitted"
 

@@ -55,6 +55,7 @@ class Cube(ElementKind):
     """A beam-splitter cube."""
 
     KIND = "cube"
+    FAULTS: ClassVar[frozenset[str]] = frozenset(("out", "reversed", "wavelength", "rolled"))
     BRANCHES: ClassVar[Branches] = {
         "transmitted": _ways(_ACROSS, "transmitted"),
         "reflected": (),

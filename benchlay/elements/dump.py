@@ -9,6 +9,8 @@ lands on that box. Without `facing` it faces the beam squarely.
 
 from __future__ import annotations
 
+from typing import ClassVar
+
 from benchlay.document.record import key
 from benchlay.elements._kind import ElementKind, Geometry, Stroke
 from benchlay.elements._shares import SHARE
@@ -23,6 +25,7 @@ class Dump(ElementKind):
     """A beam dump."""
 
     KIND = "dump"
+    FAULTS: ClassVar[frozenset[str]] = frozenset(("missing",))
     SQUARE = True
     MOUNTED = False
     DARK_MATTERS = False

@@ -17,6 +17,8 @@ post away).
 
 from __future__ import annotations
 
+from typing import ClassVar
+
 from benchlay.document.form import Reader
 from benchlay.document.forms import Fixed, ListOf, Quantity, Text
 from benchlay.document.quantity import Dimension
@@ -32,6 +34,7 @@ class Obstacle(ElementKind):
     """Any other opaque body."""
 
     KIND = "obstacle"
+    FAULTS: ClassVar[frozenset[str]] = frozenset(("missing",))
     MOUNTED = False
     DARK_MATTERS = False
 

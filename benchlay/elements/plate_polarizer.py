@@ -32,6 +32,7 @@ class PlatePolarizer(Sized, ElementKind):
     """A thin-film plate polarizer."""
 
     KIND = "plate-polarizer"
+    FAULTS: ClassVar[frozenset[str]] = frozenset(("out", "reversed", "wavelength", "rolled"))
     BRANCHES: ClassVar[Branches] = DIVIDING_PLATE
     TURNS_FRONT = True
 

@@ -11,6 +11,8 @@ relative to that of the passed one. All is internal: the faces reflect besides.
 
 from __future__ import annotations
 
+from typing import ClassVar
+
 from benchlay.document.forms import Quantity
 from benchlay.document.quantity import Dimension
 from benchlay.document.record import key
@@ -26,6 +28,7 @@ class Polarizer(ThinPlate):
     """An absorbing sheet polarizer."""
 
     KIND = "polarizer"
+    FAULTS: ClassVar[frozenset[str]] = frozenset(("out", "reversed", "wavelength", "rolled"))
 
     axis_rad: float = key(_ANGLE, name="axis", meaning="direction of the light that passes")
     transmits: float = key(

@@ -8,6 +8,8 @@ It ends what meets its front on purpose; its thickness is 2 mm.
 
 from __future__ import annotations
 
+from typing import ClassVar
+
 from benchlay.document.forms import Pair, Text
 from benchlay.document.record import key
 from benchlay.elements._kind import ElementKind, Geometry
@@ -20,6 +22,7 @@ class Screen(ElementKind):
     """A beam block."""
 
     KIND = "screen"
+    FAULTS: ClassVar[frozenset[str]] = frozenset(("missing",))
     DARK_MATTERS = False
     BLOCKS = True
 

@@ -25,11 +25,14 @@ from benchlay.elements._plates import (
 from benchlay.elements._sized import LENGTH, opaque_front
 from benchlay.geometry.outline import Outline, circle, rectangle
 
+_HALF = 0.5
+
 
 class Shutter(ElementKind):
     """A shutter."""
 
     KIND = "shutter"
+    FAULTS: ClassVar[frozenset[str]] = frozenset(("stuck",))
     BRANCHES: ClassVar[Branches] = _through.OPENING
     DEFAULT_BRANCH = "transmitted"
     BLOCKS = True
@@ -51,10 +54,20 @@ class Shutter(ElementKind):
 
     def geometry(self) -> Geometry:
         """Return the plate, open or closed."""
-        opened = opening_geometry(self.opening, self.size_mm, PLATE_THICKNESS_MM)
-        if not self.closed:
-            return opened
-        return opened._replace(faces=(opaque_front(rectangle(*self.size_mm), "screen"),))
+        return self._closed() if self.closed else self._opened(1.0)
+
+    def _opened(self, share: float) -> Geometry:
+        opening = self.opening.stretched((1.0, share))
+        return opening_geometry(opening, self.size_mm, PLATE_THICKNESS_MM)
+
+    def _closed(self) -> Geometry:
+        front = opaque_front(rectangle(*self.size_mm), "screen")
+        return self._opened(1.0)._replace(faces=(front,))
+
+    def stuck(self) -> tuple[tuple[str, Geometry], ...]:
+        """Return it open or closed, as it is not, and half way: two blades over half the height."""
+        other = ("open", self._opened(1.0)) if self.closed else ("closed", self._closed())
+        return (other, ("half way", self._opened(_HALF)))
 
     def interrupts(self) -> bool:
         """Whether it is closed."""

@@ -9,6 +9,8 @@ diffuse share, which scatters in all directions. Without `facing` it faces the b
 
 from __future__ import annotations
 
+from typing import ClassVar
+
 from benchlay.document.form import Reader
 from benchlay.document.forms import Pair
 from benchlay.document.record import key
@@ -25,6 +27,7 @@ class Target(ElementKind):
     """What light is brought to."""
 
     KIND = "target"
+    FAULTS: ClassVar[frozenset[str]] = frozenset(("missing",))
     SQUARE = True
     MOUNTED = False
     BLOCKS = True

@@ -41,6 +41,7 @@ class Tube(ElementKind):
     """An opaque beam tube."""
 
     KIND = "tube"
+    FAULTS: ClassVar[frozenset[str]] = frozenset(("missing",))
     BRANCHES: ClassVar[Branches] = {"transmitted": _through.TRANSMITTED}
     DEFAULT_BRANCH = "transmitted"
     MOUNTED = False

@@ -10,6 +10,8 @@ names it) and goes with 1/wavelength elsewhere.
 
 from __future__ import annotations
 
+from typing import ClassVar
+
 from benchlay.document.forms import OneOf, Quantity, Words
 from benchlay.document.quantity import Dimension
 from benchlay.document.record import key
@@ -26,6 +28,7 @@ class Waveplate(ThinPlate):
     """A waveplate."""
 
     KIND = "waveplate"
+    FAULTS: ClassVar[frozenset[str]] = frozenset(("out", "reversed", "wavelength", "turned"))
 
     retardance: float = key(RETARDANCE, meaning="waves by which the slow component falls behind")
     axis_rad: float = key(_ANGLE, name="axis", meaning="direction of the fast axis")

@@ -3,8 +3,7 @@
 from __future__ import annotations
 
 from benchlay.document.form import Reader
-from benchlay.document.forms import Deferred, Pair, Quantity, RecordForm
-from benchlay.document.nodes import Node
+from benchlay.document.forms import Pair, Quantity, RecordForm, YesNo
 from benchlay.document.quantity import Dimension
 from benchlay.document.record import Record, key
 from benchlay.layout._forms import NOT_NEGATIVE, POSITIVE, SHARE
@@ -54,6 +53,36 @@ class Driver(Record):
     )
 
 
+class Faults(Record):
+    """Which single faults are credible: families by the kinds in the results, on or off."""
+
+    range_rad: float = key(
+        Quantity(Dimension.ANGLE, at_least=0.0),
+        default=0.0,
+        name="range",
+        meaning="how far every adjustable mount is knocked at least, both ways",
+    )
+    knocked: bool = key(
+        YesNo(), default=True, meaning="each adjustable mount through its `range`, yaw and pitch"
+    )
+    out: bool = key(YesNo(), default=True, meaning="each optic gone from its mount")
+    reversed: bool = key(YesNo(), default=True, meaning="each optic back to front")
+    turned: bool = key(YesNo(), default=True, meaning="each waveplate at every angle")
+    rolled: bool = key(
+        YesNo(), default=True, meaning="each polarizer and cube rolled about the beam"
+    )
+    stuck: bool = key(
+        YesNo(), default=True, meaning="shutters, flip mounts and power settings that stick"
+    )
+    missing: bool = key(YesNo(), default=True, meaning="each dump, screen, tube or target gone")
+    opened: bool = key(
+        YesNo(), default=True, meaning="each access panel or lid open, its interlock failed"
+    )
+    wavelength: bool = key(
+        YesNo(), default=True, meaning="light of which an optic's coatings say nothing"
+    )
+
+
 class Limits(Record):
     """What checks hold a layout against."""
 
@@ -99,12 +128,8 @@ class Limits(Record):
         name="back_reflection",
         meaning="power that may come back into a source",
     )
-    faults: Node | None = key(
-        Deferred("a table of settings for the review of faults"),
-        default=None,
-        meaning="settings for the review of faults",
-        not_yet="the review of faults comes later",
-        not_yet_is_note=True,
+    faults: Faults = key(
+        RecordForm(Faults), default=Faults(), meaning="which single faults are reviewed"
     )
 
     @property

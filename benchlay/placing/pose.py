@@ -17,9 +17,12 @@ class Pose(NamedTuple):
     at: Vector
     facing_rad: float
     pitch_rad: float
+    rolled: Axes | None = None  # its axes where it is turned about something else as well
 
     def axes(self) -> Axes:
         """Return the element's axes (front normal, left, up) as unit vectors."""
+        if self.rolled is not None:
+            return self.rolled
         c, s = cos(self.facing_rad), sin(self.facing_rad)
         cp, sp = cos(self.pitch_rad), sin(self.pitch_rad)
         return ((cp * c, cp * s, sp), (-s, c, 0.0), (-sp * c, -sp * s, cp))

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import json
 from collections.abc import Mapping, Sequence
-from typing import Any, TypeAlias
+from typing import TYPE_CHECKING, Any, TypeAlias
 
 from benchlay.document.problems import Problem
 from benchlay.exposure.cautions import CAUTIONS as EXPOSURE_CAUTIONS
@@ -13,6 +13,9 @@ from benchlay.report.details import Ledger, TraceResult
 from benchlay.report.matrix import matrix_of
 from benchlay.report.model import LayoutErrors, Review
 from benchlay.report.numbers import decimals_of, rounded, settled
+
+if TYPE_CHECKING:
+    from benchlay.report.faults import FaultsResult
 
 Json: TypeAlias = Any
 """What the standard library's `json` can write."""
@@ -58,6 +61,19 @@ def trace_document(result: TraceResult | LayoutErrors) -> dict[str, Json]:
         "beams": plain(result.beams, "beams"),
         "placed": plain(result.placed, "placed"),
         "ledger": [_ledger(entry) for entry in result.ledger],
+    }
+
+
+def faults_document(result: FaultsResult | LayoutErrors, *, version: str) -> dict[str, Json]:
+    """Return the document of ``faults --json`` and of ``faults.json``."""
+    if isinstance(result, LayoutErrors):
+        return review_object(result)
+    written: dict[str, Json] = plain(result, "faults")
+    return {
+        "benchlay": version,
+        **written,
+        "tolerance": None,
+        "cautions": [*CAUTIONS, *EXPOSURE_CAUTIONS],
     }
 
 

@@ -205,7 +205,7 @@ SAID = {
         "know where they come to a focus only as far as the true radii agree",
     ),
     "not-yet": (
-        "limits.faults: not yet: the review of faults comes later",
+        "tolerances: not yet: tolerances are sampled by a later version",
         "keys that this version acts on",
         "leave the key if it is meant for later; nothing depends on it now",
     ),

@@ -62,7 +62,6 @@ def test_what_is_not_acted_on_yet_is_noted():
     assert noted == [
         "matched",
         "cavities",
-        "limits.faults",
         "tolerances",
         "elements.M1.mount.slots",
     ]

@@ -11,7 +11,7 @@ from benchlay.checks._check.bodies import (
     overlapping,
 )
 from benchlay.checks._check.context import Context
-from benchlay.checks._check.exits import Exit, exits_of
+from benchlay.checks._check.exits import Exit, WayOut, exits_of, place_of, way_out
 from benchlay.checks._check.limits import LineLimit, floors_w, limits_of
 from benchlay.checks._check.meetings import Loss, Mark
 from benchlay.checks._check.openings import Room, room_at
@@ -47,6 +47,7 @@ __all__ = [
     "Room",
     "Run",
     "Unevaluated",
+    "WayOut",
     "above",
     "accessible_w",
     "angle_text",
@@ -61,6 +62,7 @@ __all__ = [
     "middle_between",
     "overlap_mm",
     "overlapping",
+    "place_of",
     "place_words",
     "power_text",
     "room_at",
@@ -68,4 +70,5 @@ __all__ = [
     "share_text",
     "unjudged",
     "wavelength_text",
+    "way_out",
 ]

@@ -1,4 +1,4 @@
-"""Where hazardous beams leave the enclosure, or the bench."""
+"""Where hazardous beams leave the enclosure, or the bench, and by which way."""
 
 from __future__ import annotations
 
@@ -7,6 +7,7 @@ from collections.abc import Iterator
 import numpy as np
 
 from benchlay.checks._check.context import Context
+from benchlay.layout.enclosure import Opening
 from benchlay.named import NamedTuple
 from benchlay.scene.tables import SINKS
 from benchlay.tracing.beams import NOTHING, SOLID
@@ -22,6 +23,28 @@ class Exit(NamedTuple):
     way_mm: float
     side: Side | None
     upwards: bool
+
+
+class WayOut(NamedTuple):
+    """How a beam leaves: `kind` is up, bench, gap, over, under, open or opening."""
+
+    kind: str
+    panel: str | None = None
+    opening: str | None = None
+    between: tuple[str, str] | None = None  # the panels beside a gap
+
+    def words(self) -> str:
+        """Name the way in the form of the results.
+
+        >>> WayOut("opening", "south", "port").words(), WayOut("over", "north").words()
+        ('south/port', 'over north')
+        """
+        if self.kind == "opening":
+            return f"{self.panel}/{self.opening}"
+        if self.kind == "gap" and self.between is not None:
+            return f"{'/'.join(self.between)} corner"
+        fixed = {"up": "upwards", "bench": "edge of the bench", "gap": "where no panel stands"}
+        return fixed.get(self.kind) or f"{self.kind} {self.panel}"
 
 
 def exits_of(context: Context, variant: int, line: EnclosureLine) -> Iterator[Exit]:
@@ -89,3 +112,54 @@ def _upwards(context: Context, beam: int, line: EnclosureLine) -> float | None:
     if line.top_mm == np.inf:
         return 0.0
     return min(max((line.top_mm - z) / slope, 0.0), length)
+
+
+def place_of(context: Context, found: Exit) -> tuple[float, float, float]:
+    """Return where a beam goes beyond the line, mm."""
+    start = context.trace.beams.start
+    return context.point(start.position[found.beam] + found.way_mm * start.direction[found.beam])
+
+
+def way_out(
+    context: Context, variant: int, line: EnclosureLine, found: Exit, at: tuple[float, float, float]
+) -> WayOut:
+    """Return by which way a beam leaves the line at a place."""
+    if found.upwards:
+        return WayOut("up")
+    if not line.enclosed or found.side is None:
+        return WayOut("bench")
+    name = found.side.panel
+    if name is None:
+        return WayOut("gap", between=_beside(line, found.side))
+    return _past_panel(context, variant, name, at)
+
+
+def _past_panel(
+    context: Context, variant: int, name: str, at: tuple[float, float, float]
+) -> WayOut:
+    """Return how a beam gets past the panel that stands on its side of the line."""
+    enclosure = context.layout(variant).enclosure
+    assert enclosure is not None
+    panel = enclosure.panels[name]
+    low, high = enclosure.heights_mm(panel)
+    if at[2] >= high:
+        return WayOut("over", name)
+    if at[2] <= low:
+        return WayOut("under", name)
+    along = float(np.hypot(at[0] - panel.from_mm[0], at[1] - panel.from_mm[1]))
+    openings = sorted(panel.openings.items())
+    opening = next((key for key, hole in openings if _is_in(hole, along, at[2])), None)
+    if panel.open or opening is None:
+        return WayOut("open", name)
+    return WayOut("opening", name, opening)
+
+
+def _beside(line: EnclosureLine, gap: Side) -> tuple[str, str] | None:
+    number = line.sides.index(gap)
+    before, after = line.sides[number - 1].panel, line.sides[(number + 1) % len(line.sides)].panel
+    return None if before is None or after is None else (before, after)
+
+
+def _is_in(opening: Opening, along: float, height: float) -> bool:
+    start, end, low, high = opening.box_mm()
+    return start <= along <= end and low <= height <= high

@@ -1,0 +1,19 @@
+"""Single faults: what could credibly go wrong by itself, and what light would then do."""
+
+from __future__ import annotations
+
+from benchlay.faults.families import KINDS, Family, families
+from benchlay.faults.review import OUTCOMES, Fault, Range, Review, review_faults
+from benchlay.faults.verdicts import Light
+
+__all__ = [
+    "KINDS",
+    "OUTCOMES",
+    "Family",
+    "Fault",
+    "Light",
+    "Range",
+    "Review",
+    "families",
+    "review_faults",
+]

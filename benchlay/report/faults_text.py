@@ -1,0 +1,88 @@
+"""The review of single faults for people: the gravest first, each fault once over its states."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Sequence
+
+from benchlay.report.cautions import CAUTIONS
+from benchlay.report.faults import FaultRow, FaultsResult
+from benchlay.report.numbers import shown
+from benchlay.report.words import Ink, listed, tame
+
+PLAIN = Ink()
+_WORD = {"escape": "fail", "not evaluated": "fail", "stray": "warn"}
+_HEADINGS = {
+    "escape": "light gets out",
+    "not evaluated": "not evaluated: no pass",
+    "stray": "hazardous light ends where nothing is meant to stop it",
+}
+
+
+def faults_text(result: FaultsResult, *, ink: Ink = PLAIN) -> str:
+    """Write the review."""
+    lines: list[str] = []
+    for outcome, heading in _HEADINGS.items():
+        rows = [row for row in result.faults if row.outcome == outcome]
+        if rows:
+            lines.append(f"{ink.paint(_WORD[outcome])} {heading}:")
+            lines += _table(rows)
+            lines.append("")
+    lines.append(summary(result))
+    lines += _remarks(result)
+    lines += [f"caution: {caution}" for caution in CAUTIONS]
+    return "\n".join(lines) + "\n"
+
+
+def summary(result: FaultsResult) -> str:
+    """Sum up the review in one line."""
+    counts = [f"{result.count(o)} {o}" for o in (*_HEADINGS, "none") if result.count(o)]
+    return (
+        f"{tame(result.layout)}: {len(result.faults)} single faults "
+        f"({', '.join(counts) or 'none credible'}); states: {listed(result.states)}"
+    )
+
+
+def _table(rows: Sequence[FaultRow]) -> Iterator[str]:
+    cells: list[tuple[str, ...]] = [("fault", "power", "x limit", "where", "settings", "in")]
+    seen: dict[tuple[str, str], list[FaultRow]] = {}
+    for row in rows:
+        seen.setdefault((row.kind, _family(row)), []).append(row)
+    cells += [_cells(same) for same in seen.values()]
+    widths = [max(len(line[i]) for line in cells) for i in range(len(cells[0]))]
+    for line in cells:
+        padded = (cell.ljust(width) for cell, width in zip(line, widths, strict=True))
+        yield ("  " + "  ".join(padded)).rstrip()
+
+
+def _family(row: FaultRow) -> str:
+    """Return a fault's name without its setting."""
+    return row.fault if row.setting_deg is None else " ".join(row.fault.split()[:-1])
+
+
+def _cells(same: Sequence[FaultRow]) -> tuple[str, ...]:
+    row = same[0]
+    ranges = ", ".join(f"{a:g} to {b:g}°" for a, b in ([row.range] if row.range else []))
+    if len(row.ranges) > 1:
+        ranges += f" (of {len(row.ranges)} ranges)"
+    return (
+        tame(row.fault),
+        shown(row.power_W, "W"),
+        shown(row.times_limit),
+        tame(row.reason or "" if row.through is None else row.through),
+        ranges,
+        listed([one.state for one in same]),
+    )
+
+
+def _remarks(result: FaultsResult) -> Iterator[str]:
+    resolution = result.resolution
+    yield (
+        f"traced {result.cases} cases; {result.passed_over} faults are of things that no "
+        "hazardous light comes near"
+    )
+    yield (
+        f"resolution: rays between settings at most {shown(resolution.step_mm, 'mm')} apart where "
+        f"they end; ends of ranges within {shown(resolution.range_deg, '°')}; gaps narrower than "
+        f"{shown(resolution.narrowest_gap_mm, 'mm')} may be passed over"
+    )
+    yield from (f"assumed: {words}" for words in result.assumed)
