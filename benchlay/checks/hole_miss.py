@@ -47,7 +47,8 @@ from benchlay.checks._check import Context, length_text, rounded_up
 from benchlay.findings import Finding, Severity
 from benchlay.geometry import convex
 from benchlay.layout.bench import Bench
-from benchlay.scene.tables import Floats
+from benchlay.named import NamedTuple
+from benchlay.scene.tables import Flags, Floats
 
 NAME = "hole-miss"
 
@@ -76,25 +77,36 @@ def check(context: Context, variant: int) -> Iterator[Finding]:
             yield _finding(context, variant, name, part, short)
 
 
-def _nearest(holes: Floats, place: Floats) -> float:
+class _Holes(NamedTuple):
+    """The holes of a grid: X columns by Y rows."""
+
+    x: Floats  # (X,) mm, rising
+    y: Floats  # (Y,)
+    there: Flags  # (Y, X) whether the bench reaches there
+
+    def within(self, low: Floats, high: Floats) -> Floats:
+        """Return the places (N, 2) of the holes inside a box."""
+        (x0, y0), (x1, y1) = low.tolist(), high.tolist()
+        first, last = self.x.searchsorted(x0), self.x.searchsorted(x1, side="right")
+        lowest, highest = self.y.searchsorted(y0), self.y.searchsorted(y1, side="right")
+        row, column = self.there[lowest:highest, first:last].nonzero()
+        return np.stack((self.x[first + column], self.y[lowest + row]), axis=1)
+
+
+def _nearest(holes: _Holes, place: Floats) -> float:
     """Return how far the nearest hole is from a convex outline or a point; inf for no hole.
 
-    A bench has thousands of holes: those about the place are measured, and where none of them
-    is so near that no other can be nearer, those that its box lets be the nearest.
+    A bench has thousands of holes: only those in a box about the place are measured, in a
+    wider one where none of them is so near that nothing outside of the box can be nearer.
     """
     low, high = place.min(axis=0), place.max(axis=0)
-    (x0, y0), (x1, y1) = (low - _FORK_MM).tolist(), (high + _FORK_MM).tolist()
-    x, y = holes.T
-    about = holes[(x >= x0) & (x <= x1) & (y >= y0) & (y <= y1)]
-    nearest = _least(about, place)
-    if nearest <= _FORK_MM:
-        return nearest
-    beside = np.maximum(np.maximum(low - holes, holes - high), 0.0)
-    apart = np.hypot(beside[:, 0], beside[:, 1])
-    # The place touches its box, so no hole is farther from it than from the box by more
-    # than the box's diagonal.
-    far = apart.min(initial=np.inf) + np.hypot(*(high - low)) + _UNDER_MM
-    return _least(holes[apart <= far], place)
+    every, margin = int(holes.there.sum()), _FORK_MM
+    while True:
+        about = holes.within(low - margin, high + margin)
+        nearest = _least(about, place)
+        if nearest <= margin or len(about) == every:
+            return nearest
+        margin *= 2.0
 
 
 def _least(holes: Floats, place: Floats) -> float:
@@ -102,23 +114,21 @@ def _least(holes: Floats, place: Floats) -> float:
     return float(away.min(initial=np.inf))
 
 
-def _holes(bench: Bench) -> Floats | None:
-    """Return the places of all holes on the bench (N, 2); None without a grid."""
+def _holes(bench: Bench) -> _Holes | None:
+    """Return all holes on the bench; None without a grid."""
     if bench.holes is None:
         return None
     pitch, (x0, y0) = bench.holes.pitch_mm, bench.holes.first_mm
     outline = np.array(bench.outline)
     x = np.arange(x0, outline[:, 0].max() + _UNDER_MM, pitch)
     y = np.arange(y0, outline[:, 1].max() + _UNDER_MM, pitch)
-    grid = np.stack(np.meshgrid(x, y), axis=-1).reshape(-1, 2)
     if bench.size_mm is not None:
-        return grid[(grid >= 0.0).all(axis=1)]
+        return _Holes(x, y, (x >= 0.0) & (y >= 0.0)[:, None])
     # Loaded here: polygons take longer to load than a plain check has other things to do.
     import shapely
 
-    inside = shapely.covers(shapely.Polygon(outline), shapely.points(grid))
-    holes: Floats = grid[inside]
-    return holes
+    grid = shapely.points(*np.meshgrid(x, y))
+    return _Holes(x, y, shapely.covers(shapely.Polygon(outline), grid))
 
 
 def _held(context: Context, variant: int) -> dict[str, int]:
