@@ -91,14 +91,10 @@ def scale_second(m: Floats, factor: ArrayLike) -> Floats:
     (10, ...) ndarray of float64
     """
     f = np.asarray(factor, dtype=np.float64)
-    inverse = 1.0 / f
-    out = np.empty((10, *np.broadcast_shapes(f.shape, m.shape[1:])))
-    out[:] = m
-    out[XY : YU + 1 : YU - XY] *= f  # of xy and yu
-    out[XV : UV + 1 : UV - XV] *= inverse
-    out[YY] *= f * f
-    out[VV] *= inverse * inverse
-    return out
+    inverse, none = 1.0 / f, np.ones(f.shape)
+    rows = [none, f, f * f, none, inverse, f, none, none, inverse, inverse * inverse]
+    scaled: Floats = m * np.array(rows).reshape(10, *(1,) * (m.ndim - 1 - f.ndim), *f.shape)
+    return scaled
 
 
 def kick(m: Floats, c11: ArrayLike, c12: ArrayLike, c22: ArrayLike) -> Floats:

@@ -144,14 +144,12 @@ def diagonal(j: Floats, a: ArrayLike, b: ArrayLike) -> Floats:
     -------
     (4, ...) ndarray of float64
     """
-    if np.isrealobj(a) and np.isrealobj(b):
-        along, across = np.asarray(a), np.asarray(b)
-        scaled: Floats = j * np.array(
-            (along * along, across * across, along * across, along * across)
-        )
+    along, across = np.asarray(a), np.asarray(b)
+    if "c" not in (along.dtype.kind, across.dtype.kind):
+        mixed = along * across
+        scaled: Floats = j * np.array((along * along, across * across, mixed, mixed))
         return scaled
-    first = np.asarray(a, dtype=np.complex128)
-    second = np.asarray(b, dtype=np.complex128)
+    first, second = along.astype(np.complex128), across.astype(np.complex128)
     j12 = (first * second.conj()) * (j[2] + 1j * j[3])
     out = np.empty((4, *j12.shape))
     out[0] = _squared(first) * j[0]

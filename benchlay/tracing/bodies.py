@@ -100,13 +100,14 @@ def crossed(front: Front, scene: Scene, beam: Ints, solid: Ints, margin: Floats 
     slope, gap = planes_met(front, scene, beam, solid)
     if margin is not None:
         gap += margin[:, None]
-    slope[np.abs(slope) < PARALLEL] = _STEEP
+    np.copyto(slope, _STEEP, where=np.abs(slope) < PARALLEL)
     distance = gap / slope
     inward = slope < 0.0
     enter = np.maximum.reduce(np.where(inward, distance, -np.inf), axis=1)
     leave = np.minimum.reduce(np.where(inward, np.inf, distance), axis=1)
-    axis = scene.fixed.round_of[solid]
-    rows = (axis >= 0).nonzero()[0]
+    axis = scene.fixed.round_of.take(solid)
+    # Most posts stand below the light: their ends tell, and their sides need no look.
+    rows = ((axis >= 0) & (enter <= leave)).nonzero()[0]
     if len(rows):
         grown = 0.0 if margin is None else margin[rows]
         first, last = _through_round(front, scene, beam[rows], axis[rows], grown)

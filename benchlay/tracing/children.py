@@ -114,7 +114,7 @@ def _from_faces(
     """Return the children of beams at faces, and book what the faces swallow."""
     acts = state.scene.faces.acts.take(face)
     optic = _OPTIC.take(acts)
-    if optic.all():
+    if np.count_nonzero(optic) == len(optic):
         return [_divided(core, face, rows, state, spilled=spilled)]
     born: list[Front] = []
     for kind, work in (
@@ -178,7 +178,7 @@ def _divided(core: Front, face: Ints, rows: Ints, state: RunState, *, spilled: b
     event = np.full(2 * count, REFLECTED)
     event[count:] = TRANSMITTED
     node = np.full(2 * count, -1)
-    if not spilled and (core.node >= 0).any():
+    if not spilled and np.count_nonzero(core.node >= 0):
         node = state.ways.follow(both.node, owner, f.name[faces], event)
     meant = (node >= 0) | state.ways.main[faces, event - REFLECTED]
     beyond = slice(count, None)
@@ -219,7 +219,7 @@ def _meeting(core: Front, face: Ints, scene: Scene) -> Meeting:
     s, cos, sin = plane_of_incidence(direction, normal, core.axis)
     light = turn(core.light, cos, sin)
     wave = core.wave
-    beyond = _beyond(core, face, scene)
+    beyond, lens = _beyond(core, face, scene), scene.fixed.lens.take(face)
     return Meeting(
         face,
         wave,
@@ -230,6 +230,7 @@ def _meeting(core: Front, face: Ints, scene: Scene) -> Meeting:
         scene.indices[beyond, wave],
         beyond,
         outward,
+        lens if np.count_nonzero(lens) else None,
         direction,
         core.position,
         light[:4],

@@ -68,10 +68,10 @@ def covered(front: Front, scene: Scene, hits: Hits, met: SolidsMet, radius: Floa
     whole = np.ones(len(radius), dtype=np.bool_)
     rows = (hits.kind == SOLID).nonzero()[0]
     if len(rows):
-        pair = met.pair[rows]
+        pair = met.pair.take(rows)
         planes = met.pairs.slope.take(pair, 0), met.pairs.gap.take(pair, 0)
         whole[rows] = _solid_covers(
-            front.take(rows), scene, hits.take(rows), planes=planes, radius=radius[rows]
+            front.take(rows), scene, hits.take(rows), planes=planes, radius=radius.take(rows)
         )
     return whole
 

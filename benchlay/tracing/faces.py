@@ -31,6 +31,7 @@ class Meeting(NamedTuple):
     n_out: Floats  # (N,)
     beyond: Ints  # (N,) volume on the other side
     outward: Flags  # (N,) the beam arrives from the side the face's own normal points to
+    lens: Flags | None  # (N,) which faces are of ideal lenses; None where none is
     direction: Floats  # (N, 3)
     position: Floats  # (N, 3) where it meets the face, mm
     coherency: Floats  # (4, N)
@@ -66,7 +67,7 @@ def plane_of_incidence(
     length = np.sqrt(dot(s, s))
     flat = length < _NORMAL
     s /= np.where(flat, 1.0, length)[:, None]
-    if flat.any():
+    if np.count_nonzero(flat):
         s[flat] = bench_basis(direction[flat])[1]
     return s, dot(s, axis), dot(s, cross(direction, axis))
 
@@ -93,7 +94,7 @@ def _amplitudes(
     cosine, n_in, n_out = meeting.cosine, meeting.n_in, meeting.n_out
     total = n_in * n_in * (1.0 - cosine * cosine) >= n_out * n_out
     r_s, r_p, t_s, t_p = _bare(n_in, n_out, cosine, total)
-    if not mode.any():
+    if not np.count_nonzero(mode):
         return r_s, r_p, t_s, t_p, None
     stated = mode == Mode.STATED
     loss_s, loss_p = f.loss_s.ravel().take(at), f.loss_p.ravel().take(at)
@@ -118,7 +119,7 @@ def _amplitudes(
 
 def _bare(n_in: Floats, n_out: Floats, cosine: Floats, total: Flags) -> tuple[np.ndarray, ...]:
     """Return r_s, r_p (complex where light is totally reflected), t_s and t_p."""
-    if not total.any():
+    if not np.count_nonzero(total):
         return fresnel.dielectric(n_in, n_out, cosine)
     bare = fresnel.amplitudes(n_in, n_out, cosine)
     root = np.sqrt(np.where(total, 0.0, bare.transmitted_flux.real))
@@ -130,8 +131,8 @@ def _reflected(meeting: Meeting, scene: Scene, j: Floats) -> Child:
     direction = k - (2.0 * dot(k, n))[:, None] * n
     axis = meeting.s
     m = meeting.moments * MIRRORED
-    lens = scene.fixed.lens.take(meeting.row)
-    if lens.any():
+    lens = meeting.lens
+    if lens is not None:
         from benchlay.optics.thin_lens import throw_back
 
         bulge = scene.faces.lens_curvature[meeting.row, meeting.wave]
@@ -150,8 +151,8 @@ def _transmitted(meeting: Meeting, scene: Scene, j: Floats) -> Child:
     beyond = np.sqrt(np.maximum(1.0 - ratio * ratio * (1.0 - cosine * cosine), 0.0))
     direction = ratio[:, None] * k + (beyond - ratio * cosine)[:, None] * n
     axis = meeting.s
-    lens = scene.fixed.lens.take(meeting.row)
-    if lens.any():
+    lens = meeting.lens
+    if lens is not None:
         from benchlay.optics.thin_lens import bend
 
         power = np.where(lens, scene.faces.lens_power[meeting.row, meeting.wave], 0.0)
@@ -162,7 +163,7 @@ def _transmitted(meeting: Meeting, scene: Scene, j: Floats) -> Child:
         direction = np.where(lens[:, None], bent, direction)
         beyond = np.where(lens, dot(direction, n), beyond)
     m = moments.scale_second(meeting.moments, np.maximum(beyond, _NORMAL) / cosine)
-    if lens.any():
+    if lens is not None:
         m = moments.kick(m, power, 0.0, power)
     return Child(direction, axis, j, m)
 

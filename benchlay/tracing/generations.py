@@ -107,7 +107,7 @@ def _exhaust(live: Front, state: RunState) -> list[Front]:
         parts, whole = list[_Ready](), 0
         if len(live):
             ready, wanted = _meet(live, state)
-            if wanted.any():
+            if np.count_nonzero(wanted):
                 waiting.append(ready.take(wanted.nonzero()[0]))
                 ready = ready.take((~wanted).nonzero()[0])
             parts, whole = [ready], len(ready.reach)

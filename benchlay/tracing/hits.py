@@ -81,7 +81,7 @@ def inside_hits(front: Front, scene: Scene) -> Hits:
     # A spilled lump runs on the chief ray's line wherever that is: no outline holds it.
     valid &= in_outline(left, up, f.radii.take(rows, 0), f.round.take(rows)) | front.lump[:, None]
     lens = fixed.lens.take(rows)
-    if lens.any():
+    if np.count_nonzero(lens):
         # Between the faces of an ideal lens, which stand in one place, light beyond the
         # critical angle would go to and fro for ever: it ends on the barrel.
         tangential = front.index[:, None] ** 2 * (1.0 - slope * slope)
