@@ -106,7 +106,7 @@ def _nearest(holes: _Holes, place: Floats) -> float:
         nearest = _least(about, place)
         if nearest <= margin or len(about) == every:
             return nearest
-        margin *= 2.0
+        margin *= 4.0
 
 
 def _least(holes: Floats, place: Floats) -> float:
