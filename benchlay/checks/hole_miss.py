@@ -80,33 +80,32 @@ def check(context: Context, variant: int) -> Iterator[Finding]:
 class _Holes(NamedTuple):
     """The holes of a grid: X columns by Y rows."""
 
-    x: Floats  # (X,) mm, rising
+    x: Floats  # (X,) mm
     y: Floats  # (Y,)
     there: Flags  # (Y, X) whether the bench reaches there
-
-    def within(self, low: Floats, high: Floats) -> Floats:
-        """Return the places (N, 2) of the holes inside a box."""
-        (x0, y0), (x1, y1) = low.tolist(), high.tolist()
-        first, last = self.x.searchsorted(x0), self.x.searchsorted(x1, side="right")
-        lowest, highest = self.y.searchsorted(y0), self.y.searchsorted(y1, side="right")
-        row, column = self.there[lowest:highest, first:last].nonzero()
-        return np.stack((self.x[first + column], self.y[lowest + row]), axis=1)
 
 
 def _nearest(holes: _Holes, place: Floats) -> float:
     """Return how far the nearest hole is from a convex outline or a point; inf for no hole.
 
-    A bench has thousands of holes: only those in a box about the place are measured, in a
-    wider one where none of them is so near that nothing outside of the box can be nearer.
+    A bench has thousands of holes: only those are measured whose columns and rows come so near
+    to the place's box that one of them can be the nearest.
     """
+    if not holes.there.any():
+        return float("inf")
     low, high = place.min(axis=0), place.max(axis=0)
-    every, margin = int(holes.there.sum()), _FORK_MM
+    across = np.maximum(np.maximum(low[0] - holes.x, holes.x - high[0]), 0.0)
+    along = np.maximum(np.maximum(low[1] - holes.y, holes.y - high[1]), 0.0)
+    # The place touches its box, so no hole is farther from it than from the box by more
+    # than the box's diagonal.
+    far = float(np.hypot(across.min(), along.min()) + np.hypot(*(high - low))) + _UNDER_MM
     while True:
-        about = holes.within(low - margin, high + margin)
-        nearest = _least(about, place)
-        if nearest <= margin or len(about) == every:
+        x, y = holes.x[across <= far], holes.y[along <= far]
+        row, column = holes.there[along <= far][:, across <= far].nonzero()
+        nearest = _least(np.stack((x[column], y[row]), axis=1), place)
+        if nearest <= far:
             return nearest
-        margin *= 4.0
+        far *= 4.0  # the holes hoped for are not there: the outline cuts them off
 
 
 def _least(holes: Floats, place: Floats) -> float:
