@@ -83,6 +83,19 @@ def _elevations(subject: Subject) -> Iterator[Planned]:
         yield Planned(f"elevation-{name}", elevation)
 
 
+def _panels(subject: Subject) -> Iterator[Planned]:
+    from benchlay.making.parts import parts_of
+    from benchlay.sheets.shop.panel import panel_sheet
+
+    layout = subject.trace.placed.base.layout
+    for part in parts_of(layout):
+
+        def panel(number: str, part: Part = part) -> Sheet:
+            return panel_sheet(part, layout, subject.sha256, number)
+
+        yield Planned(f"panel-{part.name}", panel)
+
+
 def _cuts(subject: Subject) -> Iterator[Planned]:
     from benchlay.making.parts import parts_of
     from benchlay.sheets.shop.cutting import cut_sheet
@@ -100,6 +113,7 @@ def _cuts(subject: Subject) -> Iterator[Planned]:
 SHEETS: Mapping[str, Callable[[Subject], Iterable[Planned]]] = {
     "plan": _plan,
     "elevation": _elevations,
+    "panel": _panels,
     "cut": _cuts,
 }
 """All kinds of sheet there are, by name, in the order of the set.
