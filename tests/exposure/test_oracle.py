@@ -44,6 +44,8 @@ def above(x):
 NM = both_sides(EDGES_NM, 180.0, 1e6)
 S = both_sides(EDGES_S, 1e-13, 3e4)
 MRAD = both_sides(EDGES_MRAD, 0.0, 200.0)
+# A boundary that lies a little off is seen a little off it.
+BESIDE_S = sorted({*S, *(t * f for t in EDGES_S for f in (0.99, 1.01) if 1e-13 <= t * f <= 3e4)})
 RETINA = [x for x in NM if 400.0 <= x < 1400.0]
 
 
@@ -61,7 +63,7 @@ def scattered(count, seed):
 
 POINTS = [
     *scattered(6000, 1),
-    *itertools.product(NM, S, (1.5,)),
+    *itertools.product(NM, BESIDE_S, (1.5,)),
     *itertools.product(RETINA, S, MRAD),
 ]
 WL, T, ALPHA = (np.array(column) for column in zip(*POINTS, strict=True))
