@@ -19,7 +19,6 @@ import shapely
 from shapely.geometry.base import BaseGeometry
 
 from benchlay.exposure.distances import diffuse_distance_m
-from benchlay.layout.enclosure import Enclosure, Panel
 from benchlay.layout.materials import BODY, SHEET, Material
 from benchlay.named import NamedTuple
 from benchlay.placing.placed import PlacedState
@@ -27,10 +26,12 @@ from benchlay.scene.tables import SINKS, Floats, Ints
 from benchlay.tracing.beams import FACE, SOLID
 from benchlay.tracing.trace import Trace
 from benchlay.zones.limits import LimitTable
+from benchlay.zones.sight import Band, View
 
 _MM_PER_M = 1e3
 _TOGETHER_MM = 25.0  # spots nearer than this act as one to a distant eye
 _ON_PLANE_MM = 1e-3
+_IN_WALL_MM = 1.0  # what is lit on a wall lies in its line, but for rounding
 _STEPS = 32  # of half a circle
 # What the layout says nothing of may be as white as can be.
 _UNSTATED = 1.0
@@ -43,12 +44,10 @@ class Spot(NamedTuple):
     beam: int  # the strongest that lands there
     sink: str
     name: str | None
-    at: tuple[float, float, float]
-    normal: tuple[float, float, float] | None  # to the side that light comes from
     power_w: float
     reflectance: float
     radius_mm: float
-    area: BaseGeometry
+    view: View
 
 
 class _Landing(NamedTuple):
@@ -74,10 +73,8 @@ def spots(trace: Trace, limits: LimitTable, variant: int, wave: int) -> Iterator
             distance = _MM_PER_M * diffuse_distance_m(power, mpe, reflectance=share)
             radius = min(radius, distance)
         normal = _normal(trace, first)
-        area = _in_front(first.at, normal, radius)
-        for shadow in _shadows(state, first.at, radius):
-            area = shapely.difference(area, shadow)
-        yield Spot(first.beam, first.sink, first.name, first.at, normal, power, share, radius, area)
+        view = _view(state, first.at, normal, radius)
+        yield Spot(first.beam, first.sink, first.name, power, share, radius, view)
 
 
 def _groups(trace: Trace, variant: int, wave: int) -> list[list[_Landing]]:
@@ -164,6 +161,29 @@ def _side(trace: Trace, row: int, point: Floats, towards: Floats) -> Floats:
     return normal
 
 
+def _view(
+    state: PlacedState,
+    at: tuple[float, float, float],
+    normal: tuple[float, float, float] | None,
+    radius: float,
+) -> View:
+    """Return what lies within a distance of a place, before its surface and within the walls."""
+    area = _in_front(at, normal, radius)
+    room = state.layout.room
+    if room is not None:
+        walls = shapely.Polygon(room.outline)
+        if shapely.covers(shapely.buffer(walls, _IN_WALL_MM), shapely.Point(at[:2])):
+            area = shapely.intersection(area, walls)
+    return View(np.array(at), None if normal is None else np.array(normal), radius, area)
+
+
+def eye_band(state: PlacedState) -> Band:
+    """Return between which heights people have their eyes, mm above the bench."""
+    limits, floor = state.layout.limits, state.layout.bench.surface_height_mm
+    bands = (limits.eyes.seated_mm, limits.eyes.standing_mm)
+    return min(low for low, _ in bands) - floor, max(high for _, high in bands) - floor
+
+
 def _in_front(
     at: tuple[float, float, float], normal: tuple[float, float, float] | None, radius: float
 ) -> BaseGeometry:
@@ -178,55 +198,3 @@ def _in_front(
     local = outer * (np.concatenate([front, back[1:-1]]) if z != 0.0 else front)
     turned = local @ np.array([[ux, uy], [-uy, ux]])
     return shapely.Polygon(turned + np.array(at[:2]))
-
-
-def _shadows(
-    state: PlacedState, at: tuple[float, float, float], radius: float
-) -> Iterator[BaseGeometry]:
-    """Yield what lies behind panels that are closed, whole, and not to be looked over.
-
-    A panel is not where it is higher than the radius reaches, or where a lid keeps the light
-    from getting above its upper edge.
-    """
-    enclosure = state.layout.enclosure
-    if enclosure is None:
-        return
-    x, y, z = at
-    for name in sorted(enclosure.panels):
-        panel = enclosure.panels[name]
-        low, high = enclosure.heights_mm(panel)
-        if panel.open or panel.openings or (low > 0.0 and low > z - radius):
-            continue
-        ends = np.array([panel.from_mm, panel.to_mm])
-        away = ends - (x, y)
-        distances = np.hypot(away[:, 0], away[:, 1])
-        beside = abs(away[0, 0] * away[1, 1] - away[0, 1] * away[1, 0])
-        if beside < _ON_PLANE_MM * panel.length_mm or distances.min() <= 0.0:
-            continue  # the spot lies on it, or in its line
-        if high < z + radius and not _lidded(enclosure, panel, at, high):
-            continue
-        height = beside / panel.length_mm  # of the spot above the panel's line
-        far = away * (2.0 * radius + height) / height
-        behind = far[::-1] + np.array([x, y])
-        yield shapely.Polygon([*ends, *behind])
-
-
-def _lidded(
-    enclosure: Enclosure, panel: Panel, at: tuple[float, float, float], top_mm: float
-) -> bool:
-    """Whether closed lids of one height cover all ways from a spot up over a panel.
-
-    A way that is above the panel's upper edge at its line has crossed every height between
-    that and the spot before it, somewhere over the triangle of spot and panel. A lid whose
-    lower face is higher than the upper edge leaves a gap, and lids of several heights leave
-    one between them: neither counts.
-    """
-    by_height: dict[float, list[BaseGeometry]] = {}
-    for lid in enclosure.lids.values():
-        if not lid.open and at[2] <= lid.height_mm <= top_mm + _ON_PLANE_MM:
-            by_height.setdefault(lid.height_mm, []).append(shapely.Polygon(lid.outline))
-    ways = shapely.Polygon([at[:2], panel.from_mm, panel.to_mm])
-    return any(
-        shapely.covers(shapely.buffer(shapely.union_all(lids), _ON_PLANE_MM), ways)
-        for lids in by_height.values()
-    )

@@ -91,6 +91,12 @@ def test_a_lid_counts_between_the_spot_and_the_panels_edge(height, kept):
 
 def test_a_lid_helps_no_panel_that_lets_light_through():
     view = "openings: {view: {along: 300, width: 150, from_height: 50, to_height: 150}}"
-    for open_way in (view, "open: yes", "from_height: 10"):
+    for open_way in (view, "open: yes", "from_height: 110"):
         text = BOX.replace("south: {", f"south: {{{open_way}, ")
         assert leaves(f"{{{WHOLE}}}", text) == {"south"}
+
+
+def test_what_leaves_downwards_meets_no_eye():
+    """Through a gap of 90 mm at the foot of a panel light only falls from a spot 100 mm up."""
+    text = BOX.replace("south: {", "south: {from_height: 90, ")
+    assert leaves(f"{{{WHOLE}}}", text) == set()
