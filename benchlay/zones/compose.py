@@ -9,15 +9,12 @@ import shapely
 from shapely.geometry.base import BaseGeometry
 
 from benchlay.named import NamedTuple
-from benchlay.scene.tables import Floats
 from benchlay.tracing.beams import FACE, HANDED, NOTHING
 from benchlay.tracing.trace import Trace
-from benchlay.zones.blockers import blockers
-from benchlay.zones.diffuse import Spot, eye_band, spots
+from benchlay.zones.diffuse import Spot, spots
 from benchlay.zones.enclosing import Enclosing, enclosing_of
 from benchlay.zones.limits import LimitTable, limits_of
 from benchlay.zones.polygons import Ring, rings, united
-from benchlay.zones.sight import seen
 from benchlay.zones.swept import Leg, hazardous_legs
 from benchlay.zones.words import number, with_unit
 
@@ -97,14 +94,10 @@ def _of_state(trace: Trace, limits: LimitTable, variant: int) -> list[Zone]:
         for kind, area in _by_kind(leg, enclosing):
             piece = _Piece(area, _maker(trace, leg.beam), leg.power_w, leg.reach_m, leg.beam)
             pieces.setdefault((int(s.wave[leg.beam]), kind), []).append(piece)
-    band = eye_band(trace.placed.states[variant])
-    opaque: list[Floats] | None = None  # gathered where something scatters
     for wave in range(len(trace.scene.wavelengths_nm)):
         for spot in spots(trace, limits, variant, wave):
-            opaque = blockers(trace, variant) if opaque is None else opaque
-            area = seen(spot.view, opaque, band)
             reach = spot.radius_mm / 1e3
-            piece = _Piece(area, _spot_maker(spot), spot.power_w, reach, spot.beam)
+            piece = _Piece(spot.area, _spot_maker(spot), spot.power_w, reach, spot.beam)
             pieces.setdefault((wave, DIFFUSE), []).append(piece)
     zones = [
         _zone(trace, limits, key, polygon, pieces[key])

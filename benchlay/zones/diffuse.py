@@ -1,12 +1,8 @@
-r"""Where hazardous light lands on a matt surface: the space in front, out to the limit.
+"""Where hazardous light lands on a matt surface, and from where it is seen.
 
-The irradiance at a distance r from a small matt spot is at most :math:`\rho P/(\pi r^2)`
-(Lambert, seen along its normal), so the limit E is kept from
-
-.. math:: r = \sqrt{\rho P/(\pi E)}
-
-on. The limit of a point source is taken, which is the smaller; the full radius is taken in
-every direction of the half space in front, which is the larger hazard.
+The distance is that of `benchlay.exposure.viewing`: for the spot's own size, of an elliptical
+spot the smaller, and never less than that of a point within 100 mm. It is taken in every
+direction of the half space in front, which is the larger hazard.
 """
 
 from __future__ import annotations
@@ -18,17 +14,17 @@ import numpy as np
 import shapely
 from shapely.geometry.base import BaseGeometry
 
-from benchlay.exposure.distances import diffuse_distance_m
 from benchlay.layout.materials import BODY, SHEET, Material
 from benchlay.named import NamedTuple
 from benchlay.placing.placed import PlacedState
 from benchlay.scene.tables import SINKS, Floats, Ints
 from benchlay.tracing.beams import FACE, SOLID
 from benchlay.tracing.trace import Trace
+from benchlay.zones.blockers import blockers
 from benchlay.zones.limits import LimitTable
-from benchlay.zones.sight import Band, View
+from benchlay.zones.sight import Band, View, seen
+from benchlay.zones.viewing import scattered_mm, spot_d63_mm
 
-_MM_PER_M = 1e3
 _TOGETHER_MM = 25.0  # spots nearer than this act as one to a distant eye
 _ON_PLANE_MM = 1e-3
 _IN_WALL_MM = 1.0  # what is lit on a wall lies in its line, but for rounding
@@ -44,10 +40,13 @@ class Spot(NamedTuple):
     beam: int  # the strongest that lands there
     sink: str
     name: str | None
+    at: tuple[float, float, float]
     power_w: float
     reflectance: float
-    radius_mm: float
+    d63_mm: float  # of the spot, 0 for a point
+    radius_mm: float  # how far the limit is exceeded
     view: View
+    area: BaseGeometry  # from where it is seen within that distance
 
 
 class _Landing(NamedTuple):
@@ -61,20 +60,21 @@ class _Landing(NamedTuple):
 def spots(trace: Trace, limits: LimitTable, variant: int, wave: int) -> Iterator[Spot]:
     """Yield the places of a state where a hazardous share lands on a surface that scatters."""
     state = trace.placed.states[variant]
+    opaque: list[Floats] | None = None  # gathered where something scatters
     for group in _groups(trace, variant, wave):
         first = group[0]
         power = sum(landing.power_w for landing in group)
-        allowed, mpe, _ = (float(v[0]) for v in limits.of(trace, np.array([first.beam])))
+        allowed = float(limits.of(trace, np.array([first.beam]))[0][0])
         share = diffuse_share(state, first.sink, first.name)
         if power * share <= allowed:  # the eye's aperture cannot take more than all of it
             continue
-        radius = state.layout.limits.reach_mm  # as far as anything is followed
-        if mpe > 0.0:
-            distance = _MM_PER_M * diffuse_distance_m(power, mpe, reflectance=share)
-            radius = min(radius, distance)
-        normal = _normal(trace, first)
-        view = _view(state, first.at, normal, radius)
-        yield Spot(first.beam, first.sink, first.name, power, share, radius, view)
+        d63 = min(spot_d63_mm(trace, landing.beam) for landing in group)
+        far = scattered_mm(trace, limits, first.beam, (power, share, d63))
+        radius = min(far, state.layout.limits.reach_mm)  # as far as anything is followed
+        view = _view(state, first.at, _normal(trace, first), radius)
+        opaque = blockers(trace, variant) if opaque is None else opaque
+        area = seen(view, opaque, eye_band(state))
+        yield Spot(*first[1:], power, share, d63, radius, view, area)
 
 
 def _groups(trace: Trace, variant: int, wave: int) -> list[list[_Landing]]:

@@ -14,7 +14,7 @@ BOX = """
       ir:
         wavelength: 1064
         pulse: {energy: 50 mJ, duration: 8 ns, rate: 10 Hz}
-        beam: {waist_radius: 2}
+        beam: {waist_radius: 0.3, waist_ahead: 400}
         at: [600, 200]
         heading: 180
     elements:

@@ -10,13 +10,11 @@ from traced import traced
 
 from benchlay import pipeline
 from benchlay.zones import limits_of
-from benchlay.zones.blockers import blockers
 from benchlay.zones.diffuse import eye_band, spots
-from benchlay.zones.sight import seen
 
 _LAYOUTS = Path(__file__).parents[2] / "layouts"
 _GRID = 25  # eyes a side
-_HEIGHTS = 181
+_HEIGHTS = 361
 _FEW = 11, 61  # of either, where there are many spots
 
 # Scattered light of a spot at [300, 250, 100] that is hazardous out to 1.5 m.
@@ -105,12 +103,12 @@ def bench(scene):
 
 def compared(trace, variant=0, many=(_GRID, _HEIGHTS)):
     """Of each spot: eyes that see it and lie in no zone; eyes in a zone that see nothing."""
-    limits, opaque = limits_of(trace), blockers(trace, variant)
+    limits = limits_of(trace)
     band = eye_band(trace.placed.states[variant])
     for wave in range(len(trace.scene.wavelengths_nm)):
         for spot in spots(trace, limits, variant, wave):
             view, radius = spot.view, spot.radius_mm
-            zone = seen(view, opaque, band)
+            zone = spot.area
             offsets = 0.999 * radius * np.linspace(-1.0, 1.0, many[0]) + 0.0137
             grid = np.meshgrid(view.at[0] + offsets, view.at[1] + offsets)
             plan = np.stack(grid, axis=-1).reshape(-1, 2)

@@ -61,13 +61,24 @@ def test_light_below_the_limit_makes_no_zone():
 
 def test_a_white_surface_scatters_one_watt_out_to_112_mm():
     white = "{kind: target, at: [700, 300], facing: 180, diffuse: 1}"
-    result = zones_of(traced(straight(target=white, more="limits: {time_base: 0.25 s}")))
+    text = straight(waist="0.05, waist_ahead: 600", target=white)  # a point, seen from 112 mm
+    result = zones_of(traced(text + "limits: {time_base: 0.25 s}\n"))
     (zone,) = [zone for zone in result.zones if zone.kind == "diffuse"]
     assert zone.reach_m == pytest.approx(0.112, abs=5e-4)  # published for 1 W, 0.25 s, visible
     radius = 1e3 * zone.reach_m
     assert zone.area_m2 * 1e6 == pytest.approx(0.5 * math.pi * radius**2, rel=3e-3)
     assert zone.area_m2 * 1e6 >= 0.5 * math.pi * radius**2
     assert max(x for x, _ in zone.polygon[0]) <= 700.0 + 1e-6  # in front only
+
+
+def test_a_wide_spot_may_be_looked_at_from_nearer_but_never_below_100_mm():
+    """A spot of 7 mm is 70 mrad wide at 100 mm, where the limit is over 40 times a point's."""
+    white = "{kind: target, at: [700, 300], facing: 180, diffuse: 1}"
+    for power, far in (("1 W", 0.1), ("10 W", 0.1)):
+        text = straight(power, 5, target=white) + "limits: {time_base: 0.25 s}\n"
+        (zone,) = [z for z in zones_of(traced(text)).zones if z.kind == "diffuse"]
+        assert zone.reach_m == pytest.approx(far, rel=1e-9)
+        assert zone.area_m2 == pytest.approx(0.5 * math.pi * far**2, rel=3e-3)
 
 
 def test_a_tilted_surface_scatters_over_its_own_edge_too():
