@@ -23,7 +23,8 @@ class Window(NamedTuple):
 
     `origin` is where the sheet's inner face starts, `along` its unit vector in plan; the inside
     is on its left. `box` is (start, end, low, high) along it and in height; a round one fills
-    its box. The passage leads from the inner face `depth_mm` outwards.
+    its box. The passage leads from the inner face `depth_mm` outwards. `clear` is the box, drawn
+    out without end where it reaches the sheet's own edge: there nothing is left of the sheet.
     """
 
     name: str
@@ -32,6 +33,7 @@ class Window(NamedTuple):
     box: tuple[float, float, float, float]
     round: bool
     depth_mm: float
+    clear: tuple[float, float, float, float]
 
     def place(self, point: Pair, out_mm: float = 0.0) -> Place:
         """Return a point of the sheet in space: along it, height."""
@@ -52,10 +54,10 @@ class Window(NamedTuple):
         share = near / (near + self.depth_mm)
         low, high = (
             tuple(f + share * (value - f) for f, value in zip(foot, corner, strict=True))
-            for corner in (self.box[::2], self.box[1::2])
+            for corner in (self.clear[::2], self.clear[1::2])
         )
         other = (low[0], high[0], low[1], high[1])
-        seen = _lens(self.box, other) if self.round else _rectangle(self.box, other)
+        seen = _lens(self.clear, other) if self.round else _rectangle(self.clear, other)
         return [self.place(point, near_out) for point in seen]
 
 
@@ -154,7 +156,7 @@ def _passes(eye: Place, way: Place, window: Window) -> bool:
 
 
 def _is_in(window: Window, along: float, height: float) -> bool:
-    start, end, low, high = window.box
+    start, end, low, high = window.clear
     if window.round:
         x, y = along - 0.5 * (start + end), height - 0.5 * (low + high)
         return hypot(x, y) < 0.5 * (end - start)

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 from math import dist, hypot
+from typing import TypeAlias
 
 from benchlay.coverage.blockers import Blocker, Place, Prism, Window
 from benchlay.coverage.planar import Convex, Pair, less
@@ -14,6 +15,9 @@ from benchlay.named import NamedTuple
 from benchlay.scene.surroundings import BENCH_THICKNESS_MM, material_of
 from benchlay.zones.enclosure_line import EnclosureLine, Side, enclosure_line, inside
 
+_Box: TypeAlias = tuple[float, float, float, float]
+_ROUNDING_MM = 1e-6
+_ENDLESS_MM = 1e5
 _AT_WALL_MM = 0.5  # a panel that ends this near to a wall of the room is meant to end at it
 
 
@@ -121,17 +125,27 @@ def windows_of(enclosure: Enclosure, layout: Layout, name: str, panel: Panel) ->
     """Return the openings of a panel."""
     (x0, y0), (x1, y1) = panel.from_mm, panel.to_mm
     along = ((x1 - x0) / panel.length_mm, (y1 - y0) / panel.length_mm)
-    return tuple(
-        Window(
-            f"{name}.{key}",
-            panel.from_mm,
-            along,
-            opening.box_mm(),
-            opening.round,
-            passage_mm(enclosure, layout, panel, opening.depth_mm),
-        )
-        for key, opening in sorted(panel.openings.items())
+    low, high = enclosure.heights_mm(panel)
+    edges = (0.0, panel.length_mm, low, high)
+    found = []
+    for key, opening in sorted(panel.openings.items()):
+        box, depth = opening.box_mm(), passage_mm(enclosure, layout, panel, opening.depth_mm)
+        whole = opening.round or opening.depth_mm > 0.0  # a duct has walls all round
+        clear = box if whole else _drawn_out(box, edges)
+        mouth = (panel.from_mm, along, box, opening.round, depth, clear)
+        found.append(Window(f"{name}.{key}", *mouth))
+    return tuple(found)
+
+
+def _drawn_out(box: _Box, edges: _Box) -> _Box:
+    """Draw a box out without end where it reaches an edge."""
+    start, end, low, high = (
+        (value - _ENDLESS_MM, value + _ENDLESS_MM)[number % 2]
+        if abs(value - edge) < _ROUNDING_MM
+        else value
+        for number, (value, edge) in enumerate(zip(box, edges, strict=True))
     )
+    return start, end, low, high
 
 
 def _blockers(layout: Layout, enclosure: Enclosure, line: EnclosureLine) -> Iterator[Prism]:

@@ -65,7 +65,8 @@ def _mouths(enclosed: Enclosed, gap: Gap) -> Iterator[Window]:
     x, y = side.end[0] - side.start[0], side.end[1] - side.start[1]
     length = hypot(x, y)
     box = (0.0, length, *gap.heights_mm)
-    yield Window(gap.through, side.start, (x / length, y / length), box, False, sheet.thickness_mm)
+    along = (x / length, y / length)
+    yield Window(gap.through, side.start, along, box, False, sheet.thickness_mm, box)
 
 
 def _needed(mouth: Window, leg: Leg, radius_mm: float) -> float | None:

@@ -17,7 +17,6 @@ from benchlay.named import NamedTuple
 # throws its shadow far outside of any region.
 _FRONT = 1e-6
 _BESIDE_MM = 1.0  # how far outside a region shadows are still followed
-_BESIDE_TALL = 1e6  # mm: heights of a wall that ends nowhere
 
 
 class Cell(NamedTuple):
@@ -116,28 +115,14 @@ class View:
             return hull(self.thrown(self.in_front(blocker.points)))
         if self.is_level:
             return self._level_shadow(blocker)
-        return hull(self.thrown(_ends(self._in_wedge(blocker.outline), blocker)))
+        return hull(self.thrown(_ends(self.in_wedge(blocker.outline), blocker)))
 
     def light(self, points: Sequence[Place]) -> Convex:
         """Return a convex polygon in space (such as a window) thrown on the plane."""
         shape = hull(self.thrown(self.in_front(points))) if len(points) > 1 else []
         return shape
 
-    def hides(self, start: Pair, end: Pair) -> Convex:
-        """Return what of the cell lies beyond an endless wall over a line in plan."""
-        wall = Prism("", (start, end), -_BESIDE_TALL, _BESIDE_TALL)
-        if self.is_level:
-            return self._level_shadow(wall._replace(high_mm=self.cell.origin[2]))
-        outline = self._in_wedge((start, end))
-        if not outline:
-            return []
-        x, y = (0.5 * (min(c) + max(c)) for c in zip(*outline, strict=True))
-        depth = (x - self.eye[0]) * self.normal[0] + (y - self.eye[1]) * self.normal[1]
-        if depth > self.depth * (1.0 - _FRONT):
-            return []
-        return hull(self.thrown(_ends(outline, wall)))
-
-    def _in_wedge(self, outline: Sequence[Pair]) -> Convex:
+    def in_wedge(self, outline: Sequence[Pair]) -> Convex:
         """Return the part of an outline in plan within the wedge that the cell fills."""
         us = [u for u, _ in self.cell.polygon]
         ends = (min(us) - _BESIDE_MM, max(us) + _BESIDE_MM)
@@ -168,7 +153,6 @@ def visible(
     cell: Cell,
     eye: Place,
     blockers: Iterable[Blocker],
-    walls: Iterable[tuple[Pair, Pair]] = (),
 ) -> list[Convex]:
     """Return the parts of a cell through which rays from a point meet nothing.
 
@@ -178,8 +162,6 @@ def visible(
     eye : (x, y, z)
     blockers : iterable of Blocker
         They stop rays before and beyond the cell.
-    walls : iterable of (start, end)
-        Lines in plan; what lies beyond them is left out.
 
     Returns
     -------
@@ -190,8 +172,6 @@ def visible(
     pieces = wide([list(cell.polygon)])
     if view.depth <= _FRONT:
         return []
-    for start, end in walls:
-        pieces = less(pieces, view.hides(start, end))
     for blocker in blockers:
         if not pieces:
             break
@@ -204,6 +184,7 @@ def visible(
         if isinstance(blocker, Prism):
             for window in blocker.windows:
                 shape = view.light(window.seen_from(eye))
+                shape = common(shape, dark) if shape else []
                 bright += [common(piece, shape) for piece in pieces] if shape else []
         pieces = less(pieces, dark) + wide(bright)
     return pieces
