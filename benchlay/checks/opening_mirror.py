@@ -107,8 +107,10 @@ def check(context: Context, variant: int) -> Iterator[Found]:
         return
     among = context.gaps.among_bodies(variant)
     for gap in gaps:
+        if gap.roofless:
+            continue
         one = next((one for one in legs if guilty(among, gap, one.leg)), None)
-        if one is not None and not gap.roofless:
+        if one is not None:
             yield _finding(context, variant, among, gap, (one, legs))
 
 

@@ -104,14 +104,15 @@ def check(context: Context, variant: int) -> Iterator[Found]:
     yield from unjudged(context, variant)
     # Loaded where there is a gap: a tight enclosure needs none of it.
     from benchlay.checks._check.inside import hazardous
-    from benchlay.coverage.probe import LENGTH_MM, may_reach, probe_mm
+    from benchlay.coverage.probe import LENGTH_MM, may_reach, mouths_of, probe_mm
 
     legs = hazardous(context, variant, enclosed)
     for gap in gaps:
-        for one in legs if not gap.roofless else ():
-            if not may_reach(enclosed, gap, one.leg):
+        mouths = [] if gap.roofless else mouths_of(enclosed, gap)
+        for one in legs:
+            if not may_reach(mouths, one.leg):
                 continue
-            needed = probe_mm(enclosed, gap, one.leg, _radius_mm(context, one))
+            needed = probe_mm(mouths, one.leg, _radius_mm(context, one))
             if needed is not None and needed <= LENGTH_MM + _ROUNDING_MM:
                 yield _finding(context, enclosed, gap, one, needed)
                 break

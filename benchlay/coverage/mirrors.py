@@ -18,7 +18,6 @@ from benchlay.coverage.enclosed import Enclosed
 from benchlay.coverage.filled import corners
 from benchlay.coverage.gaps import OPENING, Gap, windows
 from benchlay.coverage.planar import Pair
-from benchlay.coverage.regions import open_parts
 from benchlay.named import NamedTuple
 from benchlay.placing.placed import PlacedState
 from benchlay.scene.tables import PARTS, Scene
@@ -104,6 +103,9 @@ def sees(enclosed: Enclosed, gap: Gap, place: Place) -> bool:
     """Whether a mirror at a place could throw light out through a gap."""
     if not stopped(place, gap.at, enclosed.blockers):
         return True
+    # Loaded where one ray does not answer it.
+    from benchlay.coverage.regions import open_parts
+
     return bool(open_parts(enclosed, gap, place))
 
 

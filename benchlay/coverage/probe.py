@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Sequence
 from math import hypot
 
 import numpy as np
@@ -24,18 +24,18 @@ _TOUCH_MM = 1e-9
 _ROUNDING_MM = 1e-9
 
 
-def may_reach(enclosed: Enclosed, gap: Gap, leg: Leg) -> bool:
-    """Whether the probe goes into a gap at all, and a beam comes as near as it is long."""
-    return any(_admits(mouth) and not _is_far(mouth, leg) for mouth in _mouths(enclosed, gap))
+def may_reach(mouths: Sequence[Window], leg: Leg) -> bool:
+    """Whether a beam comes as near to a mouth as the probe is long."""
+    return any(not _is_far(mouth, leg) for mouth in mouths)
 
 
-def probe_mm(enclosed: Enclosed, gap: Gap, leg: Leg, radius_mm: float) -> float | None:
-    """Return how long a probe of that diameter would have to be to reach a beam through a gap.
+def probe_mm(mouths: Sequence[Window], leg: Leg, radius_mm: float) -> float | None:
+    """Return how long a probe of that diameter would have to be to reach a beam.
 
     Parameters
     ----------
-    enclosed, gap
-        A gap in the sides of the line; a lid that is open is none.
+    mouths : sequence of Window
+        From `mouths_of`.
     leg : Leg
         The axis of the beam.
     radius_mm : float
@@ -44,12 +44,17 @@ def probe_mm(enclosed: Enclosed, gap: Gap, leg: Leg, radius_mm: float) -> float 
     Returns
     -------
     float or None
-        From the outer mouth to the tip, mm; None where the probe does not go in. The probe may
-        lean as far as the mouths let it. How far it then reaches sideways is taken generously:
-        its radius and the beam's.
+        From the outer mouth to the tip, mm; None where the probe does not get there. The probe
+        may lean as far as the mouths let it. How far it then reaches sideways is taken
+        generously: its radius and the beam's.
     """
-    lengths = [_needed(mouth, leg, radius_mm) for mouth in _mouths(enclosed, gap)]
+    lengths = [_needed(mouth, leg, radius_mm) for mouth in mouths]
     return min((length for length in lengths if length is not None), default=None)
+
+
+def mouths_of(enclosed: Enclosed, gap: Gap) -> list[Window]:
+    """Return the openings of a gap that the probe goes into; none of a lid that is off."""
+    return [mouth for mouth in _mouths(enclosed, gap) if _admits(mouth)]
 
 
 def _mouths(enclosed: Enclosed, gap: Gap) -> Iterator[Window]:
@@ -72,8 +77,6 @@ def _mouths(enclosed: Enclosed, gap: Gap) -> Iterator[Window]:
 def _needed(mouth: Window, leg: Leg, radius_mm: float) -> float | None:
     start, end, low, high = mouth.box
     half = 0.5 * DIAMETER_MM
-    if not _admits(mouth):
-        return None
     axes = ((start + half, end - half), (low + half, high - half))
 
     def lengths(ways: Floats) -> Floats:

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, TypeAlias
 
 import numpy as np
 
@@ -12,6 +12,7 @@ from benchlay.coverage.filled import filled_openings
 from benchlay.coverage.gaps import EDGE, OPENING, OVER, SHEET, SIDE, UNDER, Gap, gaps_of
 from benchlay.coverage.places import standpoints
 from benchlay.document.span import Span
+from benchlay.layout.layout import Layout
 from benchlay.named import NamedTuple
 from benchlay.tracing.beams import FACE
 from benchlay.tracing.front import EMITTED
@@ -29,20 +30,39 @@ class Astray(NamedTuple):
     power_w: float
 
 
+_Open: TypeAlias = tuple[Enclosed | None, list[Gap]]
+_ENCLOSING = ("enclosure", "bench", "room", "materials")  # parts of a layout that gaps hang on
+
+
+def _gaps(layout: Layout, closed: frozenset[str]) -> _Open:
+    enclosed = enclosed_of(layout, closed)
+    return enclosed, [] if enclosed is None else gaps_of(enclosed)
+
+
 class Gaps:
     """What is open in each state; worked out when first asked for."""
 
     def __init__(self, context: Context) -> None:
         self._context = context
-        self._known: dict[int, tuple[Enclosed | None, list[Gap]]] = {}
+        self._known: dict[int, _Open] = {}
 
-    def of(self, variant: int) -> tuple[Enclosed | None, list[Gap]]:
+    def of(self, variant: int) -> _Open:
         """Return the enclosure of a state (None without one) and its gaps."""
         if variant not in self._known:
             layout, scene = self._context.layout(variant), self._context.trace.scene
-            enclosed = enclosed_of(layout, filled_openings(layout, scene, variant))
-            self._known[variant] = enclosed, [] if enclosed is None else gaps_of(enclosed)
+            closed = filled_openings(layout, scene, variant)
+            self._known[variant] = self._alike(layout, closed) or _gaps(layout, closed)
         return self._known[variant]
+
+    def _alike(self, layout: Layout, closed: frozenset[str]) -> _Open | None:
+        """Return what is known of a state whose enclosure is the very same."""
+        for enclosed, gaps in self._known.values():
+            if enclosed is None or enclosed.closed != closed:
+                continue
+            own = enclosed.layout
+            if all(getattr(own, name) is getattr(layout, name) for name in _ENCLOSING):
+                return enclosed._replace(layout=layout), gaps
+        return None
 
     def among_bodies(self, variant: int) -> Enclosed:
         """Return the enclosure of a state with the bodies on the bench; its sides if roofless."""
