@@ -135,15 +135,15 @@ def test_factors_of_wavelength(factor, rows, low, high):
     ],
 )
 def test_factors_of_time(factor, rows):
-    expected = [oracle.step(rows, t) for t in S]
-    np.testing.assert_allclose(factor(np.array(S)), expected, rtol=SAME)
+    expected = [oracle.step(rows, t) for t in BESIDE_S]
+    np.testing.assert_allclose(factor(np.array(BESIDE_S)), expected, rtol=SAME)
 
 
 def test_t2_and_c6_on_both_sides_of_their_angles():
     np.testing.assert_allclose(
         factors.t2_s(np.array(MRAD)), [oracle.t2(a) for a in MRAD], rtol=SAME
     )
-    grid = np.array(list(itertools.product(MRAD, S)))
+    grid = np.array(list(itertools.product(MRAD, BESIDE_S)))
     expected = [oracle.c6(a, t) for a, t in grid]
     np.testing.assert_allclose(factors.c6(grid[:, 0], grid[:, 1]), expected, rtol=SAME)
 
