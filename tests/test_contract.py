@@ -175,7 +175,7 @@ SOURCE = keys(
 )  # fmt: skip
 REACHED = keys(
     {
-        "class_as_modelled": maybe(TEXT), "statement": TEXT,
+        "class_as_modelled": maybe(TEXT), "statement": TEXT, "governs": TEXT,
         "lines": listed(
             keys(
                 {"source": TEXT, "wavelength_nm": NUMBER, "class_as_modelled": maybe(TEXT),

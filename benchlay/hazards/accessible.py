@@ -67,14 +67,28 @@ def _reached(
         lines.append(line)
         classified.append(found)
     scattered = _scattered(context, variant, struck, where)
-    names = [together(classified)]
-    if scattered is not None:
-        names.append(scattered.class_as_modelled)
-    name = worst(names)
-    words = statement(name)
-    if not lines and scattered is None:
+    direct = together(classified)
+    of_scatter = "1" if scattered is None else scattered.class_as_modelled
+    name = worst([direct, of_scatter])
+    words, governs = statement(name), _governs(lines)
+    if scattered is not None and (not lines or worst([direct]) != name):
+        governs = (
+            f"{scattered.wavelength_nm:.10g} nm scattered from {scattered.surface}, "
+            f"met at {scattered.distance_m:.2g} m"
+        )
+    elif not lines:
         words = f"no light that was followed gets there: {words}"
-    return Reached(name, words, tuple(lines), scattered)
+    return Reached(name, words, governs, tuple(lines), scattered)
+
+
+def _governs(lines: list[LineReached]) -> str:
+    """Say which of some lines is the worst, and whether there are others."""
+    if not lines:
+        return ""
+    ratios = [math.inf if line.ratio is None else line.ratio for line in lines]
+    strongest_ = lines[ratios.index(max(ratios))]
+    other = " with all other lines" if len(lines) > 1 else ""
+    return f"{strongest_.wavelength_nm:.10g} nm from {strongest_.from_}{other}"
 
 
 def _line(context: Context, way: Way) -> tuple[LineReached, Classification | str]:

@@ -82,10 +82,11 @@ class Scattered(NamedTuple):
 
 
 class Reached(NamedTuple):
-    """All light in reach on one side of the enclosure."""
+    """All light in reach on one side of the enclosure; `governs` says which is the worst of it."""
 
     class_as_modelled: str | None
     statement: str
+    governs: str
     lines: tuple[LineReached, ...]
     scattered: Scattered | None
 

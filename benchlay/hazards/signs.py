@@ -26,7 +26,7 @@ _WITH_APERTURE = frozenset({"3R", "3B", "4"})
 # What each class asks of people, in our own words.
 _AVOID = MappingProxyType(
     {
-        "1": "not to be opened while the laser is on",
+        "1": "keep the housing closed while the laser is on",
         "1M": "do not look at the beam through optics",
         "2": "do not keep looking into the beam",
         "2M": "do not keep looking into the beam, nor look at it through optics",
@@ -71,7 +71,7 @@ def _at_sources(states: Sequence[StateHazards]) -> Iterator[Sign]:
             f"on the housing of {source}",
             name,
             (_light(strongest), _class_words(name), *_outputs(strongest), EDITION),
-            (_NEAR_MM, _LABEL_MM),
+            (0.0 if name == "1" else _NEAR_MM, _LABEL_MM),
         )
         if name is None or name in _WITH_APERTURE:
             words = ("laser light leaves here", _class_words(name))

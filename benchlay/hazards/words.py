@@ -6,13 +6,16 @@ Densities and distances are rounded up, never down.
 from __future__ import annotations
 
 import math
+from collections.abc import Iterator, Sequence
 
+from benchlay.hazards.classes import WORST
 from benchlay.hazards.model import (
     Diffuse,
     Distance,
     Eyewear,
     Passage,
     Person,
+    Reached,
     SourceHazard,
     Span,
     StateHazards,
@@ -58,6 +61,11 @@ def metres(distance_m: float, decimal: str = ".") -> str:
     return f"{number(distance_m, _DIGITS, decimal)} m"
 
 
+def power(power_w: float, decimal: str = ".") -> str:
+    """Write a power."""
+    return with_unit(power_w, "W", decimal=decimal)
+
+
 def wavelength(wavelength_nm: float, decimal: str = ".") -> str:
     """Write a wavelength.
 
@@ -89,9 +97,33 @@ def span(found: Span | None, decimal: str = ".") -> str:
     )
 
 
+def short_span(found: Span | None, decimal: str = ".") -> str:
+    """Write a hazardous stretch for a column that says what stands in brackets."""
+    if found is None:
+        return "nowhere"
+    return span(found, decimal).replace("far-field formula ", "")
+
+
+def short_class(name: str | None) -> str:
+    """Write within the limit of which class something stays, for a column that says so."""
+    if name is None:
+        return "no limit known"
+    return "above class 3B" if name == WORST else f"class {name}"
+
+
+def reached(found: Reached) -> str:
+    """Say within which limit all light in reach stays, and which of it is the worst."""
+    return f"{found.statement}{f'; the worst: {found.governs}' if found.governs else ''}"
+
+
 def distance_span(row: Distance, decimal: str = ".") -> str:
     """Write the hazardous stretch of a beam in reach."""
-    return span(Span(row.from_m, row.to_m, row.far_field_m), decimal)
+    return span(span_of(row), decimal)
+
+
+def span_of(row: Distance) -> Span:
+    """Return the hazardous stretch of a beam in reach."""
+    return Span(row.from_m, row.to_m, row.far_field_m)
 
 
 def stopped(row: Distance, decimal: str = ".") -> str:
@@ -126,7 +158,7 @@ def place(where: str, state: StateHazards) -> str:
     """Say where a row of eyewear is for."""
     if state.accessible.outside is None:
         return "at the open bench"
-    return "inside, panels open" if where == INSIDE else "outside the enclosure"
+    return "inside, panels open" if where == INSIDE else "outside"
 
 
 def beam_of(row: Eyewear | Distance) -> str:
@@ -153,17 +185,29 @@ def person(row: Person, decimal: str = ".") -> str:
     return f"{row.name} ({row.eyes}): {where}{edge}{' from its edge' if edge else ''}"
 
 
-def passage(row: Passage) -> str:
-    """Say whether the controlled area reaches a door or window."""
-    return f"{row.kind} {row.name}: {'REACHED by' if row.reached else 'not reached by'} it"
+def _passages(rows: Sequence[Passage]) -> Iterator[str]:
+    """Yield which doors and windows the controlled area reaches, and which it does not."""
+    for row in rows:
+        if row.reached:
+            yield f"{row.kind} {row.name}: REACHED by the controlled area"
+    clear = [f"{row.kind} {row.name}" for row in rows if not row.reached]
+    if clear:
+        yield f"not reached by it: {', '.join(clear)}"
+
+
+def area(state: StateHazards, decimal: str = ".") -> str:
+    """Write how large the controlled area is in plan."""
+    return f"{number(state.controlled_area_m2, _DIGITS, decimal)} m²"
 
 
 def who(state: StateHazards, decimal: str = ".") -> list[str]:
     """Say who may stand where in a state."""
-    area = f"{number(state.controlled_area_m2, 3, decimal)} m²"
-    lines = [f"controlled area {area} in plan; inside it only with the eyewear of this state"]
+    lines = [
+        f"controlled area {area(state, decimal)} in plan; inside it only with the eyewear of this "
+        "state"
+    ]
     lines += [person(row, decimal) for row in state.people]
-    lines += [passage(row) for row in state.passages]
+    lines += _passages(state.passages)
     if not state.people:
         lines.append("the layout names no places of people: nobody is known to be outside it")
     return lines

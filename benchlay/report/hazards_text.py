@@ -37,11 +37,12 @@ def _lines(state: StateHazards) -> Iterator[str]:
 def _accessible(state: StateHazards) -> Iterator[str]:
     found = state.accessible
     why = ", ".join(found.because) if found.because else "outside the enclosure, shut as drawn"
-    yield f"in reach ({why}): {found.statement}"
+    counted = found.outside if found.counts == "outside" and found.outside else found.inside
+    yield f"in reach ({why}): {words.reached(counted)}"
     if found.outside is not None:
         kept = found.inside if found.counts == "outside" else found.outside
         where = "inside" if found.counts == "outside" else "outside the enclosure"
-        yield f"{where}: {kept.statement}"
+        yield f"{where}: {words.reached(kept)}"
 
 
 def _eyewear(state: StateHazards) -> Iterator[str]:

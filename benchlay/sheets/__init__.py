@@ -110,9 +110,24 @@ def _cuts(subject: Subject) -> Iterator[Planned]:
         yield Planned(f"cut-{part.name}", cut, numbered=False, forms=("dxf",))
 
 
+def _safety(subject: Subject) -> Iterator[Planned]:
+    from benchlay.checks import Context, limits_of
+    from benchlay.hazards import hazards_of, signs_of
+    from benchlay.sheets.drafting.safety import safety_contents
+    from benchlay.sheets.safety import compose, name_of
+
+    trace, layout = subject.trace, subject.trace.placed.base.layout
+    states = None if subject.state is None else (subject.state,)
+    found = hazards_of(Context(trace, limits_of(trace.placed)), subject.zones, states)
+    contents = safety_contents(layout, found, signs_of(layout, found), subject.sha256)
+    for page, made in enumerate(compose(contents), start=1):
+        yield Planned(name_of(page), made)
+
+
 SHEETS: Mapping[str, Callable[[Subject], Iterable[Planned]]] = {
     "plan": _plan,
     "elevation": _elevations,
+    "safety": _safety,
     "panel": _panels,
     "cut": _cuts,
 }
@@ -171,7 +186,7 @@ def sheets_of(
     ----------
     trace : Trace
     zones : Zones, optional
-        The hazard zones, where they are known already: of the state drawn at least.
+        The hazard zones, where they are known already: of all states, or of the one named.
     only, counts, sha256, state
         See `composed_sheets` and `Subject`.
 
@@ -183,5 +198,5 @@ def sheets_of(
     if zones is None:
         from benchlay.zones import zones_of
 
-        zones = zones_of(trace, states=(state or trace.scene.variants[0],))
+        zones = zones_of(trace, states=None if state is None else (state,))
     return composed_sheets(Subject(trace, zones, tuple(counts), sha256, state), only)

@@ -3,7 +3,9 @@
 import json
 import math
 import re
+from io import BytesIO
 
+import pypdf
 import pytest
 from judged import BOX, OPEN, PULSED, TWO, hazards, review, reviewed
 
@@ -236,12 +238,18 @@ def test_the_json_tells_it_all_in_plain_values():
     assert any("eyewear last" in caution for caution in document["cautions"])
 
 
+def _text_of(name, data):
+    if name.endswith(".pdf"):
+        return " ".join(page.extract_text() for page in pypdf.PdfReader(BytesIO(data)).pages)
+    return data.decode()
+
+
 @pytest.mark.parametrize("text", [OPEN, BOX, FOCUS])
 def test_nothing_is_ever_called_safe(text):
     from benchlay.report.text import check_text
 
     result, files = reviewed(text)
-    written = [check_text([result]), *(data.decode() for data in files.values())]
+    written = [check_text([result]), *(_text_of(name, data) for name, data in files.items())]
     for output in written:
         rest = output.replace("no line between safe and dangerous", "")
         assert not re.search(r"\bsafe(?!ty)\w*\b", rest, re.I)

@@ -15,41 +15,41 @@ WHOLE = """\
 hazards in as drawn (IEC 60825-1:2014)
   source green, 532 nm, 0.15 W: within the limit of class 3B as modelled; 0 m to 289 m (far-field formula 289 m)
   in reach (outside the enclosure, shut as drawn): no light that was followed gets there: within the limit of class 1 as modelled
-  inside: within the limit of class 3B as modelled
+  inside: within the limit of class 3B as modelled; the worst: 532 nm from green
   eyewear inside, panels open, 532 nm: OD 2.6, D LB5, from green itself
-  eyewear outside the enclosure, 532 nm: limit not exceeded as modelled
+  eyewear outside, 532 nm: limit not exceeded as modelled
   scattered from S1, 532 nm: look at it from 21.9 mm or more
   controlled area … m² in plan; inside it only with the eyewear of this state
   desk (seated): outside the controlled area, … m from its edge
   path (standing): outside the controlled area, … m from its edge
-  door corridor: not reached by it
+  not reached by it: door corridor
   holds for exposures of up to 100 s in all (532 nm)
 
 hazards in alignment (IEC 60825-1:2014)
   source green, 532 nm, 0.3 mW: within the limit of class 1 as modelled; limit not exceeded as modelled
-  in reach (panel east is open): within the limit of class 1 as modelled
+  in reach (panel east is open): within the limit of class 1 as modelled; the worst: 532 nm from green
   outside the enclosure: no light that was followed gets there: within the limit of class 1 as modelled
   eyewear inside, panels open, 532 nm: limit not exceeded as modelled
-  eyewear outside the enclosure, 532 nm: limit not exceeded as modelled
+  eyewear outside, 532 nm: limit not exceeded as modelled
   controlled area … m² in plan; inside it only with the eyewear of this state
   desk (seated): outside the controlled area
   path (standing): outside the controlled area
-  door corridor: not reached by it
+  not reached by it: door corridor
   holds for exposures of up to 100 s in all (532 nm)
 
 hazards in service (IEC 60825-1:2014)
   source green, 532 nm, 0.15 W: within the limit of class 3B as modelled; 0 m to 289 m (far-field formula 289 m)
-  in reach (panel east is open): within the limit of class 3B as modelled
-  outside the enclosure: within the limit of class 3B as modelled
+  in reach (panel east is open): within the limit of class 3B as modelled; the worst: 532 nm from green
+  outside the enclosure: within the limit of class 3B as modelled; the worst: 532 nm from S1.front
   eyewear inside, panels open, 532 nm: OD 2.6, D LB5, from green itself
-  eyewear outside the enclosure, 532 nm: OD 2.6, D LB5, from S1.front, beam 1
+  eyewear outside, 532 nm: OD 2.6, D LB5, from S1.front, beam 1
   beam in reach, 532 nm from S1.front, beam 1: 0 m to 288 m (far-field formula 289 m); stopped at 2.5 m, a wall of the room
   beam in reach, 532 nm from green itself: 0 m to 289 m (far-field formula 289 m); stopped at 0.4 m, 'S1'
   scattered from wall, 532 nm: look at it from 69.1 mm or more
   controlled area … m² in plan; inside it only with the eyewear of this state
   desk (seated): outside the controlled area, … m from its edge
   path (standing): INSIDE the controlled area, … mm from its edge
-  door corridor: REACHED by it
+  door corridor: REACHED by the controlled area
   holds for exposures of up to 100 s in all (532 nm)"""
 
 

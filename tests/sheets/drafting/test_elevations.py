@@ -15,7 +15,9 @@ from benchlay.sheets.elevation.board import lay_out
 from benchlay.sheets.lettering import width_mm
 from benchlay.sheets.primitives import Across, Dimension, Text, Up, measured
 from benchlay.writers import dxf, svg
+from benchlay.zones import Zones
 
+NO_ZONES = Zones((), ())
 LAYOUTS = Path(__file__).parents[3] / "layouts"
 BENCH = """\
 bench: {size: [1200, 600], surface_height: 900}
@@ -82,7 +84,7 @@ def test_levels_and_bands_are_heights_above_the_bench(picture):
 
 def test_dimensions_measure_heights_true_to_size(picture):
     traced_bench = traced(BENCH)
-    (made,) = composed_sheets(Subject(traced_bench, None, (), ""), "elevation")
+    (made,) = composed_sheets(Subject(traced_bench, NO_ZONES, (), ""), "elevation")
     found = [measured(p) for p in made.sheet.model if isinstance(p, Dimension)]
     assert found == pytest.approx([100.0, 300.0], abs=1e-9)
     document = ezdxf.read(io.StringIO(dxf.write(made.sheet).decode("utf-8")))
@@ -130,7 +132,7 @@ def boxes(sheet):
 @pytest.mark.parametrize("name", ["hologram", "gas-cell", "stone-cleaning", "fluorescence", "bad"])
 def test_lettering_overlaps_nowhere_and_stays_in_the_frame(name):
     traced_bench = trace(place(read(LAYOUTS / f"{name}.yaml")))
-    made = composed_sheets(Subject(traced_bench, None, (), ""), "elevation")
+    made = composed_sheets(Subject(traced_bench, NO_ZONES, (), ""), "elevation")
     assert {one.sheet.name for one in made} <= {f"elevation-{r}" for r in traced_bench.ways.names}
     assert made
     for sheet, _ in made:
@@ -145,7 +147,7 @@ def test_lettering_overlaps_nowhere_and_stays_in_the_frame(name):
 
 def test_elevations_come_out_byte_by_byte_alike():
     first, again = (
-        composed_sheets(Subject(traced(BENCH), None, (), ""), "elevation") for _ in range(2)
+        composed_sheets(Subject(traced(BENCH), NO_ZONES, (), ""), "elevation") for _ in range(2)
     )
     assert first
     for one, other in zip(first, again, strict=True):
