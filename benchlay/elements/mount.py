@@ -53,8 +53,6 @@ class Mount(Record):
         ListOf(Fixed(_COORDINATE, 2), min=0),
         default=None,
         meaning="where bolts go through the foot, [along, left]",
-        not_yet="bolt slots come with the drilling sheet",
-        not_yet_is_note=True,
     )
     optic_height_mm: float | None = key(
         _LENGTH,

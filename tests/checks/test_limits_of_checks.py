@@ -319,3 +319,86 @@ def test_where_no_clearance_is_asked_for_bodies_may_touch_but_not_overlap(make_c
     (clash,) = clashes(348)
     assert clash.value == pytest.approx(-2.0)
     assert clash.message == "the body of 'B' overlaps the body of 'A' by 2 mm"
+
+
+MAKING = "elements: {T1: {kind: target, after: red, distance: 100}}\nroutes: {main: [red, T1]}\n"
+
+
+def panel(keys, material=""):
+    sheet = f"materials: {{s: {{thickness: 2{material}}}}}\n"
+    start = "enclosure:\n  material: s\n  panels:\n    south: {from: [0, 0], to: [800, 0], "
+    return HEAD + source() + MAKING + sheet + start + keys + "}\n"
+
+
+def making(make_context, text):
+    return [(f.value, f.limit) for f in found(make_context, "fit-for-making", text)]
+
+
+@pytest.mark.parametrize(("hole", "fires"), [(1.999, True), (2.0, False), (2.001, False)])
+def test_fit_for_making_at_the_thickness(make_context, hole, fires):
+    text = panel(f"fix: {{hole: {hole}, pitch: 150, inset: 10}}")
+    assert making(make_context, text) == ([(hole, 2.0)] if fires else [])
+    text = panel(f"openings: {{o: {{along: 100, height: 100, diameter: {hole}}}}}")
+    assert bool(making(make_context, text)) == fires
+
+
+@pytest.mark.parametrize(("inset", "fires"), [(8.99, True), (9.0, False), (9.01, False)])
+def test_fit_for_making_at_the_edge(make_context, inset, fires):
+    text = panel(f"fix: {{hole: 6, pitch: 150, inset: {inset}}}")
+    assert making(make_context, text) == ([(pytest.approx(inset), 9.0)] if fires else [])
+
+
+def test_fit_for_making_counts_the_edges_of_openings(make_context):
+    # The row of 6 begins at 25: its second hole, at 175, is 7 from the opening's side.
+    opening = "openings: {o: {along: 182, width: 20, from_height: 0, to_height: 40}}"
+    text = panel("fix: {hole: 6, pitch: 150, inset: 10}, " + opening)
+    assert making(make_context, text) == [(pytest.approx(7.0), 9.0)]
+
+
+@pytest.mark.parametrize(("density", "fires"), [(31240, False), (31260, True)])
+def test_fit_for_making_at_fifteen_kilograms(make_context, density, fires):
+    # 800 x 300 x 2 mm: 0.00048 m3, so 15 kg at 31250 kg/m3.
+    text = panel("access: none", f", density: {density} kg/m3")
+    (said,) = making(make_context, text) or [None]
+    assert (said is not None) == fires
+    if fires:
+        assert said == (pytest.approx(0.00048 * density), 15.0)
+
+
+@pytest.mark.parametrize(
+    ("slots", "pitch", "thread", "off"),
+    [
+        ("[[0, -12.5], [0, 12.5]]", 25.4, "1/4-20", None),  # 0.4: within the play
+        ("[[0, -25], [0, 25]]", 25.4, "1/4-20", 0.8),
+        ("[[0, -25.4], [0, 25.4]]", 25, "M6", 0.8),
+        ("[[0, -25], [0, 25]]", 25, "M6", None),
+        ("[[0, -26], [0, 26]]", 25, "M6", None),  # of neither grid: slots, or a plate
+    ],
+)
+def test_fit_for_making_between_grids(make_context, slots, pitch, thread, off):
+    text = (
+        "bench: {size: [800, 400], holes: "
+        + f"{{pitch: {pitch}, first: [25, 25], thread: {thread}}}}}\n"
+        + source()
+        + "elements:\n"
+        + f"  M1: {{kind: mirror, after: red, distance: 200, turn: left 90, diameter: 25.4, "
+        f"metal: silver, mount: {{slots: {slots}}}}}\n"
+    )
+    assert making(make_context, text) == ([] if off is None else [(pytest.approx(off), 0.6)])
+
+
+def test_fit_for_making_names_a_thread_of_the_other_grid(make_context):
+    text = "bench: {size: [800, 400], holes: {pitch: 25.4, first: [25, 25], thread: M6}}\n"
+    assert making(make_context, text + source()) == [(25.4, 25.0)]
+
+
+@pytest.mark.parametrize(("off", "fires"), [(0.499, False), (0.5, False), (0.501, True)])
+def test_fit_for_making_at_the_middle_of_a_port(make_context, off, fires):
+    text = (
+        HEAD
+        + source()
+        + "routes: {main: [red, east.port]}\n"
+        + "enclosure:\n  panels:\n    east: {from: [800, 0], to: [800, 400], "
+        + f"openings: {{port: {{along: {200 + off}, height: 100, diameter: 30}}}}}}\n"
+    )
+    assert making(make_context, text) == ([(pytest.approx(off), 0.5)] if fires else [])

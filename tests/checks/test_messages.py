@@ -133,6 +133,11 @@ SAID = {
         "a hole under the foot",
         "move 'M1' by 10.4 mm, or give it a larger foot",
     ),
+    "fit-for-making": (
+        "a hole of 6.6 mm in panel 'south' has its middle 8 mm from an edge",
+        "at least 1.5 diameters, 9.9 mm",
+        "move the row by 1.9 mm (`inset`, `pitch`), or move the opening",
+    ),
     "tight-access": (
         "'supply' stands in the way of a driver to the adjusters of 'M1' (back)",
         "a straight corridor 25 mm wide and 100 mm long",

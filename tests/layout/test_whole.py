@@ -63,7 +63,6 @@ def test_what_is_not_acted_on_yet_is_noted():
         "matched",
         "cavities",
         "tolerances",
-        "elements.M1.mount.slots",
     ]
 
 

@@ -47,6 +47,7 @@ FAULTS = {
     ("off-bench", "L1"),
     ("as-modelled", "L1"),
     ("not-yet", None),
+    ("fit-for-making", "north"),
     ("no-interlock", "west"),
     ("open-side", "south"),
     ("open-side", None),
