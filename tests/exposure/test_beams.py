@@ -140,6 +140,10 @@ def test_an_elliptical_beam_reaches_as_far_as_its_mean_angle_says():
     assert hazardous_stretch(beam, 1.0, MPE, 7.0).end_m == pytest.approx(expected, rel=2e-3)
 
 
+def test_a_thin_beam_keeps_its_radii():
+    assert from_axes(Axis(1e-3, 0.1), Axis(0.02, 0.1)).radii_mm(0.0) == pytest.approx((1e-3, 0.02))
+
+
 def test_a_waist_lies_at_the_exit_unless_it_is_said():
     assert from_axes(Axis(0.5, 1e-3)).foci_m() == (0.0, 0.0)
 

@@ -96,6 +96,7 @@ def test_diameter_factor():
     assert diameter_factor(1.0) == 1.0
     assert diameter_factor(10.0) == pytest.approx(10**1.7)
     assert diameter_factor(15.0) == pytest.approx(99.85, abs=0.01)
+    assert diameter_factor(math.nextafter(15.0, 16.0)) == diameter_factor(15.1) == 100.0
     assert diameter_factor(40.0) == 100.0
     with pytest.raises(OutOfRange):
         diameter_factor(0.0)
