@@ -6,7 +6,7 @@ not traced from the sources on, but from the hazardous legs of its own state tha
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Sequence
+from collections.abc import Iterator, Mapping, Sequence
 
 import numpy as np
 
@@ -14,12 +14,12 @@ from benchlay.checks import Context, limits_of
 from benchlay.named import NamedTuple
 from benchlay.placing.placed import Placed, PlacedState
 from benchlay.scene.compile import compile_scene
-from benchlay.scene.tables import Flags, Ints, Scene
+from benchlay.scene.tables import Flags, Ints
 from benchlay.tracing import Trace
 from benchlay.tracing.emission import emitted
 from benchlay.tracing.front import Front
 from benchlay.tracing.generations import run
-from benchlay.tracing.ways import Ways, ways_of
+from benchlay.tracing.ways import ways_of
 
 # Every variant adds rows of its own to the scene, all of which every beam of the block is held
 # against: blocks much larger than the bench has rows take longer than several smaller ones.
@@ -34,16 +34,17 @@ class Variant(NamedTuple):
     seeds: Ints | None
 
 
-def floors_of(placed: Placed) -> dict[float, float]:
+def floors_of(placed: Placed, share: float | None = None) -> dict[float, float]:
     """Return by wavelength the power under which a fault's light is not followed, W.
 
-    The layout's own share of the accessible limit, the lowest over the states. Light without
-    a limit is followed to a millionth of the weakest line.
+    A share of the accessible limit (the layout's own by default), the lowest over the states.
+    Light without a limit is followed to a millionth of the weakest line.
     """
     found: dict[float, float] = {}
     for (number, _, nm), line in limits_of(placed).items():
         if line.limit is not None:
-            floor = placed.states[number].layout.limits.floor * line.limit.accessible_w
+            of = placed.states[number].layout.limits.floor if share is None else share
+            floor = of * line.limit.accessible_w
             found[nm] = min(found.get(nm, floor), floor)
     lines = [
         line.power_w
@@ -66,13 +67,20 @@ class Tracer:
 
     def __init__(self, placed: Placed) -> None:
         self.placed = placed
-        self._floors_w = floors_of(placed)
-        self._limits = limits_of(placed)
+        self._fine_w = floors_of(placed)
+        self._coarse_w = floors_of(placed, 1.0)
         everything = np.ones(len(placed.states), dtype=np.bool_)
-        self.rest = Context(self._trace(placed, everything, None), self._limits)
+        rest = self._trace(placed, everything, None, self._fine_w)
+        self.rest = Context(rest, limits_of(placed))
 
-    def contexts(self, variants: Sequence[Variant]) -> Iterator[tuple[range, Context]]:
+    def contexts(
+        self, variants: Sequence[Variant], *, coarse: bool = False
+    ) -> Iterator[tuple[range, Context]]:
         """Trace variants block by block.
+
+        Coarsely, light is followed down to the accessible limit itself: no beam beneath it is
+        a hazard, nor can one become one, and what a body takes of a beam is left in it where it
+        is less than that. So no hazard is lost, and a power may come out too high by a limit.
 
         Every block's scene begins with the layout's own states, though nothing emits in
         them: so all blocks know the same light, and rows of what is at rest are the same.
@@ -92,7 +100,8 @@ class Tracer:
             whole = np.zeros(len(states), dtype=np.bool_)
             whole[len(own) :] = [variants[i].seeds is None for i in which]
             seeds = [(len(own) + i - first, variants[i].seeds) for i in which]
-            trace = self._trace(block, whole, self._seeded(seeds))
+            floors_w = self._coarse_w if coarse else self._fine_w
+            trace = self._trace(block, whole, self._seeded(seeds), floors_w)
             yield which, Context(trace, limits_of(block))
 
     def _seeded(self, seeds: Sequence[tuple[int, Ints | None]]) -> Front | None:
@@ -104,7 +113,13 @@ class Tracer:
         variant = np.concatenate([np.full(len(rows), number) for number, rows in known])
         return self.rest.trace.beams.start.take(rows).changed(variant=variant, parent=_SEED - rows)
 
-    def _trace(self, placed: Placed, whole: Flags, seeds: Front | None) -> Trace:
+    def _trace(
+        self,
+        placed: Placed,
+        whole: Flags,
+        seeds: Front | None,
+        floors_w: Mapping[float, float],
+    ) -> Trace:
         scene = compile_scene(placed)
         ways = ways_of(placed, scene)
         parts = [] if seeds is None else [seeds]
@@ -112,10 +127,7 @@ class Tracer:
             sent = emitted(placed, scene, ways)
             parts.append(sent.take(whole[sent.variant]))
         front = Front.joined(parts) if parts else Front.made(0)
-        return self._followed(placed, scene, ways, front)
-
-    def _followed(self, placed: Placed, scene: Scene, ways: Ways, front: Front) -> Trace:
-        floors = np.array([self._floors_w[nm] for nm in scene.wavelengths_nm.tolist()])
+        floors = np.array([floors_w[nm] for nm in scene.wavelengths_nm.tolist()])
         traced = run(front, scene, ways, floors, placed)
         return Trace(placed, scene, ways, traced.beams, traced.ledger, floors, traced.bounded)
 

@@ -2,15 +2,15 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Sequence
+from collections.abc import Callable, Iterator, Mapping, Sequence
 from itertools import groupby
 
 from benchlay.faults.batches import Tracer, whole_benches
 from benchlay.faults.between import CLOSEST_MM
 from benchlay.faults.families import KINDS, Family, families
 from benchlay.faults.nearby import Nearby
-from benchlay.faults.sweeps import CLOSE_RAD, Case, Progress, Swept, run
-from benchlay.faults.verdicts import Judge, Light
+from benchlay.faults.sweeps import CLOSE_RAD, Case, Progress, Swept, finely, run
+from benchlay.faults.verdicts import Judge, Light, Verdict
 from benchlay.named import NamedTuple
 from benchlay.placing.placed import Placed
 from benchlay.scene.tables import Ints
@@ -107,7 +107,7 @@ def review_faults(
         else:
             untouched.append(family)
     swept = run(tracer, live, bases, progress)
-    found = [*map(_fault, swept), *map(_untouched, untouched)]
+    found = [*_judged(tracer, swept, bases), *map(_untouched, untouched)]
     return Review(
         tuple(sorted(found, key=_gravity)),
         sum(len(one.cases) for one in swept),
@@ -141,23 +141,49 @@ def _general(family: Family) -> str:
     return family.name(0.0 if family.sweep is None else family.sweep.high_rad)
 
 
-def _fault(swept: Swept) -> Fault:
+def _judged(
+    tracer: Tracer, swept: Sequence[Swept], bases: Mapping[int, Verdict]
+) -> Iterator[Fault]:
+    """Yield the faults, the worst setting of each traced again as finely as it may matter."""
+    outcomes = [_outcome(one.cases) for one in swept]
+    worst = [_worst_case(one.cases, how) for one, how in zip(swept, outcomes, strict=True)]
+    picked = [i for i, case in enumerate(worst) if case is not None]
+    settings = [(swept[i].family, swept[i].seeds, _setting(worst[i])) for i in picked]
+    finer = dict(zip(picked, finely(tracer, settings, bases), strict=True))
+    for number, one in enumerate(swept):
+        case, fine = worst[number], finer.get(number)
+        cases = one.cases
+        if case is not None and fine is not None and fine.outcome == outcomes[number]:
+            better = case._replace(verdict=fine)
+            cases = tuple(better if known is case else known for known in cases)
+        elif one.family.sweep is None and fine is not None:
+            cases = tuple(known._replace(verdict=fine) for known in cases)
+        yield _fault(one._replace(cases=cases), _setting(case))
+
+
+def _setting(case: Case | None) -> float:
+    return 0.0 if case is None else case.setting_rad
+
+
+def _outcome(cases: Sequence[Case]) -> str:
+    return min((case.verdict.outcome for case in cases), key=OUTCOMES.index)
+
+
+def _fault(swept: Swept, setting: float) -> Fault:
     family, cases = swept.family, swept.cases
-    outcome = min((case.verdict.outcome for case in cases), key=OUTCOMES.index)
+    outcome = _outcome(cases)
     reasons = tuple(dict.fromkeys(r for case in cases for r in case.verdict.reasons))
-    worst = _worst_case(cases, outcome)
-    light = None if worst is None else worst.verdict.worst()
-    setting = 0.0 if worst is None else worst.setting_rad
+    case = next((c for c in cases if c.setting_rad == setting), None)
+    light = None if case is None or outcome == "none" else case.verdict.worst()
     ranges: tuple[Range, ...] = ()
     about = None
     if family.sweep is not None and light is not None:
         ranges = _ranges(cases, lambda case: case.verdict.outcome == outcome)
         own = _ranges(cases, lambda case: light.through in _ways(case))
         about = next(r for r in own if r.low_rad <= setting <= r.high_rad)
-    name = _general(family) if worst is None else family.name(setting)
     return Fault(
         family,
-        name,
+        _general(family) if light is None else family.name(setting),
         outcome,
         light,
         _lights(cases, outcome),

@@ -44,6 +44,7 @@ class Swept(NamedTuple):
     """
 
     family: Family
+    seeds: Ints | None
     cases: tuple[Case, ...]
     open_rad: float
     step_mm: float
@@ -89,7 +90,9 @@ class _Growing:
         wide = [
             b.setting_rad - a.setting_rad for a, b in pairwise(self.cases) if _ways(a) != _ways(b)
         ]
-        return Swept(self.family, tuple(self.cases), max(wide, default=0.0), self.step_mm)
+        return Swept(
+            self.family, self.seeds, tuple(self.cases), max(wide, default=0.0), self.step_mm
+        )
 
 
 def _ways(case: Case) -> frozenset[object]:
@@ -102,7 +105,7 @@ def run(
     bases: Mapping[int, Verdict],
     progress: Progress,
 ) -> list[Swept]:
-    """Trace all settings of faults.
+    """Trace all settings of faults, coarsely.
 
     Parameters
     ----------
@@ -126,7 +129,7 @@ def run(
         if not wanted:
             break
         variants = [Variant(one.family.made(setting), one.seeds) for one, setting in wanted]
-        for which, context in tracer.contexts(variants):
+        for which, context in tracer.contexts(variants, coarse=True):
             legs = legs_of(context, labels, range(own, own + len(which)), at_rest)
             for number, some in zip(which, legs, strict=True):
                 one, setting = wanted[number]
@@ -136,6 +139,22 @@ def run(
             progress(done, done + len(wanted) - which.stop)
         wanted = _next(growing, looker)
     return [one.done() for one in growing]
+
+
+def finely(
+    tracer: Tracer,
+    settings: Sequence[tuple[Family, Ints | None, float]],
+    bases: Mapping[int, Verdict],
+) -> list[Verdict]:
+    """Return what becomes of single settings, with light followed as far down as it may matter."""
+    judge, own = Judge(), len(tracer.placed.states)
+    variants = [Variant(family.made(setting), seeds) for family, seeds, setting in settings]
+    found = []
+    for which, context in tracer.contexts(variants):
+        for number in which:
+            verdict = judge.verdict(context, own + number - which.start)
+            found.append(verdict.beside(bases[settings[number][0].state]))
+    return found
 
 
 def _next(growing: Sequence[_Growing], looker: Looker) -> list[tuple[_Growing, float]]:

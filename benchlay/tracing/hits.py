@@ -78,8 +78,10 @@ def inside_hits(front: Front, scene: Scene) -> Hits:
     left = along * onward[..., 1] - start[..., 1]
     up = along * onward[..., 2] - start[..., 2]
     valid = leaving & (rows >= 0) & (rows != front.face[:, None]) & (distance > -_TOUCH_MM)
-    # A spilled lump runs on the chief ray's line wherever that is: no outline holds it.
-    valid &= in_outline(left, up, f.radii.take(rows, 0), f.round.take(rows)) | front.lump[:, None]
+    held = in_outline(left, up, f.radii.take(rows, 0), f.round.take(rows))
+    if front.lump.any():
+        held |= front.lump[:, None] & _may_come_out(front, scene, rows, np.hypot(left, up))
+    valid &= held
     lens = fixed.lens.take(rows)
     if np.count_nonzero(lens):
         # Between the faces of an ideal lens, which stand in one place, light beyond the
@@ -94,6 +96,23 @@ def inside_hits(front: Front, scene: Scene) -> Hits:
         np.array((np.where(met, FACE, NOTHING), rows[at], np.full(len(best), -1))),
         np.array((np.where(met, distance[at], 0.0), slope[at], left[at], up[at])),
     )
+
+
+def _may_come_out(front: Front, scene: Scene, rows: Ints, off: Floats) -> Flags:
+    """Tell by which of its optic's faces (B, K) a spilled lump may leave it.
+
+    A lump runs on the chief ray's line, which no outline holds: its light entered beside that
+    line, by no more than the line's own distance and the outline's size, and it leaves beside
+    it by no more than that. Where the line leaves farther away (a tube met aslant, kilometres
+    off) the light ended on the barrel.
+    """
+    f = scene.faces
+    entered = np.maximum(front.face, 0)
+    away = front.position - f.origin[entered]
+    beside = np.sqrt(dot(away, away)) + np.hypot(f.radii[entered, 0], f.radii[entered, 1])
+    room = np.hypot(*np.moveaxis(f.radii.take(rows, 0), -1, 0))
+    may: Flags = off <= beside[:, None] + room
+    return may
 
 
 def in_outline(left: Floats, up: Floats, radii: Floats, is_round: Flags) -> Flags:
