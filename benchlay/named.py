@@ -2,8 +2,9 @@
 
 A plain check loads about a hundred and fifty such classes and makes instances of half of them.
 The one of the standard library compiles a constructor and a forward reference a field for each,
-which was a twelfth of a cold start. Here the constructor is compiled when the first instance is
-made. For the type checker, and in all that it does, it is `typing.NamedTuple`.
+which was a twelfth of a cold start. Here a constructor is made with the first instance, and classes
+with as many fields share its code. For the type checker, and in all that it does, it is
+`typing.NamedTuple`.
 """
 
 from __future__ import annotations
@@ -14,6 +15,7 @@ if TYPE_CHECKING:
     from typing import NamedTuple as NamedTuple
 else:
     from collections import _tuplegetter as _getter
+    from types import FunctionType
 
     class _Definition(type):
         """Turns the annotations of a class body into fields."""
@@ -30,20 +32,29 @@ else:
             body.setdefault("__slots__", ())
             return super().__new__(cls, name, bases, body)
 
+    _SPACE = {"_new": tuple.__new__, "__builtins__": {}}
+    _compiled = {}  # a constructor by the number of fields
+
+    def _constructor(owner):
+        """Return a constructor: one compiled for so many fields, with the names of these."""
+        count = len(owner._fields)
+        if count not in _compiled:
+            names = "".join(f"_{place}, " for place in range(count))
+            _compiled[count] = eval(f"lambda _cls, {names}: _new(_cls, ({names}))", _SPACE).__code__
+        code = _compiled[count].replace(co_name="__new__", co_varnames=("_cls", *owner._fields))
+        made = FunctionType(code, _SPACE, "__new__", tuple(owner._field_defaults.values()))
+        made.__qualname__ = f"{owner.__qualname__}.__new__"
+        return made
+
     class NamedTuple(tuple, metaclass=_Definition):
         """Base of a class whose annotated names are the fields of a tuple."""
 
         __slots__ = ()
 
         def __new__(cls, *values, **named):
-            """Compile the constructor of the class that defines the fields, and call it."""
+            """Give the class that defines the fields its constructor, and call it."""
             owner = next(one for one in cls.__mro__ if "_fields" in one.__dict__)
-            names = ", ".join(owner._fields)
-            source = f"lambda _cls, {names}: _new(_cls, ({names}{',' if names else ''}))"
-            space = {"_new": tuple.__new__, "__builtins__": {}}
-            made = eval(source, space)
-            made.__defaults__ = tuple(owner._field_defaults.values())
-            made.__name__, made.__qualname__ = "__new__", f"{owner.__qualname__}.__new__"
+            made = _constructor(owner)
             owner.__new__ = staticmethod(made)
             return made(cls, *values, **named)
 
