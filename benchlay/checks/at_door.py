@@ -1,4 +1,4 @@
-"""A beam above the accessible limit reaches a door or a window of the room.
+"""Light above the exposure limit reaches a door or a window of the room.
 
 Why it matters
 --------------
@@ -34,27 +34,36 @@ Passes
 
 What it does not see
 --------------------
-Diffuse light, and what walls send back. Panes and curtains of windows do not count: a window
-is taken to be open.
+Light that is scattered twice. Panes and curtains of windows do not count: a window is taken to
+be open. Doors end zones like walls: how far light goes on beyond one that opens is not computed.
 
 Source
 ------
 Beams are kept off doors and windows (common practice of laser safety manuals). The accessible
-limit is that of IEC 60825-1:2014 for the layout's time base.
+limit is that of IEC 60825-1:2014 for the layout's time base. Of scattered light every point of
+a door or window is looked at, 20 mm apart, over its whole height.
 """
 
 from __future__ import annotations
 
 from collections.abc import Iterator
-from math import hypot
+from math import ceil, hypot
+from typing import TYPE_CHECKING
+
+import numpy as np
 
 from benchlay.checks._check import (
     Context,
     Found,
     Unevaluated,
     above,
+    against,
+    exposure_words,
+    length_text,
+    place_words,
     power_text,
     unjudged,
+    wavelength_text,
 )
 from benchlay.findings import Finding, Severity
 from benchlay.geometry.polygon import Point
@@ -64,11 +73,16 @@ from benchlay.optics import moments
 from benchlay.scene.tables import SINKS
 from benchlay.tracing.beams import SOLID
 
+if TYPE_CHECKING:
+    from benchlay.checks._check.scattered import Met
+
 NAME = "at-door"
 
 # A beam that can hurt an eye is where people come and go.
 SEVERITY = Severity.FAIL
 
+_STEP_MM = 20.0  # between the points of a door that are looked at: less than an eye is wide
+_BEFORE_WALL_MM = 2.0
 _IN_WALL_MM = 1.0  # doors lie in the wall's line: rounding and decimals stay far below
 
 
@@ -102,6 +116,7 @@ def check(context: Context, variant: int) -> Iterator[Found]:
                 power = float(context.accessible_w[beam])
                 if above(power, float(context.limit_w[beam])):
                     yield _finding(context, variant, beam, way, power)
+    yield from _scattered(context, variant, ways)
 
 
 def _ways(layout: Layout) -> Iterator[_Way]:
@@ -150,8 +165,7 @@ def _off_wall(wall: tuple[Point, Point], way: _Way) -> float:
 def _reaches(context: Context, beam: int, way: _Way, floor_mm: float) -> bool:
     """Whether the envelope of a beam overlaps a door or window where it meets the wall."""
     x, y, z = context.end_at(beam)
-    m = context.trace.beams.end_moments[:, beam]
-    width = float(max(moments.radii(m)[0], moments.radii(m)[1]))
+    width = _half_width_mm(context, beam)
     (ax, ay), (bx, by) = way.start, way.end
     length = hypot(bx - ax, by - ay)
     along = ((x - ax) * (bx - ax) + (y - ay) * (by - ay)) / length
@@ -161,6 +175,74 @@ def _reaches(context: Context, beam: int, way: _Way, floor_mm: float) -> bool:
     return off <= _IN_WALL_MM and beside and way.low_mm - width <= height <= way.high_mm + width
 
 
+def _half_width_mm(context: Context, beam: int) -> float:
+    """Return how far from the axis an eye could still meet too much where a beam ends, mm."""
+    from benchlay.zones.limits import limits_of
+    from benchlay.zones.swept import half_widths
+
+    length = np.array([float(context.trace.beams.length[beam])])
+    m = context.trace.beams.end_moments[:, beam]
+    radius = float(max(moments.radii(m)[0], moments.radii(m)[1]))
+    return max(radius, float(half_widths(context.trace, limits_of(context.trace), beam, length)[0]))
+
+
+def _scattered(context: Context, variant: int, ways: list[_Way]) -> Iterator[Finding]:
+    """Report by door or window and wavelength the lit surface that is seen from too near."""
+    from benchlay.checks._check.scattered import lit, met_at
+
+    floor = context.layout(variant).bench.surface_height_mm
+    places = lit(context, variant)
+    for way in ways:
+        heights = way.low_mm - floor, way.high_mm - floor
+        worst: dict[float, Met] = {}
+        for one in places:
+            # The wall itself begins at the point: looked at is what is just before it.
+            for point in _points(way, (one.spot.at[0], one.spot.at[1])):
+                for met in met_at((one,), point, heights):
+                    if met.nm not in worst or met.ratio > worst[met.nm].ratio:
+                        worst[met.nm] = met
+        for nm, met in sorted(worst.items()):
+            yield _lit_from(context, variant, way, met, nm)
+
+
+def _points(way: _Way, towards: Point) -> Iterator[Point]:
+    """Yield points along a door or window, a little nearer to some place than the wall."""
+    (ax, ay), (bx, by) = way.start, way.end
+    steps = max(2, ceil(hypot(bx - ax, by - ay) / _STEP_MM))
+    for i in range(steps + 1):
+        x, y = ax + (bx - ax) * i / steps, ay + (by - ay) * i / steps
+        far = hypot(x - towards[0], y - towards[1])
+        if far > _BEFORE_WALL_MM:
+            share = _BEFORE_WALL_MM / far
+            yield x + share * (towards[0] - x), y + share * (towards[1] - y)
+
+
+def _lit_from(context: Context, variant: int, way: _Way, met: Met, nm: float) -> Finding:
+    spot = met.spot
+    return Finding(
+        check=NAME,
+        severity=SEVERITY,
+        message=(
+            f"{wavelength_text(nm)} from '{context.source_of(spot.beam)}' scattered by "
+            f"{place_words(spot.sink, spot.name)} reaches {way.what} '{way.name}', "
+            f"{length_text(met.far_mm)} away: {against(met.limit, met.irradiance_w_m2)}; how far "
+            "it goes on beyond is not computed"
+        ),
+        expected=(
+            f"at least {length_text(spot.radius_mm)} to what is lit, or something opaque between"
+        ),
+        remedy=f"screen what is lit from {way.what} '{way.name}', or end the beam on a dump",
+        element=spot.name,
+        beam=int(context.numbers[spot.beam]),
+        at=spot.at,
+        span=context.span_of(spot.name, variant),
+        value=met.irradiance_w_m2,
+        limit=met.limit.mpe_w_m2,
+        unit="W/m2",
+        key=(way.name, context.source_of(spot.beam), nm, spot.sink, spot.name),
+    )
+
+
 def _finding(context: Context, variant: int, beam: int, way: _Way, power: float) -> Finding:
     name = context.left_name(beam)
     limit = float(context.limit_w[beam])
@@ -168,7 +250,9 @@ def _finding(context: Context, variant: int, beam: int, way: _Way, power: float)
         check=NAME,
         severity=SEVERITY,
         message=(
-            f"{power_text(power)} of {context.from_words(beam)} reaches {way.what} '{way.name}'"
+            f"{power_text(power)} of {context.from_words(beam)} reaches {way.what} "
+            f"'{way.name}': {exposure_words(context, beam, power)}; how far it goes on beyond "
+            "is not computed"
         ),
         expected=f"at most {power_text(limit)} at doors and windows",
         remedy=f"end the beam on a dump or screen before it reaches {way.what} '{way.name}'",

@@ -74,6 +74,7 @@ from benchlay.checks._check import (
     Found,
     above,
     exits_of,
+    exposure_words,
     length_text,
     place_of,
     power_text,
@@ -141,7 +142,7 @@ def _finding(
         severity=SEVERITY,
         message=(
             f"{power_text(power)} of {context.from_words(beam)} {how} at a height of "
-            f"{length_text(at[2])}"
+            f"{length_text(at[2])}: {exposure_words(context, beam, power)}"
         ),
         expected=f"at most {power_text(limit)} beyond {_limits_of_bench(line)}",
         remedy=remedy,

@@ -57,7 +57,14 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from benchlay.checks._check import Context, Found, power_text, unjudged, wavelength_text
+from benchlay.checks._check import (
+    Context,
+    Found,
+    exposure_words,
+    power_text,
+    unjudged,
+    wavelength_text,
+)
 from benchlay.document.span import Span
 from benchlay.findings import Finding, Severity
 from benchlay.layout.layout import Layout
@@ -133,7 +140,7 @@ def _finding(context: Context, beam: int, sheet: _Sheet) -> Finding:
         message=(
             f"{sheet.what} '{name}' {state} and has no interlock; inside runs "
             f"{power_text(power)} of {wavelength_text(context.wavelength_nm(beam))} from "
-            f"'{context.source_of(beam)}'"
+            f"'{context.source_of(beam)}': {exposure_words(context, beam, power)}"
         ),
         expected=f"an interlock, or at most {power_text(limit)} inside",
         remedy=f"give '{name}' an interlock (`access: interlocked`), or fix it for good",

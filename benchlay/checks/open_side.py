@@ -71,6 +71,7 @@ from typing import TYPE_CHECKING
 from benchlay.checks._check import (
     Context,
     Found,
+    exposure_words,
     length_text,
     power_text,
     unjudged,
@@ -122,7 +123,8 @@ def _finding(
         message=(
             f"{said(gap)}; {power_text(place.power_w)} of "
             f"{wavelength_text(context.wavelength_nm(place.beam))} from "
-            f"'{context.source_of(place.beam)}' could be sent there from '{place.name}'"
+            f"'{context.source_of(place.beam)}' could be sent there from '{place.name}': "
+            f"{exposure_words(context, place.beam, place.power_w)}"
         ),
         expected=f"no gap wider than {length_text(LEAST_MM)} round hazardous light",
         remedy=closing(gap, enclosed),

@@ -76,7 +76,14 @@ from __future__ import annotations
 from collections.abc import Iterator
 from typing import TYPE_CHECKING
 
-from benchlay.checks._check import Context, Found, power_text, unjudged, wavelength_text
+from benchlay.checks._check import (
+    Context,
+    Found,
+    exposure_words,
+    power_text,
+    unjudged,
+    wavelength_text,
+)
 from benchlay.findings import Finding, Severity
 
 if TYPE_CHECKING:
@@ -134,7 +141,8 @@ def _finding(
             f"one flat mirror between '{context.left_name(one.beam)}' and "
             f"{context.end_words(one.beam)} could throw {power_text(one.power_w)} of "
             f"{wavelength_text(context.wavelength_nm(one.beam))} from "
-            f"'{context.source_of(one.beam)}' out through {named(gap)}"
+            f"'{context.source_of(one.beam)}' out through {named(gap)}: "
+            f"{exposure_words(context, one.beam, one.power_w)}"
         ),
         expected=(
             f"no line of sight from a beam above {power_text(limit)} (class 3B or 4) to a gap, "

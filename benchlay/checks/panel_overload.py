@@ -58,6 +58,7 @@ from benchlay.checks._check import (
     Context,
     Found,
     above,
+    exposure_words,
     irradiance_text,
     power_text,
     unjudged,
@@ -182,7 +183,8 @@ def _not_shown(context: Context, variant: int, name: str, rows: Ints) -> Finding
         message=(
             f"not shown: '{name}' takes {irradiance_text(worst)} of "
             f"{wavelength_text(context.wavelength_nm(beam))} from '{context.source_of(beam)}' "
-            "and states no rating for it"
+            "and states no rating for it; an eye would meet "
+            f"{exposure_words(context, beam, float(context.accessible_w[beam]))}"
         ),
         expected="a rating of whatever takes a beam above the accessible limit",
         remedy=(

@@ -72,6 +72,7 @@ import numpy as np
 from benchlay.checks._check import (
     Context,
     Found,
+    exposure_words,
     length_text,
     power_text,
     rounded_up,
@@ -141,7 +142,8 @@ def _finding(
         message=(
             f"a probe of {length_text(DIAMETER_MM)} diameter reaches {power_text(one.power_w)} of "
             f"{wavelength_text(context.wavelength_nm(beam))} from '{context.source_of(beam)}', "
-            f"{length_text(needed_mm)} inside {named(gap)}"
+            f"{length_text(needed_mm)} inside {named(gap)}: "
+            f"{exposure_words(context, beam, one.power_w)}"
         ),
         expected=(
             f"no hazardous beam within {length_text(LENGTH_MM)} of a gap that admits "

@@ -61,6 +61,7 @@ from benchlay.checks._check import (
     Found,
     above,
     event_words,
+    exposure_words,
     place_words,
     power_text,
     unjudged,
@@ -175,12 +176,14 @@ def _finding(
     limit = float(context.limit_w[worst.beam])
     name = scene.names[group.name] if group.name >= 0 else None
     where = _where(context, group, worst.beam, name)
+    most = f", {power_text(worst.power_w)} of it in one beam" if len(landings) > 1 else ""
     return Finding(
         check=NAME,
         severity=SEVERITY,
         message=(
             f"{power_text(total)} of stray {wavelength_text(nm)} light from '{source}', "
-            f"{_left(context, worst.since)}, {where}"
+            f"{_left(context, worst.since)}, {where}{most}: "
+            f"{exposure_words(context, worst.beam, worst.power_w)}"
         ),
         expected=(
             f"at most {power_text(limit)} that ends elsewhere than on a dump, screen, closed "

@@ -83,8 +83,8 @@ def test_a_filter_met_squarely_sends_its_ghost_into_no_dump_of_ours(make_context
         "routes: {main: [red, A, F, T]}\n"
     )
     (finding,) = found(make_context, body, "stray-unstopped", "50 mW")
-    assert finding.message == (
-        "2.1 mW of stray 633 nm light from 'red', reflected by 'F.front', ends on the rim of 'A'"
+    assert finding.message.startswith(
+        "2.1 mW of stray 633 nm light from 'red', reflected by 'F.front', ends on the rim of 'A': "
     )
     assert finding.remedy == (
         "give the front of 'F' a coating that reflects less at 633 nm, or turn 'F' so that the "

@@ -46,7 +46,8 @@ SAID = {
     "stray-unstopped": (
         (
             "2.62 mW of stray 633 nm light from 'red', reflected by 'W1.front', leaves the "
-            "bench and meets nothing"
+            "bench and meets nothing: 68 W/m2 over 7 mm, 6.8 times the limit of 10 W/m2 for "
+            "100 s (IEC 60825-1:2014, table A.1; thermal)"
         ),
         (
             "at most 385 µW that ends elsewhere than on a dump, screen, closed shutter, "
@@ -57,39 +58,47 @@ SAID = {
     "escape": (
         (
             "4.94 mW of 633 nm from 'red', last at 'M1', passes over panel 'north' at a "
-            "height of 202.95 mm"
+            "height of 202.95 mm: 128 W/m2 over 7 mm, 12.8 times the limit of 10 W/m2 for 100"
+            " s (IEC 60825-1:2014, table A.1; thermal)"
         ),
         "at most 385 µW beyond the enclosure",
         "end it on a dump or screen before, or raise 'north' to 205 mm",
     ),
     "open-side": (
         (
-            "the south/east corner is open, 12 mm wide; 5 mW of 633 nm from 'red' could be sent"
-            " there from 'T1'"
+            "the south/east corner is open, 12 mm wide; 5 mW of 633 nm from 'red' could be "
+            "sent there from 'T1': 130 W/m2 over 7 mm, 13 times the limit of 10 W/m2 for 100 "
+            "s (IEC 60825-1:2014, table A.1; thermal)"
         ),
         "no gap wider than 0.1 mm round hazardous light",
         "close it with a panel from [788, 0] to [800, 0], or let 'south' and 'east' meet",
     ),
     "opening-mirror": (
         (
-            "one flat mirror between 'red' and 'T1' could throw 50 mW of 633 nm from 'red' out "
-            "through 'north.slot'"
+            "one flat mirror between 'red' and 'T1' could throw 50 mW of 633 nm from 'red' "
+            "out through 'north.slot': 1.3 kW/m2 over 7 mm, 130 times the limit of 10 W/m2 "
+            "for 100 s (IEC 60825-1:2014, table A.1; thermal)"
         ),
         (
-            "no line of sight from a beam above 5 mW (class 3B or 4) to a gap, but where a tube"
-            " holds it"
+            "no line of sight from a beam above 5 mW (class 3B or 4) to a gap, but where a "
+            "tube holds it"
         ),
         (
-            "close 'north.slot', put the beam in tubes, or cover 'north.slot' on the inside by "
-            "a labyrinth: a sheet 10 mm from 'north' that overlaps it by 11 mm on every side"
+            "close 'north.slot', put the beam in tubes, or cover 'north.slot' on the inside "
+            "by a labyrinth: a sheet 10 mm from 'north' that overlaps it by 11 mm on every "
+            "side"
         ),
     ),
     "probe-access": (
-        "a probe of 12 mm diameter reaches 5 mW of 633 nm from 'red', 52 mm inside 'north.slot'",
+        (
+            "a probe of 12 mm diameter reaches 5 mW of 633 nm from 'red', 52 mm inside "
+            "'north.slot': 130 W/m2 over 7 mm, 13 times the limit of 10 W/m2 for 100 s (IEC "
+            "60825-1:2014, table A.1; thermal)"
+        ),
         "no hazardous beam within 80 mm of a gap that admits 12 mm",
         (
-            "make 'north.slot' narrower than 12 mm, lengthen its passage to 30.1 mm (`depth`), "
-            "or put the beam in a tube"
+            "make 'north.slot' narrower than 12 mm, lengthen its passage to 30.1 mm "
+            "(`depth`), or put the beam in a tube"
         ),
     ),
     "panel-overload": (
@@ -105,7 +114,8 @@ SAID = {
     "no-interlock": (
         (
             "panel 'south' can be opened with a tool and has no interlock; inside runs 5 mW "
-            "of 633 nm from 'red'"
+            "of 633 nm from 'red': 130 W/m2 over 7 mm, 13 times the limit of 10 W/m2 for 100 "
+            "s (IEC 60825-1:2014, table A.1; thermal)"
         ),
         "an interlock, or at most 385 µW inside",
         "give 'south' an interlock (`access: interlocked`), or fix it for good",
@@ -181,13 +191,18 @@ SAID = {
     "eye-level": (
         (
             "5 mW of 633 nm from 'red' itself runs 1.38 m above the floor, where 'operator' "
-            "(standing) has their eyes"
+            "(standing) has their eyes: 130 W/m2 over 7 mm, 13 times the limit of 10 W/m2 for"
+            " 100 s (IEC 60825-1:2014, table A.1; thermal)"
         ),
         ("nothing above the accessible limit between 1.37 m and 1.98 m outside a closed enclosure"),
         "lower or raise the beam, or enclose it",
     ),
     "at-door": (
-        "4.94 mW of 633 nm from 'red', last at 'M1', reaches door 'corridor'",
+        (
+            "4.94 mW of 633 nm from 'red', last at 'M1', reaches door 'corridor': 128 W/m2 "
+            "over 7 mm, 12.8 times the limit of 10 W/m2 for 100 s (IEC 60825-1:2014, table "
+            "A.1; thermal); how far it goes on beyond is not computed"
+        ),
         "at most 385 µW at doors and windows",
         "end the beam on a dump or screen before it reaches door 'corridor'",
     ),

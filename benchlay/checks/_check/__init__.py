@@ -12,6 +12,7 @@ from benchlay.checks._check.bodies import (
 )
 from benchlay.checks._check.context import Context
 from benchlay.checks._check.exits import Exit, WayOut, exits_of, place_of, way_out
+from benchlay.checks._check.exposed import against, exposure_words
 from benchlay.checks._check.limits import LineLimit, floors_w, limits_of
 from benchlay.checks._check.meetings import Loss, Mark
 from benchlay.checks._check.openings import Room, room_at
@@ -50,10 +51,12 @@ __all__ = [
     "WayOut",
     "above",
     "accessible_w",
+    "against",
     "angle_text",
     "distance_mm",
     "event_words",
     "exits_of",
+    "exposure_words",
     "floors_w",
     "irradiance_text",
     "length_text",

@@ -13,7 +13,7 @@ _DIGITS = 3
 _NO_LENGTH_MM = 1e-6  # a nanometre on a bench is rounding
 
 
-def _prefixed(value: float, unit: str) -> str:
+def prefixed(value: float, unit: str) -> str:
     """Write a value to three figures with the prefix that leaves 1 to 999 before the unit."""
     size = abs(float(f"{value:.{_DIGITS}g}"))
     for factor, prefix in _PREFIXES:
@@ -28,7 +28,7 @@ def power_text(power_w: float) -> str:
     >>> power_text(0.0061), power_text(0.000385), power_text(0.99996)
     ('6.1 mW', '385 µW', '1 W')
     """
-    return _prefixed(power_w, "W")
+    return prefixed(power_w, "W")
 
 
 def irradiance_text(irradiance_w_m2: float) -> str:
@@ -37,7 +37,7 @@ def irradiance_text(irradiance_w_m2: float) -> str:
     >>> irradiance_text(200_000.0)
     '20 W/cm2'
     """
-    return _prefixed(irradiance_w_m2 * 1e-4, "W/cm2")
+    return prefixed(irradiance_w_m2 * 1e-4, "W/cm2")
 
 
 def length_text(length_mm: float) -> str:
