@@ -80,9 +80,9 @@ from benchlay.checks._check import (
 from benchlay.findings import Finding, Severity
 
 if TYPE_CHECKING:
-    from benchlay.checks._check.gaps import Astray
     from benchlay.coverage.enclosed import Enclosed
     from benchlay.coverage.gaps import Gap
+    from benchlay.coverage.places import Astray
 
 NAME = "open-side"
 

@@ -106,10 +106,9 @@ def check(context: Context, variant: int) -> Iterator[Found]:
         return
     yield from unjudged(context, variant)
     # Loaded where there is a gap: a tight enclosure needs none of it.
-    from benchlay.checks._check.inside import strong
     from benchlay.coverage.mirrors import guilty
 
-    legs = strong(context, variant, enclosed)
+    legs = context.gaps.strong(variant)
     if not legs:
         return
     among = context.gaps.among_bodies(variant)

@@ -15,6 +15,7 @@ from benchlay.coverage.enclosed import Enclosed, from_line, windows_of
 from benchlay.coverage.planar import Convex, Pair, cut, least_width, middle
 from benchlay.layout.enclosure import Panel
 from benchlay.named import NamedTuple
+from benchlay.zones.enclosure_line import inside
 
 # Sheets are cut and fixed to no better than this (common practice); what is drawn nearer than
 # that is meant to meet.
@@ -215,8 +216,10 @@ def _inwards(enclosed: Enclosed, number: int) -> _Inwards:
     side = enclosed.line.sides[number]
     (ax, ay), length = side.start, dist(side.start, side.end)
     cx, cy = (side.end[0] - ax) / length, (side.end[1] - ay) / length
-    panel = enclosed.enclosure.panels[side.panel or ""]
-    way = (-panel.outward[0], -panel.outward[1])
+    x, y = _half_way(enclosed, number)
+    # A panel may have been drawn the wrong way round: what counts is where the inside is.
+    sign = 1.0 if inside(enclosed.line, (x - LEAST_MM * cy, y + LEAST_MM * cx)) else -1.0
+    way = (-sign * cy, sign * cx)
     # Along the side, the way to the first lid is straight from corner to corner of the open area.
     stops = {0.0, length}
     for piece in enclosed.roofless:

@@ -16,6 +16,15 @@ class Standpoint(NamedTuple):
     at: Place
 
 
+class Astray(NamedTuple):
+    """A place with the strongest hazardous beam that arrives there, or starts."""
+
+    name: str
+    at: Place
+    beam: int
+    power_w: float
+
+
 def standpoints(state: PlacedState) -> list[Standpoint]:
     """Return the places of a state by name.
 

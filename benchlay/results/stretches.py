@@ -33,15 +33,12 @@ def _with_stretch(finding: Reported, stretches: tuple[Stretch, ...]) -> Reported
 
 def _stretches(context: Context, finding: Reported) -> Iterator[Stretch]:
     # Loaded for a finding of this check only.
-    from benchlay.checks._check.inside import strong
     from benchlay.coverage.mirrors import stretches
 
     variant = context.trace.scene.variants.index(finding.worst_state)
-    enclosed, gaps = context.gaps.of(variant)
-    if enclosed is None:
-        return
+    _, gaps = context.gaps.of(variant)
     among = context.gaps.among_bodies(variant)
-    legs = sorted(strong(context, variant, enclosed), key=lambda one: one.beam)
+    legs = sorted(context.gaps.strong(variant), key=lambda one: one.beam)
     for gap in gaps:
         for one in legs if is_about(finding.id, opening_mirror.NAME, gap) else ():
             for start, end in stretches(among, gap, one.leg):

@@ -82,6 +82,15 @@ class LidOutline(NamedTuple):
     access: str = "none"
 
 
+class GapMark(NamedTuple):
+    """A gap of the enclosure, in plan; `ends` are those of the part of a side that it takes."""
+
+    name: str  # G1
+    label: str
+    at: Point
+    ends: tuple[Point, Point] | None = None
+
+
 class Zone(NamedTuple):
     """A hazard zone: one polygon with holes, its label and its row of the schedule."""
 
@@ -123,6 +132,8 @@ class Picture(NamedTuple):
     legs: tuple[Leg, ...] = ()
     panels: tuple[PanelLine, ...] = ()
     lids: tuple[LidOutline, ...] = ()
+    gaps: tuple[GapMark, ...] = ()
+    mirror_stretches: tuple[tuple[Point, Point], ...] = ()  # of beams: see `drafting.gaps`
     zones: tuple[Zone, ...] = ()
     legend: tuple[BeamEntry, ...] = ()
     revisions: tuple[tuple[str, str, str, str], ...] = ()  # rev, date, what, by

@@ -147,3 +147,16 @@ def test_where_a_gap_is_and_how_wide(panels, through, at, width):
     gap = gap_named(enclosed(box(**panels)), through)
     assert gap.at == pytest.approx(at, abs=1e-9)
     assert gap.width_mm == pytest.approx(width, abs=1e-9)
+
+
+def test_panels_drawn_the_wrong_way_round_are_open_where_they_are():
+    turned = {
+        "south": "{from: [1000, 0], to: [0, 0]}",
+        "west": "{from: [0, 0], to: [0, 800]}",
+        "north": "{from: [0, 800], to: [1000, 800]}",
+        "east": "{from: [1000, 800], to: [1000, 0]}",
+    }
+    assert seen(box(**turned)) == set()
+    assert seen(box(**turned, lids={})) == {"over east", "over north", "over south", "over west"}
+    short = LID.replace("[1000, 800], [0, 800]", "[1000, 790], [0, 790]")
+    assert seen(box(**turned, lids={"main": short})) == {"over north"}

@@ -6,28 +6,18 @@ from typing import TYPE_CHECKING, TypeAlias
 
 import numpy as np
 
-from benchlay.coverage.blockers import Place
 from benchlay.coverage.enclosed import Enclosed, enclosed_of
 from benchlay.coverage.filled import filled_openings
 from benchlay.coverage.gaps import EDGE, OPENING, OVER, SHEET, SIDE, UNDER, Gap, gaps_of
-from benchlay.coverage.places import standpoints
+from benchlay.coverage.places import Astray, standpoints
 from benchlay.document.span import Span
 from benchlay.layout.layout import Layout
-from benchlay.named import NamedTuple
 from benchlay.tracing.beams import FACE
 from benchlay.tracing.front import EMITTED
 
 if TYPE_CHECKING:
     from benchlay.checks._check.context import Context
-
-
-class Astray(NamedTuple):
-    """A place with the strongest hazardous beam that arrives there, or starts."""
-
-    name: str
-    at: Place
-    beam: int
-    power_w: float
+    from benchlay.checks._check.inside import Inside
 
 
 _Open: TypeAlias = tuple[Enclosed | None, list[Gap]]
@@ -63,6 +53,13 @@ class Gaps:
             if all(getattr(own, name) is getattr(layout, name) for name in _ENCLOSING):
                 return enclosed._replace(layout=layout), gaps
         return None
+
+    def strong(self, variant: int) -> list[Inside]:
+        """Return what of the beams of class 3B and 4 runs inside a state's enclosure."""
+        from benchlay.checks._check.inside import strong
+
+        enclosed, _ = self.of(variant)
+        return [] if enclosed is None else strong(self._context, variant, enclosed)
 
     def among_bodies(self, variant: int) -> Enclosed:
         """Return the enclosure of a state with the bodies on the bench; its sides if roofless."""

@@ -9,6 +9,7 @@ from benchlay.findings import Severity
 from benchlay.layout.layout import Layout
 from benchlay.placing.placed import PlacedState
 from benchlay.sheets.contents import BeamEntry, Picture
+from benchlay.sheets.drafting.gaps import opened
 from benchlay.sheets.drafting.legs import DrawnLegs, legs_of, limit_words
 from benchlay.sheets.drafting.outlines import items_of
 from benchlay.sheets.drafting.schedule import zones_drawn
@@ -58,6 +59,7 @@ def plan_picture(
     decimal = "." if drawing.decimal == "point" else ","
     limits = limits_of(trace)
     legs = legs_of(trace, limits, variant, decimal)
+    gaps = opened(trace, variant, decimal)
     sheet, scale, unmet = _wishes(layout)
     return Picture(
         name="plan",
@@ -70,12 +72,15 @@ def plan_picture(
         legs=legs.legs,
         panels=panels_of(layout),
         lids=lids_of(layout),
+        gaps=gaps.marks,
+        mirror_stretches=gaps.stretches,
         zones=zones_drawn(zones.zones, state.name, decimal),
         legend=tuple(_legend(trace, limits, variant, legs, decimal)),
         revisions=tuple((r.rev, r.date, r.what, r.by) for r in layout.revisions),
         notes=(
             _CAUTION,
             *_assumptions(state, zones, legs, decimal),
+            *gaps.notes,
             *_findings(counts, "all states" if of_all_states else f"state {state.name} alone"),
             *drawing.notes,
             *unmet,

@@ -19,6 +19,7 @@ from benchlay.sheets.plan.bench import bench, hole_step, holes, levels_note, mai
 from benchlay.sheets.plan.board import Board, lay_out
 from benchlay.sheets.plan.column import column
 from benchlay.sheets.plan.elements import elements
+from benchlay.sheets.plan.gaps import gaps, shading
 from benchlay.sheets.plan.items import blocks_and_uses
 from benchlay.sheets.plan.panels import lids, panels
 from benchlay.sheets.plan.tags import names, tags
@@ -59,11 +60,13 @@ def compose(picture: Picture) -> Sheet:
         *(use for _, use in drawn),
         *beams(picture, board),
         *limits(picture, board),
+        *gaps(picture, board),
     ]
     model += [_reserved(dimension, empty, board) for dimension in main_dimensions(picture, board)]
     tagged = tags(picture, board)
     lettering = board.crowd.boxes
     model += hatching(picture, board, lettering)
+    model += shading(picture, board)
     model += holes(picture, board, lettering)
     paper = [
         *frame(board.choice.sheet, board.choice.size_mm),

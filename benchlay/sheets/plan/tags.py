@@ -15,6 +15,7 @@ from benchlay.sheets.lettering import LINE_PITCH, MIDDLE_MM, SMALL_MM, plain, wi
 from benchlay.sheets.placing_text import Place
 from benchlay.sheets.plan.beams import clipped, layer_of
 from benchlay.sheets.plan.board import Board
+from benchlay.sheets.plan.gaps import anchors
 from benchlay.sheets.plan.items import placed, straightened
 from benchlay.sheets.plan.panels import lid_line, point_on
 from benchlay.sheets.plan.zones import seen
@@ -68,6 +69,7 @@ def tags(picture: Picture, board: Board) -> Tagged:
         *(_item_tag(item, picture, board) for item in picture.items),
         *_leg_tags(picture, board, stray=False),
         *_panel_tags(picture, board),
+        *_gap_tags(picture, board),
         *_zone_tags(picture, board),
         *_leg_tags(picture, board, stray=True),
     ]
@@ -149,6 +151,12 @@ def _panel_tags(picture: Picture, board: Board) -> Iterator[_Wanted]:
         edges = zip(corners, (*corners[1:], corners[0]), strict=True)
         anchors = tuple(_between(edge, share) for edge in edges for share in _ON_LEG)
         yield _Wanted(words, (("TAGS", plain(words), SMALL_MM),), "", "TAGS", anchors)
+
+
+def _gap_tags(picture: Picture, board: Board) -> Iterator[_Wanted]:
+    for gap in picture.gaps:
+        lines = (("HAZARD", plain(gap.label), SMALL_MM),)
+        yield _Wanted(gap.name, lines, "square", "HAZARD", tuple(anchors(gap, board)))
 
 
 def _sheet_words(name: str, sheet: PanelLine | LidOutline) -> str:
