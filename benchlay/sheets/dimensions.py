@@ -80,7 +80,10 @@ def figure_box(dimension: Dimension, sheet: Sheet) -> Window:
     )
     if width > math.dist(start, end) - _ARROWS_MM:
         out = _ARROWS_MM + 1.0 + width / 2
-        middle = (end[0] + ux * out, end[1] + uy * out)
+        if dimension.figure_share == 0.0:
+            middle = (start[0] - ux * out, start[1] - uy * out)
+        else:
+            middle = (end[0] + ux * out, end[1] + uy * out)
     lift = _BETWEEN_MM + dimension.height_mm / 2
     x, y = middle[0] - uy * lift, middle[1] + ux * lift
     half = _turned((width / 2, dimension.height_mm / 2 + 0.5), (ux, uy))

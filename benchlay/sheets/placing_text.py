@@ -1,8 +1,9 @@
 """Where tags go: beside what they name, clear of other lettering, outlines and beams.
 
 Greedy and in the order given, so that the same sheet always comes out the same. Each tag
-tries places on rings round its element, near ones first, and takes the cheapest: no overlap
-with other lettering at any price, then few lines crossed, then a short leader.
+tries places on rings round its element, near ones first, and takes the cheapest: on no other
+lettering and on no beam at any price, then few lines crossed, then a short leader. Where no
+ring has a place, it goes to the nearest free room on the sheet.
 """
 
 from __future__ import annotations
@@ -14,12 +15,13 @@ import numpy as np
 from numpy.typing import NDArray
 
 from benchlay.named import NamedTuple
+from benchlay.sheets.free_room import FreeRoom
 from benchlay.sheets.primitives import Point
 from benchlay.sheets.scale import Window
 
 Floats = NDArray[np.float64]
 
-_RINGS_MM = (1.5, 3.5, 6.0, 9.0, 13.0, 18.0, 24.0, 32.0, 42.0, 54.0)
+_RINGS_MM = (1.5, 3.5, 6.0, 9.0, 13.0, 18.0, 24.0)
 _DIRECTIONS = 24
 _MARGIN_MM = 0.7  # ISO 128: lines keep at least this apart
 _SAME_MM = 0.4
@@ -30,6 +32,7 @@ _LEADER_PER_MM = 0.15
 _LEADER_THROUGH = 60.0  # a leader through other lettering
 _PER_MM = 0.25
 _GOOD = 4.0  # cheap enough to stop looking further out
+_MOST_FAR = 400  # free places that are looked at when no ring has one
 _NEAR_LEADER_MM = 2.5  # nearer tags need no leader
 
 
@@ -56,8 +59,12 @@ class Crowd:
         self._window = window
         self._boxes: list[Window] = []
         self._segments: list[tuple[float, float, float, float]] = []
+        self._beams: list[bool] = []  # of each segment, whether no tag may stand on it
         self._array: Floats = np.empty((0, 4))
-        self._known: set[tuple[tuple[int, int], ...]] = set()
+        self._forbidden = np.empty(0, dtype=np.bool_)
+        self._known: dict[tuple[tuple[int, int], ...], int] = {}
+        self._stale = False
+        self._room = FreeRoom(window)
 
     @property
     def boxes(self) -> tuple[Window, ...]:
@@ -67,23 +74,38 @@ class Crowd:
     def add_box(self, box: Window) -> None:
         """Keep a rectangle free of lettering."""
         self._boxes.append(box)
+        self._room.take_box(box)
 
-    def add_line(self, points: Sequence[Point], *, closed: bool = False) -> None:
-        """Let tags rather not stand on a line, nor leaders cross it.
+    def add_line(
+        self, points: Sequence[Point], *, closed: bool = False, beam: bool = False
+    ) -> None:
+        """Let tags rather not stand on a line, nor leaders cross it; on a beam, never.
 
         Lines that look like one, as light that runs to and fro, count once.
         """
         ends = [*points[1:], points[0]] if closed else points[1:]
         for a, b in zip(points, ends, strict=False):
             key = tuple(sorted((round(x / _SAME_MM), round(y / _SAME_MM)) for x, y in (a, b)))
-            if key not in self._known:
-                self._known.add(key)
+            row = self._known.setdefault(key, len(self._segments))
+            if row == len(self._segments):
                 self._segments.append((*a, *b))
+                self._beams.append(beam)
+                self._room.take_line(a, b)
+                self._stale = True
+            elif beam and not self._beams[row]:
+                self._beams[row] = self._stale = True
+
+    def _gather(self) -> None:
+        """Bring the lines into arrays, where any were added."""
+        if self._stale:
+            self._array = np.array(self._segments, dtype=np.float64).reshape(-1, 4)
+            self._forbidden = np.array(self._beams, dtype=np.bool_)
+            self._stale = False
 
     def lines_through(self, box: Window) -> int:
         """Return how many lines run through a box."""
-        lines = np.array(self._segments, dtype=np.float64).reshape(-1, 4)
-        return int(_runs_through(lines, np.array([box])).sum())
+        self._gather()
+        return int(_runs_through(self._array, np.array([box])).sum())
 
     def take(self, box: Window) -> bool:
         """Take a box where nothing is in its way; return whether it was taken."""
@@ -109,18 +131,19 @@ class Crowd:
         Returns
         -------
         Place or None
-            None where every place would cover other lettering or leave the window.
+            None where every place on the sheet would cover other lettering or a beam.
         """
-        self._array = np.array(self._segments, dtype=np.float64).reshape(-1, 4)
+        self._gather()
         anchors = list(anchors)
         best: tuple[float, Place] | None = None
         for ring in _RINGS_MM:
-            for anchor, radius in anchors:
-                found = self._best_on_ring(size_mm, anchor, radius, ring)
-                if found is not None and (best is None or found[0] < best[0]):
-                    best = found
+            found = self._best_on_ring(size_mm, anchors, ring)
+            if found is not None and (best is None or found[0] < best[0]):
+                best = found
             if best is not None and best[0] < _GOOD + _PER_MM * ring:
                 break
+        if best is None and anchors:
+            best = self._far(size_mm, anchors[0][0])
         if best is None:
             return None
         place = best[1]
@@ -130,10 +153,14 @@ class Crowd:
         return place
 
     def _best_on_ring(
-        self, size_mm: Point, anchor: Point, radius: float, ring: float
+        self, size_mm: Point, anchors: Sequence[tuple[Point, float]], ring: float
     ) -> tuple[float, Place] | None:
-        boxes = _boxes_round(size_mm, anchor, radius + ring)
-        leaders = _leaders(boxes, anchor)
+        if not anchors:
+            return None
+        every = [_boxes_round(size_mm, anchor, radius + ring) for anchor, radius in anchors]
+        boxes = np.concatenate(every)
+        starts = np.repeat(np.array([anchor for anchor, _ in anchors]), _DIRECTIONS, axis=0)
+        leaders = _leaders(boxes, starts)
         steps = leaders[:, 2:] - leaders[:, :2]
         cost = self._costs(boxes, leaders) + _PER_MM * ring
         cost += _LEADER_PER_MM * np.hypot(steps[:, 0], steps[:, 1])
@@ -146,30 +173,65 @@ class Crowd:
         leader = None if near else ((x1, y1), (x2, y2))
         return float(cost[n]), Place(Window(left, low, right, high), leader)
 
+    def _far(self, size_mm: Point, anchor: Point) -> tuple[float, Place] | None:
+        """Return the best of the free places nearest to an anchor, wherever they are."""
+        margin = 2.0 * _MARGIN_MM
+        grown = (size_mm[0] + margin, size_mm[1] + margin)
+        boxes = self._room.places(grown, anchor, _MOST_FAR)
+        if not len(boxes):
+            return None
+        boxes = boxes + _MARGIN_MM * np.array([1.0, 1.0, -1.0, -1.0])
+        leaders = _leaders(boxes, np.array([anchor]))
+        cost = self._costs(boxes, leaders)
+        cost += _LEADER_PER_MM * np.hypot(*(leaders[:, 2:] - leaders[:, :2]).T)
+        n = int(np.argmin(cost))
+        if cost[n] >= _OVERLAP:
+            return None
+        left, low, right, high = boxes[n].tolist()
+        x1, y1, x2, y2 = leaders[n].tolist()
+        return float(cost[n]), Place(Window(left, low, right, high), ((x1, y1), (x2, y2)))
+
     def _costs(self, boxes: Floats, leaders: Floats) -> Floats:
         grown = boxes + _MARGIN_MM * np.array([-1.0, -1.0, 1.0, 1.0])
         left, low, right, high = self._window
         inside = (grown[:, 0] >= left) & (grown[:, 2] <= right)
         inside &= (grown[:, 1] >= low) & (grown[:, 3] <= high)
         cost = np.where(inside, 0.0, _OVERLAP)
-        if self._boxes:
-            others = np.array(self._boxes)
-            cost += _OVERLAP * _overlaps(grown, others).sum(axis=1)
+        others = self._boxes_near(grown, leaders)
+        if len(others):
+            cost += _OVERLAP * _overlaps(grown, others).any(axis=1)
             cost += _LEADER_THROUGH * _runs_through(leaders, others).sum(axis=1)
-        near = self._near(grown, leaders)
-        if len(near):
-            cost += _LINE_UNDER * _runs_through(near, grown).sum(axis=0)
-            cost += _LEADER_CROSSES * _crosses(leaders, near).sum(axis=1)
+        # What is out of the question already is not held against the many lines.
+        open_ = np.flatnonzero(cost < _OVERLAP)
+        if len(open_):
+            cost[open_] += self._line_costs(grown[open_], leaders[open_])
         return cost
 
-    def _near(self, boxes: Floats, leaders: Floats) -> Floats:
-        """Return the lines that could matter to any of the boxes and leaders."""
+    def _line_costs(self, grown: Floats, leaders: Floats) -> Floats:
+        near = self._near(grown, leaders)
+        lines, forbidden = self._array[near], self._forbidden[near]
+        under = _runs_through(lines, grown)
+        cost: Floats = _LINE_UNDER * under.sum(axis=0) + _OVERLAP * under[forbidden].any(axis=0)
+        open_ = np.flatnonzero(cost < _OVERLAP)
+        cost[open_] += _LEADER_CROSSES * _crosses(leaders[open_], lines).sum(axis=1)
+        return cost
+
+    def _boxes_near(self, boxes: Floats, leaders: Floats) -> Floats:
+        """Return the boxes of lettering that could matter to any of the boxes and leaders."""
+        others = np.array(self._boxes, dtype=np.float64).reshape(-1, 4)
+        x0, y0 = np.minimum(boxes.min(axis=0)[:2], leaders[:, :2].min(axis=0))
+        x1, y1 = np.maximum(boxes.max(axis=0)[2:], leaders[:, :2].max(axis=0))
+        near = (others[:, 2] > x0) & (others[:, 0] < x1) & (others[:, 3] > y0) & (others[:, 1] < y1)
+        return np.asarray(others[near], dtype=np.float64)
+
+    def _near(self, boxes: Floats, leaders: Floats) -> NDArray[np.bool_]:
+        """Return which lines could matter to any of the boxes and leaders."""
         xs = np.concatenate([boxes[:, [0, 2]], leaders[:, [0, 2]]], axis=None)
         ys = np.concatenate([boxes[:, [1, 3]], leaders[:, [1, 3]]], axis=None)
         x, y = self._array[:, [0, 2]], self._array[:, [1, 3]]
         near = (x.max(axis=1) >= xs.min()) & (x.min(axis=1) <= xs.max())
         near &= (y.max(axis=1) >= ys.min()) & (y.min(axis=1) <= ys.max())
-        matter: Floats = self._array[near]
+        matter: NDArray[np.bool_] = near
         return matter
 
 
@@ -185,12 +247,10 @@ def _boxes_round(size_mm: Point, anchor: Point, reach: float) -> Floats:
     return np.stack([x - half_width, y - half_height, x + half_width, y + half_height], axis=1)
 
 
-def _leaders(boxes: Floats, anchor: Point) -> Floats:
-    """Return leaders (K, 4) from an anchor to the nearest point of each box."""
-    x = np.clip(anchor[0], boxes[:, 0], boxes[:, 2])
-    y = np.clip(anchor[1], boxes[:, 1], boxes[:, 3])
-    start = np.full((len(boxes), 2), anchor)
-    return np.concatenate([start, np.stack([x, y], axis=1)], axis=1)
+def _leaders(boxes: Floats, anchors: Floats) -> Floats:
+    """Return leaders (K, 4) from anchors (K, 2), or from one for all, to the boxes' near points."""
+    starts = np.broadcast_to(anchors, (len(boxes), 2))
+    return np.concatenate([starts, np.clip(starts, boxes[:, :2], boxes[:, 2:])], axis=1)
 
 
 def _overlaps(boxes: Floats, others: Floats) -> NDArray[np.bool_]:
@@ -206,22 +266,17 @@ def _overlaps(boxes: Floats, others: Floats) -> NDArray[np.bool_]:
 def _runs_through(segments: Floats, boxes: Floats) -> NDArray[np.bool_]:
     """Return whether each segment (S, 4) has a piece inside each box (K, 4): (S, K).
 
-    Clipping in each axis in turn: the piece of the parameter that lies between the two
-    edges; the segment is inside where both pieces have a length in common.
+    By separating axes: their extents overlap in x and in y, and the box does not lie on one
+    side of the segment's line.
     """
-    start, step = segments[:, None, :2], segments[:, None, 2:] - segments[:, None, :2]
-    low, high = boxes[None, :, :2], boxes[None, :, 2:]
-    with np.errstate(divide="ignore", invalid="ignore"):
-        a, b = (low - start) / step, (high - start) / step
-    enter, leave = np.minimum(a, b), np.maximum(a, b)
-    still = step == 0.0
-    within = (start > low) & (start < high)
-    enter = np.where(still, np.where(within, -np.inf, np.inf), enter)
-    leave = np.where(still, np.where(within, np.inf, -np.inf), leave)
-    first = np.maximum(enter.max(axis=-1), 0.0)
-    last = np.minimum(leave.min(axis=-1), 1.0)
-    found: NDArray[np.bool_] = first < last
-    return found
+    x0, y0, x1, y1 = segments.T[:, :, None]
+    left, low, right, high = boxes.T[:, None, :]
+    found = (np.minimum(x0, x1) < right) & (np.maximum(x0, x1) > left)
+    found &= (np.minimum(y0, y1) < high) & (np.maximum(y0, y1) > low)
+    dx, dy = x1 - x0, y1 - y0
+    off = np.abs(dx * ((low + high) / 2 - y0) - dy * ((left + right) / 2 - x0))
+    reach = np.abs(dx) * (high - low) / 2 + np.abs(dy) * (right - left) / 2
+    return np.asarray(found & (off < reach), dtype=np.bool_)
 
 
 def _crosses(leaders: Floats, lines: Floats) -> NDArray[np.bool_]:

@@ -138,7 +138,7 @@ class Dimension(NamedTuple):
     text: str | None = None
     decimals: int = 1
     height_mm: float = 3.5
-    figure_share: float = 0.5  # where on the line the figure stands
+    figure_share: float = 0.5  # where on the line the figure stands; 0: before it, if too wide
 
 
 class Block(NamedTuple):

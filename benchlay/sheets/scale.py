@@ -6,6 +6,8 @@ memory.
 
 from __future__ import annotations
 
+from collections.abc import Iterator
+
 from benchlay.named import NamedTuple
 from benchlay.sheets.primitives import Point
 
@@ -114,6 +116,26 @@ def choose(view_mm: Point, sheet: str | None = None, scale: int | None = None) -
     asked = f"{sheet or 'A3 to A0'} at {f'1:{scale}' if scale else 'any listed scale'}"
     msg = f"{view_mm[0]:.0f} by {view_mm[1]:.0f} mm do not fit on {asked}"
     raise NothingFitsError(msg)
+
+
+def choices(view_mm: Point, sheet: str | None = None, scale: int | None = None) -> Iterator[Choice]:
+    """Return what `choose` does, then larger sheets on which nothing is drawn smaller.
+
+    They are for a view that is too full for the first.
+
+    Raises
+    ------
+    NothingFitsError
+        See `choose`.
+    """
+    first = choose(view_mm, sheet, scale)
+    yield first
+    if sheet:
+        return
+    for name in PLAN_SIZES[PLAN_SIZES.index(first.sheet) + 1 :]:
+        fits = _largest(view_mm, SIZES_MM[name], first.scale, scale)
+        if fits is not None:
+            yield Choice(name, SIZES_MM[name], fits)
 
 
 def _largest(view_mm: Point, size_mm: Point, smallest: int, scale: int | None) -> int | None:

@@ -110,7 +110,9 @@ def _figure(dimension: Dimension, start: Point, end: Point, scale: float, decima
     )
     width = width_mm(label, dimension.height_mm)
     if width > room:
-        middle = _move(end, (ux, uy), (2 * ARROW_MM + 1.0 + width / 2) * scale)
+        out = (2 * ARROW_MM + 1.0 + width / 2) * scale
+        before = dimension.figure_share == 0.0
+        middle = _move(start, (ux, uy), -out) if before else _move(end, (ux, uy), out)
     at = _move(middle, (-uy, ux), ABOVE_MM * scale)
     angle = math.degrees(math.atan2(uy, ux))
     return Text(dimension.layer, at, label, dimension.height_mm, Across.CENTRE, rotation_deg=angle)

@@ -3,10 +3,12 @@
 import itertools
 import math
 
+import numpy as np
 import pytest
+import shapely
 import trial_bench
 
-from benchlay.sheets.contents import Leg
+from benchlay.sheets.contents import Holes, Leg, Zone
 from benchlay.sheets.dimensions import figure_box
 from benchlay.sheets.lettering import width_mm
 from benchlay.sheets.plan import compose
@@ -196,3 +198,86 @@ def test_a_leg_seen_end_on_is_a_ring():
     up = trial_bench.picture(legs=(Leg("B1", 532.0, (500, 450, 100), (500, 450, 200)),))
     rings = [p for p in compose(up).model if p.layer == "LEVELS"]
     assert {p.centre for p in rings} == {(500, 450)}
+
+
+# ------------------------------------------------------------- full sheets
+
+
+def crowded_bench(columns, rows, step):
+    """Rows of plates, each with a beam of its own that runs through them all."""
+    items, legs = [], []
+    for row in range(rows):
+        y = 100.0 + row * step[1]
+        at = [(140.0 + n * step[0], y) for n in range(columns)]
+        for n, place in enumerate(at):
+            far = (place[0] + 9.0, y)
+            near = (place[0] - 9.0, y)
+            items.append(trial_bench.mirror(f"A{row}-{n}", place, near, far, kind="aperture"))
+        ends = [(40.0, y), *at]
+        legs += [
+            trial_bench.leg(f"B{row}", 532.0, a, b, words=f"B{row} {n} mW")
+            for n, (a, b) in enumerate(itertools.pairwise(ends))
+        ]
+    width, depth = 240.0 + columns * step[0], 200.0 + rows * step[1]
+    outline = ((0.0, 0.0), (width, 0.0), (width, depth), (0.0, depth))
+    return trial_bench.picture(
+        outline=outline,
+        items=tuple(items),
+        legs=tuple(legs),
+        panels=(),
+        zones=(),
+        holes=Holes((25.0, 25.0), 25.0, int(width // 25), int(depth // 25), "M6"),
+    )
+
+
+def overlapping(boxes):
+    return [
+        (a, b)
+        for (a, p), (b, q) in itertools.combinations(boxes, 2)
+        if p[0] < q[2] and q[0] < p[2] and p[1] < q[3] and q[1] < p[3]
+    ]
+
+
+def on_beams(sheet, legs):
+    """Tags on the sheet that a beam runs through, by sampling the beams."""
+    tags = [t for t in sheet.paper if isinstance(t, Text) and t.layer in ("TAGS", "LEVELS")]
+    boxes = np.array(
+        [[(t.at[n] + corner[n]) for corner in box_of(t) for n in (0, 1)] for t in tags]
+    )
+    found = set()
+    for leg in legs:
+        (ax, ay), (bx, by) = to_paper(sheet, leg.start), to_paper(sheet, leg.end)
+        share = np.linspace(0.0, 1.0, max(2, math.ceil(math.dist((ax, ay), (bx, by)) / 0.2)))
+        x, y = ax + share * (bx - ax), ay + share * (by - ay)
+        inside = (x[:, None] > boxes[:, 0]) & (x[:, None] < boxes[:, 2])
+        inside &= (y[:, None] > boxes[:, 1]) & (y[:, None] < boxes[:, 3])
+        found |= {tags[n].text for n in np.flatnonzero(inside.any(axis=0))}
+    return found
+
+
+@pytest.mark.parametrize(
+    ("columns", "rows", "step"),
+    [(10, 6, (100.0, 100.0)), (20, 15, (55.0, 50.0)), (30, 2, (150.0, 250.0))],
+    ids=["60", "300", "long"],
+)
+def test_a_full_bench_has_every_tag_and_none_on_another_or_on_a_beam(columns, rows, step):
+    picture = crowded_bench(columns, rows, step)
+    sheet = compose(picture)
+    said = [p.text for p in sheet.paper if isinstance(p, Text)]
+    assert {item.name for item in picture.items} <= set(said)
+    assert {leg.words for leg in picture.legs} <= set(said)
+    assert not any(words.startswith("Not tagged") for words in said)
+    assert overlapping(boxes(sheet)) == []
+    assert on_beams(sheet, picture.legs) == set()
+
+
+def test_tags_of_the_made_up_bench_lie_on_no_beam(sheet):
+    assert on_beams(sheet, trial_bench.legs()) == set()
+
+
+def test_what_lies_beyond_the_sheet_is_said_to():
+    far = shapely.box(9000.0, 9000.0, 9100.0, 9100.0)
+    zone = Zone("Z9", "direct", trial_bench.rings(far), ("direct",), ("far",))
+    sheet = compose(trial_bench.picture(zones=(zone,)))
+    said = [p.text for p in sheet.paper if isinstance(p, Text)]
+    assert "Beyond the edge of this sheet: Z9." in said

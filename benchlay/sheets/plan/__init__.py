@@ -9,20 +9,21 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
+from benchlay.named import NamedTuple
 from benchlay.sheets.contents import Picture
 from benchlay.sheets.dimensions import figure_box
 from benchlay.sheets.frame import frame
 from benchlay.sheets.layers import BeamLook, sheet_layers
-from benchlay.sheets.lettering import LARGE_MM, SMALL_MM, shorten
+from benchlay.sheets.lettering import LARGE_MM, SMALL_MM, shorten, width_mm
 from benchlay.sheets.plan.beams import beams
 from benchlay.sheets.plan.bench import bench, hole_step, holes, levels_note, main_dimensions
-from benchlay.sheets.plan.board import Board, lay_out
+from benchlay.sheets.plan.board import Board, boards
 from benchlay.sheets.plan.column import column
 from benchlay.sheets.plan.elements import elements
 from benchlay.sheets.plan.gaps import gaps, shading
 from benchlay.sheets.plan.items import blocks_and_uses
 from benchlay.sheets.plan.panels import lids, panels
-from benchlay.sheets.plan.tags import names, tags
+from benchlay.sheets.plan.tags import Tagged, tags, untagged
 from benchlay.sheets.plan.zones import hatching, limits
 from benchlay.sheets.primitives import (
     Across,
@@ -35,10 +36,13 @@ from benchlay.sheets.primitives import (
     figure,
     line_ends,
 )
-from benchlay.sheets.scale import frame_of
+from benchlay.sheets.scale import Window, frame_of
 from benchlay.sheets.title_block import TitleFields, title_block
 
 _FIGURE_SHARES = (0.5, 0.4, 0.6, 0.3, 0.7, 0.2, 0.8)
+_DESCENT = 0.33  # of the height of capitals, measured from the font
+_TAG_MM2 = 110.0  # a tag of twelve letters with its border and what must stay clear round it
+_MOST_TAGGED = 0.3  # of the field, which holds the bench itself too
 _BAR_MM = 50.0  # of the scale bar, on paper
 
 
@@ -50,8 +54,30 @@ def compose(picture: Picture) -> Sheet:
     NothingFitsError
         If no listed sheet and scale hold it.
     """
-    board = lay_out(picture)
+    # A larger sheet has room for more tags; the largest says what even it has none for.
+    *smaller, last = boards(picture)
+    for board in smaller:
+        if not _crowded(picture, board):
+            composed = _composed(picture, board)
+            if not composed.left_out:
+                return composed.sheet
+    return _composed(picture, last).sheet
+
+
+def _crowded(picture: Picture, board: Board) -> bool:
+    """Whether it is of no use to look for room for so many tags."""
+    tags = len(picture.items) + sum(bool(leg.words) for leg in picture.legs)
+    return tags * _TAG_MM2 > _MOST_TAGGED * board.field.width * board.field.height
+
+
+class _Composed(NamedTuple):
+    sheet: Sheet
+    left_out: tuple[str, ...]
+
+
+def _composed(picture: Picture, board: Board) -> _Composed:
     empty = _sheet(picture, board)
+    title = list(_view_title(picture, board))
     drawn = list(blocks_and_uses(picture, board))
     model: list[Primitive] = [
         *bench(picture, board),
@@ -71,15 +97,16 @@ def compose(picture: Picture) -> Sheet:
     paper = [
         *frame(board.choice.sheet, board.choice.size_mm),
         *title_block(_fields(picture, board), board.choice.size_mm),
-        *_view_title(picture, board),
+        *title,
         *_scale_bar(picture, board),
         *tagged.paper,
         *elements(picture, board),
-        *column(picture, board, _notes(picture, board, tagged.left_out)),
+        *column(picture, board, _notes(picture, board, tagged)),
     ]
-    return empty._replace(
+    sheet = empty._replace(
         model=tuple(model), paper=tuple(paper), blocks=tuple(block for block, _ in drawn)
     )
+    return _Composed(sheet, tagged.left_out)
 
 
 def _sheet(picture: Picture, board: Board) -> Sheet:
@@ -114,7 +141,9 @@ def _words(picture: Picture, board: Board) -> str:
 
 def _reserved(dimension: Dimension, sheet: Sheet, board: Board) -> Dimension:
     """Move a dimension's figure out of the way of beams, and keep tags off it."""
-    choices = [dimension._replace(figure_share=share) for share in _FIGURE_SHARES]
+    choices = [dimension]
+    if dimension.figure_share:
+        choices = [dimension._replace(figure_share=share) for share in _FIGURE_SHARES]
     # The first of equals is the middle: nothing is moved without need.
     best = min(choices, key=lambda d: board.crowd.lines_through(figure_box(d, sheet)))
     board.crowd.add_box(figure_box(best, sheet))
@@ -134,6 +163,8 @@ def _view_title(picture: Picture, board: Board) -> Iterator[Primitive]:
     words = f"PLAN 1:{board.choice.scale}, STATE: {picture.state}"
     words = shorten(words, board.field.width - 8.0, LARGE_MM)
     at = (inner.left + 6.0, inner.high - 6.0 - LARGE_MM)
+    foot, wide = at[1] - _DESCENT * LARGE_MM, width_mm(words, LARGE_MM)
+    board.crowd.add_box(Window(at[0], foot, at[0] + wide, at[1] + LARGE_MM))
     yield Text("NOTES", at, words, LARGE_MM)
 
 
@@ -155,7 +186,7 @@ def _scale_bar(picture: Picture, board: Board) -> Iterator[Primitive]:
     yield Text("NOTES", (x, y - 4.4), shorten(words, room, SMALL_MM), SMALL_MM)
 
 
-def _notes(picture: Picture, board: Board, left_out: tuple[str, ...]) -> list[str]:
+def _notes(picture: Picture, board: Board, tagged: Tagged) -> list[str]:
     grid = picture.holes
     datum = "the near left corner of the bench"
     drawn = ""
@@ -170,6 +201,4 @@ def _notes(picture: Picture, board: Board, left_out: tuple[str, ...]) -> list[st
         f"Do not scale.{drawn}",
         levels_note(picture),
     ]
-    if left_out:
-        out.append(names(left_out))
-    return [*out, *picture.notes]
+    return [*out, *untagged(tagged), *picture.notes]

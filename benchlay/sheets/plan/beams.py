@@ -36,7 +36,7 @@ def beams(picture: Picture, board: Board) -> Iterator[Primitive]:
         seen = clipped(start, end, field)
         if seen is None:
             continue
-        board.crowd_model_line(seen)
+        board.crowd_model_line(seen, beam=True)
         if math.dist(start, end) < _STEEP * abs(leg.end[2] - leg.start[2]):
             yield from _upright(leg, board)
             continue

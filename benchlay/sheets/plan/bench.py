@@ -6,6 +6,7 @@ from collections.abc import Iterator, Sequence
 
 from benchlay.sheets.contents import Holes, Picture
 from benchlay.sheets.dimensions import below, beside
+from benchlay.sheets.lettering import width_mm
 from benchlay.sheets.plan.board import Board
 from benchlay.sheets.primitives import (
     Circle,
@@ -15,15 +16,16 @@ from benchlay.sheets.primitives import (
     Point,
     Polyline,
     Primitive,
-    Text,
     figure,
+    measured,
 )
 from benchlay.sheets.scale import Window
 
 _CROSS_MM = 1.6
+_ARROWS_MM = 8.0  # two arrowheads, and a little
 _CLOSEST_MM = 9.0  # holes drawn nearer than this are specks: every second, fifth, … then
 _STEPS = (1, 2, 4, 5, 10, 20, 50, 100)
-_ARROW_MM = 15.0
+ARROW_MM = 15.0  # of the directions from the datum
 
 
 def bench(picture: Picture, board: Board) -> Iterator[Primitive]:
@@ -68,21 +70,17 @@ def _under(point: Point, boxes: Sequence[Window]) -> bool:
 
 def _datum(holes: Holes, board: Board) -> Iterator[Primitive]:
     x, y = holes.first
-    reach, tip, half = board.long(_ARROW_MM), board.long(3.0), board.long(0.6)
+    reach, tip, half = board.long(ARROW_MM), board.long(3.0), board.long(0.6)
     for radius in (2.0, 3.0):
         yield Circle("DATUM", holes.first, board.long(radius))
-    for ux, uy, name in ((1.0, 0.0, "X"), (0.0, 1.0, "Y")):
+    for ux, uy in ((1.0, 0.0), (0.0, 1.0)):
         end = (x + reach * ux, y + reach * uy)
         back = (end[0] - tip * ux, end[1] - tip * uy)
         side = (half * uy, half * ux)
         yield Line("DATUM", holes.first, back)
         corners = (end, (back[0] + side[0], back[1] + side[1]))
         yield Fill("DATUM", (*corners, (back[0] - side[0], back[1] - side[1])))
-        at = (end[0] + board.long(1.0), end[1] - board.long(1.2 * ux))
-        yield Text("DATUM", at, name, 2.5)
         board.crowd_model_line((holes.first, end))
-        px, py = board.on_paper(at)
-        board.crowd.add_box(Window(px - 0.5, py - 0.5, px + 2.5, py + 3.0))
 
 
 def main_dimensions(picture: Picture, board: Board) -> list[Dimension]:
@@ -97,8 +95,11 @@ def main_dimensions(picture: Picture, board: Board) -> list[Dimension]:
         x, y = holes.first
         across = below("DIMENSIONS", (left, x, x + last[0]), low, 0, board.scale)
         up = beside("DIMENSIONS", (low, y, y + last[1]), left, 0, board.scale)
-        out += _with_counts(across, holes.columns, holes.pitch_mm, picture.decimal)
-        out += _with_counts(up, holes.rows, holes.pitch_mm, picture.decimal)
+        # From the edge to the first hole there is mostly no room: below, where benches are long,
+        # the figure stands beyond that hole, at the side before the edge.
+        up[0] = up[0]._replace(figure_share=0.0)
+        out += _with_counts(across, holes.columns, holes.pitch_mm, picture.decimal, board.scale)
+        out += _with_counts(up, holes.rows, holes.pitch_mm, picture.decimal, board.scale)
         rows = 1
     out += below("DIMENSIONS", (left, max(xs)), low, rows, board.scale)
     out += beside("DIMENSIONS", (low, max(ys)), left, rows, board.scale)
@@ -106,12 +107,14 @@ def main_dimensions(picture: Picture, board: Board) -> list[Dimension]:
 
 
 def _with_counts(
-    row: list[Dimension], count: int, pitch_mm: float, decimal: str
+    row: list[Dimension], count: int, pitch_mm: float, decimal: str, scale: float
 ) -> list[Dimension]:
-    """Write a row of holes as so many pitches, never as a chain of them."""
+    """Write a row of holes as so many pitches, never as a chain of them, where there is room."""
     if count > 1:
         pitch, total = (figure(v, 3, decimal) for v in (pitch_mm, (count - 1) * pitch_mm))
-        row[-1] = row[-1]._replace(text=f"{count - 1} × {pitch} (= {total})")
+        text = f"{count - 1} × {pitch} (= {total})"
+        if width_mm(text, row[-1].height_mm) < measured(row[-1]) / scale - _ARROWS_MM:
+            row[-1] = row[-1]._replace(text=text)
     return row
 
 

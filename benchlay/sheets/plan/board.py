@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Iterable, Sequence
+from collections.abc import Iterable, Iterator, Sequence
 
 from benchlay.named import NamedTuple
 from benchlay.sheets.contents import Picture
@@ -15,7 +15,7 @@ from benchlay.sheets.scale import (
     COLUMN_MM,
     Choice,
     Window,
-    choose,
+    choices,
     frame_of,
     view_of,
 )
@@ -63,13 +63,15 @@ class Board(NamedTuple):
         high = self.in_model((self.field.right, self.field.high))
         return Window(*low, *high)
 
-    def crowd_model_line(self, points: Iterable[Point], *, closed: bool = False) -> None:
-        """Let tags keep off a line of the model."""
-        self.crowd.add_line([self.on_paper(p) for p in points], closed=closed)
+    def crowd_model_line(
+        self, points: Iterable[Point], *, closed: bool = False, beam: bool = False
+    ) -> None:
+        """Let tags keep off a line of the model; see `Crowd.add_line`."""
+        self.crowd.add_line([self.on_paper(p) for p in points], closed=closed, beam=beam)
 
 
-def lay_out(picture: Picture) -> Board:
-    """Choose sheet and scale for a picture, and the bench's place on it.
+def boards(picture: Picture) -> Iterator[Board]:
+    """Choose sheet and scale for a picture, then larger ones for what is too full for it.
 
     Raises
     ------
@@ -77,7 +79,13 @@ def lay_out(picture: Picture) -> Board:
         If no listed sheet and scale hold the bench with its panels.
     """
     left, low, right, high = extent(picture)
-    choice = choose((right - left, high - low), picture.sheet, picture.scale)
+    for choice in choices((right - left, high - low), picture.sheet, picture.scale):
+        yield lay_out(picture, choice)
+
+
+def lay_out(picture: Picture, choice: Choice) -> Board:
+    """Return where on a sheet the bench stands, and the tables."""
+    left, low, right, high = extent(picture)
     view, inner = view_of(choice.size_mm), frame_of(choice.size_mm)
     n = choice.scale
     # In the middle of its field: light that leaves the bench needs room on every side.

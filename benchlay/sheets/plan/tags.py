@@ -14,6 +14,7 @@ from benchlay.sheets.frame import rectangle
 from benchlay.sheets.lettering import LINE_PITCH, MIDDLE_MM, SMALL_MM, plain, width_mm
 from benchlay.sheets.placing_text import Place
 from benchlay.sheets.plan.beams import clipped, layer_of
+from benchlay.sheets.plan.bench import ARROW_MM
 from benchlay.sheets.plan.board import Board
 from benchlay.sheets.plan.gaps import anchors
 from benchlay.sheets.plan.items import placed, straightened
@@ -46,6 +47,7 @@ class Tagged(NamedTuple):
 
     paper: tuple[Primitive, ...]
     left_out: tuple[str, ...]
+    off_sheet: tuple[str, ...]  # names of what lies beyond the sheet's edge
 
 
 class _Wanted(NamedTuple):
@@ -63,6 +65,7 @@ def tags(picture: Picture, board: Board) -> Tagged:
     """Place and draw every tag, most needed first."""
     out: list[Primitive] = []
     left_out: list[str] = []
+    off_sheet: list[str] = []
     shapes = {item.name: _on_paper(item, board) for item in picture.items}
     wanted = [
         *_datum_tag(picture, board),
@@ -77,12 +80,15 @@ def tags(picture: Picture, board: Board) -> Tagged:
         if _height_written(item, picture):
             out += _cross(board.on_paper(item.at))
     for tag in wanted:
+        if not tag.anchors:
+            off_sheet.append(tag.name)
+            continue
         place = _place(tag, board)
         if place is None:
             left_out.append(tag.name)
         else:
             out += _drawn(tag, _pointed(tag, place, shapes))
-    return Tagged(tuple(out), tuple(dict.fromkeys(left_out)))
+    return Tagged(tuple(out), tuple(dict.fromkeys(left_out)), tuple(dict.fromkeys(off_sheet)))
 
 
 def _place(tag: _Wanted, board: Board) -> Place | None:
@@ -93,7 +99,7 @@ def _place(tag: _Wanted, board: Board) -> Place | None:
         if board.crowd.take(box):
             board.crowd.add_box(tag.within)  # no other tag stands in the body
             return Place(box, None)
-    return board.crowd.place(size, tag.anchors) if tag.anchors else None
+    return board.crowd.place(size, tag.anchors)
 
 
 def _on_paper(item: Item, board: Board) -> BaseGeometry:
@@ -130,8 +136,11 @@ def _height_written(item: Item, picture: Picture) -> bool:
 def _datum_tag(picture: Picture, board: Board) -> Iterator[_Wanted]:
     if picture.holes is not None:
         lines = (("DATUM", "datum, hole 1-1", SMALL_MM),)
-        at = board.on_paper(picture.holes.first)
-        yield _Wanted("datum", lines, "", "DATUM", ((at, 3.0),))
+        x, y = board.on_paper(picture.holes.first)
+        yield _Wanted("datum", lines, "", "DATUM", (((x, y), 3.0),))
+        for name, end in (("X", (x + ARROW_MM, y)), ("Y", (x, y + ARROW_MM))):
+            letter = (("DATUM", name, SMALL_MM),)
+            yield _Wanted(f"axis {name}", letter, "", "DATUM", ((end, 0.0),))
 
 
 def _panel_tags(picture: Picture, board: Board) -> Iterator[_Wanted]:
@@ -301,6 +310,9 @@ def _cross(at: Point) -> Iterator[Line]:
     yield Line("LEVELS", (x - _X_MM, y + _X_MM), (x + _X_MM, y - _X_MM))
 
 
-def names(left_out: Iterable[str]) -> str:
-    """Return the note that names what bears no tag."""
-    return "Not tagged for want of room: " + ", ".join(left_out) + "."
+def untagged(tagged: Tagged) -> Iterator[str]:
+    """Return the notes that name what bears no tag."""
+    if tagged.left_out:
+        yield f"Not tagged for want of room: {', '.join(tagged.left_out)}."
+    if tagged.off_sheet:
+        yield f"Beyond the edge of this sheet: {', '.join(tagged.off_sheet)}."
