@@ -86,7 +86,7 @@ def _run(arguments: Sequence[str]) -> int:
     shows = _takes_colour(sys.stderr)  # where there is no colour there is no progress either
     options.progress = _show_progress if shows else None
     outcome = work(options, Ink(coloured=_takes_colour(sys.stdout)))
-    if shows and options.command == "faults":
+    if shows and options.command in ("faults", "review"):
         _say("\r\x1b[K", sys.stderr)
     _say(outcome.out, sys.stdout)
     _say(outcome.err, sys.stderr)

@@ -63,9 +63,15 @@ class Pipeline(Protocol):
         """Trace one state; the state as drawn where none is named."""
 
     def review_files(
-        self, data: bytes, file: str, *, on: date, state: str | None
+        self,
+        data: bytes,
+        file: str,
+        *,
+        on: date,
+        state: str | None,
+        progress: Progress | None = None,
     ) -> tuple[Review, Files] | LayoutErrors:
-        """Review in full; also every file of the review, by name."""
+        """Review in full, telling how far it is; also every file of the review, by name."""
 
     def faults_result(
         self, data: bytes, file: str, *, state: str | None, progress: Progress | None
@@ -232,7 +238,9 @@ def _review_one(name: str, folder: Path, options: Namespace, ink: Ink) -> Outcom
     pipeline = _pipeline()
 
     def review(data: bytes, file: str) -> tuple[Review, Files] | LayoutErrors:
-        return pipeline.review_files(data, file, on=options.on, state=options.state)
+        # Said only where somebody looks on: what is given to a pipeline stays as short as it was.
+        told = {"progress": options.progress} if getattr(options, "progress", None) else {}
+        return pipeline.review_files(data, file, on=options.on, state=options.state, **told)
 
     if not options.force and (refused := refusal(folder, name)):
         return Outcome(Status.WRONG, err=refused)

@@ -191,11 +191,11 @@ def _nobody(done: int, total: int) -> None:
 
 
 def review_files(
-    data: bytes, file: str, *, on: date, state: str | None
+    data: bytes, file: str, *, on: date, state: str | None, progress: Progress | None = None
 ) -> tuple[Review, dict[str, bytes]] | LayoutErrors:
     """Review a layout in full; also return every file of the review, by name."""
     from benchlay import __version__
-    from benchlay.report.json_out import check_document, dumps, trace_document
+    from benchlay.report.json_out import check_document, dumps, faults_document, trace_document
 
     try:
         reviewed, checked = _reviewed(data, file, on=on, state=state, in_full=True)
@@ -204,9 +204,12 @@ def review_files(
         )
     except LayoutError as error:
         return LayoutErrors(file, error.problems, _lines(data))
-    reviewed = reviewed._replace(remedies=_remedies(data, file, checked, reviewed, on))
+    faults = _faults(checked.trace.placed, data, file, state, progress)
+    remedies = _remedies(data, file, checked, reviewed, on)
+    reviewed = reviewed._replace(remedies=remedies, faults=faults)
     documents = {
         "findings.json": check_document([reviewed], version=__version__),
+        "faults.json": faults_document(faults, version=__version__),
         "beams.json": trace_document(_traced(checked.trace, file, checked.states[0])),
     }
     files = {name: dumps(document).encode("ascii") for name, document in documents.items()}

@@ -165,7 +165,14 @@ def test_a_review_writes_its_files(files, capsys):
     capsys.readouterr()
     folder = files / "exports" / "escapes"
     names = {path.name for path in folder.iterdir()}
-    assert {"beams.json", "findings.json", "plan.dxf", "plan.svg", "sheets.pdf"} <= names
+    assert {
+        "beams.json",
+        "faults.json",
+        "findings.json",
+        "plan.dxf",
+        "plan.svg",
+        "sheets.pdf",
+    } <= names
     data = (".json", ".csv")
     assert all(is_a_drawing(name) for name in names if not name.endswith(data))
     record = json.loads((folder / "findings.json").read_text(encoding="ascii"))

@@ -11,6 +11,7 @@ from benchlay.report.words import Ink, listed, tame
 
 PLAIN = Ink()
 _WORD = {"escape": "fail", "not evaluated": "fail", "stray": "warn"}
+_HOW = {"escape": "out by", "not evaluated": "at", "stray": "unstopped on"}
 _HEADINGS = {
     "escape": "light gets out",
     "not evaluated": "not evaluated: no pass",
@@ -39,6 +40,20 @@ def summary(result: FaultsResult) -> str:
     return (
         f"{tame(result.layout)}: {len(result.faults)} single faults "
         f"({', '.join(counts) or 'none credible'}); states: {listed(result.states)}"
+    )
+
+
+def worst_line(result: FaultsResult, ink: Ink = PLAIN) -> str | None:
+    """Say in a line what the gravest fault does; None where none does anything."""
+    worst = next(iter(result.faults), None)
+    if worst is None or worst.outcome not in _WORD:
+        return None
+    word = ink.paint(_WORD[worst.outcome])
+    if worst.through is None:
+        return f"{word} {tame(worst.fault)} in {worst.state}: {tame(worst.reason or 'unknown')}"
+    return (
+        f"{word} {tame(worst.fault)} in {worst.state}: {shown(worst.power_W, 'W')}, "
+        f"{shown(worst.times_limit)} times the limit, {_HOW[worst.outcome]} {tame(worst.through)}"
     )
 
 

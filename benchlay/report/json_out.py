@@ -38,7 +38,7 @@ def review_object(result: Review | LayoutErrors) -> dict[str, Json]:
             "errors": [_problem(problem) for problem in result.errors],
         }
     fields = result._asdict()
-    del fields["lines"]
+    del fields["lines"], fields["faults"]
     if fields["remedies"] is None:  # they were not asked for
         del fields["remedies"]
     written = {key: plain(value, key) for key, value in fields.items()}

@@ -27,6 +27,7 @@ if TYPE_CHECKING:
         RouteResult,
         Zone,
     )
+    from benchlay.report.faults import FaultsResult
 
 Point: TypeAlias = tuple[float, float, float]
 
@@ -160,6 +161,7 @@ class Review(NamedTuple):
     signs: tuple[Sign, ...] = ()
     not_computed: tuple[str, ...] = ()
     remedies: Remedies | None = None  # where they were asked for
+    faults: FaultsResult | None = None  # where they were reviewed: a file of its own
     lines: tuple[str, ...] = ()
 
     @property

@@ -67,6 +67,7 @@ def _review_text(review: Review, ink: Ink) -> str:
     for finding in review.findings:
         lines += _finding_lines(finding, review, ink)
     lines += _remedy_lines(review)
+    lines += _fault_lines(review, ink)
     lines += matrix_lines(matrix_of(review))
     lines += _not_evaluated(review)
     lines += _limit_lines(review)
@@ -113,6 +114,20 @@ def _remedy_lines(review: Review) -> Iterator[str]:
         yield from (f"      {tame(line)}" for line in remedy.yaml.split("\n"))
     for finding in remedies.without:
         yield f"  {finding}: no stop, panel, coating, tilt or wedge that was tried clears it alone"
+    yield ""
+
+
+def _fault_lines(review: Review, ink: Ink) -> Iterator[str]:
+    """Say how many single faults there are and what the worst would do; the rest is a file."""
+    if review.faults is None:
+        return
+    from benchlay.report.faults_text import summary, worst_line
+
+    worst = worst_line(review.faults, ink)
+    yield summary(review.faults)
+    if worst is not None:
+        yield f"  the worst: {worst}"
+    yield "  all of them: faults.json, and `benchlay faults`; the verdict is of the layout as it is"
     yield ""
 
 

@@ -123,3 +123,15 @@ def test_progress_only_on_a_terminal(layout, capsys, monkeypatch):
     monkeypatch.setenv("NO_COLOR", "1")
     run(["faults", name])
     assert capsys.readouterr().err == ""
+
+
+def test_a_review_runs_faults_and_says_the_worst(layout, capsys, tmp_path):
+    run(["review", layout(OVERSHOT), "-o", str(tmp_path / "out"), "--on", "2026-12-01"])
+    out = capsys.readouterr().out
+    assert "single faults (" in out
+    assert "the worst: fail M1 pitch +4° in as drawn" in out
+    document = json.loads((tmp_path / "out" / "faults.json").read_text(encoding="ascii"))
+    run(["faults", layout(OVERSHOT), "--json"])
+    assert document == json.loads(capsys.readouterr().out)
+    review = json.loads((tmp_path / "out" / "findings.json").read_text(encoding="ascii"))
+    assert "faults" not in review["reviews"][0]
