@@ -266,7 +266,15 @@ BEAM = keys(
     }
 )  # fmt: skip
 POSE = keys({"at": POINT, "facing": NUMBER, "pitch": NUMBER})
-TRACE = keys({"state": TEXT, "beams": listed(BEAM), "placed": named(POSE), "ledger": LEDGER})
+TRACE = keys(
+    {
+        "state": TEXT,
+        "beams": listed(BEAM),
+        "placed": named(POSE),
+        "ledger": LEDGER,
+        "cautions": listed(TEXT),
+    }
+)
 PROBLEM = keys(
     {"file": TEXT, "line": INTEGER, "column": INTEGER, "message": TEXT, "expected": TEXT,
      "remedy": TEXT}

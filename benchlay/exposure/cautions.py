@@ -2,6 +2,12 @@
 
 from __future__ import annotations
 
+SHORT = (
+    "A calculation aid, not an approval: the standard in force, local rules and the laser safety "
+    "officer decide."
+)
+"""What stands on every sheet, where there is room for one line; the rest is on the safety sheet."""
+
 CAUTIONS: tuple[str, ...] = (
     "a calculation aid, not a certificate: the standard, local rules and the laser "
     "safety officer decide, and an assessment must be checked and signed by a "

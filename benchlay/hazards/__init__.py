@@ -60,7 +60,7 @@ def _of_state(context: Context, limits: LimitTable, zones: Zones, variant: int) 
         accessible=accessible(context, reach, struck),
         distances=distances(context, variant, reach.in_reach),
         eyewear=eyewear(context, reach),
-        diffuse=viewing(context, variant, struck),
+        diffuse=viewing(struck),
         controlled_area_m2=places.area_m2,
         people=places.people,
         passages=places.passages,

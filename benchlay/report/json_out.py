@@ -61,6 +61,7 @@ def trace_document(result: TraceResult | LayoutErrors) -> dict[str, Json]:
         "beams": plain(result.beams, "beams"),
         "placed": plain(result.placed, "placed"),
         "ledger": [_ledger(entry) for entry in result.ledger],
+        "cautions": list(CAUTIONS),
     }
 
 

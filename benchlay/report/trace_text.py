@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 
+from benchlay.report.cautions import CAUTIONS
 from benchlay.report.details import BeamRow, Ledger, TraceResult
 from benchlay.report.numbers import settled, shown
 from benchlay.report.words import tame
@@ -14,10 +15,11 @@ _HEADINGS = (
 
 
 def trace_text(result: TraceResult) -> str:
-    """Write the beams in their order, then each source's ledger."""
+    """Write the beams in their order, then each source's ledger, then the cautions."""
     blocks = [f"{tame(result.layout)}: {len(result.beams)} beams in state {result.state}"]
     blocks.append(_table([_HEADINGS, *(_beam_cells(beam) for beam in result.beams)]))
     blocks += [_ledger_text(entry) for entry in result.ledger]
+    blocks.append("\n".join(f"caution: {caution}" for caution in CAUTIONS))
     return "\n\n".join(blocks) + "\n"
 
 

@@ -24,6 +24,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable
 
+from benchlay.exposure.cautions import SHORT
 from benchlay.named import NamedTuple
 from benchlay.sheets.frame import WIDTH_MM, frame, rectangle
 from benchlay.sheets.layers import BeamLook, sheet_layers
@@ -33,10 +34,7 @@ from benchlay.sheets.scale import SCALES, SIZES_MM, NothingFitsError, Window, fr
 from benchlay.sheets.tables import Column, Drawn, Table, table
 from benchlay.sheets.title_block import HEIGHT_MM, TitleFields, title_block
 
-CAUTION = (
-    "A calculation aid, not an approval: the standard in force, local rules and the laser safety "
-    "officer decide."
-)
+CAUTION = SHORT
 _CLEAR_MM = 2.0
 _PAD_MM = 1.4
 _LEAST_BESIDE_MM = 40.0  # narrower is of no use

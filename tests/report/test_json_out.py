@@ -127,7 +127,7 @@ def test_the_keys_and_numbers_of_a_beam():
         "x.yaml", "as drawn", (beam(),), {"M1": Pose((1.0, 2.0, 3.0), 135.0, 0.0)}, (ledger,)
     )
     document = read_back(trace_document(result))
-    assert list(document) == ["state", "beams", "placed", "ledger"]
+    assert list(document) == ["state", "beams", "placed", "ledger", "cautions"]
     (written,) = document["beams"]
     assert list(written) == BEAM_KEYS
     assert written["direction"] == [1.0, 0.0, 0.0]

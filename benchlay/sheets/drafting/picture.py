@@ -5,6 +5,7 @@ from __future__ import annotations
 import re
 from collections.abc import Iterable
 
+from benchlay.exposure.cautions import SHORT
 from benchlay.findings import Severity
 from benchlay.layout.layout import Layout
 from benchlay.placing.placed import PlacedState
@@ -92,10 +93,7 @@ def plan_picture(
     )
 
 
-_CAUTION = (
-    "A calculation aid, not an approval: the standard, local rules and the laser safety officer "
-    "decide. Survey stray light on the bench itself, at low power."
-)
+_CAUTION = f"{SHORT} Survey stray light on the bench itself, at low power."
 
 
 def title_fields(layout: Layout, document_type: str, sha256: str = "") -> TitleFields:
