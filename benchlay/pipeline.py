@@ -196,6 +196,7 @@ def review_files(
     """Review a layout in full; also return every file of the review, by name."""
     from benchlay import __version__
     from benchlay.report.json_out import check_document, dumps, faults_document, trace_document
+    from benchlay.results.tables import tables
 
     try:
         reviewed, checked = _reviewed(data, file, on=on, state=state, in_full=True)
@@ -213,7 +214,7 @@ def review_files(
         "beams.json": trace_document(_traced(checked.trace, file, checked.states[0])),
     }
     files = {name: dumps(document).encode("ascii") for name, document in documents.items()}
-    return reviewed, files | drawings
+    return reviewed, files | tables(checked.trace.placed) | drawings
 
 
 def _remedies(data: bytes, file: str, checked: Checked, reviewed: Review, on: date) -> Remedies:

@@ -12,6 +12,8 @@ if TYPE_CHECKING:
     from benchlay.making.parts import Part
     from benchlay.sheets.elevation.contents import Elevation
     from benchlay.sheets.primitives import Sheet
+    from benchlay.sheets.shop.listing import Page
+    from benchlay.sheets.shop.rows import Rows
     from benchlay.tracing.trace import Trace
     from benchlay.zones import Zones
 
@@ -96,6 +98,34 @@ def _panels(subject: Subject) -> Iterator[Planned]:
         yield Planned(f"panel-{part.name}", panel)
 
 
+def _setting_out(subject: Subject) -> Iterator[Planned]:
+    from benchlay.sheets.shop.setting_out import setting_out
+
+    yield from _listed(setting_out(subject.trace.placed), subject)
+
+
+def _parts(subject: Subject) -> Iterator[Planned]:
+    from benchlay.sheets.shop.parts_list import parts_list
+
+    yield from _listed(parts_list(subject.trace.placed.base), subject)
+
+
+def _listed(rows: Rows, subject: Subject) -> Iterator[Planned]:
+    """Plan the sheets of a table: one, or as many as it takes."""
+    from benchlay.sheets.drafting import title_fields
+    from benchlay.sheets.shop.listing import listing, pages
+
+    layout = subject.trace.placed.base.layout
+    fields = title_fields(layout, rows.title, subject.sha256)
+    for n, part in enumerate(pages(rows, layout), start=1):
+        name = rows.name if n == 1 else f"{rows.name}-{n}"
+
+        def sheet(number: str, part: Page = part, name: str = name) -> Sheet:
+            return listing(rows, part, name, layout, fields._replace(sheet=number))
+
+        yield Planned(name, sheet)
+
+
 def _cuts(subject: Subject) -> Iterator[Planned]:
     from benchlay.making.parts import parts_of
     from benchlay.sheets.shop.cutting import cut_sheet
@@ -129,6 +159,8 @@ SHEETS: Mapping[str, Callable[[Subject], Iterable[Planned]]] = {
     "elevation": _elevations,
     "safety": _safety,
     "panel": _panels,
+    "setting-out": _setting_out,
+    "parts": _parts,
     "cut": _cuts,
 }
 """All kinds of sheet there are, by name, in the order of the set.

@@ -1,0 +1,131 @@
+"""Parts list: what has to be there before the bench is set out, like things once."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Iterable, Iterator
+from math import degrees
+from typing import TypeAlias
+
+from benchlay.document.record import Record
+from benchlay.elements.mount import Holder
+from benchlay.geometry.solid import Solid
+from benchlay.layout.layout import Layout
+from benchlay.making.parts import parts_of
+from benchlay.placing.placed import PlacedElement, PlacedSource, PlacedState
+from benchlay.sheets.shop.rows import Heading, Rows
+
+_HEADINGS = (
+    Heading("item", 12.0),
+    Heading("quantity", 18.0),
+    Heading("what", 36.0),
+    Heading("data", 150.0),
+    Heading("names", 118.0),
+)
+# How a thing is set is no matter of which thing it is.
+_PLACE = re.compile(r"Span\([^()]*\)")  # where in the file a value is written
+_SETTINGS = frozenset({"axis", "closed", "sends", "wedge_towards"})
+_Thing: TypeAlias = tuple[str, str, str, str, str]  # group, what, data, what else is alike, name
+_ORDER = ("source", "element", "mount", "post", "foot", "panel", "lid")
+
+
+def parts_list(state: PlacedState) -> Rows:
+    """Return the parts list of the bench as drawn, with what is taken out in that state."""
+    together: dict[tuple[int, str, str, str], list[str]] = {}
+    for group, what, data, alike, name in _things(state):
+        together.setdefault((_ORDER.index(group), what, data, alike), []).append(name)
+    rows = tuple(
+        (item, len(names), what, data, ", ".join(sorted(names)))
+        for item, ((_, what, data, _), names) in enumerate(sorted(together.items()), start=1)
+    )
+    notes = (
+        "Counted from the layout: things of the same kind and data share an item. Elements that "
+        "a state takes out are counted too. Lengths in mm; posts run from the bench's top to the "
+        "mount. Coatings "
+        "stand in the layout; elements that differ in them are items of their own. Screws, "
+        "clamps, cables and switches are not in the layout and not listed.",
+    )
+    return Rows("parts", "Parts list", _HEADINGS, rows, notes)
+
+
+def _things(state: PlacedState) -> Iterator[_Thing]:
+    for name in sorted(state.sources):
+        yield "source", "source", _source_data(state.sources[name]), "", name
+    for name in sorted(state.elements):
+        item = state.elements[name]
+        data, alike = _data(item.element.record)
+        yield "element", item.element.kind, data, alike, name
+        yield from _held(item, name)
+    yield from _sheets(state.layout)
+
+
+def _source_data(placed: PlacedSource) -> str:
+    lines = sorted({line.wavelength_nm for line in placed.source.lines})
+    words = " + ".join(f"{nm:g} nm" for nm in lines)
+    body = placed.source.body
+    if body is None:
+        return words
+    return f"{words}, body {body.length_mm:g} x {body.width_mm:g} x {body.height_mm:g}"
+
+
+def _data(record: Record) -> tuple[str, str]:
+    """Return what a record says in words, and what it says that no words here are found for.
+
+    Coatings and the like stand in the layout; things that differ in them are other things.
+    """
+    out, others = [], []
+    for attribute, spec in record.KEYS.items():
+        value = getattr(record, attribute)
+        if spec.name in _SETTINGS or value is None:
+            continue
+        text = _value(degrees(value) if attribute.endswith("_rad") else value)
+        if not text:
+            others.append(f"{spec.name} {_PLACE.sub('', repr(value))}")
+        elif value not in (spec.default, 0.0) or (attribute.endswith("_mm") and value != 0.0):
+            out.append(f"{spec.name} {text}{' deg' if attribute.endswith('_rad') else ''}")
+    return ", ".join(out), "; ".join(others)
+
+
+def _value(value: object) -> str:
+    """Return plain values in words; tables inside a record have none that fit a line."""
+    if isinstance(value, bool):
+        return "yes" if value else "no"
+    if isinstance(value, float | int):
+        return f"{value:.6g}"
+    if isinstance(value, str):
+        return value
+    if isinstance(value, tuple) and value and all(isinstance(v, float | int) for v in value):
+        return " x ".join(f"{v:.6g}" for v in value)
+    return ""
+
+
+def _held(item: PlacedElement, name: str) -> Iterator[_Thing]:
+    holder: Holder = item.holder
+    if holder.box is not None:
+        depth, width, height = _extents(holder.box)
+        yield "mount", "mount", f"width {width:g}, height {height:g}, depth {depth:g}", "", name
+    for solid in holder.upright:
+        length, width, height = _extents(solid)
+        if solid.part == "post" and solid.cylinder is not None:
+            yield "post", "post", f"diameter {2 * solid.cylinder[2]:g}, length {height:g}", "", name
+        elif solid.part == "foot":
+            yield "foot", "foot", f"{width:g} x {length:g}, thickness {height:g}", "", name
+
+
+def _extents(solid: Solid) -> tuple[float, ...]:
+    def span(values: Iterable[float]) -> float:
+        ordered = sorted(values)
+        return round(ordered[-1] - ordered[0], 6)
+
+    return tuple(span(p[k] for p in solid.points) for k in range(3))
+
+
+def _sheets(layout: Layout) -> Iterator[_Thing]:
+    for part in parts_of(layout):
+        width, height = (round(v, 2) for v in part.blank.flat_mm)
+        data = (
+            f"{part.material or 'material not stated'}, t = {part.thickness_mm:g}, flat {width:g} "
+            f"x {height:g}, sheet panel-{part.name}"
+        )
+        for name in part.names:
+            yield part.kind, part.kind, data, "", name
