@@ -12,6 +12,7 @@ from collections.abc import Callable, Mapping
 
 from benchlay.placing.placed import Placed
 from benchlay.report.numbers import rounded
+from benchlay.sheets.shop.drilling import drilling_rows
 from benchlay.sheets.shop.parts_list import parts_list
 from benchlay.sheets.shop.rows import Cell, Rows
 from benchlay.sheets.shop.setting_out import setting_out
@@ -19,6 +20,7 @@ from benchlay.sheets.shop.setting_out import setting_out
 TABLES: Mapping[str, Callable[[Placed], Rows]] = {
     "parts": lambda placed: parts_list(placed.base),
     "setting-out": setting_out,
+    "drilling": lambda placed: drilling_rows(placed.base),
 }
 """All tables there are, by the name of their file."""
 

@@ -98,6 +98,15 @@ def _panels(subject: Subject) -> Iterator[Planned]:
         yield Planned(f"panel-{part.name}", panel)
 
 
+def _drilling(subject: Subject) -> Iterator[Planned]:
+    from benchlay.sheets.shop.drilling import drilling_sheet
+
+    def sheet(number: str) -> Sheet:
+        return drilling_sheet(subject.trace.placed.base, subject.sha256, number)
+
+    yield Planned("drilling", sheet)
+
+
 def _setting_out(subject: Subject) -> Iterator[Planned]:
     from benchlay.sheets.shop.setting_out import setting_out
 
@@ -159,6 +168,7 @@ SHEETS: Mapping[str, Callable[[Subject], Iterable[Planned]]] = {
     "elevation": _elevations,
     "safety": _safety,
     "panel": _panels,
+    "drilling": _drilling,
     "setting-out": _setting_out,
     "parts": _parts,
     "cut": _cuts,

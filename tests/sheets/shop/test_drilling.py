@@ -1,0 +1,89 @@
+"""The drilling sheet: which holes, where, and how far from the bolts; read back from the DXF."""
+
+import io
+from pathlib import Path
+
+import ezdxf
+import pyogrio
+import pytest
+import shapely
+
+from benchlay import pipeline
+from benchlay.sheets.shop.drilling import drilling_rows, drilling_sheet, used_holes
+from benchlay.writers import dxf
+
+ROOT = Path(__file__).parents[3]
+BENCHES = sorted((ROOT / "layouts").glob("*.yaml"))
+TEXT = """
+bench: {size: [900, 600], beam_height: 100%s}
+sources:
+  red: {wavelength: 633, power: 8 mW, beam: {waist_radius: 0.5}, at: [100, 200], heading: 0}
+elements:
+  M1: {kind: mirror, at: [410, 203], facing: 180, diameter: 25.4, metal: silver,
+       mount: {post: [0, 0], slots: [[0, -30], [0, 30]]}}
+  M2: {kind: mirror, at: [602, 297], facing: 180, diameter: 25.4, metal: silver,
+       mount: {post: [0, 0]}}
+  T1: {kind: target, at: [810, 200], facing: 180}
+  far: {kind: target, at: [1200, 200], facing: 180}
+  P1: {kind: aperture, at: [300, 200], facing: 180, opening: 5}
+"""
+GRID = ", holes: {pitch: 25, first: [12.5, 12.5]}"
+
+
+def base(text):
+    return pipeline.place(pipeline.read("x.yaml", text)).base
+
+
+def test_holes_by_hand():
+    holes, without = used_holes(base(TEXT % GRID))
+    found = {(h.use, h.by): (h.at, h.column, h.row, h.reach_mm) for h in holes if h.use != "M1"}
+    # Holes lie at 12.5 + 25 n. M2's post at (602, 297): hole (612.5, 287.5) is nearest.
+    assert found["M2", "foot"] == ((612.5, 287.5), 25, 12, pytest.approx((10.5**2 + 9.5**2) ** 0.5))
+    # A target's own post stands behind its face, which looks to -x: in the column of 812.5.
+    assert found["T1", "fork"][1] == 33
+    # Facing 180 turns the slots' left to the plan's -y: bolts at (410, 233) and (410, 173).
+    slots = [(h.at, round(h.reach_mm, 6)) for h in holes if h.use == "M1"]
+    assert slots == [
+        ((412.5, 162.5), round((2.5**2 + 10.5**2) ** 0.5, 6)),
+        ((412.5, 237.5), round((2.5**2 + 4.5**2) ** 0.5, 6)),
+    ]
+    assert without == ["far"]
+
+
+def test_without_a_grid_holes_are_drilled_where_posts_stand():
+    rows = drilling_rows(base(TEXT % ""))
+    places = {row[5]: (row[3], row[4], row[7]) for row in rows.rows}
+    assert places["M1"] == (410.0, 203.0, "drill")
+    assert "no grid" in rows.notes[0]
+
+
+def test_two_readers_find_the_holes_where_the_table_says(tmp_path):
+    state = base(TEXT % GRID)
+    data = dxf.write(drilling_sheet(state, "0" * 64, "1/1"))
+    doc = ezdxf.read(io.StringIO(data.decode()))
+    assert not doc.audit().errors
+    holes = [h.at for h in used_holes(state)[0]]
+    first = sorted(
+        (c.dxf.center.y, c.dxf.center.x) for c in doc.modelspace().query("CIRCLE[layer=='BENCH']")
+    )
+    assert first == [
+        pytest.approx((y, x), abs=1e-6) for x, y in sorted(holes, key=lambda p: p[::-1])
+    ]
+    (tmp_path / "d.dxf").write_bytes(data)
+    _, _, shapes, (layers, kinds) = pyogrio.raw.read(
+        tmp_path / "d.dxf", columns=["Layer", "SubClasses"]
+    )
+    rounds = [
+        shapely.from_wkb(shape).bounds
+        for shape, layer, kind in zip(shapes, layers, kinds, strict=True)
+        if layer == "BENCH" and "AcDbCircle" in kind
+    ]
+    second = sorted(((y0 + y1) / 2, (x0 + x1) / 2) for x0, y0, x1, y1 in rounds)
+    assert second == [pytest.approx(place, abs=1e-6) for place in first]
+    datum = drilling_rows(state).rows
+    assert sorted((row[4] + 12.5, row[3] + 12.5) for row in datum) == first
+
+
+@pytest.mark.parametrize("bench", BENCHES, ids=lambda b: b.stem)
+def test_the_sheet_of_every_bench_can_be_read(bench, legible):
+    legible(drilling_sheet(pipeline.place(pipeline.read(bench)).base, "0" * 64, "3/12"))
