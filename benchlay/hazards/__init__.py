@@ -59,7 +59,7 @@ def _of_state(context: Context, limits: LimitTable, zones: Zones, variant: int) 
         sources=sources_of(context, variant),
         accessible=accessible(context, reach, struck),
         distances=distances(context, variant, reach.in_reach),
-        eyewear=eyewear(context, reach),
+        eyewear=eyewear(context, reach, struck),
         diffuse=viewing(struck),
         controlled_area_m2=places.area_m2,
         people=places.people,

@@ -5,12 +5,10 @@ from __future__ import annotations
 import math
 
 from benchlay.checks import Context
-from benchlay.exposure.apertures import circle_area_m2
 from benchlay.exposure.classes import Classification
-from benchlay.exposure.viewing import NEAREST_M
 from benchlay.hazards.classes import classify, name_of, statement, together, worst
-from benchlay.hazards.lines import by_line, lit, of_line
-from benchlay.hazards.matt import Struck
+from benchlay.hazards.lines import aperture_mm, by_line, lit, of_line
+from benchlay.hazards.matt import Struck, met_at_m, met_w
 from benchlay.hazards.model import Accessible, LineReached, Reached, Scattered
 from benchlay.hazards.reach import INSIDE, OUTSIDE, Reach, Way, strongest
 from benchlay.named import NamedTuple
@@ -106,8 +104,8 @@ def _line(context: Context, way: Way) -> tuple[LineReached, Classification | str
         found_lit.power_w,
         None if limit is None else limit.accessible_w,
         None if limit is None else found_lit.ratio,
-        int(context.numbers[found_lit.beam]),
-        context.left_at(found_lit.beam),
+        None if found_lit.beam is None else int(context.numbers[found_lit.beam]),
+        found_lit.from_,
         found_lit.at,
     )
     return line, found
@@ -119,13 +117,11 @@ def _scattered(
     """Return the strongest scattered light, as it meets an eye's aperture at the least distance."""
     found = []
     for one in struck:
-        distance = NEAREST_M if where == INSIDE else one.outside_m
+        distance = met_at_m(one, where)
         if distance is None:
             continue
         told = context.limits[variant, one.source, one.wavelength_nm]
-        aperture = 7.0 if told.limit is None else told.limit.aperture_mm
-        irradiance = one.reflectance * one.power_W / (math.pi * distance**2)
-        power = min(one.power_W, irradiance * circle_area_m2(aperture))
+        power = met_w(one, distance, aperture_mm(told))
         name = name_of(classify(one.wavelength_nm, power, told.pulse))
         ratio = math.inf if told.limit is None else power / told.limit.accessible_w
         found.append((ratio, Scattered(one.surface, one.wavelength_nm, distance, power, name)))

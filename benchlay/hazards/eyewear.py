@@ -9,7 +9,7 @@ density too; pulses need one for their mode and one, D, for the mean.
 from __future__ import annotations
 
 import math
-from collections.abc import Sequence
+from collections.abc import Iterator, Sequence
 
 import numpy as np
 
@@ -24,7 +24,8 @@ from benchlay.exposure.eyewear import (
     pulsed_scale,
 )
 from benchlay.exposure.together import Ratios, densities, eye_ratios
-from benchlay.hazards.lines import Lit, by_line, lit, of_line
+from benchlay.hazards.lines import Lit, aperture_mm, by_line, held, lit, of_line
+from benchlay.hazards.matt import Struck, met_at_m, met_w
 from benchlay.hazards.model import Eyewear
 from benchlay.hazards.reach import INSIDE, OUTSIDE, Reach, Way, narrowest_mm
 from benchlay.named import NamedTuple
@@ -49,10 +50,11 @@ class _Wave(NamedTuple):
     levels: tuple[_Levels, ...]
 
 
-def eyewear(context: Context, reach: Reach) -> tuple[Eyewear, ...]:
+def eyewear(context: Context, reach: Reach, struck: tuple[Struck, ...]) -> tuple[Eyewear, ...]:
     """Return what eyewear must do in a state: a row for each place and wavelength.
 
-    Every wavelength of the state has its row, also where no light of it can be met.
+    Every wavelength of the state has its row, also where no light of it can be met. Scattered
+    light counts too, as that of a point.
     """
     start, scene = context.trace.beams.start, context.trace.scene
     rows = context.beams_of(reach.variant)
@@ -63,7 +65,16 @@ def eyewear(context: Context, reach: Reach) -> tuple[Eyewear, ...]:
     out: list[Eyewear] = []
     for where, way in places:
         found = [
-            _wave(context, where, way, float(scene.wavelengths_nm[wave]), wave) for wave in waves
+            _wave(
+                where,
+                float(scene.wavelengths_nm[wave]),
+                [
+                    *_beams(context, way, wave),
+                    *_scattered(context, reach.variant, struck, where, wave),
+                ],
+                context,
+            )
+            for wave in waves
         ]
         together = densities([one.ratios for one in found])
         out += [_finished(one, density) for one, density in zip(found, together, strict=True)]
@@ -85,35 +96,64 @@ def _finished(wave: _Wave, together: float) -> Eyewear:
     )
 
 
-def _wave(context: Context, where: str, way: Way, nm: float, wave: int) -> _Wave:
-    keys = [key for key in by_line(context, way) if key[1] == wave]
-    lines = [lit(context, of_line(context, way, key)) for key in keys]
-    if not lines:
+class _Borne(NamedTuple):
+    """Light of one line that eyewear must bear: power, W, and diameter (63 %), mm."""
+
+    lit: Lit
+    watts: float
+    d63_mm: float
+
+
+def _beams(context: Context, way: Way, wave: int) -> Iterator[_Borne]:
+    """Yield the worst beam of each line of a wavelength."""
+    for key in by_line(context, way):
+        if key[1] == wave:
+            own = of_line(context, way, key)
+            yield _Borne(lit(context, own), *_hardest(context, own))
+
+
+def _scattered(
+    context: Context, variant: int, struck: tuple[Struck, ...], where: str, wave: int
+) -> Iterator[_Borne]:
+    """Yield the light that surfaces scatter, where it can be met nearest."""
+    nm = float(context.trace.scene.wavelengths_nm[wave])
+    for one in struck:
+        distance = met_at_m(one, where)
+        if one.wavelength_nm != nm or distance is None:
+            continue
+        told = context.limits[variant, one.source, nm]
+        wide = aperture_mm(told)
+        power = met_w(one, distance, wide)
+        place = None, f"scattered from {one.surface}", one.at
+        yield _Borne(held((one.source, nm, told), place, power), power, wide)
+
+
+def _wave(where: str, nm: float, borne: Sequence[_Borne], context: Context) -> _Wave:
+    if not borne:
         nothing = Eyewear(where, nm, 0.0, 0.0, None, None, None, 0.0, *(None,) * 6)
         return _Wave(nothing, {}, ())
-    worst = max(lines, key=lambda line: line.ratio)
-    hardest = [_hardest(context, of_line(context, way, key)) for key in keys]
-    levels = tuple(
-        _levels(nm, watts, line.told, width)
-        for line, (watts, width) in zip(lines, hardest, strict=True)
-    )
-    mpe = None if worst.told.limit is None else worst.told.limit.mpe_w_m2
+    worst = max((one.lit for one in borne), key=lambda one: one.ratio)
+    limit = worst.told.limit
+    density = None
+    if limit is not None:
+        density = float(optical_density(worst.exposure_w_m2, limit.mpe_w_m2))
     row = Eyewear(
         where=where,
         wavelength_nm=nm,
         optical_density=None,
-        alone=None if mpe is None else float(optical_density(worst.exposure_w_m2, mpe)),
+        alone=density,
         scale=None,
-        beam_mm=min(width for _, width in hardest),
+        beam_mm=min(one.d63_mm for one in borne),
         scale_1_mm=None,
         exposure_W_m2=worst.exposure_w_m2,
-        mpe_W_m2=mpe,
-        time_base_s=None if worst.told.limit is None else worst.told.limit.time_base_s,
+        mpe_W_m2=None if limit is None else limit.mpe_w_m2,
+        time_base_s=None if limit is None else limit.time_base_s,
         source=worst.source,
-        beam=int(context.numbers[worst.beam]),
-        from_=context.left_at(worst.beam),
+        beam=None if worst.beam is None else int(context.numbers[worst.beam]),
+        from_=worst.from_,
         at=worst.at,
     )
+    levels = tuple(_levels(nm, one.watts, one.lit.told, one.d63_mm) for one in borne)
     return _Wave(row, ratios_of(worst), levels)
 
 

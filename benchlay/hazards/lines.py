@@ -17,13 +17,14 @@ _WIDEST_MM = 11.0
 
 
 class Lit(NamedTuple):
-    """The strongest beam of one line in reach, as the limiting aperture takes it."""
+    """The strongest light of one line in reach, as the limiting aperture takes it."""
 
     source: str
     wavelength_nm: float
     told: LineLimit
-    beam: int  # of the trace
-    at: Place  # from where on it can be reached
+    beam: int | None  # of the trace; None for scattered light
+    from_: str
+    at: Place  # from where on it can be reached; the surface that scatters it
     power_w: float  # through the aperture
     exposure_w_m2: float  # over the aperture
     ratio: float  # to the limit; infinite where there is none
@@ -47,16 +48,31 @@ def lit(context: Context, way: Way) -> Lit:
     start, first = context.trace.beams.start, int(way.beams[0])
     source, nm = context.source_of(first), context.wavelength_nm(first)
     told = context.limits[int(start.variant[first]), source, nm]
-    aperture_mm = _WIDEST_MM if told.limit is None else told.limit.aperture_mm
-    best, power = strongest(context, way, aperture_mm)
+    best, power = strongest(context, way, aperture_mm(told))
     beam = int(way.beams[best])
-    return Lit(
-        source,
-        nm,
-        told,
-        beam,
-        context.point(start.position[beam] + way.from_mm[best] * start.direction[beam]),
-        power,
-        power / circle_area_m2(aperture_mm),
-        math.inf if told.limit is None else power / told.limit.accessible_w,
-    )
+    at = context.point(start.position[beam] + way.from_mm[best] * start.direction[beam])
+    return held((source, nm, told), (beam, context.left_at(beam), at), power)
+
+
+def held(
+    line: tuple[str, float, LineLimit], place: tuple[int | None, str, Place], power_w: float
+) -> Lit:
+    """Return light through the aperture held against the limit of its line.
+
+    Parameters
+    ----------
+    line : (str, float, LineLimit)
+        Source, wavelength in nm, limit and pulses.
+    place : (int or None, str, Place)
+        Beam, what it left, and where it can be reached.
+    power_w : float
+        Through the aperture, W.
+    """
+    told = line[2]
+    ratio = math.inf if told.limit is None else power_w / told.limit.accessible_w
+    return Lit(*line, *place, power_w, power_w / circle_area_m2(aperture_mm(told)), ratio)
+
+
+def aperture_mm(told: LineLimit) -> float:
+    """Return the diameter of a line's limiting aperture, mm; the widest where there is no limit."""
+    return _WIDEST_MM if told.limit is None else told.limit.aperture_mm

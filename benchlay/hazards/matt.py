@@ -12,8 +12,10 @@ import shapely
 from shapely.geometry.base import BaseGeometry
 
 from benchlay.checks import Context
+from benchlay.exposure.apertures import circle_area_m2
 from benchlay.exposure.viewing import NEAREST_M
 from benchlay.hazards.model import Diffuse, Place
+from benchlay.hazards.reach import INSIDE
 from benchlay.named import NamedTuple
 from benchlay.zones import LimitTable
 from benchlay.zones.diffuse import Spot, spots
@@ -84,6 +86,17 @@ def _struck(
         round(point / _MM_PER_M, _DECIMALS),
         _outside_m(spot, enclosed),
     )
+
+
+def met_w(one: Struck, distance_m: float, aperture_mm: float) -> float:
+    """Return what an aperture takes of a surface's light at a distance, along its normal, W."""
+    irradiance = one.reflectance * one.power_W / (math.pi * distance_m**2)
+    return min(one.reflectance * one.power_W, irradiance * circle_area_m2(aperture_mm))
+
+
+def met_at_m(one: Struck, where: str) -> float | None:
+    """Return how near to a surface its light can be met on one side of the enclosure, m."""
+    return NEAREST_M if where == INSIDE else one.outside_m
 
 
 def _outside_m(spot: Spot, enclosed: BaseGeometry | None) -> float | None:

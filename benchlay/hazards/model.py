@@ -134,7 +134,7 @@ class Eyewear(NamedTuple):
     itself. `exposure_W_m2` is the mean irradiance over the limiting aperture at the worst place.
     `scale` holds the numbers for every mode that is needed, at the narrowest place, `beam_mm`
     wide (63 % of the power); `scale_1_mm` the same where the beam is taken as no narrower than
-    1 mm. Both are None where the limit is not exceeded.
+    1 mm. Both are None where the limit is not exceeded. Of scattered light `beam` is None.
     """
 
     where: str

@@ -163,8 +163,10 @@ def place(where: str, state: StateHazards) -> str:
 
 def beam_of(row: Eyewear | Distance) -> str:
     """Say which beam a row is about."""
-    if row.beam is None:
+    if row.from_ is None:
         return "no light there"
+    if row.beam is None:
+        return row.from_
     if row.from_ == row.source:
         return f"{row.source} itself"
     return f"{row.from_}, beam {row.beam}"

@@ -20,6 +20,8 @@ def hazard_lines(states: tuple[StateHazards, ...]) -> Iterator[str]:
 
 
 def _lines(state: StateHazards) -> Iterator[str]:
+    if not state.sources:
+        yield "no source emits in this state"
     for source in state.sources:
         yield (
             f"source {source.source}, {words.wavelength(source.wavelength_nm)}, "
@@ -30,7 +32,7 @@ def _lines(state: StateHazards) -> Iterator[str]:
     yield from _distances(state)
     yield from _diffuse(state)
     yield from words.who(state)
-    yield from (f"holds {line}" for line in state.holds[1:2])
+    yield from (f"holds {line}" for line in state.holds if line.startswith("for exposures"))
     yield from (f"not computed: {line}" for line in state.not_computed)
 
 
@@ -51,7 +53,7 @@ def _eyewear(state: StateHazards) -> Iterator[str]:
         if row.optical_density == 0.0:
             yield head + words.NOT_EXCEEDED
         else:
-            yield f"{head}OD {words.density(row)}, {words.scale(row)}, from {words.beam_of(row)}"
+            yield f"{head}OD {words.density(row)}, {words.scale(row)}; worst: {words.beam_of(row)}"
     if len({row.wavelength_nm for row in state.eyewear}) > 1:
         yield "one set of eyewear must do for all these wavelengths at once"
 

@@ -188,6 +188,47 @@ def test_the_size_of_a_spot_brings_the_viewing_distance_down():
     assert row.angle_mrad == pytest.approx(spot / row.distance_m)
 
 
+LEAK = """
+bench: {size: [1000, 600], medium: vacuum}
+sources:
+  green: {wavelength: 532, power: 100 W, beam: {waist_radius: 0.5}, at: [300, 300], heading: 0}
+elements:
+  T1: {kind: target, at: [900, 300], facing: 180, diffuse: 1}
+enclosure:
+  material: black
+  panels:
+    south: {from: [0, 0], to: [1000, 0]}
+    east: {from: [1000, 0], to: [1000, 600]}
+    north: {from: [1000, 600], to: [0, 600]}
+    west:
+      from: [0, 600]
+      to: [0, 0]
+      openings: {view: {along: 200, width: 200, from_height: 50, to_height: 250}}
+  lids:
+    top: {height: 300, outline: [[0, 0], [1000, 0], [1000, 600], [0, 600]]}
+materials: {black: {thickness: 2, diffuse: 0, specular: 0}}
+limits: {eyes: {seated: [900, 1200], standing: [900, 1200]}}
+"""
+
+
+def test_scattered_light_that_gets_out_asks_for_eyewear_too():
+    found = hazards(LEAK)["as drawn"]
+    assert found.accessible.counts == "outside"
+    assert found.accessible.outside.lines == ()
+    scattered = found.accessible.outside.scattered
+    assert scattered.surface == "T1"
+    assert scattered.distance_m == pytest.approx(0.9, rel=1e-6)  # to the plane of the opening
+    outside = next(row for row in found.eyewear if row.where == "outside")
+    irradiance = 100.0 / (math.pi * 0.9**2)
+    assert outside.exposure_W_m2 == pytest.approx(irradiance, rel=1e-6)
+    assert outside.optical_density == pytest.approx(math.log10(irradiance / 10.0), abs=1e-6)
+    assert (outside.from_, outside.beam) == ("scattered from T1", None)
+    assert outside.scale == "D LB1"  # 39 W/m², up to 100 W/m²; OD 0.6
+    # 39.3 W/m² through 7 mm: 1.5 mW, above 0.39 mW (class 1) and 1 mW (class 2), below 5 mW.
+    assert found.accessible.class_as_modelled == "3R"
+    assert "scattered from T1" in found.accessible.outside.governs
+
+
 def test_light_that_has_no_limit_is_never_passed_over():
     text = OPEN.replace("532, power: 150 mW", "170, power: 1 mW")
     found = hazards(text)["as drawn"]

@@ -16,7 +16,7 @@ hazards in as drawn (IEC 60825-1:2014)
   source green, 532 nm, 0.15 W: within the limit of class 3B as modelled; 0 m to 289 m (far-field formula 289 m)
   in reach (outside the enclosure, shut as drawn): no light that was followed gets there: within the limit of class 1 as modelled
   inside: within the limit of class 3B as modelled; the worst: 532 nm from green
-  eyewear inside, panels open, 532 nm: OD 2.6, D LB5, from green itself
+  eyewear inside, panels open, 532 nm: OD 2.6, D LB5; worst: green itself
   eyewear outside, 532 nm: limit not exceeded as modelled
   scattered from S1, 532 nm: look at it from 21.9 mm or more
   controlled area … m² in plan; inside it only with the eyewear of this state
@@ -41,8 +41,8 @@ hazards in service (IEC 60825-1:2014)
   source green, 532 nm, 0.15 W: within the limit of class 3B as modelled; 0 m to 289 m (far-field formula 289 m)
   in reach (panel east is open): within the limit of class 3B as modelled; the worst: 532 nm from green
   outside the enclosure: within the limit of class 3B as modelled; the worst: 532 nm from S1.front
-  eyewear inside, panels open, 532 nm: OD 2.6, D LB5, from green itself
-  eyewear outside, 532 nm: OD 2.6, D LB5, from S1.front, beam 1
+  eyewear inside, panels open, 532 nm: OD 2.6, D LB5; worst: green itself
+  eyewear outside, 532 nm: OD 2.6, D LB5; worst: S1.front, beam 1
   beam in reach, 532 nm from S1.front, beam 1: 0 m to 288 m (far-field formula 289 m); stopped at 2.5 m, a wall of the room
   beam in reach, 532 nm from green itself: 0 m to 289 m (far-field formula 289 m); stopped at 0.4 m, 'S1'
   scattered from wall, 532 nm: look at it from 69.1 mm or more
