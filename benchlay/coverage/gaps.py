@@ -12,7 +12,7 @@ from math import dist, hypot, inf
 
 from benchlay.coverage.blockers import Place, Window
 from benchlay.coverage.enclosed import Enclosed, from_line, windows_of
-from benchlay.coverage.planar import Convex, Pair, cut, least_width, middle
+from benchlay.coverage.planar import Convex, Pair, cut, hull, least_width, middle
 from benchlay.layout.enclosure import Panel
 from benchlay.named import NamedTuple
 from benchlay.zones.enclosure_line import inside
@@ -177,7 +177,7 @@ def _lids(enclosed: Enclosed) -> Iterator[Gap]:
     for lid in enclosed.lids_off:
         corners = enclosed.enclosure.lids[lid.name].outline
         x, y = middle(max(lid.pieces, key=lambda piece: least_width(piece)))
-        width = min(max(c) - min(c) for c in zip(*corners, strict=True))
+        width = least_width(hull(corners))
         at = (x, y, lid.height_mm)
         yield Gap(f"lid {lid.name}", SHEET, (lid.name,), at, width, every, (0.0, 0.0))
 

@@ -10,6 +10,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 from itertools import pairwise
+from math import atan2
 
 import numpy as np
 
@@ -24,7 +25,8 @@ from benchlay.scene.tables import PARTS, Scene
 from benchlay.zones.enclosure_line import inside
 
 _EXACT_MM = 1e-4  # to which the ends of a stretch are found: far below what is set on a bench
-# Beside the critical points, so many steps, for edges that are neither upright nor in one plane.
+# Beside the critical points, so many steps, for edges that are not upright: of what is seen over
+# or under something, the ends are found from there by halving.
 _STEPS = 12
 _SAME_MM = 1e-3
 _HOLDS_BACK = ("post", "foot", "source")
@@ -111,6 +113,11 @@ def sees(enclosed: Enclosed, gap: Gap, place: Place) -> bool:
 
 def guilty(enclosed: Enclosed, gap: Gap, leg: Leg) -> bool:
     """Whether a mirror anywhere on a leg could throw light out through a gap."""
+    # Bodies only hold back: where the sheets alone hide a gap, they need not be looked at.
+    sheets = tuple(one for one in enclosed.blockers if isinstance(one, Prism))
+    bare = enclosed._replace(blockers=sheets)
+    if not any(sees(bare, gap, leg.at(way)) for way in _trials(bare, gap, leg)):
+        return False
     return any(sees(enclosed, gap, leg.at(way)) for way in _trials(enclosed, gap, leg))
 
 
@@ -149,22 +156,56 @@ def _edge(
 
 
 def _trials(enclosed: Enclosed, gap: Gap, leg: Leg) -> Iterator[float]:
-    """Yield the middles between critical points of a leg, the middle of the whole first."""
+    """Yield the middles between critical points of a leg, the middle of the whole first.
+
+    Critical is where the leg crosses a line through two upright edges: one of the gap or of a
+    baffle, the other of anything; and one that touches a body on its way from the gap.
+    """
     yield 0.5 * (leg.from_mm + leg.to_mm)
     step = (leg.to_mm - leg.from_mm) / _STEPS
     stops = [leg.from_mm + n * step for n in range(_STEPS)] + [leg.to_mm]
-    edges = list(_edges_of(enclosed, gap))
-    others = edges + [p for b in enclosed.blockers if isinstance(b, Prism) for p in b.outline]
-    for number, one in enumerate(edges):
-        for other in others[number + 1 :]:
-            way = _on_line(leg.start, leg.direction, one, other)
-            if way is not None and leg.from_mm < way < leg.to_mm:
-                stops.append(way)
+    for one, other in _lines(enclosed, gap, leg):
+        way = _on_line(leg.start, leg.direction, one, other)
+        if way is not None and leg.from_mm < way < leg.to_mm:
+            stops.append(way)
     last = leg.from_mm
     for stop in sorted(stops):
         if stop - last > _SAME_MM:
             yield 0.5 * (last + stop)
             last = stop
+
+
+def _lines(enclosed: Enclosed, gap: Gap, leg: Leg) -> Iterator[tuple[Pair, Pair]]:
+    own = list(_edges_of(enclosed, gap))
+    prisms = [one for one in enclosed.blockers if isinstance(one, Prism)]
+    sides = {side.panel for side in enclosed.line.sides} | {"bench", *enclosed.enclosure.lids}
+    edges = own + [point for one in prisms if one.name not in sides for point in one.outline]
+    others = edges + [point for one in prisms if one.name in sides for point in one.outline]
+    for number, edge in enumerate(edges):
+        for other in others[number + 1 :]:
+            yield edge, other
+    within = [*own, *(leg.at(way)[:2] for way in (leg.from_mm, leg.to_mm))]
+    low, high = ([pick(c) for c in zip(*within, strict=True)] for pick in (min, max))
+    for body in enclosed.blockers:
+        if isinstance(body, Hull) and all(
+            a - body.reach_mm < c < b + body.reach_mm
+            for a, c, b in zip(low, body.centre, high, strict=False)
+        ):
+            for edge in own:
+                for point in _tangents(edge, body):
+                    yield edge, point
+
+
+def _tangents(edge: Pair, body: Hull) -> Iterator[Pair]:
+    """Yield the outermost points of a body in plan, to either side as seen from an edge."""
+    x, y = body.centre[0] - edge[0], body.centre[1] - edge[1]
+
+    def aside(point: Place) -> float:
+        px, py = point[0] - edge[0], point[1] - edge[1]
+        return atan2(x * py - y * px, x * px + y * py)
+
+    for point in (min(body.points, key=aside), max(body.points, key=aside)):
+        yield point[:2]
 
 
 def _edges_of(enclosed: Enclosed, gap: Gap) -> Iterator[Pair]:

@@ -5,6 +5,7 @@ The box is 1000 x 800, panels 300 high and 2 thick (outwards), so that from ther
 """
 
 import math
+import re
 
 import pytest
 from boxes import LID, box, enclosed, gap_named, opening
@@ -182,6 +183,53 @@ def test_the_bench_top_stops_light_beyond_the_panels_too():
     ends = [math.degrees(angle) for angle in one.elevation]
     high = deg(-90, math.hypot(950, 400))  # under the farther ends of the panel
     assert ends == pytest.approx([deg(-100, 1000), high], abs=CLOSE_DEG)
+
+
+def turned(text, angle, shift):
+    """Turn and shift every place in plan that is written as a pair."""
+    c, s = math.cos(angle), math.sin(angle)
+
+    def place(match):
+        x, y = float(match[1]), float(match[2])
+        return f"[{c * x - s * y + shift[0]!r}, {s * x + c * y + shift[1]!r}]"
+
+    outline = text.replace("{size: [1000, 800]}", f"{{outline: {CORNERS}}}")
+    return re.sub(r"\[(-?[\d.]+), (-?[\d.]+)\]", place, outline)
+
+
+CORNERS = "[[0, 0], [1000, 0], [1000, 800], [0, 800]]"
+
+
+@pytest.mark.parametrize("angle", [0.3, 2.0, -1.1])
+def test_turning_the_whole_bench_turns_the_gaps(angle):
+    hole = "{from: [0, 800], to: [0, 0], openings: {hole: {along: 90, height: 120, diameter: 60}}}"
+    text = box(
+        south="{from: [0, 0], to: [970, 0]}",
+        north="{from: [1000, 800], to: [0, 800], from_height: 7, to_height: 260}",
+        west=hole,
+        lids={"a": f"{{height: 310, open: yes, outline: {CORNERS.replace('1000', '400')}}}"},
+    )
+    c, s = math.cos(angle), math.sin(angle)
+    shift = (120.0, -450.0)
+    x, y, z = EYE
+    eye = (c * x - s * y + shift[0], s * x + c * y + shift[1], z)
+    first, second = enclosed(text), enclosed(turned(text, angle, shift))
+    assert [g.through for g in gaps_of(first)] == [g.through for g in gaps_of(second)]
+    for one, other in zip(gaps_of(first), gaps_of(second), strict=True):
+        assert other.width_mm == pytest.approx(one.width_mm, abs=1e-6)
+        ways, then = (
+            sorted(directions(at, open_parts(whole, gap, at)), key=lambda d: d.solid_angle_sr)
+            for whole, gap, at in ((first, one, EYE), (second, other, eye))
+        )
+        assert len(ways) == len(then)
+        for way, after in zip(ways, then, strict=True):
+            assert after.solid_angle_sr == pytest.approx(way.solid_angle_sr, rel=1e-7)
+            assert after.elevation == pytest.approx(way.elevation, abs=1e-7)
+            if way.azimuth == (-math.pi, math.pi):
+                assert after.azimuth == way.azimuth  # all round
+                continue
+            off = (after.azimuth[0] - way.azimuth[0] - angle + math.pi) % (2 * math.pi)
+            assert off - math.pi == pytest.approx(0.0, abs=1e-7)
 
 
 def test_the_solid_angle_of_an_octant():

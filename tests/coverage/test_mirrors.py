@@ -258,6 +258,22 @@ def test_the_stretches_of_a_finding():
     assert stretch.to == pytest.approx((540, 400, 100), abs=1e-3)
 
 
+def test_a_slit_between_two_bodies():
+    """Two blocks, y 695 to 705, leave x 500 to 503; the slot in the wall is 490 to 500."""
+    blocks = "".join(
+        f"  {name}: {{kind: obstacle, at: [{x}, 700], facing: 0, to_height: 299, from_height: 0,\n"
+        f"      outline: [[0, -5], [{width}, -5], [{width}, 5], [0, 5]]}}\n"
+        for name, x, width in (("K1", 10, 490), ("K2", 503, 490))
+    )
+    plain = "  T1: {kind: target, after: red, distance: 400}\n"
+    context = context_of(box(north=SLOT, elements=plain + blocks))
+    (merged,) = merge_states(identify(opening_mirror.check(context, 0)))
+    (stretch,) = _stretches(context, reported(merged))
+    # Straight through at 500; and by the corners (503, 695) and (490, 802) at the most.
+    assert stretch.from_ == pytest.approx((500, 400, 100), abs=1e-3)
+    assert stretch.to == pytest.approx((503 + 295 * 13 / 107, 400, 100), abs=1e-3)
+
+
 def test_no_leg_of_no_length_is_guilty():
     whole = enclosed(box(north=SLOT))
     assert guilty(whole, gap_named(whole, "north.hole"), BEAM)
