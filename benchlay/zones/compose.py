@@ -2,25 +2,40 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterable
 
 import numpy as np
 import shapely
 from shapely.geometry.base import BaseGeometry
 
+from benchlay.layout.layout import Layout
 from benchlay.named import NamedTuple
+from benchlay.placing.placed import PlacedState
 from benchlay.tracing.beams import FACE, HANDED, NOTHING
 from benchlay.tracing.trace import Trace
-from benchlay.zones.diffuse import Spot, spots
+from benchlay.zones.diffuse import Spot, eye_band, spots
 from benchlay.zones.enclosing import Enclosing, enclosing_of
 from benchlay.zones.limits import LimitTable, limits_of
 from benchlay.zones.polygons import Ring, rings, united
+from benchlay.zones.reasons import (
+    DIFFUSE,
+    DIRECT,
+    OVER,
+    Bounds,
+    Maker,
+    Measure,
+    makers_in_words,
+    reason,
+)
 from benchlay.zones.swept import Leg, hazardous_legs
-from benchlay.zones.words import number, with_unit
+from benchlay.zones.words import with_unit
 
-DIRECT, DIFFUSE, OVER = "direct", "diffuse", "over"
+_MM_PER_M = 1e3
 _MM2_PER_M2 = 1e6
-_NAMED = 3  # of what makes a zone, named in its reason
+_LITTLE_MM2 = 1.0
+_REACHED = 1.0 - 1e-9
+_NEAREST_M = 0.1  # at which an eye can focus on what is lit
 
 
 class Zone(NamedTuple):
@@ -38,6 +53,7 @@ class Zone(NamedTuple):
     aperture_mm: float
     time_base_s: float
     makers: tuple[str, ...]  # what makes it, the strongest first
+    ratio: float  # to the limit, where it is highest; infinite where no limit is known
 
 
 class Zones(NamedTuple):
@@ -47,17 +63,13 @@ class Zones(NamedTuple):
     not_computed: tuple[str, ...]
 
 
-class _Maker(NamedTuple):
-    how: str  # with the words before what it names
-    names: tuple[str, ...]
-
-
 class _Piece(NamedTuple):
     area: BaseGeometry
-    maker: _Maker
+    maker: Maker
     power_w: float
     reach_m: float
     beam: int
+    ratio: float  # to the limit, where it is highest
 
 
 def zones_of(trace: Trace, states: Iterable[str] | None = None) -> Zones:
@@ -88,16 +100,21 @@ def zones_of(trace: Trace, states: Iterable[str] | None = None) -> Zones:
 
 def _of_state(trace: Trace, limits: LimitTable, variant: int) -> list[Zone]:
     s = trace.beams.start
-    enclosing = enclosing_of(trace.placed.states[variant].layout)
+    layout = trace.placed.states[variant].layout
+    enclosing, room = enclosing_of(layout), _room(layout)
     pieces: dict[tuple[int, str], list[_Piece]] = {}
     for leg in hazardous_legs(trace, limits, variant):
-        for kind, area in _by_kind(leg, enclosing):
-            piece = _Piece(area, _maker(trace, leg.beam), leg.power_w, leg.reach_m, leg.beam)
+        for kind, area in _by_kind(_within(leg, room), enclosing):
+            ratio = _ratio(leg.power_w, float(limits.of(trace, np.array([leg.beam]))[0][0]))
+            maker = _maker(trace, leg.beam)
+            piece = _Piece(area, maker, leg.power_w, leg.reach_m, leg.beam, ratio)
             pieces.setdefault((int(s.wave[leg.beam]), kind), []).append(piece)
     for wave in range(len(trace.scene.wavelengths_nm)):
         for spot in spots(trace, limits, variant, wave):
-            reach = spot.radius_mm / 1e3
-            piece = _Piece(spot.area, _spot_maker(spot), spot.power_w, reach, spot.beam)
+            reach = spot.radius_mm / _MM_PER_M
+            ratio = _scattered_ratio(trace, limits, spot)
+            maker = _spot_maker(spot)
+            piece = _Piece(spot.area, maker, spot.power_w, reach, spot.beam, ratio)
             pieces.setdefault((wave, DIFFUSE), []).append(piece)
     zones = [
         _zone(trace, limits, key, polygon, pieces[key])
@@ -105,6 +122,29 @@ def _of_state(trace: Trace, limits: LimitTable, variant: int) -> list[Zone]:
         for polygon in united(piece.area for piece in pieces[key])
     ]
     return sorted(zones, key=lambda zone: (zone.wavelength_nm, zone.kind, zone.polygon))
+
+
+def _ratio(value: float, limit: float) -> float:
+    return value / limit if limit > 0.0 else math.inf
+
+
+def _scattered_ratio(trace: Trace, limits: LimitTable, spot: Spot) -> float:
+    """Return the ratio to a point's limit at 100 mm; of what ends nearer, of all of its light."""
+    allowed, mpe, _ = (float(v[0]) for v in limits.of(trace, np.array([spot.beam])))
+    light = spot.power_w * spot.reflectance
+    there = _ratio(light / (math.pi * _NEAREST_M**2), mpe)
+    return there if there > 1.0 else _ratio(light, allowed)
+
+
+def _room(layout: Layout) -> BaseGeometry | None:
+    return None if layout.room is None else shapely.Polygon(layout.room.outline)
+
+
+def _within(leg: Leg, room: BaseGeometry | None) -> Leg:
+    """Return a leg without what of its width is beyond the walls, if it starts within them."""
+    if room is None or not shapely.covers(room, shapely.Point(leg.start[:2])):
+        return leg
+    return leg._replace(area=shapely.intersection(leg.area, room))
 
 
 def _by_kind(leg: Leg, enclosing: Enclosing | None) -> list[tuple[str, BaseGeometry]]:
@@ -133,83 +173,62 @@ def _zone(
     own.sort(key=lambda piece: (-piece.power_w, piece.beam))
     s, beam = trace.beams.start, own[0].beam
     at = int(s.variant[beam]), int(s.source[beam]), int(s.wave[beam])
-    measure = _Measure(
+    measure = Measure(
         own[0].power_w,
         float(limits.accessible_w[at]),
         float(limits.aperture_mm[at]),
         float(limits.time_base_s[at]),
+        max(piece.ratio for piece in own),
     )
-    makers = _makers(piece.maker for piece in own)
+    makers = makers_in_words(piece.maker for piece in own)
+    reach = max(piece.reach_m for piece in own)
+    bounds = _bounds(trace.placed.states[at[0]], kind, polygon, reach)
     return Zone(
         trace.scene.variants[at[0]],
         kind,
         float(trace.scene.wavelengths_nm[wave]),
-        _reason(kind, makers, measure),
+        reason(kind, makers, measure, bounds),
         polygon.area / _MM2_PER_M2,
-        max(piece.reach_m for piece in own),
+        reach,
         rings(polygon),
-        measure.power_w,
-        measure.limit_w,
-        measure.aperture_mm,
-        measure.time_base_s,
+        *measure[:4],
         makers,
+        measure.ratio,
     )
 
 
-class _Measure(NamedTuple):
-    power_w: float
-    limit_w: float
-    aperture_mm: float
-    time_base_s: float
-
-
-def _reason(kind: str, makers: tuple[str, ...], measure: _Measure) -> str:
-    who = "; ".join(makers)
-    power, limit, aperture, time_s = measure
-    above = (
-        f"limit {with_unit(limit, 'W')} through {number(aperture)} mm in {number(time_s)} s"
-        if limit > 0.0
-        else "no limit is known, so that any light counts"
+def _bounds(state: PlacedState, kind: str, polygon: BaseGeometry, reach_m: float) -> Bounds:
+    layout = state.layout
+    most_m = layout.limits.reach_mm / _MM_PER_M
+    enclosing = enclosing_of(layout) if kind == DIFFUSE else None
+    return Bounds(
+        most_m if reach_m >= most_m * _REACHED else None,
+        (eye_band(state)[1] + layout.bench.surface_height_mm) / _MM_PER_M,
+        enclosing is not None and _leaves(polygon, enclosing.area),
     )
-    return f"{who}: up to {with_unit(power, 'W')}, {above}; {_WHERE[kind]}"
 
 
-_WHERE = {
-    DIRECT: "to the first opaque thing, seen in plan whatever the height",
-    DIFFUSE: "the half space before the surface, seen in plan whatever the height",
-    OVER: "beyond the top of the enclosure, seen in plan whatever the height",
-}
+def _leaves(zone: BaseGeometry, within: BaseGeometry) -> bool:
+    """Whether a zone begins inside an area and goes on beyond it."""
+    beyond = shapely.difference(zone, within)
+    return bool(beyond.area > _LITTLE_MM2 and shapely.intersects(zone, within))
 
 
-def _maker(trace: Trace, beam: int) -> _Maker:
+def _maker(trace: Trace, beam: int) -> Maker:
     s, ways = trace.beams.start, trace.ways
     source = trace.scene.sources[s.source[beam]]
     node = int(s.node[beam])
     if node >= 0:
         routes = sorted({ways.names[route] for route, _ in ways.places[node].routes})
-        return _Maker(f"{source} on", tuple(routes))
+        return Maker(f"{source} on", tuple(routes))
     names = (*trace.scene.elements, *trace.scene.sources)
     owner = int(s.owner[beam])
     place = names[owner] if owner < len(names) else "the surroundings"
-    return _Maker(f"stray light of {source} from", (place,))
+    return Maker(f"stray light of {source} from", (place,))
 
 
-def _makers(makers: Iterable[_Maker]) -> tuple[str, ...]:
-    """Return in words what makes a zone, each way of making it once."""
-    found: dict[str, dict[str, None]] = {}
-    for maker in makers:
-        found.setdefault(maker.how, {}).update(dict.fromkeys(maker.names))
-    return tuple(f"{how} {_listed(list(names))}" for how, names in found.items())
-
-
-def _listed(names: list[str]) -> str:
-    if len(names) > _NAMED:
-        return f"{', '.join(names[:_NAMED])} and {len(names) - _NAMED} more"
-    return " and ".join([", ".join(names[:-1]), names[-1]] if len(names) > 1 else names)
-
-
-def _spot_maker(spot: Spot) -> _Maker:
-    return _Maker("scattered from", (spot.name or f"the {spot.sink}",))
+def _spot_maker(spot: Spot) -> Maker:
+    return Maker("scattered from", (spot.name or f"the {spot.sink}",))
 
 
 def _beyond(trace: Trace, limits: LimitTable, variant: int) -> list[str]:
@@ -221,9 +240,10 @@ def _beyond(trace: Trace, limits: LimitTable, variant: int) -> list[str]:
         power = float(b.end_core[beam])
         if power > float(limits.of(trace, np.array([beam]))[0][0]):
             opening = scene.names[int(scene.solids.hole_name[b.end_row[beam]])]
+            who = makers_in_words([_maker(trace, beam)])[0]
             out.append(
-                f"{with_unit(power, 'W')} of {_makers([_maker(trace, beam)])[0]} is handed over at "
-                f"{opening}: no zone is drawn beyond it (state {scene.variants[variant]})"
+                f"{with_unit(power, 'W')} of {who} is handed over at {opening}: no zone is "
+                f"drawn beyond it (state {scene.variants[variant]})"
             )
     return out
 
@@ -247,7 +267,7 @@ def _beside(trace: Trace, limits: LimitTable, variant: int) -> list[str]:
             continue
         place = scene.names[name] if name >= 0 else "no element or panel"
         out.append(
-            f"{with_unit(power, 'W')} of {_makers([_maker(trace, beam)])[0]} passes beside "
+            f"{with_unit(power, 'W')} of {makers_in_words([_maker(trace, beam)])[0]} passes beside "
             f"{scene.names[owner] if owner >= 0 else 'the bench'} and ends on {place}: "
             f"no zone is drawn for it (state {scene.variants[variant]})"
         )

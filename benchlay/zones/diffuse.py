@@ -18,15 +18,15 @@ from benchlay.layout.materials import BODY, SHEET, Material
 from benchlay.named import NamedTuple
 from benchlay.placing.placed import PlacedState
 from benchlay.scene.tables import SINKS, Floats, Ints
-from benchlay.tracing.beams import FACE, SOLID
+from benchlay.tracing.beams import FACE
 from benchlay.tracing.trace import Trace
 from benchlay.zones.blockers import blockers
 from benchlay.zones.limits import LimitTable
 from benchlay.zones.sight import Band, View, seen
+from benchlay.zones.surfaces import normal_met
 from benchlay.zones.viewing import scattered_mm, spot_d63_mm
 
 _TOGETHER_MM = 25.0  # spots nearer than this act as one to a distant eye
-_ON_PLANE_MM = 1e-3
 _IN_WALL_MM = 1.0  # what is lit on a wall lies in its line, but for rounding
 _STEPS = 32  # of half a circle
 # What the layout says nothing of may be as white as can be.
@@ -134,31 +134,15 @@ def _normal(trace: Trace, landing: _Landing) -> tuple[float, float, float] | Non
     """
     b, scene = trace.beams, trace.scene
     kind, row = int(b.end_kind[landing.beam]), int(b.end_row[landing.beam])
-    towards = b.start.direction[landing.beam]
-    if kind == FACE:
-        owner, normal = scene.face_owner_name[row], scene.faces.normal[row]
-    elif kind == SOLID:
-        owner, normal = scene.solids.name[row], _side(trace, row, np.array(landing.at), towards)
-    else:
+    normal = normal_met(trace, landing.beam)
+    if normal is None:
         return None
+    owner = (scene.face_owner_name if kind == FACE else scene.solids.name)[row]
     mine = owner if owner < 0 else scene.names[owner]
     if mine != (landing.name if landing.name is not None else -1):
         return None
-    if float(normal @ towards) > 0.0:
-        normal = -normal
     x, y, z = normal.tolist()
     return (x, y, z)
-
-
-def _side(trace: Trace, row: int, point: Floats, towards: Floats) -> Floats:
-    """Return the outward normal of a solid's side at a point; back along the beam if round."""
-    s = trace.scene.solids
-    planes = np.flatnonzero(s.plane_solid == row)
-    gaps = np.abs(s.plane_normal[planes] @ point - s.plane_offset[planes])
-    if not len(planes) or gaps.min() > _ON_PLANE_MM:
-        return -towards
-    normal: Floats = s.plane_normal[planes[int(np.argmin(gaps))]]
-    return normal
 
 
 def _view(

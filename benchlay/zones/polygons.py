@@ -19,7 +19,15 @@ _SPECK_MM2 = 1e-3  # unions of strips that share an edge leave slivers; no zone 
 def united(areas: Iterable[BaseGeometry]) -> list[BaseGeometry]:
     """Return the separate polygons of a union, specks left out."""
     parts = shapely.get_parts(shapely.union_all(list(areas)))
-    return [p for p in shapely.get_parts(parts) if _counts(p)]
+    return [_whole(p) for p in shapely.get_parts(parts) if _counts(p)]
+
+
+def _whole(part: BaseGeometry) -> BaseGeometry:
+    """Return a polygon without holes that are specks."""
+    holes = [ring for ring in part.interiors if shapely.Polygon(ring).area > _SPECK_MM2]
+    if len(holes) == len(part.interiors):
+        return part
+    return shapely.Polygon(part.exterior, holes)
 
 
 def _counts(part: BaseGeometry) -> bool:

@@ -23,8 +23,10 @@ from benchlay.optics.special import circle_share
 from benchlay.scene.tables import Flags, Floats, Ints
 from benchlay.tracing.trace import Trace
 from benchlay.zones.limits import LimitTable
+from benchlay.zones.surfaces import normal_left, normal_met
 
 _SAMPLES = 33
+_BETWEEN = np.linspace(0.0, 1.0, 17)  # of the way from one waist to the other
 _HALVINGS = 24  # of a stretch between two samples: to micrometres
 _STRAIGHT_MM = 0.05  # a strip's side is one line where it bends by less
 _SIDES = 64  # of a circle
@@ -70,7 +72,9 @@ def through_aperture(trace: Trace, limits: LimitTable, beams: Ints, depth: Float
     _, _, aperture = limits.of(trace, beams)
     tiny = np.finfo(np.float64).tiny
     share = circle_share(np.maximum(w1, tiny), np.maximum(w2, tiny), aperture[:, None] / 2)
-    power: Floats = s.power[beams, None] * share
+    # A beam that was cut keeps the shape of its uncut self, and never gives more than is left.
+    whole = s.power[beams] / s.kept[beams]
+    power: Floats = np.minimum(whole[:, None] * share, s.power[beams, None])
     return power
 
 
@@ -78,9 +82,11 @@ def _extent(trace: Trace, limits: LimitTable, beams: Ints, length: Floats) -> tu
     """Return how far along each leg the limit is exceeded (0: nowhere), and the most power."""
     s = trace.beams.start
     even = length[:, None] * np.linspace(0.0, 1.0, _SAMPLES)
-    # A focus lies between samples: the waists of both axes are looked at as well.
-    waists = moments.waist_distance(s.moments[:, beams], s.index[beams]).T
-    depth = np.sort(np.concatenate([even, np.clip(waists, 0.0, length[:, None])], axis=1), axis=1)
+    # A focus lies between samples: the waists of both axes are looked at as well, and what is
+    # between them, where an elliptical beam may be worst.
+    first, last = moments.waist_distance(s.moments[:, beams], s.index[beams])
+    foci = first[:, None] + (last - first)[:, None] * _BETWEEN
+    depth = np.sort(np.concatenate([even, np.clip(foci, 0.0, length[:, None])], axis=1), axis=1)
     power = through_aperture(trace, limits, beams, depth)
     allowed = limits.of(trace, beams)[0]
     too_much = power > allowed[:, None]
@@ -104,20 +110,29 @@ def _leg(trace: Trace, limits: LimitTable, beam: int, extent: tuple[float, float
     half = half_widths(trace, limits, beam, depth)
     points = s.position[beam] + depth[:, None] * s.direction[beam]
     (ax, ay, az), (bx, by, bz) = points[0].tolist(), points[-1].tolist()
-    area = _strip(points[:, :2], half)
+    whole = stop >= float(trace.beams.length[beam])
+    ends = normal_left(trace, beam), normal_met(trace, beam) if whole else None
+    area = _strip(points[:, :2], half, ends)
     return Leg(beam, (ax, ay, az), (bx, by, bz), area, stop / _MM_PER_M, most)
 
 
 def half_widths(trace: Trace, limits: LimitTable, beam: int, depth: Floats) -> Floats:
-    """Return half the width of a beam's strip in plan at depths along it, mm."""
+    """Return half the width of a beam's strip in plan at depths along it, mm.
+
+    How far the pointing of the source may be off counts over the whole path; what lenses on the
+    way make of the angle is left aside.
+    """
     s = trace.beams.start
     one = np.array([beam])
     allowed, _, aperture = (float(v[0]) for v in limits.of(trace, one))
     across = envelope_radii(trace, beam, depth)
-    power = float(s.power[beam])
+    power = float(s.power[beam] / s.kept[beam])
     tail = 0.5 * np.log(max(power / (2.0 * allowed), 1.0)) if allowed > 0.0 else _NO_LIMIT
     a = aperture / 2
-    half: Floats = np.maximum(a + across * np.sqrt(tail), across)
+    source = trace.placed.states[int(s.variant[beam])].sources[trace.scene.sources[s.source[beam]]]
+    path = float(s.optical_path[beam]) + depth * float(s.index[beam])
+    aside = np.tan(source.source.pointing_rad) * path
+    half: Floats = np.maximum(a + across * np.sqrt(tail), across) + aside
     return half
 
 
@@ -143,24 +158,67 @@ def envelope_radii(trace: Trace, beam: int, depth: Floats) -> Floats:
 _UPRIGHT = 1e-9
 
 
-def _strip(points: Floats, half: Floats) -> BaseGeometry:
-    """Return the area along a leg in plan; round about both ends where it is steep."""
+def _strip(points: Floats, half: Floats, ends: tuple[Floats | None, Floats | None]) -> BaseGeometry:
+    """Return the area along a leg in plan; round about both ends where it is steep.
+
+    Where it starts and ends on a surface, it is cut along that: `ends` are the normals.
+    """
     along = points[-1] - points[0]
     length = float(np.hypot(*along))
     widest = float(half.max())
     if length < 2.0 * widest:
-        ends = [circle(points[0], float(half[0])), circle(points[-1], float(half[-1]))]
-        return shapely.convex_hull(shapely.union_all(ends))
-    side = np.array([-along[1], along[0]]) / length
+        rounds = [circle(points[0], float(half[0])), circle(points[-1], float(half[-1]))]
+        return shapely.convex_hull(shapely.union_all(rounds))
+    ahead = along / length
+    side = np.array([-ahead[1], ahead[0]])
     share = np.linspace(0.0, 1.0, len(half))
     # Radii of beams are convex along them, so a chord never lies inside.
     chord = half[0] + share * (half[-1] - half[0])
     kept: Flags = np.ones(len(half), dtype=np.bool_)
     if float(np.max(chord - half)) < _STRAIGHT_MM:
         kept[1:-1] = False
-    left = points[kept] + half[kept, None] * side
-    right = points[kept] - half[kept, None] * side
-    return shapely.Polygon([*right, *left[::-1]])
+    points, half = points[kept], half[kept]
+    cuts = []
+    for at, way, normal in ((0, -1.0, ends[0]), (-1, 1.0, ends[1])):
+        farther, cut = _cut(points[at], way * ahead, float(half[at]), normal)
+        place = 0 if at == 0 else len(points)
+        points = np.insert(points, place, points[at] + farther * way * ahead, axis=0)
+        half = np.insert(half, place, half[at])
+        cuts.append(cut)
+    area = shapely.Polygon(
+        [*(points - half[:, None] * side), *(points + half[:, None] * side)[::-1]]
+    )
+    for cut in cuts:
+        area = area if cut is None else shapely.intersection(area, cut)
+    return area
+
+
+def _cut(
+    end: Floats, ahead: Floats, half: float, normal: Floats | None
+) -> tuple[float, BaseGeometry | None]:
+    """Return how much farther a strip goes at an end, and the half plane that it is cut with.
+
+    A surface met at a slant is met later on one side than on the axis; a tilted one later
+    above or below it.
+    """
+    flat = 0.0 if normal is None else float(np.hypot(normal[0], normal[1]))
+    if normal is None or flat < _STEEP:
+        return 0.0, None
+    inwards = normal[:2] / flat
+    slant = abs(float(inwards @ ahead))
+    tilt = half * abs(float(normal[2])) / flat
+    turn = abs(float(inwards[0] * ahead[1] - inwards[1] * ahead[0]))
+    farther = (half * turn + tilt) / max(slant, _STEEP)
+    if slant < _STEEP:  # along the surface: no one place is its end
+        return 0.0, None
+    edge = end - tilt * inwards
+    aside = np.array([-inwards[1], inwards[0]]) * _FAR_MM
+    corners = [edge - aside, edge + aside, edge + aside + inwards * _FAR_MM]
+    return farther, shapely.Polygon([*corners, edge - aside + inwards * _FAR_MM])
+
+
+_STEEP = 0.2  # sine of 11.5 degrees: beyond, an end stays square to the beam
+_FAR_MM = 1e6  # beyond any zone
 
 
 def circle(centre: Floats, radius: float) -> BaseGeometry:

@@ -39,3 +39,19 @@ def number(value: float, digits: int = 3, decimal: str = ".") -> str:
     if "." in text:
         text = text.rstrip("0").rstrip(".")
     return text.replace(".", decimal)
+
+
+def above_words(ratio: float, decimal: str = ".") -> str:
+    """Say how many times the limit light is, and which eyewear brings it there.
+
+    The density is rounded up to a tenth, so that what is worn is enough.
+
+    Examples
+    --------
+    >>> above_words(52.0), above_words(math.inf)
+    ('52 times the limit: eyewear OD 1.8', 'no limit is known')
+    """
+    if not math.isfinite(ratio):
+        return "no limit is known"
+    density = math.ceil(10.0 * math.log10(max(ratio, 1.0)) - 1e-9) / 10.0
+    return f"{number(ratio, 3, decimal)} times the limit: eyewear OD {number(density, 3, decimal)}"

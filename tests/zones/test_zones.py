@@ -277,7 +277,8 @@ def test_every_state_has_its_own_zones():
 def test_a_zone_says_what_makes_it_and_how_it_is_seen():
     zone = next(z for z in zones_of(traced(turned(0.0))).zones if z.kind == "direct")
     assert zone.reason == (
-        "red on r: up to 10 mW, limit 0.385 mW through 7 mm in 100 s; "
+        "red on r: up to 10 mW, limit 0.385 mW through 7 mm in 100 s, 26 times the limit: "
+        "eyewear OD 1.5; "
         "to the first opaque thing, seen in plan whatever the height"
     )
 

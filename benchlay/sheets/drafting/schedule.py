@@ -8,7 +8,7 @@ from benchlay.sheets.contents import Zone as DrawnZone
 from benchlay.sheets.drafting.legs import limit_words
 from benchlay.sheets.layers import wavelength_words
 from benchlay.zones import Zone
-from benchlay.zones.words import number, with_unit
+from benchlay.zones.words import above_words, number, with_unit
 
 _KINDS = {"direct": "direct beam", "diffuse": "scattered light", "over": "beam above the enclosure"}
 
@@ -31,10 +31,11 @@ def _drawn(zone: Zone, name: str, decimal: str) -> DrawnZone:
         name,
         zone.kind,
         zone.polygon,
-        (f"{zone.kind} {wavelength}", reach),
+        (f"{zone.kind} {wavelength}", reach, above_words(zone.ratio, decimal)),
         (
             f"{_KINDS[zone.kind]} {wavelength}",
             f"limit {limit}",
+            above_words(zone.ratio, decimal),
             f"{reach}, {area}",
             f"up to {power}: {makers}",
         ),

@@ -178,6 +178,7 @@ def test_zones_are_numbered_the_largest_first_and_listed():
     assert drawn.zones[0].schedule == (
         "direct beam 633 nm",
         "limit 0.385 mW through Ø7 mm, 100 s",
+        "52 times the limit: eyewear OD 1.8",
         f"reach 0.4 m, {areas[0] * 1e-6:.2g} m²",
         "up to 20 mW: stray light of B1 from B1",
     )
