@@ -207,7 +207,8 @@ def review_files(
         return LayoutErrors(file, error.problems, _lines(data))
     faults = _faults(checked.trace.placed, data, file, state, progress)
     remedies = _remedies(data, file, checked, reviewed, on)
-    reviewed = reviewed._replace(remedies=remedies, faults=faults)
+    # Unlike a check, a review speaks of what panels take by faults too.
+    reviewed = reviewed._replace(remedies=remedies, faults=faults, panels=faults.panels)
     documents = {
         "findings.json": check_document([reviewed], version=__version__),
         "faults.json": faults_document(faults, version=__version__),

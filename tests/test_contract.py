@@ -236,6 +236,14 @@ SIGN = keys(
     {"number": TEXT, "kind": TEXT, "place": TEXT, "class_as_modelled": maybe(TEXT),
      "words": listed(TEXT), "triangle_mm": NUMBER, "size_mm": PAIR}
 )  # fmt: skip
+PANEL = keys(
+    {"panel": TEXT, "worst_irradiance_W_cm2": maybe(NUMBER), "state": maybe(TEXT),
+     "withstands_W_cm2": maybe(NUMBER), "margin": maybe(NUMBER), "governs": maybe(TEXT),
+     "fault": maybe(TEXT), "value": maybe(NUMBER), "limit": maybe(NUMBER), "unit": maybe(TEXT),
+     "exposed_s": maybe(NUMBER), "rated_s": maybe(NUMBER), "source": maybe(TEXT),
+     "wavelength_nm": maybe(NUMBER), "last_at": maybe(TEXT), "shown": YES_NO,
+     "reason": maybe(TEXT), "sheet": one_of({"panel", "lid"})}
+)  # fmt: skip
 REVIEW = keys(
     {
         "layout": TEXT, "sha256": TEXT, "title": maybe(TEXT), "revision": maybe(TEXT),
@@ -246,7 +254,7 @@ REVIEW = keys(
         ),
         "limits_used": listed(LIMIT), "routes": listed(ROUTE), "ledger": LEDGER,
         "zones": listed(ZONE), "controlled_areas": listed(dict), "coverage": listed(COVERAGE),
-        "panels": listed(dict),
+        "panels": listed(PANEL),
         "cavities": listed(dict), "matched": listed(dict), "handed_over": listed(HANDED_OVER),
         "hazards": listed(HAZARDS), "signs": listed(SIGN),
         "not_computed": listed(TEXT), "matrix": MATRIX,

@@ -3,6 +3,8 @@
 from __future__ import annotations
 
 from benchlay.faults.families import KINDS, Family, families
+from benchlay.faults.guarding import Opened
+from benchlay.faults.panes import Window
 from benchlay.faults.review import OUTCOMES, Fault, Range, Review, review_faults
 from benchlay.faults.verdicts import Light
 
@@ -12,8 +14,10 @@ __all__ = [
     "Family",
     "Fault",
     "Light",
+    "Opened",
     "Range",
     "Review",
+    "Window",
     "families",
     "review_faults",
 ]

@@ -100,12 +100,13 @@ def with_source(state: PlacedState, source: Source) -> PlacedState:
     return state._replace(sources={**state.sources, source.name: placed})
 
 
-def opened(state: PlacedState, name: str) -> PlacedState:
-    """Return a state in which a panel or lid stands open."""
+def opened(state: PlacedState, sheet: tuple[str, str]) -> PlacedState:
+    """Return a state in which a sheet stands open: ``("panel", name)`` or ``("lid", name)``."""
     enclosure = state.layout.enclosure
     assert enclosure is not None
+    kind, name = sheet
     panels, lids = enclosure.panels, enclosure.lids
-    if name in panels:
+    if kind == "panel":
         wide = {**panels, name: panels[name].replace(open=True)}
         changed = enclosure.replace(panels=Entries(wide, panels.spans))
     else:

@@ -57,6 +57,7 @@ class Family(NamedTuple):
     made: Callable[[float], PlacedState]
     near: PlacedElement | None
     sweep: Sweep | None = None
+    sheet: tuple[str, str] | None = None  # panel or lid, and its name, of what is opened
 
     def name(self, setting_rad: float = 0.0) -> str:
         """Return the name of the fault at a setting."""
@@ -176,11 +177,14 @@ def _of_sources(placed: Placed, number: int, settings: Faults) -> Iterator[Famil
 def _of_sheets(state: PlacedState, number: int, settings: Faults) -> Iterator[Family]:
     del settings
     enclosure = state.layout.enclosure
-    for sheets in () if enclosure is None else (enclosure.panels, enclosure.lids):
+    if enclosure is None:
+        return
+    for kind, sheets in (("panel", enclosure.panels), ("lid", enclosure.lids)):
         for name in sorted(sheets):
-            if sheets[name].access != "none" and not sheets[name].open:
-                made = changes.opened(state, name)
-                words = f"{name} open, its interlock failed"
-                if sheets[name].access == "tool":
-                    words = f"{name} left open"
-                yield Family("opened", name, words, number, _always(made), None)
+            access = sheets[name].access
+            if access == "none" or sheets[name].open:
+                continue
+            made = _always(changes.opened(state, (kind, name)))
+            called = name if kind == "panel" else f"lid {name}"
+            how = "left open" if access == "tool" else "open, its interlock failed"
+            yield Family("opened", name, f"{called} {how}", number, made, None, sheet=(kind, name))

@@ -8,7 +8,10 @@ from itertools import groupby
 from benchlay.faults.batches import Tracer, whole_benches
 from benchlay.faults.between import CLOSEST_MM
 from benchlay.faults.families import KINDS, Family, families
+from benchlay.faults.guarding import Opened, arriving_in, loads_in, opened
+from benchlay.faults.guards import Budget, budgets
 from benchlay.faults.nearby import Nearby
+from benchlay.faults.panes import Window, windows
 from benchlay.faults.sweeps import CLOSE_RAD, Case, Progress, Swept, finely, run
 from benchlay.faults.verdicts import Judge, Light, Verdict
 from benchlay.named import NamedTuple
@@ -70,6 +73,9 @@ class Review(NamedTuple):
     open_rad: float
     narrowest_mm: float
     states: tuple[str, ...]
+    budgets: tuple[Budget, ...]
+    windows: tuple[Window, ...]
+    opened: tuple[Opened, ...]
 
 
 def _silent(done: int, total: int) -> None:
@@ -116,6 +122,11 @@ def review_faults(
         max((fault.open_rad for fault in found), default=0.0),
         CLOSEST_MM,
         spoken_of,
+        tuple(budgets(placed.base.layout, loads_in(tracer, numbers, swept))),
+        tuple(windows(tracer.rest, arriving_in(tracer, numbers, swept))),
+        tuple(
+            opened(tracer, [(f.family, f.worst if f.outcome == "escape" else None) for f in found])
+        ),
     )
 
 
@@ -123,7 +134,7 @@ def _seeds(family: Family, near: Nearby) -> Ints | None:
     """Return the legs at rest that could notice a fault; None where a source has it."""
     if family.near is not None:
         return near.of_element(family.near)
-    return near.of_sheet(family.element) if family.kind == "opened" else None
+    return near.of_sheet(family.element) if family.sheet is not None else None
 
 
 def _gravity(fault: Fault) -> tuple[object, ...]:

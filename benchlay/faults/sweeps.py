@@ -16,7 +16,9 @@ from math import degrees
 from benchlay.faults.batches import Tracer, Variant
 from benchlay.faults.between import Change, Looked, Looker, moving
 from benchlay.faults.families import Family
+from benchlay.faults.guards import Loads, loads_of
 from benchlay.faults.legs import Labels, Legs, chains_at_rest, legs_of
+from benchlay.faults.panes import Arriving, arriving_w, in_openings
 from benchlay.faults.verdicts import Judge, Verdict
 from benchlay.named import NamedTuple
 from benchlay.scene.tables import Ints
@@ -34,6 +36,8 @@ class Case(NamedTuple):
     setting_rad: float
     verdict: Verdict
     legs: Legs
+    loads: Loads
+    arriving: Arriving
 
 
 class Swept(NamedTuple):
@@ -122,6 +126,7 @@ def run(
     looker = Looker(tracer.placed, labels)
     at_rest = chains_at_rest(tracer.rest, labels)
     own = len(tracer.placed.states)
+    windows = in_openings(tracer.placed)
     growing = [_Growing(*family) for family in families]
     wanted = [(one, setting) for one in growing for setting in one.first()]
     done = 0
@@ -134,7 +139,10 @@ def run(
             for number, some in zip(which, legs, strict=True):
                 one, setting = wanted[number]
                 verdict = judge.verdict(context, own + number - which.start)
-                one.add(Case(setting, verdict.beside(bases[one.family.state]), some))
+                verdict = verdict.beside(bases[one.family.state])
+                variant = own + number - which.start
+                loads = loads_of(context, variant)
+                one.add(Case(setting, verdict, some, loads, arriving_w(context, variant, windows)))
             done += len(which)
             progress(done, done + len(wanted) - which.stop)
         wanted = _next(growing, looker)

@@ -100,13 +100,30 @@ class Coverage(NamedTuple):
 
 
 class PanelLoad(NamedTuple):
-    """The worst a panel takes, beside what it withstands."""
+    """The worst a panel or lid takes, beside what it withstands.
+
+    `governs` is state or fault. The rating speaks in `unit`, in which `value` and `limit` are;
+    `margin` is null where nothing shows that it holds, for the `reason`.
+    """
 
     panel: str
     worst_irradiance_W_cm2: float | None
     state: str | None
     withstands_W_cm2: float | None
     margin: float | None
+    governs: str | None = None
+    fault: str | None = None
+    value: float | None = None
+    limit: float | None = None
+    unit: str | None = None
+    exposed_s: float | None = None
+    rated_s: float | None = None
+    source: str | None = None
+    wavelength_nm: float | None = None
+    last_at: str | None = None
+    shown: bool = False
+    reason: str | None = None
+    sheet: str = "panel"  # or lid: the two may have one name
 
 
 class Cavity(NamedTuple):

@@ -7,6 +7,7 @@ from typing import TYPE_CHECKING, TypeAlias
 from benchlay.named import NamedTuple
 
 if TYPE_CHECKING:
+    from benchlay.report.details import PanelLoad
     from benchlay.report.model import Point
 
 Settings: TypeAlias = tuple[float, float]
@@ -62,6 +63,45 @@ class Resolution(NamedTuple):
     narrowest_gap_mm: float
 
 
+class WindowRow(NamedTuple):
+    """A window in a panel's opening, at one wavelength.
+
+    `density` is at normal incidence, null where it lets nothing through; `needed_density` is for
+    the strongest beam that comes to it in any state or by any fault, `needed_density_full` for
+    all that a source emits.
+    """
+
+    window: str
+    opening: str
+    wavelength_nm: float
+    density: float | None
+    arriving_W: float | None
+    state: str | None
+    fault: str | None
+    needed_density: float | None
+    needed_density_full: float | None
+    enough: bool | None
+    enough_for_full: bool | None
+
+
+class OpenedRow(NamedTuple):
+    """What an access panel or lid gives access to while it is open."""
+
+    panel: str
+    sheet: str
+    state: str
+    access: str
+    power_W: float | None
+    times_limit: float | None
+    source: str | None
+    wavelength_nm: float | None
+    last_at: str | None
+    at: Point | None
+    direction: Point | None
+    inside_W: float | None
+    inside_times_limit: float | None
+
+
 class FaultsResult(NamedTuple):
     """The review of single faults of one layout."""
 
@@ -73,6 +113,9 @@ class FaultsResult(NamedTuple):
     faults: tuple[FaultRow, ...]
     resolution: Resolution
     assumed: tuple[str, ...]
+    panels: tuple[PanelLoad, ...] = ()
+    windows: tuple[WindowRow, ...] = ()
+    opened: tuple[OpenedRow, ...] = ()
 
     def count(self, outcome: str) -> int:
         """Count the faults with an outcome."""

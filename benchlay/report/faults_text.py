@@ -5,7 +5,8 @@ from __future__ import annotations
 from collections.abc import Iterator, Sequence
 
 from benchlay.report.cautions import CAUTIONS
-from benchlay.report.faults import FaultRow, FaultsResult
+from benchlay.report.details import PanelLoad
+from benchlay.report.faults import FaultRow, FaultsResult, OpenedRow, WindowRow
 from benchlay.report.numbers import shown
 from benchlay.report.words import Ink, listed, tame
 
@@ -28,6 +29,7 @@ def faults_text(result: FaultsResult, *, ink: Ink = PLAIN) -> str:
             lines.append(f"{ink.paint(_WORD[outcome])} {heading}:")
             lines += _table(rows)
             lines.append("")
+    lines += guard_lines(result)
     lines.append(summary(result))
     lines += _remarks(result)
     lines += [f"caution: {caution}" for caution in CAUTIONS]
@@ -63,6 +65,10 @@ def _table(rows: Sequence[FaultRow]) -> Iterator[str]:
     for row in rows:
         seen.setdefault((row.kind, _family(row)), []).append(row)
     cells += [_cells(same) for same in seen.values()]
+    yield from _columns(cells)
+
+
+def _columns(cells: Sequence[Sequence[str]]) -> Iterator[str]:
     widths = [max(len(line[i]) for line in cells) for i in range(len(cells[0]))]
     for line in cells:
         padded = (cell.ljust(width) for cell, width in zip(line, widths, strict=True))
@@ -86,6 +92,69 @@ def _cells(same: Sequence[FaultRow]) -> tuple[str, ...]:
         tame(row.reason or "" if row.through is None else row.through),
         ranges,
         listed([one.state for one in same]),
+    )
+
+
+def guard_lines(result: FaultsResult) -> list[str]:
+    """Write what panels and windows hold back, and what access panels give access to."""
+    lines: list[str] = []
+    if result.panels:
+        cells: list[tuple[str, ...]] = [
+            ("panel", "takes", "for", "withstands", "margin", "governs")
+        ]
+        cells += [_panel(row) for row in result.panels]
+        lines += ["panels and lids as guards, over states and faults:", *_columns(cells), ""]
+    if result.windows:
+        cells = [("window", "in", "at", "density", "needed", "for a full beam")]
+        cells += [_window(row) for row in result.windows]
+        lines += ["viewing windows:", *_columns(cells), ""]
+    if result.opened:
+        cells = [("open", "in", "access", "lets out", "x limit", "within reach inside")]
+        cells += [_opened(row) for row in result.opened]
+        lines += ["what is accessible when a panel or lid is open:", *_columns(cells), ""]
+    return lines
+
+
+def _sheet(kind: str, name: str) -> str:
+    return tame(name if kind == "panel" else f"{kind} {name}")
+
+
+def _panel(row: PanelLoad) -> tuple[str, ...]:
+    unit = row.unit or ""
+    margin = shown(row.margin) if row.margin is not None else f"not shown: {row.reason}"
+    governs = "" if row.state is None else f"{row.fault or 'as it is'}, in {row.state}"
+    return (
+        _sheet(row.sheet, row.panel),
+        shown(row.value, unit),
+        shown(row.exposed_s, "s"),
+        shown(row.limit, unit),
+        margin,
+        tame(governs),
+    )
+
+
+def _window(row: WindowRow) -> tuple[str, ...]:
+    density = "opaque" if row.density is None else shown(row.density)
+    needs = [shown(n) for n in (row.needed_density, row.needed_density_full)]
+    marks = ["" if ok is not False else " (too little)" for ok in (row.enough, row.enough_for_full)]
+    return (
+        tame(row.window),
+        tame(row.opening),
+        shown(row.wavelength_nm, "nm"),
+        density,
+        *(need + mark for need, mark in zip(needs, marks, strict=True)),
+    )
+
+
+def _opened(row: OpenedRow) -> tuple[str, ...]:
+    inside = f"{shown(row.inside_W, 'W')} ({shown(row.inside_times_limit)} x limit)"
+    return (
+        _sheet(row.sheet, row.panel),
+        tame(row.state),
+        row.access,
+        "no beam" if row.power_W is None else shown(row.power_W, "W"),
+        shown(row.times_limit),
+        "no beam" if row.inside_W is None else inside,
     )
 
 

@@ -5,9 +5,17 @@ from __future__ import annotations
 from collections.abc import Iterator, Sequence
 from math import degrees
 
-from benchlay.faults import Fault, Light, Range, Review
+from benchlay.faults import Fault, Light, Opened, Range, Review, Window
 from benchlay.placing.placed import Placed
-from benchlay.report.faults import FaultFinding, FaultRow, FaultsResult, Resolution
+from benchlay.report.faults import (
+    FaultFinding,
+    FaultRow,
+    FaultsResult,
+    OpenedRow,
+    Resolution,
+    WindowRow,
+)
+from benchlay.results.panels import panel_rows
 
 ASSUMED = (
     "one fault at a time, in the states as they are written; two at once are not reviewed",
@@ -19,6 +27,8 @@ ASSUMED = (
     "never half way",
     "light of another wavelength is shown by taking an optic's stated coatings off: bare glass, "
     "not a coating that reflects more than that",
+    "a panel's irradiance is that on the axis of the beam whose chief ray ends on it, across the "
+    "beam, held for the time base of its limit: no interlock is counted on to cut it short",
     "beams as `check` follows them, each taken alone; mirror reflections off panels are followed",
 )
 
@@ -40,6 +50,9 @@ def faults_result(review: Review, placed: Placed, file: str, sha256: str) -> Fau
             max(review.step_mm, review.narrowest_mm),
         ),
         (*ASSUMED, *off),
+        panel_rows(review.budgets),
+        tuple(map(_window, review.windows)),
+        tuple(map(_opened, review.opened)),
     )
 
 
@@ -104,4 +117,48 @@ def _finding(light: Light, fault: Fault) -> FaultFinding:
         light.times,
         light.at,
         light.direction,
+    )
+
+
+def _window(window: Window) -> WindowRow:
+    pane = window.pane
+    return WindowRow(
+        pane.element,
+        pane.opening,
+        pane.wavelength_nm,
+        pane.density,
+        window.arriving_w,
+        window.state,
+        window.fault,
+        window.needed,
+        window.needed_full,
+        _enough(pane.density, window.needed),
+        _enough(pane.density, window.needed_full),
+    )
+
+
+def _enough(density: float | None, needed: float | None) -> bool | None:
+    """Tell whether a density is enough; None where it is not known what is needed."""
+    if needed is None:
+        return None
+    return density is None or density >= needed
+
+
+def _opened(opened: Opened) -> OpenedRow:
+    light = opened.leaves
+    inside = opened.inside_w
+    return OpenedRow(
+        opened.sheet[1],
+        opened.sheet[0],
+        opened.state,
+        opened.access,
+        None if light is None else light.power_w,
+        None if light is None else light.times,
+        None if light is None else light.source,
+        None if light is None else light.wavelength_nm,
+        None if light is None else light.left,
+        None if light is None else light.at,
+        None if light is None else light.direction,
+        inside,
+        None if inside is None or not opened.inside_limit_w else inside / opened.inside_limit_w,
     )

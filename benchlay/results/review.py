@@ -89,11 +89,15 @@ def review(checked: Checked, paper: Paper, on: date, *, in_full: bool) -> Review
     if not in_full:
         return short
     from benchlay.results.details import with_details
+    from benchlay.results.panels import panels_of_states
     from benchlay.results.stretches import with_stretches
 
     full = with_details(short, trace, checked.states, checked.zones)
     context = Context(trace, checked.limits)
-    full = full._replace(findings=with_stretches(full.findings, context))
+    full = full._replace(
+        findings=with_stretches(full.findings, context),
+        panels=panels_of_states(context, checked.states),
+    )
     if checked.zones is None:
         return full
     from benchlay.results.hazards import with_hazards

@@ -56,7 +56,7 @@ def test_every_credible_fault_is_there(bench):
         ("missing", "T1", "T1 missing"),
         ("opened", "south", "south open, its interlock failed"),
         ("opened", "north", "north left open"),
-        ("opened", "top", "top open, its interlock failed"),
+        ("opened", "top", "lid top open, its interlock failed"),
         ("wavelength", "HW", "HW met by light its coatings are not for"),
         ("wavelength", "PBS", "PBS met by light its coatings are not for"),
         ("wavelength", "M1", "M1 met by light its coatings are not for"),
