@@ -77,8 +77,9 @@ def why_open(layout: Layout, line: EnclosureLine) -> tuple[str, ...]:
     if enclosure is None or not line.enclosed:
         return ("the bench has no enclosure",)
     out = []
-    if any(side.panel is None for side in line.sides):
-        out.append("a side of the enclosure has no panel")
+    gaps = [math.dist(side.start, side.end) for side in line.sides if side.panel is None]
+    if gaps:
+        out.append(f"no panel closes {max(gaps):.3g} mm of the enclosure's side")
     out += [f"panel {name} is open" for name in sorted(enclosure.panels) if _open(enclosure, name)]
     out += [f"lid {name} is open" for name in sorted(enclosure.lids) if enclosure.lids[name].open]
     if not any(lid.open for lid in enclosure.lids.values()) and not _covered(enclosure, line):

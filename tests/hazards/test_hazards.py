@@ -130,7 +130,7 @@ def test_three_states_differ_as_they_should():
     [
         ("    top: {height: 300,", "    top: {open: yes, height: 300,", "lid top is open"),
         ("[1000, 600], [0, 600]]}", "[1000, 500], [0, 500]]}", "no lid covers all"),
-        ("    west: {from: [0, 600], to: [0, 0]}\n", "", "a side of the enclosure has no panel"),
+        ("    west: {from: [0, 600], to: [0, 0]}\n", "", "no panel closes 600 mm"),
     ],
 )
 def test_what_is_not_whole_and_shut_is_in_reach(old, new, reason):
@@ -227,6 +227,40 @@ def test_scattered_light_that_gets_out_asks_for_eyewear_too():
     # 39.3 W/m² through 7 mm: 1.5 mW, above 0.39 mW (class 1) and 1 mW (class 2), below 5 mW.
     assert found.accessible.class_as_modelled == "3R"
     assert "scattered from T1" in found.accessible.outside.governs
+
+
+PORT = """
+bench: {size: [1000, 600], medium: vacuum}
+sources:
+  green: {wavelength: 532, power: 150 mW, beam: {waist_radius: 0.5}, at: [100, 300], heading: 0}
+routes: {out: [green, east.port]}
+enclosure:
+  material: black
+  panels:
+    south: {from: [0, 0], to: [1000, 0]}
+    east:
+      from: [1000, 0]
+      to: [1000, 600]
+      openings: {port: {along: 300, height: 100, diameter: 30}}
+    north: {from: [1000, 600], to: [0, 600]}
+    west: {from: [0, 600], to: [0, 0]}
+  lids:
+    top: {height: 300, outline: [[0, 0], [1000, 0], [1000, 600], [0, 600]]}
+materials: {black: {thickness: 2, diffuse: 0, specular: 0}}
+"""
+
+
+def test_light_handed_over_is_told_and_not_counted_as_reached():
+    found = hazards(PORT)["as drawn"]
+    assert found.accessible.counts == "outside"
+    assert found.accessible.outside.lines == ()
+    assert any("handed over at east.port" in words for words in found.assumptions)
+    # The same beam, not meant to leave, is in reach.
+    stray = hazards(PORT.replace("routes: {out: [green, east.port]}\n", ""))["as drawn"]
+    (line,) = stray.accessible.outside.lines
+    assert line.class_as_modelled == stray.accessible.class_as_modelled == "3B"
+    assert [d.at[0] for d in stray.distances] == pytest.approx([1000.0])
+    assert not any("handed over" in words for words in stray.assumptions)
 
 
 def test_light_that_has_no_limit_is_never_passed_over():
