@@ -85,6 +85,28 @@ def _elevations(subject: Subject) -> Iterator[Planned]:
         yield Planned(f"elevation-{name}", elevation)
 
 
+def _room(subject: Subject) -> Iterator[Planned]:
+    from benchlay.checks import Context, limits_of
+    from benchlay.hazards import hazards_of, signs_of
+    from benchlay.sheets.room import Subject as RoomSubject
+    from benchlay.sheets.room import room_sheet
+    from benchlay.zones.controlled import controlled_areas
+
+    trace, layout = subject.trace, subject.trace.placed.base.layout
+    room = layout.room
+    if room is None:
+        return
+
+    def sheet(number: str) -> Sheet:
+        states = None if subject.state is None else (subject.state,)
+        found = hazards_of(Context(trace, limits_of(trace.placed)), subject.zones, states)
+        areas, missing = controlled_areas(subject.zones), tuple(subject.zones.not_computed)
+        shown = RoomSubject(layout, areas, signs_of(layout, found), missing)
+        return room_sheet(shown, room, subject.sha256, number)
+
+    yield Planned("room", sheet)
+
+
 def _panels(subject: Subject) -> Iterator[Planned]:
     from benchlay.making.parts import parts_of
     from benchlay.sheets.shop.panel import panel_sheet
@@ -167,6 +189,7 @@ SHEETS: Mapping[str, Callable[[Subject], Iterable[Planned]]] = {
     "plan": _plan,
     "elevation": _elevations,
     "safety": _safety,
+    "room": _room,
     "panel": _panels,
     "drilling": _drilling,
     "setting-out": _setting_out,
