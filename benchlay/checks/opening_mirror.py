@@ -60,7 +60,9 @@ What it does not see
 Two mirrors, and curved ones. A mirror held in a stray below the class: only beams of class 3B or
 4 by themselves are followed, each with all of its power, and what a tube holds is left out. That
 a beam has spread so far beyond the gap that it is within the limit is not credited. Optics that
-pass light, tubes and what has a hole count as holding back nothing; a panel or lid that stands
+pass light, tubes and what has a hole count as holding back nothing. An opening that glass fills
+counts for what the glass lets through of a beam met squarely, its faces passing all; an aperture or
+tube that fills one counts as closing it. A panel or lid that stands
 open in the state counts as a gap, one that could be opened does not. On an enclosure without a
 lid only its sides are looked at: `open-side` tells of the top.
 
@@ -87,6 +89,7 @@ from benchlay.checks._check import (
 from benchlay.findings import Finding, Severity
 
 if TYPE_CHECKING:
+    from benchlay.checks._check.gaps import Thrown
     from benchlay.checks._check.inside import Inside
     from benchlay.coverage.enclosed import Enclosed
     from benchlay.coverage.gaps import Gap
@@ -102,36 +105,39 @@ def check(context: Context, variant: int) -> Iterator[Found]:
     if context.layout(variant).enclosure is None:
         return
     enclosed, gaps = context.gaps.of(variant)
-    if enclosed is None or not enclosed.line.enclosed or all(gap.roofless for gap in gaps):
+    if enclosed is None or not (gaps or enclosed.closed):
         return
     yield from unjudged(context, variant)
     # Loaded where there is a gap: a tight enclosure needs none of it.
     from benchlay.coverage.mirrors import guilty
 
-    legs = context.gaps.strong(variant)
-    if not legs:
+    thrown = context.gaps.thrown(variant)
+    if not thrown:
         return
     among = context.gaps.among_bodies(variant)
-    for gap in gaps:
-        if gap.roofless:
-            continue
-        one = next((one for one in legs if guilty(among, gap, one.leg)), None)
-        if one is not None:
-            yield _finding(context, variant, among, gap, (one, legs))
+    for one in thrown:
+        leg = next((leg for leg in one.legs if guilty(among, one.gap, leg.leg)), None)
+        if leg is not None:
+            yield _finding(context, variant, among, one, leg)
 
 
 def _finding(
     context: Context,
     variant: int,
     enclosed: Enclosed,
-    gap: Gap,
-    who: tuple[Inside, list[Inside]],
+    thrown: Thrown,
+    one: Inside,
 ) -> Finding:
     from benchlay.checks._check.gaps import named, span_of
     from benchlay.checks._check.inside import class_limit_w
 
-    one, legs = who
-    limit = class_limit_w(context, variant, one.beam)
+    gap = thrown.gap
+    where = named(gap) + (f" and '{thrown.glass}' in it" if thrown.glass else "")
+    limit = (
+        float(context.limit_w[one.beam])
+        if thrown.glass
+        else class_limit_w(context, variant, one.beam)
+    )
     element, name = gap.key
     return Finding(
         check=NAME,
@@ -140,14 +146,17 @@ def _finding(
             f"one flat mirror between '{context.left_name(one.beam)}' and "
             f"{context.end_words(one.beam)} could throw {power_text(one.power_w)} of "
             f"{wavelength_text(context.wavelength_nm(one.beam))} from "
-            f"'{context.source_of(one.beam)}' out through {named(gap)}: "
+            f"'{context.source_of(one.beam)}' out through {where}: "
             f"{exposure_words(context, one.beam, one.power_w)}"
         ),
         expected=(
-            f"no line of sight from a beam above {power_text(limit)} (class 3B or 4) to a gap, "
-            "but where a tube holds it"
+            f"no more than {power_text(limit)} through '{thrown.glass}'"
+            if thrown.glass
+            else f"no line of sight from a beam above {power_text(limit)} (class 3B or 4) to a "
+            "gap, but where a tube holds it"
         ),
-        remedy=_remedy(gap, enclosed, legs),
+        remedy=_remedy(gap, enclosed, thrown.legs)
+        + (f", or make '{thrown.glass}' denser at this wavelength" if thrown.glass else ""),
         element=element,
         beam=int(context.numbers[one.beam]),
         at=gap.at,

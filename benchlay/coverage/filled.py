@@ -19,24 +19,25 @@ _TOUCH_MM = 1e-6
 _CIRCLE = 64  # sides of the polygon round a round end
 
 
-def filled_openings(layout: Layout, scene: Scene, variant: int) -> frozenset[str]:
-    """Return the names ("east.port") of openings that one element fills in a state.
+def filled_openings(layout: Layout, scene: Scene, variant: int) -> dict[str, str]:
+    """Return by opening ("east.port") the name of the element that fills it in a state.
 
     The element stands in the passage, and its bodies (glass, plate, mount, box) together are at
     least as large as the opening.
     """
     enclosure = layout.enclosure
     if enclosure is None or not any(panel.openings for panel in enclosure.panels.values()):
-        return frozenset()
-    windows = [
-        window
-        for name, panel in sorted(enclosure.panels.items())
-        for window in windows_of(enclosure, layout, name, panel)
-    ]
-    return frozenset(w.name for w in windows if _is_filled(w, scene, variant))
+        return {}
+    found = {}
+    for name, panel in sorted(enclosure.panels.items()):
+        for window in windows_of(enclosure, layout, name, panel):
+            owner = _filled_by(window, scene, variant)
+            if owner is not None:
+                found[window.name] = scene.elements[owner]
+    return found
 
 
-def _is_filled(window: Window, scene: Scene, variant: int) -> bool:
+def _filled_by(window: Window, scene: Scene, variant: int) -> int | None:
     s = scene.solids
     start, end, low, high = window.box
     middle = np.array(window.place((0.5 * (start + end), 0.5 * (low + high))))
@@ -47,8 +48,8 @@ def _is_filled(window: Window, scene: Scene, variant: int) -> bool:
     for owner in sorted(set(s.owner[rows].tolist())):
         shadows = _shadows(window, scene, rows[s.owner[rows] == owner])
         if _covers(list(shadows), outline_of_hole(window)):
-            return True
-    return False
+            return int(owner)
+    return None
 
 
 def _covers(shapes: list[Convex], hole: Convex) -> bool:

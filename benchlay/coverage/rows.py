@@ -36,7 +36,9 @@ class CoverageRow(NamedTuple):
 def coverage_of(trace: Trace, variant: int) -> Iterator[CoverageRow]:
     """Yield the coverage of every place of a state; nothing for a layout without enclosure."""
     state = trace.placed.states[variant]
-    enclosed = enclosed_of(state.layout, filled_openings(state.layout, trace.scene, variant))
+    enclosed = enclosed_of(
+        state.layout, frozenset(filled_openings(state.layout, trace.scene, variant))
+    )
     if enclosed is None:
         return
     gaps = gaps_of(enclosed)

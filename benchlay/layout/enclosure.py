@@ -48,7 +48,7 @@ class Opening(Record):
         NOT_NEGATIVE,
         default=0.0,
         name="depth",
-        meaning="length of the duct behind it; 0: a hole in the sheet",
+        meaning="length of the duct from the inner face outwards; 0: a hole in the sheet",
     )
 
     @property

@@ -36,11 +36,11 @@ def _stretches(context: Context, finding: Reported) -> Iterator[Stretch]:
     from benchlay.coverage.mirrors import stretches
 
     variant = context.trace.scene.variants.index(finding.worst_state)
-    _, gaps = context.gaps.of(variant)
     among = context.gaps.among_bodies(variant)
-    legs = sorted(context.gaps.strong(variant), key=lambda one: one.beam)
-    for gap in gaps:
-        for one in legs if is_about(finding.id, opening_mirror.NAME, gap) else ():
+    for gap, legs, _ in context.gaps.thrown(variant):
+        if not is_about(finding.id, opening_mirror.NAME, gap):
+            continue
+        for one in sorted(legs, key=lambda one: one.beam):
             for start, end in stretches(among, gap, one.leg):
                 beam = int(context.numbers[one.beam])
                 yield Stretch(beam, one.leg.at(start), one.leg.at(end))

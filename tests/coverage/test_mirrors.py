@@ -240,13 +240,32 @@ def test_a_body_in_the_way_counts():
     assert fired(box(north=SLOT, elements=block.replace("to_height: 290", "to_height: 20")))
 
 
-def test_an_opening_that_an_element_fills_is_none():
-    port = opening("north", "{along: 500, height: 100, diameter: 25}")
-    filled = "  W: {kind: window, in: north.hole, diameter: 25.4, mount: none}\n"
-    small = filled.replace("25.4", "24")
-    plain = "  T1: {kind: target, after: red, distance: 400}\n"
-    assert fired(box(north=port, elements=plain + filled)) == []
-    assert fired(box(north=port, elements=plain + small))
+PORT = opening("north", "{along: 500, height: 100, diameter: 25}")
+PLAIN = "  T1: {kind: target, after: red, distance: 400}\n"
+
+
+@pytest.mark.parametrize(
+    ("element", "fires"),
+    [
+        ("{kind: screen, in: north.hole, size: [26, 26]}", False),
+        ("{kind: screen, in: north.hole, size: [26, 20], mount: none}", True),  # does not fill it
+        ("{kind: window, in: north.hole, diameter: 25.4, mount: none}", True),
+        ("{kind: filter, in: north.hole, diameter: 25.4, density: 1.1, mount: none}", True),
+        ("{kind: filter, in: north.hole, diameter: 25.4, density: 2.2, mount: none}", False),
+        ("{kind: filter, in: north.hole, diameter: 24, density: 2.2, mount: none}", True),
+    ],
+)
+def test_what_fills_an_opening(element, fires):
+    """50 mW and a limit of 385 uW for looking on: a density of 2.11 is needed."""
+    assert bool(fired(box(north=PORT, elements=f"{PLAIN}  W: {element}\n"))) == fires
+
+
+def test_what_glass_lets_through_is_told():
+    dim = "  W: {kind: filter, in: north.hole, diameter: 25.4, density: 1, mount: none}\n"
+    (finding,) = fired(box(north=PORT, elements=PLAIN + dim))
+    assert finding.value == pytest.approx(5e-3, rel=1e-9)
+    assert finding.limit == pytest.approx(3.85e-4, rel=1e-3)
+    assert "through 'north.hole' and 'W' in it" in finding.message
 
 
 def test_the_stretches_of_a_finding():

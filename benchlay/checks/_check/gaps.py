@@ -12,6 +12,7 @@ from benchlay.coverage.gaps import EDGE, OPENING, OVER, SHEET, SIDE, UNDER, Gap,
 from benchlay.coverage.places import Astray, standpoints
 from benchlay.document.span import Span
 from benchlay.layout.layout import Layout
+from benchlay.named import NamedTuple
 from benchlay.tracing.beams import FACE
 from benchlay.tracing.front import EMITTED
 
@@ -29,18 +30,28 @@ def _gaps(layout: Layout, closed: frozenset[str]) -> _Open:
     return enclosed, [] if enclosed is None else gaps_of(enclosed)
 
 
+class Thrown(NamedTuple):
+    """A gap with the stretches of beams that might be thrown there, and the glass in its way."""
+
+    gap: Gap
+    legs: list[Inside]
+    glass: str | None = None
+
+
 class Gaps:
     """What is open in each state; worked out when first asked for."""
 
     def __init__(self, context: Context) -> None:
         self._context = context
         self._known: dict[int, _Open] = {}
+        self._fillings: dict[int, dict[str, str]] = {}
 
     def of(self, variant: int) -> _Open:
         """Return the enclosure of a state (None without one) and its gaps."""
         if variant not in self._known:
             layout, scene = self._context.layout(variant), self._context.trace.scene
-            closed = filled_openings(layout, scene, variant)
+            self._fillings[variant] = filled_openings(layout, scene, variant)
+            closed = frozenset(self._fillings[variant])
             self._known[variant] = self._alike(layout, closed) or _gaps(layout, closed)
         return self._known[variant]
 
@@ -54,12 +65,52 @@ class Gaps:
                 return enclosed._replace(layout=layout), gaps
         return None
 
-    def strong(self, variant: int) -> list[Inside]:
-        """Return what of the beams of class 3B and 4 runs inside a state's enclosure."""
+    def thrown(self, variant: int) -> list[Thrown]:
+        """Return by gap what of the beams of class 3B and 4 a mirror might throw there.
+
+        The top of an enclosure without a lid is left out. An opening that glass fills counts for
+        what the glass lets through, as far as that is still above the accessible limit.
+        """
         from benchlay.checks._check.inside import strong
 
+        enclosed, gaps = self.of(variant)
+        sought = [gap for gap in gaps if not gap.roofless]
+        glazed = self._glazed(variant)
+        if enclosed is None or not enclosed.line.enclosed or not (sought or glazed):
+            return []
+        legs = strong(self._context, variant, enclosed)
+        found = [Thrown(gap, legs) for gap in sought]
+        for gap, element in glazed:
+            found.append(Thrown(gap, self._let_through(element, legs), element))
+        return [one for one in found if one.legs]
+
+    def _glazed(self, variant: int) -> list[tuple[Gap, str]]:
+        """Return the openings that an element of glass fills."""
         enclosed, _ = self.of(variant)
-        return [] if enclosed is None else strong(self._context, variant, enclosed)
+        if enclosed is None or not enclosed.closed:
+            return []
+        fillings, elements = self._fillings[variant], self._context.state(variant).elements
+        glass = {
+            name: element
+            for name, element in fillings.items()
+            if elements[element].element.record.glass_of() is not None
+            and "transmitted" in elements[element].element.record.branches()
+        }
+        whole = gaps_of(enclosed._replace(closed=frozenset())) if glass else []
+        return [(gap, glass[gap.through]) for gap in whole if gap.through in glass]
+
+    def _let_through(self, element: str, legs: list[Inside]) -> list[Inside]:
+        """Return what the glass of an element leaves of beams: its faces are taken to pass all."""
+        context, scene = self._context, self._context.trace.scene
+        faces = scene.faces.owner == scene.elements.index(element)
+        volumes = np.unique(scene.behind[faces & (scene.behind >= 0)])
+        found = []
+        for one in legs:
+            wave = int(context.trace.beams.start.wave[one.beam])
+            share = float(scene.bulks.passes[volumes, wave].min()) if len(volumes) else 1.0
+            if one.power_w * share > float(context.limit_w[one.beam]):
+                found.append(one._replace(power_w=one.power_w * share))
+        return found
 
     def among_bodies(self, variant: int) -> Enclosed:
         """Return the enclosure of a state with the bodies on the bench; its sides if roofless."""

@@ -32,14 +32,17 @@ def opened(trace: Trace, variant: int, decimal: str) -> Opened:
     """Return the gaps that light could be sent or thrown to, and from which stretches of beams."""
     context = Context(trace, limits_of(trace.placed))
     enclosed, gaps = context.gaps.of(variant)
-    if enclosed is None or not gaps:
+    if enclosed is None:
         return Opened()
     places = context.gaps.astray(variant)
-    thrown = _thrown(context, variant, gaps) if enclosed.line.enclosed else {}
+    thrown = _thrown(context, variant)
     marks: list[GapMark] = []
     words, told = [], set()
-    for gap in gaps:
-        place = next((one for one in places if sees(enclosed, gap, one.at)), None)
+    # Openings that glass fills are gaps for what is thrown only.
+    glazed = [one.gap for one in context.gaps.thrown(variant) if one.glass is not None]
+    for gap in [*gaps, *glazed]:
+        within = gap in gaps
+        place = next((p for p in places if within and sees(enclosed, gap, p.at)), None)
         if gap.key in told or (place is None and gap.key not in thrown):
             continue
         told.add(gap.key)
@@ -81,15 +84,14 @@ def _mark(name: str, gap: Gap, enclosed: Enclosed, decimal: str) -> GapMark:
     return GapMark(name, label, gap.at[:2], ends)
 
 
-def _thrown(context: Context, variant: int, gaps: list[Gap]) -> dict[_Key, list[_Part]]:
+def _thrown(context: Context, variant: int) -> dict[_Key, list[_Part]]:
     """Return by gap the stretches of strong beams, in plan, that see it."""
-    legs = context.gaps.strong(variant)
-    sought = [gap for gap in gaps if not gap.roofless]
-    if not legs or not sought:
+    thrown = context.gaps.thrown(variant)
+    if not thrown:
         return {}
     among = context.gaps.among_bodies(variant)
     found: dict[_Key, list[_Part]] = {}
-    for gap in sought:
+    for gap, legs, _ in thrown:
         for one in legs:
             for start, end in stretches(among, gap, one.leg):
                 part = (one.leg.at(start)[:2], one.leg.at(end)[:2])
