@@ -40,6 +40,7 @@ def fixed_products(faces: Faces, solids: Solids, sides: tuple[Ints, Ints]) -> Fi
         *_own_figures(f, own),
         pierced,
         *_hole_figures(s),
+        np.sqrt(np.einsum("hki,hki->h", s.hole_axes, s.hole_axes)),
         1.0 - np.einsum("pki,pi->pk", s.plane_normal[plane_of[s.plane_solid]], s.plane_normal) ** 2,
         f.present & (f.inside != Inside.BOTH),
         f.acts == Acts.LENS,

@@ -175,6 +175,7 @@ class Fixed(NamedTuple):
     pierced: Flags  # (S,) has holes
     hole_axes: Floats  # (3, 3 H) columns: ways through, and half axes over their squared lengths
     hole_offsets: Floats  # (2, 3, H) of their near and far planes: middle . those columns
+    hole_sizes: Floats  # (H,) mm, of circles round openings, of any shape
     plane_sines2: Floats  # (P, K) squared sines of planes with those of their own solid
     enterable: Flags  # (V, F) faces that stand there and can be met from outside
     lens: Flags  # (F,) acts as an ideal lens

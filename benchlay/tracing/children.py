@@ -177,10 +177,11 @@ def _divided(core: Front, face: Ints, rows: Ints, state: RunState, *, spilled: b
     owner = f.owner[faces]
     event = np.full(2 * count, REFLECTED)
     event[count:] = TRANSMITTED
-    node = np.full(2 * count, -1)
+    meant = np.concatenate((state.ways.main[face, 0], state.ways.main[face, 1]))
+    node: Ints | int = -1
     if not spilled and np.count_nonzero(core.node >= 0):
         node = state.ways.follow(both.node, owner, f.name[faces], event)
-    meant = (node >= 0) | state.ways.main[faces, event - REFLECTED]
+        meant |= node >= 0
     beyond = slice(count, None)
     both.within[beyond] = meeting.beyond
     both.index[beyond] = meeting.n_out

@@ -99,16 +99,15 @@ def _solid_covers(
     if len(pierced):
         solid = solid[pierced]
         point = (front.position + hits.distance[:, None] * front.direction)[pierced]
-        size = np.sqrt(np.einsum("hki,hki->h", s.hole_axes, s.hole_axes))
         sides = _apart(point, s.hole_centre), _apart(point, s.hole_centre + s.hole_through)
-        touched = np.minimum(*sides) < size + spread[pierced, None]
+        touched = np.minimum(*sides) < scene.fixed.hole_sizes + spread[pierced, None]
         covers[pierced] &= ~(touched & (s.hole_solid == solid[:, None])).any(axis=1)
     return covers
 
 
 def _apart(point: Floats, centre: Floats) -> Floats:
     away = point[:, None, :] - centre
-    apart: Floats = np.sqrt(np.einsum("bhi,bhi->bh", away, away))
+    apart: Floats = np.sqrt(dot(away, away))
     return apart
 
 

@@ -213,6 +213,8 @@ def _after_passage(front: Front, length: Floats, state: RunState) -> tuple[Front
 
     What it absorbs is booked.
     """
+    if not state.acts_inside:
+        return front, None
     scene = state.scene
     rows = np.flatnonzero(front.within != OUTSIDE)
     if not len(rows) or not scene.bulks.kind[front.within[rows]].any():

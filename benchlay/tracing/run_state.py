@@ -40,6 +40,7 @@ class RunState:
         self.legs: list[Leg] = []
         self.landings: list[tuple[Ints, Ints, Ints, Floats]] = []
         self.count = 0
+        self.acts_inside = bool(scene.bulks.kind.any())  # whether any optic does more than refract
         self.handing: Handing | None = None
 
     def book(self, beam: Ints, sink: Ints | int, name: Ints | int, power: Floats) -> None:

@@ -19,6 +19,7 @@ def test_the_nearest_is_that_of_all_holes(share_there, seed):
     row, column = there.nonzero()
     every = np.stack((x[column], y[row]), axis=1)
     holes = hole_miss._Holes(x, y, there)
+    assert hole_miss._stands_over(holes, outline) == (not convex.distances(every, outline).all())
     for place, away in (
         (outline, convex.distances(every, outline)),
         (centre[None], np.hypot(*(every - centre).T)),
