@@ -21,7 +21,7 @@ else:
         """Turns the annotations of a class body into fields."""
 
         def __new__(cls, name, bases, body):
-            if bases != (tuple,) and not any(hasattr(base, "_fields") for base in bases):
+            if any(base.__base__ is tuple for base in bases):  # a class of `NamedTuple` itself
                 fields = tuple(body.get("__annotations__", ()))
                 defaults = {field: body[field] for field in fields if field in body}
                 if tuple(defaults) != fields[len(fields) - len(defaults) :]:

@@ -47,20 +47,22 @@ layout's `limits.clip`, 1 % unless it says otherwise (common practice).
 from __future__ import annotations
 
 from collections.abc import Iterator
+from typing import TYPE_CHECKING
 
 from benchlay.checks._check import (
     Context,
     Loss,
-    Room,
     above,
     length_text,
     place_words,
     power_text,
-    room_at,
     rounded_up,
     share_text,
 )
 from benchlay.findings import Finding, Severity
+
+if TYPE_CHECKING:
+    from benchlay.checks._check.openings import Room
 
 NAME = "clipped"
 
@@ -105,6 +107,8 @@ def _finding(context: Context, variant: int, loss: Loss, clip: float) -> Finding
 
 def _room(context: Context, loss: Loss, clip: float) -> Room | None:
     """Return what the beam needs at the face it is meant for, where it meets its plane."""
+    from benchlay.checks._check.openings import room_at
+
     meetings = context.meetings
     beams = context.trace.beams
     if context.routes.met(loss.beam) == loss.name:

@@ -15,7 +15,6 @@ from benchlay.checks._check.exits import Exit, WayOut, exits_of, place_of, way_o
 from benchlay.checks._check.exposed import against, exposure_words
 from benchlay.checks._check.limits import LineLimit, floors_w, limits_of
 from benchlay.checks._check.meetings import Loss, Mark
-from benchlay.checks._check.openings import Room, room_at
 from benchlay.checks._check.power import accessible_w
 from benchlay.checks._check.protocol import Check, Found, Run, Unevaluated
 from benchlay.checks._check.routes import Leg
@@ -45,7 +44,6 @@ __all__ = [
     "LineLimit",
     "Loss",
     "Mark",
-    "Room",
     "Run",
     "Unevaluated",
     "WayOut",
@@ -68,7 +66,6 @@ __all__ = [
     "place_of",
     "place_words",
     "power_text",
-    "room_at",
     "rounded_up",
     "share_text",
     "unjudged",
