@@ -14,6 +14,7 @@ if TYPE_CHECKING:
     from benchlay.sheets.primitives import Sheet
     from benchlay.sheets.shop.listing import Page
     from benchlay.sheets.shop.rows import Rows
+    from benchlay.sheets.template import Tile
     from benchlay.tracing.trace import Trace
     from benchlay.zones import Zones
 
@@ -107,6 +108,22 @@ def _room(subject: Subject) -> Iterator[Planned]:
     yield Planned("room", sheet)
 
 
+def _template(subject: Subject) -> Iterator[Planned]:
+    from benchlay.sheets.drafting.legs import legs_of
+    from benchlay.sheets.template import drawing_of, name_of, template_sheet, tiles
+    from benchlay.zones import limits_of
+
+    trace, state = subject.trace, subject.trace.placed.states[subject.variant]
+    legs = legs_of(trace, limits_of(trace), subject.variant, ".").legs
+    drawing = drawing_of(state, legs)
+    for tile in tiles(state.layout, drawing):
+
+        def sheet(_: str, tile: Tile = tile) -> Sheet:
+            return template_sheet(tile, drawing, state.layout, subject.sha256)
+
+        yield Planned(name_of(tile), sheet, numbered=False, forms=("pdf",), within="template")
+
+
 def _panels(subject: Subject) -> Iterator[Planned]:
     from benchlay.making.parts import parts_of
     from benchlay.sheets.shop.panel import panel_sheet
@@ -195,6 +212,7 @@ SHEETS: Mapping[str, Callable[[Subject], Iterable[Planned]]] = {
     "setting-out": _setting_out,
     "parts": _parts,
     "cut": _cuts,
+    "template": _template,
 }
 """All kinds of sheet there are, by name, in the order of the set.
 

@@ -47,6 +47,7 @@ _SIZES = ("A3", "A2", "A1", "A0")
 _READABLE = 20
 _BAND_MM, _SPACING_MM = 6.0, 3.0
 _MARK_MM = 5.0
+_BENCH = "bench"  # needs no line that leads to it
 _PERSON_MM = 250.0  # radius of what someone takes up (common practice)
 _WALK_MM = 900.0  # common practice: what two people need to pass
 
@@ -168,12 +169,14 @@ def _lettered(subject: Subject, room: Room, board: _Board) -> Iterator[Primitive
         words, anchor = " ".join(numbers), board.on_paper(at)
         width = _MARK_MM + 1.0 + width_mm(words, SMALL_MM)
         x, y = places.put(anchor, width, _MARK_MM)
-        yield from leader("TAGS", anchor, (x - width / 2 + _MARK_MM / 2, y))
+        yield from leader("TAGS", anchor, (x, y), width, _MARK_MM)
         yield from warning_mark((x - width / 2 + _MARK_MM / 2, y), _MARK_MM, words)
     for at, words in _names(subject.layout, room):
         anchor = board.on_paper(at)
-        place = places.put(anchor, width_mm(words, SMALL_MM), SMALL_MM)
-        yield from leader("TAGS", anchor, place)
+        width = width_mm(words, SMALL_MM)
+        place = places.put(anchor, width, SMALL_MM)
+        if words != _BENCH:
+            yield from leader("TAGS", anchor, place, width, SMALL_MM)
         yield Text("TAGS", place, words, SMALL_MM, Across.CENTRE, Up.MIDDLE)
 
 
@@ -196,7 +199,7 @@ def _names(layout: Layout, room: Room) -> Iterator[tuple[Point, str]]:
         for name in sorted(things):
             (ax, ay), (bx, by) = things[name].from_mm, things[name].to_mm
             yield ((ax + bx) / 2, (ay + by) / 2), f"{kind} {name}"
-    yield _middle(layout.bench.outline), "bench"
+    yield _middle(layout.bench.outline), _BENCH
 
 
 def _figure_box(dimension: Dimension, board: _Board) -> Window:

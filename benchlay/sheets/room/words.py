@@ -70,9 +70,13 @@ class Places:
         )
 
 
-def leader(layer: str, anchor: Point, at: Point) -> list[Line]:
-    """Return the line to what is meant, where words had to go far from it."""
-    return [Line(layer, anchor, at)] if math.dist(anchor, at) > _LED_MM else []
+def leader(layer: str, anchor: Point, at: Point, width: float, height: float) -> list[Line]:
+    """Return the line from what is meant to words that had to go far from it."""
+    if math.dist(anchor, at) <= _LED_MM:
+        return []
+    half = (width / 2 + _CLEAR_MM, height / 2 + _CLEAR_MM)
+    x, y = (min(max(a, m - h), m + h) for a, m, h in zip(anchor, at, half, strict=True))
+    return [Line(layer, anchor, (x, y))]
 
 
 def box_of(middle: Point, words: str, height_mm: float, turned: bool = False) -> Window:
