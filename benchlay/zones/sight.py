@@ -138,12 +138,20 @@ def _grazing(view: View, away: Floats, up: float) -> Iterator[tuple[Floats, Base
         ends = away[[first[i], second[i]]]
         raised = ends[:, 2] + up * _CLEAR_MM
         slope = np.asarray(np.linalg.solve(ends[:, :2], raised), dtype=np.float64)
-        yield slope, _beyond(view, ends[:, :2])
+        sector = _beyond(view, ends[:, :2])
+        if sector is not None:
+            yield slope, sector
 
 
-def _beyond(view: View, points: Floats) -> BaseGeometry:
-    """Return the hull of points (from the place, in plan) and of all that lies behind them."""
-    nearest = float(np.hypot(points[:, 0], points[:, 1]).min())
+def _beyond(view: View, points: Floats) -> BaseGeometry | None:
+    """Return the hull of points (from the place, in plan) and of all that lies behind them.
+
+    None where the place lies among them.
+    """
+    hull = shapely.convex_hull(shapely.multipoints(points))
+    nearest = float(shapely.distance(hull, shapely.Point(0.0, 0.0)))
+    if nearest <= 0.0:
+        return None
     far = points * max(4.0 * view.radius_mm / nearest, 4.0)
     return shapely.convex_hull(shapely.multipoints(np.concatenate([points, far]) + view.at[:2]))
 
@@ -197,10 +205,8 @@ def _shadow(view: View, solid: Floats, slope: Floats) -> BaseGeometry | None:
         return None
     share = (height[above] / (height[above] - height[below][:, None]))[..., None]
     cut = (away[above] + share * (away[below][:, None] - away[above]))[..., :2].reshape(-1, 2)
-    if float(np.hypot(cut[:, 0], cut[:, 1]).min()) <= 0.0:
-        return None
     hull = _beyond(view, cut)
-    return hull if hull.geom_type == "Polygon" else None
+    return hull if hull is not None and hull.geom_type == "Polygon" else None
 
 
 def reaches(view: View, solids: Sequence[Floats], band: Band, at: BaseGeometry) -> bool:

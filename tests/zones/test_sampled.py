@@ -89,6 +89,11 @@ SCENES = {
     "open lid": ring(300) + LID.replace("height: 300,", "height: 300, open: yes,"),
     "lid above the panels": ring(250) + LID,
     "open panel": ring(300, south=", open: yes") + LID,
+    "near a long wall": (
+        "",
+        """
+    enclosure: {to_height: 900, panels: {p: {from: [-3000, 290], to: [4000, 290]}}}\n""",
+    ),
     "room": L_ROOM,
     "room, lid and slot": L_ROOM + ring(300, east=SLOT) + LID,
     "bodies": (TALL, ""),
