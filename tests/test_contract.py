@@ -120,7 +120,7 @@ COVERAGE = keys(
         "gaps": listed(
             keys(
                 {"id": TEXT, "azimuth": PAIR, "elevation": PAIR, "solid_angle_sr": NUMBER,
-                 "through": TEXT, "width_mm": NUMBER}
+                 "through": TEXT, "width_mm": NUMBER, "at": maybe(POINT), "power_W": NUMBER}
             )
         ),
     }

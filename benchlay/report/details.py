@@ -80,7 +80,11 @@ class ControlledArea(NamedTuple):
 
 
 class Gap(NamedTuple):
-    """Directions in which nothing would stop a beam; angles in degrees."""
+    """Directions in which nothing would stop a beam; angles in degrees.
+
+    `at` is the middle of the gap, `power_W` the strongest beam that starts or arrives at the
+    place that sees it, in this state.
+    """
 
     id: str
     azimuth: Angles
@@ -88,6 +92,8 @@ class Gap(NamedTuple):
     solid_angle_sr: float
     through: str
     width_mm: float
+    at: Point | None = None
+    power_W: float = 0.0
 
 
 class Coverage(NamedTuple):

@@ -7,6 +7,7 @@ from math import degrees
 
 from benchlay.checks import open_side
 from benchlay.coverage.gaps import Gap as DrawnGap
+from benchlay.coverage.places import strongest
 from benchlay.coverage.rows import OUTSIDE, Seen, coverage_of
 from benchlay.findings import make_id
 from benchlay.report.details import Angles, Coverage, Gap
@@ -17,12 +18,14 @@ from benchlay.tracing import Trace
 def coverage_rows(trace: Trace, variant: int, findings: Sequence[Reported]) -> Iterator[Coverage]:
     """Yield the coverage of the places of a state; a gap's id is that of its finding."""
     ids = frozenset(f.id for f in findings if f.check == open_side.NAME)
+    powers = strongest(trace, variant)
     for row in coverage_of(trace, variant):
-        gaps = tuple(_gap(one, ids) for one in row.seen)
+        power_w = powers[row.place].power_w if row.place in powers else 0.0
+        gaps = tuple(_gap(one, ids, power_w) for one in row.seen)
         yield Coverage(trace.scene.variants[variant], row.place, row.covered, gaps)
 
 
-def _gap(seen: Seen, ids: frozenset[str]) -> Gap:
+def _gap(seen: Seen, ids: frozenset[str], power_w: float) -> Gap:
     gap, found = seen
     return Gap(
         id=_id(gap, ids),
@@ -31,6 +34,8 @@ def _gap(seen: Seen, ids: frozenset[str]) -> Gap:
         solid_angle_sr=found.solid_angle_sr,
         through=OUTSIDE if gap is None else gap.through,
         width_mm=0.0 if gap is None else gap.width_mm,
+        at=None if gap is None else gap.at,
+        power_W=power_w,
     )
 
 

@@ -9,12 +9,10 @@ import numpy as np
 from benchlay.coverage.enclosed import Enclosed, enclosed_of
 from benchlay.coverage.filled import filled_openings
 from benchlay.coverage.gaps import EDGE, OPENING, OVER, SHEET, SIDE, UNDER, Gap, gaps_of
-from benchlay.coverage.places import Astray, standpoints
+from benchlay.coverage.places import Astray, standpoints, strongest
 from benchlay.document.span import Span
 from benchlay.layout.layout import Layout
 from benchlay.named import NamedTuple
-from benchlay.tracing.beams import FACE
-from benchlay.tracing.front import EMITTED
 
 if TYPE_CHECKING:
     from benchlay.checks._check.context import Context
@@ -125,26 +123,9 @@ class Gaps:
     def astray(self, variant: int) -> list[Astray]:
         """Return the places of a state that hazardous light comes to, the strongest first."""
         context = self._context
-        beams, scene = context.trace.beams, context.trace.scene
-        rows = context.beams_of(variant)
-        rows = rows[context.outside[rows]]
-        found: dict[str, tuple[float, int]] = {}
-        met = rows[beams.end_kind[rows] == FACE]
-        arriving = (beams.end_coherency[0] + beams.end_coherency[1])[met]
-        owners = scene.faces.owner[beams.end_row[met]]
-        made = rows[beams.start.event[rows] == EMITTED]
-        lists = (
-            (met, arriving, owners, scene.elements),
-            (made, beams.start.power[made], beams.start.source[made], scene.sources),
-        )
-        for row, power, owner, names in lists:
-            with np.errstate(invalid="ignore"):
-                over = power > context.limit_w[row]
-            for b, p, o in zip(*(a[over].tolist() for a in (row, power, owner)), strict=True):
-                if p > found.get(names[o], (0.0, 0))[0]:
-                    found[names[o]] = p, b
+        found = strongest(context.trace, variant, context.limit_w)
         places = [p for p in standpoints(context.state(variant)) if p.name in found]
-        astray = [Astray(p.name, p.at, found[p.name][1], found[p.name][0]) for p in places]
+        astray = [Astray(p.name, p.at, found[p.name].beam, found[p.name].power_w) for p in places]
         return sorted(astray, key=lambda one: (-one.power_w, one.name))
 
 
