@@ -74,14 +74,13 @@ def _extreme(way: Place, following: Place) -> list[float]:
     if abs(nz) <= _UPRIGHT * flat or flat == 0.0:
         return []
     # The highest point of the circle: the way in its plane that goes up most.
-    sign = 1.0 if nz > 0.0 else -1.0
     top = (-nx * nz, -ny * nz, flat * flat)
     found = []
     for end in (top, (-top[0], -top[1], -top[2])):
         between = _dot(_cross(way, end), (nx, ny, nz)) > 0.0
         between &= _dot(_cross(end, following), (nx, ny, nz)) > 0.0
         if between:
-            found.append(atan(end[2] / hypot(end[0], end[1])) if sign else 0.0)
+            found.append(atan(end[2] / hypot(end[0], end[1])))
     return found
 
 

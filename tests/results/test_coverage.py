@@ -12,7 +12,8 @@ bench: {outline: [[0, 0], [1000, 0], [1000, 800], [0, 800]]}
 sources:
   red: {wavelength: 633, power: 50 mW, beam: {waist_radius: 0.5}, at: [300, 400], heading: 0}
 elements:
-  W1: {kind: window, after: red, distance: 100, incidence: 10, diameter: 25.4, front: 1 %, back: 1 %}
+  W1:
+    {kind: window, after: red, distance: 100, incidence: 10, diameter: 25.4, front: 1 %, back: 1 %}
   T1: {kind: target, after: W1, distance: 300}
   K1: {kind: screen, at: [500, 600], facing: 0}
   F1: {kind: mirror, at: [200, 100], facing: 0, diameter: 25.4, metal: silver, out: yes}
