@@ -14,6 +14,7 @@ from benchlay.findings import Severity
 from benchlay.layout.layout import Layout
 from benchlay.report.model import Reported
 from benchlay.sheets import SHEETS, Composed, UnknownSheetError, sheets_of
+from benchlay.sheets.contents import Mark
 from benchlay.sheets.primitives import Sheet
 from benchlay.sheets.scale import PLAN_SIZES, NothingFitsError
 from benchlay.tracing import Trace
@@ -72,7 +73,13 @@ def drawings(
     counts = Counter(Severity[finding.severity.upper()] for finding in judged)
     try:
         composed = sheets_of(
-            trace, zones, only=sheet, counts=sorted(counts.items()), sha256=sha256, state=state
+            trace,
+            zones,
+            only=sheet,
+            counts=sorted(counts.items()),
+            sha256=sha256,
+            state=state,
+            findings=_marks(judged, state or trace.scene.variants[0]),
         )
     except UnknownSheetError as error:
         return _unknown(trace.placed.base.layout, error)
@@ -88,6 +95,14 @@ def drawings(
         and not (sheet is None and planned.numbered and ending == "pdf")  # they are in the set
     }
     return files | (_gathered(composed, whole=sheet is None) if form in (None, "pdf") else {})
+
+
+def _marks(judged: Sequence[Reported], state: str) -> tuple[Mark, ...]:
+    """Return the findings as a plan marks them, in the order of the record."""
+    return tuple(
+        Mark(n, one.severity, f"{one.check}: {one.message}", one.at, state in one.states)
+        for n, one in enumerate(judged, start=1)
+    )
 
 
 def _gathered(composed: Sequence[Composed], *, whole: bool) -> dict[str, bytes]:

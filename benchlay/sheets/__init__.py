@@ -10,6 +10,7 @@ from benchlay.named import NamedTuple
 if TYPE_CHECKING:
     from benchlay.findings import Severity
     from benchlay.making.parts import Part
+    from benchlay.sheets.contents import Mark
     from benchlay.sheets.elevation.contents import Elevation
     from benchlay.sheets.primitives import Sheet
     from benchlay.sheets.shop.listing import Page
@@ -27,6 +28,7 @@ class Subject(NamedTuple):
     counts: Iterable[tuple[Severity, int]]  # how many findings the review has, for the notes
     sha256: str  # of the layout's bytes, to be written into the files
     state: str | None = None  # the only one that the review speaks of, and so the one drawn
+    findings: tuple[Mark, ...] = ()  # of the review
 
     @property
     def variant(self) -> int:
@@ -57,14 +59,14 @@ def _plan(subject: Subject) -> Iterator[Planned]:
     from benchlay.sheets.plan import compose
 
     def plan(number: str) -> Sheet:
-        trace, zones, counts, sha256, state = subject
         picture = plan_picture(
-            trace,
-            zones,
+            subject.trace,
+            subject.zones,
             variant=subject.variant,
-            counts=counts,
-            of_all_states=state is None,
-            sha256=sha256,
+            counts=subject.counts,
+            of_all_states=subject.state is None,
+            sha256=subject.sha256,
+            findings=subject.findings,
         )
         return compose(picture._replace(fields=picture.fields._replace(sheet=number)))
 
@@ -262,6 +264,7 @@ def sheets_of(
     counts: Iterable[tuple[Severity, int]] = (),
     sha256: str = "",
     state: str | None = None,
+    findings: tuple[Mark, ...] = (),
 ) -> list[Composed]:
     """Return the sheets of a traced layout, in its state as drawn or in the one named.
 
@@ -270,7 +273,7 @@ def sheets_of(
     trace : Trace
     zones : Zones, optional
         The hazard zones, where they are known already: of all states, or of the one named.
-    only, counts, sha256, state
+    only, counts, sha256, state, findings
         See `composed_sheets` and `Subject`.
 
     Raises
@@ -282,4 +285,4 @@ def sheets_of(
         from benchlay.zones import zones_of
 
         zones = zones_of(trace, states=None if state is None else (state,))
-    return composed_sheets(Subject(trace, zones, tuple(counts), sha256, state), only)
+    return composed_sheets(Subject(trace, zones, tuple(counts), sha256, state, findings), only)

@@ -119,6 +119,16 @@ class Holes(NamedTuple):
     thread: str = ""
 
 
+class Mark(NamedTuple):
+    """A finding of the review, and where it is."""
+
+    number: int  # in the review's own order
+    severity: str  # fail | warn | note
+    words: str  # its check and its message
+    at: Place | None
+    here: bool = True  # it holds in the state that is drawn
+
+
 class Picture(NamedTuple):
     """All that the plan of one state shows."""
 
@@ -135,6 +145,9 @@ class Picture(NamedTuple):
     gaps: tuple[GapMark, ...] = ()
     mirror_stretches: tuple[tuple[Point, Point], ...] = ()  # of beams: see `drafting.gaps`
     zones: tuple[Zone, ...] = ()
+    findings: tuple[Mark, ...] = ()
+    warning: tuple[str, ...] = ()  # in large letters: the hazard in reach, eyewear
+    signs: tuple[tuple[str, str, str], ...] = ()  # number, least size, what and where
     legend: tuple[BeamEntry, ...] = ()
     revisions: tuple[tuple[str, str, str, str], ...] = ()  # rev, date, what, by
     notes: tuple[str, ...] = ()

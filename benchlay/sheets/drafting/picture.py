@@ -5,16 +5,20 @@ from __future__ import annotations
 import re
 from collections.abc import Iterable
 
+from benchlay.checks import Context
+from benchlay.checks import limits_of as limits_of_states
 from benchlay.exposure.cautions import SHORT
 from benchlay.findings import Severity
+from benchlay.hazards import hazards_of, signs_of
 from benchlay.layout.layout import Layout
 from benchlay.placing.placed import PlacedState
-from benchlay.sheets.contents import BeamEntry, Picture
+from benchlay.sheets.contents import BeamEntry, Mark, Picture
 from benchlay.sheets.drafting.gaps import opened
 from benchlay.sheets.drafting.legs import DrawnLegs, legs_of, limit_words
 from benchlay.sheets.drafting.outlines import items_of
 from benchlay.sheets.drafting.schedule import zones_drawn
 from benchlay.sheets.drafting.surroundings import holes_of, lids_of, panels_of
+from benchlay.sheets.drafting.warnings import sign_rows, warning_lines
 from benchlay.sheets.layers import WIDTHS_MM, wavelength_words
 from benchlay.sheets.scale import PLAN_SIZES, SCALES
 from benchlay.sheets.title_block import TitleFields
@@ -37,6 +41,7 @@ def plan_picture(
     counts: Iterable[tuple[Severity, int]] = (),
     of_all_states: bool = True,
     sha256: str = "",
+    findings: tuple[Mark, ...] = (),
 ) -> Picture:
     """Return what the plan of a state shows.
 
@@ -54,6 +59,8 @@ def plan_picture(
         Whether these are of all states; if not, of this one.
     sha256 : str
         Of the layout's bytes: which text the sheet was drawn from.
+    findings : tuple of Mark
+        Of the review.
     """
     state = trace.placed.states[variant]
     layout, drawing = state.layout, state.layout.drawing
@@ -62,6 +69,8 @@ def plan_picture(
     legs = legs_of(trace, limits, variant, decimal)
     gaps = opened(trace, variant, decimal)
     sheet, scale, unmet = _wishes(layout)
+    context = Context(trace, limits_of_states(trace.placed))
+    (hazards,) = hazards_of(context, zones, (state.name,))
     return Picture(
         name="plan",
         fields=title_fields(layout, "Bench layout, plan", sha256),
@@ -76,6 +85,9 @@ def plan_picture(
         gaps=gaps.marks,
         mirror_stretches=gaps.stretches,
         zones=zones_drawn(zones.zones, state.name, decimal),
+        findings=findings,
+        warning=warning_lines(hazards, decimal),
+        signs=sign_rows(signs_of(layout, (hazards,))),
         legend=tuple(_legend(trace, limits, variant, legs, decimal)),
         revisions=tuple((r.rev, r.date, r.what, r.by) for r in layout.revisions),
         notes=(

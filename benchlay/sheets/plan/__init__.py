@@ -15,6 +15,7 @@ from benchlay.sheets.dimensions import figure_box
 from benchlay.sheets.frame import frame
 from benchlay.sheets.layers import BeamLook, sheet_layers
 from benchlay.sheets.lettering import LARGE_MM, SMALL_MM, shorten, width_mm
+from benchlay.sheets.plan.balloons import balloons
 from benchlay.sheets.plan.beams import beams
 from benchlay.sheets.plan.bench import bench, hole_step, holes, levels_note, main_dimensions
 from benchlay.sheets.plan.board import Board, boards
@@ -24,6 +25,7 @@ from benchlay.sheets.plan.gaps import gaps, shading
 from benchlay.sheets.plan.items import blocks_and_uses
 from benchlay.sheets.plan.panels import lids, panels
 from benchlay.sheets.plan.tags import Tagged, tags, untagged
+from benchlay.sheets.plan.warning import warning
 from benchlay.sheets.plan.zones import hatching, limits
 from benchlay.sheets.primitives import (
     Across,
@@ -67,6 +69,7 @@ def compose(picture: Picture) -> Sheet:
 def _crowded(picture: Picture, board: Board) -> bool:
     """Whether it is of no use to look for room for so many tags."""
     tags = len(picture.items) + sum(bool(leg.words) for leg in picture.legs)
+    tags += sum(mark.at is not None for mark in picture.findings)
     return tags * _TAG_MM2 > _MOST_TAGGED * board.field.width * board.field.height
 
 
@@ -78,6 +81,7 @@ class _Composed(NamedTuple):
 def _composed(picture: Picture, board: Board) -> _Composed:
     empty = _sheet(picture, board)
     title = list(_view_title(picture, board))
+    title += warning(picture, board, board.crowd.boxes[-1].right)
     drawn = list(blocks_and_uses(picture, board))
     model: list[Primitive] = [
         *bench(picture, board),
@@ -90,6 +94,8 @@ def _composed(picture: Picture, board: Board) -> _Composed:
     ]
     model += [_reserved(dimension, empty, board) for dimension in main_dimensions(picture, board)]
     tagged = tags(picture, board)
+    found = balloons(picture, board)
+    tagged = tagged._replace(left_out=(*tagged.left_out, *found.left_out))
     lettering = board.crowd.boxes
     model += hatching(picture, board, lettering)
     model += shading(picture, board)
@@ -100,6 +106,7 @@ def _composed(picture: Picture, board: Board) -> _Composed:
         *title,
         *_scale_bar(picture, board),
         *tagged.paper,
+        *found.paper,
         *elements(picture, board),
         *column(picture, board, _notes(picture, board, tagged)),
     ]

@@ -7,9 +7,11 @@ from collections.abc import Iterator
 from benchlay.sheets.contents import Picture
 from benchlay.sheets.layers import beam_layer
 from benchlay.sheets.lettering import MIDDLE_MM, SMALL_MM, shorten
+from benchlay.sheets.plan.balloons import findings_table
 from benchlay.sheets.plan.beams import DUMPS, LEAVES, STOPS, end_mark
 from benchlay.sheets.plan.board import Board
 from benchlay.sheets.plan.elements import elements_table
+from benchlay.sheets.plan.warning import signs_table
 from benchlay.sheets.primitives import (
     Circle,
     Fill,
@@ -52,6 +54,18 @@ def column(picture: Picture, board: Board, all_notes: list[str]) -> list[Primiti
     put(_legend(picture, room))
     if picture.zones:
         put(_zones(picture, room._replace(low=room.low + reserve)))
+    kept = room._replace(low=room.low + reserve)
+    for content in (
+        *((findings_table(picture.findings),) if picture.findings else ()),
+        *((signs_table(picture),) if picture.signs else ()),
+    ):
+        if room.high - kept.low > _LEAST_MM:
+            put(table(content, kept._replace(high=room.high)))
+        else:
+            all_notes = [
+                f"No room here for {content.heading}: see {content.elsewhere}.",
+                *all_notes,
+            ]
     put(notes("NOTES", all_notes, room, "the report"))
     if board.strip is None and picture.items and room.height > _LEAST_MM:
         put(table(elements_table(picture, picture.items), room))
