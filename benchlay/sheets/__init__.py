@@ -56,21 +56,19 @@ class UnknownSheetError(ValueError):
 
 def _plan(subject: Subject) -> Iterator[Planned]:
     from benchlay.sheets.drafting import plan_picture
-    from benchlay.sheets.plan import compose
+    from benchlay.sheets.plan import sheets
 
-    def plan(number: str) -> Sheet:
-        picture = plan_picture(
-            subject.trace,
-            subject.zones,
-            variant=subject.variant,
-            counts=subject.counts,
-            of_all_states=subject.state is None,
-            sha256=subject.sha256,
-            findings=subject.findings,
-        )
-        return compose(picture._replace(fields=picture.fields._replace(sheet=number)))
-
-    yield Planned("plan", plan)
+    picture = plan_picture(
+        subject.trace,
+        subject.zones,
+        variant=subject.variant,
+        counts=subject.counts,
+        of_all_states=subject.state is None,
+        sha256=subject.sha256,
+        findings=subject.findings,
+    )
+    for name, made in sheets(picture):
+        yield Planned(name, made)
 
 
 def _elevations(subject: Subject) -> Iterator[Planned]:

@@ -45,6 +45,7 @@ class Drawn(NamedTuple):
 
     primitives: tuple[Primitive, ...]
     foot: float
+    missing: int = 0  # rows for which there was no room
 
 
 def table(content: Table, window: Window) -> Drawn:
@@ -66,7 +67,7 @@ def table(content: Table, window: Window) -> Drawn:
         out.append(Text(content.layer, at, missing, SMALL_MM))
         edges.append(foot - _line_depth())
     out += _grid(content, window.left, edges, foot)
-    return Drawn(tuple(out), edges[-1])
+    return Drawn(tuple(out), edges[-1], len(rows) - shown)
 
 
 def _fitting(depths: list[float], room: float) -> int:
@@ -147,4 +148,4 @@ def notes(heading: str, lines: Sequence[str], window: Window, elsewhere: str) ->
         missing = _missing(len(wrapped) - shown, elsewhere, window.width)
         out.append(Text("NOTES", (window.left, y - SMALL_MM), missing, SMALL_MM))
         y -= PITCH_MM
-    return Drawn(tuple(out), y)
+    return Drawn(tuple(out), y, len(wrapped) - shown)

@@ -8,13 +8,14 @@ import pytest
 import shapely
 import trial_bench
 
-from benchlay.sheets.contents import Holes, Leg, Zone
+from benchlay.sheets.contents import Holes, Leg, Mark, Zone
 from benchlay.sheets.dimensions import figure_box
 from benchlay.sheets.lettering import width_mm
-from benchlay.sheets.plan import compose
+from benchlay.sheets.plan import compose, sheets
 from benchlay.sheets.primitives import (
     Across,
     BlockUse,
+    Circle,
     Dimension,
     Line,
     Polyline,
@@ -171,7 +172,69 @@ def test_what_does_not_fit_is_counted_not_dropped(sheet):
     full = compose(trial_bench.picture(revisions=many))
     rows = [p.text for p in on_layer(full, "REVISION", Text)]
     shown = sum(text.startswith("change") for text in rows)
-    assert f"... and {60 - shown} more: see the layout" in rows
+    assert f"... and {60 - shown} more: see sheet plan-2" in rows
+
+
+def test_what_does_not_fit_stands_in_full_on_a_further_sheet():
+    many = tuple(("A", "2026-01-01", f"change {n}", "wks") for n in range(60))
+    notes = tuple(f"note {n}: " + "words that take up room " * 4 for n in range(40))
+    findings = tuple(
+        Mark(n, "fail", f"escape: light number {n} gets out", (10.0 * n, 400.0, 100.0))
+        for n in range(1, 61)
+    )
+    made = sheets(trial_bench.picture(revisions=many, notes=notes, findings=findings))
+    names = [name for name, _ in made]
+    assert names == ["plan", *(f"plan-{n}" for n in range(2, len(names) + 1))]
+    drawn = [make(f"{n}/9") for n, (_, make) in enumerate(made, start=1)]
+    texts = [[p.text for p in one.paper if isinstance(p, Text)] for one in drawn]
+    further = " ".join(words for page in texts[1:] for words in page)
+    for n in range(60):
+        assert f"change {n}" in further
+        assert f"light number {n + 1} gets out" in further
+    for n in range(40):
+        assert f"note {n}:" in further
+    assert all(f"{n}/9" in page for n, page in enumerate(texts, start=1))
+    for one in drawn:
+        assert overlapping(boxes(one)) == []
+
+
+def test_where_all_fits_there_is_no_further_sheet():
+    assert [name for name, _ in sheets(trial_bench.picture(zones=()))] == ["plan"]
+
+
+def test_findings_stand_in_balloons_at_their_places():
+    marks = (
+        Mark(1, "fail", "escape: light gets out", (1200.0, 800.0, 100.0)),
+        Mark(2, "warn", "clipped: a rim", (1201.0, 801.0, 100.0)),
+        Mark(3, "warn", "off-centre: aside", (300.0, 250.0, 100.0)),
+        Mark(4, "note", "as-modelled: a lens", None),
+        Mark(5, "warn", "dark-element: elsewhere", (700.0, 550.0, 100.0), here=False),
+    )
+    sheet = compose(trial_bench.picture(findings=marks))
+    text = {p.text: p for p in sheet.paper if isinstance(p, Text)}
+    assert {"1-2", "fail: escape: light gets out", "4", "5"} <= set(text)
+    assert text["1-2"].layer == "HAZARD"
+    dots = {tuple(p.centre) for p in sheet.paper if isinstance(p, Circle) and p.radius == 0.5}
+    assert dots == {to_paper(sheet, (1200.0, 800.0)), to_paper(sheet, (300.0, 250.0))}
+    leaders = {p.start for p in sheet.paper if isinstance(p, Line)}
+    assert dots <= leaders
+    assert overlapping(boxes(sheet)) == []
+
+
+def test_a_finding_beyond_the_sheet_is_marked_at_its_edge():
+    far = Mark(1, "fail", "at-door: light reaches the door", (-90_000.0, 450.0, 100.0))
+    sheet = compose(trial_bench.picture(findings=(far,)))
+    (dot,) = (p for p in sheet.paper if isinstance(p, Circle) and p.radius == 0.5)
+    assert dot.centre[0] == pytest.approx(sheet.window_mm[0][0])
+
+
+def test_the_hazard_in_reach_is_written_large():
+    lines = ("LASER CLASS 4 IN REACH, as modelled", "Eyewear inside: 1064 nm OD 5")
+    sheet = compose(trial_bench.picture(warning=lines, signs=(("LB1", "105×52", "at M1"),)))
+    text = {p.text: p for p in sheet.paper if isinstance(p, Text)}
+    assert [text[line].height_mm for line in lines] == [3.5, 3.5]
+    assert {"SIGNS AND LABELS", "LB1", "105×52", "at M1"} <= set(text)
+    assert overlapping(boxes(sheet)) == []
 
 
 def test_every_layer_of_the_drawing_is_used():

@@ -7,7 +7,7 @@ broken for lettering.
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Callable, Iterator
 
 from benchlay.named import NamedTuple
 from benchlay.sheets.contents import Picture
@@ -21,6 +21,7 @@ from benchlay.sheets.plan.bench import bench, hole_step, holes, levels_note, mai
 from benchlay.sheets.plan.board import Board, boards
 from benchlay.sheets.plan.column import column
 from benchlay.sheets.plan.elements import elements
+from benchlay.sheets.plan.further import further
 from benchlay.sheets.plan.gaps import gaps, shading
 from benchlay.sheets.plan.items import blocks_and_uses
 from benchlay.sheets.plan.panels import lids, panels
@@ -39,6 +40,7 @@ from benchlay.sheets.primitives import (
     line_ends,
 )
 from benchlay.sheets.scale import Window, frame_of
+from benchlay.sheets.tables import Table
 from benchlay.sheets.title_block import TitleFields, title_block
 
 _FIGURE_SHARES = (0.5, 0.4, 0.6, 0.3, 0.7, 0.2, 0.8)
@@ -49,21 +51,42 @@ _BAR_MM = 50.0  # of the scale bar, on paper
 
 
 def compose(picture: Picture) -> Sheet:
-    """Compose the plan of a bench.
+    """Compose the plan of a bench, without the sheets on which its tables go on.
 
     Raises
     ------
     NothingFitsError
         If no listed sheet and scale hold it.
     """
+    return _chosen(picture).sheet(picture.fields.sheet)
+
+
+def sheets(picture: Picture) -> list[tuple[str, Callable[[str], Sheet]]]:
+    """Compose the plan and the further sheets that its tables need.
+
+    Returns
+    -------
+    list of (name, maker)
+        A maker gives the sheet once its number in the set is known.
+
+    Raises
+    ------
+    NothingFitsError
+        If no listed sheet and scale hold the plan.
+    """
+    plan = _chosen(picture)
+    return [(picture.name, plan.sheet), *further(picture, plan.rest)]
+
+
+def _chosen(picture: Picture) -> _Composed:
     # A larger sheet has room for more tags; the largest says what even it has none for.
     *smaller, last = boards(picture)
     for board in smaller:
         if not _crowded(picture, board):
             composed = _composed(picture, board)
             if not composed.left_out:
-                return composed.sheet
-    return _composed(picture, last).sheet
+                return composed
+    return _composed(picture, last)
 
 
 def _crowded(picture: Picture, board: Board) -> bool:
@@ -74,8 +97,17 @@ def _crowded(picture: Picture, board: Board) -> bool:
 
 
 class _Composed(NamedTuple):
-    sheet: Sheet
+    """A plan without its title block, and what found no place on it."""
+
+    drawn: Sheet
+    fields: TitleFields
     left_out: tuple[str, ...]
+    rest: tuple[Table, ...]
+
+    def sheet(self, number: str) -> Sheet:
+        """Return the sheet with its number in the set."""
+        block = title_block(self.fields._replace(sheet=number), self.drawn.size_mm)
+        return self.drawn._replace(paper=(*self.drawn.paper, *block))
 
 
 def _composed(picture: Picture, board: Board) -> _Composed:
@@ -100,20 +132,20 @@ def _composed(picture: Picture, board: Board) -> _Composed:
     model += hatching(picture, board, lettering)
     model += shading(picture, board)
     model += holes(picture, board, lettering)
+    filled = column(picture, board, _notes(picture, board, tagged))
     paper = [
         *frame(board.choice.sheet, board.choice.size_mm),
-        *title_block(_fields(picture, board), board.choice.size_mm),
         *title,
         *_scale_bar(picture, board),
         *tagged.paper,
         *found.paper,
         *elements(picture, board),
-        *column(picture, board, _notes(picture, board, tagged)),
+        *filled.primitives,
     ]
     sheet = empty._replace(
         model=tuple(model), paper=tuple(paper), blocks=tuple(block for block, _ in drawn)
     )
-    return _Composed(sheet, tagged.left_out)
+    return _Composed(sheet, _fields(picture, board), tagged.left_out, filled.rest)
 
 
 def _sheet(picture: Picture, board: Board) -> Sheet:
@@ -121,7 +153,7 @@ def _sheet(picture: Picture, board: Board) -> Sheet:
     looks = [BeamLook(entry.wavelength_nm, entry.width_mm) for entry in picture.legend]
     return Sheet(
         name=picture.name,
-        title=picture.fields.title or picture.name,
+        title=" - ".join(w for w in picture.fields[1:3] if w) or picture.name,
         description=_words(picture, board),
         size_mm=board.choice.size_mm,
         scale=board.scale,

@@ -12,6 +12,7 @@ from collections.abc import Iterable, Iterator
 from benchlay.named import NamedTuple
 from benchlay.sheets.contents import Mark, Picture
 from benchlay.sheets.lettering import SMALL_MM, width_mm
+from benchlay.sheets.plan.beams import clipped
 from benchlay.sheets.plan.board import Board
 from benchlay.sheets.primitives import (
     Across,
@@ -69,12 +70,14 @@ def findings_table(marks: Iterable[Mark]) -> Table:
 def _together(marks: Iterable[Mark], board: Board) -> list[tuple[Point, list[Mark]]]:
     """Return the findings by their places on the sheet."""
     groups: list[tuple[Point, list[Mark]]] = []
-    left, low, right, high = board.field
+    field = board.field
+    middle = ((field.left + field.right) / 2, (field.low + field.high) / 2)
     for mark in marks:
         if mark.at is None or not mark.here:
             continue
-        x, y = board.on_paper(mark.at)
-        at = (min(max(x, left), right), min(max(y, low), high))  # beyond the edge: at the edge
+        # What lies beyond the sheet is marked where the way to it leaves the field.
+        inside = clipped(middle, board.on_paper(mark.at), field)
+        at = middle if inside is None else inside[1]
         group = next((g for g in groups if math.dist(g[0], at) < _TOGETHER_MM), None)
         if group is None:
             groups.append((at, [mark]))

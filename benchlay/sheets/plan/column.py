@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
+from benchlay.named import NamedTuple
 from benchlay.sheets.contents import Picture
 from benchlay.sheets.layers import beam_layer
 from benchlay.sheets.lettering import MIDDLE_MM, SMALL_MM, shorten
@@ -29,6 +30,7 @@ _ROW_MM = 5.2
 _LEAST_MM = 24.0  # what a table must have to be begun
 _NOTES_SHARE = 0.3  # of the column, kept for notes
 
+_NOTES = (Column("No.", 11.0), Column("Note", 97.0))
 _ZONES = (Column("No.", 11.0), Column("Zone, and what it assumes", 97.0))
 _REVISIONS = (
     Column("Rev", 11.0),
@@ -38,49 +40,67 @@ _REVISIONS = (
 )
 
 
-def column(picture: Picture, board: Board, all_notes: list[str]) -> list[Primitive]:
+class Filled(NamedTuple):
+    """The column, and the tables that found no room in it, or not for all their rows."""
+
+    primitives: tuple[Primitive, ...]
+    rest: tuple[Table, ...]
+
+
+def column(picture: Picture, board: Board, all_notes: list[str]) -> Filled:
     """Draw the column; whatever is too long says where the rest is."""
     out: list[Primitive] = []
+    rest: list[Table] = []
     room = board.column
-    reserve = _NOTES_SHARE * room.height
+    least = room.low + _NOTES_SHARE * room.height
+    elsewhere = f"sheet {picture.name}-2"
 
     def put(drawn: Drawn) -> None:
         nonlocal room
         out.extend(drawn.primitives)
         room = room._replace(high=drawn.foot - BETWEEN_MM)
 
+    def put_table(content: Table, low: float) -> None:
+        content = content._replace(elsewhere=elsewhere)
+        if room.high - low < _LEAST_MM:
+            rest.append(content)
+            return
+        drawn = table(content, room._replace(low=low))
+        put(drawn)
+        if drawn.missing:
+            rest.append(content)
+
     if picture.revisions:
-        put(_revisions(picture, room))
+        put_table(_revisions(picture), room.high - room.height / 5)
     put(_legend(picture, room))
+    for content in _tables(picture):
+        put_table(content, least)
+    if board.strip is None and picture.items:
+        rest.append(elements_table(picture, picture.items))
+    if rest:
+        heads = ", ".join(content.heading.capitalize() for content in rest)
+        all_notes = [f"In full on {elsewhere}: {heads}.", *all_notes]
+    drawn = notes("NOTES", all_notes, room, elsewhere)
+    if drawn.missing:
+        rows = tuple((str(n), note) for n, note in enumerate(all_notes, start=1))
+        rest.append(Table("NOTES", _NOTES, rows, elsewhere, "NOTES"))
+    put(drawn)
+    return Filled(tuple(out), tuple(rest))
+
+
+def _tables(picture: Picture) -> Iterator[Table]:
+    """Yield what stands between legend and notes, as far as there is anything to say."""
     if picture.zones:
-        put(_zones(picture, room._replace(low=room.low + reserve)))
-    kept = room._replace(low=room.low + reserve)
-    for content in (
-        *((findings_table(picture.findings),) if picture.findings else ()),
-        *((signs_table(picture),) if picture.signs else ()),
-    ):
-        if room.high - kept.low > _LEAST_MM:
-            put(table(content, kept._replace(high=room.high)))
-        else:
-            all_notes = [
-                f"No room here for {content.heading}: see {content.elsewhere}.",
-                *all_notes,
-            ]
-    put(notes("NOTES", all_notes, room, "the report"))
-    if board.strip is None and picture.items and room.height > _LEAST_MM:
-        put(table(elements_table(picture, picture.items), room))
-    return out
+        rows = tuple((zone.name, "; ".join(zone.schedule)) for zone in picture.zones)
+        yield Table("HAZARD ZONES", _ZONES, rows, "", most_lines=4)
+    if picture.findings:
+        yield findings_table(picture.findings)
+    if picture.signs:
+        yield signs_table(picture)
 
 
-def _revisions(picture: Picture, room: Window) -> Drawn:
-    rows = tuple(picture.revisions)
-    content = Table("REVISIONS", _REVISIONS, rows, "the layout", "REVISION")
-    return table(content, room._replace(low=room.high - room.height / 5))
-
-
-def _zones(picture: Picture, room: Window) -> Drawn:
-    rows = tuple((zone.name, "; ".join(zone.schedule)) for zone in picture.zones)
-    return table(Table("HAZARD ZONES", _ZONES, rows, "the report", most_lines=4), room)
+def _revisions(picture: Picture) -> Table:
+    return Table("REVISIONS", _REVISIONS, tuple(picture.revisions), "", "REVISION")
 
 
 def _legend(picture: Picture, room: Window) -> Drawn:

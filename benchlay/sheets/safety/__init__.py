@@ -14,7 +14,7 @@ from benchlay.sheets.safety.flow import Piece, drawn, paged
 from benchlay.sheets.safety.marks import warning_mark
 from benchlay.sheets.scale import Window
 
-__all__ = ["COLUMN_MM", "Block", "SafetyContents", "compose", "warning_mark"]
+__all__ = ["COLUMN_MM", "Block", "SafetyContents", "columns", "compose", "warning_mark"]
 
 _SIZE = "A3"
 COLUMN_MM = 183.0
@@ -24,7 +24,7 @@ _MARKS_MM = 4.0  # off the window's sides and its middle: the sheet's centring m
 
 def compose(contents: SafetyContents) -> list[Callable[[str], Sheet]]:
     """Return the sheets, each to be made once its number in the set is known."""
-    pages = paged(contents.blocks, _columns(form_for(contents.fields, size=_SIZE)))
+    pages = paged(contents.blocks, columns(form_for(contents.fields, size=_SIZE)))
     return [_page(contents, number, pieces) for number, pieces in enumerate(pages, start=1)]
 
 
@@ -48,7 +48,7 @@ def name_of(page: int) -> str:
     return "safety" if page == 1 else f"safety-{page}"
 
 
-def _columns(form: Form) -> list[Window]:
+def columns(form: Form) -> list[Window]:
     """Return the two columns: the left one runs down beside the title block."""
     window, beside = form.window, form.beside
     low = window.low if beside is None else beside.low
