@@ -3,11 +3,11 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
-from math import dist
 
 from benchlay.geometry.polygon import Point
 from benchlay.layout.enclosure import Fix, Opening
 from benchlay.making.blank import Bend, Blank, Draft, Folding, RoundHole
+from benchlay.making.clearances import circles_meet, in_opening, lies_in, meets, round_box
 from benchlay.making.corners import Meeting, Sheet, meeting
 from benchlay.making.folding import Folded
 from benchlay.making.rectilinear import Rectangle, outlines
@@ -86,23 +86,36 @@ def panel_draft(own: Sheet, others: list[Sheet]) -> Draft:
     if len(outer) != 1 or len(set(corners)) < len(corners):
         lacks.append("openings that leave the sheet in one piece")
     holes = list(_holes(flat))
-    kept = [hole for hole in holes if not _in_opening(hole, boxes, rounds)]
+    kept = [hole for hole in holes if not in_opening(hole, boxes, rounds)]
     remarks = [m.remark for m in (flat.start, flat.end) if m.remark]
     if len(kept) < len(holes):
         remarks.append(f"{len(holes) - len(kept)} of its fixing holes left out: in an opening")
+    bends = tuple(_bends(flat, boxes))
+    near = [hole for hole in kept if any(_near(hole, bend, own.thickness_mm) for bend in bends)]
+    if near:
+        remarks.append(
+            f"{len(near)} holes are nearer to a bend than 2.5 t + R: drill them after bending"
+        )
     foot = own.foot
     blank = Blank(
         outer=max(outer, key=_extent, default=()),
         inner=inner,
         rounds=rounds,
         holes=tuple(sorted(kept)),
-        bends=tuple(_bends(flat, boxes)),
+        bends=bends,
         flat_mm=flat.size,
         formed_mm=flat.formed,
         folding=foot
         and Folding(foot.allowance_mm, foot.k, foot.radius_mm, foot.flange_mm, foot.sense),
     )
     return Draft(blank, (*lacks, *troubles), tuple(remarks))
+
+
+def _near(hole: RoundHole, bend: Bend, thickness_mm: float) -> bool:
+    """Whether bending would draw a hole out of round (common practice: 2.5 t + R from its edge)."""
+    axis = 0 if bend.start[0] == bend.end[0] else 1
+    off = abs(hole.centre[axis] - bend.start[axis]) - hole.diameter_mm / 2
+    return off < 2.5 * thickness_mm + bend.radius_mm - _ROUNDING_MM
 
 
 def _unfolded(own: Sheet) -> list[str]:
@@ -170,14 +183,14 @@ def _openings(flat: _Flat) -> tuple[list[Rectangle], tuple[RoundHole, ...], list
     for name, opening in sorted(flat.own.panel.openings.items()):
         box = _box(flat, opening)
         if opening.round:
-            near = [r for r in rounds if _circles_meet(r, box)]
-            if near or not _inside(box, straight) or any(_meets(box, b) for b in boxes):
+            near = [r for r in rounds if circles_meet(r, box)]
+            if near or not lies_in(box, straight) or any(meets(box, b) for b in boxes):
                 troubles.append(f"a place for opening {name} clear of bends and other openings")
                 continue
             centre = ((box.left + box.right) / 2, (box.low + box.high) / 2)
             rounds.append(RoundHole(centre, opening.diameter_mm or 0.0, name))
             continue
-        if any(_meets(Rectangle(*_round_box(r)), box) for r in rounds):
+        if any(meets(Rectangle(*round_box(r)), box) for r in rounds):
             troubles.append(f"a place for opening {name} clear of bends and other openings")
             continue
         if box.left < straight.left or box.right > straight.right:
@@ -200,34 +213,6 @@ def _box(flat: _Flat, opening: Opening) -> Rectangle:
     if high >= flat.own.heights_mm[1] - _ROUNDING_MM:
         top = flat.size[1]
     return Rectangle(left, bottom, right, top)
-
-
-def _inside(box: Rectangle, straight: Rectangle) -> bool:
-    return (
-        box.left > straight.left
-        and box.right < straight.right
-        and box.low > straight.low
-        and box.high < straight.high
-    )
-
-
-def _meets(a: Rectangle, b: Rectangle) -> bool:
-    return a.left <= b.right and b.left <= a.right and a.low <= b.high and b.low <= a.high
-
-
-def _round_box(hole: RoundHole) -> tuple[float, float, float, float]:
-    (x, y), r = hole.centre, hole.diameter_mm / 2
-    return x - r, y - r, x + r, y + r
-
-
-def _circles_meet(hole: RoundHole, box: Rectangle) -> bool:
-    centre = ((box.left + box.right) / 2, (box.low + box.high) / 2)
-    return dist(hole.centre, centre) <= (hole.diameter_mm + box.right - box.left) / 2
-
-
-def _in_opening(hole: RoundHole, boxes: list[Rectangle], rounds: tuple[RoundHole, ...]) -> bool:
-    box = Rectangle(*_round_box(hole))
-    return any(_meets(box, b) for b in boxes) or any(_circles_meet(r, box) for r in rounds)
 
 
 def _holes(flat: _Flat) -> Iterator[RoundHole]:

@@ -41,6 +41,7 @@ _SIZE_MM = SIZES_MM["A3"]
 _CORNER_MM = (20.0, 30.0)  # of the cell, on paper: room for the check line below
 _BEYOND_MM = 5.0
 _CROSS_MM = 4.0
+_OFF_MM = 6.0  # of words from what they name
 _HOLE_MM = 3.0
 _STEPS = 96  # of a circle as chords: off by 0.05 % of its radius
 
@@ -82,7 +83,7 @@ def drawing_of(state: PlacedState, legs: Iterable[Leg]) -> Drawing:
     for hole in used_holes(state)[0]:
         strokes.append(("BENCH", _circle(hole.at, _HOLE_MM)))
         if hole.column is not None:
-            at = (hole.at[0] + _HOLE_MM + 1.0, hole.at[1] - _HOLE_MM - SMALL_MM)
+            at = (hole.at[0], hole.at[1] - _HOLE_MM - 2 * _OFF_MM - MIDDLE_MM)
             words.append((at, f"{hole.column}/{hole.row}"))
     strokes += [("AXIS", (leg.start[:2], leg.end[:2])) for leg in legs if not leg.stray]
     return Drawing(tuple(strokes), tuple(words))
@@ -164,7 +165,7 @@ def _shown(tile: Tile, drawing: Drawing) -> Iterator[Primitive]:
                 yield Polyline(layer, corners)
     for (x, y), words in drawing.words:
         if window.left <= x <= window.right and window.low <= y <= window.high:
-            yield Text("TAGS", (x + 1.5, y + 1.5), words, MIDDLE_MM)
+            yield Text("TAGS", (x + _OFF_MM, y + _OFF_MM), words, MIDDLE_MM)
 
 
 def _furniture(tile: Tile, layout: Layout, sha256: str) -> Iterator[Primitive]:

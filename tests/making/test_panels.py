@@ -160,7 +160,10 @@ def test_openings(parts):
     # The bend line is broken there, and the hole at x = 75 has nothing to be in.
     assert [(b.start[0], b.end[0]) for b in blank.bends] == [(0, 60), (100, 500)]
     assert 75.0 not in [h.centre[0] for h in blank.holes]
-    assert part.draft.remarks == ("1 of its fixing holes left out: in an opening",)
+    assert part.draft.remarks == (
+        "1 of its fixing holes left out: in an opening",
+        "9 holes are nearer to a bend than 2.5 t + R: drill them after bending",
+    )
     wanted = 500 * (300 + SHIFT) - 100 * 50 - 40 * (20 + SHIFT) - math.pi * 15**2
     assert blank.area_mm2 == pytest.approx(wanted - len(blank.holes) * math.pi * 3.3**2)
 
@@ -210,3 +213,17 @@ def test_lids_have_names_of_their_own(parts):
     lid = made["lid-top_"]
     assert (lid.names, lid.blank.flat_mm, lid.blank.area_mm2) == (("top",), (400.0, 200.0), 8e4)
     assert shapely.LinearRing(lid.blank.outer).is_ccw
+
+
+def test_holes_near_a_bend_are_drilled_after_bending(parts):
+    # The bend's middle lies 18.09 from the free edge; 2.5 t + R is 7.
+    made = parts(
+        "  panels:\n    a: {from: [0, 0], to: [500, 0], fold: {flange: 20},\n"
+        "        fix: {hole: 6.6, pitch: 150, inset: 7.78}}\n"
+        "    b: {from: [0, 50], to: [500, 50], fold: {flange: 20},\n"
+        "        fix: {hole: 6.6, pitch: 150, inset: 7.8}}"
+    )
+    assert made["a"].draft.remarks == ()
+    assert made["b"].draft.remarks == (
+        "4 holes are nearer to a bend than 2.5 t + R: drill them after bending",
+    )

@@ -90,7 +90,7 @@ def test_a_mirror_is_where_it_stands(sheets):
     for sheet, text in found:
         x, y = to_paper(sheet, text.at)
         left, low = 20.0 - sheet.origin_mm[0], 30.0 - sheet.origin_mm[1]
-        assert (x - 20.0 + left, y - 30.0 + low) == pytest.approx((401.5, 101.5))
+        assert (x - 20.0 + left, y - 30.0 + low) == pytest.approx((406.0, 106.0))
 
 
 def test_one_file_of_many_pages_all_a3(trace):
