@@ -1,14 +1,7 @@
-r"""What beams sweep in plan: strips as wide as an eye's limiting aperture can take too much.
+"""What beams sweep in plan: where an eye's limiting aperture can take too much.
 
-An aperture of radius a whose centre lies d beside the axis takes no more than the half plane
-beyond d - a holds of the beam,
-
-.. math:: \tfrac12 P \,\mathrm{erfc}(\sqrt2 (d - a)/w)
-          \le \tfrac12 P \exp(-2 (d - a)^2/w^2),
-
-so that the limit L cannot be exceeded beyond
-:math:`d = a + w \sqrt{\tfrac12 \ln(P/2L)}`, w being the 1/e^2 radius across the beam in plan.
-A strip is at least as wide as the 1/e^2 radius and the aperture.
+See `benchlay.zones.offside` for the width. A strip comes to an end, where the limit is met along
+the beam, as a blunt point.
 """
 
 from __future__ import annotations
@@ -23,6 +16,7 @@ from benchlay.optics.special import circle_share
 from benchlay.scene.tables import Flags, Floats, Ints
 from benchlay.tracing.trace import Trace
 from benchlay.zones.limits import LimitTable
+from benchlay.zones.offside import farthest_mm, half_plane
 from benchlay.zones.surfaces import normal_left, normal_met
 
 _SAMPLES = 33
@@ -106,12 +100,19 @@ def _extent(trace: Trace, limits: LimitTable, beams: Ints, length: Floats) -> tu
 def _leg(trace: Trace, limits: LimitTable, beam: int, extent: tuple[float, float]) -> Leg:
     stop, most = extent
     s = trace.beams.start
-    depth = np.linspace(0.0, stop, _SAMPLES)
+    # Closer at both ends, where a strip comes to a point like a root.
+    spread = 0.5 - 0.5 * np.cos(np.pi * np.linspace(0.0, 1.0, _ALONG))
+    depth = stop * spread
     half = half_widths(trace, limits, beam, depth)
+    first = int(np.argmax(half > _BLUNT_MM))
+    if first > 0:  # too wide to be hazardous where it starts
+        depth = depth[first - 1] + (stop - depth[first - 1]) * spread
+        half = half_widths(trace, limits, beam, depth)
     points = s.position[beam] + depth[:, None] * s.direction[beam]
     (ax, ay, az), (bx, by, bz) = points[0].tolist(), points[-1].tolist()
     whole = stop >= float(trace.beams.length[beam])
-    ends = normal_left(trace, beam), normal_met(trace, beam) if whole else None
+    left = None if first > 0 else normal_left(trace, beam)
+    ends = left, normal_met(trace, beam) if whole else None
     area = _strip(points[:, :2], half, ends)
     return Leg(beam, (ax, ay, az), (bx, by, bz), area, stop / _MM_PER_M, most)
 
@@ -125,18 +126,46 @@ def half_widths(trace: Trace, limits: LimitTable, beam: int, depth: Floats) -> F
     s = trace.beams.start
     one = np.array([beam])
     allowed, _, aperture = (float(v[0]) for v in limits.of(trace, one))
-    across = envelope_radii(trace, beam, depth)
+    across, upright, turned = _radii_in_plan(trace, beam, depth)
     power = float(s.power[beam] / s.kept[beam])
-    tail = 0.5 * np.log(max(power / (2.0 * allowed), 1.0)) if allowed > 0.0 else _NO_LIMIT
-    a = aperture / 2
+    if not allowed > 0.0:
+        far: Floats = aperture / 2 + _NO_LIMIT * across
+    elif turned:
+        far = np.maximum(aperture / 2 + across * half_plane(allowed / power), 0.0)
+    else:
+        far = farthest_mm(across, upright, aperture, allowed / power)
     source = trace.placed.states[int(s.variant[beam])].sources[trace.scene.sources[s.source[beam]]]
     path = float(s.optical_path[beam]) + depth * float(s.index[beam])
     aside = np.tan(source.source.pointing_rad) * path
-    half: Floats = np.maximum(a + across * np.sqrt(tail), across) + aside
+    half: Floats = np.maximum(far, _BLUNT_MM) + aside
     return half
 
 
-_NO_LIMIT = 2.0 * 2.0  # twice the 1/e2 radius beyond the aperture, where any light counts
+_NO_LIMIT = 2.0  # 1/e2 radii beyond the aperture, where any light counts
+_BLUNT_MM = 0.5  # half the width of a point: nobody's eye is placed to better
+_ALONG = 49
+_TURNED = 1e-3  # of the radii: an ellipse that is turned more than this in its cross-section
+
+
+def _radii_in_plan(trace: Trace, beam: int, depth: Floats) -> tuple[Floats, Floats, bool]:
+    """Return the 1/e^2 radii aside and upright, and whether the ellipse is turned from these."""
+    s = trace.beams.start
+    m = moments.propagate(s.moments[:, [beam]], depth, s.index[beam])
+    k, e1 = s.direction[beam], s.axis[beam]
+    flat = float(np.hypot(k[0], k[1]))
+    if flat < _UPRIGHT:
+        widest = envelope_radii(trace, beam, depth)
+        return widest, widest, False
+    side = np.array([-k[1], k[0], 0.0]) / flat
+    a, b = float(side @ e1), float(side @ np.cross(k, e1))
+    xx, xy, yy = m[moments.XX], m[moments.XY], m[moments.YY]
+    along = a * a * xx + 2.0 * a * b * xy + b * b * yy
+    up = b * b * xx - 2.0 * a * b * xy + a * a * yy
+    both = a * b * (yy - xx) + (a * a - b * b) * xy
+    turned = bool((np.abs(both) > _TURNED * np.sqrt(np.maximum(along * up, 0.0))).any())
+    radii = (2.0 * np.sqrt(np.maximum(v, 1e-12)) for v in (along, up))
+    across, upright = radii
+    return across, upright, turned
 
 
 def envelope_radii(trace: Trace, beam: int, depth: Floats) -> Floats:
@@ -172,10 +201,9 @@ def _strip(points: Floats, half: Floats, ends: tuple[Floats | None, Floats | Non
     ahead = along / length
     side = np.array([-ahead[1], ahead[0]])
     share = np.linspace(0.0, 1.0, len(half))
-    # Radii of beams are convex along them, so a chord never lies inside.
     chord = half[0] + share * (half[-1] - half[0])
     kept: Flags = np.ones(len(half), dtype=np.bool_)
-    if float(np.max(chord - half)) < _STRAIGHT_MM:
+    if float(np.max(np.abs(chord - half))) < _STRAIGHT_MM:
         kept[1:-1] = False
     points, half = points[kept], half[kept]
     cuts = []

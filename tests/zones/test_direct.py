@@ -4,7 +4,7 @@ import math
 
 import pytest
 import shapely
-from traced import area_of, traced
+from traced import area_of, half_width, traced
 
 from benchlay.exposure import accessible_limit
 from benchlay.zones import zones_of
@@ -23,7 +23,7 @@ BENCH = """
     elements:
       T: {kind: target, at: [1500, 400], facing: 180, size: [200, 200], diffuse: 0, mount: none}
     """
-HALF = 3.5 + 5.0 * math.sqrt(0.5 * math.log(1.0 / (2.0 * LIMIT_W)))
+HALF = half_width(5.0, LIMIT_W)
 
 
 def zone(text):
@@ -108,3 +108,22 @@ def test_a_zone_that_is_cut_off_says_so():
     assert "cut off at `limits.reach` (7 m), still above the limit" in found.reason
     (ended,) = zones_of(traced(BENCH.replace("MORE", "body: none"))).zones
     assert "cut off" not in ended.reason
+
+
+@pytest.mark.parametrize(("waist", "watts"), [(0.05, 5e-3), (0.3, 1e-3), (1.5, 2e-3)])
+def test_the_area_of_a_beam_to_its_distance(waist, watts):
+    """The width falls to nothing where the limit is met; summed along the beam by SciPy."""
+    text = BENCH.replace("waist_radius: 5", f"waist_radius: {waist}")
+    text = text.replace("power: 1 W", f"power: {watts} W").replace("MORE", "body: none")
+    text = text.replace("at: [1500, 400]", "at: [1500, 700]")
+    (found,) = zones_of(traced(text + "limits: {reach: 60 m}\n")).zones
+    theta = 532e-6 / 1.00028 / (math.pi * waist)
+    share = LIMIT_W / watts
+    wide = math.sqrt(-2.0 * 3.5**2 / math.log1p(-share))
+    end = min(math.sqrt(wide**2 - waist**2) / theta, 60e3)
+    n, area = 150, 0.0
+    for i in range(n):
+        z = end * math.sin(0.5 * math.pi * (i + 0.5) / n)
+        step = end * 0.5 * math.pi / n * math.cos(0.5 * math.pi * (i + 0.5) / n)
+        area += 2.0 * step * half_width(math.hypot(waist, z * theta), share)
+    assert found.area_m2 == pytest.approx(1e-6 * area, rel=5e-3)

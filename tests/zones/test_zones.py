@@ -2,7 +2,7 @@ import math
 
 import pytest
 import shapely
-from traced import area_of, traced
+from traced import area_of, half_width, traced
 
 from benchlay.exposure import accessible_limit
 from benchlay.exposure.distances import nohd_exact_m
@@ -33,7 +33,7 @@ DARK = "{kind: target, at: [700, 300], facing: 180, diffuse: 0}"
 
 def test_a_parallel_beam_sweeps_a_strip():
     limit = accessible_limit(532.0).accessible_w
-    half = 3.5 + 5.0 * math.sqrt(0.5 * math.log(1.0 / (2.0 * limit)))
+    half = half_width(5.0, limit)
     (zone,) = zones_of(traced(straight(target=DARK))).zones
     assert zone[:3] == ("as drawn", "direct", 532.0)
     assert zone.area_m2 == pytest.approx(2.0 * half * 600.0 * 1e-6, rel=1e-4)
@@ -244,7 +244,7 @@ def test_a_beam_straight_up_is_a_disc():
     (zone,) = zones_of(traced(text + "limits: {reach: 2 m}\n")).zones
     limit = accessible_limit(532.0).accessible_w
     widest = math.hypot(1.0, 2000.0 * 532e-6 / math.pi)  # 2 m up
-    half = 3.5 + widest * math.sqrt(0.5 * math.log(20e-3 / (2.0 * limit)))
+    half = half_width(widest, limit / 20e-3)
     assert zone.area_m2 * 1e6 == pytest.approx(math.pi * half**2, rel=2e-3)
 
 

@@ -3,6 +3,8 @@
 import textwrap
 
 import shapely
+from scipy.optimize import brentq
+from scipy.stats import ncx2
 
 from benchlay.document.problems import Problems
 from benchlay.layout import read_layout
@@ -29,3 +31,14 @@ def area_of(zones, kind=None):
             if kind in (None, zone.kind)
         ]
     )
+
+
+def half_width(w, share, radius=3.5):
+    """How far off the axis of a round beam a circle still takes a share: by the noncentral
+    chi-squared distribution, with a standard deviation of half the 1/e2 radius."""
+    scale = (2.0 / w) ** 2
+
+    def excess(d):
+        return ncx2.cdf(radius**2 * scale, 2, d**2 * scale) - share
+
+    return brentq(excess, 1e-6, radius + 5.0 * w, xtol=1e-9)
