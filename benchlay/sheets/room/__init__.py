@@ -34,6 +34,7 @@ from benchlay.sheets.room.furniture import door_drawn, marks_of, window_drawn
 from benchlay.sheets.room.words import Places, box_of, leader
 from benchlay.sheets.safety.marks import warning_mark
 from benchlay.sheets.scale import SCALES, Window
+from benchlay.sheets.shop.rows import MARKS_MM
 from benchlay.sheets.tables import BETWEEN_MM, Column, Table, notes, table
 from benchlay.sheets.title_block import TitleFields
 from benchlay.zones.controlled import ControlledArea
@@ -251,12 +252,12 @@ def walkways(layout: Layout, room: Room) -> list[Dimension]:
     return out
 
 
-_SIGNS = (Column("Sign", 14.0), Column("Where", 62.0), Column("Label, mm", 32.0))
-_AREAS = (Column("State", 34.0), Column("Wavelengths", 44.0), Column("Area, m²", 30.0))
+_SIGNS = (Column("Sign", 14.0), Column("Where", 62.0), Column("Label, mm", 28.0))
+_AREAS = (Column("State", 34.0), Column("Wavelengths", 44.0), Column("Area, m²", 26.0))
 
 
 def _column(subject: Subject, room: Room, window: Window, decimal: str) -> list[Primitive]:
-    places = Window(window.right - _COLUMN_MM, window.low, window.right, window.high)
+    places = Window(window.right - _COLUMN_MM, window.low, window.right - MARKS_MM, window.high)
     drawn = notes("NOTES", list(_notes(subject, room, decimal)), places, "the safety sheet")
     out = [*drawn.primitives]
     areas = tuple(

@@ -34,7 +34,7 @@ from benchlay.sheets.primitives import (
 from benchlay.sheets.scale import SCALES, Window
 from benchlay.sheets.shop.numbering import numbered
 from benchlay.sheets.shop.ordinates import ROOM_MM, datum_mark, running
-from benchlay.sheets.shop.rows import Cell, Heading, Rows, shown
+from benchlay.sheets.shop.rows import MARKS_MM, Cell, Heading, Rows, shown
 from benchlay.sheets.shop.setting_out import Footing, footing, hole_at, nearest_hole
 from benchlay.sheets.tables import BETWEEN_MM, Column, Table, notes, table
 from benchlay.sheets.title_block import TitleFields
@@ -54,9 +54,9 @@ _HEADINGS = (
     Heading("row", 11.0),
     Heading("X from datum", 20.0, "mm"),
     Heading("Y from datum", 20.0, "mm"),
-    Heading("for", 24.0),
+    Heading("for", 23.0),
     Heading("reach", 15.0, "mm"),
-    Heading("by", 15.0),
+    Heading("by", 12.0),
 )
 
 
@@ -274,7 +274,7 @@ def _grid_marks(layout: Layout, scale: int) -> Iterator[Primitive]:
 def _column(rows: Rows, window: Window, decimal: str) -> list[Primitive]:
     at = (window.left, window.high - LARGE_MM)
     heading = Text("TITLE", at, "Bench top, seen from above", LARGE_MM)
-    room = window._replace(left=window.right - _COLUMN_MM)
+    room = window._replace(left=window.right - _COLUMN_MM, right=window.right - MARKS_MM)
     drawn = notes("NOTES", list(rows.notes), room, "drilling.csv")
     room = room._replace(high=drawn.foot - BETWEEN_MM)
     words = tuple(tuple(shown(cell, decimal) for cell in row) for row in rows.rows)

@@ -8,7 +8,8 @@ from benchlay.layout.layout import Layout
 from benchlay.sheets.drafting.picture import title_fields
 from benchlay.sheets.form import Form, form_for
 from benchlay.sheets.primitives import Sheet
-from benchlay.sheets.shop.rows import Rows, shown
+from benchlay.sheets.scale import Window
+from benchlay.sheets.shop.rows import MARKS_MM, Rows, shown
 from benchlay.sheets.tables import BETWEEN_MM, Column, Table, notes, table
 from benchlay.sheets.title_block import TitleFields
 
@@ -34,8 +35,8 @@ def _fitting(rows: Rows, left: list[tuple[str, ...]], form: Form) -> int:
     low, high = 1, len(left)
     while low < high:
         middle = (low + high + 1) // 2
-        drawn = table(_table(rows, tuple(left[:middle])), form.window._replace(low=-1e6))
-        low, high = (middle, high) if drawn.foot >= form.window.low else (low, middle - 1)
+        drawn = table(_table(rows, tuple(left[:middle])), _room(form)._replace(low=-1e6))
+        low, high = (middle, high) if drawn.foot >= _room(form).low else (low, middle - 1)
     return low
 
 
@@ -55,10 +56,11 @@ def listing(rows: Rows, part: Page, name: str, layout: Layout, fields: TitleFiel
         Of its title block, its number in them.
     """
     form = _form(fields._replace(scale="-"))
-    drawn = table(_table(rows, part), form.window)
+    drawn = table(_table(rows, part), _room(form))
     paper = [*drawn.primitives]
     if form.beside is not None:
-        room = form.beside._replace(high=form.beside.high - BETWEEN_MM)
+        left, high = form.beside.left + MARKS_MM, form.beside.high - BETWEEN_MM
+        room = form.beside._replace(left=left, high=high)
         paper += notes("NOTES", rows.notes, room, f"{rows.name}.csv").primitives
     return form.sheet(
         name,
@@ -71,6 +73,10 @@ def listing(rows: Rows, part: Page, name: str, layout: Layout, fields: TitleFiel
 
 def _form(fields: TitleFields) -> Form:
     return form_for(fields, size=_SIZE)
+
+
+def _room(form: Form) -> Window:
+    return form.window._replace(left=form.window.left + MARKS_MM)
 
 
 def _table(rows: Rows, part: Page) -> Table:

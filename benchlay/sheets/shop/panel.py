@@ -28,6 +28,7 @@ from benchlay.sheets.primitives import (
 from benchlay.sheets.scale import SCALES, Window
 from benchlay.sheets.shop.numbering import numbered
 from benchlay.sheets.shop.ordinates import ROOM_MM, datum_mark, running
+from benchlay.sheets.shop.rows import MARKS_MM
 from benchlay.sheets.shop.section import section
 from benchlay.sheets.tables import BETWEEN_MM, Column, Table, notes, table
 from benchlay.sheets.title_block import TitleFields
@@ -115,7 +116,7 @@ def _view(form: Form) -> Window:
 def _heading(part: Part, missing: tuple[str, ...], window: Window) -> Iterator[Primitive]:
     y = window.high - LARGE_MM
     room = window.width - _COLUMN_MM - BETWEEN_MM
-    words = f"{', '.join(part.names)}   {part.quantity} off"
+    words = f"{', '.join(part.names)}: {part.quantity} off"
     yield Text("TITLE", (window.left, y), shorten(words, room, LARGE_MM), LARGE_MM)
     if not missing:
         return
@@ -181,7 +182,7 @@ def _tags(blank: Blank, scale: int, decimal: str) -> Iterator[Primitive]:
 
 def _column(part: Part, layout: Layout, window: Window, decimal: str) -> list[Primitive]:
     """Return notes and the table of holes."""
-    room = window._replace(left=window.right - _COLUMN_MM)
+    room = window._replace(left=window.right - _COLUMN_MM, right=window.right - MARKS_MM)
     drawn = notes("NOTES", list(_notes(part, layout, decimal)), room, f"panel {part.name}")
     room = room._replace(high=drawn.foot - BETWEEN_MM)
     content = Table("HOLES", _HOLES, _hole_rows(part.blank, decimal), f"cut-{part.name}.dxf")
@@ -193,7 +194,7 @@ _HOLES = (
     Column("X", 22.0),
     Column("Y", 22.0),
     Column("Ø", 14.0),
-    Column("For", 34.0),
+    Column("For", 32.0),
 )
 
 
@@ -214,7 +215,7 @@ def _hole_rows(blank: Blank, decimal: str) -> tuple[tuple[str, ...], ...]:
     for h in blank.holes:
         kinds[h.diameter_mm, h.use] = kinds.get((h.diameter_mm, h.use), 0) + 1
     return tuple(
-        (f"{count}x", "dimensioned", "", figure(diameter, 2, decimal), use)
+        (f"{count}x", "on view", "", figure(diameter, 2, decimal), use)
         for (diameter, use), count in sorted(kinds.items())
     )
 

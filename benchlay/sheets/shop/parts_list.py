@@ -8,7 +8,9 @@ from math import degrees
 from typing import TypeAlias
 
 from benchlay.document.record import Record
+from benchlay.elements._kind import Glass
 from benchlay.elements.mount import Holder
+from benchlay.geometry.outline import Outline
 from benchlay.geometry.solid import Solid
 from benchlay.layout.layout import Layout
 from benchlay.making.parts import parts_of
@@ -81,22 +83,46 @@ def _data(record: Record) -> tuple[str, str]:
         text = _value(degrees(value) if attribute.endswith("_rad") else value)
         if not text:
             others.append(f"{spec.name} {_PLACE.sub('', repr(value))}")
-        elif value not in (spec.default, 0.0) or (attribute.endswith("_mm") and value != 0.0):
+        elif _telling(attribute, value, spec.default):
             out.append(f"{spec.name} {text}{' deg' if attribute.endswith('_rad') else ''}")
     return ", ".join(out), "; ".join(others)
 
 
+def _telling(attribute: str, value: object, default: object) -> bool:
+    """Whether a value is worth a word: sizes and glass are, even where they are the default."""
+    if isinstance(value, Outline | Glass):
+        return True
+    return value != 0.0 and (value != default or attribute.endswith("_mm"))
+
+
 def _value(value: object) -> str:
     """Return plain values in words; tables inside a record have none that fit a line."""
-    if isinstance(value, bool):
-        return "yes" if value else "no"
-    if isinstance(value, float | int):
-        return f"{value:.6g}"
-    if isinstance(value, str):
-        return value
-    if isinstance(value, tuple) and value and all(isinstance(v, float | int) for v in value):
-        return " x ".join(f"{v:.6g}" for v in value)
-    return ""
+    match value:
+        case bool():
+            words = "yes" if value else "no"
+        case float() | int():
+            words = f"{value:.6g}"
+        case str():
+            words = value
+        case Outline():
+            words = _wide(value)
+        case Glass():
+            words = value.name or f"index {value.ratio:g}"
+        case tuple() if value and all(isinstance(v, float | int) for v in value):
+            words = " x ".join(f"{v:.6g}" for v in value)
+        case _:
+            words = ""
+    return words
+
+
+def _wide(outline: Outline) -> str:
+    """Return how wide and high an outline is: one figure for a circle."""
+    if outline.corners:
+        sides = [max(c) - min(c) for c in zip(*outline.corners, strict=True)]
+    else:
+        sides = [2 * radius for radius in outline.radii]
+    figures = [f"{side:.6g}" for side in sides]
+    return figures[0] if not outline.corners and len(set(figures)) == 1 else " x ".join(figures)
 
 
 def _held(item: PlacedElement, name: str) -> Iterator[_Thing]:

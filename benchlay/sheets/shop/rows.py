@@ -9,6 +9,7 @@ from benchlay.sheets.primitives import figure
 
 Cell: TypeAlias = str | int | float | None
 _DECIMALS = 2
+MARKS_MM = 4.0  # off the sides of a window: the sheet's centring marks reach in
 
 
 class Heading(NamedTuple):
