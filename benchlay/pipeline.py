@@ -22,6 +22,7 @@ from benchlay.placing import Placed
 from benchlay.report.model import LayoutErrors, Reported, Review
 
 if TYPE_CHECKING:
+    from benchlay.faults import Review as FaultReview
     from benchlay.faults.sweeps import Progress
     from benchlay.report.details import TraceResult
     from benchlay.report.faults import FaultsResult
@@ -177,12 +178,17 @@ def faults_result(
 def _faults(
     placed: Placed, data: bytes, file: str, state: str | None, progress: Progress | None
 ) -> FaultsResult:
-    from benchlay.faults import review_faults
     from benchlay.results.faults import faults_result as put_together
 
-    states = None if state is None else (state,)
-    reviewed = review_faults(placed, states, progress or _nobody)
-    return put_together(reviewed, placed, file, _digest(data))
+    return put_together(_fault_review(placed, state, progress), placed, file, _digest(data))
+
+
+def _fault_review(
+    placed: Placed, state: str | None, progress: Progress | None = None
+) -> FaultReview:
+    from benchlay.faults import review_faults
+
+    return review_faults(placed, None if state is None else (state,), progress or _nobody)
 
 
 def _nobody(done: int, total: int) -> None:
@@ -196,16 +202,24 @@ def review_files(
     """Review a layout in full; also return every file of the review, by name."""
     from benchlay import __version__
     from benchlay.report.json_out import check_document, dumps, faults_document, trace_document
+    from benchlay.results.faults import faults_result as put_together
     from benchlay.results.tables import tables
 
     try:
         reviewed, checked = _reviewed(data, file, on=on, state=state, in_full=True)
+        placed = checked.trace.placed
+        single = _fault_review(placed, state, progress)
         drawings = _drawn(
-            checked.trace, reviewed.findings, checked.zones, reviewed.sha256, state=state
+            checked.trace,
+            reviewed.findings,
+            checked.zones,
+            reviewed.sha256,
+            state=state,
+            faults=single,
         )
     except LayoutError as error:
         return LayoutErrors(file, error.problems, _lines(data))
-    faults = _faults(checked.trace.placed, data, file, state, progress)
+    faults = put_together(single, placed, file, reviewed.sha256)
     remedies = _remedies(data, file, checked, reviewed, on)
     # Unlike a check, a review speaks of what panels take by faults too.
     reviewed = reviewed._replace(remedies=remedies, faults=faults, panels=faults.panels)
@@ -255,13 +269,19 @@ def _drawn(
     state: str | None = None,
     sheet: str | None = None,
     form: str | None = None,
+    faults: FaultReview | None = None,
 ) -> dict[str, bytes]:
     from benchlay.results.drawings import drawings, refusals
 
     problems = refusals(traced.placed.base.layout, sheet, form)
     if problems:
         raise LayoutError(problems)
-    made = drawings(traced, judged, zones, digest, state=state, sheet=sheet, form=form)
+    # Whether there is a sheet of faults decides how many the set has: they are reviewed for any.
+    if faults is None:
+        faults = _fault_review(traced.placed, state)
+    made = drawings(
+        traced, judged, zones, digest, state=state, sheet=sheet, form=form, faults=faults
+    )
     if isinstance(made, Problem):
         raise LayoutError((made,))
     return made

@@ -179,6 +179,10 @@ def test_a_review_writes_its_files(files, capsys):
     cli.run(["check", "--json", "escapes.yaml"])
     printed = json.loads(capsys.readouterr().out)
     assert record["reviews"][0].pop("remedies")  # tried out by a review only
+    # A check's panels speak of the states only, a review's of faults too.
+    taken = [review["reviews"][0].pop("panels") for review in (record, printed)]
+    assert [row["panel"] for row in taken[0]] == [row["panel"] for row in taken[1]]
+    assert all(row["governs"] != "fault" for row in taken[1])
     assert record == printed
     beams = json.loads((folder / "beams.json").read_text(encoding="ascii"))
     assert beams["state"] == "as drawn"

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from benchlay.faults.families import KINDS, Family, families
+from benchlay.faults.fans import Fan, fans_of
 from benchlay.faults.guarding import Opened
 from benchlay.faults.panes import Window
 from benchlay.faults.review import OUTCOMES, Fault, Range, Review, review_faults
@@ -12,6 +13,7 @@ __all__ = [
     "KINDS",
     "OUTCOMES",
     "Family",
+    "Fan",
     "Fault",
     "Light",
     "Opened",
@@ -19,5 +21,6 @@ __all__ = [
     "Review",
     "Window",
     "families",
+    "fans_of",
     "review_faults",
 ]

@@ -18,6 +18,8 @@ from benchlay.named import NamedTuple
 from benchlay.placing.placed import Placed
 from benchlay.scene.tables import Ints
 
+_RIGHT_ROUND = 1.5  # rad: waveplates turn by a quarter of a turn both ways, cubes by half a one
+
 OUTCOMES = ("escape", "not evaluated", "stray", "none")
 """What may become of a fault, the gravest first."""
 
@@ -208,13 +210,19 @@ def _fault(swept: Swept, setting: float) -> Fault:
 
 
 def _worst_case(cases: Sequence[Case], outcome: str) -> Case | None:
-    """Return the case of the gravest light; of equals the one farthest from rest."""
+    """Return the case of the gravest light.
+
+    Of equals it is the one farthest from rest, where a mount stands at the end of its range; of
+    what is turned right round, the nearest: so little is enough.
+    """
     there = [case for case in cases if case.verdict.outcome == outcome and case.verdict.worst()]
     if not there:
         return None
     most = max(_times(case) for case in there)
     # A hundredth is what a beam gains and loses where the edge of an opening stands in it.
     near = [case for case in there if _times(case) > 0.99 * most]
+    if max(case.setting_rad for case in cases) > _RIGHT_ROUND:
+        return min(near, key=lambda case: (abs(case.setting_rad), -case.setting_rad))
     return max(near, key=lambda case: (abs(case.setting_rad), case.setting_rad))
 
 

@@ -24,7 +24,8 @@ _MORE = 1.0 + 1e-3  # of what already got out: less is the change of a share, no
 class Light(NamedTuple):
     """A hazardous beam that gets out, or lands where nothing stops strays.
 
-    `through` is the way out, or the thing that it lands on.
+    `through` is the way out, or the thing that it lands on; `at` is where it goes beyond the
+    line, or lands. The leg runs from `origin` to `end`.
     """
 
     source: str
@@ -35,6 +36,8 @@ class Light(NamedTuple):
     limit_w: float
     at: Vector
     direction: Vector
+    origin: Vector
+    end: Vector
 
     @property
     def times(self) -> float:
@@ -134,6 +137,8 @@ def _light(context: Context, beam: int, through: str, power_w: float, at: Vector
         float(context.limit_w[beam]),
         at,
         context.point(context.trace.beams.start.direction[beam]),
+        context.point(context.trace.beams.start.position[beam]),
+        context.end_at(beam),
     )
 
 

@@ -30,6 +30,15 @@ class FaultFinding(NamedTuple):
     direction: Point
 
 
+class FanRow(NamedTuple):
+    """Where the light goes that a fault sends out; angles in degrees, azimuth anticlockwise."""
+
+    origin: Point
+    azimuth: Settings
+    elevation: Settings
+    reach_mm: float
+
+
 class FaultRow(NamedTuple):
     """One fault in one state; what is null does not apply."""
 
@@ -49,6 +58,8 @@ class FaultRow(NamedTuple):
     times_limit: float | None
     cases: int
     reason: str | None
+    number: str | None = None  # F1: of its fan on the plan
+    fan: FanRow | None = None
 
 
 class Resolution(NamedTuple):

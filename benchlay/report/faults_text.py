@@ -60,7 +60,7 @@ def worst_line(result: FaultsResult, ink: Ink = PLAIN) -> str | None:
 
 
 def _table(rows: Sequence[FaultRow]) -> Iterator[str]:
-    cells: list[tuple[str, ...]] = [("fault", "power", "x limit", "where", "settings", "in")]
+    cells: list[tuple[str, ...]] = [("", "fault", "power", "x limit", "where", "settings", "in")]
     seen: dict[tuple[str, str], list[FaultRow]] = {}
     for row in rows:
         seen.setdefault((row.kind, _family(row)), []).append(row)
@@ -86,6 +86,7 @@ def _cells(same: Sequence[FaultRow]) -> tuple[str, ...]:
     if len(row.ranges) > 1:
         ranges += f" (of {len(row.ranges)} ranges)"
     return (
+        listed([one.number for one in same if one.number]) if row.number else "",
         tame(row.fault),
         shown(row.power_W, "W"),
         shown(row.times_limit),

@@ -7,6 +7,7 @@ from __future__ import annotations
 
 from collections import Counter
 from collections.abc import Callable, Mapping, Sequence
+from typing import TYPE_CHECKING
 
 from benchlay.document.problems import Problem, format_choices
 from benchlay.document.span import Span
@@ -20,6 +21,9 @@ from benchlay.sheets.scale import PLAN_SIZES, NothingFitsError
 from benchlay.tracing import Trace
 from benchlay.writers import dxf, pdf, svg
 from benchlay.zones import Zones
+
+if TYPE_CHECKING:
+    from benchlay.faults import Review as FaultReview
 
 FORMS: Mapping[str, Callable[[Sheet], bytes]] = {
     "dxf": dxf.write,
@@ -62,13 +66,15 @@ def drawings(
     state: str | None = None,
     sheet: str | None = None,
     form: str | None = None,
+    faults: FaultReview | None = None,
 ) -> dict[str, bytes] | Problem:
     """Return the sheets asked for (all for None) in the formats asked for, by file name.
 
     A sheet that fits on no paper is a problem of the layout. Findings and zones are what the
     review has of them: the findings are counted in the sheets' notes, and zones that are not
     known yet are worked out. `sha256` is that of the layout's bytes. `state` is the one that
-    the review speaks of, where it is of one alone: it is drawn, else the one as drawn.
+    the review speaks of, where it is of one alone: it is drawn, else the one as drawn. `faults`
+    is the review of single faults, where there was one.
     """
     counts = Counter(Severity[finding.severity.upper()] for finding in judged)
     try:
@@ -80,6 +86,7 @@ def drawings(
             sha256=sha256,
             state=state,
             findings=_marks(judged, state or trace.scene.variants[0]),
+            faults=faults,
         )
     except UnknownSheetError as error:
         return _unknown(trace.placed.base.layout, error)

@@ -5,9 +5,10 @@ from __future__ import annotations
 from collections.abc import Iterator, Sequence
 from math import degrees
 
-from benchlay.faults import Fault, Light, Opened, Range, Review, Window
+from benchlay.faults import Fan, Fault, Light, Opened, Range, Review, Window, fans_of
 from benchlay.placing.placed import Placed
 from benchlay.report.faults import (
+    FanRow,
     FaultFinding,
     FaultRow,
     FaultsResult,
@@ -36,6 +37,7 @@ ASSUMED = (
 def faults_result(review: Review, placed: Placed, file: str, sha256: str) -> FaultsResult:
     """Return the review as it is reported."""
     names = [state.name for state in placed.states]
+    fans = {id(fan.fault): fan for fan in fans_of(review.faults)}
     off = _families_off(placed, review.states)
     return FaultsResult(
         file,
@@ -43,7 +45,7 @@ def faults_result(review: Review, placed: Placed, file: str, sha256: str) -> Fau
         review.states,
         review.cases,
         review.passed_over,
-        tuple(_row(fault, names) for fault in review.faults),
+        tuple(_row(fault, names, fans.get(id(fault))) for fault in review.faults),
         Resolution(
             review.step_mm,
             degrees(review.open_rad),
@@ -69,7 +71,7 @@ def _families_off(placed: Placed, states: Sequence[str]) -> Iterator[str]:
             )
 
 
-def _row(fault: Fault, names: Sequence[str]) -> FaultRow:
+def _row(fault: Fault, names: Sequence[str], fan: Fan | None) -> FaultRow:
     worst, swept = fault.worst, fault.family.sweep is not None
     return FaultRow(
         fault=fault.name,
@@ -88,7 +90,14 @@ def _row(fault: Fault, names: Sequence[str]) -> FaultRow:
         times_limit=None if worst is None else worst.times,
         cases=len(fault.cases),
         reason="; ".join(fault.reasons) or None,
+        number=None if fan is None else fan.number,
+        fan=None if fan is None or worst is None else _fan(fan, worst),
     )
+
+
+def _fan(fan: Fan, worst: Light) -> FanRow:
+    azimuth, elevation = Range(*fan.azimuth_rad), Range(*fan.elevation_rad)
+    return FanRow(worst.origin, _degrees(azimuth), _degrees(elevation), fan.reach_mm)
 
 
 def _degrees(one: Range) -> tuple[float, float]:

@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING
 from benchlay.named import NamedTuple
 
 if TYPE_CHECKING:
+    from benchlay.faults import Review as FaultReview
     from benchlay.findings import Severity
     from benchlay.making.parts import Part
     from benchlay.sheets.contents import Mark
@@ -29,6 +30,7 @@ class Subject(NamedTuple):
     sha256: str  # of the layout's bytes, to be written into the files
     state: str | None = None  # the only one that the review speaks of, and so the one drawn
     findings: tuple[Mark, ...] = ()  # of the review
+    faults: FaultReview | None = None  # where single faults were reviewed
 
     @property
     def variant(self) -> int:
@@ -202,10 +204,28 @@ def _safety(subject: Subject) -> Iterator[Planned]:
         yield Planned(name_of(page), made)
 
 
+def _faults(subject: Subject) -> Iterator[Planned]:
+    from benchlay.sheets.drafting.faults import faults_picture
+    from benchlay.sheets.plan import sheets
+
+    if subject.faults is None:
+        return
+    picture = faults_picture(
+        subject.trace,
+        subject.zones,
+        subject.faults,
+        variant=subject.variant,
+        sha256=subject.sha256,
+    )
+    for name, made in sheets(picture) if picture is not None else ():
+        yield Planned(name, made)
+
+
 SHEETS: Mapping[str, Callable[[Subject], Iterable[Planned]]] = {
     "plan": _plan,
     "elevation": _elevations,
     "safety": _safety,
+    "faults": _faults,
     "room": _room,
     "panel": _panels,
     "drilling": _drilling,
@@ -263,6 +283,7 @@ def sheets_of(
     sha256: str = "",
     state: str | None = None,
     findings: tuple[Mark, ...] = (),
+    faults: FaultReview | None = None,
 ) -> list[Composed]:
     """Return the sheets of a traced layout, in its state as drawn or in the one named.
 
@@ -271,7 +292,7 @@ def sheets_of(
     trace : Trace
     zones : Zones, optional
         The hazard zones, where they are known already: of all states, or of the one named.
-    only, counts, sha256, state, findings
+    only, counts, sha256, state, findings, faults
         See `composed_sheets` and `Subject`.
 
     Raises
@@ -283,4 +304,5 @@ def sheets_of(
         from benchlay.zones import zones_of
 
         zones = zones_of(trace, states=None if state is None else (state,))
-    return composed_sheets(Subject(trace, zones, tuple(counts), sha256, state, findings), only)
+    subject = Subject(trace, zones, tuple(counts), sha256, state, findings, faults)
+    return composed_sheets(subject, only)

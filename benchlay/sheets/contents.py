@@ -101,6 +101,14 @@ class Zone(NamedTuple):
     schedule: tuple[str, ...]  # source of it, wavelength, reach, what it assumes
 
 
+class ZoneWords(NamedTuple):
+    """What the zones of a plan are called: over their table, in its head, and in the legend."""
+
+    title: str = "HAZARD ZONES"
+    head: str = "Zone, and what it assumes"
+    legend: str = "hazard zone: limit, ticks and hatching inside"
+
+
 class BeamEntry(NamedTuple):
     """A row of the legend: how a wavelength is drawn and what it is."""
 
@@ -148,6 +156,7 @@ class Picture(NamedTuple):
     findings: tuple[Mark, ...] = ()
     warning: tuple[str, ...] = ()  # in large letters: the hazard in reach, eyewear
     signs: tuple[tuple[str, str, str], ...] = ()  # number, least size, what and where
+    zones_are: ZoneWords = ZoneWords()
     legend: tuple[BeamEntry, ...] = ()
     revisions: tuple[tuple[str, str, str, str], ...] = ()  # rev, date, what, by
     notes: tuple[str, ...] = ()

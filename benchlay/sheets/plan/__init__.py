@@ -174,7 +174,8 @@ def _words(picture: Picture, board: Board) -> str:
         f"Plan of the bench at 1:{board.choice.scale}, state {picture.state}: "
         f"{len(picture.items)} elements and sources, "
         f"{len(picture.legs) - strays} legs of working beams, {strays} of stray light, "
-        f"{len(picture.panels)} panels, {len(picture.zones)} hazard zones."
+        f"{len(picture.panels)} panels, "
+        f"{len(picture.zones)} {picture.zones_are.title.lower()}."
     )
 
 

@@ -92,7 +92,9 @@ def _tables(picture: Picture) -> Iterator[Table]:
     """Yield what stands between legend and notes, as far as there is anything to say."""
     if picture.zones:
         rows = tuple((zone.name, "; ".join(zone.schedule)) for zone in picture.zones)
-        yield Table("HAZARD ZONES", _ZONES, rows, "", most_lines=4)
+        words = picture.zones_are
+        columns = (_ZONES[0], _ZONES[1]._replace(heading=words.head))
+        yield Table(words.title, columns, rows, "", most_lines=4)
     if picture.findings:
         yield findings_table(picture.findings)
     if picture.signs:
@@ -136,7 +138,7 @@ def _samples(picture: Picture, x: float) -> Iterator[tuple[str, list[Primitive]]
     if any(item.coated for item in picture.items):
         yield "coated side: second line before the face", _coated_sample(middle)
     if picture.zones:
-        yield "hazard zone: limit, ticks and hatching inside", _zone_sample(x, right)
+        yield picture.zones_are.legend, _zone_sample(x, right)
     if picture.panels:
         corners = ((x, -0.4), (right, -0.4), (right, 0.4), (x, 0.4))
         yield "panel of the enclosure", [Polyline("PANELS", corners, closed=True)]
