@@ -65,6 +65,10 @@ def _taller(
         top = _STEP_MM * ceil((z + room) / _STEP_MM)
         words = f"panel '{name}' raised from {high:g} to {top:g} mm stands in its way"
         yield Change("panel", words, (Edit(path, "to_height", f"{top:g}"),))
+        if layout.enclosure.panels[name].to_height_mm is None:
+            # One panel above the others makes a gap of each of theirs.
+            words = f"the whole enclosure raised from {high:g} to {top:g} mm stands in its way"
+            yield Change("panel", words, (Edit(("enclosure",), "to_height", f"{top:g}"),))
     if z - room < low:
         words = f"panel '{name}' brought down to the bench stands in its way"
         yield Change("panel", words, (Edit(path, "from_height", "0"),))

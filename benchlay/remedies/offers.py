@@ -17,7 +17,7 @@ MENDED = ("escape", "stray-unstopped")
 
 # A trial is a whole check. These bound what one finding and one layout may cost.
 _EACH = 8  # changes of one sort tried for one finding
-_FOLLOWING = 3  # stops tried for light that a tilt or a wedge has sent elsewhere
+_FOLLOWING = 4  # stops tried for light that a tilt or a wedge has sent elsewhere
 _PER_FINDING = 24
 _IN_ALL = 160
 _FOLLOWED = 2  # beams that one turned optic sends elsewhere
@@ -48,7 +48,8 @@ def offers(text: str, judged: Judged, judge: Judgement) -> Remedies:
     -------
     Remedies
         Of each sort (a stop; panel or lid; coating; tilt; wedge) the first that clears the
-        finding and raises no other, in any state.
+        finding and raises no other, in any state; a wedge only where neither of the two before
+        it does.
     """
     bench = Bench(text, judged, judge, 0)
     offered: list[Remedy] = []
@@ -67,13 +68,18 @@ def offers(text: str, judged: Judged, judge: Judgement) -> Remedies:
 
 def _remedies(case: _Case, known: list[tuple[str, Trial]]) -> Iterator[Trial]:
     """Give a trial of each sort that clears a finding: one of those known, or a new one."""
+    clears: set[str] = set()
     for name, find in _SORTS.items():
+        # A wedge is a new optic: it is looked for where nothing simpler removes the ghost.
+        if name == "wedge" and clears & {"coating", "tilt"}:
+            continue
         trial = next((t for n, t in known if n == name and _clears(case, t)), None)
         if trial is None:
             trial = find(case)
             if trial is not None:
                 known.append((name, trial))
         if trial is not None:
+            clears.add(name)
             yield trial
 
 

@@ -24,7 +24,8 @@ _WIDTHS_MM = (50.0, 25.0, 100.0)
 _TALLEST_MM = 400.0  # a plate that stands on the bench up to a beam at half of this height
 _RADII = 3.0  # of the beam within a stop: all but 1e-7 of its light
 _OPENING_MM = 20.0  # of a dump by default
-_FROM_BEAMS_MM = 8.0  # from the axis of another beam to a stop's middle, at the least
+_WALL_MM = 5.0  # of a dump round its opening
+_FROM_BEAMS_MM = 3.0  # from the axis of another beam to a stop's edge, at the least
 _GRID_MM = 0.5  # places are told to half a millimetre: a rule can be read so
 
 
@@ -32,23 +33,23 @@ def stops(context: Context, beam: int, taken: list[str]) -> Iterator[Change]:
     """Give screens and dumps that would end a beam on its leg, the likeliest first."""
     power = float(context.trace.beams.start.power[beam])
     order = ("dump", "screen") if power > _STRONG_W else ("screen", "dump")
+    spots = _spots(context, beam)
     for kind in order:
-        for spot in _spots(context, beam):
-            sizes = _WIDTHS_MM if kind == "screen" else (_OPENING_MM,)
-            for size in sizes:
+        for spot, free in spots:
+            sizes = _WIDTHS_MM if kind == "screen" else (_OPENING_MM + 2.0 * _WALL_MM,)
+            for size in (one for one in sizes if one / 2 + _FROM_BEAMS_MM <= free):
                 change = _stop(context, beam, spot, (kind, size), taken)
                 if change is not None:
                     yield change
 
 
-def _spots(context: Context, beam: int) -> list[Floats]:
-    """Return places on a leg, over the bench and within the enclosure, with free room first."""
+def _spots(context: Context, beam: int) -> list[tuple[Floats, float]]:
+    """Return places on a leg, over the bench and within the enclosure, with the room there."""
     start = context.trace.beams.start
     origin, k = start.position[beam], start.direction[beam]
     over = _way_over_bench(context, beam)
     spots = [origin + share * over * k for share in _SHARES]
-    room = [_from_other_beams(context, spot, beam) for spot in spots]
-    return [s for s, free in zip(spots, room, strict=True) if free >= _FROM_BEAMS_MM]
+    return [(spot, _from_other_beams(context, spot, beam)) for spot in spots]
 
 
 def _way_over_bench(context: Context, beam: int) -> float:
@@ -99,7 +100,7 @@ def _stop(
     pose = f"at: [{x:g}, {y:g}, {z:g}], facing: {facing}" + (f", pitch: {pitch}" if pitch else "")
     name = unused_name("S" if kind == "screen" else "D", taken)
     if kind == "dump":
-        opening = max(size, 5.0 * ceil(needed / 5.0))
+        opening = max(_OPENING_MM, 5.0 * ceil(needed / 5.0))
         body = "" if opening == _OPENING_MM else f", opening: {opening:g}"
         words = f"a dump of {opening:g} mm opening at [{x:g}, {y:g}, {z:g}]"
     else:
