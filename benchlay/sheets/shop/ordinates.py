@@ -25,14 +25,14 @@ DECIMALS = 2
 ROOM_MM = 30.0  # that a row takes on paper, figures included
 _APART_MM = 4.2  # from figure to figure: their height and a gap
 _GAP_MM, _LED_FROM_MM, _LED_TO_MM, _END_MM = 1.0, 4.0, 10.0, 12.0
-_SAME_MM = 5e-3  # half of what the last decimal says
+SAME_MM = 5e-3  # half of what the last decimal says
 
 
 def distinct(values: Iterable[float]) -> list[float]:
     """Return values in order, those once that read the same."""
     out: list[float] = []
     for value in sorted(values):
-        if not out or value - out[-1] > _SAME_MM:
+        if not out or value - out[-1] > SAME_MM:
             out.append(value)
     return out
 

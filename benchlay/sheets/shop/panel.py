@@ -16,7 +16,9 @@ from benchlay.sheets.form import Form, form_for
 from benchlay.sheets.lettering import LARGE_MM, MIDDLE_MM, SMALL_MM, shorten, wrap
 from benchlay.sheets.primitives import (
     Across,
+    Axis,
     Circle,
+    Dimension,
     Line,
     Polyline,
     Primitive,
@@ -27,7 +29,7 @@ from benchlay.sheets.primitives import (
 )
 from benchlay.sheets.scale import SCALES, Window
 from benchlay.sheets.shop.numbering import numbered
-from benchlay.sheets.shop.ordinates import ROOM_MM, datum_mark, running
+from benchlay.sheets.shop.ordinates import DECIMALS, ROOM_MM, SAME_MM, datum_mark, running
 from benchlay.sheets.shop.rows import MARKS_MM
 from benchlay.sheets.shop.section import section
 from benchlay.sheets.tables import BETWEEN_MM, Column, Table, notes, table
@@ -36,8 +38,9 @@ from benchlay.sheets.title_block import TitleFields
 TOLERANCE = "ISO 2768-m; hole positions ±0,2"
 _MOST_BESIDE = 12  # holes; more of them stand in a table
 _COLUMN_MM = 108.0
-_HEADING_MM = 22.0
-_RIGHT_MM = 8.0
+_HEADING_MM = 36.0
+_OVERALL_MM = 10.0  # of the dimensions of the whole blank, off it
+_RIGHT_MM = 16.0
 _READABLE = 10  # N of 1:N: beyond it holes are specks, and a larger sheet is taken
 _SIZES = ("A3", "A2", "A1", "A0")
 
@@ -145,7 +148,15 @@ def _drawn(blank: Blank, scale: int, decimal: str) -> list[Primitive]:
     ys = [y for _, y in (*corners, *centres)]
     xs += [b.start[0] for b in blank.bends if b.start[0] == b.end[0]]
     ys += [b.start[1] for b in blank.bends if b.start[1] == b.end[1]]
-    datum = (0.0, 0.0)
+    datum, (width, height) = (0.0, 0.0), blank.flat_mm
+    xs, ys = [x for x in xs if x < width - SAME_MM], [y for y in ys if y < height - SAME_MM]
+    off = _OVERALL_MM * scale
+    for axis, near, line in (
+        (Axis.HORIZONTAL, (0.0, height), (0.0, height + off)),
+        (Axis.VERTICAL, (width, 0.0), (width + off, 0.0)),
+    ):
+        far = (width, height)
+        out.append(Dimension("DIMENSIONS", axis, near, far, line, decimals=DECIMALS))
     out += running(xs, across=True, datum=datum, edge=0.0, scale=scale, decimal=decimal)
     out += running(ys, across=False, datum=datum, edge=0.0, scale=scale, decimal=decimal)
     return out + datum_mark(datum, scale) + list(_tags(blank, scale, decimal))
@@ -165,7 +176,7 @@ def _bend_label(bend: Bend, scale: int, decimal: str) -> Text:
     x, y = (ax + bx) / 2, (ay + by) / 2
     if ax != bx:
         return Text("TAGS", (x, y + 6.0 * scale), words, SMALL_MM, Across.CENTRE)
-    inward = 8.0 * scale * (-1.0 if x > 100.0 * scale else 1.0)
+    inward = 12.0 * scale * (-1.0 if x > 100.0 * scale else 1.0)
     return Text("TAGS", (x + inward, y), words, SMALL_MM, Across.CENTRE, Up.MIDDLE, 90.0)
 
 

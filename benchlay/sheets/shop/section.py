@@ -7,7 +7,7 @@ from math import pi, tan
 from benchlay.making.blank import Folding
 from benchlay.making.parts import Part
 from benchlay.sheets.lettering import SMALL_MM
-from benchlay.sheets.primitives import Axis, Dimension, Point, Polyline, Primitive, Text, figure
+from benchlay.sheets.primitives import Across, Line, Point, Polyline, Primitive, Text, figure
 from benchlay.sheets.scale import Window
 
 _QUARTER = tan(pi / 8)  # bulge of a quarter circle
@@ -34,21 +34,20 @@ def section(folding: Folding, part: Part, window: Window, decimal: str) -> list[
     )  # fmt: skip
     turn = way * _QUARTER
     bulges = (0.0, turn, 0.0, 0.0, 0.0, -turn if r > 0.0 else 0.0, 0.0, 0.0)
-    first, second = sorted((at(0.0, 0.0), at(f, 0.0)))
-    dimension = Dimension(
-        "DIMENSIONS",
-        Axis.HORIZONTAL,
-        first,
-        second,
-        (x0, y0 - 6.0),
-        figure(f, 2, decimal),
-        height_mm=SMALL_MM,
-    )
+    # Enlarged in files that are true to size: so lines and a figure, and no dimension that
+    # a program would measure.
+    (ax, ay), (bx, _) = sorted((at(0.0, 0.0), at(f, 0.0)))
+    y = ay - 6.0
+    line: list[Primitive] = [Line("DIMENSIONS", (ax, y), (bx, y))]
+    line += [Line("DIMENSIONS", (x, ay - 1.0), (x, y - 2.0)) for x in (ax, bx)]
+    line += [Line("DIMENSIONS", (x - 1.2, y - 1.2), (x + 1.2, y + 1.2)) for x in (ax, bx)]
+    label = ((ax + bx) / 2, y + 1.0)
+    line.append(Text("DIMENSIONS", label, figure(f, 2, decimal), SMALL_MM, Across.CENTRE))
     words = f"Fold, formed, 1:1: R{figure(r, 2, decimal)}, t = {figure(t, 2, decimal)}"
     side = "inside at the right"
     return [
         Polyline("PANELS", corners, closed=True, bulges=bulges),
-        dimension,
+        *line,
         _title(window, f"{words}; {side}"),
     ]
 

@@ -2,6 +2,7 @@
 
 import io
 import itertools
+import math
 import re
 from pathlib import Path
 
@@ -57,7 +58,7 @@ def test_lines_of_running_dimensions_stand_where_their_figures_say():
     assert 712.5 in {points[0][0] for points in lines}
 
 
-def test_the_same_contours_as_the_cutting_file_in_both_readers():
+def test_the_same_contours_as_the_cutting_file_and_true_dimensions():
     sheet = sheets_of(TEXT)["south"]
     doc = ezdxf.read(io.StringIO(dxf.write(sheet).decode()))
     assert not doc.audit().errors
@@ -72,6 +73,9 @@ def test_the_same_contours_as_the_cutting_file_in_both_readers():
     }
     assert circles == drawn
     assert len(circles) == 1 + 10
+    # The whole blank: 1500 long; 300 high and a flange of 20, less what the bend saves.
+    said = sorted(d.get_measurement() for d in doc.modelspace().query("DIMENSION"))
+    assert said == pytest.approx([300 + 20 - 8 + math.pi / 2 * 2.66, 1500], abs=1e-6)
 
 
 def test_what_a_shop_is_told(words_of):
