@@ -212,7 +212,8 @@ def _assumptions(state: PlacedState, zones: Zones, legs: DrawnLegs, decimal: str
         which = f" ({limit})" if len({z.limit_w for z in own}) == 1 else ""
         out.append(
             "Hazard zones: where an eye's aperture could take more than the exposure limit"
-            f"{which} of one beam alone, to the first opaque thing, in plan whatever the height."
+            f"{which} of one beam alone, to the first opaque thing, in plan whatever the height; "
+            "scattered light where an eye up to the top of its bands sees the spot."
         )
     out.append(_strays(legs, decimal))
     out += [f"Not computed: {words}." for words in zones.not_computed]
