@@ -50,6 +50,7 @@ class Leg(NamedTuple):
     radii_mm: tuple[tuple[float, float], ...] = ()  # (distance along the leg, 1/e2 radius)
     weak: bool = False  # a stray below the limit: a line, and nothing that draws the eye
     inside: bool = False  # within an optic
+    note: str = ""  # for the pointer that rests on it: name, wavelength, power, radius
 
 
 class Opening(NamedTuple):

@@ -33,6 +33,7 @@ _LEADER_THROUGH = 60.0  # a leader through other lettering
 _PER_MM = 0.25
 _GOOD = 4.0  # cheap enough to stop looking further out
 _MOST_FAR = 400  # free places that are looked at when no ring has one
+_FAR_MM = 22.0  # a leader that is longer is hard to follow
 _NEAR_LEADER_MM = 2.5  # nearer tags need no leader
 
 
@@ -64,6 +65,7 @@ class Crowd:
         self._forbidden = np.empty(0, dtype=np.bool_)
         self._known: dict[tuple[tuple[int, int], ...], int] = {}
         self._stale = False
+        self.far = 0  # tags with a leader longer than the widest ring
         self._room = FreeRoom(window)
 
     @property
@@ -80,6 +82,8 @@ class Crowd:
         self, points: Sequence[Point], *, closed: bool = False, beam: bool = False
     ) -> None:
         """Let tags rather not stand on a line, nor leaders cross it; on a beam, never.
+
+        Panels, dimensions and leaders count as beams do: lettering on them is not read.
 
         Lines that look like one, as light that runs to and fro, count once.
         """
@@ -149,7 +153,8 @@ class Crowd:
         place = best[1]
         self.add_box(place.box)
         if place.leader is not None:
-            self.add_line(place.leader)
+            self.add_line(place.leader, beam=True)
+            self.far += math.dist(*place.leader) > _FAR_MM
         return place
 
     def _best_on_ring(

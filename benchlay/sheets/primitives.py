@@ -66,11 +66,16 @@ class Layer(NamedTuple):
 
 
 class Line(NamedTuple):
-    """A straight line."""
+    """A straight line.
+
+    `note` is what a pointer that rests on it is told, in the formats that can do that (SVG);
+    whatever must be read on paper is lettering.
+    """
 
     layer: str
     start: Point
     end: Point
+    note: str = ""
 
 
 class Arc(NamedTuple):

@@ -22,17 +22,20 @@ SCALES = (1, 2, 5, 10, 20, 50, 100, 200, 500)
 
 PLAN_SIZES = tuple(SIZES_MM)[1:]  # beside its tables a plan has no room on A4
 
+LARGEST = PLAN_SIZES[-1]
+
 LEFT_MARGIN_MM = 20.0  # for filing; the others
 MARGIN_MM = 10.0
 
 # At 1:5 an inch of glass is 5 mm wide and its coated side can be told; at 1:10 just; beyond
-# that elements are specks. So a larger sheet is taken before a smaller scale, but A1 and A0,
-# which few can print, only when everything else failed.
+# that elements are specks. So a larger sheet is taken before a smaller scale, but A1,
+# which few can print, only before elements become specks, and A0 when everything else failed.
 _PREFERENCES = (
     (("A3",), 5),
     (("A2",), 5),
     (("A3",), 10),
     (("A2",), 10),
+    (("A1",), 10),
     (("A3", "A2"), 20),
     (("A1", "A0"), 20),
     (("A0",), SCALES[-1]),

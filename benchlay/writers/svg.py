@@ -72,7 +72,10 @@ class SvgBackend:
     def line(self, line: Line) -> None:
         """See `Backend`."""
         (x1, y1), (x2, y2) = self._on_page(line.start), self._on_page(line.end)
-        self._add(line.layer, self._drawing.path(d=f"M{x1} {y1}L{x2} {y2}"))
+        path = self._drawing.path(d=f"M{x1} {y1}L{x2} {y2}")
+        if line.note:
+            path.set_desc(title=plain(line.note))
+        self._add(line.layer, path)
 
     def arc(self, arc: Arc) -> None:
         """See `Backend`."""

@@ -332,6 +332,8 @@ def test_a_full_bench_has_every_tag_and_none_on_another_or_on_a_beam(columns, ro
     assert not any(words.startswith("Not tagged") for words in said)
     assert overlapping(boxes(sheet)) == []
     assert on_beams(sheet, picture.legs) == set()
+    # Beyond 1:10 an inch of glass is a speck.
+    assert sheet.scale <= 10.0
 
 
 def test_tags_of_the_made_up_bench_lie_on_no_beam(sheet):

@@ -239,6 +239,12 @@ def test_svg_speaks_to_those_who_cannot_see_it():
     assert (group.get("data-kind"), group.find(f"{SVG}title").text) == ("mirror", "M1, mirror")
 
 
+def test_svg_tells_the_pointer_what_a_line_is():
+    drawn = sheet(model=(Line("TAGS", (0.0, 0.0), (9.0, 0.0), "B1, 5 mW <a>"),))
+    (path,) = ET.fromstring(svg.write(drawn)).findall(f".//{SVG}g[@id='TAGS']/{SVG}path")
+    assert path.find(f"{SVG}title").text == "B1, 5 mW <a>"
+
+
 def test_svg_turns_a_block_into_its_place():
     root = ET.fromstring(svg.write(sheet(model=(BlockUse("OPTICS", "M1", (100.0, 0.0), 90.0),))))
     line = root.findall(f".//{SVG}g[@id='OPTICS']//{SVG}path")[1]

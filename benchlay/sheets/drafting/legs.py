@@ -58,13 +58,12 @@ def legs_of(trace: Trace, limits: LimitTable, variant: int, decimal: str) -> Dra
     weakest = _weakest(share)
     strong, weak = strays[share > 1.0], strays[(share <= 1.0) & (share >= weakest)]
     names = _Names(trace, decimal)
-    legs = [_leg(trace, int(beam), names.working(int(beam)), stray=False) for beam in working]
+    legs = [names.leg(int(beam), names.working(int(beam)), stray=False) for beam in working]
     named = [(int(beam), *names.stray(int(beam))) for beam in sorted(strong.tolist())]
     tags = _tags(trace, named, decimal)
-    legs += [_leg(trace, beam, tag, stray=True) for beam, tag in tags]
+    legs += [names.leg(beam, tag, stray=True) for beam, tag in tags]
     legs += [
-        _leg(trace, int(beam), ("", ""), stray=True)._replace(weak=True, radii_mm=())
-        for beam in weak
+        names.leg(int(beam), ("", ""), stray=True)._replace(weak=True, radii_mm=()) for beam in weak
     ]
     return DrawnLegs(
         tuple(legs),
@@ -152,6 +151,11 @@ class _Names:
             if name not in self._taken:
                 return name
 
+    def leg(self, beam: int, tag: tuple[str, str], *, stray: bool) -> Leg:
+        """Return a leg of a beam under its tag: name and words."""
+        scattered = bool(self._scattered[beam])
+        return _leg(self.trace, beam, tag, stray=stray, decimal=self.decimal, scattered=scattered)
+
     def working(self, beam: int) -> tuple[str, str]:
         """Return name and words of a leg; no words where its name was met before."""
         s = self.trace.beams.start
@@ -228,13 +232,22 @@ class _Names:
         return f"{nm} {power}" if several else power
 
 
-def _leg(trace: Trace, beam: int, tag: tuple[str, str], *, stray: bool) -> Leg:
+def _leg(
+    trace: Trace,
+    beam: int,
+    tag: tuple[str, str],
+    *,
+    stray: bool,
+    decimal: str,
+    scattered: bool,
+) -> Leg:
     s, b = trace.beams.start, trace.beams
     start, end = (tuple(map(float, p)) for p in (s.position[beam], b.end[beam]))
     depth = np.linspace(0.0, float(b.length[beam]), _SAMPLES)
     radii = envelope_radii(trace, beam, depth)
     inside = bool(s.within[beam] != OUTSIDE)
     pairs = zip(depth.tolist(), radii.tolist(), strict=True)
+    ends = float(radii[0]), float(radii[-1])
     return Leg(
         tag[0],
         float(trace.scene.wavelengths_nm[s.wave[beam]]),
@@ -245,7 +258,27 @@ def _leg(trace: Trace, beam: int, tag: tuple[str, str], *, stray: bool) -> Leg:
         _ends(trace, beam),
         () if inside else tuple(pairs),
         inside=inside,
+        note=_note(trace, beam, tag[0], ends, decimal, scattered=scattered),
     )
+
+
+def _note(
+    trace: Trace,
+    beam: int,
+    name: str,
+    radii_mm: tuple[float, float],
+    decimal: str,
+    *,
+    scattered: bool,
+) -> str:
+    """Return what is said of a leg where the pointer rests on it."""
+    s = trace.beams.start
+    nm = wavelength_words(float(trace.scene.wavelengths_nm[s.wave[beam]]), decimal)
+    if scattered:
+        return f"{name or 'stray light'}, {nm}, scattered"
+    power = with_unit(float(s.power[beam]), "W", decimal=decimal)
+    first, last = (number(radius, 3, decimal) for radius in radii_mm)
+    return f"{name or 'stray light'}, {nm}, {power}, 1/e² radius {first} to {last} mm"
 
 
 def _ends(trace: Trace, beam: int) -> str:

@@ -15,8 +15,8 @@ _NO_CLASS = "LASER LIGHT IN REACH: NO CLASS COULD BE MODELLED"
 def warning_lines(hazards: StateHazards, decimal: str) -> tuple[str, ...]:
     """Return what can be reached, and the eyewear for each side of the enclosure."""
     reached = hazards.accessible
-    name = reached.class_as_modelled
-    first = f"LASER CLASS {name} IN REACH, as modelled" if name else _NO_CLASS
+    known = reached.class_as_modelled is not None
+    first = f"LASER LIGHT IN REACH: {reached.statement}" if known else _NO_CLASS
     return (first, *_eyewear(hazards, decimal))
 
 

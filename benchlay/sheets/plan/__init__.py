@@ -39,7 +39,7 @@ from benchlay.sheets.primitives import (
     figure,
     line_ends,
 )
-from benchlay.sheets.scale import Window, frame_of
+from benchlay.sheets.scale import LARGEST, Window, frame_of
 from benchlay.sheets.tables import Table
 from benchlay.sheets.title_block import TitleFields, title_block
 
@@ -47,6 +47,7 @@ _FIGURE_SHARES = (0.5, 0.4, 0.6, 0.3, 0.7, 0.2, 0.8)
 _DESCENT = 0.33  # of the height of capitals, measured from the font
 _TAG_MM2 = 110.0  # a tag of twelve letters with its border and what must stay clear round it
 _MOST_TAGGED = 0.3  # of the field, which holds the bench itself too
+_MOST_FAR = 0.08  # of the tags; with more, a larger sheet is taken
 _BAR_MM = 50.0  # of the scale bar, on paper
 
 
@@ -79,21 +80,32 @@ def sheets(picture: Picture) -> list[tuple[str, Callable[[str], Sheet]]]:
 
 
 def _chosen(picture: Picture) -> _Composed:
-    # A larger sheet has room for more tags; the largest says what even it has none for.
+    # A larger sheet has room for more tags, nearer to what they name; the largest, which few
+    # can print, is for those that have no room at all on others, and says what even it has not.
     *smaller, last = boards(picture)
+    whole: _Composed | None = None
     for board in smaller:
-        if not _crowded(picture, board):
-            composed = _composed(picture, board)
-            if not composed.left_out:
+        if _crowded(picture, board):
+            continue
+        composed = _composed(picture, board)
+        if not composed.left_out:
+            whole = composed
+            if composed.far <= _MOST_FAR * _count(picture):
                 return composed
+    if whole is not None and last.choice.sheet == LARGEST:
+        return whole
     return _composed(picture, last)
 
 
 def _crowded(picture: Picture, board: Board) -> bool:
     """Whether it is of no use to look for room for so many tags."""
+    return _count(picture) * _TAG_MM2 > _MOST_TAGGED * board.field.width * board.field.height
+
+
+def _count(picture: Picture) -> int:
+    """Return about how many tags there are."""
     tags = len(picture.items) + sum(bool(leg.words) for leg in picture.legs)
-    tags += sum(mark.at is not None for mark in picture.findings)
-    return tags * _TAG_MM2 > _MOST_TAGGED * board.field.width * board.field.height
+    return tags + len(picture.zones) + sum(mark.at is not None for mark in picture.findings)
 
 
 class _Composed(NamedTuple):
@@ -102,6 +114,7 @@ class _Composed(NamedTuple):
     drawn: Sheet
     fields: TitleFields
     left_out: tuple[str, ...]
+    far: int  # tags that stand so far off that their leaders hide what is drawn
     rest: tuple[Table, ...]
 
     def sheet(self, number: str) -> Sheet:
@@ -145,7 +158,7 @@ def _composed(picture: Picture, board: Board) -> _Composed:
     sheet = empty._replace(
         model=tuple(model), paper=tuple(paper), blocks=tuple(block for block, _ in drawn)
     )
-    return _Composed(sheet, _fields(picture, board), tagged.left_out, filled.rest)
+    return _Composed(sheet, _fields(picture, board), tagged.left_out, board.crowd.far, filled.rest)
 
 
 def _sheet(picture: Picture, board: Board) -> Sheet:
@@ -189,7 +202,7 @@ def _reserved(dimension: Dimension, sheet: Sheet, board: Board) -> Dimension:
     board.crowd.add_box(figure_box(best, sheet))
     start, end = line_ends(best)
     for ends in ((start, end), (best.first, start), (best.second, end)):
-        board.crowd_model_line(ends)
+        board.crowd_model_line(ends, beam=True)
     return best
 
 

@@ -54,7 +54,7 @@ def balloons(picture: Picture, board: Board) -> Balloons:
             continue
         layer = next((_LAYERS[m.severity] for m in marks if m.severity in _LAYERS), "TAGS")
         out += _drawn(words, at, place.box, layer)
-        board.crowd.add_line((at, _near(at, place.box)))
+        board.crowd.add_line((at, _near(at, place.box)), beam=True)
     return Balloons(tuple(out), tuple(left_out))
 
 

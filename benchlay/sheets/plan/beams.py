@@ -40,7 +40,7 @@ def beams(picture: Picture, board: Board) -> Iterator[Primitive]:
         if math.dist(start, end) < _STEEP * abs(leg.end[2] - leg.start[2]):
             yield from _upright(leg, board)
             continue
-        yield Line(layer_of(leg), *seen)
+        yield Line(layer_of(leg), *seen, leg.note)
         if leg.weak or leg.inside:
             continue
         yield from _envelope(leg, field)

@@ -31,7 +31,7 @@ ARROW_MM = 15.0  # of the directions from the datum
 def bench(picture: Picture, board: Board) -> Iterator[Primitive]:
     """Draw the outline and the datum."""
     yield Polyline("BENCH", picture.outline, closed=True)
-    board.crowd_model_line(picture.outline, closed=True)
+    board.crowd_model_line(picture.outline, closed=True, beam=True)
     if picture.holes is not None:
         yield from _datum(picture.holes, board)
 

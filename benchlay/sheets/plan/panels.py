@@ -20,7 +20,7 @@ _WITHIN_MM = 1.6  # lids mostly end on panels: their edge is drawn this far insi
 def panels(picture: Picture, board: Board) -> Iterator[Primitive]:
     """Draw every panel; one that stands open is drawn as its two ends only."""
     for panel in picture.panels:
-        board.crowd_model_line((panel.start, panel.end))
+        board.crowd_model_line((panel.start, panel.end), beam=True)
         yield from _panel(panel, board)
 
 

@@ -191,3 +191,11 @@ def test_sheets_are_numbered_in_the_order_of_the_set_and_cutting_files_are_not(m
     assert of("room") == []
     with pytest.raises(UnknownSheetError, match="panel-east"):
         of("panel-north")
+
+
+def test_beams_say_what_they_are_to_the_pointer(drawn):
+    text = svg.write(drawn.sheet).decode("utf-8")
+    beams = [p for p in drawn.sheet.model if p.layer.startswith("BEAM_") and hasattr(p, "start")]
+    assert beams
+    assert all("1/e² radius" in p.note or "scattered" in p.note for p in beams)
+    assert f"<title>{beams[0].note}</title>" in text
