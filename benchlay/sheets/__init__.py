@@ -140,12 +140,16 @@ def _panels(subject: Subject) -> Iterator[Planned]:
 
 
 def _drilling(subject: Subject) -> Iterator[Planned]:
-    from benchlay.sheets.shop.drilling import drilling_sheet
+    from benchlay.sheets.shop.drilling import MOST_BESIDE, drilling_rows, drilling_sheet
 
     def sheet(number: str) -> Sheet:
         return drilling_sheet(subject.trace.placed.base, subject.sha256, number)
 
     yield Planned("drilling", sheet)
+    rows = drilling_rows(subject.trace.placed.base)
+    if len(rows.rows) > MOST_BESIDE:
+        table = rows._replace(name="drilling-holes", title=f"{rows.title}, holes")
+        yield from _listed(table, subject)
 
 
 def _setting_out(subject: Subject) -> Iterator[Planned]:

@@ -40,6 +40,7 @@ from benchlay.sheets.tables import BETWEEN_MM, Column, Table, notes, table
 from benchlay.sheets.title_block import TitleFields
 
 TITLE = "Drilling sheet"
+MOST_BESIDE = 28  # holes in the table beside the view; more of them have sheets of their own
 _FORK_MM = 40.0  # what a clamping fork reaches from a post's axis (common practice)
 _COLUMN_MM = 132.0
 _HEADING_MM = 16.0
@@ -281,5 +282,8 @@ def _column(rows: Rows, window: Window, decimal: str) -> list[Primitive]:
     columns = tuple(
         Column(f"{h.name}, {h.unit}" if h.unit else h.name, h.width_mm) for h in rows.headings
     )
+    if len(words) > MOST_BESIDE:
+        words = words[:0]
+        heading = heading._replace(text=f"{heading.text}; its holes: sheet drilling-holes")
     content = Table("HOLES", columns, words, "drilling.csv")
     return [heading, *drawn.primitives, *(table(content, room).primitives if words else ())]

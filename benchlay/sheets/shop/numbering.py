@@ -13,8 +13,10 @@ _WAYS = ((1, 0), (-1, 0), (0, 1), (0, -1), (1, 1), (-1, 1), (1, -1), (-1, -1), (
 _Box = tuple[float, float, float, float]
 
 
-def numbered(holes: Sequence[RoundHole], size_mm: Point, scale: float) -> Iterator[Text]:
-    """Write numbers from H1, each beside its hole where there is room within the sheet.
+def numbered(
+    holes: Sequence[RoundHole], size_mm: Point, scale: float, names: Sequence[str] = ()
+) -> Iterator[Text]:
+    """Write a name beside each hole, where there is room within the sheet.
 
     Parameters
     ----------
@@ -24,10 +26,14 @@ def numbered(holes: Sequence[RoundHole], size_mm: Point, scale: float) -> Iterat
         Of the sheet, model mm; its lower left corner is the origin.
     scale : float
         N of 1:N.
+    names : sequence of str
+        H1, H2, ... by default; nothing is written for an empty one.
     """
     taken: list[_Box] = [_round(hole, scale) for hole in holes]
     for n, hole in enumerate(holes, start=1):
-        words = f"H{n}"
+        words = names[n - 1] if names else f"H{n}"
+        if not words:
+            continue
         half = (width_mm(words, SMALL_MM) / 2 * scale, SMALL_MM / 2 * scale)
         boxes = [_beside(hole, way, half, scale) for way in _WAYS]
         free = [b for b in boxes if _within(b, size_mm) and not any(_meet(b, t) for t in taken)]

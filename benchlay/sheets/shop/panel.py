@@ -10,6 +10,7 @@ from collections.abc import Iterator
 
 from benchlay.layout.layout import Layout
 from benchlay.making.blank import Bend, Blank, RoundHole
+from benchlay.making.grouping import Group, grouped
 from benchlay.making.parts import LID, Part
 from benchlay.sheets.drafting.picture import title_fields
 from benchlay.sheets.form import Form, form_for
@@ -188,7 +189,9 @@ def _tags(blank: Blank, scale: int, decimal: str) -> Iterator[Primitive]:
         at = (x, y + hole.diameter_mm / 2 + 3.0 * scale)
         yield Text("TAGS", at, words, SMALL_MM, Across.CENTRE)
     if len(blank.holes) > _MOST_BESIDE:
-        yield from numbered(blank.holes, blank.flat_mm, scale)
+        named = [pair for group in _named(blank) for pair in _ends(*group)]
+        holes, names = zip(*named, strict=True)
+        yield from numbered(holes, blank.flat_mm, scale, names)
 
 
 def _column(part: Part, layout: Layout, window: Window, decimal: str) -> list[Primitive]:
@@ -201,27 +204,47 @@ def _column(part: Part, layout: Layout, window: Window, decimal: str) -> list[Pr
 
 
 _HOLES = (
-    Column("Hole", 14.0),
-    Column("X", 22.0),
-    Column("Y", 22.0),
-    Column("Ø", 14.0),
-    Column("For", 32.0),
+    Column("Hole", 19.0),
+    Column("X", 30.0),
+    Column("Y", 30.0),
+    Column("Ø", 9.0),
+    Column("For", 16.0),
 )
 
 
+def _named(blank: Blank) -> list[tuple[str, Group]]:
+    """Return the groups of holes with their letters: A, B, ..., Z, AA, ..."""
+    return [(_letter(n), group) for n, group in enumerate(grouped(blank.holes))]
+
+
+def _letter(n: int) -> str:
+    return (_letter(n // 26 - 1) if n >= 26 else "") + chr(ord("A") + n % 26)  # noqa: PLR2004
+
+
+def _ends(letter: str, group: Group) -> list[tuple[RoundHole, str]]:
+    """Return the holes of a group with what is written beside them: at its ends only."""
+    last = len(group.holes) - 1
+    return [
+        (hole, f"{letter}{n + 1}" if n in (0, last) else "") for n, hole in enumerate(group.holes)
+    ]
+
+
+def _group_row(letter: str, group: Group, decimal: str) -> tuple[str, ...]:
+    places = [figure(v, 2, decimal) for v in group.holes[0].centre]
+    name = f"{letter}1"
+    if group.axis is not None:
+        steps, pitch = len(group.holes) - 1, group.pitch_mm
+        total = figure(steps * pitch, 2, decimal)
+        places[group.axis] += f" + {steps} x {figure(pitch, 2, decimal)} (= {total})"
+        name += f" to {letter}{steps + 1}"
+    first = group.holes[0]
+    return (name, *places, figure(first.diameter_mm, 2, decimal), first.use)
+
+
 def _hole_rows(blank: Blank, decimal: str) -> tuple[tuple[str, ...], ...]:
-    """Return a row a hole; where they stand on the drawing too, a row a diameter."""
+    """Return a row a group; where they stand on the drawing too, a row a diameter."""
     if len(blank.holes) > _MOST_BESIDE:
-        return tuple(
-            (
-                f"H{n}",
-                figure(h.centre[0], 2, decimal),
-                figure(h.centre[1], 2, decimal),
-                figure(h.diameter_mm, 2, decimal),
-                h.use,
-            )
-            for n, h in enumerate(blank.holes, start=1)
-        )
+        return tuple(_group_row(letter, group, decimal) for letter, group in _named(blank))
     kinds: dict[tuple[float, str], int] = {}
     for h in blank.holes:
         kinds[h.diameter_mm, h.use] = kinds.get((h.diameter_mm, h.use), 0) + 1
@@ -253,7 +276,7 @@ def _notes(part: Part, layout: Layout, decimal: str) -> Iterator[str]:
     yield f"General tolerance ISO 2768-m; hole positions ±{num(0.2)}; thermal cuts ISO 9013."
     yield f"Deburr all edges, break sharp ones {num(0.2)} to {num(0.5)}. Keep the inside matt."
     if part.mass_kg is None:
-        yield f"Mass not computed: no density is stated for {stated}."
+        yield f"Mass not computed: no density is stated for {part.material or 'the material'}."
     else:
         yield f"Mass {num(part.mass_kg, 1)} kg each, by {num(part.density_kg_m3 or 0.0, 0)} kg/m3."
     if not part.draft.lacks:

@@ -9,6 +9,7 @@ import pytest
 import shapely
 
 from benchlay import pipeline
+from benchlay.sheets import SHEETS, Subject
 from benchlay.sheets.shop.drilling import drilling_rows, drilling_sheet, used_holes
 from benchlay.writers import dxf
 
@@ -87,3 +88,19 @@ def test_two_readers_find_the_holes_where_the_table_says(tmp_path):
 @pytest.mark.parametrize("bench", BENCHES, ids=lambda b: b.stem)
 def test_the_sheet_of_every_bench_can_be_read(bench, legible):
     legible(drilling_sheet(pipeline.place(pipeline.read(bench)).base, "0" * 64, "3/12"))
+
+
+def test_many_holes_are_listed_on_sheets_of_their_own(words_of):
+    mirrors = "".join(
+        f"  E{n}: {{kind: mirror, at: [{60 + 85 * (n % 10)}, {60 + 90 * (n // 10)}], facing: 0, "
+        "diameter: 25.4, metal: silver}\n"
+        for n in range(60)
+    )
+    text = TEXT % GRID
+    text = text[: text.index("  M1:")] + mirrors
+    trace = pipeline.trace(pipeline.place(pipeline.read("x.yaml", text)))
+    sheets = [one.compose("") for one in SHEETS["drilling"](Subject(trace, None, (), ""))]
+    assert [sheet.name for sheet in sheets] == ["drilling", "drilling-holes", "drilling-holes-2"]
+    listed = {w for sheet in sheets[1:] for w in words_of(sheet)}
+    assert {f"H{n}" for n in range(1, 61)} <= listed
+    assert {f"E{n}" for n in range(60)} <= listed
