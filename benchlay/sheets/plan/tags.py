@@ -3,15 +3,14 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Iterable, Iterator, Mapping, Sequence
+from collections.abc import Iterable, Iterator, Mapping
 
 import shapely
 from shapely.geometry.base import BaseGeometry
 
 from benchlay.named import NamedTuple
 from benchlay.sheets.contents import SOURCE, Item, Leg, LidOutline, PanelLine, Picture, Zone
-from benchlay.sheets.frame import rectangle
-from benchlay.sheets.lettering import LINE_PITCH, MIDDLE_MM, SMALL_MM, plain, width_mm
+from benchlay.sheets.lettering import MIDDLE_MM, SMALL_MM, plain
 from benchlay.sheets.placing_text import Place
 from benchlay.sheets.plan.beams import clipped, layer_of
 from benchlay.sheets.plan.bench import ARROW_MM
@@ -19,25 +18,17 @@ from benchlay.sheets.plan.board import Board
 from benchlay.sheets.plan.gaps import anchors
 from benchlay.sheets.plan.items import placed, straightened
 from benchlay.sheets.plan.panels import lid_line, point_on
+from benchlay.sheets.plan.tag_shapes import Wanted, cross, drawn, size_of
 from benchlay.sheets.plan.zones import seen
 from benchlay.sheets.primitives import (
-    Across,
-    Line,
     Point,
-    Polyline,
     Primitive,
-    Text,
     figure,
 )
 from benchlay.sheets.scale import Window
 
-_PAD_MM = 0.8
-_X_MM = 0.8
-_CORNER = 0.9  # mm, of the rounded border of a stray's tag
-_QUARTER = math.tan(math.pi / 8)  # bulge of a quarter circle
 _ON_LEG = (0.5, 0.3, 0.7, 0.15, 0.85)
 _LEVEL_MM = 1e-3  # heights that differ by less are the same to every reader
-_TRIANGLE_MM = 8.0
 _FAR_MM = 3.0  # a tag farther from its item than this points to it
 _CLEARLY_MM = 1.5  # and one that is not nearer to its own item by this
 
@@ -48,17 +39,6 @@ class Tagged(NamedTuple):
     paper: tuple[Primitive, ...]
     left_out: tuple[str, ...]
     off_sheet: tuple[str, ...]  # names of what lies beyond the sheet's edge
-
-
-class _Wanted(NamedTuple):
-    """A tag: its lines with the layers they are written on, its border, where it belongs."""
-
-    name: str
-    lines: tuple[tuple[str, str, float], ...]  # layer, words, height
-    border: str  # "", square, rounded
-    layer: str  # of border and leader
-    anchors: tuple[tuple[Point, float], ...]
-    within: Window | None = None  # a body that it may stand in the middle of
 
 
 def tags(picture: Picture, board: Board) -> Tagged:
@@ -78,7 +58,7 @@ def tags(picture: Picture, board: Board) -> Tagged:
     ]
     for item in picture.items:
         if _height_written(item, picture):
-            out += _cross(board.on_paper(item.at))
+            out += cross(board.on_paper(item.at))
     for tag in wanted:
         if not tag.anchors:
             off_sheet.append(tag.name)
@@ -87,12 +67,12 @@ def tags(picture: Picture, board: Board) -> Tagged:
         if place is None:
             left_out.append(tag.name)
         else:
-            out += _drawn(tag, _pointed(tag, place, shapes))
+            out += drawn(tag, _pointed(tag, place, shapes))
     return Tagged(tuple(out), tuple(dict.fromkeys(left_out)), tuple(dict.fromkeys(off_sheet)))
 
 
-def _place(tag: _Wanted, board: Board) -> Place | None:
-    size = _size(tag)
+def _place(tag: Wanted, board: Board) -> Place | None:
+    size = size_of(tag)
     if tag.within is not None:
         x, y = ((tag.within[n] + tag.within[n + 2]) / 2 for n in (0, 1))
         box = Window(x - size[0] / 2, y - size[1] / 2, x + size[0] / 2, y + size[1] / 2)
@@ -110,7 +90,7 @@ def _on_paper(item: Item, board: Board) -> BaseGeometry:
     return shapely.union_all([shapely.MultiPoint(line).convex_hull for line in points])
 
 
-def _pointed(tag: _Wanted, place: Place, shapes: Mapping[str, BaseGeometry]) -> Place:
+def _pointed(tag: Wanted, place: Place, shapes: Mapping[str, BaseGeometry]) -> Place:
     """Give an item's tag a leader where it is far from its item, or nearer to another."""
     own = shapes.get(tag.name)
     if own is None or place.leader is not None:
@@ -133,17 +113,17 @@ def _height_written(item: Item, picture: Picture) -> bool:
     return item.kind == SOURCE or not own
 
 
-def _datum_tag(picture: Picture, board: Board) -> Iterator[_Wanted]:
+def _datum_tag(picture: Picture, board: Board) -> Iterator[Wanted]:
     if picture.holes is not None:
         lines = (("DATUM", "datum, hole 1-1", SMALL_MM),)
         x, y = board.on_paper(picture.holes.first)
-        yield _Wanted("datum", lines, "", "DATUM", (((x, y), 3.0),))
+        yield Wanted("datum", lines, "", "DATUM", (((x, y), 3.0),))
         for name, end in (("X", (x + ARROW_MM, y)), ("Y", (x, y + ARROW_MM))):
             letter = (("DATUM", name, SMALL_MM),)
-            yield _Wanted(f"axis {name}", letter, "", "DATUM", ((end, 0.0),))
+            yield Wanted(f"axis {name}", letter, "", "DATUM", ((end, 0.0),))
 
 
-def _panel_tags(picture: Picture, board: Board) -> Iterator[_Wanted]:
+def _panel_tags(picture: Picture, board: Board) -> Iterator[Wanted]:
     """Name every panel and every opening in it."""
     for panel in picture.panels:
         length = math.dist(panel.start, panel.end)
@@ -159,13 +139,13 @@ def _panel_tags(picture: Picture, board: Board) -> Iterator[_Wanted]:
         corners = [board.on_paper(p) for p in lid_line(lid, board)]
         edges = zip(corners, (*corners[1:], corners[0]), strict=True)
         anchors = tuple(_between(edge, share) for edge in edges for share in _ON_LEG)
-        yield _Wanted(words, (("TAGS", plain(words), SMALL_MM),), "", "TAGS", anchors)
+        yield Wanted(words, (("TAGS", plain(words), SMALL_MM),), "", "TAGS", anchors)
 
 
-def _gap_tags(picture: Picture, board: Board) -> Iterator[_Wanted]:
+def _gap_tags(picture: Picture, board: Board) -> Iterator[Wanted]:
     for gap in picture.gaps:
         lines = (("HAZARD", plain(gap.label), SMALL_MM),)
-        yield _Wanted(gap.name, lines, "square", "HAZARD", tuple(anchors(gap, board)))
+        yield Wanted(gap.name, lines, "square", "HAZARD", tuple(anchors(gap, board)))
 
 
 def _sheet_words(name: str, sheet: PanelLine | LidOutline) -> str:
@@ -179,13 +159,13 @@ def _between(edge: tuple[Point, Point], share: float) -> tuple[Point, float]:
     return (ax + share * (bx - ax), ay + share * (by - ay)), 0.0
 
 
-def _panel_tag(words: str, panel: PanelLine, along: Iterable[float], board: Board) -> _Wanted:
+def _panel_tag(words: str, panel: PanelLine, along: Iterable[float], board: Board) -> Wanted:
     lines = (("TAGS", plain(words), SMALL_MM),)
     places = (board.on_paper(point_on(panel, s, panel.thickness_mm)) for s in along)
-    return _Wanted(words, lines, "", "TAGS", tuple((at, 1.0) for at in places))
+    return Wanted(words, lines, "", "TAGS", tuple((at, 1.0) for at in places))
 
 
-def _item_tag(item: Item, picture: Picture, board: Board) -> _Wanted:
+def _item_tag(item: Item, picture: Picture, board: Board) -> Wanted:
     lines = [("TAGS", plain(item.name), MIDDLE_MM)]
     if _height_written(item, picture):
         level = figure(item.at[2], 2, picture.decimal)
@@ -198,17 +178,17 @@ def _item_tag(item: Item, picture: Picture, board: Board) -> _Wanted:
     reach = min(max(math.dist(middle, p) for p in on_paper), 12.0)
     anchors = [(middle, 0.6 * reach), (middle, reach)]
     within = None if item.outlines else Window(min(xs), min(ys), max(xs), max(ys))
-    return _Wanted(item.name, tuple(lines), "", "TAGS", tuple(anchors), within)
+    return Wanted(item.name, tuple(lines), "", "TAGS", tuple(anchors), within)
 
 
-def _leg_tags(picture: Picture, board: Board, *, stray: bool) -> Iterator[_Wanted]:
+def _leg_tags(picture: Picture, board: Board, *, stray: bool) -> Iterator[Wanted]:
     for leg in picture.legs:
         if leg.words and leg.stray is stray:
             lines = tuple(("TAGS", plain(part), SMALL_MM) for part in leg.words.split("\n"))
             border = "rounded" if stray else "square"
             anchors = tuple(_on_leg(leg, board))
             layer = layer_of(leg) if stray else "TAGS"
-            yield _Wanted(leg.name, lines, border, layer, anchors)
+            yield Wanted(leg.name, lines, border, layer, anchors)
 
 
 def _on_leg(leg: Leg, board: Board) -> Iterator[tuple[Point, float]]:
@@ -220,10 +200,10 @@ def _on_leg(leg: Leg, board: Board) -> Iterator[tuple[Point, float]]:
         yield _between(ends, share)
 
 
-def _zone_tags(picture: Picture, board: Board) -> Iterator[_Wanted]:
+def _zone_tags(picture: Picture, board: Board) -> Iterator[Wanted]:
     for zone in picture.zones:
         lines = tuple(("HAZARD", plain(words), SMALL_MM) for words in zone.label)
-        yield _Wanted(zone.name, lines, "zone", "HAZARD", tuple(_in_zone(zone, board)))
+        yield Wanted(zone.name, lines, "zone", "HAZARD", tuple(_in_zone(zone, board)))
 
 
 def _in_zone(zone: Zone, board: Board) -> Iterator[tuple[Point, float]]:
@@ -236,78 +216,6 @@ def _in_zone(zone: Zone, board: Board) -> Iterator[tuple[Point, float]]:
     for share in (0.1, 0.35, 0.6, 0.85):
         at = shapely.line_interpolate_point(shapely.get_parts(edge)[0], share, normalized=True)
         yield board.on_paper((at.x, at.y)), 0.0
-
-
-def _size(tag: _Wanted) -> Point:
-    pad = 2 * _PAD_MM if tag.border else 0.0
-    width = max(width_mm(words, height) for _, words, height in tag.lines)
-    tall = _tall(tag.lines)
-    if tag.border == "zone":
-        return (width + pad + _TRIANGLE_MM + 1.6, max(tall + pad, _TRIANGLE_MM))
-    return (width + pad, tall + pad)
-
-
-def _tall(lines: Sequence[tuple[str, str, float]]) -> float:
-    """Return the height from the top of the first line to the foot of the last."""
-    descent = 0.25 * lines[-1][2]
-    return lines[0][2] + sum(LINE_PITCH * line[2] for line in lines[1:]) + descent
-
-
-def _drawn(tag: _Wanted, place: Place) -> Iterator[Primitive]:
-    box, pad = place.box, _PAD_MM if tag.border else 0.0
-    left = box.left + pad
-    if tag.border == "square":
-        yield rectangle(tag.layer, box)
-    elif tag.border == "rounded":
-        yield _rounded(tag.layer, box)
-    elif tag.border == "zone":
-        yield rectangle(tag.layer, box)
-        yield from _sign(tag, (box.left + 0.6, (box.low + box.high) / 2))
-        left += _TRIANGLE_MM + 0.8
-    y = box.high - pad
-    for n, (layer, words, height) in enumerate(tag.lines):
-        y -= height if n == 0 else LINE_PITCH * height
-        if tag.border == "zone":
-            yield Text(layer, (left, y), words, height)
-        else:
-            at = ((box.left + box.right) / 2, y)
-            yield Text(layer, at, words, height, Across.CENTRE)
-    if place.leader is not None:
-        yield Line("TAGS" if tag.layer == "STRAY" else tag.layer, *place.leader)
-
-
-def _sign(tag: _Wanted, at: Point) -> Iterator[Primitive]:
-    """Draw the number of a zone in a triangle; a plain one, no safety sign."""
-    x, y = at
-    side, tall = _TRIANGLE_MM, _TRIANGLE_MM * math.sqrt(0.75)
-    low = y - tall / 2
-    corners = ((x, low), (x + side, low), (x + side / 2, low + tall))
-    yield Polyline(tag.layer, corners, closed=True)
-    at = (x + side / 2, low + 0.7)
-    yield Text(tag.layer, at, plain(tag.name), SMALL_MM, Across.CENTRE)
-
-
-def _rounded(layer: str, box: Window) -> Polyline:
-    left, low, right, high = box
-    c = _CORNER
-    points = (
-        (left + c, low),
-        (right - c, low),
-        (right, low + c),
-        (right, high - c),
-        (right - c, high),
-        (left + c, high),
-        (left, high - c),
-        (left, low + c),
-    )
-    return Polyline(layer, points, closed=True, bulges=(0.0, _QUARTER) * 4)
-
-
-def _cross(at: Point) -> Iterator[Line]:
-    """Mark the point whose height is written."""
-    x, y = at
-    yield Line("LEVELS", (x - _X_MM, y - _X_MM), (x + _X_MM, y + _X_MM))
-    yield Line("LEVELS", (x - _X_MM, y + _X_MM), (x + _X_MM, y - _X_MM))
 
 
 def untagged(tagged: Tagged) -> Iterator[str]:
