@@ -126,7 +126,7 @@ def test_a_state_that_does_not_exist_names_those_that_do(files):
         (["trace", "broken.yaml", "--json"], 2),
         (["trace", "escapes.yaml", "--state", "warm-up"], 0),
         (["draw", "clean.yaml", "--format", "pdf"], 0),
-        (["draw", "clean.yaml", "--sheet", "room"], 2),
+        (["draw", "clean.yaml", "--sheet", "attic"], 2),
         (["review", "broken.yaml"], 2),
     ],
 )

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Iterable, Mapping
 from itertools import pairwise
 from math import dist, inf, isfinite
 
@@ -148,10 +148,18 @@ def _meeting(panel: Panel, following: Panel) -> Point | None:
 
 def inside(line: EnclosureLine, point: Point) -> bool:
     """Whether a point in plan lies within the line (even-odd rule)."""
+    return _odd(((side.start, side.end) for side in line.sides), point)
+
+
+def covers(polygon: Polygon, point: Point) -> bool:
+    """Whether a point in plan lies within a polygon (even-odd rule)."""
+    return _odd(zip(polygon, polygon[1:] + polygon[:1], strict=True), point)
+
+
+def _odd(sides: Iterable[tuple[Point, Point]], point: Point) -> bool:
     x, y = point
     within = False
-    for side in line.sides:
-        (ax, ay), (bx, by) = side.start, side.end
+    for (ax, ay), (bx, by) in sides:
         if (ay > y) != (by > y) and x < ax + (y - ay) * (bx - ax) / (by - ay):
             within = not within
     return within

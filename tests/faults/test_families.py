@@ -205,3 +205,15 @@ def test_several_blocks_give_what_one_does(bench, monkeypatch):
     assert [(f.name, f.outcome, f.worst) for f in one.faults] == [
         (f.name, f.outcome, f.worst) for f in other.faults
     ]
+
+
+def test_light_that_goes_up_by_an_open_lid_says_by_which(reviewed, named):
+    body = """\
+elements:
+  M1: {kind: mirror, after: red, distance: 300, turn: up 90, diameter: 25.4, metal: silver}
+routes:
+  main: [red, M1]
+"""
+    fault = named(reviewed(body + SHUT, **HEAD), "top", "open")
+    assert (fault.outcome, fault.worst.through) == ("escape", "open lid top")
+    assert fault.worst.direction == pytest.approx((0.0, 0.0, 1.0), abs=1e-9)

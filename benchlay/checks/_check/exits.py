@@ -11,7 +11,7 @@ from benchlay.layout.enclosure import Opening
 from benchlay.named import NamedTuple
 from benchlay.scene.tables import SINKS
 from benchlay.tracing.beams import NOTHING, SOLID
-from benchlay.zones.enclosure_line import EnclosureLine, Side, bench_line, inside, leaving
+from benchlay.zones.enclosure_line import EnclosureLine, Side, bench_line, covers, inside, leaving
 
 _LITTLE_MM = 1e-3  # above rounding, below any thickness
 
@@ -26,7 +26,10 @@ class Exit(NamedTuple):
 
 
 class WayOut(NamedTuple):
-    """How a beam leaves: `kind` is up, bench, gap, over, under, open or opening."""
+    """How a beam leaves: `kind` is up, bench, gap, over, under, open or opening.
+
+    Of one that goes up `panel` is the lid that stands open there, if one does.
+    """
 
     kind: str
     panel: str | None = None
@@ -43,6 +46,8 @@ class WayOut(NamedTuple):
             return f"{self.panel}/{self.opening}"
         if self.kind == "gap" and self.between is not None:
             return f"{'/'.join(self.between)} corner"
+        if self.kind == "up" and self.panel is not None:
+            return f"open lid {self.panel}"
         fixed = {"up": "upwards", "bench": "edge of the bench", "gap": "where no panel stands"}
         return fixed.get(self.kind) or f"{self.kind} {self.panel}"
 
@@ -125,13 +130,20 @@ def way_out(
 ) -> WayOut:
     """Return by which way a beam leaves the line at a place."""
     if found.upwards:
-        return WayOut("up")
+        return WayOut("up", _open_lid(context, variant, at))
     if not line.enclosed or found.side is None:
         return WayOut("bench")
     name = found.side.panel
     if name is None:
         return WayOut("gap", between=_beside(line, found.side))
     return _past_panel(context, variant, name, at)
+
+
+def _open_lid(context: Context, variant: int, at: tuple[float, float, float]) -> str | None:
+    """Return the lid that would stand over a place if it were not open."""
+    enclosure = context.layout(variant).enclosure
+    lids = () if enclosure is None else sorted(enclosure.lids.items())
+    return next((name for name, lid in lids if lid.open and covers(lid.outline, at[:2])), None)
 
 
 def _past_panel(
