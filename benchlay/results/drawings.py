@@ -92,6 +92,8 @@ def drawings(
         return _unknown(trace.placed.base.layout, error)
     except NothingFitsError as error:
         return _too_large(trace.placed.base.layout, error)
+    if sheet is not None and not composed:
+        return _none(trace.placed.base.layout, sheet)
     files = {
         f"{drawn.name}.{ending}": write(drawn)
         for drawn, planned in composed
@@ -127,6 +129,13 @@ def _unknown(layout: Layout, error: UnknownSheetError) -> Problem:
     what = f"there is no sheet {error.name!r}"
     expected = f"--sheet {format_choices(error.known)}"
     return Problem(Span(layout.file, 1, 1), what, expected, "name another")
+
+
+def _none(layout: Layout, sheet: str) -> Problem:
+    """Say that a kind of sheet was asked for that the layout has nothing for."""
+    what = f"the layout has nothing that a sheet {sheet!r} would show"
+    expected = "a sheet of what is in the layout"
+    return Problem(Span(layout.file, 1, 1), what, expected, "add it, or leave --sheet out")
 
 
 def _too_large(layout: Layout, error: NothingFitsError) -> Problem:

@@ -97,3 +97,8 @@ def test_what_fits_nowhere_is_a_problem_of_the_layout(traced):
     assert problem.message.startswith("the plan cannot be drawn: ")
     assert problem.span.line == 7
     assert "sheet: auto" in problem.remedy
+
+
+def test_a_kind_that_the_layout_has_nothing_for_is_a_problem(corner):
+    problem = drawings(corner, sheet="room")
+    assert problem.message == "the layout has nothing that a sheet 'room' would show"
