@@ -11,6 +11,7 @@ from collections.abc import Iterable
 
 from benchlay.sheets.lettering import width_mm
 from benchlay.sheets.primitives import (
+    RUNNING_OUT_MM,
     Axis,
     Dimension,
     Point,
@@ -68,6 +69,8 @@ def beside(
 
 def figure_box(dimension: Dimension, sheet: Sheet) -> Window:
     """Return the box on paper round a model dimension's figure, upright or turned."""
+    if dimension.running:
+        return _running_box(dimension, sheet)
     start, end = (to_paper(sheet, point) for point in line_ends(dimension))
     ux, uy = direction_of(dimension)
     if (end[0] - start[0]) * ux + (end[1] - start[1]) * uy < 0.0:
@@ -88,6 +91,18 @@ def figure_box(dimension: Dimension, sheet: Sheet) -> Window:
     x, y = middle[0] - uy * lift, middle[1] + ux * lift
     half = _turned((width / 2, dimension.height_mm / 2 + 0.5), (ux, uy))
     return Window(x - half[0], y - half[1], x + half[0], y + half[1])
+
+
+def _running_box(dimension: Dimension, sheet: Sheet) -> Window:
+    ux, uy = direction_of(dimension)
+    x, y = to_paper(sheet, line_ends(dimension)[1])
+    x += ux * dimension.figure_aside_mm + uy * RUNNING_OUT_MM
+    y += uy * dimension.figure_aside_mm + ux * RUNNING_OUT_MM
+    width = width_mm(label_of(dimension, sheet.decimal), dimension.height_mm)
+    half = dimension.height_mm / 2 + 0.3
+    if ux:
+        return Window(x - half, y, x + half, y + width)
+    return Window(x, y - half, x + width, y + half)
 
 
 def _turned(half: Point, along: Point) -> Point:

@@ -22,6 +22,8 @@ from benchlay.named import NamedTuple
 
 Point = tuple[float, float]
 
+RUNNING_OUT_MM = 4.0  # figures of running dimensions begin so far beyond their line, on paper
+
 
 class Across(StrEnum):
     """Which point of a line of lettering its place names, across."""
@@ -132,7 +134,9 @@ class Dimension(NamedTuple):
     """The distance between two measured points, with its line through a third.
 
     `text` replaces the figure; without it the figure is what is measured, to `decimals`
-    places, trailing zeros dropped.
+    places, trailing zeros dropped. A running one is one of several from the same first point:
+    its arrow and figure stand at the second alone, the figure beyond the line and square to it,
+    above a horizontal line and at the right of a vertical one.
     """
 
     layer: str
@@ -144,6 +148,8 @@ class Dimension(NamedTuple):
     decimals: int = 1
     height_mm: float = 3.5
     figure_share: float = 0.5  # where on the line the figure stands; 0: before it, if too wide
+    running: bool = False
+    figure_aside_mm: float = 0.0  # of a running one: moved along the line, on paper
 
 
 class Block(NamedTuple):

@@ -12,12 +12,14 @@ import math
 from benchlay.named import NamedTuple
 from benchlay.sheets.lettering import width_mm
 from benchlay.sheets.primitives import (
+    RUNNING_OUT_MM,
     Across,
     Dimension,
     Fill,
     Line,
     Point,
     Text,
+    Up,
     direction_of,
     label_of,
     line_ends,
@@ -28,6 +30,7 @@ OVERSHOOT_MM = 2.0
 ARROW_MM = 3.0
 ARROW_WIDE_MM = 1.0
 ABOVE_MM = 1.0
+RUNNING_GAP_MM = 0.5
 # Shorter than two arrows and a gap: the arrows stand outside and point inwards.
 _TIGHT_MM = 2 * ARROW_MM + 2.0
 
@@ -52,6 +55,8 @@ def take_apart(dimension: Dimension, scale: float, decimal: str) -> Parts:
     decimal : str
         The sign between units and tenths.
     """
+    if dimension.running:
+        return _running(dimension, scale, decimal)
     start, end = line_ends(dimension)
     ux, uy = direction_of(dimension)
     if (end[0] - start[0]) * ux + (end[1] - start[1]) * uy < 0.0:
@@ -72,6 +77,36 @@ def take_apart(dimension: Dimension, scale: float, decimal: str) -> Parts:
     )
     lines = (main, *(line for line in extensions if line is not None))
     return Parts(lines, arrows, _figure(dimension, start, end, scale, decimal))
+
+
+def _running(dimension: Dimension, scale: float, decimal: str) -> Parts:
+    """Return the parts of one of several dimensions from the same point."""
+    start, end = line_ends(dimension)
+    ux, uy = direction_of(dimension)
+    out = (uy, ux)  # up from a horizontal line, to the right of a vertical one
+    layer, length = dimension.layer, math.dist(start, end)
+    lines = [Line(layer, start, end)]
+    extension = _extension(layer, dimension.second, end, scale)
+    if extension is not None:
+        lines.append(extension._replace(end=end))
+    at = running_figure(dimension, scale)
+    lines.append(Line(layer, end, _move(at, out, -RUNNING_GAP_MM * scale)))
+    arrows: tuple[Fill, ...] = ()
+    if length > ARROW_MM * scale:
+        back = ((start[0] - end[0]) / length, (start[1] - end[1]) / length)
+        arrows = (_arrow(layer, end, back, scale),)
+    angle = 90.0 if out[1] else 0.0
+    label = label_of(dimension, decimal)
+    text = Text(layer, at, label, dimension.height_mm, up=Up.MIDDLE, rotation_deg=angle)
+    return Parts(tuple(lines), arrows, text)
+
+
+def running_figure(dimension: Dimension, scale: float) -> Point:
+    """Return where the figure of a running dimension begins."""
+    end = line_ends(dimension)[1]
+    ux, uy = direction_of(dimension)
+    aside = _move(end, (ux, uy), dimension.figure_aside_mm * scale)
+    return _move(aside, (uy, ux), RUNNING_OUT_MM * scale)
 
 
 def _move(point: Point, along: Point, by: float) -> Point:

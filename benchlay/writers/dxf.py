@@ -22,6 +22,7 @@ from typing import Any
 from ezdxf import options  # type: ignore[attr-defined]  # a documented name
 from ezdxf.enums import TextEntityAlignment
 
+from benchlay.sheets.lettering import width_mm
 from benchlay.sheets.primitives import (
     Across,
     Arc,
@@ -243,7 +244,10 @@ class DxfBackend:
         ux, uy = direction_of(dimension)
         lift = figure.height_mm / 2 * self._sheet.scale
         middle = (figure.at[0] - lift * uy, figure.at[1] + lift * ux)
-        moved = _FIGURE_MOVED if dimension.figure_share != _MIDDLE else 0
+        moved = _FIGURE_MOVED if dimension.figure_share != _MIDDLE or dimension.running else 0
+        if dimension.running:
+            half = width_mm(figure.text, figure.height_mm) / 2 * self._sheet.scale
+            middle = (figure.at[0] + half * uy, figure.at[1] + half * ux)
         attributes = {
             "layer": dimension.layer,
             "dimstyle": DIMSTYLE,
@@ -256,4 +260,6 @@ class DxfBackend:
             "actual_measurement": measured(dimension),
             "angle": 90.0 if dimension.axis is Axis.VERTICAL else 0.0,
         }
+        if dimension.running:
+            attributes["text_rotation"] = figure.rotation_deg
         return attributes if words is None else attributes | {"text": words}

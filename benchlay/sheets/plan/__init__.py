@@ -25,6 +25,7 @@ from benchlay.sheets.plan.further import further
 from benchlay.sheets.plan.gaps import gaps, shading
 from benchlay.sheets.plan.items import blocks_and_uses
 from benchlay.sheets.plan.panels import lids, panels
+from benchlay.sheets.plan.setting_out import setting_out
 from benchlay.sheets.plan.tags import Tagged, tags, untagged
 from benchlay.sheets.plan.warning import warning
 from benchlay.sheets.plan.zones import hatching, limits
@@ -138,6 +139,7 @@ def _composed(picture: Picture, board: Board) -> _Composed:
         *gaps(picture, board),
     ]
     model += [_reserved(dimension, empty, board) for dimension in main_dimensions(picture, board)]
+    model += [_reserved(dimension, empty, board) for dimension in setting_out(picture, board)]
     tagged = tags(picture, board)
     found = balloons(picture, board)
     tagged = tagged._replace(left_out=(*tagged.left_out, *found.left_out))
@@ -195,7 +197,7 @@ def _words(picture: Picture, board: Board) -> str:
 def _reserved(dimension: Dimension, sheet: Sheet, board: Board) -> Dimension:
     """Move a dimension's figure out of the way of beams, and keep tags off it."""
     choices = [dimension]
-    if dimension.figure_share:
+    if dimension.figure_share and not dimension.running:
         choices = [dimension._replace(figure_share=share) for share in _FIGURE_SHARES]
     # The first of equals is the middle: nothing is moved without need.
     best = min(choices, key=lambda d: board.crowd.lines_through(figure_box(d, sheet)))
