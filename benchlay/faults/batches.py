@@ -54,7 +54,15 @@ def floors_of(placed: Placed, share: float | None = None) -> dict[float, float]:
         if line.power_w > 0.0
     ]
     least = 1e-6 * min(lines, default=1e-3)
-    return {nm: found.get(nm, least) for nm in placed.wavelengths_nm}
+    floors = {nm: found.get(nm, least) for nm in placed.wavelengths_nm}
+    if makes_light(placed):  # light below its own limit may become light above a lower one
+        return dict.fromkeys(floors, min(floors.values()))
+    return floors
+
+
+def makes_light(placed: Placed) -> bool:
+    """Whether light of one wavelength becomes light of another anywhere."""
+    return any(state.made_nm() for state in placed.states)
 
 
 def seed_of(parent: int) -> int | None:

@@ -5,6 +5,7 @@ from __future__ import annotations
 import numpy as np
 
 from benchlay.checks import Context
+from benchlay.faults.batches import floors_of, makes_light
 from benchlay.optics import moments
 from benchlay.placing.placed import PlacedElement
 from benchlay.scene.tables import Flags, Ints
@@ -22,6 +23,8 @@ class Nearby:
         rows = context.beams_of(variant)
         start = beams.start
         limit = context.limit_w[rows]
+        if makes_light(context.trace.placed):
+            limit = np.fmin(limit, min(floors_of(context.trace.placed, 1.0).values()))
         with np.errstate(invalid="ignore"):
             strong = (start.power[rows] > limit) | np.isnan(limit)
         self._context = context
@@ -52,13 +55,12 @@ class Nearby:
         kind, row = beams.end_kind[rows], beams.end_row[rows]
         found = np.zeros(len(rows), dtype=np.bool_)
         if name in scene.elements:
-            owner = scene.faces.owner[np.where(kind == FACE, row, 0)]
-            found |= (kind == FACE) & (owner == scene.elements.index(name))
+            on_face = kind == FACE
+            found[on_face] |= scene.faces.owner[row[on_face]] == scene.elements.index(name)
         if name in scene.names:
             number = scene.names.index(name)
-            found |= (kind == SOLID) & (
-                scene.solids.name[np.where(kind == SOLID, row, 0)] == number
-            )
+            on_solid = kind == SOLID
+            found[on_solid] |= scene.solids.name[row[on_solid]] == number
             found |= np.isin(rows, ledger.beam[ledger.name == number])
         return found
 

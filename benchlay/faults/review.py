@@ -110,7 +110,7 @@ def review_faults(
     untouched: list[Family] = []
     for family in families(placed, numbers):
         seeds = _seeds(family, near[family.state])
-        if seeds is None or len(seeds):
+        if seeds is None or len(seeds) or not alone:
             live.append((family, seeds if alone else None))
         else:
             untouched.append(family)

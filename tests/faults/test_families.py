@@ -217,3 +217,14 @@ routes:
     fault = named(reviewed(body + SHUT, **HEAD), "top", "open")
     assert (fault.outcome, fault.worst.through) == ("escape", "open lid top")
     assert fault.worst.direction == pytest.approx((0.0, 0.0, 1.0), abs=1e-9)
+
+
+@pytest.mark.parametrize(
+    "body",
+    ["elements: {}\n", "elements:\n  B: {kind: obstacle, outline: [[0, 0], [50, 0], [0, 50]],\n"
+     "      at: [400, 280], facing: 0, from_height: 0, to_height: 200}\n"],
+)  # fmt: skip
+def test_benches_without_optics(reviewed, body):
+    review = reviewed(body, **HEAD)
+    assert {fault.kind for fault in review.faults} <= {"missing"}
+    assert all(fault.outcome in ("escape", "none") for fault in review.faults)
