@@ -154,6 +154,7 @@ class Picture(NamedTuple):
     gaps: tuple[GapMark, ...] = ()
     mirror_stretches: tuple[tuple[Point, Point], ...] = ()  # of beams: see `drafting.gaps`
     zones: tuple[Zone, ...] = ()
+    used_holes: tuple[Point, ...] = ()  # mounting holes that something is held by
     findings: tuple[Mark, ...] = ()
     warning: tuple[str, ...] = ()  # in large letters: the hazard in reach, eyewear
     signs: tuple[tuple[str, str, str], ...] = ()  # number, least size, what and where

@@ -346,3 +346,14 @@ def test_what_lies_beyond_the_sheet_is_said_to():
     sheet = compose(trial_bench.picture(zones=(zone,)))
     said = [p.text for p in sheet.paper if isinstance(p, Text)]
     assert "Beyond the edge of this sheet: Z9." in said
+
+
+def test_holes_that_are_used_are_ringed_and_explained():
+    at = ((225.0, 425.0), (600.0, 300.0))
+    sheet = compose(trial_bench.picture(used_holes=at))
+    rings = {
+        p.centre: p.radius for p in sheet.model if isinstance(p, Circle) and p.layer == "HOLES"
+    }
+    assert rings == {place: pytest.approx(1.1 * sheet.scale) for place in at}
+    said = {p.text for p in sheet.paper if isinstance(p, Text)}
+    assert "mounting hole that something is held by" in said

@@ -85,6 +85,7 @@ def plan_picture(
         gaps=gaps.marks,
         mirror_stretches=gaps.stretches,
         zones=zones_drawn(zones.zones, state.name, decimal),
+        used_holes=_used_holes(state),
         findings=findings,
         warning=warning_lines(hazards, decimal),
         signs=sign_rows(signs_of(layout, (hazards,))),
@@ -103,6 +104,14 @@ def plan_picture(
         scale=scale,
         decimal=decimal,
     )
+
+
+def _used_holes(state: PlacedState) -> tuple[tuple[float, float], ...]:
+    from benchlay.sheets.shop.drilling import used_holes  # which draws with what stands here
+
+    if state.layout.bench.holes is None:
+        return ()
+    return tuple(dict.fromkeys(hole.at for hole in used_holes(state)[0]))
 
 
 _CAUTION = f"{SHORT} Survey stray light on the bench itself, at low power."

@@ -17,7 +17,14 @@ from benchlay.sheets.layers import BeamLook, sheet_layers
 from benchlay.sheets.lettering import LARGE_MM, SMALL_MM, shorten, width_mm
 from benchlay.sheets.plan.balloons import balloons
 from benchlay.sheets.plan.beams import beams
-from benchlay.sheets.plan.bench import bench, hole_step, holes, levels_note, main_dimensions
+from benchlay.sheets.plan.bench import (
+    bench,
+    hole_step,
+    holes,
+    levels_note,
+    main_dimensions,
+    used_holes,
+)
 from benchlay.sheets.plan.board import Board, boards
 from benchlay.sheets.plan.column import column
 from benchlay.sheets.plan.elements import elements
@@ -147,6 +154,7 @@ def _composed(picture: Picture, board: Board) -> _Composed:
     model += hatching(picture, board, lettering)
     model += shading(picture, board)
     model += holes(picture, board, lettering)
+    model += used_holes(picture, board)
     filled = column(picture, board, _notes(picture, board, tagged))
     paper = [
         *frame(board.choice.sheet, board.choice.size_mm),

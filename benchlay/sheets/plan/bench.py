@@ -25,6 +25,7 @@ _CROSS_MM = 1.6
 _ARROWS_MM = 8.0  # two arrowheads, and a little
 _CLOSEST_MM = 9.0  # holes drawn nearer than this are specks: every second, fifth, … then
 _STEPS = (1, 2, 4, 5, 10, 20, 50, 100)
+USED_MM = 1.1  # radius of the ring round a hole that is used
 ARROW_MM = 15.0  # of the directions from the datum
 
 
@@ -57,6 +58,12 @@ def holes(picture: Picture, board: Board, lettering: Sequence[Window]) -> Iterat
             if not _under(board.on_paper((x, y)), lettering):
                 yield Line("HOLES", (x - half, y), (x + half, y))
                 yield Line("HOLES", (x, y - half), (x, y + half))
+
+
+def used_holes(picture: Picture, board: Board) -> Iterator[Circle]:
+    """Ring the holes that something is held by."""
+    for at in picture.used_holes:
+        yield Circle("HOLES", at, board.long(USED_MM))
 
 
 def _under(point: Point, boxes: Sequence[Window]) -> bool:

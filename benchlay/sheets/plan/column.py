@@ -10,6 +10,7 @@ from benchlay.sheets.layers import beam_layer
 from benchlay.sheets.lettering import MIDDLE_MM, SMALL_MM, shorten
 from benchlay.sheets.plan.balloons import findings_table
 from benchlay.sheets.plan.beams import DUMPS, LEAVES, STOPS, end_mark
+from benchlay.sheets.plan.bench import USED_MM
 from benchlay.sheets.plan.board import Board
 from benchlay.sheets.plan.elements import elements_table
 from benchlay.sheets.plan.warning import signs_table
@@ -139,6 +140,8 @@ def _samples(picture: Picture, x: float) -> Iterator[tuple[str, list[Primitive]]
         yield "coated side: second line before the face", _coated_sample(middle)
     if picture.zones:
         yield picture.zones_are.legend, _zone_sample(x, right)
+    if picture.used_holes:
+        yield "mounting hole that something is held by", [Circle("HOLES", (middle, 0.0), USED_MM)]
     if picture.panels:
         corners = ((x, -0.4), (right, -0.4), (right, 0.4), (x, 0.4))
         yield "panel of the enclosure", [Polyline("PANELS", corners, closed=True)]

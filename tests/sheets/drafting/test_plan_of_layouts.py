@@ -199,3 +199,13 @@ def test_beams_say_what_they_are_to_the_pointer(drawn):
     assert beams
     assert all("1/e² radius" in p.note or "scattered" in p.note for p in beams)
     assert f"<title>{beams[0].note}</title>" in text
+
+
+def test_the_holes_ringed_are_holes_of_the_grid(drawn):
+    holes = drawn.trace.placed.base.layout.bench.holes
+    rings = [p.centre for p in drawn.sheet.model if p.layer == "HOLES" and hasattr(p, "centre")]
+    assert rings
+    for x, y in rings:
+        for value, first in zip((x, y), holes.first_mm, strict=True):
+            steps = (value - first) / holes.pitch_mm
+            assert steps == pytest.approx(round(steps), abs=1e-9)
