@@ -20,7 +20,7 @@ class Fan(NamedTuple):
     to the second.
     """
 
-    number: str  # F1: the same in the table and on the plan
+    number: str  # #1: the same in the table and on the plan; no name begins like it
     fault: Fault
     strands: tuple[tuple[tuple[Vector, Vector], ...], ...]
     azimuth_rad: tuple[float, float]
@@ -31,7 +31,7 @@ class Fan(NamedTuple):
 def fans_of(faults: Sequence[Fault]) -> tuple[Fan, ...]:
     """Return the fans of the faults that send light out, in their order."""
     out = [fault for fault in faults if fault.outcome == "escape"]
-    return tuple(_fan(f"F{n}", fault) for n, fault in enumerate(out, start=1))
+    return tuple(_fan(f"#{n}", fault) for n, fault in enumerate(out, start=1))
 
 
 def _fan(number: str, fault: Fault) -> Fan:

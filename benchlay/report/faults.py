@@ -58,7 +58,7 @@ class FaultRow(NamedTuple):
     times_limit: float | None
     cases: int
     reason: str | None
-    number: str | None = None  # F1: of its fan on the plan
+    number: str | None = None  # #1: of its fan on the plan
     fan: FanRow | None = None
 
 

@@ -76,7 +76,7 @@ def test_the_text_has_the_gravest_first_and_says_what_it_assumes(layout, capsys)
     out = capsys.readouterr().out
     lines = out.splitlines()
     assert lines[0] == "fail light gets out:"
-    assert lines[2].split()[:4] == ["F1", "M1", "pitch", "+4°"]
+    assert lines[2].split()[:4] == ["#1", "M1", "pitch", "+4°"]
     assert "over north" in lines[2]
     for word in ("resolution:", "assumed:", "caution:", "as drawn"):
         assert word in out

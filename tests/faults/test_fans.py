@@ -59,7 +59,7 @@ def test_numbers_and_figures_are_those_of_the_table(knocked):
     placed, review = knocked
     result = faults_result(review, placed, "bench.yaml", "")
     escapes = [row for row in result.faults if row.outcome == "escape"]
-    assert [row.number for row in escapes] == [f"F{n}" for n in range(1, len(escapes) + 1)]
+    assert [row.number for row in escapes] == [f"#{n}" for n in range(1, len(escapes) + 1)]
     assert all(row.number is None and row.fan is None for row in result.faults[len(escapes) :])
     row = next(row for row in escapes if "yaw" in row.fault)
     assert row.fan.azimuth == pytest.approx((82.0, 98.0), abs=1e-6)
@@ -94,7 +94,7 @@ def test_the_sheet_is_in_the_set_where_light_gets_out(knocked):
     (composed,) = sheets_of(trace(placed), only="faults", faults=review)
     words = {p.text for p in composed.sheet.paper if isinstance(p, Text)}
     assert "ESCAPE FANS" in words
-    assert "F1" in words
+    assert "#1" in words
 
 
 def test_there_is_no_sheet_where_nothing_gets_out(bench):
