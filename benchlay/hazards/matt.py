@@ -24,6 +24,8 @@ from benchlay.zones.viewing import scattered_mm
 
 _MM_PER_M = 1e3
 _DECIMALS = 6  # of a metre
+# Zones end at the inner face of a panel but for the rounding of polygons, which is far below.
+_ROUNDING_MM = 0.05
 
 
 class Struck(NamedTuple):
@@ -102,10 +104,10 @@ def met_at_m(one: Struck, where: str) -> float | None:
 def _outside_m(spot: Spot, enclosed: BaseGeometry | None) -> float | None:
     if enclosed is None:
         return NEAREST_M
-    beyond = shapely.difference(spot.area, enclosed)
-    if beyond.area <= 0.0:
+    beyond = shapely.difference(spot.area, shapely.buffer(enclosed, _ROUNDING_MM))
+    if beyond.is_empty:
         return None
-    nearest = float(shapely.distance(beyond, shapely.Point(spot.at[:2])))
+    nearest = float(shapely.distance(beyond, shapely.Point(spot.at[:2]))) - _ROUNDING_MM
     return max(NEAREST_M, nearest / _MM_PER_M)
 
 

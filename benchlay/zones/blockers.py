@@ -9,31 +9,49 @@ import numpy as np
 
 from benchlay.elements._kind import Acts
 from benchlay.layout.enclosure import Enclosure, Opening, Panel
+from benchlay.named import NamedTuple
 from benchlay.placing.placed import PlacedState
 from benchlay.scene.surroundings import material_of
-from benchlay.scene.tables import PART, Flags, Floats, Solids
+from benchlay.scene.tables import BULKS, PART, Faces, Flags, Floats, Ints, Scene, Solids
 from benchlay.tracing.trace import Trace
 
 _UPRIGHT = [PART[part] for part in ("post", "foot")]
 _PASSING = [Acts.INTERFACE, Acts.PASSES, Acts.LENS]
+_ABSORBER = BULKS.index("absorber")
 _RIM = 2.0 * np.pi * np.arange(16) / 16  # of posts: the polygon lies within the round
 _ROUND = 64  # sides about a round opening: wider than it by 0.12 %
 # Pieces of one panel overlap by this, so that no light passes between them.
 _OVERLAP_MM = 1e-4
 
 
-def blockers(trace: Trace, variant: int) -> list[Floats]:
-    """Return the corners, (N, 3) in mm, of each convex solid that is opaque in a state."""
-    return _bodies(trace, variant) + _panels(trace.placed.states[variant])
+class Shone(NamedTuple):
+    """Light that something may stop: its wavelength, and what share of it may pass unharmful."""
+
+    wave: int  # number of the wavelength
+    share: float  # of all of the light, that an aperture may take
 
 
-def _bodies(trace: Trace, variant: int) -> list[Floats]:
+def blockers(trace: Trace, variant: int, shone: Shone) -> list[Floats]:
+    """Return the corners, (N, 3) in mm, of each convex solid that is opaque in a state.
+
+    Parameters
+    ----------
+    trace : Trace
+    variant : int
+        Number of the state.
+    shone : Shone
+        A filter counts as opaque where all the light that it passes is within the limit.
+    """
+    return _bodies(trace, variant, shone) + _panels(trace.placed.states[variant])
+
+
+def _bodies(trace: Trace, variant: int, shone: Shone) -> list[Floats]:
     s = trace.scene.solids
-    taken = s.present[variant] & (s.part != PART["panel"]) & ~_passed(trace)
+    taken = s.present[variant] & (s.part != PART["panel"]) & ~_passed(trace, shone)
     return [_corners(s, row) for row in np.flatnonzero(taken).tolist()]
 
 
-def _passed(trace: Trace) -> Flags:
+def _passed(trace: Trace, shone: Shone) -> Flags:
     """Return which solids hold something that light may pass, such as a lens or an opening.
 
     They are boxes round it without its bore, so they are taken to shade nothing, which is the
@@ -41,9 +59,40 @@ def _passed(trace: Trace) -> Flags:
     """
     scene = trace.scene
     passing: Flags = np.zeros(len(scene.elements) + len(scene.sources) + 1, dtype=np.bool_)
-    passing[scene.faces.owner[np.isin(scene.faces.acts, _PASSING)]] = True
+    through = np.flatnonzero(np.isin(scene.faces.acts, _PASSING))
+    passing[scene.faces.owner[through[~_dark(scene, through, shone)]]] = True
     found: Flags = passing[scene.solids.owner] & ~np.isin(scene.solids.part, _UPRIGHT)
     return found
+
+
+def _dark(scene: Scene, faces: Ints, shone: Shone) -> Flags:
+    """Return which of some faces are those of a filter that passes no more than may pass.
+
+    What passes is that of the shortest way through, straight across where it is thinnest; the
+    reflection of its faces is left aside.
+    """
+    dark: Flags = np.zeros(len(faces), dtype=np.bool_)
+    volumes = scene.behind[faces]
+    for volume in np.unique(volumes[volumes >= 0]).tolist():
+        thick = float(scene.bulks.thickness[volume])
+        if int(scene.bulks.kind[volume]) != _ABSORBER:
+            continue
+        mine = faces[volumes == volume]
+        part = _thinnest_mm(scene.faces, mine) / thick if thick > 0.0 else 1.0
+        passes = float(scene.bulks.passes[volume, shone.wave]) ** part if part > 0.0 else 1.0
+        dark[volumes == volume] = passes <= shone.share
+    return dark
+
+
+def _thinnest_mm(f: Faces, faces: Ints) -> float:
+    """Return how thin a plate between two faces is at the least; 0 for what is no such plate."""
+    if len(faces) != 2:  # noqa: PLR2004 - front and back
+        return 0.0
+    front, back = faces.tolist()
+    middle, half = f.middle[back], f.radii[back]
+    corners = middle + half * np.array([(-1, -1), (-1, 1), (1, -1), (1, 1)])
+    points = f.origin[back] + corners[:, :1] * f.left[back] + corners[:, 1:] * f.up[back]
+    return float(((f.origin[front] - points) @ f.normal[front]).min())
 
 
 def _corners(s: Solids, row: int) -> Floats:

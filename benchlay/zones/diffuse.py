@@ -20,7 +20,7 @@ from benchlay.placing.placed import PlacedState
 from benchlay.scene.tables import SINKS, Floats, Ints
 from benchlay.tracing.beams import FACE
 from benchlay.tracing.trace import Trace
-from benchlay.zones.blockers import blockers
+from benchlay.zones.blockers import Shone, blockers
 from benchlay.zones.limits import LimitTable
 from benchlay.zones.sight import Band, View, seen
 from benchlay.zones.surfaces import normal_met
@@ -47,6 +47,7 @@ class Spot(NamedTuple):
     radius_mm: float  # how far the limit is exceeded
     view: View
     area: BaseGeometry  # from where it is seen within that distance
+    opaque: tuple[Floats, ...]  # corners of what stands in the way of its light, mm
 
 
 class _Landing(NamedTuple):
@@ -60,7 +61,6 @@ class _Landing(NamedTuple):
 def spots(trace: Trace, limits: LimitTable, variant: int, wave: int) -> Iterator[Spot]:
     """Yield the places of a state where a hazardous share lands on a surface that scatters."""
     state = trace.placed.states[variant]
-    opaque: list[Floats] | None = None  # gathered where something scatters
     for group in _groups(trace, variant, wave):
         first = group[0]
         power = sum(landing.power_w for landing in group)
@@ -72,9 +72,9 @@ def spots(trace: Trace, limits: LimitTable, variant: int, wave: int) -> Iterator
         far = scattered_mm(trace, limits, first.beam, (power, share, d63))
         radius = min(far, state.layout.limits.reach_mm)  # as far as anything is followed
         view = _view(state, first.at, _normal(trace, first), radius)
-        opaque = blockers(trace, variant) if opaque is None else opaque
+        opaque = tuple(blockers(trace, variant, Shone(wave, allowed / (power * share))))
         area = seen(view, opaque, eye_band(state))
-        yield Spot(*first[1:], power, share, d63, radius, view, area)
+        yield Spot(*first[1:], power, share, d63, radius, view, area, opaque)
 
 
 def _groups(trace: Trace, variant: int, wave: int) -> list[list[_Landing]]:

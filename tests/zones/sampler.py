@@ -16,11 +16,12 @@ _STEPS = 7  # looked at within the thickness of a sheet
 _SLACK = 1e-6
 
 
-def visible(trace, variant, place, radius, eyes):
+def visible(trace, variant, place, radius, eyes, *, dark=()):
     """Which points of the plan (N, 2) see a place, at any height (M,), within a distance.
 
     `place` is the point and its surface's normal, `eyes` are the points of the plan and the
-    heights. Mounts and bodies of optics that light may pass shade nothing.
+    heights. Mounts and bodies of optics that light may pass shade nothing, unless they are
+    named in `dark`.
     """
     (at, normal), (plan, heights) = place, eyes
     layout = trace.placed.states[variant].layout
@@ -36,7 +37,7 @@ def visible(trace, variant, place, radius, eyes):
         way = eyes - at
     for blocked in (
         _by_panels(layout, at, way),
-        _by_solids(trace, variant, at, way),
+        _by_solids(trace, variant, at, way, dark),
         _by_walls(layout, at, plan)[:, None],
     ):
         free &= ~blocked
@@ -88,7 +89,7 @@ def _by_panels(layout, at, way):
     return found
 
 
-def _by_solids(trace, variant, at, way):
+def _by_solids(trace, variant, at, way, dark):
     scene = trace.scene
     s = scene.solids
     found = np.zeros(way.shape[:2], dtype=bool)
@@ -96,6 +97,7 @@ def _by_solids(trace, variant, at, way):
     through = (Acts.INTERFACE, Acts.PASSES, Acts.LENS)
     acts = zip(scene.faces.owner.tolist(), scene.faces.acts.tolist(), strict=True)
     skip = {owner for owner, act in acts if act in through}
+    skip -= {scene.elements.index(name) for name in dark}
     for row in np.flatnonzero(s.present[variant]):
         if s.part[row] in (PART["panel"], PART["wall"]):
             continue

@@ -106,6 +106,17 @@ def bench(scene):
     return BENCH.replace("      MORE\n", f"      {element}\n" if element else "") + more
 
 
+def filters_that_pass_nothing(trace, variant, wave):
+    """Names of filters by bands none of which has this wavelength."""
+    nm = trace.scene.wavelengths_nm[wave]
+    return [
+        name
+        for name, item in trace.placed.states[variant].elements.items()
+        if getattr(item.element.record, "bands", None)
+        and not any(b.from_nm <= nm <= b.to_nm for b in item.element.record.bands)
+    ]
+
+
 def compared(trace, variant=0, many=(_GRID, _HEIGHTS)):
     """Of each spot: eyes that see it and lie in no zone; eyes in a zone that see nothing."""
     limits = limits_of(trace)
@@ -121,7 +132,8 @@ def compared(trace, variant=0, many=(_GRID, _HEIGHTS)):
             low, high = min(band[0], z), max(band[1], z)
             heights = np.linspace(max(low, z - radius), min(high, z + radius), many[1])
             heights = np.append(heights, z)
-            sees = visible(trace, variant, view[:2], radius, (plan, heights))
+            dark = filters_that_pass_nothing(trace, variant, wave)
+            sees = visible(trace, variant, view[:2], radius, (plan, heights), dark=dark)
             points = shapely.points(plan)
             # The polygon goes round the circle, by 1/cos(pi/64); between two heights that were
             # tried a gap may open; on the line itself either may be right.

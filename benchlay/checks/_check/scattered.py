@@ -12,8 +12,6 @@ from benchlay.checks._check.context import Context
 from benchlay.exposure import AccessibleLimit
 from benchlay.geometry.polygon import Point
 from benchlay.named import NamedTuple
-from benchlay.scene.tables import Floats
-from benchlay.zones.blockers import blockers
 from benchlay.zones.diffuse import Spot, spots
 from benchlay.zones.limits import limits_of
 from benchlay.zones.sight import Band
@@ -23,12 +21,11 @@ _M2_PER_MM2 = 1e-6
 
 
 class Lit(NamedTuple):
-    """A lit spot with its limit, and what stands round it."""
+    """A lit spot with its limit."""
 
     spot: Spot
     nm: float
     limit: AccessibleLimit
-    solids: tuple[Floats, ...]
 
 
 class Met(NamedTuple):
@@ -51,20 +48,18 @@ def lit(context: Context, variant: int) -> tuple[Lit, ...]:
     trace = context.trace
     table = limits_of(trace)
     found = []
-    solids: tuple[Floats, ...] | None = None
     for wave, nm in enumerate(trace.scene.wavelengths_nm.tolist()):
         for spot in spots(trace, table, variant, wave):
             told = context.limits.get((variant, context.source_of(spot.beam), nm))
             if told is not None and told.limit is not None:
-                solids = tuple(blockers(trace, variant)) if solids is None else solids
-                found.append(Lit(spot, nm, told.limit, solids))
+                found.append(Lit(spot, nm, told.limit))
     return tuple(found)
 
 
 def met_at(places: tuple[Lit, ...], point: Point, heights: Band) -> Iterator[Met]:
     """Yield what is met over a point of the plan, at heights (mm above the bench) that count."""
-    for spot, nm, limit, solids in places:
-        far = nearest_seen_mm(spot.view, solids, point, heights)
+    for spot, nm, limit in places:
+        far = nearest_seen_mm(spot.view, spot.opaque, point, heights)
         if far is not None:
             area = pi * far**2 * _M2_PER_MM2
             yield Met(spot, nm, limit, far, spot.reflectance * spot.power_w / area)
