@@ -176,7 +176,7 @@ def _parser(first: str) -> argparse.ArgumentParser:
         "trace": (_add_trace, "the beams and where their power goes"),
         "draw": (_add_draw, "drawings only"),
         "faults": (_add_faults, "what every credible single fault would do"),
-        "explain": (_add_explain, "what a check or a kind of element means"),
+        "explain": (_add_explain, "what a check, a kind of element or a part of a layout means"),
         "schema": (_add_nothing, "JSON Schema of the layout language, for editors"),
         "exposure": (_add_exposure, "limits, class, distances and eyewear of one beam"),
     }
@@ -227,7 +227,7 @@ def _add_draw(parser: argparse.ArgumentParser) -> None:
 
 
 def _add_explain(parser: argparse.ArgumentParser) -> None:
-    parser.add_argument("name", nargs="?", help="a check or a kind (all of them)")
+    parser.add_argument("name", nargs="?", help="a check, a kind or a part (all of them)")
 
 
 def _add_nothing(parser: argparse.ArgumentParser) -> None:

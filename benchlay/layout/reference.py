@@ -16,7 +16,7 @@ from benchlay.layout.elements import Shared
 from benchlay.layout.enclosure import Enclosure, Ends, Fix, Fold, Lid, Opening, Panel
 from benchlay.layout.header import Header
 from benchlay.layout.light import LineKeys, PulseTrain
-from benchlay.layout.limits import Driver, Eyes, Limits
+from benchlay.layout.limits import Driver, Eyes, Faults, Limits
 from benchlay.layout.materials import Material, Withstands
 from benchlay.layout.paths import Cavity, Matched
 from benchlay.layout.room import Door, Person, Room, Window
@@ -55,6 +55,7 @@ SECTIONS: tuple[tuple[str, type[Record]], ...] = (
     ("limits", Limits),
     ("limits.eyes", Eyes),
     ("limits.driver", Driver),
+    ("limits.faults", Faults),
     ("tolerances.NAME", Tolerance),
     ("accept[]", Accept),
     ("accept[].bound.NAME", Bound),
@@ -64,6 +65,45 @@ SECTIONS: tuple[tuple[str, type[Record]], ...] = (
     ("revisions[]", Revision),
 )
 """Every table of keys of the language, by the path at which it is written."""
+
+
+_STATES = """Keys that are set otherwise for a while: alignment, loading, service.
+
+states:
+  alignment:
+    sources.green.power: 1 mW
+    enclosure.panels.south.open: yes
+    elements.S1.closed: no
+    limits.time_base: 0.25 s
+
+A state may set any key of a source, element, panel, lid or limit but 'kind' and 'after'. A key
+of place or turn places that one element anew. What stands in the layout itself is the state
+'as drawn'; every check runs in every state.
+"""
+
+
+def words() -> dict[str, str]:
+    """Return what can be asked for: the last name of each path, and what is there in a line."""
+    found = {_word(path): _first(cls) for path, cls in SECTIONS}
+    return found | {"states": _STATES.partition("\n")[0]}
+
+
+def sections(word: str) -> list[tuple[str, str]]:
+    """Return the parts of the language at and below a word of `words`: path and page each."""
+    if word == "states":
+        return [("states.NAME", _STATES)]
+    paths = [path for path, _ in SECTIONS if _word(path) == word]
+    return [
+        (path, _page(cls))
+        for path, cls in SECTIONS
+        if path in paths or any(path.startswith(f"{above}") for above in paths)
+    ]
+
+
+def _word(path: str) -> str:
+    """Return the last name in a path that is written as it stands."""
+    plain = path.partition(",")[0].removeprefix("a ").replace("[]", "")
+    return [name for name in plain.split(".") if name != "NAME"][-1]
 
 
 def reference() -> str:
@@ -82,5 +122,8 @@ def kind_text(name: str) -> str:
 
 
 def _page(cls: type[Record]) -> str:
-    first = (getdoc(cls) or "").partition("\n")[0]
-    return f"{first}\n\n{reference_text(cls)}"
+    return f"{_first(cls)}\n\n{reference_text(cls)}"
+
+
+def _first(cls: type[Record]) -> str:
+    return (getdoc(cls) or "").partition("\n")[0]

@@ -180,7 +180,7 @@ ITEMS = _ItemsForm(2, _ItemForm())
 
 
 class RouteKeys(Record):
-    """A route with needs."""
+    """A route with needs; without needs its list of items is enough: `[green, M1, sample]`."""
 
     path: tuple[RouteItem, ...] = key(ITEMS, meaning="the items in order, a source first")
     needs: Needs | None = key(

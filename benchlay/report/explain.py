@@ -1,4 +1,4 @@
-"""What a check or a kind of element means, from the pages that stand with their code."""
+"""What a check, a kind of element or a part of a layout means, from what stands with the code."""
 
 from __future__ import annotations
 
@@ -14,36 +14,44 @@ _BLOCK = ".. code-block:: yaml"
 
 
 def explain(name: str) -> str | None:
-    """Return the page of a check or of a kind; None where there is no such name."""
+    """Return the page of a check, a kind or a part; None where there is no such name."""
     for check in CHECKS:
         if name == check.NAME:
             return f"check {name}\n\n{_readable(getdoc(check) or '')}"
-    if name not in KINDS:
-        return None
     # Loaded here: the tables of the whole language are not needed for a check.
-    from benchlay.layout.reference import kind_text
+    from benchlay.layout.reference import kind_text, sections
 
+    if name not in KINDS:
+        parts = [f"{path}\n\n{_part(page)}" for path, page in sections(name)]
+        return "\n".join(parts) or None
     page = getdoc(sys.modules[KINDS[name].__module__]) or ""
     return f"kind {name}\n\n{_readable(page)}\nIts own keys:\n\n{_rows(kind_text(name))}"
 
 
 def listing() -> str:
     """Return every name that can be explained, with the first line of its page."""
+    from benchlay.layout.reference import words
+
     checks = [f"  {c.NAME:<20} {_first(getdoc(c) or '')}" for c in CHECKS]
     kinds = [
         f"  {name:<20} {_first(getdoc(sys.modules[kind.__module__]) or '')}"
         for name, kind in KINDS.items()
     ]
-    return "\n".join(["checks", *checks, "", "kinds of element", *kinds]) + "\n"
+    parts = [f"  {name:<20} {_readable(first).strip()}" for name, first in words().items()]
+    blocks = (["checks", *checks], ["kinds of element", *kinds], ["parts of a layout", *parts])
+    return "\n\n".join("\n".join(block) for block in blocks) + "\n"
 
 
 def unknown(name: str) -> str:
     """Return what to tell someone who asked for a name that there is not."""
-    near = nearest(name, [*(check.NAME for check in CHECKS), *KINDS])
+    from benchlay.layout.reference import words
+
+    near = nearest(name, [*(check.NAME for check in CHECKS), *KINDS, *words()])
     hint = f"write {near!r}" if near else "give no name for a list of all"
     return (
-        f"benchlay explain: there is no check or kind {name!r}\n"
-        f"  expected: the name of a check or of a kind of element\n  to mend: {hint}\n"
+        f"benchlay explain: there is no check, kind or part of a layout {name!r}\n"
+        "  expected: the name of a check, of a kind of element or of a part of a layout\n"
+        f"  to mend: {hint}\n"
     )
 
 
@@ -55,6 +63,12 @@ def _readable(page: str) -> str:
     """Return a page without the marks that only a typesetter reads."""
     lines = [line for line in page.splitlines() if line.strip() != _BLOCK]
     return dedent("\n".join(lines)).replace("``", "'") + "\n"
+
+
+def _part(page: str) -> str:
+    """Return a part as text: what it is, then its keys; a page without keys as it is."""
+    what, mark, table = page.partition("\n\n| key |")
+    return f"{_readable(what)}\n{_rows(table)}" if mark else page
 
 
 def _rows(table: str) -> str:
