@@ -74,11 +74,12 @@ def _plan(subject: Subject) -> Iterator[Planned]:
 
 
 def _elevations(subject: Subject) -> Iterator[Planned]:
-    from benchlay.sheets.drafting.elevations import elevation_of
+    from benchlay.sheets.drafting.elevations import elevation_of, state_of
     from benchlay.sheets.elevation import compose
 
     for route, name in enumerate(subject.trace.ways.names):
-        picture = elevation_of(subject.trace, subject.variant, route, subject.sha256)
+        variant = subject.variant if subject.state else state_of(subject.trace, route)
+        picture = elevation_of(subject.trace, variant, route, subject.sha256)
         if picture is None:
             continue
 

@@ -47,6 +47,30 @@ def chain_of(trace: Trace, variant: int, route: int) -> list[int]:
     return chain[::-1]
 
 
+def state_of(trace: Trace, route: int) -> int:
+    """Return the number of the first state in which a route's light gets to its end; else 0."""
+    for variant in range(len(trace.scene.variants)):
+        chain = chain_of(trace, variant, route)
+        if chain and _end_of(trace, chain) == _meant(trace, route):
+            return variant
+    return 0
+
+
+def _end_of(trace: Trace, chain: list[int]) -> str | None:
+    """Return the element or the opening at which the light of a route ends."""
+    beams, end = trace.beams, chain[-1]
+    if beams.end_kind[end] == FACE:
+        return trace.scene.elements[int(trace.scene.faces.owner[beams.end_row[end]])]
+    if beams.end_kind[end] == HANDED:
+        return trace.scene.names[int(trace.scene.solids.hole_name[beams.end_row[end]])]
+    return None
+
+
+def _meant(trace: Trace, route: int) -> str:
+    last = trace.ways.routes[route].items[-1]
+    return ".".join(last.opening) if last.opening is not None else last.name
+
+
 def elevation_of(trace: Trace, variant: int, route: int, sha256: str) -> Elevation | None:
     """Return the elevation of a route in a state; None where no light follows it.
 
@@ -222,7 +246,7 @@ def _levels(layout: Layout) -> Iterator[Level]:
         yield Level(_listed(names, "lid"), z)
 
 
-_MOST_NAMED = 4
+_MOST_NAMED = 2
 
 
 def _listed(names: list[str], what: str) -> str:
@@ -243,16 +267,8 @@ def _notes(trace: Trace, route: int, chain: list[int], state: PlacedState) -> It
         f"{state.name}. Heights and lengths are true to scale; widths of posts and mounts along "
         "the path are their own, whichever way they face. Do not scale."
     )
-    wanted = trace.ways.routes[route].items
-    last = wanted[-1]
-    beams, end = trace.beams, chain[-1]
-    met = None
-    if beams.end_kind[end] == FACE:
-        met = trace.scene.elements[int(trace.scene.faces.owner[beams.end_row[end]])]
-    elif beams.end_kind[end] == HANDED:
-        met = trace.scene.names[int(trace.scene.solids.hole_name[beams.end_row[end]])]
-    meant = ".".join(last.opening) if last.opening is not None else last.name
-    if met != meant:
+    meant = _meant(trace, route)
+    if _end_of(trace, chain) != meant:
         yield (
             f"In this state its light does not reach {meant}; shown is where it goes, beyond the "
             "edge of the bench too."

@@ -11,6 +11,7 @@ from math import ceil, floor
 from benchlay.named import NamedTuple
 from benchlay.sheets.elevation.contents import Elevation, Station
 from benchlay.sheets.form import Form, form_for
+from benchlay.sheets.lettering import SMALL_MM, width_mm
 from benchlay.sheets.primitives import Point
 from benchlay.sheets.scale import NothingFitsError
 
@@ -21,7 +22,8 @@ HEADING_MM = 8.0  # above the first strip
 RULER_MM = 10.0
 PROFILE_MM = 34.0
 BELOW_PROFILE_MM = 8.0  # leaders to the stations' columns
-ROWS_MM = (24.0, 13.0, 11.0, 12.0, 12.0, 12.0)  # of a station's column, see `profile.HEADINGS`
+ROWS_MM = (16.0, 12.0, 13.0, 13.0, 12.0)  # of a column below its name, see `profile.HEADINGS`
+_NAMES_MM = (10.0, 24.0)  # of the row of names, at the least and at the most
 PITCH_MM = 4.6  # of the stations' columns
 BENCH_MM = 25.0  # shown of what lies under the bench top, true size
 HEADROOM_MM = 25.0  # above the highest, true size
@@ -91,7 +93,7 @@ def lay_out(picture: Elevation) -> Board:
         form = form_for(picture.fields._replace(scale=f"1:{scale}"), size=size)
         window = form.window
         long = (window.width - LEFT_MM - RIGHT_MM) * scale
-        each = depth_mm(height, scale)
+        each = depth_mm(height, scale, sum(rows_mm(picture)))
         most = floor((window.height - HEADING_MM) / each)
         wanted = max(ceil(picture.length / long - 1e-9), _for_stations(picture, long, scale))
         if wanted <= most:
@@ -100,10 +102,16 @@ def lay_out(picture: Elevation) -> Board:
     raise NothingFitsError(msg)
 
 
-def depth_mm(height: float, scale: int) -> float:
-    """Return how much of the paper a strip takes, upwards."""
+def rows_mm(picture: Elevation) -> tuple[float, ...]:
+    """Return the depths of the rows of the stations' columns: names first, as long as they are."""
+    longest = max((width_mm(one.name or one.kind, SMALL_MM) for one in picture.stations), default=0)
+    return (min(max(longest + 2.0, _NAMES_MM[0]), _NAMES_MM[1]), *ROWS_MM)
+
+
+def depth_mm(height: float, scale: int, rows: float) -> float:
+    """Return how much of the paper a strip takes, upwards, with rows of a depth."""
     view = (height + BENCH_MM) / scale
-    return ABOVE_MM + view + RULER_MM + PROFILE_MM + BELOW_PROFILE_MM + sum(ROWS_MM)
+    return ABOVE_MM + view + RULER_MM + PROFILE_MM + BELOW_PROFILE_MM + rows
 
 
 def stations_of(picture: Elevation, strip: Strip) -> list[Station]:

@@ -9,9 +9,9 @@ from benchlay.named import NamedTuple
 from benchlay.sheets.elevation.board import (
     PITCH_MM,
     PROFILE_MM,
-    ROWS_MM,
     Board,
     Strip,
+    rows_mm,
     stations_of,
 )
 from benchlay.sheets.elevation.contents import Elevation, Station, Stretch
@@ -23,6 +23,7 @@ from benchlay.sheets.primitives import Across, Line, Polyline, Primitive, Text, 
 from benchlay.sheets.scale import Window
 
 _STEPS_MM = (10, 20, 50, 100, 200, 500, 1000, 2000, 5000)
+_PAD_MM = 0.6  # of the words in a row, from its lines
 _TICK_MM = 16.0  # at the least between figures of the ruler
 _HEADROOM = 1.25  # of the profile above the largest radius
 _EVEN_UP_TO = 12.0  # of largest to smallest radius: beyond, an even scale hides the small ones
@@ -145,23 +146,26 @@ def columns(picture: Elevation, board: Board, strip: Strip) -> Iterator[Primitiv
     places = [board.paper(strip, min(one.s, strip.s_out)) for one in stations]
     right = board.form.window.right - PITCH_MM / 2
     spread = _spread(places, board.form.window.left + 22.0, right)
+    depths = rows_mm(picture)
     edges = [strip.rows]
-    for depth in ROWS_MM:
+    for depth in depths:
         edges.append(edges[-1] - depth)
-    for heading, high, low in zip(HEADINGS, edges, edges[1:], strict=False):
-        at = (board.form.window.left + 1.0, (high + low) / 2)
+    ends = (board.form.window.left + 1.0, max([board.paper(strip, strip.s_out), *spread]) + 3.0)
+    for heading, high, low in zip(HEADINGS, edges[:-1], edges[1:], strict=True):
+        at = (ends[0] + _PAD_MM, (high + low) / 2)
         yield Text("TABLES", at, heading, SMALL_MM, up=Up.MIDDLE)
+        yield Line("TABLES", (ends[0], low), (ends[1], low))
     for station, place, x in zip(stations, places, spread, strict=True):
         yield Line("TAGS", (place, strip.profile), (place, strip.profile - 2.0))
         yield Line("TAGS", (place, strip.profile - 2.0), (x, strip.rows + 1.0))
-        for words, depth, high in zip(_words(picture, station), ROWS_MM, edges, strict=False):
-            fitted = shorten(words, depth - 1.0, SMALL_MM)
-            at = (x + SMALL_MM / 2, high - 0.5)
+        for words, depth, high in zip(_words(picture, station), depths, edges, strict=False):
+            fitted = shorten(words, depth - 2.0 * _PAD_MM, SMALL_MM)
+            at = (x + SMALL_MM / 2, high - _PAD_MM)
             yield Text("TAGS", at, fitted, SMALL_MM, Across.RIGHT, rotation_deg=90.0)
 
 
 HEADINGS = ("element", "path, mm", "height, mm", "radius upright", "clear half-width", "of radii")
-"""What the rows of a station's column hold; their depths are `ROWS_MM`."""
+"""What the rows of a station's column hold; their depths are `rows_mm`."""
 
 
 def _words(picture: Elevation, station: Station) -> Iterator[str]:
@@ -175,11 +179,11 @@ def _words(picture: Elevation, station: Station) -> Iterator[str]:
     stretch = stretch or picture.stretches[-1]
     yield told(radius_at(stretch, stretch.up_mm, station.s), 3)
     if station.clear_least is None:
-        yield from ("-", "-")
+        yield from ("none", "none")  # a dash would look like a 1 when it stands upright
         return
     yield told(station.clear_least, 2)
     most = radius_at(stretch, stretch.most_mm, station.s)
-    yield told(station.clear_least / most, 1) if most > 0.0 else "-"
+    yield told(station.clear_least / most, 1) if most > 0.0 else "none"
 
 
 def _spread(places: list[float], left: float, right: float) -> list[float]:

@@ -9,7 +9,6 @@ from benchlay.sheets.elevation.contents import Band, Elevation, Station, Stretch
 from benchlay.sheets.layers import beam_layer
 from benchlay.sheets.lettering import SMALL_MM, shorten
 from benchlay.sheets.primitives import (
-    Across,
     Axis,
     Dimension,
     Fill,
@@ -185,6 +184,13 @@ def margin(picture: Elevation, board: Board, strip: Strip) -> Iterator[Primitive
     heights: list[tuple[float, str]] = [(0.0, "\u00b10 bench top")]
     for level in picture.levels:
         heights.append((level.z, f"+{figure(level.z, 1, picture.decimal)} {level.words}"))
+    for band in picture.bands:
+        if _in_view(band, board):
+            low, high = (
+                f"{'+' if z >= 0.0 else ''}{figure(z, 0, picture.decimal)}"
+                for z in (band.low, band.high)
+            )
+            heights.append((max(band.low, 0.0), f"{band.words} from {low} to {high}"))
     lowest = strip.ground - 2.0 * SMALL_MM
     for z, words in sorted(heights):
         y = max(strip.ground + z / board.scale, lowest + 1.5 * SMALL_MM)
@@ -197,11 +203,15 @@ def margin(picture: Elevation, board: Board, strip: Strip) -> Iterator[Primitive
         yield from _band(band, board, strip, right + 1.0 + n * _BAND_MM)
 
 
+def _in_view(band: Band, board: Board) -> bool:
+    return band.low < board.height and band.high > 0.0
+
+
 def _band(band: Band, board: Board, strip: Strip, left: float) -> Iterator[Primitive]:
     """Draw a band of eye heights as far as the view reaches."""
-    top = board.height
-    if band.low >= top or band.high <= 0.0:
+    if not _in_view(band, board):
         return
+    top = board.height
     low = strip.ground + max(band.low, 0.0) / board.scale
     high = strip.ground + min(band.high, top) / board.scale
     right = left + _BAND_MM - 1.0
@@ -211,7 +221,3 @@ def _band(band: Band, board: Board, strip: Strip, left: float) -> Iterator[Primi
     while y < high:
         yield Line("HAZARD", (left, y), (right, min(y + right - left, high)))
         y += _HATCH_MM
-    words = shorten(band.words, high - low - 1.0, SMALL_MM)
-    if len(words) == len(band.words):
-        at = ((left + right) / 2 + SMALL_MM / 2, (low + high) / 2)
-        yield Text("LEVELS", at, words, SMALL_MM, Across.CENTRE, rotation_deg=90.0)

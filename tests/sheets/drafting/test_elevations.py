@@ -153,3 +153,26 @@ def test_elevations_come_out_byte_by_byte_alike():
     for one, other in zip(first, again, strict=True):
         assert svg.write(one.sheet) == svg.write(other.sheet)
         assert dxf.write(one.sheet) == dxf.write(other.sheet)
+
+
+def test_a_route_is_drawn_in_a_state_in_which_it_arrives():
+    traced_bench = trace(place(read(LAYOUTS / "stone-cleaning.yaml")))
+    assert traced_bench.scene.variants[0] == "as drawn"
+    (made,) = composed_sheets(Subject(traced_bench, NO_ZONES, (), ""), "elevation-green")
+    words = [p.text for p in made.sheet.paper if isinstance(p, Text)]
+    assert "ELEVATION OF ROUTE green, 1:10, STATE: green" in words
+    assert not any("does not reach" in one for one in words)
+    (alone,) = composed_sheets(
+        Subject(traced_bench, NO_ZONES, (), "", state="as drawn"), "elevation-green"
+    )
+    assert any(p.text.endswith("STATE: as drawn") for p in alone.sheet.paper if hasattr(p, "text"))
+
+
+def test_bands_of_eyes_are_named_and_figures_never_shortened():
+    far = BENCH.replace("M1, distance: 200", "M1, distance: 212.345").replace("pitch: 5, ", "")
+    longer = far.replace("1200", "9000").replace("distance: 300", "distance: 8123.47")
+    (made,) = composed_sheets(Subject(traced(longer), NO_ZONES, (), ""), "elevation")
+    words = [p.text for p in made.sheet.paper if isinstance(p, Text)]
+    assert "seated eyes from +170 to +480" in words
+    assert "8323.5" in [one.replace(",", ".") for one in words]
+    assert not any("\u2026" in one for one in words if one[:1].isdigit())
