@@ -22,6 +22,7 @@ from benchlay.placing import Placed
 from benchlay.report.model import LayoutErrors, Reported, Review
 
 if TYPE_CHECKING:
+    from benchlay.checks import Context
     from benchlay.faults import Review as FaultReview
     from benchlay.faults.sweeps import Progress
     from benchlay.report.details import TraceResult
@@ -216,6 +217,7 @@ def review_files(
             reviewed.sha256,
             state=state,
             faults=single,
+            context=checked.context,
         )
     except LayoutError as error:
         return LayoutErrors(file, error.problems, _lines(data))
@@ -234,7 +236,6 @@ def review_files(
 
 def _remedies(data: bytes, file: str, checked: Checked, reviewed: Review, on: date) -> Remedies:
     """Return what would clear escapes and strays, each tried out on the layout's text."""
-    from benchlay.checks import Context
     from benchlay.remedies import Judged, offers
     from benchlay.results.review import judge
 
@@ -243,9 +244,9 @@ def _remedies(data: bytes, file: str, checked: Checked, reviewed: Review, on: da
             other = _checked(trace(place(read(file, text))), checked.states)
         except LayoutError:
             return None
-        return Judged(judge(other, on).findings, Context(other.trace, other.limits))
+        return Judged(judge(other, on).findings, other.context)
 
-    own = Judged(reviewed.findings, Context(checked.trace, checked.limits))
+    own = Judged(reviewed.findings, checked.context)
     return offers(data.decode("utf-8-sig"), own, again)
 
 
@@ -270,6 +271,7 @@ def _drawn(
     sheet: str | None = None,
     form: str | None = None,
     faults: FaultReview | None = None,
+    context: Context | None = None,
 ) -> dict[str, bytes]:
     from benchlay.results.drawings import drawings, refusals
 
@@ -280,7 +282,15 @@ def _drawn(
     if faults is None:
         faults = _fault_review(traced.placed, state)
     made = drawings(
-        traced, judged, zones, digest, state=state, sheet=sheet, form=form, faults=faults
+        traced,
+        judged,
+        zones,
+        digest,
+        state=state,
+        sheet=sheet,
+        form=form,
+        faults=faults,
+        context=context,
     )
     if isinstance(made, Problem):
         raise LayoutError((made,))
@@ -324,10 +334,10 @@ def _checked(traced: Trace, states: Sequence[str] | None) -> Checked:
     from benchlay.checks import Context, limits_of, run_checks
     from benchlay.results.review import Checked
 
-    limits = limits_of(traced.placed)
-    findings, runs = run_checks(Context(traced, limits))
+    context = Context(traced, limits_of(traced.placed))
+    findings, runs = run_checks(context)
     spoken_of = traced.scene.variants if states is None else tuple(states)
-    return Checked(traced, limits, tuple(findings), tuple(runs), spoken_of)
+    return Checked(context, tuple(findings), tuple(runs), spoken_of)
 
 
 def _digest(data: bytes) -> str:

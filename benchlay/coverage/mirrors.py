@@ -106,9 +106,9 @@ def sees(enclosed: Enclosed, gap: Gap, place: Place) -> bool:
     if not stopped(place, gap.at, enclosed.blockers):
         return True
     # Loaded where one ray does not answer it.
-    from benchlay.coverage.regions import open_parts
+    from benchlay.coverage.regions import parts_seen
 
-    return bool(open_parts(enclosed, gap, place))
+    return next(parts_seen(enclosed, gap, place), None) is not None
 
 
 def guilty(enclosed: Enclosed, gap: Gap, leg: Leg) -> bool:

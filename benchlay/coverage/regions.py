@@ -30,20 +30,23 @@ def open_parts(enclosed: Enclosed, gap: Gap, eye: Place) -> list[list[Place]]:
     A part counts where the ray leaves the line for the first time, so that no direction counts
     twice.
     """
-    found: list[list[Place]] = []
+    return list(parts_seen(enclosed, gap, eye))
+
+
+def parts_seen(enclosed: Enclosed, gap: Gap, eye: Place) -> Iterator[list[Place]]:
+    """Yield the same one by one, for those whom the first one answers."""
     for count, number in enumerate(gap.sides):
         short_end = count > 0 and gap.kind in (OVER, UNDER)
         for span in _first_met(enclosed, number, eye[:2]):
             for cell in () if short_end else _upright_cells(enclosed, gap, number, span):
-                found += _in_space(cell, visible(cell, eye, enclosed.blockers))
+                yield from _in_space(cell, visible(cell, eye, enclosed.blockers))
             for cell in _level_cells(enclosed, gap, span, eye):
                 parts = visible(cell, eye, enclosed.blockers)
                 parts = _under_lids(enclosed, gap, View(cell, eye), parts)
                 if short_end:  # what is open there is of the side next to it
                     own = gap.sides[0]
                     parts = [p for p in parts if nearest_side(enclosed, gap, middle(p)) == own]
-                found += _in_space(cell, parts)
-    return found
+                yield from _in_space(cell, parts)
 
 
 def _in_space(cell: Cell, parts: list[Convex]) -> Iterator[list[Place]]:

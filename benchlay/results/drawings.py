@@ -23,6 +23,7 @@ from benchlay.writers import dxf, pdf, svg
 from benchlay.zones import Zones
 
 if TYPE_CHECKING:
+    from benchlay.checks import Context
     from benchlay.faults import Review as FaultReview
 
 FORMS: Mapping[str, Callable[[Sheet], bytes]] = {
@@ -67,6 +68,7 @@ def drawings(
     sheet: str | None = None,
     form: str | None = None,
     faults: FaultReview | None = None,
+    context: Context | None = None,
 ) -> dict[str, bytes] | Problem:
     """Return the sheets asked for (all for None) in the formats asked for, by file name.
 
@@ -74,7 +76,8 @@ def drawings(
     review has of them: the findings are counted in the sheets' notes, and zones that are not
     known yet are worked out. `sha256` is that of the layout's bytes. `state` is the one that
     the review speaks of, where it is of one alone: it is drawn, else the one as drawn. `faults`
-    is the review of single faults, where there was one.
+    is the review of single faults, where there was one, and `context` what the checks know of
+    the trace already.
     """
     counts = Counter(Severity[finding.severity.upper()] for finding in judged)
     try:
@@ -87,6 +90,7 @@ def drawings(
             state=state,
             findings=_marks(judged, state or trace.scene.variants[0]),
             faults=faults,
+            context=context,
         )
     except UnknownSheetError as error:
         return _unknown(trace.placed.base.layout, error)

@@ -7,14 +7,10 @@ from collections.abc import Sequence
 from benchlay.checks import Context
 from benchlay.hazards import hazards_of, signs_of
 from benchlay.report.model import Review
-from benchlay.results.limits import Limits
-from benchlay.tracing import Trace
 from benchlay.zones import Zones
 
 
-def with_hazards(
-    review: Review, trace: Trace, limits: Limits, states: Sequence[str], zones: Zones
-) -> Review:
+def with_hazards(review: Review, context: Context, states: Sequence[str], zones: Zones) -> Review:
     """Return a review with the hazards of some states."""
-    found = hazards_of(Context(trace, limits), zones, states)
-    return review._replace(hazards=found, signs=signs_of(trace.placed.base.layout, found))
+    found = hazards_of(context, zones, states)
+    return review._replace(hazards=found, signs=signs_of(context.trace.placed.base.layout, found))

@@ -11,7 +11,7 @@ from benchlay.findings import Finding, MergedFinding, identify, merge_states, so
 from benchlay.named import NamedTuple
 from benchlay.report.model import Acceptance, CheckRun, Reported, Review, reported
 from benchlay.results.accept import hold
-from benchlay.results.limits import Limits, limits_used
+from benchlay.results.limits import limits_used
 from benchlay.tracing import Trace
 
 if TYPE_CHECKING:
@@ -27,14 +27,18 @@ class Paper(NamedTuple):
 
 
 class Checked(NamedTuple):
-    """A trace, what was found in it, and the limits this was held against."""
+    """What was found in a trace, held against limits."""
 
-    trace: Trace
-    limits: Limits
+    context: Context  # with which it was found
     findings: tuple[Finding, ...]
     runs: tuple[Run, ...]
     states: tuple[str, ...]  # that are spoken of, in order
     zones: Zones | None = None  # where they were worked out
+
+    @property
+    def trace(self) -> Trace:
+        """The trace."""
+        return self.context.trace
 
 
 class Judged(NamedTuple):
@@ -72,7 +76,7 @@ def _reported(
 
 def review(checked: Checked, paper: Paper, on: date, *, in_full: bool) -> Review:
     """Return the review of a layout; what costs time only where it is asked for in full."""
-    trace = checked.trace
+    context, trace = checked.context, checked.trace
     layout = trace.placed.base.layout
     judged = judge(checked, on)
     short = Review(
@@ -83,7 +87,7 @@ def review(checked: Checked, paper: Paper, on: date, *, in_full: bool) -> Review
         as_of=on.isoformat() if layout.accept else None,
         findings=judged.findings,
         checks=judged.runs,
-        limits_used=limits_used(trace, checked.limits, checked.states),
+        limits_used=limits_used(trace, context.limits, checked.states),
         lines=paper.lines,
     )
     if not in_full:
@@ -93,7 +97,6 @@ def review(checked: Checked, paper: Paper, on: date, *, in_full: bool) -> Review
     from benchlay.results.stretches import with_stretches
 
     full = with_details(short, trace, checked.states, checked.zones)
-    context = Context(trace, checked.limits)
     full = full._replace(
         findings=with_stretches(full.findings, context),
         panels=panels_of_states(context, checked.states),
@@ -102,4 +105,4 @@ def review(checked: Checked, paper: Paper, on: date, *, in_full: bool) -> Review
         return full
     from benchlay.results.hazards import with_hazards
 
-    return with_hazards(full, trace, checked.limits, checked.states, checked.zones)
+    return with_hazards(full, context, checked.states, checked.zones)

@@ -32,15 +32,10 @@ def _with_stretch(finding: Reported, stretches: tuple[Stretch, ...]) -> Reported
 
 
 def _stretches(context: Context, finding: Reported) -> Iterator[Stretch]:
-    # Loaded for a finding of this check only.
-    from benchlay.coverage.mirrors import stretches
-
     variant = context.trace.scene.variants.index(finding.worst_state)
-    among = context.gaps.among_bodies(variant)
-    for gap, legs, _ in context.gaps.thrown(variant):
-        if not is_about(finding.id, opening_mirror.NAME, gap):
+    for thrown in context.gaps.thrown(variant):
+        if not is_about(finding.id, opening_mirror.NAME, thrown.gap):
             continue
-        for one in sorted(legs, key=lambda one: one.beam):
-            for start, end in stretches(among, gap, one.leg):
-                beam = int(context.numbers[one.beam])
-                yield Stretch(beam, one.leg.at(start), one.leg.at(end))
+        found = context.gaps.stretches(variant, thrown)
+        for (beam, _, leg), start, end in sorted(found, key=lambda one: one.of.beam):
+            yield Stretch(int(context.numbers[beam]), leg.at(start), leg.at(end))

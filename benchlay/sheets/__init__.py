@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING
 from benchlay.named import NamedTuple
 
 if TYPE_CHECKING:
+    from benchlay.checks import Context
     from benchlay.faults import Review as FaultReview
     from benchlay.findings import Severity
     from benchlay.making.parts import Part
@@ -24,13 +25,18 @@ if TYPE_CHECKING:
 class Subject(NamedTuple):
     """What sheets are drawn from."""
 
-    trace: Trace
+    context: Context
     zones: Zones
     counts: Iterable[tuple[Severity, int]]  # how many findings the review has, for the notes
     sha256: str  # of the layout's bytes, to be written into the files
     state: str | None = None  # the only one that the review speaks of, and so the one drawn
     findings: tuple[Mark, ...] = ()  # of the review
     faults: FaultReview | None = None  # where single faults were reviewed
+
+    @property
+    def trace(self) -> Trace:
+        """The trace that is drawn."""
+        return self.context.trace
 
     @property
     def variant(self) -> int:
@@ -68,6 +74,7 @@ def _plan(subject: Subject) -> Iterator[Planned]:
         of_all_states=subject.state is None,
         sha256=subject.sha256,
         findings=subject.findings,
+        context=subject.context,
     )
     for name, made in sheets(picture):
         yield Planned(name, made)
@@ -90,20 +97,19 @@ def _elevations(subject: Subject) -> Iterator[Planned]:
 
 
 def _room(subject: Subject) -> Iterator[Planned]:
-    from benchlay.checks import Context, limits_of
     from benchlay.hazards import hazards_of, signs_of
     from benchlay.sheets.room import Subject as RoomSubject
     from benchlay.sheets.room import room_sheet
     from benchlay.zones.controlled import controlled_areas
 
-    trace, layout = subject.trace, subject.trace.placed.base.layout
+    layout = subject.trace.placed.base.layout
     room = layout.room
     if room is None:
         return
 
     def sheet(number: str) -> Sheet:
         states = None if subject.state is None else (subject.state,)
-        found = hazards_of(Context(trace, limits_of(trace.placed)), subject.zones, states)
+        found = hazards_of(subject.context, subject.zones, states)
         areas, missing = controlled_areas(subject.zones), tuple(subject.zones.not_computed)
         shown = RoomSubject(layout, areas, signs_of(layout, found), missing)
         return room_sheet(shown, room, subject.sha256, number)
@@ -196,14 +202,13 @@ def _cuts(subject: Subject) -> Iterator[Planned]:
 
 
 def _safety(subject: Subject) -> Iterator[Planned]:
-    from benchlay.checks import Context, limits_of
     from benchlay.hazards import hazards_of, signs_of
     from benchlay.sheets.drafting.safety import safety_contents
     from benchlay.sheets.safety import compose, name_of
 
-    trace, layout = subject.trace, subject.trace.placed.base.layout
+    layout = subject.trace.placed.base.layout
     states = None if subject.state is None else (subject.state,)
-    found = hazards_of(Context(trace, limits_of(trace.placed)), subject.zones, states)
+    found = hazards_of(subject.context, subject.zones, states)
     contents = safety_contents(layout, found, signs_of(layout, found), subject.sha256)
     for page, made in enumerate(compose(contents), start=1):
         yield Planned(name_of(page), made)
@@ -221,6 +226,7 @@ def _faults(subject: Subject) -> Iterator[Planned]:
         subject.faults,
         variant=subject.variant,
         sha256=subject.sha256,
+        context=subject.context,
     )
     for name, made in sheets(picture) if picture is not None else ():
         yield Planned(name, made)
@@ -289,6 +295,7 @@ def sheets_of(
     state: str | None = None,
     findings: tuple[Mark, ...] = (),
     faults: FaultReview | None = None,
+    context: Context | None = None,
 ) -> list[Composed]:
     """Return the sheets of a traced layout, in its state as drawn or in the one named.
 
@@ -299,6 +306,8 @@ def sheets_of(
         The hazard zones, where they are known already: of all states, or of the one named.
     only, counts, sha256, state, findings, faults
         See `composed_sheets` and `Subject`.
+    context : Context, optional
+        What the checks know of the trace already.
 
     Raises
     ------
@@ -309,5 +318,9 @@ def sheets_of(
         from benchlay.zones import zones_of
 
         zones = zones_of(trace, states=None if state is None else (state,))
-    subject = Subject(trace, zones, tuple(counts), sha256, state, findings, faults)
+    if context is None:
+        from benchlay.checks import Context, limits_of
+
+        context = Context(trace, limits_of(trace.placed))
+    subject = Subject(context, zones, tuple(counts), sha256, state, findings, faults)
     return composed_sheets(subject, only)

@@ -31,11 +31,11 @@ def trace():
 @pytest.fixture
 def checked(trace):
     def make(*findings, states=("as drawn", "a", "b")):
-        from benchlay.checks import Run, limits_of
+        from benchlay.checks import Context, Run, limits_of
 
         runs = tuple(Run("escape", state, True) for state in trace.scene.variants)
         named = tuple(identify(findings))
-        return Checked(trace, limits_of(trace.placed), named, runs, states)
+        return Checked(Context(trace, limits_of(trace.placed)), named, runs, states)
 
     return make
 
@@ -90,3 +90,25 @@ def test_a_full_review_tells_every_state(checked):
     assert [entry.state for entry in told.ledger] == ["as drawn", "a", "b"]
     assert [entry.emitted_W for entry in told.ledger] == [8e-3, 1e-3, 2e-3]
     assert told.verdict == "none"
+
+
+def test_stretches_are_worked_out_once_for_findings_and_drawings(monkeypatch):
+    """To find where a mirror could throw light out takes longer than all else of a review."""
+    from benchlay.coverage import mirrors
+
+    text = BENCH + (
+        "enclosure:\n  panels:\n    south: {from: [0, 0], to: [800, 0]}\n"
+        "    north: {from: [800, 400], to: [0, 400]}\n"
+    )
+    asked = []
+    find = mirrors.stretches
+
+    def counted(enclosed, gap, leg):
+        asked.append((enclosed.layout is not None, gap.key, leg))
+        return find(enclosed, gap, leg)
+
+    monkeypatch.setattr(mirrors, "stretches", counted)
+    reviewed, files = pipeline.review_files(text.encode(), "x.yaml", on=DAY, state="as drawn")
+    assert any(one.stretches for one in reviewed.findings)
+    assert any(name.startswith("plan") for name in files)
+    assert len(asked) == len(set(asked)) > 0

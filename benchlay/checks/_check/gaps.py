@@ -36,6 +36,14 @@ class Thrown(NamedTuple):
     glass: str | None = None
 
 
+class Stretch(NamedTuple):
+    """A part of a leg that sees a gap, from where to where along it, mm."""
+
+    of: Inside
+    from_mm: float
+    to_mm: float
+
+
 class Gaps:
     """What is open in each state; worked out when first asked for."""
 
@@ -43,6 +51,8 @@ class Gaps:
         self._context = context
         self._known: dict[int, _Open] = {}
         self._fillings: dict[int, dict[str, str]] = {}
+        self._among: dict[int, Enclosed] = {}
+        self._stretches: dict[tuple[int, object], tuple[Stretch, ...]] = {}
 
     def of(self, variant: int) -> _Open:
         """Return the enclosure of a state (None without one) and its gaps."""
@@ -114,11 +124,30 @@ class Gaps:
         """Return the enclosure of a state with the bodies on the bench; its sides if roofless."""
         from benchlay.coverage.mirrors import among_bodies, upright_only
 
-        enclosed, _ = self.of(variant)
-        assert enclosed is not None
-        trace = self._context.trace
-        state = trace.placed.states[variant]
-        return among_bodies(upright_only(enclosed), state, trace.scene, variant)
+        if variant not in self._among:
+            enclosed, _ = self.of(variant)
+            assert enclosed is not None
+            trace = self._context.trace
+            state = trace.placed.states[variant]
+            self._among[variant] = among_bodies(upright_only(enclosed), state, trace.scene, variant)
+        return self._among[variant]
+
+    def stretches(self, variant: int, one: Thrown) -> tuple[Stretch, ...]:
+        """Return from where to where a mirror on each leg could throw light out through a gap.
+
+        Findings and plans ask for the same, and it takes longer than all else about a gap.
+        """
+        from benchlay.coverage.mirrors import stretches
+
+        key = (variant, one.gap.key)
+        if key not in self._stretches:
+            among = self.among_bodies(variant)
+            self._stretches[key] = tuple(
+                Stretch(leg, start, end)
+                for leg in one.legs
+                for start, end in stretches(among, one.gap, leg.leg)
+            )
+        return self._stretches[key]
 
     def astray(self, variant: int) -> list[Astray]:
         """Return the places of a state that hazardous light comes to, the strongest first."""

@@ -8,6 +8,7 @@ from math import degrees
 
 import shapely
 
+from benchlay.checks import Context
 from benchlay.faults import Fan, Review, fans_of
 from benchlay.sheets.contents import Picture, Zone, ZoneWords
 from benchlay.sheets.drafting.picture import plan_picture, title_fields
@@ -24,13 +25,19 @@ _WORDS = ZoneWords(
 
 
 def faults_picture(
-    trace: Trace, zones: Zones, review: Review, *, variant: int = 0, sha256: str = ""
+    trace: Trace,
+    zones: Zones,
+    review: Review,
+    *,
+    variant: int = 0,
+    sha256: str = "",
+    context: Context | None = None,
 ) -> Picture | None:
     """Return what the plan of faults shows; None where no fault sends light out."""
     fans = fans_of(review.faults)
     if not fans:
         return None
-    plain = plan_picture(trace, zones, variant=variant, sha256=sha256)
+    plain = plan_picture(trace, zones, variant=variant, sha256=sha256, context=context)
     names = trace.scene.variants
     layout = trace.placed.states[variant].layout
     return plain._replace(

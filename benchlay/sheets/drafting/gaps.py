@@ -4,16 +4,14 @@ from __future__ import annotations
 
 from typing import TypeAlias
 
-from benchlay.checks import Context, limits_of
+from benchlay.checks import Context
 from benchlay.coverage.enclosed import Enclosed
 from benchlay.coverage.gaps import OPENING, SHEET, Gap, windows
-from benchlay.coverage.mirrors import stretches
 from benchlay.coverage.places import Astray, sees
 from benchlay.named import NamedTuple
 from benchlay.sheets.contents import GapMark
 from benchlay.sheets.layers import wavelength_words
 from benchlay.sheets.primitives import Point
-from benchlay.tracing.trace import Trace
 from benchlay.zones.words import number, with_unit
 
 _Key: TypeAlias = tuple[str | None, str]
@@ -28,9 +26,8 @@ class Opened(NamedTuple):
     notes: tuple[str, ...] = ()
 
 
-def opened(trace: Trace, variant: int, decimal: str) -> Opened:
+def opened(context: Context, variant: int, decimal: str) -> Opened:
     """Return the gaps that light could be sent or thrown to, and from which stretches of beams."""
-    context = Context(trace, limits_of(trace.placed))
     enclosed, gaps = context.gaps.of(variant)
     if enclosed is None:
         return Opened()
@@ -86,14 +83,9 @@ def _mark(name: str, gap: Gap, enclosed: Enclosed, decimal: str) -> GapMark:
 
 def _thrown(context: Context, variant: int) -> dict[_Key, list[_Part]]:
     """Return by gap the stretches of strong beams, in plan, that see it."""
-    thrown = context.gaps.thrown(variant)
-    if not thrown:
-        return {}
-    among = context.gaps.among_bodies(variant)
     found: dict[_Key, list[_Part]] = {}
-    for gap, legs, _ in thrown:
-        for one in legs:
-            for start, end in stretches(among, gap, one.leg):
-                part = (one.leg.at(start)[:2], one.leg.at(end)[:2])
-                found.setdefault(gap.key, []).append(part)
+    for thrown in context.gaps.thrown(variant):
+        for one, start, end in context.gaps.stretches(variant, thrown):
+            part = (one.leg.at(start)[:2], one.leg.at(end)[:2])
+            found.setdefault(thrown.gap.key, []).append(part)
     return found

@@ -42,6 +42,7 @@ def plan_picture(
     of_all_states: bool = True,
     sha256: str = "",
     findings: tuple[Mark, ...] = (),
+    context: Context | None = None,
 ) -> Picture:
     """Return what the plan of a state shows.
 
@@ -61,15 +62,17 @@ def plan_picture(
         Of the layout's bytes: which text the sheet was drawn from.
     findings : tuple of Mark
         Of the review.
+    context : Context, optional
+        What is known of the trace already.
     """
     state = trace.placed.states[variant]
     layout, drawing = state.layout, state.layout.drawing
     decimal = "." if drawing.decimal == "point" else ","
     limits = limits_of(trace)
     legs = legs_of(trace, limits, variant, decimal)
-    gaps = opened(trace, variant, decimal)
     sheet, scale, unmet = _wishes(layout)
-    context = Context(trace, limits_of_states(trace.placed))
+    context = context or Context(trace, limits_of_states(trace.placed))
+    gaps = opened(context, variant, decimal)
     (hazards,) = hazards_of(context, zones, (state.name,))
     return Picture(
         name="plan",
