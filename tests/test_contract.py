@@ -224,6 +224,7 @@ HAZARDS = keys(
             )
         ),
         "controlled_area_m2": NUMBER,
+        "controlled_area_outside_m2": maybe(NUMBER),
         "people": listed(
             keys({"name": TEXT, "eyes": TEXT, "at": PAIR, "inside": YES_NO,
                   "edge_m": maybe(NUMBER)})

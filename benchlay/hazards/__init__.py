@@ -17,7 +17,7 @@ from benchlay.hazards.emitted import sources_of
 from benchlay.hazards.eyewear import eyewear
 from benchlay.hazards.matt import struck_in, viewing
 from benchlay.hazards.model import StateHazards
-from benchlay.hazards.places import places_of
+from benchlay.hazards.places import enclosed_area, places_of
 from benchlay.hazards.reach import reach_of
 from benchlay.hazards.signs import signs_of
 from benchlay.zones import LimitTable, Zones, controlled_areas, limits_of
@@ -50,7 +50,7 @@ def _of_state(context: Context, limits: LimitTable, zones: Zones, variant: int) 
     reach = reach_of(context, variant)
     struck = struck_in(context, limits, variant)
     areas = (area for area in controlled_areas(zones) if area.state == state.name)
-    places = places_of(state.layout, areas)
+    places = places_of(state.layout, areas, enclosed_area(state.layout))
     left_out = (words for words in zones.not_computed if f"(state {state.name})" in words)
     return StateHazards(
         state=state.name,
@@ -62,6 +62,7 @@ def _of_state(context: Context, limits: LimitTable, zones: Zones, variant: int) 
         eyewear=eyewear(context, reach, struck),
         diffuse=viewing(struck),
         controlled_area_m2=places.area_m2,
+        controlled_area_outside_m2=places.outside_m2,
         people=places.people,
         passages=places.passages,
         holds=holds(context, variant),

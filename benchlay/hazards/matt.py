@@ -15,17 +15,15 @@ from benchlay.checks import Context
 from benchlay.exposure.apertures import circle_area_m2
 from benchlay.exposure.viewing import NEAREST_M
 from benchlay.hazards.model import Diffuse, Place
+from benchlay.hazards.places import ROUNDING_MM, beyond, enclosed_area
 from benchlay.hazards.reach import INSIDE
 from benchlay.named import NamedTuple
 from benchlay.zones import LimitTable
 from benchlay.zones.diffuse import Spot, spots
-from benchlay.zones.enclosure_line import enclosure_line
 from benchlay.zones.viewing import scattered_mm
 
 _MM_PER_M = 1e3
 _DECIMALS = 6  # of a metre
-# Zones end at the inner face of a panel but for the rounding of polygons, which is far below.
-_ROUNDING_MM = 0.05
 
 
 class Struck(NamedTuple):
@@ -60,8 +58,7 @@ def struck_in(context: Context, limits: LimitTable, variant: int) -> tuple[Struc
         Number of the state.
     """
     trace = context.trace
-    line = enclosure_line(context.layout(variant))
-    area = shapely.Polygon(line.corners) if line.enclosed else None
+    area = enclosed_area(context.layout(variant))
     return tuple(
         _struck(context, limits, spot, area)
         for wave in range(len(trace.scene.wavelengths_nm))
@@ -104,10 +101,10 @@ def met_at_m(one: Struck, where: str) -> float | None:
 def _outside_m(spot: Spot, enclosed: BaseGeometry | None) -> float | None:
     if enclosed is None:
         return NEAREST_M
-    beyond = shapely.difference(spot.area, shapely.buffer(enclosed, _ROUNDING_MM))
-    if beyond.is_empty:
+    outside = beyond(spot.area, enclosed)
+    if outside.is_empty:
         return None
-    nearest = float(shapely.distance(beyond, shapely.Point(spot.at[:2]))) - _ROUNDING_MM
+    nearest = float(shapely.distance(outside, shapely.Point(spot.at[:2]))) - ROUNDING_MM
     return max(NEAREST_M, nearest / _MM_PER_M)
 
 

@@ -156,8 +156,8 @@ class Eyewear(NamedTuple):
 class Diffuse(NamedTuple):
     """A matt surface that is struck: how far off the eye's limit is met again.
 
-    `distance_m` takes the size of the spot into account (an extended source) and is never
-    below 0.1 m; `point_source_m` does not.
+    `distance_m` takes the size of the spot into account (an extended source), which never
+    brings it below 0.1 m, where an eye focuses at the nearest; `point_source_m` does not.
     """
 
     surface: str
@@ -190,7 +190,11 @@ class Passage(NamedTuple):
 
 
 class StateHazards(NamedTuple):
-    """All that is said of one state; `holds` says for how long and under what conditions."""
+    """All that is said of one state; `holds` says for how long and under what conditions.
+
+    `controlled_area_outside_m2` is what of the controlled area lies beyond the enclosure's
+    line; None without an enclosure.
+    """
 
     state: str
     edition: str
@@ -201,6 +205,7 @@ class StateHazards(NamedTuple):
     eyewear: tuple[Eyewear, ...]
     diffuse: tuple[Diffuse, ...]
     controlled_area_m2: float
+    controlled_area_outside_m2: float | None
     people: tuple[Person, ...]
     passages: tuple[Passage, ...]
     holds: tuple[str, ...]

@@ -11,6 +11,7 @@ from benchlay.hazards.model import Passage, Person
 from benchlay.layout.layout import Layout
 from benchlay.named import NamedTuple
 from benchlay.zones import ControlledArea
+from benchlay.zones.enclosure_line import enclosure_line
 
 _MM_PER_M = 1e3
 _MM2_PER_M2 = 1e6
@@ -21,11 +22,29 @@ class Places(NamedTuple):
     """The controlled area, and who and what is in it."""
 
     area_m2: float
+    outside_m2: float | None  # of it, beyond the enclosure's line; None without one
     people: tuple[Person, ...]
     passages: tuple[Passage, ...]
 
 
-def places_of(layout: Layout, areas: Iterable[ControlledArea]) -> Places:
+# Zones end at the inner face of a panel but for the rounding of polygons, which is far below.
+ROUNDING_MM = 0.05
+
+
+def enclosed_area(layout: Layout) -> BaseGeometry | None:
+    """Return the area within the enclosure's line, mm; None without an enclosure."""
+    line = enclosure_line(layout)
+    return shapely.Polygon(line.corners) if line.enclosed else None
+
+
+def beyond(area: BaseGeometry, enclosed: BaseGeometry) -> BaseGeometry:
+    """Return what of an area is beyond the enclosure's line, by more than rounding."""
+    return shapely.difference(area, shapely.buffer(enclosed, ROUNDING_MM))
+
+
+def places_of(
+    layout: Layout, areas: Iterable[ControlledArea], enclosed: BaseGeometry | None
+) -> Places:
     """Return who is inside the controlled area of a state, and which doors it reaches.
 
     Parameters
@@ -34,11 +53,14 @@ def places_of(layout: Layout, areas: Iterable[ControlledArea]) -> Places:
         Of the state.
     areas : iterable of ControlledArea
         Of the state.
+    enclosed : geometry or None
+        From `enclosed_area`.
     """
     area = shapely.union_all([shapely.Polygon(a.polygon[0], a.polygon[1:]) for a in areas])
+    outside = None if enclosed is None else _square_metres(beyond(area, enclosed))
     room = layout.room
     if room is None:
-        return Places(_square_metres(area), (), ())
+        return Places(_square_metres(area), outside, (), ())
     people = tuple(
         _person(area, name, person.at_mm, person.eyes)
         for name, person in sorted(room.people.items())
@@ -51,7 +73,7 @@ def places_of(layout: Layout, areas: Iterable[ControlledArea]) -> Places:
         Passage(kind, name, _reached(area, shapely.LineString([start, end])))
         for kind, name, start, end in ways
     )
-    return Places(_square_metres(area), people, passages)
+    return Places(_square_metres(area), outside, people, passages)
 
 
 def _square_metres(area: BaseGeometry) -> float:

@@ -14,13 +14,15 @@ from types import MappingProxyType
 from benchlay.exposure import EDITION
 from benchlay.exposure.factors import is_visible
 from benchlay.hazards.classes import worst
-from benchlay.hazards.model import Sign, SourceHazard, StateHazards
+from benchlay.hazards.model import Reached, Sign, SourceHazard, StateHazards
+from benchlay.hazards.reach import OUTSIDE
 from benchlay.hazards.words import density_up
 from benchlay.layout.layout import Layout
 from benchlay.zones.words import with_unit
 
 _ORDER = ("1", "1M", "2", "2M", "3R", "3B", "4")
 _HIGHEST = "4"
+_WITHOUT_AREA = frozenset({"1", "2"})
 _WITH_APERTURE = frozenset({"3R", "3B", "4"})
 
 # What each class asks of people, in our own words.
@@ -66,15 +68,16 @@ def _at_sources(states: Sequence[StateHazards]) -> Iterator[Sign]:
     for source, lines in sorted(by_source.items()):
         strongest = _strongest(lines)
         name = worst([line.class_as_modelled for line in strongest])
+        light = _light(line.wavelength_nm for line in strongest)
         yield _sign(
             "source",
             f"on the housing of {source}",
             name,
-            (_light(strongest), _class_words(name), *_outputs(strongest), EDITION),
+            (light, _class_words(name), *_outputs(strongest), EDITION),
             (0.0 if name == "1" else _NEAR_MM, _LABEL_MM),
         )
         if name is None or name in _WITH_APERTURE:
-            words = ("laser light leaves here", _class_words(name))
+            words = (f"{light} leaves here", _class_words(name))
             yield _sign("aperture", f"at the exit of {source}", name, words, (0.0, _SMALL_MM))
 
 
@@ -88,31 +91,36 @@ def _at_panels(layout: Layout, states: Sequence[StateHazards]) -> Iterator[Sign]
         *(("panel", key, enclosure.panels[key].access) for key in sorted(enclosure.panels)),
         *(("lid", key, enclosure.lids[key].access) for key in sorted(enclosure.lids)),
     ]
-    lines = _strongest(line for state in states for line in state.sources)
+    # What crystals and the like make counts too, and only it where it is all there is.
+    light = _light_of([state.accessible.inside for state in states])
     for kind, key, access in sheets:
         if access == "none":
             continue
         opened = "when open"
         if access == "interlocked":
             opened += " and the interlock is defeated"
-        words = (f"{_light(lines)} {opened}", _class_words(name))
+        words = (f"{light} {opened}", _class_words(name))
         yield _sign(kind, f"on {kind} {key}", name, words, (_AT_PANEL_MM, _PANEL_MM))
 
 
 def _at_doors(layout: Layout, states: Sequence[StateHazards]) -> Iterator[Sign]:
-    """Yield the signs of the room's doors, where people can reach light above class 1."""
+    """Yield the signs of the room's doors, where people can reach light that asks for them.
+
+    Below class 1M that is where the limit is exceeded, for the time base of the state.
+    """
     room = layout.room
     name = worst([state.accessible.class_as_modelled for state in states])
-    if room is None or name == "1":
+    low = name in _WITHOUT_AREA and not any(_exceeded_in_reach(state) for state in states)
+    if room is None or low:
         return
-    lines = _strongest(line for state in states for line in state.sources)
+    light = _light_of([_counted(state) for state in states])
     for key in sorted(room.doors):
         reached = [
             state.state for state in states for p in state.passages if p.reached and p.name == key
         ]
         words = [
             "laser controlled area: no entry while the warning light is on",
-            f"{_light(lines)}, {_class_words(name)}",
+            f"{light}, {_class_words(name)}",
             *_eyewear(states),
         ]
         if reached:
@@ -147,8 +155,33 @@ def _strongest(lines: Iterable[SourceHazard]) -> list[SourceHazard]:
     return [found[key] for key in sorted(found)]
 
 
-def _light(lines: Sequence[SourceHazard]) -> str:
-    seen = {is_visible(line.wavelength_nm) for line in lines}
+def _counted(state: StateHazards) -> Reached:
+    """Return what people can reach."""
+    found = state.accessible
+    shut = found.counts == OUTSIDE and found.outside is not None
+    return found.outside if shut and found.outside is not None else found.inside
+
+
+def _exceeded_in_reach(state: StateHazards) -> bool:
+    outside = state.controlled_area_outside_m2
+    shut = state.accessible.counts == OUTSIDE and outside is not None
+    return ((outside or 0.0) if shut else state.controlled_area_m2) > 0.0
+
+
+def _light_of(reached: Sequence[Reached]) -> str:
+    """Return which light is meant: what is above class 1, or all of it where nothing is."""
+    found = [(one.wavelength_nm, one.class_as_modelled) for r in reached for one in r.lines]
+    found += [
+        (r.scattered.wavelength_nm, r.scattered.class_as_modelled)
+        for r in reached
+        if r.scattered is not None
+    ]
+    above = [nm for nm, name in found if name != "1"]
+    return _light(above or [nm for nm, _ in found])
+
+
+def _light(wavelengths_nm: Iterable[float]) -> str:
+    seen = {is_visible(nm) for nm in wavelengths_nm}
     if seen == {True}:
         return "laser light"
     return "invisible laser light" if seen == {False} else "visible and invisible laser light"

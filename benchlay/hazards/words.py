@@ -8,6 +8,7 @@ from __future__ import annotations
 import math
 from collections.abc import Iterator, Sequence
 
+from benchlay.exposure.viewing import NEAREST_M
 from benchlay.hazards.classes import WORST
 from benchlay.hazards.model import (
     Diffuse,
@@ -59,6 +60,15 @@ def metres(distance_m: float, decimal: str = ".") -> str:
     if 0.0 < distance_m < _SHORT_M:
         return f"{number(1e3 * distance_m, _DIGITS, decimal)} mm"
     return f"{number(distance_m, _DIGITS, decimal)} m"
+
+
+def counted(count: int, one: str, more: str = "") -> str:
+    """Write a number of things.
+
+    >>> counted(1, "surface"), counted(2, "surface"), counted(1, "beam", " more")
+    ('1 surface', '2 surfaces', '1 more beam')
+    """
+    return f"{count}{more} {one}{'' if count == 1 else 's'}"
 
 
 def power(power_w: float, decimal: str = ".") -> str:
@@ -173,8 +183,10 @@ def beam_of(row: Eyewear | Distance) -> str:
 
 
 def viewing(row: Diffuse, decimal: str = ".") -> str:
-    """Write the least distance from a matt surface."""
+    """Write the least distance from a matt surface: never less than an eye focuses at."""
     far = metres_up(row.distance_m, decimal)
+    if row.distance_m < NEAREST_M:
+        return f"{metres(NEAREST_M, decimal)} (limit met at {far})"
     if row.point_source_m <= row.distance_m:
         return far
     return f"{far} (as a point {metres_up(row.point_source_m, decimal)})"
@@ -198,17 +210,38 @@ def _passages(rows: Sequence[Passage]) -> Iterator[str]:
 
 
 def area(state: StateHazards, decimal: str = ".") -> str:
-    """Write how large the controlled area is in plan."""
-    return f"{number(state.controlled_area_m2, _DIGITS, decimal)} m²"
+    """Write how large the controlled area is in plan, and how much of it is outside a shut box."""
+    whole, outside = state.controlled_area_m2, state.controlled_area_outside_m2
+    words = f"{number(whole, _DIGITS, decimal)} m²"
+    if whole <= 0.0 or outside is None or state.accessible.counts == INSIDE:
+        return words
+    if outside <= 0.0:
+        return f"{words}, none of it outside the enclosure"
+    return f"{words}, {number(outside, _DIGITS, decimal)} m² of it outside the enclosure"
+
+
+def entry(state: StateHazards) -> str:
+    """Say who may be in the controlled area of a state."""
+    if state.controlled_area_m2 <= 0.0:
+        return "the limit is exceeded nowhere, as modelled"
+    if state.accessible.counts == INSIDE:
+        return "in it only with the eyewear of this state"
+    if state.controlled_area_outside_m2:
+        return "in it, outside, only with the eyewear for outside"
+    return "whoever opens the enclosure needs the eyewear for inside"
 
 
 def who(state: StateHazards, decimal: str = ".") -> list[str]:
     """Say who may stand where in a state."""
-    lines = [
-        f"controlled area {area(state, decimal)} in plan; inside it only with the eyewear of this "
-        "state"
+    return [
+        f"controlled area in plan {area(state, decimal)}: {entry(state)}",
+        *others(state, decimal),
     ]
-    lines += [person(row, decimal) for row in state.people]
+
+
+def others(state: StateHazards, decimal: str = ".") -> list[str]:
+    """Say which places of people, doors and windows are in the controlled area."""
+    lines = [person(row, decimal) for row in state.people]
     lines += _passages(state.passages)
     if not state.people:
         lines.append("the layout names no places of people: nobody is known to be outside it")

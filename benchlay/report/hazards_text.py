@@ -65,7 +65,8 @@ def _distances(state: StateHazards) -> Iterator[str]:
             f"{words.distance_span(row)}; stopped at {words.stopped(row)}"
         )
     if len(state.distances) > _MOST:
-        yield f"and {len(state.distances) - _MOST} more beams in reach above the limit"
+        left = words.counted(len(state.distances) - _MOST, "beam", " more")
+        yield f"and {left} in reach above the limit"
 
 
 def _diffuse(state: StateHazards) -> Iterator[str]:
@@ -75,4 +76,5 @@ def _diffuse(state: StateHazards) -> Iterator[str]:
             f"look at it from {words.viewing(row)} or more"
         )
     if len(state.diffuse) > _MOST:
-        yield f"and {len(state.diffuse) - _MOST} more surfaces that scatter"
+        left = words.counted(len(state.diffuse) - _MOST, "surface", " more")
+        yield f"and {left} too bright from near by"

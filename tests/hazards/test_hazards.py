@@ -348,3 +348,52 @@ def test_light_that_a_wall_stops_is_not_met_outside_it():
         assert found.counts == "outside"
         assert found.class_as_modelled == "1", state
         assert found.outside.scattered is None
+
+
+DOUBLED = """
+bench: {size: [1000, 600], medium: vacuum}
+room:
+  outline: [[-1000, -1500], [3000, -1500], [3000, 2000], [-1000, 2000]]
+  doors: {corridor: {from: [3000, 0], to: [3000, 600]}}
+sources:
+  ir: {wavelength: 1064, power: 150 mW, beam: {waist_radius: 0.5}, at: [100, 300], heading: 0}
+elements:
+  X: {kind: converter, after: ir, distance: 200, diameter: 12, length: 5,
+      glass: {index: 1.65}, produces: [{wavelength: 532, share: 30 %}]}
+  S1: {kind: shutter, after: ir, distance: 400, closed: yes}
+enclosure:
+  panels:
+    south: {from: [0, 0], to: [1000, 0]}
+    east: {from: [1000, 0], to: [1000, 600], access: interlocked}
+    north: {from: [1000, 600], to: [0, 600]}
+    west: {from: [0, 600], to: [0, 0]}
+  lids:
+    top: {height: 300, outline: [[0, 0], [1000, 0], [1000, 600], [0, 600]]}
+"""
+
+
+def test_labels_name_light_that_is_made_and_light_that_nobody_sees():
+    source, aperture, panel = review(DOUBLED).signs
+    assert source.words[0] == "invisible laser light"
+    assert aperture.words[0] == "invisible laser light leaves here"
+    # 532 nm is made within: 45 mW, above class 1.
+    assert panel.words[0].startswith("visible and invisible laser light when open")
+
+
+def test_a_door_has_a_sign_only_where_light_in_reach_asks_for_it():
+    assert [s.kind for s in review(DOUBLED).signs] == ["source", "aperture", "panel"]
+    opened = "states: {open: {enclosure.panels.east.open: yes}}\n"
+    assert review(DOUBLED + opened).signs[-1].kind == "door"
+    # 0.9 mW in the open: class 2, and the limit of 0.25 s (0.98 mW) is not exceeded.
+    pilot = BOX.replace("150 mW", "0.9 mW")
+    assert "door" in [s.kind for s in review(pilot).signs]
+    assert "door" not in [s.kind for s in review(pilot + "limits: {time_base: 0.25 s}\n").signs]
+
+
+def test_how_much_of_the_controlled_area_is_outside_a_shut_box():
+    shut = hazards(BOX)["as drawn"]
+    assert shut.controlled_area_m2 > 0.0
+    assert shut.controlled_area_outside_m2 == 0.0
+    leak = hazards(LEAK)["as drawn"]
+    assert 0.0 < leak.controlled_area_outside_m2 < leak.controlled_area_m2
+    assert hazards(OPEN)["as drawn"].controlled_area_outside_m2 is None

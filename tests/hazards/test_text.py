@@ -18,8 +18,8 @@ hazards in as drawn (IEC 60825-1:2014)
   inside: within the limit of class 3B as modelled; the worst: 532 nm from green
   eyewear inside, panels open, 532 nm: OD 2.6, D LB5; worst: green itself
   eyewear outside, 532 nm: limit not exceeded as modelled
-  scattered from S1, 532 nm: look at it from 21.9 mm or more
-  controlled area … m² in plan; inside it only with the eyewear of this state
+  scattered from S1, 532 nm: look at it from 0.1 m (limit met at 21.9 mm) or more
+  controlled area in plan … m², none of it outside the enclosure: whoever opens the enclosure needs the eyewear for inside
   desk (seated): outside the controlled area, … m from its edge
   path (standing): outside the controlled area, … m from its edge
   not reached by it: door corridor
@@ -31,7 +31,7 @@ hazards in alignment (IEC 60825-1:2014)
   outside the enclosure: no light that was followed gets there: within the limit of class 1 as modelled
   eyewear inside, panels open, 532 nm: limit not exceeded as modelled
   eyewear outside, 532 nm: limit not exceeded as modelled
-  controlled area … m² in plan; inside it only with the eyewear of this state
+  controlled area in plan … m²: the limit is exceeded nowhere, as modelled
   desk (seated): outside the controlled area
   path (standing): outside the controlled area
   not reached by it: door corridor
@@ -45,8 +45,8 @@ hazards in service (IEC 60825-1:2014)
   eyewear outside, 532 nm: OD 2.6, D LB5; worst: S1.front, beam 1
   beam in reach, 532 nm from S1.front, beam 1: 0 m to 288 m (far-field formula 289 m); stopped at 2.5 m, a wall of the room
   beam in reach, 532 nm from green itself: 0 m to 289 m (far-field formula 289 m); stopped at 0.4 m, 'S1'
-  scattered from wall, 532 nm: look at it from 69.1 mm or more
-  controlled area … m² in plan; inside it only with the eyewear of this state
+  scattered from wall, 532 nm: look at it from 0.1 m (limit met at 69.1 mm) or more
+  controlled area in plan … m²: in it only with the eyewear of this state
   desk (seated): outside the controlled area, … m from its edge
   path (standing): INSIDE the controlled area, … mm from its edge
   door corridor: REACHED by the controlled area

@@ -169,3 +169,9 @@ def test_a_review_of_one_state_has_the_sheet_of_that_state():
     assert "panel east is open" in told
     assert "0.3 mW" not in told  # of state alignment
     assert "INSIDE the controlled area" in told
+
+
+def test_one_surface_is_one_surface():
+    said = words(pages(BOX))
+    assert "1 surface" in said
+    assert "1 surfaces" not in said

@@ -164,8 +164,7 @@ _WHO = _columns(("State", 28.0), ("Controlled area", 27.0), ("Who may stand wher
 def _who(states: Sequence[StateHazards], decimal: str) -> Block:
     found = []
     for state in states:
-        _, *others = words.who(state, decimal)
-        lines = ["inside it only with the eyewear of this state", *others]
+        lines = [words.entry(state), *words.others(state, decimal)]
         found.append([(words.area(state, decimal), "; ".join(lines))])
     heading = "Who may stand where"
     return Block(Table(heading, _WHO, _merged(states, found), _WHERE, most_lines=_LINES))
@@ -259,7 +258,7 @@ def _diffuse_rows(state: StateHazards, decimal: str) -> Iterator[_Row]:
     near = len(state.diffuse) - len(far)
     if near:
         yield (
-            "all others" if far else f"{near} surfaces",
+            "all others" if far else words.counted(near, "surface"),
             "-",
             "-",
             words.metres(NEAREST_M, decimal),
