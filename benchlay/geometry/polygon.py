@@ -66,6 +66,18 @@ def simple(corners: Polygon) -> bool:
     return not any(_cross(*sides[i], *sides[j]) for i, j in apart)
 
 
+def holds(corners: Polygon, point: Point) -> bool:
+    """Whether a point lies in a simple outline or on it (a ray to the right crosses it oddly)."""
+    inside = False
+    for a, b in zip(corners, corners[1:] + corners[:1], strict=True):
+        side = _turn(a, b, point)
+        if side == 0 and _between(a, b, point):
+            return True
+        if (a[1] > point[1]) != (b[1] > point[1]):
+            inside ^= (side > 0) == (b[1] > a[1])
+    return inside
+
+
 def is_convex(corners: Polygon) -> bool:
     """Whether a simple anticlockwise outline has no reflex corner (flat ones may be)."""
     count = len(corners)

@@ -13,7 +13,9 @@ from benchlay.layout._forms import LENGTH, POSITIVE
 from benchlay.named import NamedTuple
 
 _M2 = Quantity(Dimension.RATIO, at_least=1.0, at_most=1e6)
-_DIVERGENCE = Quantity(Dimension.ANGLE, above=0.0, below=pi / 2)
+# Beyond a quarter turn in full no beam is paraxial, and its moments say nothing.
+_WIDEST_RAD = pi / 2
+_DIVERGENCE = Quantity(Dimension.ANGLE, above=0.0, below=_WIDEST_RAD)
 # Quoted figures have two or three digits: a quotient a little under 1 is their rounding.
 _LEAST_M2 = 0.99
 _NM_IN_MM = 1e-6
@@ -132,8 +134,30 @@ class BeamShape(Record):
         w_h, w_v = scale * (self.radius_h_mm or 0.0), scale * (self.radius_v_mm or 0.0)
         return Waists(w_h, w_v, self.ahead_h_mm, self.ahead_v_mm, self.m2_h, self.m2_v)
 
+    def _refuse_specks(self, wavelength_nm: float, reader: Reader) -> None:
+        """Refuse waists from which light would spread over more than a quarter turn.
+
+        The full divergence from a waist w is 4 M² λ / (π d) with d = 2 w (ISO 11146-1).
+        """
+        radii = (
+            ("waist_radius", self.radius_mm, self.m2),
+            ("waist_radius_h", self.radius_h_mm, self.m2_h),
+            ("waist_radius_v", self.radius_v_mm, self.m2_v),
+        )
+        for name, radius, m2 in radii:
+            least = 2.0 * m2 * wavelength_nm * _NM_IN_MM / (pi * _WIDEST_RAD * self.to_1_e2)
+            if radius is not None and radius <= least:
+                reader.complain(
+                    self.spans[name],
+                    f"from a waist of {radius:.3g} mm light of {wavelength_nm:g} nm would spread "
+                    "over more than 90°",
+                    expected=f"a radius above {least:.3g} mm for this wavelength and M²",
+                    remedy="check the unit: a bare number is in mm",
+                )
+
     def check_line(self, wavelength_nm: float, reader: Reader) -> None:
-        """Refuse a beam that diverges less than light of this wavelength can."""
+        """Refuse a beam that diverges less than light of this wavelength can, or too much."""
+        self._refuse_specks(wavelength_nm, reader)
         m2 = self.measured_m2(wavelength_nm)
         if m2 is None or m2 >= _LEAST_M2:
             return

@@ -14,6 +14,11 @@ from benchlay.layout._forms import NOT_NEGATIVE, OUTLINE, POINT, POSITIVE
 SURFACE_HEIGHT_MM = 900.0  # common practice: a bench to stand at
 BEAM_HEIGHT_MM = 100.0  # common practice: the height most posts are made for
 
+# Twenty times the holes of the largest bench in the trade (5 m x 1.5 m, a hole every 25 mm):
+# more is a slip in the pitch, and would take minutes to draw.
+_MOST_HOLES = 250_000
+_ROUNDING_MM = 1e-6
+
 
 class Holes(Record):
     """The grid of mounting holes."""
@@ -71,8 +76,10 @@ class Bench(Record):
         return ((0.0, 0.0), (width, 0.0), (width, depth), (0.0, depth))
 
     def after_read(self, reader: Reader) -> None:
-        """Ask for size or outline, and only one of them."""
+        """Ask for size or outline, and only one of them, and for holes that the bench can have."""
         if (self.size_mm is None) != (self.outline_mm is None):
+            if self.holes is not None:
+                self._check_holes(self.holes, reader)
             return
         both = self.size_mm is not None
         reader.complain(
@@ -81,3 +88,25 @@ class Bench(Record):
             expected="either 'size' or 'outline'",
             remedy="remove one of the two" if both else "add 'size: [1500, 900]', x by y",
         )
+
+    def _check_holes(self, holes: Holes, reader: Reader) -> None:
+        xs, ys = zip(*self.outline, strict=True)
+        low, high = (min(xs), min(ys)), (max(xs), max(ys))
+        count = (high[0] - low[0]) / holes.pitch_mm * (high[1] - low[1]) / holes.pitch_mm
+        if count > _MOST_HOLES:
+            reader.complain(
+                holes.spans["pitch"],
+                f"a hole every {holes.pitch_mm:g} mm makes {count:.3g} holes",
+                expected=f"at most {_MOST_HOLES} holes in a bench",
+                remedy="check the unit of the pitch (a bare number is in mm), or leave 'holes' out",
+            )
+        if not all(
+            a - _ROUNDING_MM <= c <= b + _ROUNDING_MM
+            for a, b, c in zip(low, high, holes.first_mm, strict=True)
+        ):
+            reader.complain(
+                holes.spans["first"],
+                "the first hole is not on the bench",
+                expected=f"a point from {list(low)} to {list(high)}",
+                remedy="give the hole that is nearest to the bench's near left corner",
+            )

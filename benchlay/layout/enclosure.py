@@ -16,6 +16,8 @@ MATERIAL = RefForm("a material")
 # Ends of openings may coincide with edges; decimal lengths that should do so are apart by
 # rounding, which is below 1e-9 mm.
 _ROUNDING_MM = 1e-6
+# A rivet every 10 mm along ten metres: a longer row is a slip in the pitch.
+_MOST_IN_A_ROW = 1000
 
 
 class Opening(Record):
@@ -109,6 +111,16 @@ class Fix(Record):
         meaning="distance from the edge (the free one of a flange), and the least from its ends",
     )
 
+    def after_read(self, reader: Reader) -> None:
+        """Refuse holes that run into one another."""
+        if self.pitch_mm <= self.hole_mm:
+            reader.complain(
+                self.spans["pitch"],
+                f"holes of {self.hole_mm:g} mm every {self.pitch_mm:g} mm run into one another",
+                expected=f"a pitch above {self.hole_mm:g} mm",
+                remedy="make the pitch larger, or the holes smaller",
+            )
+
 
 class Fold(Record):
     """The flange along a panel's lower edge, and along each end that is folded."""
@@ -165,13 +177,21 @@ class Panel(Record):
         return (y / hypot(x, y), -x / hypot(x, y))
 
     def after_read(self, reader: Reader) -> None:
-        """Refuse a panel without length."""
+        """Refuse a panel without length, and rows of holes without end."""
         if self.from_mm == self.to_mm:
             reader.complain(
                 self.spans["to"],
                 "the panel starts and ends in the same point",
                 expected="two different points",
                 remedy="move one of the two",
+            )
+        elif self.fix is not None and self.length_mm > _MOST_IN_A_ROW * self.fix.pitch_mm:
+            reader.complain(
+                self.fix.spans["pitch"],
+                f"a hole every {self.fix.pitch_mm:g} mm makes "
+                f"{self.length_mm / self.fix.pitch_mm:.0f} holes in a row",
+                expected=f"at most {_MOST_IN_A_ROW} holes in a row",
+                remedy="make the pitch larger; a bare number is in mm",
             )
 
 

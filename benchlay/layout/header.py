@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from typing import Any
 
+from benchlay.document.form import Reader
 from benchlay.document.forms import Deferred, Entries, ListOf, RecordForm, Table, Text
 from benchlay.document.record import Record, key
 from benchlay.layout.accept import Accept
@@ -73,3 +74,10 @@ class Header(Record):
         meaning="elements to be used several times, by name",
         not_yet="parts are not put together by this version",
     )
+
+    def after_read(self, reader: Reader) -> None:
+        """Hold the room against the bench."""
+        if self.room is not None:
+            reader.path += ["room"]
+            self.room.hold(self.bench, reader)
+            del reader.path[-1:]

@@ -5,8 +5,9 @@ from __future__ import annotations
 from benchlay.document.form import Reader
 from benchlay.document.forms import Choice, Entries, RecordForm, Table
 from benchlay.document.record import Record, key
-from benchlay.geometry.polygon import Point, Polygon
+from benchlay.geometry.polygon import Point, Polygon, holds
 from benchlay.layout._forms import NOT_NEGATIVE, OUTLINE, POINT, POSITIVE
+from benchlay.layout.bench import Bench
 
 
 class _InWall(Record):
@@ -80,3 +81,34 @@ class Room(Record):
     people: Entries[Person] = key(
         Table(RecordForm(Person)), default=Entries(), meaning="where people are, by name"
     )
+
+    def hold(self, bench: Bench, reader: Reader) -> None:
+        """Refuse a room in which the bench does not stand, or lower than its surface."""
+        if not any(holds(self.outline, corner) for corner in bench.outline):
+            reader.complain(
+                self.spans["outline"],
+                "no corner of the bench lies in the room",
+                expected="an outline round the bench, in the bench's own coordinates",
+                remedy="count the room's corners from the bench's near left corner",
+            )
+        if self.height_mm <= bench.surface_height_mm:
+            reader.complain(
+                self.span_of("height"),
+                f"the room is {self.height_mm:g} mm high, the bench's surface "
+                f"{bench.surface_height_mm:g} mm",
+                expected=f"a height above {bench.surface_height_mm:g} mm, from the floor",
+                remedy="give the height of the walls above the floor in mm",
+            )
+
+    def after_read(self, reader: Reader) -> None:
+        """Refuse people outside the walls: nothing would be said of what reaches them."""
+        for name, person in self.people.items():
+            if not holds(self.outline, person.at_mm):
+                reader.path += ["people", name]
+                reader.complain(
+                    person.spans["at"],
+                    "this place lies outside the room",
+                    expected="a point within the room's outline",
+                    remedy="correct the place, or draw the room round it",
+                )
+                del reader.path[-2:]

@@ -6,7 +6,7 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
-from benchlay.geometry.polygon import convex_pieces, is_convex, middle, signed_area, simple
+from benchlay.geometry.polygon import convex_pieces, holds, is_convex, middle, signed_area, simple
 
 SQUARE = ((0.0, 0.0), (2.0, 0.0), (2.0, 2.0), (0.0, 2.0))
 ELL = ((0.0, 0.0), (3.0, 0.0), (3.0, 1.0), (1.0, 1.0), (1.0, 3.0), (0.0, 3.0))
@@ -104,3 +104,28 @@ def _inside(point, corners):
         if (ay > y) != (by > y)
     ]
     return sum(crossed) % 2 == 1
+
+
+ANGLE = ((0.0, 0.0), (4.0, 0.0), (4.0, 1.0), (1.0, 1.0), (1.0, 4.0), (0.0, 4.0))
+
+
+@pytest.mark.parametrize("outline", [ANGLE, ANGLE[::-1]], ids=["anticlockwise", "clockwise"])
+def test_an_outline_holds_what_lies_in_it_and_on_it(outline):
+    for point in (
+        (0.5, 0.5),
+        (3.0, 0.5),
+        (0.5, 3.0),
+        (0.0, 0.0),
+        (2.0, 1.0),
+        (1.0, 1.0),
+        (0.0, 2.0),
+    ):
+        assert holds(outline, point)
+    for point in ((2.0, 2.0), (-1.0, 0.0), (5.0, 1.0), (-1.0, 4.0), (2.0, 4.0), (0.5, 5.0)):
+        assert not holds(outline, point)
+
+
+@given(st.floats(-5.0, 5.0), st.floats(-5.0, 5.0))
+def test_a_square_holds_what_its_bounds_do(x, y):
+    square = ((-1.0, -2.0), (3.0, -2.0), (3.0, 2.0), (-1.0, 2.0))
+    assert holds(square, (x, y)) == (-1.0 <= x <= 3.0 and -2.0 <= y <= 2.0)

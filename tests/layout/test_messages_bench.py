@@ -72,6 +72,29 @@ CASES = [
         ],
         id="index",
     ),
+    pytest.param(
+        ("bench: {size: [1500, 900], holes: {pitch: 0.025, first: [25, 25]}}\n"),
+        [
+            (
+                "b.yaml:1:43: error: bench: a hole every 0.025 mm makes 2.16e+09 holes\n"
+                "  expected: at most 250000 holes in a bench\n"
+                "  to mend: check the unit of the pitch (a bare number is in mm), or leave "
+                "'holes' out"
+            ),
+        ],
+        id="too-many-holes",
+    ),
+    pytest.param(
+        ("bench: {size: [1500, 900], holes: {pitch: 25, first: [2500, 25]}}\n"),
+        [
+            (
+                "b.yaml:1:54: error: bench: the first hole is not on the bench\n"
+                "  expected: a point from [0.0, 0.0] to [1500.0, 900.0]\n"
+                "  to mend: give the hole that is nearest to the bench's near left corner"
+            ),
+        ],
+        id="first-hole-off-the-bench",
+    ),
 ]
 
 

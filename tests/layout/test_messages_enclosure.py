@@ -203,6 +203,38 @@ CASES = [
         ],
         id="panel-material",
     ),
+    pytest.param(
+        (
+            "bench: {size: [1500, 900]}\n"
+            "enclosure: {panels: {east: {from: [1500, 0], to: [1500, 900], fix: {hole: "
+            "5, pitch: 5, inset: 9}}}}\n"
+        ),
+        [
+            (
+                "b.yaml:2:85: error: enclosure.panels.east.fix: holes of 5 mm every 5 mm ru"
+                "n into one another\n"
+                "  expected: a pitch above 5 mm\n"
+                "  to mend: make the pitch larger, or the holes smaller"
+            ),
+        ],
+        id="holes-run-together",
+    ),
+    pytest.param(
+        (
+            "bench: {size: [1500, 900]}\n"
+            "enclosure: {panels: {east: {from: [1500, 0], to: [1500, 900], fix: {hole: "
+            "0.05, pitch: 0.15, inset: 9}}}}\n"
+        ),
+        [
+            (
+                "b.yaml:2:88: error: enclosure.panels.east: a hole every 0.15 mm makes 6000"
+                " holes in a row\n"
+                "  expected: at most 1000 holes in a row\n"
+                "  to mend: make the pitch larger; a bare number is in mm"
+            ),
+        ],
+        id="endless-row",
+    ),
 ]
 
 

@@ -49,6 +49,47 @@ CASES = [
         ],
         id="eyes",
     ),
+    pytest.param(
+        ("bench: {size: [1500, 900]}\nroom: {outline: [[5000, 0], [9000, 0], [9000, 900]]}\n"),
+        [
+            (
+                "b.yaml:2:17: error: room: no corner of the bench lies in the room\n"
+                "  expected: an outline round the bench, in the bench's own coordinates\n"
+                "  to mend: count the room's corners from the bench's near left corner"
+            ),
+        ],
+        id="bench-outside",
+    ),
+    pytest.param(
+        (
+            "bench: {size: [1500, 900]}\n"
+            "room: {outline: [[0, 0], [9000, 0], [9000, 900], [0, 900]], height: 2.7}\n"
+        ),
+        [
+            (
+                "b.yaml:2:69: error: room: the room is 2.7 mm high, the bench's surface 900"
+                " mm\n"
+                "  expected: a height above 900 mm, from the floor\n"
+                "  to mend: give the height of the walls above the floor in mm"
+            ),
+        ],
+        id="height-in-metres",
+    ),
+    pytest.param(
+        (
+            "bench: {size: [1500, 900]}\n"
+            "room: {outline: [[0, 0], [9000, 0], [9000, 900], [0, 900]], people: {p: {a"
+            "t: [100, 1000]}}}\n"
+        ),
+        [
+            (
+                "b.yaml:2:78: error: room.people.p: this place lies outside the room\n"
+                "  expected: a point within the room's outline\n"
+                "  to mend: correct the place, or draw the room round it"
+            ),
+        ],
+        id="people-outside",
+    ),
 ]
 
 

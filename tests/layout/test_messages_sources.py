@@ -320,6 +320,38 @@ CASES = [
         ],
         id="after",
     ),
+    pytest.param(
+        (
+            "bench: {size: [1500, 900]}\n"
+            "sources: {red: {wavelength: 633, power: 1 mW, beam: {waist_radius: 0.2 um,"
+            " m2: 1.1}, at: [1, 1], heading: 0}}\n"
+        ),
+        [
+            (
+                "b.yaml:2:68: error: sources.red: from a waist of 0.0002 mm light of 633 nm"
+                " would spread over more than 90°\n"
+                "  expected: a radius above 0.000282 mm for this wavelength and M²\n"
+                "  to mend: check the unit: a bare number is in mm"
+            ),
+        ],
+        id="waist-too-small",
+    ),
+    pytest.param(
+        (
+            "bench: {size: [1500, 900]}\n"
+            "sources: {red: {wavelength: 633, power: 1 mW, beam: {waist_radius_h: 0.5, "
+            "waist_radius_v: 0.5 nm}, at: [1, 1], heading: 0}}\n"
+        ),
+        [
+            (
+                "b.yaml:2:91: error: sources.red: from a waist of 5e-07 mm light of 633 nm "
+                "would spread over more than 90°\n"
+                "  expected: a radius above 0.000257 mm for this wavelength and M²\n"
+                "  to mend: check the unit: a bare number is in mm"
+            ),
+        ],
+        id="waist-too-small-upright",
+    ),
 ]
 
 
