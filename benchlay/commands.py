@@ -156,7 +156,7 @@ def _fault_status(result: FaultsResult, fail_on: str) -> Status:
 
 def run_draw(options: Namespace, ink: Ink) -> Outcome:
     """Write the drawings into the layout's folder."""
-    from benchlay.report.files import write_all
+    from benchlay.report.files import unwritable, write_all
 
     pipeline = _pipeline()
 
@@ -167,7 +167,10 @@ def run_draw(options: Namespace, ink: Ink) -> Outcome:
     if isinstance(drawn, LayoutErrors):
         return _errors(drawn, ink)
     (folder,) = _folders([options.layout], options.output)
-    written = write_all(folder, drawn)
+    try:
+        written = write_all(folder, drawn)
+    except OSError as error:
+        return Outcome(Status.WRONG, err=unwritable(folder, error))
     return Outcome(Status.NOTHING, "".join(f"{path}\n" for path in written))
 
 
@@ -232,7 +235,7 @@ def run_exposure(options: Namespace, _ink: Ink) -> Outcome:
 
 
 def _review_one(name: str, folder: Path, options: Namespace, ink: Ink) -> Outcome:
-    from benchlay.report.files import refusal, write_all
+    from benchlay.report.files import left_over, refusal, unwritable, write_all
     from benchlay.report.text import check_text
 
     pipeline = _pipeline()
@@ -248,11 +251,15 @@ def _review_one(name: str, folder: Path, options: Namespace, ink: Ink) -> Outcom
     if isinstance(result, LayoutErrors):
         return _errors(result, ink)
     reviewed, files = result
-    written = write_all(folder, files)
+    try:
+        written = write_all(folder, files)
+    except OSError as error:
+        return Outcome(Status.WRONG, err=unwritable(folder, error))
     text = check_text([reviewed], ink=ink)
     return Outcome(
         _status(reviewed, options.fail_on),
         f"{text}written: {len(written)} files in {folder}\n",
+        left_over(folder, written),
     )
 
 

@@ -197,6 +197,28 @@ def test_review_spares_a_folder_of_other_things(pipeline, layout, tmp_path, caps
     assert (tmp_path / "thesis" / "plan.svg").read_bytes() == b"<svg/>"
 
 
+@pytest.mark.parametrize("command", ["review", "draw"])
+def test_a_folder_that_cannot_be_written_is_a_wrong_command_line(
+    pipeline, layout, tmp_path, capsys, command
+):
+    (tmp_path / "taken").write_bytes(b"a file")
+    assert cli.run([command, layout("a.yaml", "clean"), "-o", "taken/here"]) == 2
+    captured = capsys.readouterr()
+    assert captured.out == ""
+    assert "taken/here cannot be written: not a directory" in captured.err
+    assert "\n  to mend: choose another folder" in captured.err
+
+
+def test_a_review_names_what_an_earlier_one_left(pipeline, layout, tmp_path, capsys):
+    name = layout("a.yaml", "clean")
+    assert cli.run(["review", name]) == 0
+    assert capsys.readouterr().err == ""
+    (tmp_path / "exports" / "a" / "cut-old.dxf").write_bytes(b"an old panel")
+    assert cli.run(["review", name]) == 0
+    assert "cut-old.dxf" in capsys.readouterr().err
+    assert (tmp_path / "exports" / "a" / "cut-old.dxf").exists()
+
+
 def test_two_layouts_may_not_share_a_folder(pipeline, layout, tmp_path, capsys):
     (tmp_path / "sub").mkdir()
     names = [layout("a.yaml", "clean"), layout("sub/a.yaml", "clean")]

@@ -88,7 +88,7 @@ def parse(text: str, file: str, problems: Problems) -> Node | None:
             Span(file, 1, 1),
             "the file is empty",
             expected="a table of keys",
-            remedy="write the layout into it, or start one with 'benchlay new NAME'",
+            remedy="write the layout into it; 'benchlay explain layout' says what there may be",
         )
     return builder.root
 

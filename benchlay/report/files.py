@@ -3,11 +3,13 @@
 from __future__ import annotations
 
 import json
-from collections.abc import Mapping
+from collections.abc import Collection, Mapping
 from pathlib import Path, PurePath
 
+from benchlay.report.words import tame
 from benchlay.writers.atomic import write
 
+_MOST_NAMED = 8
 RECORD = "findings.json"
 """The file by which a folder is known as an earlier review's."""
 
@@ -43,6 +45,36 @@ def _contents(folder: Path) -> str | None:
         return _owner(str(record["reviews"][0]["layout"]))
     except (OSError, ValueError, KeyError, IndexError, TypeError):
         return "other files"
+
+
+def unwritable(folder: Path, error: OSError) -> str:
+    """Say that a folder or a file in it cannot be written."""
+    why = (error.strerror or type(error).__name__).lower()
+    where = error.filename or folder
+    return (
+        f"benchlay: {where} cannot be written: {why}\n"
+        "  expected: a folder that may be written to, on a disk with room\n"
+        "  to mend: choose another folder with -o DIR\n"
+    )
+
+
+def left_over(folder: Path, written: Collection[Path]) -> str:
+    """Name the files of a folder that a review did not write; nothing where there are none.
+
+    A panel that has a new name since leaves its old drawings behind, and nothing on them says
+    that they are out of date. They may be somebody's own, so they are not taken away.
+    """
+    names = {path.name for path in written}
+    others = sorted(path.name for path in folder.iterdir() if path.name not in names)
+    if not others:
+        return ""
+    shown = ", ".join(tame(name) for name in others[:_MOST_NAMED])
+    more = len(others) - _MOST_NAMED
+    return (
+        f"benchlay: not of this review, but in {folder}: {shown}"
+        f"{f' and {more} more' if more > 0 else ''}\n"
+        "  to mend: remove what an earlier review left, before anybody works from it\n"
+    )
 
 
 def write_all(folder: Path, files: Mapping[str, bytes]) -> list[Path]:

@@ -107,7 +107,9 @@ def drawings(
         and not (planned.within and ending == "pdf")
         and not (sheet is None and planned.numbered and ending == "pdf")  # they are in the set
     }
-    return files | (_gathered(composed, whole=sheet is None) if form in (None, "pdf") else {})
+    if form in (None, "pdf"):
+        files |= _gathered(composed, whole=sheet is None)
+    return files or _not_in(trace.placed.base.layout, sheet, form)
 
 
 def _marks(judged: Sequence[Reported], state: str) -> tuple[Mark, ...]:
@@ -140,6 +142,13 @@ def _none(layout: Layout, sheet: str) -> Problem:
     what = f"the layout has nothing that a sheet {sheet!r} would show"
     expected = "a sheet of what is in the layout"
     return Problem(Span(layout.file, 1, 1), what, expected, "add it, or leave --sheet out")
+
+
+def _not_in(layout: Layout, sheet: str | None, form: str | None) -> Problem:
+    """Say that what was asked for is made, but not in the format asked for."""
+    what = f"sheet {sheet!r} is not written as {form}"
+    expected = "a format that this sheet is made in"
+    return Problem(Span(layout.file, 1, 1), what, expected, "leave --format out")
 
 
 def _too_large(layout: Layout, error: NothingFitsError) -> Problem:

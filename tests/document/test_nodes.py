@@ -97,7 +97,7 @@ EMPTY = (
     1,
     "the file is empty",
     "a table of keys",
-    "write the layout into it, or start one with 'benchlay new NAME'",
+    "write the layout into it; 'benchlay explain layout' says what there may be",
 )
 
 # text, what is read all the same, and the problems in full

@@ -4,7 +4,7 @@ import json
 
 import pytest
 
-from benchlay.report.files import refusal, write_all
+from benchlay.report.files import left_over, refusal, unwritable, write_all
 
 OWN = json.dumps({"benchlay": "0", "reviews": [{"layout": "somewhere/a.yaml"}]}).encode()
 
@@ -46,3 +46,29 @@ def test_files_are_written_by_name_and_listed(folder):
     assert [p.name for p in written] == ["beams.json", "plan.svg"]
     assert [p.read_bytes() for p in written] == [b"b", b"s"]
     assert sorted(p.name for p in folder.iterdir()) == ["beams.json", "plan.svg"]
+
+
+def test_what_an_earlier_review_left_is_named(folder):
+    write_all(folder, {"findings.json": OWN, "cut-old.dxf": b"d"})
+    written = write_all(folder, {"findings.json": OWN, "cut-new.dxf": b"d"})
+    told = left_over(folder, written)
+    assert "but in" in told
+    assert "cut-old.dxf\n" in told
+    assert "cut-new" not in told
+    (folder / "cut-old.dxf").unlink()
+    assert left_over(folder, written) == ""
+
+
+def test_of_many_files_a_few_are_named_and_all_counted(folder):
+    written = write_all(folder, {"findings.json": OWN})
+    write_all(folder, {f"note-{n:02}.txt": b"" for n in range(20)})
+    assert "note-07.txt and 12 more" in left_over(folder, written)
+
+
+def test_a_folder_that_cannot_be_made_is_told_with_its_reason(tmp_path):
+    (tmp_path / "a").write_bytes(b"")
+    with pytest.raises(OSError, match=r".") as refused:
+        write_all(tmp_path / "a" / "b", {"findings.json": OWN})
+    told = unwritable(tmp_path / "a" / "b", refused.value)
+    assert "b cannot be written: not a directory\n  expected: " in told
+    assert "\n  to mend: " in told

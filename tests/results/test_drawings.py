@@ -102,3 +102,10 @@ def test_what_fits_nowhere_is_a_problem_of_the_layout(traced):
 def test_a_kind_that_the_layout_has_nothing_for_is_a_problem(corner):
     problem = drawings(corner, sheet="room")
     assert problem.message == "the layout has nothing that a sheet 'room' would show"
+
+
+def test_a_format_in_which_a_sheet_is_not_made_is_a_problem(corner):
+    problem = drawings(corner, sheet="template", form="dxf")
+    assert problem.message == "sheet 'template' is not written as dxf"
+    assert problem.remedy == "leave --format out"
+    assert list(drawings(corner, sheet="template", form="pdf")) == ["template.pdf"]
