@@ -1,4 +1,4 @@
-"""Panels and lids that would close the way by which a beam leaves."""
+"""Panels, lids and covers that would close the way by which a beam leaves."""
 
 from __future__ import annotations
 
@@ -8,13 +8,18 @@ from math import ceil
 import numpy as np
 
 from benchlay.checks import Context
+from benchlay.coverage.blockers import Place, Window
+from benchlay.coverage.enclosed import windows_of
+from benchlay.coverage.labyrinth import SPACING_MM
 from benchlay.layout.layout import Layout
 from benchlay.optics import moments
 from benchlay.remedies.edits import Edit
 from benchlay.remedies.trials import Change, unused_name
+from benchlay.scene.surroundings import material_of
 from benchlay.zones.enclosure_line import EnclosureLine, Side, enclosure_line, leaving
 
 _RADII = 3.0  # of the beam that a panel overtops: all but 1e-7 of its light
+_OVERLAPS_MM = (30.0, 100.0)  # of a sheet before an opening: against light that comes aslant
 _STEP_MM = 10.0  # panels are cut to whole centimetres: common practice
 
 
@@ -36,6 +41,10 @@ def closings(context: Context, beam: int) -> Iterator[Change]:
         yield _panel(layout, found.side)
     else:
         yield from _taller(context, layout, beam, found.way_mm, found.side.panel)
+        z = float(start.position[beam, 2]) + found.way_mm * kz
+        yield from _covers(
+            layout, found.side.panel, (x + found.way_mm * kx, y + found.way_mm * ky, z)
+        )
         if kz > 0.0:
             yield _lid(layout, line)
 
@@ -72,6 +81,42 @@ def _taller(
     if z - room < low:
         words = f"panel '{name}' brought down to the bench stands in its way"
         yield Change("panel", words, (Edit(path, "from_height", "0"),))
+
+
+def _covers(layout: Layout, name: str, at: Place) -> Iterator[Change]:
+    """Give sheets before the opening that a beam leaves by: room for a cable, not for light."""
+    assert layout.enclosure is not None
+    panel = layout.enclosure.panels[name]
+    if panel.open:
+        return
+    for window in windows_of(layout.enclosure, layout, name, panel):
+        (ox, oy), (c, s) = window.origin, window.along
+        along = (at[0] - ox) * c + (at[1] - oy) * s
+        start, end, low, high = window.box
+        if start <= along <= end and low <= at[2] <= high:
+            for overlap in _OVERLAPS_MM:
+                yield _cover(layout, name, window, overlap)
+
+
+def _cover(layout: Layout, name: str, window: Window, overlap_mm: float) -> Change:
+    """Return a sheet inside of an opening, as far from it as a labyrinth's is."""
+    assert layout.enclosure is not None
+    panel = layout.enclosure.panels[name]
+    low, high = layout.enclosure.heights_mm(panel)
+    thickness = material_of(layout, layout.enclosure.material_of(panel)).thickness_mm
+    start = max(window.box[0] - overlap_mm, 0.0)
+    end = min(window.box[1] + overlap_mm, panel.length_mm)
+    top = min(high, _STEP_MM * ceil((window.box[3] + overlap_mm) / _STEP_MM))
+    away = -(SPACING_MM + thickness)  # `place` counts outwards
+    (ax, ay, _), (bx, by, _) = (window.place((along, 0.0), away) for along in (start, end))
+    cover = unused_name("cover", [*layout.enclosure.panels, *layout.enclosure.lids])
+    heights = f"from_height: {low:g}, to_height: {top:g}"
+    value = f"{{from: [{ax:g}, {ay:g}], to: [{bx:g}, {by:g}], {heights}}}"
+    words = (
+        f"a sheet {SPACING_MM:g} mm inside of '{window.name}' that overlaps it by "
+        f"{overlap_mm:g} mm stands in its way"
+    )
+    return Change("panel", words, (Edit(("enclosure", "panels"), cover, value),))
 
 
 def _lid(layout: Layout, line: EnclosureLine) -> Change:

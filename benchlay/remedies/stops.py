@@ -109,8 +109,10 @@ def _stop(
             return None
         body = f", size: [{width:g}, {height:g}]"
         words = f"a screen {width:g} by {height:g} mm at [{x:g}, {y:g}, {z:g}]"
-        if not steep:
-            words += ", standing on the bench," if height == 2.0 * z else ""
+        if steep:
+            words += ", held from the side at that height,"
+        elif height == 2.0 * z:
+            words += ", standing on the bench,"
     value = f"{{kind: {kind}, {pose}{body}}}"
     words += f" ends the beam that leaves '{context.left_at(beam)}'"
     return Change(kind, words, (Edit(("elements",), name, value),))

@@ -55,6 +55,15 @@ def in_sheet(panels):
 BENCHES = {
     "a ghost over the edge": HEAD + GHOST,
     "a beam over a panel": HEAD + UPWARDS + in_sheet(PANELS + EAST),
+    "a beam through an opening": HEAD
+    + "elements:\n  T1: {kind: target, at: [400, 350], facing: 0}\n"
+    + in_sheet(
+        PANELS
+        + EAST.replace(
+            "400]}",
+            "400], openings: {port: {along: 150, width: 100, from_height: 60, to_height: 140}}}",
+        )
+    ),
     "a side without panel": HEAD
     + "elements:\n  T1: {kind: target, at: [400, 350], facing: 0}\n"
     + in_sheet(PANELS),
@@ -103,6 +112,7 @@ def test_the_sorts_that_fit_the_fault_are_offered(bench):
     expected = {
         "a ghost over the edge": {"screen", "coating"},
         "a beam over a panel": {"screen", "panel"},
+        "a beam through an opening": {"screen", "panel"},
         "a side without panel": {"screen", "panel"},
         "a window square to the beam": {"coating", "tilt"},
     }[name]
