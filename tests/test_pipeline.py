@@ -284,7 +284,8 @@ def test_a_plain_check_loads_no_library_that_it_does_not_need(files):
     code = (
         "import sys; from benchlay import cli\n"
         "cli.run(['check', 'clean.yaml'])\n"
-        "unwanted = {'ezdxf', 'svgwrite', 'json', 'hashlib', 'pathlib', 'shutil',\n"
+        "unwanted = {'ezdxf', 'svgwrite', 'pikepdf', 'fontTools', 'json',\n"
+        "            'hashlib', 'pathlib', 'shutil',\n"
         "            'numpy.ma', 'numpy.polynomial', 'scipy', 'dataclasses',\n"
         "            'benchlay.elements.cell', 'benchlay.document.describe',\n"
         "            'benchlay.exposure.trains', 'benchlay.optics.metals',\n"

@@ -4,72 +4,61 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 
-from benchlay.sheets.font import CAP_HEIGHT, NAME, UNITS_PER_EM, font, subset
-from benchlay.writers.pdf_file import PdfFile, Raw, array, dictionary, number
+from pikepdf import Array, Dictionary, Name, Object, Pdf, Stream
 
-_TAG = "BNCHLY+"  # says that the font is not whole
+from benchlay.sheets.font import CAP_HEIGHT, NAME, UNITS_PER_EM, font, subset
+
+_NAME = Name(f"/BNCHLY+{NAME}")  # six letters before the name say that the font is not whole
 _UPRIGHT_SYMBOLS = 4  # flags of a font with letters of its own numbering
 _MOST_AT_ONCE = 100  # letters in one list of a character map
-_THOUSAND = 1000 / UNITS_PER_EM  # PDF measures glyphs in thousandths of the em
 
 
-def add_font(file: PdfFile, letters: Mapping[int, str]) -> Raw:
+def add_font(file: Pdf, letters: Mapping[int, str]) -> Object:
     """Embed the glyphs that were used, by glyph the letter each stands for; return the font."""
     known = font()
+    descendant = Dictionary(
+        Type=Name.Font,
+        Subtype=Name.CIDFontType2,
+        BaseFont=_NAME,
+        CIDSystemInfo=Dictionary(Registry="Adobe", Ordering="Identity", Supplement=0),
+        FontDescriptor=file.make_indirect(_descriptor(file, letters)),
+        CIDToGIDMap=Name.Identity,
+        W=Array(
+            part for n in sorted({0, *letters}) for part in (n, [_thousandths(known.advances[n])])
+        ),
+    )
+    return file.make_indirect(
+        Dictionary(
+            Type=Name.Font,
+            Subtype=Name.Type0,
+            BaseFont=_NAME,
+            Encoding=Name("/Identity-H"),
+            DescendantFonts=[file.make_indirect(descendant)],
+            ToUnicode=Stream(file, _to_unicode(letters)),
+        )
+    )
+
+
+def _descriptor(file: Pdf, letters: Mapping[int, str]) -> Dictionary:
     program = subset(letters)
-    stream = file.add_stream(program, {"Length1": str(len(program))})
-    box = [number(_THOUSAND * v) for v in _box()]
-    descriptor = file.add(
-        dictionary(
-            {
-                "Type": "/FontDescriptor",
-                "FontName": f"/{_TAG}{NAME}",
-                "Flags": str(_UPRIGHT_SYMBOLS),
-                "FontBBox": array(box),
-                "ItalicAngle": "0",
-                "Ascent": box[3],
-                "Descent": box[1],
-                "CapHeight": number(_THOUSAND * CAP_HEIGHT),
-                "StemV": "80",
-                "FontFile2": stream,
-            }
-        )
-    )
-    widths = [f"{n} [{number(_THOUSAND * known.advances[n])}]" for n in sorted({0, *letters})]
-    descendant = file.add(
-        dictionary(
-            {
-                "Type": "/Font",
-                "Subtype": "/CIDFontType2",
-                "BaseFont": f"/{_TAG}{NAME}",
-                "CIDSystemInfo": "<</Registry (Adobe) /Ordering (Identity) /Supplement 0>>",
-                "FontDescriptor": descriptor,
-                "CIDToGIDMap": "/Identity",
-                "W": array(widths),
-            }
-        )
-    )
-    return file.add(
-        dictionary(
-            {
-                "Type": "/Font",
-                "Subtype": "/Type0",
-                "BaseFont": f"/{_TAG}{NAME}",
-                "Encoding": "/Identity-H",
-                "DescendantFonts": array([descendant]),
-                "ToUnicode": file.add_stream(_to_unicode(letters)),
-            }
-        )
+    box = [_thousandths(side) for side in font().box]
+    return Dictionary(
+        Type=Name.FontDescriptor,
+        FontName=_NAME,
+        Flags=_UPRIGHT_SYMBOLS,
+        FontBBox=box,
+        ItalicAngle=0,
+        Ascent=box[3],
+        Descent=box[1],
+        CapHeight=_thousandths(CAP_HEIGHT),
+        StemV=80,
+        FontFile2=Stream(file, program, Length1=len(program)),
     )
 
 
-def _box() -> tuple[int, int, int, int]:
-    """Return the box round all glyphs: four numbers of the font's table head."""
-    head = font().tables["head"]
-    low_x, low_y, high_x, high_y = (
-        int.from_bytes(head[at : at + 2], "big", signed=True) for at in (36, 38, 40, 42)
-    )
-    return low_x, low_y, high_x, high_y
+def _thousandths(units: int) -> float:
+    """Return a length of the font as PDF measures glyphs, in thousandths of the em."""
+    return round(1000 * units / UNITS_PER_EM, 4)
 
 
 def _to_unicode(letters: Mapping[int, str]) -> bytes:

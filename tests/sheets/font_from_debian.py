@@ -4,8 +4,7 @@
         /usr/share/fonts/truetype/dejavu/DejaVuSansCondensed.ttf benchlay/sheets/fonts
 
 The file comes from Debian's package fonts-dejavu-core, version 2.37. What is left out: letters
-of scripts that a title block does not need, hints for screens, kerning and ligatures. Needs
-fontTools, which is no part of benchlay.
+of scripts that a title block does not need, hints for screens, kerning and ligatures.
 """
 
 import sys
