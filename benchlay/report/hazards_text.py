@@ -14,9 +14,9 @@ _MOST = 4  # beams and surfaces a state; the rest is counted
 def hazard_lines(states: tuple[StateHazards, ...]) -> Iterator[str]:
     """Write the hazards of states."""
     for state in states:
-        yield ""
         yield f"hazards in {state.state} ({state.edition})"
         yield from (f"  {tame(line)}" for line in _lines(state))
+        yield ""
 
 
 def _lines(state: StateHazards) -> Iterator[str]:

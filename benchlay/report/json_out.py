@@ -7,8 +7,7 @@ from collections.abc import Mapping, Sequence
 from typing import TYPE_CHECKING, Any, TypeAlias
 
 from benchlay.document.problems import Problem
-from benchlay.exposure.cautions import CAUTIONS as EXPOSURE_CAUTIONS
-from benchlay.report.cautions import CAUTIONS
+from benchlay.report.cautions import CAUTIONS, IN_FULL
 from benchlay.report.details import Ledger, TraceResult
 from benchlay.report.matrix import matrix_of
 from benchlay.report.model import LayoutErrors, Review
@@ -26,7 +25,7 @@ def check_document(results: Sequence[Review | LayoutErrors], *, version: str) ->
     return {
         "benchlay": version,
         "reviews": [review_object(result) for result in results],
-        "cautions": [*CAUTIONS, *EXPOSURE_CAUTIONS],
+        "cautions": list(IN_FULL),
     }
 
 
@@ -74,7 +73,7 @@ def faults_document(result: FaultsResult | LayoutErrors, *, version: str) -> dic
         "benchlay": version,
         **written,
         "tolerance": None,
-        "cautions": [*CAUTIONS, *EXPOSURE_CAUTIONS],
+        "cautions": list(IN_FULL),
     }
 
 

@@ -9,7 +9,7 @@ from collections.abc import Iterator, Sequence
 from math import ceil, floor, log10
 
 from benchlay.document.problems import Problem
-from benchlay.report.cautions import CAUTIONS
+from benchlay.report.cautions import CAUTIONS, IN_FULL
 from benchlay.report.matrix import matrix_lines, matrix_of
 from benchlay.report.model import LayoutErrors, LimitUsed, Reported, Review
 from benchlay.report.numbers import shown
@@ -69,13 +69,13 @@ def _review_text(review: Review, ink: Ink) -> str:
     lines += _remedy_lines(review)
     lines += _fault_lines(review, ink)
     lines += matrix_lines(matrix_of(review))
-    lines += _not_evaluated(review)
-    lines += _limit_lines(review)
-    lines.append(verdict_line(review))
     if review.hazards:
         from benchlay.report.hazards_text import hazard_lines
 
         lines += hazard_lines(review.hazards)
+    lines += _not_evaluated(review)
+    lines += _limit_lines(review)
+    lines.append(verdict_line(review))
     return "\n".join(lines) + "\n"
 
 
@@ -190,9 +190,5 @@ def _power(limit: LimitUsed) -> str:
 
 def _cautions(*, of_exposure: bool) -> str:
     """Write what all of it must be read with, and what figures of exposure must besides."""
-    words: tuple[str, ...] = CAUTIONS
-    if of_exposure:
-        from benchlay.exposure.cautions import CAUTIONS as OF_EXPOSURE
-
-        words += OF_EXPOSURE
+    words = IN_FULL if of_exposure else CAUTIONS
     return "\n".join(f"caution: {caution}" for caution in words) + "\n"

@@ -36,6 +36,13 @@ def test_what_is_printed(printed, command):
     assert all(f"caution: {words}" in out for words in CAUTIONS)
 
 
+@pytest.mark.parametrize("command", ["check", "trace", "review", "faults"])
+def test_nothing_is_said_twice(printed, command):
+    lines = [x for x in printed(command, "x.yaml").splitlines() if x.startswith("caution: ")]
+    assert len(lines) == len(set(lines))
+    assert sum("laser safety officer" in line for line in lines) == 1
+
+
 def test_what_is_said_of_exposure(printed):
     out = printed("review", "x.yaml")
     assert all(f"caution: {words}" in out for words in OF_EXPOSURE)
