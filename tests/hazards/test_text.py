@@ -8,7 +8,7 @@ from judged import BOX, TWO, hazards, review
 
 from benchlay.exposure.cautions import CAUTIONS, DECIDING
 from benchlay.report.hazards_text import hazard_lines
-from benchlay.report.text import check_text
+from benchlay.report.text import check_text, verdict_line
 
 WHOLE = """\
 hazards in as drawn (IEC 60825-1:2014)
@@ -66,7 +66,7 @@ def test_the_hazards_of_a_bench_in_full():
 def test_they_stand_before_the_verdict_with_their_cautions():
     text = check_text([review(BOX)])
     assert WHOLE in without_areas(text)
-    assert text.index("hazards in as drawn") < text.index("x.yaml: verdict")
+    assert text.index("hazards in service") < text.index(verdict_line(review(BOX)))
     assert all(f"caution: {words}" in text for words in CAUTIONS)
 
 
