@@ -22,7 +22,10 @@ from benchlay.zones.surfaces import normal_left, normal_met
 _SAMPLES = 33
 _BETWEEN = np.linspace(0.0, 1.0, 17)  # of the way from one waist to the other
 _HALVINGS = 24  # of a stretch between two samples: to micrometres
-_STRAIGHT_MM = 0.05  # a strip's side is one line where it bends by less
+# A strip's side is one line where it bends by less than both, the latter of its width: its area is
+# then right to a part in a thousand.
+_STRAIGHT_MM = 0.05
+_STRAIGHT = 1e-3
 _SIDES = 64  # of a circle
 _MM_PER_M = 1e3
 
@@ -203,7 +206,8 @@ def _strip(points: Floats, half: Floats, ends: tuple[Floats | None, Floats | Non
     share = np.linspace(0.0, 1.0, len(half))
     chord = half[0] + share * (half[-1] - half[0])
     kept: Flags = np.ones(len(half), dtype=np.bool_)
-    if float(np.max(np.abs(chord - half))) < _STRAIGHT_MM:
+    bends = np.abs(chord - half)
+    if float(np.max(bends)) < min(_STRAIGHT_MM, _STRAIGHT * float(half.min())):
         kept[1:-1] = False
     points, half = points[kept], half[kept]
     cuts = []
