@@ -69,7 +69,6 @@ from benchlay.checks._check import (
 )
 from benchlay.findings import Finding, Severity
 from benchlay.named import NamedTuple
-from benchlay.optics.rays import dot
 from benchlay.scene.tables import PARTS, SINK, SINKS, Floats
 from benchlay.tracing.beams import SOLID
 from benchlay.tracing.front import EVENTS, OUTSIDE, REFLECTED
@@ -257,22 +256,9 @@ def _free_spot(context: Context, beam: int) -> Floats | None:
     near = min(length, _near_enough(context))
     for way in (0.5 * near, 0.75 * near, 0.9 * near, 0.25 * near):
         spot: Floats = start.position[beam] + way * start.direction[beam]
-        if _from_working_beams(context, spot, beam) >= _ROOM_MM:
+        if context.routes.apart(spot, beam) >= _ROOM_MM:
             return spot
     return None
-
-
-def _from_working_beams(context: Context, spot: Floats, beam: int) -> float:
-    """Return how far a place is from the nearest leg that a route needs in any state, mm."""
-    beams = context.trace.beams
-    rows = np.flatnonzero(context.routes.working)
-    rows = rows[rows != beam]
-    if not len(rows):
-        return float("inf")
-    away = spot - beams.start.position[rows]
-    along = np.clip(dot(away, beams.start.direction[rows]), 0.0, beams.length[rows])
-    off = away - along[:, None] * beams.start.direction[rows]
-    return float(np.sqrt(dot(off, off).min()))
 
 
 def _near_enough(context: Context) -> float:

@@ -11,6 +11,8 @@ from itertools import pairwise
 from math import hypot
 from typing import TypeAlias
 
+from benchlay.geometry.convex import left_turns
+
 Pair: TypeAlias = tuple[float, float]
 Convex: TypeAlias = list[Pair]
 
@@ -91,7 +93,7 @@ def hull(points: Iterable[Pair]) -> Convex:
     ordered = sorted(set(points))
     if len(ordered) < _CORNERS:
         return ordered
-    return _chain(ordered)[:-1] + _chain(ordered[::-1])[:-1]
+    return left_turns(ordered)[:-1] + left_turns(ordered[::-1])[:-1]
 
 
 def least_width(polygon: Sequence[Pair]) -> float:
@@ -127,15 +129,3 @@ def _sides(polygon: Sequence[Pair]) -> Iterable[tuple[float, float, float]]:
         if a or b:
             yield a, b, a * ax + b * ay
         ax, ay = bx, by
-
-
-def _chain(ordered: Sequence[Pair]) -> Convex:
-    chain: Convex = []
-    for x, y in ordered:
-        while len(chain) > 1:
-            (ax, ay), (bx, by) = chain[-2:]
-            if (bx - ax) * (y - ay) - (by - ay) * (x - ax) > 0.0:
-                break
-            chain.pop()
-        chain.append((x, y))
-    return chain

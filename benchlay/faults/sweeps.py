@@ -11,7 +11,6 @@ from __future__ import annotations
 from bisect import insort
 from collections.abc import Callable, Mapping, Sequence
 from itertools import pairwise
-from math import degrees
 
 from benchlay.faults.batches import Tracer, Variant
 from benchlay.faults.between import Change, Looked, Looker, moving
@@ -206,8 +205,3 @@ def _chosen(one: _Growing, a: Case, b: Case, shares: Sequence[float]) -> list[fl
 
 def _edges(change: Change) -> list[float]:
     return [change.before, change.after] if change.edge else []
-
-
-def degrees_text(setting_rad: float) -> float:
-    """Return a setting in degrees as it is told, to a thousandth."""
-    return round(degrees(setting_rad), 3) + 0.0

@@ -27,12 +27,12 @@ def hull(points: Corners) -> Corners:
     ordered = sorted({(x, y) for x, y in points.tolist()})
     if len(ordered) < 3:  # noqa: PLR2004 (a segment or a point)
         return np.array(ordered)
-    lower, upper = _chain(ordered), _chain(ordered[::-1])
+    lower, upper = left_turns(ordered), left_turns(ordered[::-1])
     return np.array(lower[:-1] + upper[:-1])
 
 
-def _chain(ordered: list[tuple[float, float]]) -> list[tuple[float, float]]:
-    """Return the corners of one side of the hull: those that turn to the left."""
+def left_turns(ordered: list[tuple[float, float]]) -> list[tuple[float, float]]:
+    """Return the corners of one side of the hull of points in order: those that turn left."""
     chain: list[tuple[float, float]] = []
     for x, y in ordered:
         while len(chain) > 1:

@@ -49,7 +49,7 @@ def _spots(context: Context, beam: int) -> list[tuple[Floats, float]]:
     origin, k = start.position[beam], start.direction[beam]
     over = _way_over_bench(context, beam)
     spots = [origin + share * over * k for share in _SHARES]
-    return [(spot, _from_other_beams(context, spot, beam)) for spot in spots]
+    return [(spot, context.routes.apart(spot, beam)) for spot in spots]
 
 
 def _way_over_bench(context: Context, beam: int) -> float:
@@ -68,19 +68,6 @@ def _way_over_bench(context: Context, beam: int) -> float:
             break
         good = way
     return good
-
-
-def _from_other_beams(context: Context, spot: Floats, beam: int) -> float:
-    """Return how far a place is from the nearest leg of a route in any state, mm."""
-    beams = context.trace.beams
-    rows = np.flatnonzero(context.routes.working)
-    rows = rows[rows != beam]
-    if not len(rows):
-        return float("inf")
-    away = spot - beams.start.position[rows]
-    along = np.clip(dot(away, beams.start.direction[rows]), 0.0, beams.length[rows])
-    off = away - along[:, None] * beams.start.direction[rows]
-    return float(np.sqrt(dot(off, off).min()))
 
 
 def _stop(

@@ -1,5 +1,6 @@
 """Routes that break at one place are told together; what stands in an opening may be dark."""
 
+import numpy as np
 import pytest
 
 from benchlay.checks import run_checks
@@ -95,3 +96,16 @@ def test_what_stands_in_an_opening_may_be_dark(make_context, place, dark):
     assert [f.element for f in findings] == dark
     for finding in findings:
         assert finding.message == "no beam reaches filter 'VW', in any state"
+
+
+def test_how_far_a_place_is_from_what_routes_need(make_context):
+    text = TWO.replace("  X: {kind: mirror, at: [200, 200]", "  X: {kind: mirror, at: [600, 300]")
+    context = make_context(HEAD + text)
+    leaves = context.trace.beams.start.position
+    (emitted,) = [n for n, at in enumerate(leaves.tolist()) if at[0] == 100.0]
+    beside = np.array([200.0, 230.0, 140.0])  # 30 beside the first leg and 40 above it
+    assert context.routes.apart(beside, -1) == pytest.approx(50.0, abs=1e-9)
+    # Without that leg the nearest is the one that leaves 'M1' at (400, 200).
+    assert context.routes.apart(beside, emitted) == pytest.approx(np.hypot(200.0, 40.0), abs=1.0)
+    behind = np.array([70.0, 200.0, 60.0])  # a leg ends where it ends
+    assert context.routes.apart(behind, -1) == pytest.approx(50.0, abs=1e-9)

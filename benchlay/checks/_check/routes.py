@@ -13,9 +13,10 @@ from functools import cached_property
 import numpy as np
 
 from benchlay.named import NamedTuple
+from benchlay.optics.rays import dot
 from benchlay.placing.placed import PlacedState
 from benchlay.placing.solve import POSE_KEYS
-from benchlay.scene.tables import Flags
+from benchlay.scene.tables import Flags, Floats
 from benchlay.tracing import Trace
 from benchlay.tracing.beams import FACE, HANDED, SOLID
 from benchlay.tracing.front import OUTSIDE
@@ -66,6 +67,21 @@ class Routes:
         """Which beams follow a route (N,)."""
         working: Flags = self._trace.beams.start.node >= 0
         return working
+
+    def apart(self, spot: Floats, beam: int) -> float:
+        """Return how far a place is from the nearest leg but one that a route needs, mm.
+
+        Legs of all states count: what is put on the bench stands there in every one.
+        """
+        beams = self._trace.beams
+        rows = np.flatnonzero(self.working)
+        rows = rows[rows != beam]
+        if not len(rows):
+            return float("inf")
+        away = spot - beams.start.position[rows]
+        along = np.clip(dot(away, beams.start.direction[rows]), 0.0, beams.length[rows])
+        off = away - along[:, None] * beams.start.direction[rows]
+        return float(np.sqrt(dot(off, off).min()))
 
     def wanted(self, beam: int) -> tuple[str, ...]:
         """Return the items that the routes of a working beam have next.
