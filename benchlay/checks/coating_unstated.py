@@ -61,7 +61,7 @@ from collections.abc import Iterator
 
 import numpy as np
 
-from benchlay.checks._check import Context, listed, power_text, wavelength_text
+from benchlay.checks._check import Context, exposure_words, listed, power_text, wavelength_text
 from benchlay.findings import Finding, Severity
 from benchlay.named import NamedTuple
 from benchlay.scene.tables import Ints, Mode
@@ -94,7 +94,7 @@ def check(context: Context, variant: int) -> Iterator[Finding]:
             owner = int(context.trace.scene.faces.owner[meeting.face])
             weak.setdefault(owner, []).append(meeting)
         else:
-            yield _finding(context, variant, meeting)
+            yield _finding(context, variant, meeting, limit_w)
     for _, meetings in sorted(weak.items()):
         yield _note(context, variant, meetings)
 
@@ -109,7 +109,7 @@ def _meetings(context: Context, variant: int) -> Iterator[_Meeting]:
         yield _Meeting(face, wave, met, float(beams.end_core[met].sum()))
 
 
-def _finding(context: Context, variant: int, meeting: _Meeting) -> Finding:
+def _finding(context: Context, variant: int, meeting: _Meeting, limit_w: float) -> Finding:
     scene, (face, wave, met, power) = context.trace.scene, meeting
     nm = float(scene.wavelengths_nm[wave])
     name = scene.elements[int(scene.faces.owner[face])]
@@ -120,7 +120,8 @@ def _finding(context: Context, variant: int, meeting: _Meeting) -> Finding:
         severity=SEVERITY,
         message=(
             f"the {side} of '{name}' says nothing of {wavelength_text(nm)}, and "
-            f"{power_text(power)} of it from '{context.source_of(int(met[0]))}' meets it; "
+            f"{power_text(power)} of it from '{context.source_of(int(met[0]))}' meets it "
+            f"(through one aperture: {exposure_words(context, int(met[0]), power)}); "
             + (
                 "its metal is not known there, and is assumed to send all back"
                 if film
@@ -141,6 +142,7 @@ def _finding(context: Context, variant: int, meeting: _Meeting) -> Finding:
         at=context.end_at(int(met[0])),
         span=context.span_of(name, variant),
         value=power,
+        limit=limit_w,
         unit="W",
         key=(nm, context.face_text(face)),
     )
@@ -160,7 +162,8 @@ def _note(context: Context, variant: int, meetings: list[_Meeting]) -> Finding:
         check=NAME,
         severity=Severity.NOTE,
         message=(
-            f"'{name}' says nothing of {waves}, of which at most {power_text(power)} meets a face; "
+            f"'{name}' says nothing of {waves}, of which at most {power_text(power)} meets a face, "
+            f"within the limit all together; "
             + ("metal is assumed to send all back" if film else "the bare material is assumed")
         ),
         expected=f"coatings that state their reflectance at {waves}, where it matters",

@@ -64,7 +64,7 @@ from math import fsum
 
 import numpy as np
 
-from benchlay.checks._check import Context, above, power_text, wavelength_text
+from benchlay.checks._check import Context, above, exposed, power_text, wavelength_text
 from benchlay.elements._kind import Acts
 from benchlay.findings import Finding, Severity
 from benchlay.geometry.distinct import distinct
@@ -126,7 +126,9 @@ def _below_floor(context: Context, variant: int, source: str, rows: Ints) -> Ite
         nm = float(trace.scene.wavelengths_nm[wave])
         total, largest = fsum(ledger.power[mine].tolist()), float(ledger.power[mine].max())
         line = context.limits.get((variant, source, nm))
-        accessible = np.inf if line is None or line.limit is None else line.limit.accessible_w
+        told = None if line is None else line.limit
+        accessible = np.inf if told is None else told.accessible_w
+        through = "" if told is None else f"; all through one aperture: {exposed(told, total)}"
         share = _BELOW_FLOOR_SHARE * context.source_power_w(variant, source, nm)
         limit = float(np.fmin(accessible, share))
         if above(total, limit):
@@ -136,7 +138,7 @@ def _below_floor(context: Context, variant: int, source: str, rows: Ints) -> Ite
                 message=(
                     f"{power_text(total)} of {wavelength_text(nm)} from '{source}' lies under "
                     f"the power floor and was not followed (the largest single beam: "
-                    f"{power_text(largest)})"
+                    f"{power_text(largest)}){through}"
                 ),
                 expected=(
                     f"at most {power_text(limit)}, the lesser of the accessible limit and a "

@@ -104,8 +104,8 @@ def test_faint_light_that_no_coating_speaks_of_is_one_note_an_element(make_conte
     (finding,) = found(make_context, COATED, "coating-unstated")
     assert finding.severity == Severity.NOTE
     assert finding.message == (
-        "'M' says nothing of 633 nm, of which at most 300 µW meets a face; the bare material is "
-        "assumed"
+        "'M' says nothing of 633 nm, of which at most 300 µW meets a face, within the limit all "
+        "together; the bare material is assumed"
     )
     assert finding.expected == "coatings that state their reflectance at 633 nm, where it matters"
     assert finding.remedy == (

@@ -166,8 +166,10 @@ SAID = {
     ),
     "coating-unstated": (
         (
-            "the front of 'M1' says nothing of 633 nm, and 5 mW of it from 'red' meets it; "
-            "the bare material is assumed"
+            "the front of 'M1' says nothing of 633 nm, and 5 mW of it from 'red' meets it "
+            # 5 mW over 38.48 mm2 is 129.9 W/m2.
+            "(through one aperture: 130 W/m2 over 7 mm, 13 times the limit of 10 W/m2 for 100 s "
+            "(IEC 60825-1:2014, table A.1; thermal)); the bare material is assumed"
         ),
         "a coating that states its reflectance at 633 nm",
         (
@@ -214,7 +216,9 @@ SAID = {
     "unaccounted": (
         (
             "631 µW of 532 nm from 'green' lies under the power floor and was not followed "
-            "(the largest single beam: 94.7 µW)"
+            # 631 µW over 38.48 mm2 is 16.4 W/m2.
+            "(the largest single beam: 94.7 µW); all through one aperture: 16.4 W/m2 over 7 mm, "
+            "1.64 times the limit of 10 W/m2 for 100 s (IEC 60825-1:2014, table A.1; thermal)"
         ),
         ("at most 385 µW, the lesser of the accessible limit and a thousandth of what is emitted"),
         "lower `limits.floor`, or look for two faces that send light to and fro",

@@ -12,7 +12,7 @@ from benchlay.checks._check.bodies import (
 )
 from benchlay.checks._check.context import Context
 from benchlay.checks._check.exits import Exit, WayOut, exits_of, place_of, way_out
-from benchlay.checks._check.exposed import against, exposure_words
+from benchlay.checks._check.exposed import against, exposed, exposure_words
 from benchlay.checks._check.limits import LineLimit, floors_w, limits_of
 from benchlay.checks._check.meetings import Loss, Mark
 from benchlay.checks._check.power import accessible_w
@@ -54,6 +54,7 @@ __all__ = [
     "distance_mm",
     "event_words",
     "exits_of",
+    "exposed",
     "exposure_words",
     "floors_w",
     "irradiance_text",
