@@ -10,6 +10,7 @@ from __future__ import annotations
 from math import pi
 
 from benchlay.geometry.polygon import Point, Polygon, signed_area
+from benchlay.making.rectilinear import Rectangle
 from benchlay.named import NamedTuple
 
 
@@ -52,6 +53,7 @@ class Blank(NamedTuple):
     flat_mm: Point = (0.0, 0.0)
     formed_mm: Point = (0.0, 0.0)  # over the outer faces
     folding: Folding | None = None
+    named: tuple[tuple[str, Rectangle], ...] = ()  # rectangular openings, notches too
 
     @property
     def area_mm2(self) -> float:

@@ -78,7 +78,8 @@ def panel_draft(own: Sheet, others: list[Sheet]) -> Draft:
     """
     flat = _Flat(own, meeting(own, others, False), meeting(own, others, True))
     body = _body(flat)
-    boxes, rounds, troubles = _openings(flat)
+    named, rounds, troubles = _openings(flat)
+    boxes = list(named.values())
     outer, inner = outlines(body, boxes)
     lacks = [m.lacks for m in (flat.start, flat.end) if m.lacks]
     lacks += _unfolded(own)
@@ -107,6 +108,7 @@ def panel_draft(own: Sheet, others: list[Sheet]) -> Draft:
         formed_mm=flat.formed,
         folding=foot
         and Folding(foot.allowance_mm, foot.k, foot.radius_mm, foot.flange_mm, foot.sense),
+        named=tuple(named.items()),
     )
     return Draft(blank, (*lacks, *troubles), tuple(remarks))
 
@@ -174,9 +176,9 @@ def _body(flat: _Flat) -> list[Rectangle]:
     return parts
 
 
-def _openings(flat: _Flat) -> tuple[list[Rectangle], tuple[RoundHole, ...], list[str]]:
-    """Return rectangles and round openings on the blank, and what is wrong with them."""
-    boxes: list[Rectangle] = []
+def _openings(flat: _Flat) -> tuple[dict[str, Rectangle], tuple[RoundHole, ...], list[str]]:
+    """Return rectangles by name and round openings on the blank, and what is wrong with them."""
+    boxes: dict[str, Rectangle] = {}
     rounds: list[RoundHole] = []
     troubles = []
     straight = flat.straight
@@ -184,7 +186,7 @@ def _openings(flat: _Flat) -> tuple[list[Rectangle], tuple[RoundHole, ...], list
         box = _box(flat, opening)
         if opening.round:
             near = [r for r in rounds if circles_meet(r, box)]
-            if near or not lies_in(box, straight) or any(meets(box, b) for b in boxes):
+            if near or not lies_in(box, straight) or any(meets(box, b) for b in boxes.values()):
                 troubles.append(f"a place for opening {name} clear of bends and other openings")
                 continue
             centre = ((box.left + box.right) / 2, (box.low + box.high) / 2)
@@ -197,7 +199,7 @@ def _openings(flat: _Flat) -> tuple[list[Rectangle], tuple[RoundHole, ...], list
             troubles.append(f"a place for opening {name} clear of the bend at the panel's end")
         if 0.0 < box.low < straight.low - _ROUNDING_MM:
             troubles.append(f"a place for opening {name} clear of the bend at the lower edge")
-        boxes.append(box)
+        boxes[name] = box
     return boxes, tuple(rounds), troubles
 
 

@@ -19,6 +19,7 @@ from benchlay.sheets.primitives import (
     direction_of,
     label_of,
     line_ends,
+    outward,
     to_paper,
 )
 from benchlay.sheets.scale import Window
@@ -96,13 +97,15 @@ def figure_box(dimension: Dimension, sheet: Sheet) -> Window:
 def _running_box(dimension: Dimension, sheet: Sheet) -> Window:
     ux, uy = direction_of(dimension)
     x, y = to_paper(sheet, line_ends(dimension)[1])
-    x += ux * dimension.figure_aside_mm + uy * RUNNING_OUT_MM
-    y += uy * dimension.figure_aside_mm + ux * RUNNING_OUT_MM
+    out = outward(dimension)
+    x += ux * dimension.figure_aside_mm + out[0] * RUNNING_OUT_MM
+    y += uy * dimension.figure_aside_mm + out[1] * RUNNING_OUT_MM
     width = width_mm(label_of(dimension, sheet.decimal), dimension.height_mm)
     half = dimension.height_mm / 2 + 0.3
+    far = (x + out[0] * width, y + out[1] * width)
     if ux:
-        return Window(x - half, y, x + half, y + width)
-    return Window(x, y - half, x + width, y + half)
+        return Window(x - half, min(y, far[1]), x + half, max(y, far[1]))
+    return Window(min(x, far[0]), y - half, max(x, far[0]), y + half)
 
 
 def _turned(half: Point, along: Point) -> Point:

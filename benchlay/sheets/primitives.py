@@ -136,7 +136,7 @@ class Dimension(NamedTuple):
     `text` replaces the figure; without it the figure is what is measured, to `decimals`
     places, trailing zeros dropped. A running one is one of several from the same first point:
     its arrow and figure stand at the second alone, the figure beyond the line and square to it,
-    above a horizontal line and at the right of a vertical one.
+    on the side of the line that looks away from what is measured.
     """
 
     layer: str
@@ -233,6 +233,17 @@ def line_ends(dimension: Dimension) -> tuple[Point, Point]:
         return (tx + along * ux, ty + along * uy)
 
     return foot(dimension.first), foot(dimension.second)
+
+
+def outward(dimension: Dimension) -> Point:
+    """Return the unit vector across a running dimension's line, away from what it measures.
+
+    Up, or to the right, where the line runs through the measured point itself.
+    """
+    ux, uy = direction_of(dimension)
+    end = line_ends(dimension)[1]
+    off = (end[0] - dimension.second[0]) * uy + (end[1] - dimension.second[1]) * ux
+    return (-uy, -ux) if off < 0.0 else (uy, ux)
 
 
 def measured(dimension: Dimension) -> float:

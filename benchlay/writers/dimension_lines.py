@@ -23,6 +23,7 @@ from benchlay.sheets.primitives import (
     direction_of,
     label_of,
     line_ends,
+    outward,
 )
 
 GAP_MM = 1.0
@@ -82,8 +83,7 @@ def take_apart(dimension: Dimension, scale: float, decimal: str) -> Parts:
 def _running(dimension: Dimension, scale: float, decimal: str) -> Parts:
     """Return the parts of one of several dimensions from the same point."""
     start, end = line_ends(dimension)
-    ux, uy = direction_of(dimension)
-    out = (uy, ux)  # up from a horizontal line, to the right of a vertical one
+    out = outward(dimension)
     layer, length = dimension.layer, math.dist(start, end)
     lines = [Line(layer, start, end)]
     extension = _extension(layer, dimension.second, end, scale)
@@ -96,8 +96,9 @@ def _running(dimension: Dimension, scale: float, decimal: str) -> Parts:
         back = ((start[0] - end[0]) / length, (start[1] - end[1]) / length)
         arrows = (_arrow(layer, end, back, scale),)
     angle = 90.0 if out[1] else 0.0
+    across = Across.RIGHT if min(out) < 0.0 else Across.LEFT  # away from the line, on either side
     label = label_of(dimension, decimal)
-    text = Text(layer, at, label, dimension.height_mm, up=Up.MIDDLE, rotation_deg=angle)
+    text = Text(layer, at, label, dimension.height_mm, across, Up.MIDDLE, angle)
     return Parts(tuple(lines), arrows, text)
 
 
@@ -106,7 +107,7 @@ def running_figure(dimension: Dimension, scale: float) -> Point:
     end = line_ends(dimension)[1]
     ux, uy = direction_of(dimension)
     aside = _move(end, (ux, uy), dimension.figure_aside_mm * scale)
-    return _move(aside, (uy, ux), RUNNING_OUT_MM * scale)
+    return _move(aside, outward(dimension), RUNNING_OUT_MM * scale)
 
 
 def _move(point: Point, along: Point, by: float) -> Point:

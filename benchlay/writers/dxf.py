@@ -42,6 +42,7 @@ from benchlay.sheets.primitives import (
     direction_of,
     line_ends,
     measured,
+    outward,
     to_model,
 )
 from benchlay.writers.backend import checked_fill, checked_polyline, send, send_shape
@@ -247,7 +248,8 @@ class DxfBackend:
         moved = _FIGURE_MOVED if dimension.figure_share != _MIDDLE or dimension.running else 0
         if dimension.running:
             half = width_mm(figure.text, figure.height_mm) / 2 * self._sheet.scale
-            middle = (figure.at[0] + half * uy, figure.at[1] + half * ux)
+            out = outward(dimension)
+            middle = (figure.at[0] + half * out[0], figure.at[1] + half * out[1])
         attributes = {
             "layer": dimension.layer,
             "dimstyle": DIMSTYLE,

@@ -8,6 +8,7 @@ import ezdxf
 import pytest
 
 from benchlay import pipeline
+from benchlay.checks import Context, limits_of
 from benchlay.results.drawings import drawings
 from benchlay.sheets import SHEETS, Subject
 from benchlay.sheets.primitives import Dimension, Polyline, Text
@@ -24,7 +25,14 @@ def trace():
 
 @pytest.fixture(scope="module")
 def sheet(trace):
-    (planned,) = SHEETS["room"](Subject(trace, zones_of(trace, states=("as drawn",)), (), "0" * 64))
+    (planned,) = SHEETS["room"](
+        Subject(
+            Context(trace, limits_of(trace.placed)),
+            zones_of(trace, states=("as drawn",)),
+            (),
+            "0" * 64,
+        )
+    )
     return planned.compose("4/9")
 
 
@@ -68,4 +76,4 @@ def test_there_is_none_without_a_room():
         LAYOUT.partition("room:\n")[2].partition("sources:\n")[0], ""
     )
     trace = pipeline.trace(pipeline.place(pipeline.read("x.yaml", text)))
-    assert not list(SHEETS["room"](Subject(trace, None, (), "")))
+    assert not list(SHEETS["room"](Subject(Context(trace, limits_of(trace.placed)), None, (), "")))

@@ -9,6 +9,7 @@ import pytest
 import shapely
 
 from benchlay import pipeline
+from benchlay.checks import Context, limits_of
 from benchlay.results.drawings import drawings
 from benchlay.sheets import SHEETS, Subject
 from benchlay.sheets.primitives import Circle, Line, Polyline, Text, to_paper
@@ -34,7 +35,9 @@ def trace():
 
 @pytest.fixture(scope="module")
 def sheets(trace):
-    planned = SHEETS["template"](Subject(trace, None, (), "0" * 64))
+    planned = SHEETS["template"](
+        Subject(Context(trace, limits_of(trace.placed)), None, (), "0" * 64)
+    )
     return [one.compose("") for one in planned]
 
 

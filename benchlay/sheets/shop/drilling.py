@@ -12,28 +12,21 @@ from math import dist
 import shapely
 
 from benchlay.layout.layout import Layout
-from benchlay.making.blank import RoundHole
 from benchlay.named import NamedTuple
 from benchlay.placing.placed import PlacedState
 from benchlay.sheets.drafting.picture import title_fields
-from benchlay.sheets.drafting.surroundings import holes_of
 from benchlay.sheets.form import Form, form_for
-from benchlay.sheets.lettering import LARGE_MM, SMALL_MM
+from benchlay.sheets.lettering import LARGE_MM
 from benchlay.sheets.primitives import (
-    Across,
-    Circle,
-    Line,
     Point,
-    Polyline,
     Primitive,
     Sheet,
     Text,
-    Up,
     figure,
 )
 from benchlay.sheets.scale import SCALES, Window
-from benchlay.sheets.shop.numbering import numbered
-from benchlay.sheets.shop.ordinates import ROOM_MM, datum_mark, running
+from benchlay.sheets.shop.bench_top import HEADING_MM, RIGHT_MM, bench_top, extent
+from benchlay.sheets.shop.ordinates import ROOM_MM
 from benchlay.sheets.shop.rows import MARKS_MM, Cell, Heading, Rows, shown
 from benchlay.sheets.shop.setting_out import Footing, footing, hole_at, nearest_hole
 from benchlay.sheets.tables import BETWEEN_MM, Column, Table, notes, table
@@ -43,12 +36,8 @@ TITLE = "Drilling sheet"
 MOST_BESIDE = 28  # holes in the table beside the view; more of them have sheets of their own
 _FORK_MM = 40.0  # what a clamping fork reaches from a post's axis (common practice)
 _COLUMN_MM = 132.0
-_HEADING_MM = 16.0
-_RIGHT_MM = 6.0
-_EVERY = 5  # columns and rows that are lettered
 _READABLE = 10
 _SIZES = ("A3", "A2", "A1", "A0")
-_DRAWN_MM = 6.0  # of a hole whose thread gives no size
 _HEADINGS = (
     Heading("hole", 12.0),
     Heading("column", 15.0),
@@ -167,7 +156,7 @@ def drilling_sheet(state: PlacedState, sha256: str, number: str) -> Sheet:
         tolerance="ISO 2768-m; hole positions ±0,2".replace(",", decimal), sheet=number
     )
     form, view, scale = _form(fields, layout)
-    low, high = _extent(layout)
+    low, high = extent(layout)
     origin = (
         (view.left + view.right) / 2 - (low[0] + high[0]) / 2 / scale,
         (view.low + view.high) / 2 - (low[1] + high[1]) / 2 / scale,
@@ -176,7 +165,7 @@ def drilling_sheet(state: PlacedState, sha256: str, number: str) -> Sheet:
     return form.sheet(
         "drilling",
         "Bench top with the holes that the layout uses",
-        model=_drawn(state, scale, decimal),
+        model=bench_top(state, [h.at for h in used_holes(state)[0]], scale, decimal),
         paper=_column(rows, form.window, decimal),
         scale=scale,
         origin_mm=origin,
@@ -189,87 +178,20 @@ def drilling_sheet(state: PlacedState, sha256: str, number: str) -> Sheet:
     )
 
 
-def _extent(layout: Layout) -> tuple[Point, Point]:
-    xs, ys = zip(*layout.bench.outline, strict=True)
-    return (min(xs), min(ys)), (max(xs), max(ys))
-
-
 def _form(fields: TitleFields, layout: Layout) -> tuple[Form, Window, int]:
-    low, high = _extent(layout)
+    low, high = extent(layout)
     size = (high[0] - low[0], high[1] - low[1])
     for paper in _SIZES:
         form = form_for(fields, size=paper)
         left, foot, right, top = form.window
         view = Window(
-            left + ROOM_MM, foot + ROOM_MM, right - _COLUMN_MM - _RIGHT_MM, top - _HEADING_MM
+            left + ROOM_MM, foot + ROOM_MM, right - _COLUMN_MM - RIGHT_MM, top - HEADING_MM
         )
         fits = [n for n in SCALES if size[0] <= view.width * n and size[1] <= view.height * n]
         if fits and (fits[0] <= _READABLE or paper == _SIZES[-1]):
             break
     scale = fits[0] if fits else SCALES[-1]
     return form_for(fields._replace(scale=f"1:{scale}"), size=paper), view, scale
-
-
-def _drawn(state: PlacedState, scale: int, decimal: str) -> list[Primitive]:
-    layout = state.layout
-    low, high = _extent(layout)
-    out: list[Primitive] = [Polyline("BENCH", tuple(layout.bench.outline), closed=True)]
-    out += _grid_marks(layout, scale)
-    for name in sorted(state.elements):
-        stands = footing(state.elements[name])
-        if stands is None:
-            continue
-        if stands.foot:
-            out.append(Polyline("BODIES", stands.foot, closed=True))
-        for x, y in (*stands.slots, stands.at):
-            reach = 1.5 * scale
-            out.append(Line("AXIS", (x - reach, y), (x + reach, y)))
-            out.append(Line("AXIS", (x, y - reach), (x, y + reach)))
-    holes, _ = used_holes(state)
-    grid = layout.bench.holes
-    radius = _radius(grid.thread if grid else "")
-    out += [Circle("BENCH", h.at, max(radius, 0.7 * scale)) for h in holes]
-    moved = [RoundHole((h.at[0] - low[0], h.at[1] - low[1]), 2 * radius, h.use) for h in holes]
-    size = (high[0] - low[0], high[1] - low[1])
-    for text in numbered(moved, size, scale):
-        out.append(text._replace(at=(text.at[0] + low[0], text.at[1] + low[1])))
-    datum = grid.first_mm if grid else low
-    xs = [low[0] - datum[0], high[0] - datum[0], 0.0]
-    ys = [low[1] - datum[1], high[1] - datum[1], 0.0]
-    out += running(xs, across=True, datum=datum, edge=low[1], scale=scale, decimal=decimal)
-    out += running(ys, across=False, datum=datum, edge=low[0], scale=scale, decimal=decimal)
-    return out + datum_mark(datum, scale)
-
-
-def _radius(thread: str) -> float:
-    """Return the radius of a metric thread's crest; others are drawn as M6."""
-    digits = thread[1:].split("x")[0].strip() if thread[:1] in "Mm" else ""
-    try:
-        return float(digits) / 2
-    except ValueError:
-        return _DRAWN_MM / 2
-
-
-def _grid_marks(layout: Layout, scale: int) -> Iterator[Primitive]:
-    """Letter columns and rows along the upper and the right edge, and cross every fifth hole."""
-    holes = holes_of(layout)
-    if holes is None:
-        return
-    _, high = _extent(layout)
-    (x0, y0), pitch, reach = holes.first, holes.pitch_mm, 0.8 * scale
-    columns = [1, *range(_EVERY, holes.columns + 1, _EVERY)]
-    rows = [1, *range(_EVERY, holes.rows + 1, _EVERY)]
-    for column in columns:
-        x = x0 + (column - 1) * pitch
-        at = (x, high[1] + 1.5 * scale)
-        yield Text("HOLES", at, str(column), SMALL_MM, Across.CENTRE)
-        for row in rows:
-            y = y0 + (row - 1) * pitch
-            yield Line("HOLES", (x - reach, y), (x + reach, y))
-            yield Line("HOLES", (x, y - reach), (x, y + reach))
-    for row in rows:
-        at = (high[0] + 1.5 * scale, y0 + (row - 1) * pitch)
-        yield Text("HOLES", at, str(row), SMALL_MM, Across.LEFT, Up.MIDDLE)
 
 
 def _column(rows: Rows, window: Window, decimal: str) -> list[Primitive]:

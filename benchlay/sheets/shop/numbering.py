@@ -1,62 +1,75 @@
-"""Numbers beside holes: inside the sheet, clear of one another."""
+"""Numbers beside holes: inside the sheet, clear of one another and of the lines round them."""
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Sequence
+from collections.abc import Iterable, Iterator, Sequence
 
 from benchlay.making.blank import RoundHole
 from benchlay.sheets.lettering import SMALL_MM, width_mm
-from benchlay.sheets.primitives import Across, Point, Text, Up
+from benchlay.sheets.placing_text import Crowd
+from benchlay.sheets.primitives import Across, Line, Point, Text, Up
+from benchlay.sheets.scale import Window
 
-_OFF_MM = 2.0
-_WAYS = ((1, 0), (-1, 0), (0, 1), (0, -1), (1, 1), (-1, 1), (1, -1), (-1, -1), (2, 2), (-2, 2))
-_Box = tuple[float, float, float, float]
+_OFF_MM = 1.0
 
 
 def numbered(
-    holes: Sequence[RoundHole], size_mm: Point, scale: float, names: Sequence[str] = ()
-) -> Iterator[Text]:
-    """Write a name beside each hole, where there is room within the sheet.
+    holes: Sequence[RoundHole],
+    corners: tuple[Point, Point],
+    scale: float,
+    names: Sequence[str] = (),
+    *,
+    lines: Iterable[Sequence[Point]] = (),
+    lettering: Iterable[Text] = (),
+) -> Iterator[Text | Line]:
+    """Write a name beside each hole, where there is room, with a leader where that is far.
 
     Parameters
     ----------
     holes : sequence of RoundHole
         In the order of their numbers.
-    size_mm : tuple of float
-        Of the sheet, model mm; its lower left corner is the origin.
+    corners : tuple of Point
+        Lower left and upper right of the sheet, model mm: all names stand inside.
     scale : float
         N of 1:N.
     names : sequence of str
         H1, H2, ... by default; nothing is written for an empty one.
+    lines : iterable of sequence of Point
+        What no name may stand on, model mm.
+    lettering : iterable of Text
+        What stands there already: level or upright, about the middle of its place.
     """
-    taken: list[_Box] = [_round(hole, scale) for hole in holes]
+    (x0, y0), (x1, y1) = ((x / scale, y / scale) for x, y in corners)
+    crowd = Crowd(Window(x0, y0, x1, y1))
+    for points in lines:
+        crowd.add_line([(x / scale, y / scale) for x, y in points], beam=True)
+    for text in lettering:
+        half = (width_mm(text.text, text.height_mm) / 2, text.height_mm)
+        wide, tall = half[::-1] if text.rotation_deg else half
+        x, y = (v / scale for v in text.at)
+        crowd.add_box(Window(x - wide, y - tall, x + wide, y + tall))
+    for hole in holes:
+        crowd.add_box(_round(hole, scale))
     for n, hole in enumerate(holes, start=1):
         words = names[n - 1] if names else f"H{n}"
         if not words:
             continue
-        half = (width_mm(words, SMALL_MM) / 2 * scale, SMALL_MM / 2 * scale)
-        boxes = [_beside(hole, way, half, scale) for way in _WAYS]
-        free = [b for b in boxes if _within(b, size_mm) and not any(_meet(b, t) for t in taken)]
-        box = (free or boxes)[0]
-        taken.append(box)
-        at = ((box[0] + box[2]) / 2, (box[1] + box[3]) / 2)
-        yield Text("TAGS", at, words, SMALL_MM, Across.CENTRE, Up.MIDDLE)
+        size = (width_mm(words, SMALL_MM), SMALL_MM)
+        middle = (hole.centre[0] / scale, hole.centre[1] / scale)
+        place = crowd.place(size, [(middle, hole.diameter_mm / 2 / scale + _OFF_MM)])
+        x, y = place.middle if place is not None else _aside(middle, size, x1)
+        yield Text("TAGS", (x * scale, y * scale), words, SMALL_MM, Across.CENTRE, Up.MIDDLE)
+        if place is not None and place.leader is not None:
+            (ax, ay), (bx, by) = place.leader
+            yield Line("TAGS", (ax * scale, ay * scale), (bx * scale, by * scale))
 
 
-def _round(hole: RoundHole, scale: float) -> _Box:
-    (x, y), r = hole.centre, hole.diameter_mm / 2 + scale
-    return x - r, y - r, x + r, y + r
+def _aside(middle: Point, size: Point, right: float) -> Point:
+    """Return where a name stands for which there is no room: on lines, but not left out."""
+    off = size[0] / 2 + 2.0 * _OFF_MM
+    return (middle[0] + (off if middle[0] + 2.0 * off < right else -off), middle[1])
 
 
-def _beside(hole: RoundHole, way: tuple[int, int], half: Point, scale: float) -> _Box:
-    (x, y), off = hole.centre, hole.diameter_mm / 2 + _OFF_MM * scale
-    x, y = x + way[0] * (off + half[0]), y + way[1] * (off + half[1])
-    return x - half[0], y - half[1], x + half[0], y + half[1]
-
-
-def _within(box: _Box, size_mm: Point) -> bool:
-    return box[0] > 0.0 and box[1] > 0.0 and box[2] < size_mm[0] and box[3] < size_mm[1]
-
-
-def _meet(a: _Box, b: _Box) -> bool:
-    return a[0] < b[2] and b[0] < a[2] and a[1] < b[3] and b[1] < a[3]
+def _round(hole: RoundHole, scale: float) -> Window:
+    (x, y), r = hole.centre, hole.diameter_mm / 2 / scale + _OFF_MM
+    return Window(x / scale - r, y / scale - r, x / scale + r, y / scale + r)

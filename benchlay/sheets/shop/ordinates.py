@@ -1,18 +1,21 @@
 """Running dimensions from one datum corner, after ISO 129-1 (from memory).
 
-Each place stands at the end of its own line, square to the edge it is measured along; where
-places lie closer than their figures are high, lines are led apart. Figures are rounded to a
-hundredth of a millimetre; the lines stand at the exact places.
+All of a row share one line, with a ring where they count from; each is a true dimension with
+its arrow and figure at its place. Where places lie closer than their figures are high, figures
+are led apart. They are rounded to a hundredth of a millimetre; what is measured is exact.
 """
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Sequence
+from collections.abc import Callable, Iterable, Iterator, Sequence
 
 from benchlay.sheets.lettering import SMALL_MM
 from benchlay.sheets.primitives import (
+    RUNNING_OUT_MM,
     Across,
+    Axis,
     Circle,
+    Dimension,
     Point,
     Polyline,
     Primitive,
@@ -24,7 +27,7 @@ from benchlay.sheets.primitives import (
 DECIMALS = 2
 ROOM_MM = 30.0  # that a row takes on paper, figures included
 _APART_MM = 4.2  # from figure to figure: their height and a gap
-_GAP_MM, _LED_FROM_MM, _LED_TO_MM, _END_MM = 1.0, 4.0, 10.0, 12.0
+_GAP_MM, _LINE_MM, _RING_MM = 1.0, 8.0, 1.0
 SAME_MM = 5e-3  # half of what the last decimal says
 
 
@@ -58,6 +61,11 @@ def spread(places: Sequence[float], apart: float) -> list[float]:
     ]
 
 
+def fits(count: int, length: float, scale: float) -> bool:
+    """Return whether so many figures find room along a length, model mm."""
+    return count * _APART_MM <= length / scale
+
+
 def running(
     values: Iterable[float],
     *,
@@ -67,7 +75,7 @@ def running(
     scale: float,
     decimal: str,
 ) -> list[Primitive]:
-    """Draw running dimensions below an edge (across), or left of one.
+    """Give running dimensions below an edge (across), or left of one.
 
     Parameters
     ----------
@@ -85,34 +93,46 @@ def running(
         Between units and tenths.
     """
     places = distinct(values)
-    ends = [p * scale for p in spread([v / scale for v in places], _APART_MM)]
+    on_paper = [v / scale for v in places]
+    axis = Axis.HORIZONTAL if across else Axis.VERTICAL
     out: list[Primitive] = []
-    base = datum[0] if across else datum[1]
 
-    def at(along: float, below_mm: float) -> Point:
-        off = edge - below_mm * scale
-        return (base + along, off) if across else (off, base + along)
+    def at(along: float, off_mm: float) -> Point:
+        off = edge - off_mm * scale
+        return (datum[0] + along, off) if across else (off, datum[1] + along)
 
-    for place, end in zip(places, ends, strict=True):
-        path = (
-            at(place, _GAP_MM),
-            at(place, _LED_FROM_MM),
-            at(end, _LED_TO_MM),
-            at(end, _END_MM),
-        )
-        out.append(Polyline("DIMENSIONS", path))
+    for place, end, own in zip(places, spread(on_paper, _APART_MM), on_paper, strict=True):
+        figured = figure(place, DECIMALS, decimal)
+        if abs(place) <= SAME_MM:
+            out += _origin(at, end * scale, figured, scale, across=across)
+            continue
         out.append(
-            Text(
+            Dimension(
                 "DIMENSIONS",
-                at(end, _END_MM + 1.0),
-                figure(place, DECIMALS, decimal),
-                SMALL_MM,
-                Across.RIGHT,
-                Up.MIDDLE,
-                90.0 if across else 0.0,
+                axis,
+                at(0.0, 0.0),
+                at(place, 0.0),
+                at(0.0, _LINE_MM),
+                text=figured if place < 0.0 else None,
+                decimals=DECIMALS,
+                height_mm=SMALL_MM,
+                running=True,
+                figure_aside_mm=end - own,
             )
         )
     return out
+
+
+def _origin(
+    at: Callable[[float, float], Point], end: float, words: str, scale: float, *, across: bool
+) -> Iterator[Primitive]:
+    """Draw where the row counts from: a ring on its line, and its nought."""
+    beyond = at(end, _LINE_MM + RUNNING_OUT_MM)
+    yield Polyline("DIMENSIONS", (at(0.0, _GAP_MM), at(0.0, _LINE_MM), beyond))
+    yield Circle("DIMENSIONS", at(0.0, _LINE_MM), _RING_MM * scale)
+    turned = 90.0 if across else 0.0
+    figure_at = at(end, _LINE_MM + RUNNING_OUT_MM + _GAP_MM / 2)
+    yield Text("DIMENSIONS", figure_at, words, SMALL_MM, Across.RIGHT, Up.MIDDLE, turned)
 
 
 def datum_mark(datum: Point, scale: float) -> list[Primitive]:

@@ -9,14 +9,13 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from benchlay.layout.layout import Layout
-from benchlay.making.blank import Bend, Blank, RoundHole
-from benchlay.making.grouping import Group, grouped
+from benchlay.making.blank import Blank
+from benchlay.making.grouping import Group
 from benchlay.making.parts import LID, Part
 from benchlay.sheets.drafting.picture import title_fields
 from benchlay.sheets.form import Form, form_for
 from benchlay.sheets.lettering import LARGE_MM, MIDDLE_MM, SMALL_MM, shorten, wrap
 from benchlay.sheets.primitives import (
-    Across,
     Axis,
     Circle,
     Dimension,
@@ -25,19 +24,17 @@ from benchlay.sheets.primitives import (
     Primitive,
     Sheet,
     Text,
-    Up,
     figure,
 )
 from benchlay.sheets.scale import SCALES, Window
-from benchlay.sheets.shop.numbering import numbered
 from benchlay.sheets.shop.ordinates import DECIMALS, ROOM_MM, SAME_MM, datum_mark, running
+from benchlay.sheets.shop.panel_tags import MOST_BESIDE, cross, named, tags
 from benchlay.sheets.shop.rows import MARKS_MM
 from benchlay.sheets.shop.section import section
 from benchlay.sheets.tables import BETWEEN_MM, Column, Table, notes, table
 from benchlay.sheets.title_block import TitleFields
 
 TOLERANCE = "ISO 2768-m; hole positions ±0,2"
-_MOST_BESIDE = 12  # holes; more of them stand in a table
 _COLUMN_MM = 108.0
 _HEADING_MM = 36.0
 _OVERALL_MM = 10.0  # of the dimensions of the whole blank, off it
@@ -133,16 +130,15 @@ def _heading(part: Part, missing: tuple[str, ...], window: Window) -> Iterator[P
 
 def _drawn(blank: Blank, scale: int, decimal: str) -> list[Primitive]:
     """Return the blank with its dimensions, in the model: its lower left is the datum."""
-    listed = len(blank.holes) > _MOST_BESIDE
+    listed = len(blank.holes) > MOST_BESIDE
     circles = (*blank.rounds, *blank.holes)
     out: list[Primitive] = [Polyline("PANELS", blank.outer, closed=True)]
     out += [Polyline("PANELS", loop, closed=True) for loop in blank.inner]
     for hole in circles:
         out.append(Circle("PANELS", hole.centre, hole.diameter_mm / 2))
-        out += _cross(hole, scale)
+        out += cross(hole, scale)
     for bend in blank.bends:
         out.append(Line("AXIS", bend.start, bend.end))
-        out.append(_bend_label(bend, scale, decimal))
     corners = [c for loop in (blank.outer, *blank.inner) for c in loop]
     centres = [h.centre for h in (blank.rounds if listed else circles)]
     xs = [x for x, _ in (*corners, *centres)]
@@ -160,38 +156,7 @@ def _drawn(blank: Blank, scale: int, decimal: str) -> list[Primitive]:
         out.append(Dimension("DIMENSIONS", axis, near, far, line, decimals=DECIMALS))
     out += running(xs, across=True, datum=datum, edge=0.0, scale=scale, decimal=decimal)
     out += running(ys, across=False, datum=datum, edge=0.0, scale=scale, decimal=decimal)
-    return out + datum_mark(datum, scale) + list(_tags(blank, scale, decimal))
-
-
-def _cross(hole: RoundHole, scale: int) -> list[Primitive]:
-    (x, y), reach = hole.centre, hole.diameter_mm / 2 + 1.5 * scale
-    return [
-        Line("AXIS", (x - reach, y), (x + reach, y)),
-        Line("AXIS", (x, y - reach), (x, y + reach)),
-    ]
-
-
-def _bend_label(bend: Bend, scale: int, decimal: str) -> Text:
-    words = f"{'UP' if bend.up else 'DOWN'} 90° R{figure(bend.radius_mm, 2, decimal)}"
-    (ax, ay), (bx, by) = bend.start, bend.end
-    x, y = (ax + bx) / 2, (ay + by) / 2
-    if ax != bx:
-        return Text("TAGS", (x, y + 6.0 * scale), words, SMALL_MM, Across.CENTRE)
-    inward = 12.0 * scale * (-1.0 if x > 100.0 * scale else 1.0)
-    return Text("TAGS", (x + inward, y), words, SMALL_MM, Across.CENTRE, Up.MIDDLE, 90.0)
-
-
-def _tags(blank: Blank, scale: int, decimal: str) -> Iterator[Primitive]:
-    """Name the openings with their sizes, and the holes by number or by diameter."""
-    for hole in blank.rounds:
-        words = f"{hole.use} Ø{figure(hole.diameter_mm, 2, decimal)}"
-        x, y = hole.centre
-        at = (x, y + hole.diameter_mm / 2 + 3.0 * scale)
-        yield Text("TAGS", at, words, SMALL_MM, Across.CENTRE)
-    if len(blank.holes) > _MOST_BESIDE:
-        named = [pair for group in _named(blank) for pair in _ends(*group)]
-        holes, names = zip(*named, strict=True)
-        yield from numbered(holes, blank.flat_mm, scale, names)
+    return out + datum_mark(datum, scale) + list(tags(blank, scale, decimal))
 
 
 def _column(part: Part, layout: Layout, window: Window, decimal: str) -> list[Primitive]:
@@ -212,23 +177,6 @@ _HOLES = (
 )
 
 
-def _named(blank: Blank) -> list[tuple[str, Group]]:
-    """Return the groups of holes with their letters: A, B, ..., Z, AA, ..."""
-    return [(_letter(n), group) for n, group in enumerate(grouped(blank.holes))]
-
-
-def _letter(n: int) -> str:
-    return (_letter(n // 26 - 1) if n >= 26 else "") + chr(ord("A") + n % 26)  # noqa: PLR2004
-
-
-def _ends(letter: str, group: Group) -> list[tuple[RoundHole, str]]:
-    """Return the holes of a group with what is written beside them: at its ends only."""
-    last = len(group.holes) - 1
-    return [
-        (hole, f"{letter}{n + 1}" if n in (0, last) else "") for n, hole in enumerate(group.holes)
-    ]
-
-
 def _group_row(letter: str, group: Group, decimal: str) -> tuple[str, ...]:
     places = [figure(v, 2, decimal) for v in group.holes[0].centre]
     name = f"{letter}1"
@@ -243,8 +191,8 @@ def _group_row(letter: str, group: Group, decimal: str) -> tuple[str, ...]:
 
 def _hole_rows(blank: Blank, decimal: str) -> tuple[tuple[str, ...], ...]:
     """Return a row a group; where they stand on the drawing too, a row a diameter."""
-    if len(blank.holes) > _MOST_BESIDE:
-        return tuple(_group_row(letter, group, decimal) for letter, group in _named(blank))
+    if len(blank.holes) > MOST_BESIDE:
+        return tuple(_group_row(letter, group, decimal) for letter, group in named(blank))
     kinds: dict[tuple[float, str], int] = {}
     for h in blank.holes:
         kinds[h.diameter_mm, h.use] = kinds.get((h.diameter_mm, h.use), 0) + 1

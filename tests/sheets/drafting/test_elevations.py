@@ -8,6 +8,7 @@ from pathlib import Path
 import ezdxf
 import pytest
 
+from benchlay.checks import Context, limits_of
 from benchlay.pipeline import place, read, trace
 from benchlay.sheets import Subject, composed_sheets
 from benchlay.sheets.drafting.elevations import elevation_of
@@ -37,6 +38,10 @@ enclosure:
     east: {from: [1200, 0], to: [1200, 600], to_height: 280}
     north: {from: [1200, 600], to: [0, 600], open: yes}
 """
+
+
+def context_of(trace):
+    return Context(trace, limits_of(trace.placed))
 
 
 def traced(text):
@@ -84,7 +89,7 @@ def test_levels_and_bands_are_heights_above_the_bench(picture):
 
 def test_dimensions_measure_heights_true_to_size(picture):
     traced_bench = traced(BENCH)
-    (made,) = composed_sheets(Subject(traced_bench, NO_ZONES, (), ""), "elevation")
+    (made,) = composed_sheets(Subject(context_of(traced_bench), NO_ZONES, (), ""), "elevation")
     found = [measured(p) for p in made.sheet.model if isinstance(p, Dimension)]
     assert found == pytest.approx([100.0, 300.0], abs=1e-9)
     document = ezdxf.read(io.StringIO(dxf.write(made.sheet).decode("utf-8")))
@@ -132,7 +137,7 @@ def boxes(sheet):
 @pytest.mark.parametrize("name", ["hologram", "gas-cell", "stone-cleaning", "fluorescence", "bad"])
 def test_lettering_overlaps_nowhere_and_stays_in_the_frame(name):
     traced_bench = trace(place(read(LAYOUTS / f"{name}.yaml")))
-    made = composed_sheets(Subject(traced_bench, NO_ZONES, (), ""), "elevation")
+    made = composed_sheets(Subject(context_of(traced_bench), NO_ZONES, (), ""), "elevation")
     assert {one.sheet.name for one in made} <= {f"elevation-{r}" for r in traced_bench.ways.names}
     assert made
     for sheet, _ in made:
@@ -147,7 +152,8 @@ def test_lettering_overlaps_nowhere_and_stays_in_the_frame(name):
 
 def test_elevations_come_out_byte_by_byte_alike():
     first, again = (
-        composed_sheets(Subject(traced(BENCH), NO_ZONES, (), ""), "elevation") for _ in range(2)
+        composed_sheets(Subject(context_of(traced(BENCH)), NO_ZONES, (), ""), "elevation")
+        for _ in range(2)
     )
     assert first
     for one, other in zip(first, again, strict=True):
@@ -158,12 +164,14 @@ def test_elevations_come_out_byte_by_byte_alike():
 def test_a_route_is_drawn_in_a_state_in_which_it_arrives():
     traced_bench = trace(place(read(LAYOUTS / "stone-cleaning.yaml")))
     assert traced_bench.scene.variants[0] == "as drawn"
-    (made,) = composed_sheets(Subject(traced_bench, NO_ZONES, (), ""), "elevation-green")
+    (made,) = composed_sheets(
+        Subject(context_of(traced_bench), NO_ZONES, (), ""), "elevation-green"
+    )
     words = [p.text for p in made.sheet.paper if isinstance(p, Text)]
     assert "ELEVATION OF ROUTE green, 1:10, STATE: green" in words
     assert not any("does not reach" in one for one in words)
     (alone,) = composed_sheets(
-        Subject(traced_bench, NO_ZONES, (), "", state="as drawn"), "elevation-green"
+        Subject(context_of(traced_bench), NO_ZONES, (), "", state="as drawn"), "elevation-green"
     )
     assert any(p.text.endswith("STATE: as drawn") for p in alone.sheet.paper if hasattr(p, "text"))
 
@@ -171,7 +179,7 @@ def test_a_route_is_drawn_in_a_state_in_which_it_arrives():
 def test_bands_of_eyes_are_named_and_figures_never_shortened():
     far = BENCH.replace("M1, distance: 200", "M1, distance: 212.345").replace("pitch: 5, ", "")
     longer = far.replace("1200", "9000").replace("distance: 300", "distance: 8123.47")
-    (made,) = composed_sheets(Subject(traced(longer), NO_ZONES, (), ""), "elevation")
+    (made,) = composed_sheets(Subject(context_of(traced(longer)), NO_ZONES, (), ""), "elevation")
     words = [p.text for p in made.sheet.paper if isinstance(p, Text)]
     assert "seated eyes from +170 to +480" in words
     assert "8323.5" in [one.replace(",", ".") for one in words]

@@ -7,11 +7,14 @@ import pytest
 from benchlay.sheets.lettering import width_mm
 from benchlay.sheets.primitives import Across, Dimension, Space, Text, Up, to_paper
 from benchlay.writers import recorder
+from benchlay.writers.dimension_lines import take_apart
 
 
 def text_boxes(sheet):
     """Yield words and corners of the box round every line of lettering, mm on paper."""
     for space, p in recorder.record(sheet):
+        if isinstance(p, Dimension):
+            p = take_apart(p, sheet.scale if space is Space.MODEL else 1.0, sheet.decimal).text
         if not isinstance(p, Text) or not p.text:
             continue
         at = to_paper(sheet, p.at) if space is Space.MODEL else p.at

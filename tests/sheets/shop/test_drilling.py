@@ -9,7 +9,10 @@ import pytest
 import shapely
 
 from benchlay import pipeline
+from benchlay.checks import Context, limits_of
 from benchlay.sheets import SHEETS, Subject
+from benchlay.sheets.lettering import width_mm
+from benchlay.sheets.primitives import Line, Polyline, Text
 from benchlay.sheets.shop.drilling import drilling_rows, drilling_sheet, used_holes
 from benchlay.writers import dxf
 
@@ -99,8 +102,46 @@ def test_many_holes_are_listed_on_sheets_of_their_own(words_of):
     text = TEXT % GRID
     text = text[: text.index("  M1:")] + mirrors
     trace = pipeline.trace(pipeline.place(pipeline.read("x.yaml", text)))
-    sheets = [one.compose("") for one in SHEETS["drilling"](Subject(trace, None, (), ""))]
+    sheets = [
+        one.compose("")
+        for one in SHEETS["drilling"](
+            Subject(Context(trace, limits_of(trace.placed)), None, (), "")
+        )
+    ]
     assert [sheet.name for sheet in sheets] == ["drilling", "drilling-holes", "drilling-holes-2"]
     listed = {w for sheet in sheets[1:] for w in words_of(sheet)}
     assert {f"H{n}" for n in range(1, 61)} <= listed
     assert {f"E{n}" for n in range(60)} <= listed
+
+
+def test_holes_and_the_bench_are_dimensioned_from_the_datum():
+    state = base(TEXT % GRID)
+    sheet = drilling_sheet(state, "0" * 64, "1/1")
+    doc = ezdxf.read(io.StringIO(dxf.write(sheet).decode()))
+    audit = doc.audit()
+    assert not audit.errors
+    assert not audit.fixes
+    found = {round(d.get_measurement(), 6) for d in doc.modelspace().query("DIMENSION")}
+    assert {900.0, 600.0} <= found
+    for hole in used_holes(state)[0]:
+        assert {round(hole.at[0] - 12.5, 6), round(hole.at[1] - 12.5, 6)} <= found
+
+
+@pytest.mark.parametrize("bench", BENCHES, ids=lambda b: b.stem)
+def test_no_number_of_a_hole_stands_on_a_line(bench):
+    sheet = drilling_sheet(pipeline.place(pipeline.read(bench)).base, "0" * 64, "3/12")
+    lines = []
+    for p in sheet.model:
+        if isinstance(p, Polyline) and p.layer in {"BODIES", "BENCH"}:
+            lines.append(shapely.LinearRing(p.points))
+        if isinstance(p, Line) and p.layer in {"AXIS", "HOLES"}:
+            lines.append(shapely.LineString([p.start, p.end]))
+    numbers = [p for p in sheet.model if isinstance(p, Text) and p.layer == "TAGS"]
+    assert len(numbers) == len(used_holes(pipeline.place(pipeline.read(bench)).base)[0]) > 0
+    for text in numbers:
+        wide, tall = (
+            v / 2.2 * sheet.scale for v in (width_mm(text.text, text.height_mm), text.height_mm)
+        )
+        x, y = text.at
+        box = shapely.box(x - wide, y - tall, x + wide, y + tall)
+        assert not any(box.intersects(line) for line in lines), text.text

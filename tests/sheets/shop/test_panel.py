@@ -11,7 +11,7 @@ import pytest
 
 from benchlay import pipeline
 from benchlay.making.parts import parts_of
-from benchlay.sheets.primitives import Circle, Polyline, Text
+from benchlay.sheets.primitives import Axis, Circle, Dimension, label_of, measured
 from benchlay.sheets.shop.ordinates import spread
 from benchlay.sheets.shop.panel import panel_sheet
 from benchlay.writers import dxf
@@ -48,14 +48,25 @@ def test_every_panel_of_every_bench_can_be_read(bench, legible):
 
 def test_lines_of_running_dimensions_stand_where_their_figures_say():
     sheet = sheets_of(TEXT)["south"]
-    lines = [p.points for p in sheet.model if isinstance(p, Polyline) and p.layer == "DIMENSIONS"]
-    texts = [p for p in sheet.model if isinstance(p, Text) and p.layer == "DIMENSIONS"]
-    assert len(lines) == len(texts) >= 10
-    for points, text in zip(lines, texts, strict=True):
-        place = points[0][0] if text.rotation_deg else points[0][1]
-        assert float(text.text) == pytest.approx(place, abs=0.005001)
+    row = [p for p in sheet.model if isinstance(p, Dimension) and p.running]
+    assert len(row) >= 10
+    for one in row:
+        place = one.second[0] if one.axis is Axis.HORIZONTAL else one.second[1]
+        assert one.first[0] == 0.0 or one.axis is Axis.VERTICAL
+        assert float(label_of(one, ".")) == pytest.approx(place, abs=0.005001)
     # The port's centre is at its distance along the panel; the blank starts at the panel's start.
-    assert 712.5 in {points[0][0] for points in lines}
+    assert 712.5 in {one.second[0] for one in row if one.axis is Axis.HORIZONTAL}
+    # Each is a true dimension to who reads the file, with its figure beyond its line: below.
+    found = list(ezdxf.read(io.StringIO(dxf.write(sheet).decode())).modelspace().query("DIMENSION"))
+    measures = sorted(d.get_measurement() for d in found)
+    assert measures == pytest.approx(sorted(measured(p) for p in dimensions(sheet)), abs=1e-6)
+    below = [d for d in found if d.dxf.defpoint3[1] == 0.0 and d.dxf.defpoint[1] < 0.0]
+    assert below
+    assert all(d.dxf.text_midpoint[1] < d.dxf.defpoint[1] for d in below)
+
+
+def dimensions(sheet):
+    return [p for p in sheet.model if isinstance(p, Dimension)]
 
 
 def test_the_same_contours_as_the_cutting_file_and_true_dimensions():
@@ -74,7 +85,8 @@ def test_the_same_contours_as_the_cutting_file_and_true_dimensions():
     assert circles == drawn
     assert len(circles) == 1 + 10
     # The whole blank: 1500 long; 300 high and a flange of 20, less what the bend saves.
-    said = sorted(d.get_measurement() for d in doc.modelspace().query("DIMENSION"))
+    found = doc.modelspace().query("DIMENSION")
+    said = sorted(d.get_measurement() for d in found if max(d.dxf.defpoint2) > 0.0)
     assert said == pytest.approx([300 + 20 - 8 + math.pi / 2 * 2.66, 1500], abs=1e-6)
 
 
@@ -128,3 +140,13 @@ def test_figures_are_led_apart_and_keep_their_order():
     assert all(b - a >= 4.0 - 1e-12 for a, b in itertools.pairwise(led))
     assert led[-1] == 100.0
     assert sum(led[:4]) == pytest.approx(sum(places[:4]))
+
+
+def test_rectangular_openings_are_named_with_their_size(words_of):
+    text = TEXT.replace(
+        "diameter: 30}}}",
+        "diameter: 30}, view: {along: 300, from_height: 100, to_height: 200, width: 200},"
+        " slit: {along: 1200, from_height: 100, to_height: 104, width: 3}}}",
+    )
+    said = words_of(sheets_of(text)["south"])
+    assert {"view 200 x 100", "slit 3 x 4"} <= set(said)
