@@ -222,7 +222,7 @@ def review_files(
     except LayoutError as error:
         return LayoutErrors(file, error.problems, _lines(data))
     faults = put_together(single, placed, file, reviewed.sha256)
-    remedies = _remedies(data, file, checked, reviewed, on)
+    remedies = _remedies(data, checked, reviewed, single, on)
     # Unlike a check, a review speaks of what panels take by faults too.
     reviewed = reviewed._replace(remedies=remedies, faults=faults, panels=faults.panels)
     documents = {
@@ -234,20 +234,26 @@ def review_files(
     return reviewed, files | tables(checked.trace.placed) | drawings
 
 
-def _remedies(data: bytes, file: str, checked: Checked, reviewed: Review, on: date) -> Remedies:
+def _remedies(
+    data: bytes, checked: Checked, reviewed: Review, single: FaultReview, on: date
+) -> Remedies:
     """Return what would clear escapes and strays, each tried out on the layout's text."""
-    from benchlay.remedies import Judged, offers
+    from benchlay.remedies import Judged, fault_offers, offers
     from benchlay.results.review import judge
 
     def again(text: str) -> Judged | None:
         try:
-            other = _checked(trace(place(read(file, text))), checked.states)
+            other = _checked(trace(place(read(reviewed.layout, text))), checked.states)
         except LayoutError:
             return None
         return Judged(judge(other, on).findings, other.context)
 
     own = Judged(reviewed.findings, checked.context)
-    return offers(data.decode("utf-8-sig"), own, again)
+    text = data.decode("utf-8-sig")
+    found = fault_offers(text, own, again, single.faults)
+    return offers(text, own, again)._replace(
+        of_faults=found.offered, faults_without=found.without, faults_left=found.left
+    )
 
 
 def draw_files(

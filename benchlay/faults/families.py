@@ -59,6 +59,11 @@ class Family(NamedTuple):
     sweep: Sweep | None = None
     sheet: tuple[str, str] | None = None  # panel or lid, and its name, of what is opened
 
+    @property
+    def key(self) -> tuple[int, str, str]:
+        """What stays the same where something else on the bench is changed."""
+        return self.state, self.kind, self.name(0.0 if self.sweep is None else self.sweep.high_rad)
+
     def name(self, setting_rad: float = 0.0) -> str:
         """Return the name of the fault at a setting."""
         if self.sweep is None:

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterator, Mapping, Sequence
+from collections.abc import Callable, Collection, Iterator, Mapping, Sequence
 from itertools import groupby
 
 from benchlay.faults.batches import Tracer, whole_benches
@@ -85,7 +85,10 @@ def _silent(done: int, total: int) -> None:
 
 
 def review_faults(
-    placed: Placed, states: Sequence[str] | None = None, progress: Progress = _silent
+    placed: Placed,
+    states: Sequence[str] | None = None,
+    progress: Progress = _silent,
+    only: Collection[tuple[int, str, str]] | None = None,
 ) -> Review:
     """Review every credible single fault of a placed layout.
 
@@ -97,6 +100,8 @@ def review_faults(
         The states to speak of; all of them by default.
     progress : callable, optional
         Told how many variants are traced and how many are known to be due.
+    only : collection, optional
+        The keys of the families to review; all of them by default.
     """
     names = [state.name for state in placed.states]
     spoken_of = tuple(names if states is None else states)
@@ -109,6 +114,8 @@ def review_faults(
     live: list[tuple[Family, Ints | None]] = []
     untouched: list[Family] = []
     for family in families(placed, numbers):
+        if only is not None and family.key not in only:
+            continue
         seeds = _seeds(family, near[family.state])
         if seeds is None or len(seeds) or not alone:
             live.append((family, seeds if alone else None))

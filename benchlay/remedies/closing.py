@@ -5,16 +5,13 @@ from __future__ import annotations
 from collections.abc import Iterator
 from math import ceil
 
-import numpy as np
-
-from benchlay.checks import Context
 from benchlay.coverage.blockers import Place, Window
 from benchlay.coverage.enclosed import windows_of
 from benchlay.coverage.labyrinth import SPACING_MM
 from benchlay.layout.layout import Layout
-from benchlay.optics import moments
 from benchlay.remedies.edits import Edit
 from benchlay.remedies.trials import Change, unused_name
+from benchlay.remedies.ways import Way
 from benchlay.scene.surroundings import material_of
 from benchlay.zones.enclosure_line import EnclosureLine, Side, enclosure_line, leaving
 
@@ -23,16 +20,15 @@ _OVERLAPS_MM = (30.0, 100.0)  # of a sheet before an opening: against light that
 _STEP_MM = 10.0  # panels are cut to whole centimetres: common practice
 
 
-def closings(context: Context, beam: int) -> Iterator[Change]:
+def closings(way: Way) -> Iterator[Change]:
     """Give what would close the enclosure where a beam leaves it; nothing without one."""
-    start = context.trace.beams.start
-    layout = context.layout(int(start.variant[beam]))
+    layout = way.layout
     line = enclosure_line(layout)
     if layout.enclosure is None or not line.enclosed:
         return
-    x, y, _ = start.position[beam].tolist()
-    kx, ky, kz = start.direction[beam].tolist()
-    found = leaving(line, (x, y), (kx, ky), float(context.trace.beams.length[beam]))
+    x, y, z = way.origin.tolist()
+    kx, ky, kz = way.direction.tolist()
+    found = leaving(line, (x, y), (kx, ky), way.length_mm)
     if found is None or found.side is None:
         if kz > 0.0:
             yield _lid(layout, line)
@@ -40,11 +36,9 @@ def closings(context: Context, beam: int) -> Iterator[Change]:
     if found.side.panel is None:
         yield _panel(layout, found.side)
     else:
-        yield from _taller(context, layout, beam, found.way_mm, found.side.panel)
-        z = float(start.position[beam, 2]) + found.way_mm * kz
-        yield from _covers(
-            layout, found.side.panel, (x + found.way_mm * kx, y + found.way_mm * ky, z)
-        )
+        at = (x + found.way_mm * kx, y + found.way_mm * ky, z + found.way_mm * kz)
+        yield from _taller(layout, found.side.panel, at[2], _RADII * way.radius_mm(found.way_mm))
+        yield from _covers(layout, found.side.panel, at)
         if kz > 0.0:
             yield _lid(layout, line)
 
@@ -58,17 +52,10 @@ def _panel(layout: Layout, side: Side) -> Change:
     return Change("panel", words, (Edit(("enclosure", "panels"), name, value),))
 
 
-def _taller(
-    context: Context, layout: Layout, beam: int, way_mm: float, name: str
-) -> Iterator[Change]:
+def _taller(layout: Layout, name: str, z: float, room: float) -> Iterator[Change]:
     """Give a panel that reaches beyond the beam; nothing for one that is open or has a hole."""
-    start = context.trace.beams.start
     assert layout.enclosure is not None
     low, high = layout.enclosure.heights_mm(layout.enclosure.panels[name])
-    z = float(start.position[beam, 2] + way_mm * start.direction[beam, 2])
-    m = moments.propagate(start.moments[:, beam], way_mm, start.index[beam])
-    w1, w2, _ = moments.radii(m)
-    room = _RADII * float(np.maximum(w1, w2))
     path = ("enclosure", "panels", name)
     if z + room > high:
         top = _STEP_MM * ceil((z + room) / _STEP_MM)

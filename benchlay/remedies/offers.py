@@ -10,6 +10,7 @@ from benchlay.remedies.closing import closings
 from benchlay.remedies.ghosts import coatings, tilts, wedges
 from benchlay.remedies.stops import stops
 from benchlay.remedies.trials import Bench, Change, Judged, Judgement, Trial
+from benchlay.remedies.ways import Way, way_of_beam
 from benchlay.report.model import Remedies, Remedy, Reported
 
 MENDED = ("escape", "stray-unstopped")
@@ -98,19 +99,25 @@ def _row(judged: Judged, finding: Reported) -> int:
     return int(context.beams_of(variant)[finding.beam])
 
 
+def _way(judged: Judged, beam: int) -> Way:
+    return way_of_beam(judged.context, beam)
+
+
 def _names(judged: Judged) -> list[str]:
     layout = judged.context.layout(0)
     return [*layout.sources, *layout.elements]
 
 
 def _stop(case: _Case) -> Trial | None:
-    return _first(case, stops(case.bench.judged.context, case.beam, case.taken))
+    return _first(
+        case, stops(case.bench.judged.context, _way(case.bench.judged, case.beam), case.taken)
+    )
 
 
 def _closing(case: _Case) -> Trial | None:
     if case.finding.check != "escape":
         return None
-    return _first(case, closings(case.bench.judged.context, case.beam))
+    return _first(case, closings(_way(case.bench.judged, case.beam)))
 
 
 def _coating(case: _Case) -> Trial | None:
@@ -170,7 +177,8 @@ def _stopped(case: _Case, trial: Trial, stray: Reported) -> Trial | None:
     """Return a change with a stop more that ends one stray."""
     taken = _names(trial.judged)
     before = len(case.bench.raised(trial))
-    for stop in islice(stops(trial.judged.context, _row(trial.judged, stray), taken), _FOLLOWING):
+    way = _way(trial.judged, _row(trial.judged, stray))
+    for stop in islice(stops(trial.judged.context, way, taken), _FOLLOWING):
         both = Change(
             trial.change.kind,
             f"{trial.change.words}; {stop.words}",

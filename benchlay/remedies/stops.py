@@ -8,10 +8,10 @@ from math import asin, atan2, ceil, degrees, hypot
 import numpy as np
 
 from benchlay.checks import Context
-from benchlay.optics import moments
 from benchlay.optics.rays import dot
 from benchlay.remedies.edits import Edit
 from benchlay.remedies.trials import Change, unused_name
+from benchlay.remedies.ways import Way
 from benchlay.scene.tables import Floats
 from benchlay.zones.enclosure_line import bench_line, enclosure_line, inside
 
@@ -29,56 +29,44 @@ _FROM_BEAMS_MM = 3.0  # from the axis of another beam to a stop's edge, at the l
 _GRID_MM = 0.5  # places are told to half a millimetre: a rule can be read so
 
 
-def stops(context: Context, beam: int, taken: list[str]) -> Iterator[Change]:
+def stops(context: Context, way: Way, taken: list[str]) -> Iterator[Change]:
     """Give screens and dumps that would end a beam on its leg, the likeliest first."""
-    power = float(context.trace.beams.start.power[beam])
-    order = ("dump", "screen") if power > _STRONG_W else ("screen", "dump")
-    spots = _spots(context, beam)
+    order = ("dump", "screen") if way.power_w > _STRONG_W else ("screen", "dump")
+    spots = _spots(context, way)
     for kind in order:
         for spot, free in spots:
             sizes = _WIDTHS_MM if kind == "screen" else (_OPENING_MM + 2.0 * _WALL_MM,)
             for size in (one for one in sizes if one / 2 + _FROM_BEAMS_MM <= free):
-                change = _stop(context, beam, spot, (kind, size), taken)
+                change = _stop(way, spot, (kind, size), taken)
                 if change is not None:
                     yield change
 
 
-def _spots(context: Context, beam: int) -> list[tuple[Floats, float]]:
+def _spots(context: Context, way: Way) -> list[tuple[Floats, float]]:
     """Return places on a leg, over the bench and within the enclosure, with the room there."""
-    start = context.trace.beams.start
-    origin, k = start.position[beam], start.direction[beam]
-    over = _way_over_bench(context, beam)
-    spots = [origin + share * over * k for share in _SHARES]
-    return [(spot, context.routes.apart(spot, beam)) for spot in spots]
+    over = _way_over_bench(way)
+    spots = [way.origin + share * over * way.direction for share in _SHARES]
+    return [(spot, context.routes.apart(spot, way.beam)) for spot in spots]
 
 
-def _way_over_bench(context: Context, beam: int) -> float:
+def _way_over_bench(way: Way) -> float:
     """Return how much of a leg, from its start, lies over the bench and in the enclosure, mm."""
-    start = context.trace.beams.start
-    origin, k = start.position[beam], start.direction[beam]
-    layout = context.layout(int(start.variant[beam]))
-    bench, line = bench_line(layout), enclosure_line(layout)
-    length = float(context.trace.beams.length[beam])
-    ways = np.linspace(0.0, length, 401)[1:]
+    bench, line = bench_line(way.layout), enclosure_line(way.layout)
     good = 0.0
-    for way in ways.tolist():
-        x, y, z = (origin + way * k).tolist()
+    for far in np.linspace(0.0, way.length_mm, 401)[1:].tolist():
+        x, y, z = (way.origin + far * way.direction).tolist()
         here = inside(bench, (x, y)) and inside(line, (x, y))
         if not here or z < 0.0 or z > line.top_mm:
             break
-        good = way
+        good = far
     return good
 
 
-def _stop(
-    context: Context, beam: int, spot: Floats, what: tuple[str, float], taken: list[str]
-) -> Change | None:
+def _stop(way: Way, spot: Floats, what: tuple[str, float], taken: list[str]) -> Change | None:
     """Return one stop that faces the beam; None where it would be too small for it."""
     kind, size = what
-    start = context.trace.beams.start
-    k = start.direction[beam]
-    way = float(dot(spot - start.position[beam], k))
-    needed = 2.0 * _RADII * _radius(context, beam, way)
+    k = way.direction
+    needed = 2.0 * _RADII * way.radius_mm(float(dot(spot - way.origin, k)))
     x, y, z = (round(float(v) / _GRID_MM) * _GRID_MM for v in spot)
     steep = abs(float(k[2])) > _STEEP
     # Along the leg so short a step changes nothing; across it the plate is wide enough.
@@ -101,7 +89,7 @@ def _stop(
         elif height == 2.0 * z:
             words += ", standing on the bench,"
     value = f"{{kind: {kind}, {pose}{body}}}"
-    words += f" ends the beam that leaves '{context.left_at(beam)}'"
+    words += f" ends the beam that leaves '{way.left}'"
     return Change(kind, words, (Edit(("elements",), name, value),))
 
 
@@ -110,11 +98,3 @@ def _height(z: float, needed: float, steep: bool) -> float:
     if not steep and 0.0 < 2.0 * z <= _TALLEST_MM and 2.0 * z >= needed:
         return 2.0 * z
     return max(75.0, 5.0 * ceil(needed / 5.0))
-
-
-def _radius(context: Context, beam: int, way_mm: float) -> float:
-    """Return the larger 1/e² radius some way along a leg, mm."""
-    start = context.trace.beams.start
-    m = moments.propagate(start.moments[:, beam], way_mm, start.index[beam])
-    w1, w2, _ = moments.radii(m)
-    return float(np.maximum(w1, w2))

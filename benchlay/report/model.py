@@ -124,12 +124,34 @@ class Remedy(NamedTuple):
     clears_too: tuple[str, ...] = ()
 
 
+class FaultRemedy(NamedTuple):
+    """A change that was tried out: with it a single fault lets nothing out at any setting.
+
+    No check finds anything new, and no other fault lets light out by another way. `clears_too`
+    names other faults that let nothing out any more, each with its state.
+    """
+
+    fault: str
+    state: str
+    kind: str
+    words: str
+    yaml: str
+    clears_too: tuple[str, ...] = ()
+
+
 class Remedies(NamedTuple):
-    """What would clear escapes and strays, what nothing clears, and how many were tried."""
+    """What would clear escapes and strays, what nothing clears, and how many were tried.
+
+    `of_faults` are changes that keep in what single faults send out, `faults_without` names the
+    faults for which none of those tried does, and `faults_left` counts those with no remedy yet.
+    """
 
     offered: tuple[Remedy, ...] = ()
     without: tuple[str, ...] = ()
     tried: int = 0
+    of_faults: tuple[FaultRemedy, ...] = ()
+    faults_without: tuple[str, ...] = ()
+    faults_left: int = 0
 
 
 class Review(NamedTuple):

@@ -17,6 +17,7 @@ from benchlay.report.words import Ink, listed, quoted, tame
 
 PLAIN = Ink()
 _SEVERITIES = ("fail", "warn", "note")
+_NAMED = 2  # faults that a change keeps in too
 _WORTH_ACCEPTING = ("fail", "warn")
 _GROWING = ("W", "J", "W/m2", "J/m2", "W/cm2", "J/cm2")  # of values that are worse when larger
 
@@ -104,7 +105,7 @@ def _finding_lines(finding: Reported, review: Review, ink: Ink) -> Iterator[str]
 def _remedy_lines(review: Review) -> Iterator[str]:
     """Write the changes that were tried out, each with what is to be pasted."""
     remedies = review.remedies
-    if remedies is None or not (remedies.offered or remedies.without):
+    if remedies is None or not any(remedies._replace(tried=0)):
         return
     if remedies.offered:
         yield "tried out: each of these clears its finding and raises no other"
@@ -114,7 +115,22 @@ def _remedy_lines(review: Review) -> Iterator[str]:
         yield from (f"      {tame(line)}" for line in remedy.yaml.split("\n"))
     for finding in remedies.without:
         yield f"  {finding}: no stop, panel, coating, tilt or wedge that was tried clears it alone"
+    if remedies.of_faults:
+        yield "tried out: with each of these a single fault lets nothing out, and no finding is new"
+    for one in remedies.of_faults:
+        yield f"  {tame(one.fault)} in {tame(one.state)}{_too(one.clears_too)}: {tame(one.words)}"
+        yield from (f"      {tame(line)}" for line in one.yaml.split("\n"))
+    for name in remedies.faults_without:
+        yield f"  {tame(name)}: no panel, lid, cover or stop that was tried keeps it in alone"
+    if remedies.faults_left:
+        yield f"  {remedies.faults_left} more faults that let light out: see faults.json"
     yield ""
+
+
+def _too(names: tuple[str, ...]) -> str:
+    """Say what else a change does, without naming more than a few."""
+    more = f" and {len(names) - _NAMED} more" if len(names) > _NAMED else ""
+    return f" (and {tame(', '.join(names[:_NAMED]))}{more})" if names else ""
 
 
 def _fault_lines(review: Review, ink: Ink) -> Iterator[str]:

@@ -4,17 +4,12 @@ from datetime import date
 
 import pytest
 import yaml
+from pasting import HEAD, merged
 
 import benchlay
 from benchlay import pipeline
 
 DAY = date(2026, 12, 1)
-HEAD = """\
-bench: {size: [800, 400]}
-sources:
-  red: {wavelength: 633, power: 50 mW, beam: {waist_radius: 0.5}, polarization: vertical,
-        at: [100, 200], heading: 0}
-"""
 PANELS = """\
 enclosure:
   to_height: 150
@@ -76,15 +71,6 @@ BENCHES = {
 
 def reviewed(text):
     return pipeline.review_files(text.encode(), "bench.yaml", on=DAY, state=None)[0]
-
-
-def merged(into, new):
-    for key, value in new.items():
-        if isinstance(value, dict) and isinstance(into.get(key), dict) and key not in ("beam",):
-            merged(into[key], value)
-        else:
-            into[key] = value
-    return into
 
 
 @pytest.fixture(scope="module", params=BENCHES)

@@ -68,14 +68,15 @@ class Routes:
         working: Flags = self._trace.beams.start.node >= 0
         return working
 
-    def apart(self, spot: Floats, beam: int) -> float:
+    def apart(self, spot: Floats, beam: int | None) -> float:
         """Return how far a place is from the nearest leg but one that a route needs, mm.
 
         Legs of all states count: what is put on the bench stands there in every one.
         """
         beams = self._trace.beams
         rows = np.flatnonzero(self.working)
-        rows = rows[rows != beam]
+        if beam is not None:
+            rows = rows[rows != beam]
         if not len(rows):
             return float("inf")
         away = spot - beams.start.position[rows]
