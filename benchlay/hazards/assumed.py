@@ -20,11 +20,12 @@ _ALWAYS = (
     "beams below the power floor (at most 1 % of the limit unless the layout says otherwise) "
     "are not followed",
     "scattered light is followed from its first surface to where eyes may be (the bands of eye "
-    "height)",
+    "height); a filter that passes no more of it than the limit, as the layout states, stops it",
     "matt surfaces scatter as the layout states (all of it where nothing is stated); for the "
     "class their light is met at 0.1 m, and the size of a spot is no reason to come nearer",
     "scale numbers are of EN 207:2017 as public copies print it, 5 s or the pulses of 5 s; "
-    "the factor for the diameter is from memory and is used for continuous light and the mean",
+    "the factor for the diameter is from memory and is used for continuous light and the mean; "
+    "where none of them reaches the density, the highest is raised to it",
 )
 
 

@@ -209,12 +209,18 @@ def scale_levels(nm: float, power_w: float, told: LineLimit, d63_mm: float) -> d
 
 
 def _words(of_lines: Sequence[dict[Mode, int]], density: float) -> str:
-    """Return scale numbers as they are written, each with at least the density."""
+    """Return scale numbers as they are written, one of them with at least the density.
+
+    A scale number is also the density that its filter has at this wavelength, whatever the mode:
+    one that is high enough is enough, and otherwise the highest is raised.
+    """
     least = math.ceil(density - 1e-9)
     highest: dict[Mode, int] = {}
     for levels in of_lines:
         for mode, level in levels.items():
-            highest[mode] = max(highest.get(mode, 0), level, least)
+            highest[mode] = max(highest.get(mode, 0), level)
+    if highest and max(highest.values()) < least:
+        highest[max(highest, key=lambda mode: (highest[mode], mode))] = least
     return " + ".join(
         f"{mode} LB{highest[mode]}" if highest[mode] <= HIGHEST_LEVEL else f"{mode} above LB10"
         for mode in Mode

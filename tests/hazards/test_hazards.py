@@ -397,3 +397,20 @@ def test_how_much_of_the_controlled_area_is_outside_a_shut_box():
     leak = hazards(LEAK)["as drawn"]
     assert 0.0 < leak.controlled_area_outside_m2 < leak.controlled_area_m2
     assert hazards(OPEN)["as drawn"].controlled_area_outside_m2 is None
+
+
+def test_a_number_for_pulses_that_is_dense_enough_raises_no_other():
+    # 50 mJ, 10 Hz, w = 2 mm: D: 0.5 W over 6.28 mm² is 7.96e4 W/m², LB4 (1e5); R: 50 mJ over
+    # it, times 50^(1/4), is 2.12e4 J/m², LB7 (5e4). OD 4.82, which a filter of R LB7 has.
+    text = PULSED.replace("2 mJ", "50 mJ").replace("waist_radius: 1", "waist_radius: 2")
+    (row,) = hazards(text)["as drawn"].eyewear
+    assert row.optical_density == pytest.approx(4.8117, abs=1e-3)
+    assert row.scale == "D LB4 + R LB7"
+
+
+def test_a_number_that_is_not_dense_enough_is_raised():
+    # 450 nm: 1 W/m² over 100 s. 100 mW, w = 5 mm: 2.5e3 W/m², LB3 (1e4), but OD 3.2.
+    text = OPEN.replace("532", "450").replace("150 mW", "100 mW").replace("0.5}", "5}")
+    (row,) = hazards(text)["as drawn"].eyewear
+    assert row.optical_density == pytest.approx(3.21, abs=0.01)
+    assert row.scale == "D LB4"
