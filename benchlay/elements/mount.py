@@ -15,6 +15,8 @@ from benchlay.named import NamedTuple
 
 _LENGTH = Quantity(Dimension.LENGTH, above=0.0)
 _COORDINATE = Quantity(Dimension.LENGTH)
+# No adjuster turns its optic out of the beam's way altogether, and a sweep takes its time.
+RANGE = Quantity(Dimension.ANGLE, at_least=0.0, at_most=radians(90.0))
 
 # Common practice: what a plain mount of an optic up to 50 mm looks like.
 ROUND_UP_TO_MM = 50.0
@@ -66,7 +68,7 @@ class Mount(Record):
         meaning="where its knobs or driver holes are",
     )
     range_rad: float = key(
-        Quantity(Dimension.ANGLE, at_least=0.0),
+        RANGE,
         default=radians(4.0),
         name="range",
         meaning="tilt, both ways",

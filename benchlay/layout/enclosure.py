@@ -131,6 +131,17 @@ class Fold(Record):
     sense: str = key(Choice("in", "out"), default="in", meaning="to which side it is folded")
     radius_mm: float = key(POSITIVE, default=2.0, name="radius", meaning="inner bending radius")
 
+    def after_read(self, reader: Reader) -> None:
+        """Refuse a flange that is all bend: outside, a bend is wider than its inner radius."""
+        if self.flange_mm <= self.radius_mm:
+            reader.complain(
+                self.spans["flange"],
+                f"a flange of {self.flange_mm:g} mm has no room for a bend of "
+                f"{self.radius_mm:g} mm",
+                expected=f"a flange wider than {self.radius_mm:g} mm and the sheet together",
+                remedy="make the flange wider, or the radius smaller",
+            )
+
 
 class Panel(Record):
     """An upright sheet; the inside is on its left going from `from` to `to`."""

@@ -6,6 +6,7 @@ from benchlay.document.form import Reader
 from benchlay.document.forms import Pair, Quantity, RecordForm, YesNo
 from benchlay.document.quantity import Dimension
 from benchlay.document.record import Record, key
+from benchlay.elements.mount import RANGE
 from benchlay.layout._forms import NOT_NEGATIVE, POSITIVE, SHARE
 
 
@@ -57,7 +58,7 @@ class Faults(Record):
     """Which single faults are credible: families by the kinds in the results, on or off."""
 
     range_rad: float = key(
-        Quantity(Dimension.ANGLE, at_least=0.0),
+        RANGE,
         default=0.0,
         name="range",
         meaning="how far every adjustable mount is knocked at least, both ways",

@@ -235,6 +235,21 @@ CASES = [
         ],
         id="endless-row",
     ),
+    pytest.param(
+        (
+            "bench: {size: [1500, 900]}\n"
+            "enclosure: {panels: {east: {from: [1500, 0], to: [1500, 900], fold: {flange: 1.5}}}}\n"
+        ),
+        [
+            (
+                "b.yaml:2:78: error: enclosure.panels.east.fold: a flange of 1.5 mm has no room "
+                "for a bend of 2 mm\n"
+                "  expected: a flange wider than 2 mm and the sheet together\n"
+                "  to mend: make the flange wider, or the radius smaller"
+            ),
+        ],
+        id="flange-all-bend",
+    ),
 ]
 
 

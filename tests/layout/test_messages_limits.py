@@ -50,6 +50,18 @@ CASES = [
         ],
         id="unknown",
     ),
+    pytest.param(
+        "bench: {size: [1500, 900]}\nlimits: {faults: {range: 91}}\n",
+        [
+            (
+                "b.yaml:2:26: error: limits.faults.range: '91' is too large\n"
+                "  expected: an angle of at least 0 deg and of at most 90 deg, "
+                "in deg or with its unit (deg ° arcmin arcsec mrad rad urad)\n"
+                "  to mend: write a value within the bounds, such as '30'"
+            ),
+        ],
+        id="range-of-faults",
+    ),
 ]
 
 
