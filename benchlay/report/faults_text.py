@@ -103,7 +103,7 @@ def guard_lines(result: FaultsResult) -> list[str]:
         cells: list[tuple[str, ...]] = [
             ("panel", "takes", "for", "withstands", "margin", "governs")
         ]
-        cells += [_panel(row) for row in result.panels]
+        cells += [_panel(row) for row in sorted(result.panels, key=_least_margin)]
         lines += ["panels and lids as guards, over states and faults:", *_columns(cells), ""]
     if result.windows:
         cells = [("window", "in", "at", "density", "needed", "for a full beam")]
@@ -120,17 +120,39 @@ def _sheet(kind: str, name: str) -> str:
     return tame(name if kind == "panel" else f"{kind} {name}")
 
 
+def overloaded(result: FaultsResult) -> list[str]:
+    """Name the panels and lids that withstand less than they may take, the worst first."""
+    rows = [row for row in result.panels if row.margin is not None and row.margin < 1.0]
+    return [
+        f"{_sheet(row.sheet, row.panel)} (takes {shown(row.value, row.unit or '')}, "
+        f"{_governs(row)}; withstands {shown(row.limit, row.unit or '')})"
+        for row in sorted(rows, key=_least_margin)
+    ]
+
+
+def _least_margin(row: PanelLoad) -> tuple[bool, bool, float]:
+    """Put first what withstands too little, then what is not shown, then the rest by margin."""
+    unlit = row.state is None
+    short = row.margin is not None and row.margin < 1.0
+    return unlit, not short and row.margin is not None, row.margin or 0.0
+
+
+def _governs(row: PanelLoad) -> str:
+    return tame(f"{row.fault or 'as it is'}, in {row.state}")
+
+
 def _panel(row: PanelLoad) -> tuple[str, ...]:
     unit = row.unit or ""
     margin = shown(row.margin) if row.margin is not None else f"not shown: {row.reason}"
-    governs = "" if row.state is None else f"{row.fault or 'as it is'}, in {row.state}"
+    if row.margin is not None and row.margin < 1.0:
+        margin += " (too little)"
     return (
         _sheet(row.sheet, row.panel),
         shown(row.value, unit),
         shown(row.exposed_s, "s"),
         shown(row.limit, unit),
         margin,
-        tame(governs),
+        "" if row.state is None else _governs(row),
     )
 
 

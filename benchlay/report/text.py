@@ -137,12 +137,14 @@ def _fault_lines(review: Review, ink: Ink) -> Iterator[str]:
     """Say how many single faults there are and what the worst would do; the rest is a file."""
     if review.faults is None:
         return
-    from benchlay.report.faults_text import summary, worst_line
+    from benchlay.report.faults_text import overloaded, summary, worst_line
 
     worst = worst_line(review.faults, ink)
     yield summary(review.faults)
     if worst is not None:
         yield f"  the worst: {worst}"
+    for guard in overloaded(review.faults):
+        yield f"  no guard against it: {guard}"
     yield "  all of them: faults.json, and `benchlay faults`; the verdict is of the layout as it is"
     yield ""
 

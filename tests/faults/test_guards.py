@@ -7,6 +7,7 @@ import pytest
 from benchlay.checks import Context, limits_of
 from benchlay.faults import review_faults
 from benchlay.pipeline import trace
+from benchlay.report.faults_text import guard_lines, overloaded
 from benchlay.results.faults import faults_result
 from benchlay.results.panels import panels_of_states
 
@@ -141,3 +142,23 @@ def test_bare_glass_is_hardly_dense(result):
     (row,) = result(opening=opening, more=more).windows
     assert row.density == pytest.approx(-2 * log10(0.96), abs=1e-9)
     assert row.enough is False
+
+
+def test_what_withstands_too_little_comes_first_and_is_named(result):
+    """15 W/cm2: less than what reaches north at 800, more than what reaches east at 900."""
+    assert peak(900) < 15.0 < peak(800)
+    found = result(RATED.replace("100 W", "15 W"))
+    rows = [line.split()[0] for line in guard_lines(found)[2:7]]
+    assert rows[:2] == ["north", "east"]
+    marked = [line for line in guard_lines(found) if "(too little)" in line]
+    assert [line.split()[0] for line in marked] == ["north"]
+    (words,) = overloaded(found)
+    assert words.startswith("north (takes ")
+    assert words.endswith("withstands 15 W/cm2)")
+    assert overloaded(result()) == []
+
+
+def test_what_is_not_shown_comes_before_what_holds_and_the_unlit_last(result):
+    rows = [line.split()[0] for line in guard_lines(result(rating=""))[2:7]]
+    lit = [row.panel for row in result(rating="").panels if row.state is not None]
+    assert set(rows[: len(lit)]) == set(lit)
