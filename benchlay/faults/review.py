@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Collection, Iterator, Mapping, Sequence
-from itertools import groupby
+from itertools import groupby, pairwise
 
 from benchlay.faults.batches import Tracer, whole_benches
 from benchlay.faults.between import CLOSEST_MM
@@ -65,7 +65,8 @@ class Review(NamedTuple):
     `cases` counts the variants that were traced, `passed_over` the faults of things that no
     hazardous light comes near. `step_mm` is the widest step in which rays between settings
     were held against the bench (and `narrowest_mm` the closest they were laid), `open_rad` the
-    widest doubt about an end of a range.
+    widest doubt about an end of a range in which light gets out, `stray_open_rad` of one in
+    which it ends astray inside.
     """
 
     faults: tuple[Fault, ...]
@@ -73,6 +74,7 @@ class Review(NamedTuple):
     passed_over: int
     step_mm: float
     open_rad: float
+    stray_open_rad: float
     narrowest_mm: float
     states: tuple[str, ...]
     budgets: tuple[Budget, ...]
@@ -128,7 +130,8 @@ def review_faults(
         sum(len(one.cases) for one in swept),
         len(untouched),
         max((one.step_mm for one in swept), default=0.0),
-        max((fault.open_rad for fault in found), default=0.0),
+        max((fault.open_rad for fault in found if fault.outcome != "stray"), default=0.0),
+        max((fault.open_rad for fault in found if fault.outcome == "stray"), default=0.0),
         CLOSEST_MM,
         spoken_of,
         tuple(budgets(placed.base.layout, loads_in(tracer, numbers, swept))),
@@ -212,8 +215,24 @@ def _fault(swept: Swept, setting: float) -> Fault:
         about,
         reasons,
         cases,
-        max(swept.open_rad, CLOSE_RAD) if family.sweep is not None else 0.0,
+        _open_rad(swept, outcome),
     )
+
+
+def _open_rad(swept: Swept, outcome: str) -> float:
+    """Return within how much the ends of a fault's ranges are known.
+
+    What gets out is followed to its edges; where light that stays inside ends is known at the
+    settings that were traced, and no nearer.
+    """
+    if swept.family.sweep is None:
+        return 0.0
+    widths = [swept.open_rad, CLOSE_RAD]
+    if outcome == "stray":
+        widths += [
+            b.setting_rad - a.setting_rad for a, b in pairwise(swept.cases) if _ways(a) != _ways(b)
+        ]
+    return max(widths)
 
 
 def _worst_case(cases: Sequence[Case], outcome: str) -> Case | None:

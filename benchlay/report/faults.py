@@ -66,11 +66,13 @@ class Resolution(NamedTuple):
     """How finely settings were gone through.
 
     Up to the first surface and beyond, rays between neighbouring settings were held against the
-    bench at most `step_mm` apart; ends of ranges are known within `range_deg`.
+    bench at most `step_mm` apart; ends of ranges in which light gets out are known within
+    `range_deg`, of those in which it ends astray inside within `stray_range_deg`.
     """
 
     step_mm: float
     range_deg: float
+    stray_range_deg: float
     narrowest_gap_mm: float
 
 

@@ -82,7 +82,8 @@ def _family(row: FaultRow) -> str:
 
 def _cells(same: Sequence[FaultRow]) -> tuple[str, ...]:
     row = same[0]
-    ranges = ", ".join(f"{a:g} to {b:g}°" for a, b in ([row.range] if row.range else []))
+    low, high = row.range or (0.0, 0.0)
+    ranges = f"{low:.4g} to {high:.4g}°" if low != high else f"at {low:.4g}°" if row.range else ""
     if len(row.ranges) > 1:
         ranges += f" (of {len(row.ranges)} ranges)"
     return (
@@ -189,7 +190,8 @@ def _remarks(result: FaultsResult) -> Iterator[str]:
     )
     yield (
         f"resolution: rays between settings at most {shown(resolution.step_mm, 'mm')} apart where "
-        f"they end; ends of ranges within {shown(resolution.range_deg, '°')}; gaps narrower than "
+        f"they end; ends of ranges within {shown(resolution.range_deg, '°')} where light gets out, "
+        f"{shown(resolution.stray_range_deg, '°')} where it ends inside; gaps narrower than "
         f"{shown(resolution.narrowest_gap_mm, 'mm')} may be passed over"
     )
     yield from (f"assumed: {words}" for words in result.assumed)

@@ -49,6 +49,7 @@ def faults_result(review: Review, placed: Placed, file: str, sha256: str) -> Fau
         Resolution(
             review.step_mm,
             degrees(review.open_rad),
+            degrees(review.stray_open_rad),
             max(review.step_mm, review.narrowest_mm),
         ),
         (*ASSUMED, *off),

@@ -138,3 +138,25 @@ def test_a_slot_out_of_reach_is_not(reviewed, named):
     ends = ("[3000, 2500]", "[0, 2500]", opening, "[0, 0]", "[3000, 0]")
     review = reviewed(MIRROR % ("[1300, 500]", 135) + WALL % ends, at="[500, 500]")
     assert named(review, "M1", "yaw").outcome != "escape"
+
+
+def test_how_near_the_ends_of_ranges_are_known_is_said_for_what_ends_inside_too(reviewed, named):
+    """A post 60 wide stands 1000 on, beside the beam: knocks from 1.7 to 3.4 degrees send it there.
+
+    Nothing gets out, so nothing is halved: the ends are known to within the first settings.
+    """
+    post = (
+        "  P1: {kind: obstacle, at: [1300, 1500], facing: 0, from_height: 0, to_height: 200,\n"
+        "       outline: [[60, 0], [120, 0], [120, 60], [60, 60]]}\n"
+    )
+    walls = WALL % ("[3000, 2500]", "[0, 2500]", "", "[0, 0]", "[3000, 0]")
+    review = reviewed(MIRROR % ("[1300, 500]", 135) + post + walls, at="[500, 500]")
+    fault = named(review, "M1", "yaw")
+    assert fault.outcome == "stray"
+    low, high = fault.range_of_worst
+    # The beam is turned by twice the yaw, clockwise: it meets the post from 60 to 120 aside.
+    edges = sorted(-atan(x / 1000.0) / 2 for x in (60.0, 120.0))
+    assert edges[0] <= low <= high <= edges[1]
+    doubt = max(low - edges[0], edges[1] - high)
+    assert radians(1e-3) < doubt <= fault.open_rad <= review.stray_open_rad
+    assert review.open_rad < radians(1e-3)
