@@ -37,7 +37,10 @@ _TIGHT_MM = 2 * ARROW_MM + 2.0
 
 
 class Parts(NamedTuple):
-    """The lines, arrowheads and figure of one dimension."""
+    """The lines, arrowheads and figure of one dimension.
+
+    Of a running one the last line leads to the figure.
+    """
 
     lines: tuple[Line, ...]
     arrows: tuple[Fill, ...]

@@ -8,6 +8,8 @@ What readers taught us (each tried):
 * Text is TEXT; the data of a block stands in invisible attributes besides.
 * A dimension is a true DIMENSION, with its picture drawn by us, so that it looks alike in
   every format; the style's values are in the header too, for readers that draw it anew.
+* Some draw the figure of a dimension along its line whatever is asked for: a running one has
+  none of its own, and a TEXT square to the line in its place.
 * ``%%`` starts a special sign in TEXT, ``^`` a control character, and ``\\U+`` a letter;
   in the text of a dimension a backslash and braces are commands.
 """
@@ -50,6 +52,7 @@ from benchlay.writers.dimension_lines import take_apart
 from benchlay.writers.dxf_setup import DIMSTYLE, LETTERING, NAME, document
 from benchlay.writers.dxf_text import rounded, safe_markup, safe_text
 
+_NO_FIGURE = " "  # as a dimension's text, it suppresses the figure
 # DIMENSION, group code 70
 _LINEAR, _ALIGNED, _OWN_BLOCK, _FIGURE_MOVED = 0, 1, 32, 128
 _MIDDLE = 0.5
@@ -159,13 +162,19 @@ class DxfBackend:
         picture = self._doc.blocks.new_anonymous_block(type_char="D")
         parts = take_apart(moved, self._sheet.scale, self._sheet.decimal)
         outer, paper = self._into, self._paper
+        own = parts.lines[:-1] if moved.running else parts.lines
         self._into, self._paper = picture, False
-        for line in parts.lines:
+        for line in own:
             self.line(line)
         for arrow in parts.arrows:
             self.fill(arrow)
-        self.text(parts.text)
-        self._into, self._paper = outer, paper
+        if not moved.running:
+            self.text(parts.text)
+        self._into = outer
+        if moved.running:
+            self.line(parts.lines[-1])
+            self.text(parts.text)
+        self._paper = paper
         attributes = self._dimension_attributes(moved, picture.name, parts.text)
         self._into.new_entity("DIMENSION", attributes)
 
@@ -263,5 +272,6 @@ class DxfBackend:
             "angle": 90.0 if dimension.axis is Axis.VERTICAL else 0.0,
         }
         if dimension.running:
-            attributes["text_rotation"] = figure.rotation_deg
+            attributes |= {"text_rotation": figure.rotation_deg, "text": _NO_FIGURE}
+            return attributes
         return attributes if words is None else attributes | {"text": words}
