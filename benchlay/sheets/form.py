@@ -37,6 +37,7 @@ from benchlay.sheets.title_block import HEIGHT_MM, TitleFields, title_block
 CAUTION = SHORT
 _CLEAR_MM = 2.0
 _PAD_MM = 1.4
+_OWN_LETTERS = 0.8  # of a line: stroke fonts that readers of DXF put in ours' place are wider
 _LEAST_BESIDE_MM = 40.0  # narrower is of no use
 _MOST_REVISIONS = 3  # the last ones; all stand on the plan
 _REVISIONS = (
@@ -180,7 +181,7 @@ def _form(
     out: list[Primitive] = [*frame(size, size_mm), *title_block(fields, size_mm)]
     left, foot = inner.right - WIDTH_MM, inner.low + HEIGHT_MM
     if caution:
-        lines = wrap(caution, WIDTH_MM - 2 * _PAD_MM, SMALL_MM)
+        lines = wrap(caution, _OWN_LETTERS * (WIDTH_MM - 2 * _PAD_MM), SMALL_MM)
         pitch = LINE_PITCH * SMALL_MM
         top = foot + (len(lines) - 1) * pitch + SMALL_MM + 2 * _PAD_MM + 0.4
         out.append(rectangle("TITLE", Window(left, foot, inner.right, top)))

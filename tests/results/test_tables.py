@@ -48,6 +48,7 @@ def test_setting_out_by_hand(made):
     _, row = read(made["setting-out.csv"])
     m1 = row["M1"]
     assert [float(m1[k]) for k in ("x (mm)", "y (mm)", "height (mm)")] == [400, 100, 100]
+    assert [float(m1[f"{k} from datum (mm)"]) for k in "XY"] == [387.5, 87.5]
     assert (float(m1["facing (deg)"]), float(m1["turn (deg)"])) == (135, 90)
     assert (m1["after"], float(m1["distance (mm)"])) == ("red", 300)
     # The post stands under the reference point. Holes are at 12.5 + 25 n: 387.5 and 412.5 in x

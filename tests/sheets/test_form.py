@@ -99,3 +99,26 @@ def test_a_filled_in_form_can_be_written():
     sheet = form.sheet("drilling", "holes", model=[Line("BENCH", (0.0, 0.0), (1.0, 0.0))])
     assert sheet.title == "Varnish fluorescence bench - Drilling sheet"
     assert any(r.primitive.layer == "BENCH" for r in recorder.record(sheet))
+
+
+def test_cautions_leave_room_for_wider_letters():
+    """Readers of DXF put stroke fonts in place of ours, up to a fifth wider (as measured)."""
+    form = form_for(FIELDS, size="A3")
+    (box,) = [
+        p
+        for p in form.primitives
+        if isinstance(p, Polyline)
+        and p.layer == "TITLE"
+        and p.closed
+        and any(abs(y - form.window.low + 2.0) < 1e-6 for _, y in p.points)
+    ]
+    right = max(x for x, _ in box.points)
+    texts = [p for p in form.primitives if isinstance(p, Text)]
+    lines = [
+        p
+        for p in texts
+        if len(p.text) > 3 and p.text in CAUTION and p.at[1] > max(y for _, y in box.points) - 12
+    ]
+    assert " ".join(p.text for p in lines) == CAUTION
+    for p in lines:
+        assert p.at[0] + 1.2 / 1.1 * width_mm(p.text, p.height_mm) < right

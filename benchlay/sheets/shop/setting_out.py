@@ -22,13 +22,15 @@ _LEVEL = 1e-9
 _HEADINGS = (
     Heading("name", 26.0),
     Heading("kind", 24.0),
-    Heading("x", 19.0, "mm"),
-    Heading("y", 19.0, "mm"),
+    Heading("x", 17.0, "mm"),
+    Heading("y", 17.0, "mm"),
+    Heading("X from datum", 17.0, "mm"),
+    Heading("Y from datum", 17.0, "mm"),
     Heading("height", 17.0, "mm"),
     Heading("facing", 18.0, "deg"),
     Heading("pitch", 14.0, "deg"),
     Heading("turn", 18.0, "deg"),
-    Heading("after", 42.0),
+    Heading("after", 38.0),
     Heading("distance", 20.0, "mm"),
     Heading("hole column", 15.0),
     Heading("hole row", 13.0),
@@ -37,7 +39,7 @@ _HEADINGS = (
     Heading("post", 16.0, "mm"),
     Heading("stock post", 14.0, "mm"),
     Heading("stock raises", 15.0, "mm"),
-    Heading("remark", 26.0),
+    Heading("remark", 20.0),
 )
 
 
@@ -97,8 +99,8 @@ def hole_at(grid: Holes, column: int, row: int) -> Point:
 def setting_out(placed: Placed) -> Rows:
     """Return the setting-out table of the bench as drawn, sources first, by name."""
     base = placed.base
-    rows = [_source(base.sources[name]) for name in sorted(base.sources)]
     grid = base.layout.bench.holes
+    rows = [_source(base.sources[name], grid) for name in sorted(base.sources)]
     reflecting = {
         item.item
         for element in base.elements.values()
@@ -114,8 +116,9 @@ def setting_out(placed: Placed) -> Rows:
 
 def _notes() -> Iterator[str]:
     yield (
-        "x, y and height of the reference point from the bench's near left corner and its top; "
-        "facing of the front normal, anticlockwise from +x."
+        "x and y of the reference point from the bench's near left corner; X and Y from the datum, "
+        "hole column 1, row 1, as on the plan (from the corner where there are no holes); height "
+        "above the bench's top; facing of the front normal, anticlockwise from +x."
     )
     yield (
         "Turn: of the nominal chief ray reflected at the front, positive to the left; distance: "
@@ -131,18 +134,19 @@ def _notes() -> Iterator[str]:
     )
 
 
-def _source(placed: PlacedSource) -> tuple[Cell, ...]:
+def _source(placed: PlacedSource, grid: Holes | None) -> tuple[Cell, ...]:
     remark = "out as drawn" if placed.source.stand.out else ""
     return (
-        *_pose(placed.source.name, "source", placed.pose),
+        *_pose(placed.source.name, "source", placed.pose, grid),
         None, "", None, None, None, None, None, None, None, None, remark,
     )  # fmt: skip
 
 
-def _pose(name: str, kind: str, pose: Pose) -> tuple[Cell, ...]:
+def _pose(name: str, kind: str, pose: Pose, grid: Holes | None) -> tuple[Cell, ...]:
     x, y, z = (_clean(v) for v in pose.at)
+    x0, y0 = grid.first_mm if grid is not None else (0.0, 0.0)
     return (
-        name, kind, x, y, z,
+        name, kind, x, y, _clean(x - x0), _clean(y - y0), z,
         _clean(degrees(pose.facing_rad) % 360.0) % 360.0, _clean(degrees(pose.pitch_rad)),
     )  # fmt: skip
 
@@ -169,7 +173,7 @@ def _element(
     if stands is not None:
         where = (*_hole(stands, grid), *_post(stands.length_mm))
     return (
-        *_pose(element.name, element.kind, placed.pose),
+        *_pose(element.name, element.kind, placed.pose, grid),
         turn, after, distance, *where, remark,
     )  # fmt: skip
 
