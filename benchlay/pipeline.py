@@ -250,8 +250,10 @@ def _remedies(
 
     own = Judged(reviewed.findings, checked.context)
     text = data.decode("utf-8-sig")
-    found = fault_offers(text, own, again, single.faults)
-    return offers(text, own, again)._replace(
+    at_rest = offers(text, own, again)
+    taken = [name for one in at_rest.offered for name in one.adds]
+    found = fault_offers(text, own, again, single.faults, taken)
+    return at_rest._replace(
         of_faults=found.offered, faults_without=found.without, faults_left=found.left
     )
 

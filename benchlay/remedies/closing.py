@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Sequence
 from math import ceil
 
 from benchlay.coverage.blockers import Place, Window
@@ -20,8 +20,11 @@ _OVERLAPS_MM = (30.0, 100.0)  # of a sheet before an opening: against light that
 _STEP_MM = 10.0  # panels are cut to whole centimetres: common practice
 
 
-def closings(way: Way) -> Iterator[Change]:
-    """Give what would close the enclosure where a beam leaves it; nothing without one."""
+def closings(way: Way, taken: Sequence[str] = ()) -> Iterator[Change]:
+    """Give what would close the enclosure where a beam leaves it; nothing without one.
+
+    `taken` are names that other offers use already: all can be pasted side by side.
+    """
     layout = way.layout
     line = enclosure_line(layout)
     if layout.enclosure is None or not line.enclosed:
@@ -31,21 +34,21 @@ def closings(way: Way) -> Iterator[Change]:
     found = leaving(line, (x, y), (kx, ky), way.length_mm)
     if found is None or found.side is None:
         if kz > 0.0:
-            yield _lid(layout, line)
+            yield _lid(layout, line, taken)
         return
     if found.side.panel is None:
-        yield _panel(layout, found.side)
+        yield _panel(layout, found.side, taken)
     else:
         at = (x + found.way_mm * kx, y + found.way_mm * ky, z + found.way_mm * kz)
         yield from _taller(layout, found.side.panel, at[2], _RADII * way.radius_mm(found.way_mm))
-        yield from _covers(layout, found.side.panel, at)
+        yield from _covers(layout, found.side.panel, at, taken)
         if kz > 0.0:
-            yield _lid(layout, line)
+            yield _lid(layout, line, taken)
 
 
-def _panel(layout: Layout, side: Side) -> Change:
+def _panel(layout: Layout, side: Side, taken: Sequence[str]) -> Change:
     assert layout.enclosure is not None
-    name = unused_name("panel", [*layout.enclosure.panels, *layout.enclosure.lids])
+    name = unused_name("panel", [*layout.enclosure.panels, *layout.enclosure.lids, *taken])
     (ax, ay), (bx, by) = side.start, side.end
     value = f"{{from: [{ax:g}, {ay:g}], to: [{bx:g}, {by:g}]}}"
     words = f"a panel from [{ax:g}, {ay:g}] to [{bx:g}, {by:g}] closes the side that is missing"
@@ -70,7 +73,7 @@ def _taller(layout: Layout, name: str, z: float, room: float) -> Iterator[Change
         yield Change("panel", words, (Edit(path, "from_height", "0"),))
 
 
-def _covers(layout: Layout, name: str, at: Place) -> Iterator[Change]:
+def _covers(layout: Layout, name: str, at: Place, taken: Sequence[str]) -> Iterator[Change]:
     """Give sheets before the opening that a beam leaves by: room for a cable, not for light."""
     assert layout.enclosure is not None
     panel = layout.enclosure.panels[name]
@@ -82,13 +85,13 @@ def _covers(layout: Layout, name: str, at: Place) -> Iterator[Change]:
         start, end, low, high = window.box
         if start <= along <= end and low <= at[2] <= high:
             for overlap in _OVERLAPS_MM:
-                yield _cover(layout, name, window, overlap)
+                yield _cover(layout, window, overlap, taken)
 
 
-def _cover(layout: Layout, name: str, window: Window, overlap_mm: float) -> Change:
+def _cover(layout: Layout, window: Window, overlap_mm: float, taken: Sequence[str]) -> Change:
     """Return a sheet inside of an opening, as far from it as a labyrinth's is."""
     assert layout.enclosure is not None
-    panel = layout.enclosure.panels[name]
+    panel = layout.enclosure.panels[window.name.partition(".")[0]]
     low, high = layout.enclosure.heights_mm(panel)
     thickness = material_of(layout, layout.enclosure.material_of(panel)).thickness_mm
     start = max(window.box[0] - overlap_mm, 0.0)
@@ -96,7 +99,7 @@ def _cover(layout: Layout, name: str, window: Window, overlap_mm: float) -> Chan
     top = min(high, _STEP_MM * ceil((window.box[3] + overlap_mm) / _STEP_MM))
     away = -(SPACING_MM + thickness)  # `place` counts outwards
     (ax, ay, _), (bx, by, _) = (window.place((along, 0.0), away) for along in (start, end))
-    cover = unused_name("cover", [*layout.enclosure.panels, *layout.enclosure.lids])
+    cover = unused_name("cover", [*layout.enclosure.panels, *layout.enclosure.lids, *taken])
     heights = f"from_height: {low:g}, to_height: {top:g}"
     value = f"{{from: [{ax:g}, {ay:g}], to: [{bx:g}, {by:g}], {heights}}}"
     words = (
@@ -106,9 +109,9 @@ def _cover(layout: Layout, name: str, window: Window, overlap_mm: float) -> Chan
     return Change("panel", words, (Edit(("enclosure", "panels"), cover, value),))
 
 
-def _lid(layout: Layout, line: EnclosureLine) -> Change:
+def _lid(layout: Layout, line: EnclosureLine, taken: Sequence[str]) -> Change:
     assert layout.enclosure is not None
-    name = unused_name("lid", [*layout.enclosure.panels, *layout.enclosure.lids])
+    name = unused_name("lid", [*layout.enclosure.panels, *layout.enclosure.lids, *taken])
     outline = ", ".join(f"[{x:g}, {y:g}]" for x, y in line.corners)
     value = f"{{height: {line.top_mm:g}, outline: [{outline}]}}"
     words = f"a lid over the whole enclosure at {line.top_mm:g} mm stands in its way"

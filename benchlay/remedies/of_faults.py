@@ -30,7 +30,11 @@ class FaultOffers(NamedTuple):
 
 
 def fault_offers(
-    text: str, judged: Judged, judge: Judgement, faults: Sequence[Fault]
+    text: str,
+    judged: Judged,
+    judge: Judgement,
+    faults: Sequence[Fault],
+    taken: Sequence[str] = (),
 ) -> FaultOffers:
     """Return what would keep in the light of the gravest faults.
 
@@ -44,6 +48,8 @@ def fault_offers(
         The same for any other text.
     faults : sequence of Fault
         Of its review, the gravest first.
+    taken : sequence of str
+        Names that other remedies use: all can be pasted side by side.
 
     Returns
     -------
@@ -54,7 +60,7 @@ def fault_offers(
         new.
     """
     out = [fault for fault in faults if fault.outcome == "escape"]
-    bench = _FaultyBench(Bench(text, judged, judge, _IN_ALL), out)
+    bench = _FaultyBench(Bench(text, judged, judge, _IN_ALL), out, taken)
     offered: list[FaultRemedy] = []
     without: list[str] = []
     covered: set[str] = set()
@@ -77,8 +83,8 @@ def fault_offers(
 class _FaultyBench:
     """A bench with the faults of it that send light out."""
 
-    def __init__(self, bench: Bench, faults: Sequence[Fault]) -> None:
-        self.bench = bench
+    def __init__(self, bench: Bench, faults: Sequence[Fault], taken: Sequence[str]) -> None:
+        self.bench, self._taken = bench, list(taken)
         self.faults = {fault.family.key: fault for fault in faults}
         self._states = bench.judged.context.trace.scene.variants
 
@@ -100,7 +106,7 @@ class _FaultyBench:
         layout = self.bench.judged.context.layout(fault.family.state)
         told: set[str] = set()
         for light in _farthest(fault):
-            for change in closings(way_of_light(layout, light)):
+            for change in closings(way_of_light(layout, light), self._taken):
                 if change.yaml not in told:
                     told.add(change.yaml)
                     yield change
@@ -109,7 +115,8 @@ class _FaultyBench:
         context, light = self.bench.judged.context, fault.worst
         assert light is not None
         layout = context.layout(fault.family.state)
-        yield from stops(context, way_of_light(layout, light), [*layout.sources, *layout.elements])
+        names = [*layout.sources, *layout.elements, *self._taken]
+        yield from stops(context, way_of_light(layout, light), names)
 
     def _tried(self, fault: Fault, change: Change) -> FaultRemedy | None:
         trial = self.bench.try_out(change)
@@ -119,6 +126,7 @@ class _FaultyBench:
         if fault.family.key not in kept_in:
             return None
         too = [self.name(self.faults[key]) for key in kept_in if key != fault.family.key]
+        self._taken += change.names
         return FaultRemedy(
             fault.name,
             self._states[fault.family.state],

@@ -25,7 +25,10 @@ _FOLLOWED = 2  # beams that one turned optic sends elsewhere
 
 
 class _Case(NamedTuple):
-    """A finding with the beam that it is about, in what it was found in."""
+    """A finding with the beam that it is about, in what it was found in.
+
+    `taken` are names that remedies of other findings use: all can be pasted side by side.
+    """
 
     bench: Bench
     finding: Reported
@@ -60,7 +63,8 @@ def offers(text: str, judged: Judged, judge: Judgement) -> Remedies:
         if finding.check not in MENDED or finding.accepted or finding.beam is None:
             continue
         bench.left = min(_PER_FINDING, _IN_ALL - bench.tried)
-        found = list(_remedies(_case(bench, finding), known))
+        taken = [name for _, trial in known for name in trial.change.names]
+        found = list(_remedies(_case(bench, finding, taken), known))
         offered += [_remedy(bench, finding, trial) for trial in found]
         if not found:
             without.append(finding.id)
@@ -88,8 +92,8 @@ def _clears(case: _Case, trial: Trial) -> bool:
     return case.bench.clears(trial, case.finding.id)
 
 
-def _case(bench: Bench, finding: Reported) -> _Case:
-    return _Case(bench, finding, _row(bench.judged, finding), _names(bench.judged))
+def _case(bench: Bench, finding: Reported, taken: list[str]) -> _Case:
+    return _Case(bench, finding, _row(bench.judged, finding), taken)
 
 
 def _row(judged: Judged, finding: Reported) -> int:
@@ -109,15 +113,16 @@ def _names(judged: Judged) -> list[str]:
 
 
 def _stop(case: _Case) -> Trial | None:
+    judged = case.bench.judged
     return _first(
-        case, stops(case.bench.judged.context, _way(case.bench.judged, case.beam), case.taken)
+        case, stops(judged.context, _way(judged, case.beam), [*_names(judged), *case.taken])
     )
 
 
 def _closing(case: _Case) -> Trial | None:
     if case.finding.check != "escape":
         return None
-    return _first(case, closings(_way(case.bench.judged, case.beam)))
+    return _first(case, closings(_way(case.bench.judged, case.beam), case.taken))
 
 
 def _coating(case: _Case) -> Trial | None:
@@ -175,7 +180,7 @@ def _settled(case: _Case, trial: Trial) -> Trial | None:
 
 def _stopped(case: _Case, trial: Trial, stray: Reported) -> Trial | None:
     """Return a change with a stop more that ends one stray."""
-    taken = _names(trial.judged)
+    taken = [*_names(trial.judged), *case.taken]
     before = len(case.bench.raised(trial))
     way = _way(trial.judged, _row(trial.judged, stray))
     for stop in islice(stops(trial.judged.context, way, taken), _FOLLOWING):
@@ -195,4 +200,6 @@ def _stopped(case: _Case, trial: Trial, stray: Reported) -> Trial | None:
 def _remedy(bench: Bench, finding: Reported, trial: Trial) -> Remedy:
     gone = set(bench.judged.weights()) - set(trial.judged.weights()) - {finding.id}
     change = trial.change
-    return Remedy(finding.id, change.kind, change.words, change.yaml, tuple(sorted(gone)))
+    return Remedy(
+        finding.id, change.kind, change.words, change.yaml, tuple(sorted(gone)), change.names
+    )

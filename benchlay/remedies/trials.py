@@ -11,6 +11,8 @@ from benchlay.named import NamedTuple
 from benchlay.remedies.edits import Edit, apply, pasted
 from benchlay.report.model import Reported
 
+_NAMED = (("elements",), ("enclosure", "panels"), ("enclosure", "lids"))
+
 
 class Judged(NamedTuple):
     """What the checks say of a text: the findings, and what they were found in."""
@@ -38,6 +40,11 @@ class Change(NamedTuple):
     def yaml(self) -> str:
         """What is to be pasted."""
         return pasted(self.edits)
+
+    @property
+    def names(self) -> tuple[str, ...]:
+        """What it adds to the layout, by name."""
+        return tuple(edit.key for edit in self.edits if edit.path in _NAMED)
 
 
 class Trial(NamedTuple):

@@ -114,7 +114,8 @@ class Remedy(NamedTuple):
     """A change that was tried out: it clears a finding and raises no other.
 
     `kind` is screen, dump, panel, lid, coating, tilt or wedge, `yaml` what is to be pasted into
-    the layout, `clears_too` the other findings that it clears.
+    the layout, `clears_too` the other findings that it clears, `adds` the names of what it puts
+    on the bench or round it.
     """
 
     finding: str
@@ -122,6 +123,7 @@ class Remedy(NamedTuple):
     words: str
     yaml: str
     clears_too: tuple[str, ...] = ()
+    adds: tuple[str, ...] = ()
 
 
 class FaultRemedy(NamedTuple):

@@ -144,7 +144,7 @@ def _fault_lines(review: Review, ink: Ink) -> Iterator[str]:
     if worst is not None:
         yield f"  the worst: {worst}"
     for guard in overloaded(review.faults):
-        yield f"  no guard against it: {guard}"
+        yield f"  overloaded by a fault: {guard}"
     yield "  all of them: faults.json, and `benchlay faults`; the verdict is of the layout as it is"
     yield ""
 

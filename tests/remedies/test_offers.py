@@ -123,3 +123,22 @@ def test_a_finding_that_nothing_clears_is_told():
 def test_a_bench_without_such_findings_costs_no_trial():
     text = HEAD + "elements:\n  T1: {kind: target, after: red, distance: 100}\n"
     assert reviewed(text + "routes: {main: [red, T1]}\n").remedies.tried == 0
+
+
+def test_all_remedies_can_be_pasted_side_by_side():
+    """Two windows send ghosts two ways: the screens that end them have names of their own."""
+    second = (
+        "  W2: {kind: window, after: W1, distance: 100, incidence: 45, side: right,\n"
+        "       diameter: 25.4, back: 0.01 %}\n"
+        "  T1: {kind: target, after: W2, distance: 100}\n"
+    )
+    text = HEAD + GHOST.replace("  T1: {kind: target, after: W1, distance: 100}\n", second).replace(
+        "W1, T1", "W1, W2, T1"
+    )
+    remedies = reviewed(text).remedies.offered
+    added = {}
+    for remedy in remedies:
+        for name in yaml.safe_load(remedy.yaml).get("elements", {}):
+            if name in remedy.adds:
+                assert added.setdefault(name, remedy.yaml) == remedy.yaml
+    assert len(added) >= 2
