@@ -125,10 +125,11 @@ def _template(subject: Subject) -> Iterator[Planned]:
     trace, state = subject.trace, subject.trace.placed.states[subject.variant]
     legs = legs_of(trace, limits_of(trace), subject.variant, ".").legs
     drawing = drawing_of(state, legs)
-    for tile in tiles(state.layout, drawing):
+    cells = tiles(state.layout, drawing)
+    for page, tile in enumerate(cells, start=1):
 
-        def sheet(_: str, tile: Tile = tile) -> Sheet:
-            return template_sheet(tile, drawing, state.layout, subject.sha256)
+        def sheet(_: str, tile: Tile = tile, number: str = f"{page}/{len(cells)}") -> Sheet:
+            return template_sheet(tile, drawing, state.layout, subject.sha256, number)
 
         yield Planned(name_of(tile), sheet, numbered=False, forms=("pdf",), within="template")
 

@@ -1,8 +1,8 @@
 """Template: the plan 1:1 on sheets of A3 to be joined on the bench.
 
 A3 lying, since the check line of 300 mm does not fit on A4. Every sheet shows one cell of the
-plan and a strip beyond it; cells meet in their register crosses. What has nothing on it but bench
-is not printed.
+plan and a strip beyond it; cells meet in their register crosses. Fine crosses are the bench's
+holes, by which the paper is laid on it. What has nothing on it but bench is not printed.
 """
 
 from __future__ import annotations
@@ -12,13 +12,16 @@ from collections.abc import Iterable, Iterator
 
 import shapely
 
+from benchlay.exposure.cautions import SHORT
 from benchlay.layout.layout import Layout
 from benchlay.named import NamedTuple
 from benchlay.placing.placed import PlacedState
 from benchlay.sheets.contents import Item, Leg
 from benchlay.sheets.drafting.outlines import items_of
+from benchlay.sheets.drafting.surroundings import holes_of
 from benchlay.sheets.layers import sheet_layers
-from benchlay.sheets.lettering import LARGE_MM, MIDDLE_MM, SMALL_MM, shorten
+from benchlay.sheets.lettering import LARGE_MM, MIDDLE_MM, SMALL_MM, shorten, width_mm
+from benchlay.sheets.placing_text import Crowd
 from benchlay.sheets.plan.items import placed, straightened
 from benchlay.sheets.primitives import (
     Across,
@@ -43,6 +46,7 @@ _BEYOND_MM = 5.0
 _CROSS_MM = 4.0
 _OFF_MM = 6.0  # of words from what they name
 _HOLE_MM = 3.0
+_FINE_MM = 1.5  # of the crosses at holes, either way
 _STEPS = 96  # of a circle as chords: off by 0.05 % of its radius
 
 Stroke = tuple[str, tuple[Point, ...]]
@@ -131,8 +135,8 @@ def tiles(layout: Layout, drawing: Drawing) -> list[Tile]:
     return [t for t in every if shapely.intersects(shapely.box(*t.window), things)]
 
 
-def template_sheet(tile: Tile, drawing: Drawing, layout: Layout, sha256: str) -> Sheet:
-    """Return the sheet of a cell."""
+def template_sheet(tile: Tile, drawing: Drawing, layout: Layout, sha256: str, number: str) -> Sheet:
+    """Return the sheet of a cell; its number is that among the template's pages, as 2/7."""
     origin = (_CORNER_MM[0] - tile.corner[0], _CORNER_MM[1] - tile.corner[1])
     name = name_of(tile)
     return Sheet(
@@ -144,8 +148,8 @@ def template_sheet(tile: Tile, drawing: Drawing, layout: Layout, sha256: str) ->
         origin_mm=origin,
         window_mm=(_CORNER_MM, (_CORNER_MM[0] + CELL_MM[0], _CORNER_MM[1] + CELL_MM[1])),
         layers=sheet_layers(()),
-        model=tuple(_shown(tile, drawing)),
-        paper=tuple(_furniture(tile, layout, sha256)),
+        model=tuple(_shown(tile, drawing, layout)),
+        paper=tuple(_furniture(tile, layout, sha256, number)),
         properties=(("layout sha256", sha256),),
     )
 
@@ -155,20 +159,54 @@ def name_of(tile: Tile) -> str:
     return f"template-{tile.column}-{tile.row}"
 
 
-def _shown(tile: Tile, drawing: Drawing) -> Iterator[Primitive]:
+def _shown(tile: Tile, drawing: Drawing, layout: Layout) -> Iterator[Primitive]:
     window = tile.window
+    crowd = Crowd(window)
     for layer, points in drawing.strokes:
         piece = shapely.clip_by_rect(shapely.LineString(points), *window)
         for part in shapely.get_parts(piece):
             corners = tuple((float(x), float(y)) for x, y in part.coords)
             if len(corners) > 1:
+                crowd.add_line(corners, beam=True)
                 yield Polyline(layer, corners)
-    for (x, y), words in drawing.words:
-        if window.left <= x <= window.right and window.low <= y <= window.high:
-            yield Text("TAGS", (x + _OFF_MM, y + _OFF_MM), words, MIDDLE_MM)
+    for at, words in drawing.words:
+        if window.left <= at[0] <= window.right and window.low <= at[1] <= window.high:
+            yield from _named(words, at, crowd)
+    yield from _holes(layout, window, crowd.boxes)
 
 
-def _furniture(tile: Tile, layout: Layout, sha256: str) -> Iterator[Primitive]:
+def _named(words: str, at: Point, crowd: Crowd) -> Iterator[Primitive]:
+    """Write words near their place, clear of lines, with a leader where that is not beside it."""
+    place = crowd.place((width_mm(words, MIDDLE_MM), MIDDLE_MM), [(at, _OFF_MM)])
+    if place is None:
+        yield Text("TAGS", (at[0] + _OFF_MM, at[1] + _OFF_MM), words, MIDDLE_MM)
+        return
+    yield Text("TAGS", place.middle, words, MIDDLE_MM, Across.CENTRE, Up.MIDDLE)
+    if place.leader is not None:
+        yield Line("TAGS", *place.leader)
+
+
+def _holes(layout: Layout, window: Window, lettering: Iterable[Window]) -> Iterator[Line]:
+    """Draw a small cross at every hole of the bench, none of them under lettering."""
+    grid, reach, boxes = holes_of(layout), _FINE_MM, list(lettering)
+    if grid is None:
+        return
+    for column in range(grid.columns):
+        x = grid.first[0] + column * grid.pitch_mm
+        if not window.left + reach <= x <= window.right - reach:
+            continue
+        for row in range(grid.rows):
+            y = grid.first[1] + row * grid.pitch_mm
+            if not window.low + reach <= y <= window.high - reach:
+                continue
+            near = (b.left - reach < x < b.right + reach for b in boxes)
+            over = (b.low - reach < y < b.high + reach for b in boxes)
+            if not any(map(all, zip(near, over, strict=True))):
+                yield Line("HOLES", (x - reach, y), (x + reach, y))
+                yield Line("HOLES", (x, y - reach), (x, y + reach))
+
+
+def _furniture(tile: Tile, layout: Layout, sha256: str, number: str) -> Iterator[Primitive]:
     (x0, y0), (width, height) = _CORNER_MM, CELL_MM
     for x in (x0, x0 + width):
         for y in (y0, y0 + height):
@@ -183,7 +221,8 @@ def _furniture(tile: Tile, layout: Layout, sha256: str) -> Iterator[Primitive]:
     words = f"{CHECK_MM:g} mm: measure before use; print at 100 %"
     yield Text("NOTES", (_SIZE_MM[0] / 2, 16.0), words, SMALL_MM, Across.CENTRE)
     top = _SIZE_MM[1] - 12.0
-    heading = f"TEMPLATE 1:1  column {tile.column}, row {tile.row}"
+    heading = f"TEMPLATE 1:1  column {tile.column}, row {tile.row}; page {number}"
+    yield Text("NOTES", (_SIZE_MM[0] / 2, 6.5), SHORT, SMALL_MM, Across.CENTRE)
     yield Text("TITLE", (x0, top), heading, LARGE_MM, up=Up.MIDDLE)
     d = layout.drawing
     about = [layout.title, d.number, layout.revision and f"rev {layout.revision}", sha256[:16]]

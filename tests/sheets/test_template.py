@@ -12,6 +12,7 @@ from benchlay import pipeline
 from benchlay.checks import Context, limits_of
 from benchlay.results.drawings import drawings
 from benchlay.sheets import SHEETS, Subject
+from benchlay.sheets.lettering import width_mm
 from benchlay.sheets.primitives import Circle, Line, Polyline, Text, to_paper
 from benchlay.sheets.template import CELL_MM, drawing_of, tiles
 
@@ -91,9 +92,29 @@ def test_a_mirror_is_where_it_stands(sheets):
     ]
     assert found
     for sheet, text in found:
-        x, y = to_paper(sheet, text.at)
+        assert math.dist(text.at, (400.0, 100.0)) < 40.0
+        x, y = to_paper(sheet, (400.0, 100.0))
         left, low = 20.0 - sheet.origin_mm[0], 30.0 - sheet.origin_mm[1]
-        assert (x - 20.0 + left, y - 30.0 + low) == pytest.approx((406.0, 106.0))
+        assert (x - 20.0 + left, y - 30.0 + low) == pytest.approx((400.0, 100.0))
+
+
+def test_words_stand_on_no_line_and_holes_are_where_the_bench_has_them(sheets):
+    for sheet in sheets:
+        lines = [shapely.LineString(p.points) for p in sheet.model if isinstance(p, Polyline)]
+        crosses = [p for p in sheet.model if isinstance(p, Line) and p.layer == "HOLES"]
+        for text in (p for p in sheet.model if isinstance(p, Text)):
+            wide, tall = width_mm(text.text, text.height_mm) / 2.2, text.height_mm / 2
+            x, y = text.at
+            box = shapely.box(x - wide, y - tall, x + wide, y + tall)
+            assert not any(box.intersects(line) for line in lines), (sheet.name, text.text)
+            assert not any(box.intersects(shapely.LineString([c.start, c.end])) for c in crosses)
+        assert crosses
+        for c in crosses:
+            for a, b in zip(c.start, c.end, strict=True):
+                assert ((a + b) / 2) % 25.0 == pytest.approx(0.0, abs=1e-9)
+    headings = [p.text for s in sheets for p in s.paper if isinstance(p, Text)]
+    count = len(sheets)
+    assert f"TEMPLATE 1:1  column 1, row 1; page 1/{count}" in headings
 
 
 def test_one_file_of_many_pages_all_a3(trace):
