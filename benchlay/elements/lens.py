@@ -28,6 +28,9 @@ _FOCAL = Quantity(Dimension.LENGTH)
 _DRAWN_INDEX = 1.5  # for the picture only: radii of the drawn lens are 2 (n - 1) f
 _ARC_STEPS = 12
 _STRONGEST = 1.05  # a drawn radius is at least this many times the half width
+# By the sine condition no lens in air has a focal length below half of what it takes in. An
+# outline may be wider than that, so half of it again is read; below, it is a slip.
+_SHORTEST = 0.5  # of half the outline
 _EDGE_MM = 0.8  # of a drawn convex lens, at least
 
 
@@ -78,6 +81,15 @@ class Lens(Sized, ElementKind):
                 expected="a length other than 0; negative for a diverging lens",
                 remedy="write the focal length, such as 'focal: 200'",
             )
+        elif self.focal_mm is not None and (self.diameter_mm or self.size_mm):
+            shortest = _SHORTEST * min(self.outline().radii)
+            if abs(self.focal_mm) < shortest:
+                reader.complain(
+                    self.span_of("focal"),
+                    f"no lens this wide has a focal length of {self.focal_mm:g} mm",
+                    expected=f"at least {shortest:g} mm, a quarter of its width",
+                    remedy="check the unit: a bare number is in mm",
+                )
 
     def geometry(self) -> Geometry:
         """Return two bending faces in one place."""

@@ -59,7 +59,7 @@ def test_a_strong_lens_keeps_an_edge(make):
 
 
 def test_the_strongest_is_drawn_all_the_same(make):
-    front = section(make, "diameter: 20, focal: 1")
+    front = section(make, "diameter: 20, focal: 5")
     assert np.isfinite(front).all()
     assert (front[:, 0] > 0.0).all()
 
@@ -77,6 +77,14 @@ def test_the_strongest_is_drawn_all_the_same(make):
                 "a focal length of 0 mm",
                 "a length other than 0; negative for a diverging lens",
                 "write the focal length, such as 'focal: 200'",
+            ),
+        ),
+        (
+            "focal: -4.99",
+            (
+                "no lens this wide has a focal length of -4.99 mm",
+                "at least 5 mm, a quarter of its width",
+                "check the unit: a bare number is in mm",
             ),
         ),
         (
