@@ -20,6 +20,8 @@ Floats = NDArray[np.float64]
 CELL_MM = 1.0
 _STEP = 0.25  # of a cell: so finely lines are sampled
 
+_LONG_MM = 10_000.0  # longer than any sheet: only what runs over the window is sampled
+
 
 class FreeRoom:
     """Cells of a window on paper, and which of them are taken."""
@@ -40,6 +42,8 @@ class FreeRoom:
 
     def take_line(self, start: Point, end: Point) -> None:
         """Take the cells that a straight line runs through."""
+        if math.dist(start, end) > _LONG_MM:
+            start, end = self._near(start, end)
         count = max(2, math.ceil(math.dist(start, end) / (_STEP * CELL_MM)))
         x = np.linspace(start[0], end[0], count) - self._window.left
         y = np.linspace(start[1], end[1], count) - self._window.low
@@ -47,6 +51,24 @@ class FreeRoom:
         high, wide = self._taken.shape
         inside = (rows >= 0) & (rows < high) & (columns >= 0) & (columns < wide)
         self._taken[rows[inside], columns[inside]] = True
+
+    def _near(self, start: Point, end: Point) -> tuple[Point, Point]:
+        """Return the stretch of a line over the window; one of no length where it misses it."""
+        window = self._window
+        low, high = 0.0, 1.0
+        for a, b, least, most in (
+            (start[0], end[0], window.left, window.right),
+            (start[1], end[1], window.low, window.high),
+        ):
+            if a != b:
+                first, last = sorted(((least - a) / (b - a), (most - a) / (b - a)))
+                low, high = max(low, first), min(high, last)
+        high = max(low, high)
+        at, to = (
+            (start[0] + t * (end[0] - start[0]), start[1] + t * (end[1] - start[1]))
+            for t in (low, high)
+        )
+        return at, to
 
     def places(self, size_mm: Point, near: Point, most: int) -> Floats:
         """Return free boxes (K, 4) of a size, the nearest to a point first, `most` at most.

@@ -59,3 +59,13 @@ def test_where_nothing_is_free_nothing_is_found():
     assert len(room.places((41.0, 1.0), (20.0, 30.0), 10)) == 0
     room.take_box(Window(0.0, 0.0, 100.0, 100.0))
     assert len(room.places((1.0, 1.0), (20.0, 30.0), 10)) == 0
+
+
+@pytest.mark.parametrize("reach", [20.0, 1e9])
+def test_a_line_takes_the_same_cells_however_far_it_runs_on(reach):
+    room = FreeRoom(FIELD)
+    room.take_line((30.5 - reach, 40.5), (30.5 + reach, 40.5))
+    room.take_line((30.5, 40.5 - reach), (30.5, 40.5 + reach))
+    taken = [Window(10.0, 40.0, 50.0, 41.0), Window(30.0, 20.0, 31.0, 60.0)]
+    found = room.places((6.0, 4.0), (20.0, 30.0), 10_000)
+    assert {tuple(box[:2]) for box in found.tolist()} == free_by_hand(taken, (6.0, 4.0))
