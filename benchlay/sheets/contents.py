@@ -159,6 +159,7 @@ class Picture(NamedTuple):
     warning: tuple[str, ...] = ()  # in large letters: the hazard in reach, eyewear
     signs: tuple[tuple[str, str, str], ...] = ()  # number, least size, what and where
     zones_are: ZoneWords = ZoneWords()
+    set_out: bool = True  # running dimensions to every element
     legend: tuple[BeamEntry, ...] = ()
     revisions: tuple[tuple[str, str, str, str], ...] = ()  # rev, date, what, by
     notes: tuple[str, ...] = ()

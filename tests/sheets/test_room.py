@@ -1,17 +1,28 @@
 """The room plan: true to size, with every sign in a place of its own."""
 
 import io
-import math
 from pathlib import Path
 
 import ezdxf
 import pytest
+import shapely
 
 from benchlay import pipeline
 from benchlay.checks import Context, limits_of
 from benchlay.results.drawings import drawings
 from benchlay.sheets import SHEETS, Subject
-from benchlay.sheets.primitives import Dimension, Polyline, Text
+from benchlay.sheets.lettering import width_mm
+from benchlay.sheets.primitives import (
+    Across,
+    Circle,
+    Dimension,
+    Line,
+    Polyline,
+    Text,
+    Up,
+    measured,
+    to_paper,
+)
 from benchlay.zones import zones_of
 
 ROOT = Path(__file__).parents[2]
@@ -38,8 +49,8 @@ def sheet(trace):
 
 def test_clear_widths_by_hand(sheet):
     # The bench is 1800 by 1000 at the origin, the room from (-1500, -2000) to (3500, 1800).
-    found = sorted(math.dist(p.first, p.second) for p in sheet.model if isinstance(p, Dimension))
-    assert found == [800.0, 1500.0, 1700.0, 2000.0]
+    found = sorted(measured(p) for p in sheet.model if isinstance(p, Dimension))
+    assert found == [800.0, 1500.0, 1700.0, 2000.0, 3800.0, 5000.0]
 
 
 def test_walls_are_the_layouts(sheet):
@@ -68,7 +79,7 @@ def test_read_back(trace):
     doc = ezdxf.read(io.StringIO(files["room.dxf"].decode()))
     assert not doc.audit().errors
     said = sorted(d.get_measurement() for d in doc.modelspace().query("DIMENSION"))
-    assert said == pytest.approx([800, 1500, 1700, 2000], abs=1e-6)
+    assert said == pytest.approx([800, 1500, 1700, 2000, 3800, 5000], abs=1e-6)
 
 
 def test_there_is_none_without_a_room():
@@ -77,3 +88,31 @@ def test_there_is_none_without_a_room():
     )
     trace = pipeline.trace(pipeline.place(pipeline.read("x.yaml", text)))
     assert not list(SHEETS["room"](Subject(Context(trace, limits_of(trace.placed)), None, (), "")))
+
+
+@pytest.mark.parametrize("name", ["bad", "gas-cell", "stone-cleaning"])
+def test_no_words_overlap_or_stand_on_walls_bench_people_and_doors(name):
+    trace = pipeline.trace(pipeline.place(pipeline.read(ROOT / "layouts" / f"{name}.yaml")))
+    context = Context(trace, limits_of(trace.placed))
+    (planned,) = SHEETS["room"](Subject(context, zones_of(trace), (), "0" * 64))
+    sheet = planned.compose("1/1")
+    lines = []
+    for p in sheet.model:
+        if isinstance(p, Polyline) and p.layer in {"PANELS", "BENCH"}:
+            lines.append(shapely.LinearRing([to_paper(sheet, at) for at in p.points]))
+        if isinstance(p, Line) and p.layer != "HAZARD":
+            lines.append(shapely.LineString([to_paper(sheet, at) for at in (p.start, p.end)]))
+        if isinstance(p, Circle):
+            disc = shapely.Point(to_paper(sheet, p.centre)).buffer(p.radius / sheet.scale)
+            lines.append(disc.exterior)
+    boxes = []
+    for p in sheet.paper:
+        if isinstance(p, Text) and p.layer == "TAGS":
+            wide, tall = width_mm(p.text, p.height_mm) / 1.1, p.height_mm
+            x = p.at[0] - {Across.LEFT: 0.0, Across.CENTRE: wide / 2, Across.RIGHT: wide}[p.across]
+            y = p.at[1] - {Up.BASELINE: 0.0, Up.MIDDLE: tall / 2, Up.TOP: tall}[p.up]
+            boxes.append((p.text, shapely.box(x, y, x + wide, y + tall)))
+    assert len(boxes) > 2
+    for n, (words, box) in enumerate(boxes):
+        assert not any(box.intersects(line) for line in lines), words
+        assert not any(box.intersects(other) for _, other in boxes[n + 1 :]), words

@@ -51,6 +51,7 @@ def faults_picture(
         mirror_stretches=(),
         zones=tuple(_zone(fan, names, plain.decimal) for fan in fans[:MOST]),
         zones_are=_WORDS,
+        set_out=False,  # fans would run through the figures, which stand on the plan
         notes=_notes(fans, review, plain.decimal),
     )
 

@@ -21,7 +21,7 @@ _SAME_MM = 0.05  # places that differ by less have one figure
 
 def setting_out(picture: Picture, board: Board) -> Iterator[Dimension]:
     """Yield a dimension for every place of an element along X, then along Y."""
-    if picture.holes is None or not picture.items:
+    if picture.holes is None or not picture.items or not picture.set_out:
         return
     xs, ys = [p[0] for p in picture.outline], [p[1] for p in picture.outline]
     right, top = max(xs), max(ys)

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import itertools
 import math
 from collections.abc import Iterator, Sequence
 
@@ -29,8 +30,11 @@ from benchlay.sheets.primitives import (
     Text,
     Up,
     figure,
+    line_ends,
+    measured,
 )
 from benchlay.sheets.room.furniture import door_drawn, marks_of, window_drawn
+from benchlay.sheets.room.widths import WALK_MM, extent, overall, walkways
 from benchlay.sheets.room.words import Places, box_of, leader
 from benchlay.sheets.safety.marks import warning_mark
 from benchlay.sheets.scale import SCALES, Window
@@ -50,7 +54,7 @@ _BAND_MM, _SPACING_MM = 6.0, 3.0
 _MARK_MM = 5.0
 _BENCH = "bench"  # needs no line that leads to it
 _PERSON_MM = 250.0  # radius of what someone takes up (common practice)
-_WALK_MM = 900.0  # common practice: what two people need to pass
+_CHORDS = 24  # of a circle, for keeping words off it
 
 
 class Subject(NamedTuple):
@@ -67,7 +71,7 @@ def room_sheet(subject: Subject, room: Room, sha256: str, sheet_number: str) -> 
     layout = subject.layout
     decimal = "." if layout.drawing.decimal == "point" else ","
     fields = title_fields(layout, TITLE, sha256)._replace(sheet=sheet_number)
-    low, high = _extent(room)
+    low, high = extent(room)
     form, view, scale = _form(fields, (high[0] - low[0], high[1] - low[1]))
     origin = (
         (view.left + view.right) / 2 - (low[0] + high[0]) / 2 / scale,
@@ -93,11 +97,6 @@ def room_sheet(subject: Subject, room: Room, sha256: str, sheet_number: str) -> 
         properties=(("drawing number", layout.drawing.number), ("layout sha256", sha256)),
         decimal=decimal,
     )
-
-
-def _extent(room: Room) -> tuple[Point, Point]:
-    xs, ys = zip(*room.outline, strict=True)
-    return (min(xs), min(ys)), (max(xs), max(ys))
 
 
 def _form(fields: TitleFields, size: Point) -> tuple[Form, Window, int]:
@@ -136,6 +135,7 @@ def _drawn(subject: Subject, room: Room, scale: int) -> Iterator[Primitive]:
     for name in sorted(room.people):
         yield Circle("BODIES", room.people[name].at_mm, _PERSON_MM)
     yield from walkways(layout, room)
+    yield from overall(room, scale)
 
 
 def _middle(corners: Sequence[Point]) -> Point:
@@ -161,7 +161,7 @@ def _lettered(subject: Subject, room: Room, board: _Board) -> Iterator[Primitive
         right=board.window.right - _COLUMN_MM, high=board.window.high - _HEADING_MM
     )
     places = Places(field)
-    for dimension in walkways(subject.layout, room):
+    for dimension in (*walkways(subject.layout, room), *overall(room, board.scale)):
         places.take(_figure_box(dimension, board))
     for primitive in _drawn(subject, room, board.scale):
         for start, end in _edges(primitive):
@@ -182,14 +182,19 @@ def _lettered(subject: Subject, room: Room, board: _Board) -> Iterator[Primitive
 
 
 def _edges(primitive: Primitive) -> list[tuple[Point, Point]]:
-    """Return the lines that words keep off; hatching and circles may have words in them."""
+    """Return the lines that words keep off; hatching may have words in it."""
     if isinstance(primitive, Polyline):
         after = (*primitive.points[1:], primitive.points[0])
         return list(zip(primitive.points, after, strict=True))
     if isinstance(primitive, Line) and primitive.layer != "HAZARD":
         return [(primitive.start, primitive.end)]
+    if isinstance(primitive, Circle):
+        (x, y), r = primitive.centre, primitive.radius
+        turns = [math.tau * n / _CHORDS for n in range(_CHORDS + 1)]
+        ring = [(x + r * math.cos(t), y + r * math.sin(t)) for t in turns]
+        return list(itertools.pairwise(ring))
     if isinstance(primitive, Dimension):
-        return [(primitive.first, primitive.second)]
+        return [line_ends(primitive)]
     return []
 
 
@@ -205,8 +210,8 @@ def _names(layout: Layout, room: Room) -> Iterator[tuple[Point, str]]:
 
 def _figure_box(dimension: Dimension, board: _Board) -> Window:
     """Return the box round the figure of a dimension along x or y."""
-    (ax, ay), (bx, by) = (board.on_paper(p) for p in (dimension.first, dimension.second))
-    words = figure(math.dist(dimension.first, dimension.second), dimension.decimals, ".")
+    (ax, ay), (bx, by) = (board.on_paper(p) for p in line_ends(dimension))
+    words = figure(measured(dimension), dimension.decimals, ".")
     lift = 1.0 + dimension.height_mm / 2
     upright = dimension.axis is Axis.VERTICAL
     at = ((ax + bx) / 2 - (lift if upright else 0.0), (ay + by) / 2 + (0.0 if upright else lift))
@@ -224,32 +229,6 @@ def _hazard(areas: Sequence[ControlledArea], room: Room, scale: int) -> Iterator
             points = tuple((float(x), float(y)) for x, y in ring.coords[:-1])
             yield Polyline("HAZARD", points, closed=True)
     yield from hatch("HAZARD", rim(within, _BAND_MM * scale), _SPACING_MM * scale, 45.0)
-
-
-def walkways(layout: Layout, room: Room) -> list[Dimension]:
-    """Return what is clear between each side of the bench and the wall beyond it."""
-    x0, y0, x1, y1 = shapely.Polygon(layout.bench.outline).bounds
-    walls = shapely.Polygon(room.outline).boundary
-    reach = sum(abs(v) for corner in _extent(room) for v in corner) + abs(x1) + abs(y1)
-    # Off the middle, where a bench has its name and a door often is.
-    x, y = x0 + 0.3 * (x1 - x0), y0 + 0.3 * (y1 - y0)
-    out = []
-    for start, (dx, dy) in (
-        ((x0, y), (-1, 0)),
-        ((x1, y), (1, 0)),
-        ((x, y0), (0, -1)),
-        ((x, y1), (0, 1)),
-    ):
-        ray = shapely.LineString([start, (start[0] + dx * reach, start[1] + dy * reach)])
-        hits = shapely.get_coordinates(shapely.intersection(ray, walls)).tolist()
-        if not hits:
-            continue
-        _, end = min((math.dist(hit, start), tuple(hit)) for hit in hits)
-        if math.dist(start, end) > 1.0:
-            axis = Axis.HORIZONTAL if dx else Axis.VERTICAL
-            first, second = sorted((start, (float(end[0]), float(end[1]))))
-            out.append(Dimension("DIMENSIONS", axis, first, second, start))
-    return out
 
 
 _SIGNS = (Column("Sign", 14.0), Column("Where", 62.0), Column("Label, mm", 28.0))
@@ -298,12 +277,12 @@ def _notes(subject: Subject, room: Room, decimal: str) -> Iterator[str]:
     narrow = [
         f"{d.axis.value} {figure(math.dist(d.first, d.second), 0, decimal)}"
         for d in walkways(subject.layout, room)
-        if 1.0 < math.dist(d.first, d.second) < _WALK_MM
+        if 1.0 < math.dist(d.first, d.second) < WALK_MM
     ]
     yield (
         "Figures beside the bench: clear width to the wall, furniture not counted"
         + (
-            f"; narrower than {_WALK_MM:g}, which two people need to pass: {', '.join(narrow)}."
+            f"; narrower than {WALK_MM:g}, which two people need to pass: {', '.join(narrow)}."
             if narrow
             else "."
         )
