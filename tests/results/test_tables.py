@@ -72,6 +72,7 @@ def test_parts_that_are_alike_share_an_item(made):
     by_names = {row["names"]: row for row in rows if row["what"] == "mirror"}
     # M3 differs from the others in its coating only.
     assert {names: row["quantity"] for names, row in by_names.items()} == {"M1, M2": "2", "M3": "1"}
+    assert by_names["M1, M2"]["data"] != by_names["M3"]["data"]  # who orders them sees why
     (panel,) = (row for row in rows if row["what"] == "panel")
     assert (panel["quantity"], panel["names"]) == ("2", "east, west")
     assert [int(row["item"]) for row in rows] == list(range(1, len(rows) + 1))

@@ -8,6 +8,7 @@ from math import degrees
 from typing import TypeAlias
 
 from benchlay.document.record import Record
+from benchlay.elements._coating import Band, Coating
 from benchlay.elements._kind import Glass
 from benchlay.elements.mount import Holder
 from benchlay.geometry.outline import Outline
@@ -43,9 +44,9 @@ def parts_list(state: PlacedState) -> Rows:
     notes = (
         "Counted from the layout: things of the same kind and data share an item. Elements that "
         "a state takes out are counted too. Lengths in mm; posts run from the bench's top to the "
-        "mount. Coatings "
-        "stand in the layout; elements that differ in them are items of their own. Screws, "
-        "clamps, cables and switches are not in the layout and not listed.",
+        "mount. Of coatings, what they reflect is listed; elements that differ in what is not "
+        "listed are items of their own. Screws, clamps, cables and switches are not in the layout "
+        "and not listed.",
     )
     return Rows("parts", "Parts list", _HEADINGS, rows, notes)
 
@@ -73,7 +74,7 @@ def _source_data(placed: PlacedSource) -> str:
 def _data(record: Record) -> tuple[str, str]:
     """Return what a record says in words, and what it says that no words here are found for.
 
-    Coatings and the like stand in the layout; things that differ in them are other things.
+    Tables inside it stand in the layout; things that differ in them are other things.
     """
     out, others = [], []
     for attribute, spec in record.KEYS.items():
@@ -81,9 +82,9 @@ def _data(record: Record) -> tuple[str, str]:
         if spec.name in _SETTINGS or value is None:
             continue
         text = _value(degrees(value) if attribute.endswith("_rad") else value)
-        if not text:
+        if not text or isinstance(value, Coating):
             others.append(f"{spec.name} {_PLACE.sub('', repr(value))}")
-        elif _telling(attribute, value, spec.default):
+        if text and _telling(attribute, value, spec.default):
             out.append(f"{spec.name} {text}{' deg' if attribute.endswith('_rad') else ''}")
     return ", ".join(out), "; ".join(others)
 
@@ -106,6 +107,8 @@ def _value(value: object) -> str:
             words = value
         case Outline():
             words = _wide(value)
+        case Coating():
+            words = _coated(value)
         case Glass():
             words = value.name or f"index {value.ratio:g}"
         case tuple() if value and all(isinstance(v, float | int) for v in value):
@@ -113,6 +116,22 @@ def _value(value: object) -> str:
         case _:
             words = ""
     return words
+
+
+def _coated(coating: Coating) -> str:
+    """Return what a coating reflects, band by band; of what is not coated, nothing."""
+    if coating.metal:
+        return coating.metal
+    return ", ".join(_band(band) for band in coating.bands)
+
+
+def _band(band: Band) -> str:
+    words = f"{100 * band.s:.6g} %"
+    if band.s != band.p:
+        words = f"s {words} p {100 * band.p:.6g} %"
+    if band.from_nm is None or band.to_nm is None:
+        return words
+    return f"{words} at {band.from_nm:g} to {band.to_nm:g} nm"
 
 
 def _wide(outline: Outline) -> str:
