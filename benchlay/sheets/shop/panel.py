@@ -227,6 +227,8 @@ def _notes(part: Part, layout: Layout, decimal: str) -> Iterator[str]:
         yield f"Mass not computed: no density is stated for {part.material or 'the material'}."
     else:
         yield f"Mass {num(part.mass_kg, 1)} kg each, by {num(part.density_kg_m3 or 0.0, 0)} kg/m3."
+    if not blank.holes:
+        yield "No fixing holes: the layout states none."
     if not part.draft.lacks:
         yield f"Cut from cut-{part.name}.dxf: the same contours, 1:1."
     yield from (f"{words[0].upper()}{words[1:]}." for words in part.draft.remarks)

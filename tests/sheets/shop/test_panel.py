@@ -150,3 +150,10 @@ def test_rectangular_openings_are_named_with_their_size(words_of):
     )
     said = words_of(sheets_of(text)["south"])
     assert {"view 200 x 100", "slit 3 x 4"} <= set(said)
+
+
+def test_a_sheet_without_fixing_holes_says_so(words_of):
+    made = sheets_of(TEXT)
+    said = {name: " ".join(words_of(made[name])) for name in ("north", "south")}
+    assert "No fixing holes" in said["north"]
+    assert "No fixing holes" not in said["south"]
