@@ -16,21 +16,21 @@ from __future__ import annotations
 from typing import TYPE_CHECKING, Any
 
 if TYPE_CHECKING:
-    from benchlay.pipeline import LayoutError, check, draw, place, read, trace
+    from benchlay.stages import LayoutError, check, draw, place, read, trace
 
 __version__ = "0.1.0"
 
 __all__ = ["LayoutError", "__version__", "check", "draw", "place", "read", "trace"]
 
 
-def __getattr__(name: str) -> Any:  # noqa: ANN401 - whatever the pipeline offers
-    """Load a public name from the pipeline when it is asked for."""
+def __getattr__(name: str) -> Any:  # noqa: ANN401 - whatever the stages offer
+    """Load a public name from the stages when it is asked for."""
     if name not in __all__:
         msg = f"module 'benchlay' has no attribute {name!r}"
         raise AttributeError(msg)
-    from benchlay import pipeline
+    from benchlay import stages
 
-    return getattr(pipeline, name)
+    return getattr(stages, name)
 
 
 def __dir__() -> list[str]:

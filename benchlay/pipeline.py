@@ -1,28 +1,34 @@
-"""The stages in a row: what the commands and Python users call.
+"""What the commands ask for: a file's bytes in, results out, a user's mistakes among them.
 
-`read`, `place`, `trace`, `check` and `draw` are the public stages. A layout that cannot be
-used raises `LayoutError`, which carries every problem in it. The functions with `review` and
-`result` in their names are what the commands use: they take a file's bytes and return
-problems as results.
+The stages themselves, which raise `LayoutError`, are those of `benchlay.stages`; they can be
+had from here too.
 """
 
 from __future__ import annotations
 
-import os
 import re
-from collections.abc import Sequence
 from datetime import date
 from typing import TYPE_CHECKING
 
-from benchlay.document.problems import Problem, Problems
+from benchlay.document.problems import Problem
 from benchlay.document.span import Span
 from benchlay.document.words import nearest
-from benchlay.layout import AS_DRAWN, LayoutSource, read_layout
+from benchlay.layout import AS_DRAWN, LayoutSource
 from benchlay.placing import Placed
-from benchlay.report.model import LayoutErrors, Reported, Review
+from benchlay.report.model import LayoutErrors, Review
+from benchlay.stages import (
+    LayoutError,
+    check,
+    checked_of,
+    draw,
+    drawn,
+    fault_review,
+    place,
+    read,
+    trace,
+)
 
 if TYPE_CHECKING:
-    from benchlay.checks import Context
     from benchlay.faults import Review as FaultReview
     from benchlay.faults.sweeps import Progress
     from benchlay.report.details import TraceResult
@@ -30,121 +36,22 @@ if TYPE_CHECKING:
     from benchlay.report.model import Remedies
     from benchlay.results.review import Checked
     from benchlay.tracing import Trace
-    from benchlay.zones import Zones
+
+__all__ = [
+    "LayoutError",
+    "check",
+    "draw",
+    "draw_files",
+    "faults_result",
+    "place",
+    "read",
+    "review",
+    "review_files",
+    "trace",
+    "trace_result",
+]
 
 _LINE_BREAK = re.compile("\r\n|[\n\r\x85\u2028\u2029]")  # what counts as one in YAML
-
-
-class LayoutError(Exception):
-    """A layout that cannot be used.
-
-    Attributes
-    ----------
-    problems : tuple of Problem
-        All that is wrong with it, in the order of the file.
-    """
-
-    def __init__(self, problems: tuple[Problem, ...]) -> None:
-        super().__init__("\n".join(map(str, problems)))
-        self.problems = problems
-
-
-def read(file: str | os.PathLike[str], text: str | bytes | None = None) -> LayoutSource:
-    """Read a layout.
-
-    Parameters
-    ----------
-    file : str or path
-        The file; its name stands in every message.
-    text : str or bytes, optional
-        What it holds, where it is not to be read from disk.
-
-    Returns
-    -------
-    LayoutSource
-        The layout in every state, `as drawn` first, the others by name.
-
-    Raises
-    ------
-    LayoutError
-        If anything is wrong with what is written.
-    OSError
-        If the file cannot be read.
-    """
-    if text is None:
-        with open(file, "rb") as opened:
-            text = opened.read()
-    layout, problems = read_layout(text, os.fspath(file))
-    if layout is None:
-        raise LayoutError(tuple(problems.sorted()))
-    others = sorted(name for name in layout.layouts if name != AS_DRAWN)
-    return layout._replace(layouts={name: layout.layouts[name] for name in (AS_DRAWN, *others)})
-
-
-def place(layout: LayoutSource) -> Placed:
-    """Place every source and element in every state, along the nominal chief ray.
-
-    Raises
-    ------
-    LayoutError
-        If a place is ambiguous, hangs on itself or cannot be reached by a beam.
-    """
-    from benchlay.placing import place as solve
-
-    problems = Problems()
-    placed = solve(layout, problems)
-    if placed is None:
-        raise LayoutError(tuple(problems.sorted()))
-    return placed
-
-
-def trace(placed: Placed) -> Trace:
-    """Trace the light of every state down to the power floor."""
-    from benchlay.checks import floors_w, limits_of
-    from benchlay.tracing import trace as follow
-
-    return follow(placed, floors_w(placed, limits_of(placed)))
-
-
-def check(
-    traced: Trace, *, on: date | None = None, states: Sequence[str] | None = None
-) -> tuple[Reported, ...]:
-    """Run every check in every state.
-
-    Parameters
-    ----------
-    traced : Trace
-        From `trace`.
-    on : date, optional
-        The day on which the layout's accept entries are held against what is found; without
-        one they are left alone, and nothing counts as accepted.
-    states : sequence of str, optional
-        The states to speak of; all of them by default.
-
-    Returns
-    -------
-    tuple of Reported
-        The gravest first; each over all the states in which it holds.
-    """
-    from benchlay.results.review import judge
-
-    return judge(_checked(traced, states), on).findings
-
-
-def draw(traced: Trace) -> dict[str, bytes]:
-    """Draw every sheet in each of its formats.
-
-    Returns
-    -------
-    dict of str to bytes
-        By file name, such as ``plan.dxf``.
-
-    Raises
-    ------
-    LayoutError
-        If a sheet fits on no paper, or not on the one that the layout asks for.
-    """
-    return _drawn(traced)
 
 
 def review(
@@ -181,20 +88,7 @@ def _faults(
 ) -> FaultsResult:
     from benchlay.results.faults import faults_result as put_together
 
-    return put_together(_fault_review(placed, state, progress), placed, file, _digest(data))
-
-
-def _fault_review(
-    placed: Placed, state: str | None, progress: Progress | None = None
-) -> FaultReview:
-    from benchlay.faults import review_faults
-
-    return review_faults(placed, None if state is None else (state,), progress or _nobody)
-
-
-def _nobody(done: int, total: int) -> None:
-    """Tell nobody how far it is."""
-    del done, total
+    return put_together(fault_review(placed, state, progress), placed, file, _digest(data))
 
 
 def review_files(
@@ -209,8 +103,8 @@ def review_files(
     try:
         reviewed, checked = _reviewed(data, file, on=on, state=state, in_full=True)
         placed = checked.trace.placed
-        single = _fault_review(placed, state, progress)
-        drawings = _drawn(
+        single = fault_review(placed, state, progress)
+        drawings = drawn(
             checked.trace,
             reviewed.findings,
             checked.zones,
@@ -243,7 +137,7 @@ def _remedies(
 
     def again(text: str) -> Judged | None:
         try:
-            other = _checked(trace(place(read(reviewed.layout, text))), checked.states)
+            other = checked_of(trace(place(read(reviewed.layout, text))), checked.states)
         except LayoutError:
             return None
         return Judged(judge(other, on).findings, other.context)
@@ -264,45 +158,9 @@ def draw_files(
     """Draw the sheets asked for (all of them for None), each in its forms, by file name."""
     try:
         traced = trace(place(read(file, data)))
-        return _drawn(traced, digest=_digest(data), sheet=sheet, form=form)
+        return drawn(traced, digest=_digest(data), sheet=sheet, form=form)
     except LayoutError as error:
         return LayoutErrors(file, error.problems, _lines(data))
-
-
-def _drawn(
-    traced: Trace,
-    judged: Sequence[Reported] = (),
-    zones: Zones | None = None,
-    digest: str = "",
-    *,
-    state: str | None = None,
-    sheet: str | None = None,
-    form: str | None = None,
-    faults: FaultReview | None = None,
-    context: Context | None = None,
-) -> dict[str, bytes]:
-    from benchlay.results.drawings import drawings, refusals
-
-    problems = refusals(traced.placed.base.layout, sheet, form)
-    if problems:
-        raise LayoutError(problems)
-    # Whether there is a sheet of faults decides how many the set has: they are reviewed for any.
-    if faults is None:
-        faults = _fault_review(traced.placed, state)
-    made = drawings(
-        traced,
-        judged,
-        zones,
-        digest,
-        state=state,
-        sheet=sheet,
-        form=form,
-        faults=faults,
-        context=context,
-    )
-    if isinstance(made, Problem):
-        raise LayoutError((made,))
-    return made
 
 
 def _traced(traced: Trace, file: str, state: str) -> TraceResult:
@@ -328,7 +186,7 @@ def _reviewed(
     from benchlay.results.review import review as put_together
 
     traced = trace(place(_with_state(read(file, data), state)))
-    checked = _checked(traced, None if state is None else (state,))
+    checked = checked_of(traced, None if state is None else (state,))
     if in_full:
         # Loaded here: polygons take longer to load than all the rest of a plain check.
         from benchlay.zones import zones_of
@@ -336,16 +194,6 @@ def _reviewed(
         checked = checked._replace(zones=zones_of(traced, checked.states))
     paper = Paper(file, _digest(data) if in_full else "", _lines(data))
     return put_together(checked, paper, on, in_full=in_full), checked
-
-
-def _checked(traced: Trace, states: Sequence[str] | None) -> Checked:
-    from benchlay.checks import Context, limits_of, run_checks
-    from benchlay.results.review import Checked
-
-    context = Context(traced, limits_of(traced.placed))
-    findings, runs = run_checks(context)
-    spoken_of = traced.scene.variants if states is None else tuple(states)
-    return Checked(context, tuple(findings), tuple(runs), spoken_of)
 
 
 def _digest(data: bytes) -> str:
