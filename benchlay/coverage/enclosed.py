@@ -175,22 +175,26 @@ def _sheet(name: str, start: Pair, end: Pair, thickness_mm: float) -> Prism:
 
 
 def _walls(layout: Layout, line: EnclosureLine) -> Iterator[Prism]:
-    """Yield the walls of the room that close a side of the line where no panel stands.
+    """Yield the walls of the room that close a side of the line where no panel stands."""
+    for side in line.sides:
+        if layout.room is not None and side.panel is None and at_wall(layout, side):
+            floor = -layout.bench.surface_height_mm
+            wall = _sheet("wall", side.start, side.end, 100.0)
+            yield wall._replace(low_mm=floor, high_mm=floor + layout.room.height_mm)
+
+
+def at_wall(layout: Layout, side: Side) -> bool:
+    """Whether a wall of the room closes a side of the enclosure.
 
     A wall further away does not count: people stand between.
     """
     if layout.room is None:
-        return
+        return False
     corners = layout.room.outline
-    floor = -layout.bench.surface_height_mm
-    for side in line.sides:
-        if side.panel is not None:
-            continue
-        for start, end in zip(corners, corners[1:] + corners[:1], strict=True):
-            if all(from_line(p, start, end) <= _AT_WALL_MM for p in (side.start, side.end)):
-                wall = _sheet("wall", side.start, side.end, 100.0)
-                yield wall._replace(low_mm=floor, high_mm=floor + layout.room.height_mm)
-                break
+    return any(
+        all(from_line(point, start, end) <= _AT_WALL_MM for point in (side.start, side.end))
+        for start, end in zip(corners, corners[1:] + corners[:1], strict=True)
+    )
 
 
 def from_line(point: Pair, start: Pair, end: Pair) -> float:

@@ -8,6 +8,7 @@ import numpy as np
 import shapely
 
 from benchlay.checks import Context, accessible_w
+from benchlay.coverage.enclosed import at_wall
 from benchlay.layout.enclosure import Enclosure
 from benchlay.layout.layout import Layout
 from benchlay.named import NamedTuple
@@ -77,7 +78,8 @@ def why_open(layout: Layout, line: EnclosureLine) -> tuple[str, ...]:
     if enclosure is None or not line.enclosed:
         return ("the bench has no enclosure",)
     out = []
-    gaps = [math.dist(side.start, side.end) for side in line.sides if side.panel is None]
+    missing = [side for side in line.sides if side.panel is None and not at_wall(layout, side)]
+    gaps = [math.dist(side.start, side.end) for side in missing]
     if gaps:
         out.append(f"no panel closes {max(gaps):.3g} mm of the enclosure's side")
     out += [f"panel {name} is open" for name in sorted(enclosure.panels) if _open(enclosure, name)]
