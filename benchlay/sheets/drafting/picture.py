@@ -240,7 +240,11 @@ def _strays(legs: DrawnLegs, decimal: str) -> str:
     if not (legs.strays or legs.weak or legs.left_out):
         return "No stray light outside optics was traced above the power floor."
     out = f"Stray beams above the limit: {legs.strays}"
-    out += ", each tagged." if legs.tags == legs.strays else f", under {legs.tags} tags."
+    out += (
+        ", each tagged."
+        if legs.tags == legs.strays
+        else f", under {legs.tags} {'tag' if legs.tags == 1 else 'tags'}."
+    )
     if legs.weak:
         out += f" Below it, {_legs(legs.weak)} from {percent} % of the limit up without tags."
     if legs.left_out:
