@@ -9,6 +9,7 @@ from __future__ import annotations
 
 from benchlay.named import NamedTuple
 from benchlay.sheets.primitives import Point
+from benchlay.sheets.scale import Window
 from benchlay.sheets.title_block import TitleFields
 
 Place = tuple[float, float, float]
@@ -160,6 +161,7 @@ class Picture(NamedTuple):
     signs: tuple[tuple[str, str, str], ...] = ()  # number, least size, what and where
     zones_are: ZoneWords = ZoneWords()
     set_out: bool = True  # running dimensions to every element
+    part: Window | None = None  # of the bench, where this shows one of its parts
     legend: tuple[BeamEntry, ...] = ()
     revisions: tuple[tuple[str, str, str, str], ...] = ()  # rev, date, what, by
     notes: tuple[str, ...] = ()
@@ -167,3 +169,7 @@ class Picture(NamedTuple):
     sheet: str | None = None
     scale: int | None = None
     decimal: str = ","
+
+    def shows(self, x: float) -> bool:
+        """Whether a place across lies in the part of the bench that is drawn."""
+        return self.part is None or self.part.left <= x <= self.part.right

@@ -32,6 +32,7 @@ from benchlay.sheets.plan.further import further
 from benchlay.sheets.plan.gaps import gaps, shading
 from benchlay.sheets.plan.items import blocks_and_uses
 from benchlay.sheets.plan.panels import lids, panels
+from benchlay.sheets.plan.parts import SMALLEST, parts
 from benchlay.sheets.plan.setting_out import setting_out
 from benchlay.sheets.plan.tags import Tagged, tags, untagged
 from benchlay.sheets.plan.warning import warning
@@ -71,7 +72,7 @@ def compose(picture: Picture) -> Sheet:
 
 
 def sheets(picture: Picture) -> list[tuple[str, Callable[[str], Sheet]]]:
-    """Compose the plan and the further sheets that its tables need.
+    """Compose the plan, the further sheets that its tables need, and parts of a long bench.
 
     Returns
     -------
@@ -84,7 +85,10 @@ def sheets(picture: Picture) -> list[tuple[str, Callable[[str], Sheet]]]:
         If no listed sheet and scale hold the plan.
     """
     plan = _chosen(picture)
-    return [(picture.name, plan.sheet), *further(picture, plan.rest)]
+    out = [(picture.name, plan.sheet), *further(picture, plan.rest)]
+    if plan.drawn.scale > SMALLEST:
+        out += [(part.name, _chosen(part).sheet) for part in parts(picture)]
+    return out
 
 
 def _chosen(picture: Picture) -> _Composed:
@@ -223,7 +227,9 @@ def _fields(picture: Picture, board: Board) -> TitleFields:
 
 def _view_title(picture: Picture, board: Board) -> Iterator[Primitive]:
     inner = frame_of(board.choice.size_mm)
-    words = f"PLAN 1:{board.choice.scale}, STATE: {picture.state}"
+    part = picture.name.rpartition("-")[2] if picture.part is not None else ""
+    which = f"PLAN, PART {part}," if part else "PLAN"
+    words = f"{which} 1:{board.choice.scale}, STATE: {picture.state}"
     words = shorten(words, board.field.width - 8.0, LARGE_MM)
     at = (inner.left + 6.0, inner.high - 6.0 - LARGE_MM)
     foot, wide = at[1] - _DESCENT * LARGE_MM, width_mm(words, LARGE_MM)

@@ -33,7 +33,7 @@ def bench(picture: Picture, board: Board) -> Iterator[Primitive]:
     """Draw the outline and the datum."""
     yield Polyline("BENCH", picture.outline, closed=True)
     board.crowd_model_line(picture.outline, closed=True, beam=True)
-    if picture.holes is not None:
+    if picture.holes is not None and picture.shows(picture.holes.first[0]):
         yield from _datum(picture.holes, board)
 
 
@@ -55,7 +55,7 @@ def holes(picture: Picture, board: Board, lettering: Sequence[Window]) -> Iterat
         y = grid.first[1] + row * grid.pitch_mm
         for column in range(0, grid.columns, step):
             x = grid.first[0] + column * grid.pitch_mm
-            if not _under(board.on_paper((x, y)), lettering):
+            if picture.shows(x) and not _under(board.on_paper((x, y)), lettering):
                 yield Line("HOLES", (x - half, y), (x + half, y))
                 yield Line("HOLES", (x, y - half), (x, y + half))
 
@@ -92,6 +92,8 @@ def _datum(holes: Holes, board: Board) -> Iterator[Primitive]:
 
 def main_dimensions(picture: Picture, board: Board) -> list[Dimension]:
     """Return overall sizes, and the datum hole from both edges and along its rows."""
+    if picture.part is not None:
+        return []  # they stand on the whole plan
     xs, ys = [p[0] for p in picture.outline], [p[1] for p in picture.outline]
     left, low = min(xs), min(ys)
     out: list[Dimension] = []

@@ -114,7 +114,7 @@ def _height_written(item: Item, picture: Picture) -> bool:
 
 
 def _datum_tag(picture: Picture, board: Board) -> Iterator[Wanted]:
-    if picture.holes is not None:
+    if picture.holes is not None and picture.shows(picture.holes.first[0]):
         lines = (("DATUM", "datum, hole 1-1", SMALL_MM),)
         x, y = board.on_paper(picture.holes.first)
         yield Wanted("datum", lines, "", "DATUM", (((x, y), 3.0),))
