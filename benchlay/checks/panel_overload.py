@@ -38,8 +38,8 @@ Passes
 What it does not see
 --------------------
 Beams that add up in one place: each is taken alone. Diffuse light. Whether the rating was
-taken at this wavelength and for a spot of this size, and whether the time it was taken for is
-long enough.
+taken at this wavelength and for a spot of this size. How long a beam really stays: it is taken
+to last for the time base of its limit.
 
 Source
 ------
@@ -64,17 +64,36 @@ from benchlay.checks._check import (
     unjudged,
     wavelength_text,
 )
+from benchlay.document.span import Span
 from benchlay.findings import Finding, Severity
 from benchlay.layout.layout import Layout
 from benchlay.layout.materials import Withstands
 from benchlay.named import NamedTuple
-from benchlay.scene.tables import SINK, Ints
+from benchlay.scene.tables import PART, SINK, Ints
 from benchlay.tracing.beams import SOLID
 
 NAME = "panel-overload"
 
 _W_CM2 = 1e-4  # per W/m2
 _J_CM2 = 1e-4  # per J/m2
+
+
+class _Sheet(NamedTuple):
+    """A panel or a lid."""
+
+    name: str
+    is_lid: bool
+
+    def words(self, layout: Layout) -> str:
+        """Return its name; for a lid that a panel shares it with, what it is too."""
+        enclosure = layout.enclosure
+        shared = self.is_lid and enclosure is not None and self.name in enclosure.panels
+        return f"lid '{self.name}'" if shared else f"'{self.name}'"
+
+    @property
+    def key(self) -> tuple[str, ...]:
+        """What stays the same of it from run to run."""
+        return (self.name, "lid") if self.is_lid else (self.name,)
 
 
 class _Load(NamedTuple):
@@ -97,36 +116,52 @@ def check(context: Context, variant: int) -> Iterator[Found]:
     rows = context.beams_of(variant)
     rows = rows[beams.end_kind[rows] == SOLID]
     rows = rows[s.sink[beams.end_row[rows]] == SINK["panel"]]
-    for name in sorted({context.end_name(beam) or "" for beam in rows.tolist()}):
-        mine = np.array([b for b in rows.tolist() if context.end_name(b) == name], dtype=np.int64)
-        rating = _rating(layout, name)
+    # A panel and a lid may have one name, and each its own material.
+    parts = s.part[beams.end_row[rows]]
+    found = [
+        _Sheet(context.end_name(b) or "", p == PART["lid"])
+        for b, p in zip(rows.tolist(), parts.tolist(), strict=True)
+    ]
+    for sheet in sorted(set(found)):
+        mine = rows[np.array([one == sheet for one in found])]
+        rating = _rating(layout, sheet)
         load = None if rating is None else _load(context, mine, rating)
         if load is not None and above(load.value, load.limit):
-            yield _overloaded(context, variant, name, load)
+            yield _overloaded(context, variant, sheet, load)
             continue
         unrated = _unrated(context, mine, rating)
         if len(unrated):
-            yield _not_shown(context, variant, name, unrated)
+            yield _not_shown(context, variant, sheet, (unrated, rating))
 
 
 def _unrated(context: Context, rows: Ints, rating: Withstands | None) -> Ints:
     """Return the hazardous beams that a rating does not speak of.
 
-    A rating by fluence is one for pulses, and says nothing of continuous light.
+    A rating by fluence is one for pulses, and says nothing of continuous light; one for a time
+    says nothing of a longer exposure, which is taken to last for the time base of the limit.
     """
     rows = rows[context.hazardous[rows]]
     if rating is not None and rating.fluence_j_m2 is None:
-        return rows[:0]
+        short = [_exposed_s(context, beam) > (rating.for_s or np.inf) for beam in rows.tolist()]
+        too_short: Ints = rows[np.array(short, dtype=np.bool_)]
+        return too_short
     steady = [rating is None or context.pulse_rate_hz(beam) is None for beam in rows.tolist()]
     unrated: Ints = rows[np.array(steady, dtype=np.bool_)]
     return unrated
 
 
-def _rating(layout: Layout, name: str) -> Withstands | None:
+def _exposed_s(context: Context, beam: int) -> float:
+    """Return for how long a sheet is taken to be exposed to a beam, s."""
+    variant = int(context.trace.beams.start.variant[beam])
+    line = context.limits.get((variant, context.source_of(beam), context.wavelength_nm(beam)))
+    return line.limit.time_base_s if line is not None and line.limit is not None else 0.0
+
+
+def _rating(layout: Layout, sheet: _Sheet) -> Withstands | None:
     enclosure = layout.enclosure
     assert enclosure is not None
-    sheet = enclosure.panels.get(name) or enclosure.lids[name]
-    material = enclosure.material_of(sheet)
+    where = enclosure.lids if sheet.is_lid else enclosure.panels
+    material = enclosure.material_of(where[sheet.name])
     return None if material is None else layout.materials[material].withstands
 
 
@@ -152,28 +187,33 @@ def _load(context: Context, rows: Ints, rating: Withstands) -> _Load | None:
     return _Load(int(rows[at]), value, rating.fluence_j_m2 * _J_CM2, "J/cm2", f"{value:.3g} J/cm2")
 
 
-def _overloaded(context: Context, variant: int, name: str, load: _Load) -> Finding:
+def _overloaded(context: Context, variant: int, sheet: _Sheet, load: _Load) -> Finding:
+    words = sheet.words(context.layout(variant))
     return Finding(
         check=NAME,
         severity=Severity.FAIL,  # it may burn through
         message=(
-            f"'{name}' takes {load.text} of {wavelength_text(context.wavelength_nm(load.beam))} "
+            f"{words} takes {load.text} of {wavelength_text(context.wavelength_nm(load.beam))} "
             f"from '{context.source_of(load.beam)}' and is rated for {load.limit:.3g} {load.unit}"
         ),
         expected=f"at most {load.limit:.3g} {load.unit}",
-        remedy=f"end the beam on a dump before '{name}', or rate '{name}' for it",
-        element=name,
+        remedy=f"end the beam on a dump before {words}, or rate {words} for it",
+        element=sheet.name,
         beam=int(context.numbers[load.beam]),
         at=context.end_at(load.beam),
-        span=context.span_of(name, variant),
+        span=_span(context, variant, sheet),
         value=load.value,
         limit=load.limit,
         unit=load.unit,
-        key=(name,),
+        key=sheet.key,
     )
 
 
-def _not_shown(context: Context, variant: int, name: str, rows: Ints) -> Finding:
+def _not_shown(
+    context: Context, variant: int, sheet: _Sheet, unrated: tuple[Ints, Withstands | None]
+) -> Finding:
+    rows, rating = unrated
+    words = sheet.words(context.layout(variant))
     peak = context.peak_w_m2(rows)
     beam = int(rows[np.argmax(peak)])
     worst = float(peak.max())
@@ -181,21 +221,35 @@ def _not_shown(context: Context, variant: int, name: str, rows: Ints) -> Finding
         check=NAME,
         severity=Severity.WARN,  # nothing says that it fails, and nothing that it holds
         message=(
-            f"not shown: '{name}' takes {irradiance_text(worst)} of "
+            f"not shown: {words} takes {irradiance_text(worst)} of "
             f"{wavelength_text(context.wavelength_nm(beam))} from '{context.source_of(beam)}' "
-            "and states no rating for it; an eye would meet "
+            f"and {_missing(context, beam, rating)}; an eye would meet "
             f"{exposure_words(context, beam, float(context.accessible_w[beam]))}"
         ),
         expected="a rating of whatever takes a beam above the accessible limit",
         remedy=(
-            f"state what the material of '{name}' withstands, such as "
-            "`withstands: {irradiance: …, for: 100 s}`"
+            f"state what the material of {words} withstands, such as "
+            f"`withstands: {{irradiance: …, for: {max(_exposed_s(context, beam), 100.0):g} s}}`"
         ),
-        element=name,
+        element=sheet.name,
         beam=int(context.numbers[beam]),
         at=context.end_at(beam),
-        span=context.span_of(name, variant),
+        span=_span(context, variant, sheet),
         value=worst * _W_CM2,
         unit="W/cm2",
-        key=(name,),
+        key=sheet.key,
     )
+
+
+def _missing(context: Context, beam: int, rating: Withstands | None) -> str:
+    """Say what the rating does not speak of."""
+    if rating is None or rating.for_s is None or rating.fluence_j_m2 is not None:
+        return "states no rating for it"
+    return f"is rated for {rating.for_s:g} s, not for the {_exposed_s(context, beam):g} s assumed"
+
+
+def _span(context: Context, variant: int, sheet: _Sheet) -> Span | None:
+    enclosure = context.layout(variant).enclosure
+    assert enclosure is not None
+    where = enclosure.lids if sheet.is_lid else enclosure.panels
+    return where.spans.get(sheet.name)
